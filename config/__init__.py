@@ -1,0 +1,1 @@
+"""Settings, bootstrap, and the commands about the program itself."""
