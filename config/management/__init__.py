@@ -1,0 +1,1 @@
+"""Where Django looks for the commands about the program itself."""

@@ -1,0 +1,1 @@
+"""The commands about the program itself, one a module."""

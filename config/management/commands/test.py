@@ -1,0 +1,44 @@
+"""The command that runs every test: pytest, with lint, types, import contracts and migrations among them."""
+
+import argparse
+import os
+import sys
+from collections.abc import Sequence
+
+import pytest
+from django.conf import settings
+from django.core.management.base import BaseCommand, CommandParser
+
+
+class Command(BaseCommand):
+    """Runs pytest from the project's folder; what follows `test` is pytest's own."""
+
+    help = (
+        "Runs every test with pytest. What follows is pytest's: options (-k, -x, -n 0, ...), and paths in "
+        "Ferrule's own folder."
+    )
+    requires_system_checks = ()  # they are among the tests
+
+    def add_arguments(self, parser: CommandParser) -> None:
+        """Take everything but --help, options included."""
+        parser.add_argument("arguments", nargs=argparse.REMAINDER, metavar="...", help="arguments of pytest")
+
+    def run_from_argv(self, argv: list[str]) -> None:
+        """Hand the command line on unread: Django's parser would refuse pytest's options."""
+        if argv[2:3] in (["-h"], ["--help"]):
+            self.print_help(*argv[:2])
+            return
+        os.chdir(settings.BASE_DIR)
+        sys.exit(pytest.main(arguments(argv[2:])))
+
+
+def arguments(given: Sequence[str]) -> list[str]:
+    """Spread the tests over the processors, unless one file is asked for: starting workers takes a second.
+
+    >>> arguments(["-k", "span"])
+    ['-n', 'auto', '--dist', 'worksteal', '-k', 'span']
+    >>> arguments(["tests/loops/test_cable.py"])
+    ['tests/loops/test_cable.py']
+    """
+    one_file = any(".py" in argument for argument in given)
+    return [*given] if one_file else ["-n", "auto", "--dist", "worksteal", *given]
