@@ -123,7 +123,7 @@ def fits(need: str) -> bool:
     NotReady
         Where the requirement is written in a way that is not read here.
     """
-    match = re.fullmatch(r"([A-Za-z0-9._-]+)((?:(?:>=|<)[0-9.]+,?)*)", need.replace(" ", ""))
+    match = re.fullmatch(r"([A-Za-z0-9][A-Za-z0-9._-]*)((?:(?:>=|<)[0-9.]+,?)*)", need.replace(" ", ""))
     if match is None:
         raise NotReady(f"the requirement {need!r} in pyproject.toml is not a name with bounds (>=, <).")
     try:
