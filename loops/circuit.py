@@ -1,0 +1,109 @@
+"""A circuit: one signal, from the device in the field to the card, and what stands on it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from instruments.area import Area
+from instruments.installed import Installed
+from instruments.origin import Cell
+from instruments.record import DeviceType, Instrument
+from loops.record import CableType, LoopRow
+
+ANALOGUE_INPUT = "AI"
+ANALOGUE_OUTPUT = "AO"
+DIGITAL_INPUT = "DI"
+DIGITAL_OUTPUT = "DO"
+RESISTANCE_THERMOMETER = "RTD"
+THERMOCOUPLE = "TC"
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Given:
+    """A number of a circuit with where it came from: ``loop row``, ``row``, ``type``, ``card``, ``cables``."""
+
+    number: float
+    source: str
+    cells: tuple[Cell, ...] = ()
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Circuit:
+    """One signal with its devices in order from the field to the system.
+
+    Attributes
+    ----------
+    name
+        The subject's name: the circuit's number; where a loop has several circuits,
+        number and tag.
+    loop
+        The loop it belongs to.
+    kind
+        AI, AO, DI, DO, RTD, TC; None where nothing says.
+    device
+        The device whose signal it is.
+    signal_row
+        The row that gives the device's signal on this circuit (an instrument may have several).
+    members
+        All devices on the circuit, from the field to the system, `device` among them.
+    row
+        The row of the loop list, where there is one.
+    card, barrier
+        Catalogue entries, where they are named and listed; the `_named` texts as written.
+    supply_min_v, supply_nominal_v, supply_max_v
+        What is stated of the supply.
+    powered_by_loop
+        True where the device takes its supply from the signal pair, False where it has one of its
+        own, None where nothing says.
+    wires
+        2, 3 or 4; None where nothing says.
+    """
+
+    name: str
+    loop: str | None
+    kind: str | None
+    device: Installed
+    signal_row: Instrument
+    members: tuple[Installed, ...]
+    row: LoopRow | None = None
+    card: DeviceType | None = None
+    card_named: str | None = None
+    barrier: DeviceType | None = None
+    barrier_named: str | None = None
+    supply_min_v: Given | None = None
+    supply_nominal_v: Given | None = None
+    supply_max_v: Given | None = None
+    supply_named: str | None = None
+    receiver_ohm: Given | None = None
+    cable_length_m: Given | None = None
+    cable_type: CableType | None = None
+    cable_type_named: str | None = None
+    conductor: str | None = None
+    hart: bool | None = None
+    intrinsically_safe: bool | None = None
+    wires: int | None = None
+    powered_by_loop: bool | None = None
+
+    @property
+    def area(self) -> Area | None:
+        """The area of the device in the field."""
+        return self.device.area
+
+    @property
+    def live(self) -> bool:
+        """Whether the device is live."""
+        return self.device.live
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class Loop:
+    """A loop: its number, its live instruments and its circuits."""
+
+    name: str
+    members: tuple[Installed, ...]
+    circuits: tuple[Circuit, ...] = ()
+    live: bool = True
+
+    def cells(self, name: str) -> tuple[Cell, ...]:
+        """Return the cells of a field of its members."""
+        return tuple(cell for member in self.members for cell in member.cells(name))

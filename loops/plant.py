@@ -1,0 +1,660 @@
+"""The whole plant put together from all its lists: everything by name, lookups built once."""
+
+from __future__ import annotations
+
+import dataclasses
+from collections import defaultdict
+from collections.abc import Callable, Iterable, Mapping, Sequence
+from dataclasses import dataclass, field, replace
+from types import MappingProxyType
+from typing import Any
+
+from instruments.area import Area, Classification, area_from_classification, read_classification
+from instruments.installed import NOT_LIVE, Installed
+from instruments.kind import Kind, derive_kind
+from instruments.marking import Marking, read_marking
+from instruments.origin import Cell, Origin
+from instruments.plant_codes import CODES, PlantCode
+from instruments.plant_data import PlantData
+from instruments.quantity import Quantity
+from instruments.record import DeviceType, Instrument, Record
+from instruments.tag import (
+    PROFILES,
+    TagProfile,
+    TagReading,
+    best_profile,
+    is_equipment_shape,
+    loop_of,
+    match_key,
+    natural_key,
+    profile_from_pattern,
+    read_tag,
+)
+from instruments.workbook.lists import Lists
+from instruments.workbook.problem import CellProblem
+from loops.circuit import Circuit, Loop
+from loops.record import Cable, CableType, LoopRow, Termination
+from loops.wiring import wire
+
+_RECORD_OWN = frozenset(each.name for each in dataclasses.fields(Record))
+_FIELDS = tuple(each.name for each in dataclasses.fields(Instrument) if each.name not in _RECORD_OWN)
+_TYPE_FIELDS = tuple(each.name for each in dataclasses.fields(DeviceType) if each.name not in _RECORD_OWN)
+
+# What a second row of one instrument may say differently: its other signal and how that is wired.
+SIGNAL_FIELDS = frozenset({
+    "signal", "wires", "io_type", "io_address", "card", "system", "power_supply", "barrier", "receiver_ohm",
+    "junction_box", "terminals", "cable", "cable_type", "cable_length_m", "conductor", "pair", "contact",
+    "trip_action", "failure_direction", "bad_signal_detection",
+})
+# Not statements about the instrument.
+_NO_STATEMENT = frozenset({
+    "tag", "tag_written", "tag_cell", "tag_number", "kind_written", "place", "remarks", "revision", "hold", "own",
+    "range_unit", "system_unit", "settings_unit",
+})
+COMPARED = tuple(name for name in _FIELDS if name not in _NO_STATEMENT)
+# Fields that a row and its device type can both state.
+ROW_AND_TYPE = ("ex_marking", "certificate", "signal", "wires", "ip_code", "maker", "model")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class AreaInPlant:
+    """An area of the list, or one that rows' own classifications make."""
+
+    record: Area
+    name: str
+    live: bool = True
+
+    def cells(self, name: str) -> tuple[Cell, ...]:
+        """Return the cells of a field of the area."""
+        return self.record.cells(name.rpartition(".")[2]) or self.record.cells("code")
+
+
+@dataclass(slots=True, kw_only=True, eq=False)
+class Plant:
+    """Everything that the lists say, by name.
+
+    Built by `assemble`; read only from then on.
+    """
+
+    data: PlantData
+    lists: Lists
+    instruments: tuple[Installed, ...]
+    circuits: tuple[Circuit, ...]
+    loops: tuple[Loop, ...]
+    areas_seen: tuple[AreaInPlant, ...]
+    types: Mapping[str, DeviceType]
+    types_twice: frozenset[str]
+    areas: Mapping[str, Area]
+    areas_twice: frozenset[str]
+    cables: Mapping[str, Cable]
+    cables_twice: frozenset[str]
+    cable_types: Mapping[str, CableType]
+    cable_types_twice: frozenset[str]
+    terminations: tuple[Termination, ...]
+    loop_rows: tuple[LoopRow, ...]
+    io_list: tuple[Instrument, ...]
+    alarm_list: tuple[Instrument, ...]
+    profile: TagProfile
+    codes: Mapping[str, PlantCode]
+    assumptions: tuple[str, ...] = ()
+    _by_tag: dict[Any, tuple[Installed, ...]] = field(default_factory=dict)
+    _by_loop: dict[str, Loop] = field(default_factory=dict)
+    _circuits_of: dict[int, tuple[Circuit, ...]] = field(default_factory=dict)
+    _whole: dict[str, Any] = field(default_factory=dict)
+    _columns: frozenset[str] = frozenset()
+    _notes: dict[str, Any] = field(default_factory=dict)
+
+    @property
+    def file_name(self) -> str:
+        """The name of the file that holds the index: the subject of what is wrong with the whole list."""
+        return self.lists.index_file
+
+    @property
+    def name(self) -> str:
+        """The subject's name where the whole list is the subject."""
+        return self.file_name
+
+    @property
+    def problems(self) -> tuple[CellProblem, ...]:
+        """The cells that could not be read."""
+        return self.lists.problems
+
+    @property
+    def live(self) -> tuple[Installed, ...]:
+        """The live instruments."""
+        live = self._notes.get("live")
+        if live is None:
+            live = self._notes["live"] = tuple(each for each in self.instruments if each.live)
+        return live  # type: ignore[no-any-return]
+
+    def threshold(self, name: str, default: float) -> float:
+        """Return the plant's threshold of that name, or the catalogue's default."""
+        return self.data.threshold(name, default)
+
+    def has_column(self, *names: str) -> bool:
+        """Whether any sheet of the index has a column that is read into one of the fields."""
+        return any(name in self._columns for name in names)
+
+    def has_sheet(self, kind: str) -> bool:
+        """Whether a sheet of that kind was read."""
+        return bool(self.lists.records.get(kind))
+
+    def by_tag(self, text: str) -> tuple[Installed, ...]:
+        """Return the live instruments with that tag, however it is written."""
+        return self._by_tag.get(_lookup_key(read_tag(text, profile=self.profile, codes=self.codes)), ())
+
+    def loop_of(self, installed: Installed) -> Loop | None:
+        """Return the loop an instrument belongs to."""
+        return self._by_loop.get(_key(installed.loop)) if installed.loop else None
+
+    def circuits_of(self, installed: Installed) -> tuple[Circuit, ...]:
+        """Return the circuits that an instrument stands on."""
+        return self._circuits_of.get(id(installed), ())
+
+    def named_type(self, text: str | None) -> DeviceType | None:
+        """Return the catalogue entry that a text names: a code, or a tag of the list with a device type."""
+        if not text:
+            return None
+        found = self.types.get(_key(text))
+        if found is not None:
+            return found
+        for installed in self.by_tag(text):
+            if installed.type is not None:
+                return installed.type
+        return None
+
+    def whole_finding(self, code: str, ask: Callable[[Plant], Any]) -> Any:
+        """Return what is wrong with a whole column, asked once."""
+        if code not in self._whole:
+            self._whole[code] = ask(self)
+        return self._whole[code]
+
+    def once(self, name: str, make: Callable[[Plant], Any]) -> Any:
+        """Return what `make` gives for this plant, made once: lookups that only some rules need."""
+        if name not in self._notes:
+            self._notes[name] = make(self)
+        return self._notes[name]
+
+
+def assemble(lists: Lists) -> Plant:
+    """Put the plant together from its lists.
+
+    Parameters
+    ----------
+    lists
+        All records of all sheets, as read.
+    """
+    data = lists.plant
+    records: Mapping[str, tuple[Any, ...]] = lists.records
+    index: tuple[Instrument, ...] = records.get("Instruments", ())
+    io_list: tuple[Instrument, ...] = records.get("IO list", ())
+    if not index:
+        index, io_list = io_list, ()
+    codes = {**CODES, **_plant_codes(data)}
+    profile, assumptions = _profile(data, index)
+    types, types_twice = _by_name(records.get("Device types", ()), "code")
+    areas, areas_twice = _by_name(records.get("Areas", ()), "code")
+    cables, cables_twice = _by_name(records.get("Cables", ()), "number")
+    cable_types, cable_types_twice = _by_name(records.get("Cable types", ()), "code")
+    readings: dict[str, TagReading] = {}
+
+    def reading_of(text: str) -> TagReading:
+        reading = readings.get(text)
+        if reading is None:
+            reading = readings[text] = read_tag(
+                text, profile=profile, codes=codes, users_letters=frozenset(data.users_letters),
+                numbering=data.numbering,
+            )
+        return reading
+
+    fitter = _Fitter(data, types, areas)
+    grouped, alone = _same_tag(index, reading_of)
+    placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
+    for rows in grouped:
+        placed.extend(_one_or_several(rows, reading_of))
+    names: dict[str, int] = defaultdict(int)
+    for record in sorted(alone, key=_contents):
+        reading = reading_of(record.tag) if record.tag else None
+        name = record.tag or _untagged_name(record)
+        names[name] += 1
+        placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
+    first = [fitter.install(*each) for each in placed]
+    first = _with_loops(first, codes, data)
+    first = _with_kinds(first, codes)
+    first.sort(key=lambda each: (natural_key(each.name), each.name))
+    by_tag: dict[Any, list[Installed]] = defaultdict(list)
+    for each in first:
+        if each.live and each.tag is not None:
+            by_tag[_lookup_key(each.tag)].append(each)
+    plant = Plant(
+        data=data,
+        lists=lists,
+        instruments=tuple(first),
+        circuits=(),
+        loops=(),
+        areas_seen=_areas_seen(records.get("Areas", ()), first),
+        types=types,
+        types_twice=types_twice,
+        areas=areas,
+        areas_twice=areas_twice,
+        cables=cables,
+        cables_twice=cables_twice,
+        cable_types=cable_types,
+        cable_types_twice=cable_types_twice,
+        terminations=records.get("Terminations", ()),
+        loop_rows=records.get("Loops", ()),
+        io_list=io_list,
+        alarm_list=records.get("Alarm and trip list", ()),
+        profile=profile,
+        codes=codes,
+        assumptions=(*lists.assumptions, *assumptions, *fitter.assumptions),
+        _by_tag={key: tuple(found) for key, found in by_tag.items()},
+        _columns=lists.index_columns,
+    )
+    plant.circuits, plant.loops = wire(plant)
+    plant._by_loop = {_key(loop.name): loop for loop in plant.loops}
+    on: dict[int, list[Circuit]] = defaultdict(list)
+    for circuit in plant.circuits:
+        for member in circuit.members:
+            on[id(member)].append(circuit)
+    plant._circuits_of = {key: tuple(found) for key, found in on.items()}
+    return plant
+
+
+def name_key(text: str | None) -> str:
+    """Return a name's key: case and blanks do not tell two entries apart."""
+    return _key(text)
+
+
+def _key(text: str | None) -> str:
+    return "".join(text.split()).casefold() if text else ""
+
+
+def _lookup_key(reading: TagReading) -> Any:
+    return match_key(reading) if reading.parsed else _key(reading.normalised)
+
+
+def _plant_codes(data: PlantData) -> dict[str, PlantCode]:
+    from instruments.kind import kind_from_words
+
+    codes: dict[str, PlantCode] = {}
+    for code, (kind_text, letter) in data.plant_codes.items():
+        codes[code] = PlantCode(code=code, kind=kind_from_words(kind_text), letter=letter or None, meaning=kind_text)
+    return codes
+
+
+def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, tuple[str, ...]]:
+    stated = (data.tag_pattern or "").strip()
+    if stated:
+        for profile in PROFILES.values() if isinstance(PROFILES, Mapping) else PROFILES:
+            if profile.name == stated.casefold():
+                return profile, ()
+        try:
+            return profile_from_pattern(stated), ()
+        except ValueError as error:
+            chosen = best_profile([record.tag for record in index if record.tag])
+            return chosen, (f"the plant's tag pattern could not be used ({error}); tags read as {chosen.name}",)
+    chosen = best_profile([record.tag for record in index if record.tag])
+    return chosen, (f"tag pattern not stated: most tags fit {chosen.name}",)
+
+
+def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], frozenset[str]]:
+    found: dict[str, Any] = {}
+    twice: set[str] = set()
+    for record in records:
+        key = _key(getattr(record, attribute))
+        if not key:
+            continue
+        other = found.get(key)
+        if other is None:
+            found[key] = record
+        elif any(
+            getattr(other, each.name) != getattr(record, each.name)
+            for each in dataclasses.fields(record)
+            if each.name not in _RECORD_OWN
+        ):
+            twice.add(key)
+    return found, frozenset(twice)
+
+
+def _same_tag(
+    index: Sequence[Instrument], reading_of: Callable[[str], TagReading]
+) -> tuple[list[list[Instrument]], list[Instrument]]:
+    groups: dict[Any, list[Instrument]] = defaultdict(list)
+    alone: list[Instrument] = []
+    for record in index:
+        if record.tag and record.status not in NOT_LIVE:
+            groups[_lookup_key(reading_of(record.tag))].append(record)
+        else:
+            alone.append(record)
+    return list(groups.values()), alone
+
+
+def _one_or_several(
+    rows: list[Instrument], reading_of: Callable[[str], TagReading]
+) -> list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]]:
+    reading = reading_of(rows[0].tag or "")
+    name = rows[0].tag or ""
+    if len(rows) == 1:
+        return [(rows[0], reading, (rows[0],), name)]
+    rows = sorted(rows, key=_contents)
+    name = rows[0].tag or ""
+    merged: list[list[Instrument]] = []
+    for row in rows:
+        for group in merged:
+            if all(rows_agree(row, other) for other in group):
+                group.append(row)
+                break
+        else:
+            merged.append([row])
+    placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
+    for number, group in enumerate(merged, start=1):
+        called = name if number == 1 else f"{name} ({number})"
+        placed.append((_merge(group), reading_of(group[0].tag or ""), tuple(group), called))
+    return placed
+
+
+def disagreements(one: Instrument, other: Instrument) -> tuple[str, ...]:
+    """Return the fields that both rows fill and in which they disagree, signal and wiring among them."""
+    found = tuple(
+        name
+        for name in COMPARED
+        if not same_value(getattr(one, name), getattr(other, name))
+    )
+    if one.own is not None and other.own is not None:
+        found += tuple(
+            f"type.{name}" for name in _TYPE_FIELDS if not same_value(getattr(one.own, name), getattr(other.own, name))
+        )
+    return found
+
+
+def rows_agree(one: Instrument, other: Instrument) -> bool:
+    """Whether two rows of one tag are one instrument: alike, or another signal of it."""
+    differing = set(disagreements(one, other)) - SIGNAL_FIELDS
+    if not differing:
+        return True
+    both_addressed = bool(one.io_address and other.io_address) and _key(one.io_address) != _key(other.io_address)
+    return both_addressed and differing <= {"service"}
+
+
+def same_value(one: Any, other: Any) -> bool:
+    """Whether two values of a field agree; a blank agrees with everything.
+
+    Quantities agree when they mean the same, whatever the unit they are written in.
+    """
+    if one is None or other is None:
+        return True
+    if isinstance(one, Quantity) and isinstance(other, Quantity):
+        if one.base is None or other.base is None or one.unit is None or other.unit is None:
+            return one.text == other.text
+        if one.unit.kind != other.unit.kind:
+            return False
+        unstated = ("unstated", None)
+        if one.reference != other.reference and one.reference not in unstated and other.reference not in unstated:
+            return False
+        return abs(one.base - other.base) <= 1e-9 * max(abs(one.base), abs(other.base))
+    if isinstance(one, str) and isinstance(other, str):
+        return " ".join(one.split()).casefold() == " ".join(other.split()).casefold()
+    return bool(one == other)
+
+
+def _merge(group: Sequence[Instrument]) -> Instrument:
+    first = group[0]
+    if len(group) == 1:
+        return first
+    values: dict[str, Any] = {}
+    elsewhere: dict[str, Origin] = dict(first.elsewhere)
+    for row in group[1:]:
+        for name in _FIELDS:
+            if name in values or getattr(first, name) is not None:
+                continue
+            value = getattr(row, name)
+            if value is not None:
+                values[name] = value
+                origin = row.elsewhere.get(name) or row.origin
+                if origin is not None:
+                    elsewhere[name] = origin
+    unread = frozenset(name for row in group for name in row.unread) - values.keys()
+    return replace(
+        first,
+        **values,
+        elsewhere=MappingProxyType(elsewhere),
+        unread=frozenset(name for name in unread if values.get(name, getattr(first, name)) is None),
+    )
+
+
+def _contents(record: Instrument) -> tuple[Any, ...]:
+    """Return what rows are sorted by, so that the order of rows changes no name."""
+    return tuple(_content(getattr(record, name)) for name in _FIELDS if name != "own")
+
+
+def _content(value: Any) -> str:
+    if value is None:
+        return ""
+    if isinstance(value, Quantity):
+        return f"{value.base if value.base is not None else ''}{value.reference or ''}"
+    return str(value)
+
+
+def _untagged_name(record: Instrument) -> str:
+    sheet = record.origin.place.sheet if record.origin else "row"
+    for name in _FIELDS:
+        if name in _NO_STATEMENT:
+            continue
+        value = getattr(record, name)
+        if value is not None:
+            return f"{sheet}: {value.text if isinstance(value, Quantity) else value}"
+    return f"{sheet}: row {record.origin.row if record.origin else ''}".rstrip()
+
+
+class _Fitter:
+    """Joins a record with its device type, its area and its marking."""
+
+    def __init__(self, data: PlantData, types: Mapping[str, DeviceType], areas: Mapping[str, Area]) -> None:
+        self._data = data
+        self._types = types
+        self._areas = areas
+        self._made: dict[str, Area] = {}
+        self._classified: dict[str, Classification | None] = {}
+        self._markings: dict[str, Marking] = {}
+        self._unclassified: set[str] = set()
+        self._own: dict[int, DeviceType] = {}
+
+    @property
+    def assumptions(self) -> tuple[str, ...]:
+        """What was taken from the rows' own words, listed once."""
+        return tuple(
+            f"'{text}' in an area column is read as: not a hazardous area" for text in sorted(self._unclassified)
+        )
+
+    def install(
+        self, record: Instrument, reading: TagReading | None, rows: tuple[Instrument, ...], name: str
+    ) -> Installed:
+        listed = self._types.get(_key(record.device_type)) if record.device_type else None
+        device = self._effective(record, listed)
+        area, unclassified = self._area(record)
+        marking_text = record.ex_marking or (device.ex_marking if device else None)
+        live = record.status not in NOT_LIVE
+        if not live and record.tag:
+            name = f"{name} ({record.status})"
+        body = device.body if device else None
+        if body is None and device is not None and device.url is not None and device.url.reference in (
+            "gauge", "absolute", "differential"
+        ):
+            body = device.url.reference
+        signals = _signals(rows)
+        return Installed(
+            record=record,
+            name=name,
+            tag=reading,
+            live=live,
+            equipment_tag=bool(
+                reading is not None
+                and is_equipment_shape(reading)
+                and any(row.io_type or row.io_address or row.signal for row in rows)
+            ),
+            listed_type=listed,
+            type=device,
+            area=area,
+            unclassified=unclassified,
+            marking=self._marking(marking_text) if marking_text else None,
+            signals=signals,
+            body=body,
+            merged_rows=len(rows),
+        )
+
+    def _effective(self, record: Instrument, listed: DeviceType | None) -> DeviceType | None:
+        own = record.own
+        stated = {name: getattr(record, name) for name in ROW_AND_TYPE if getattr(record, name) is not None}
+        if own is None and listed is None:
+            return None
+        if own is None:
+            assert listed is not None
+            return listed
+        base = listed if listed is not None else DeviceType(origin=record.origin)
+        values = {name: getattr(own, name) for name in _TYPE_FIELDS if getattr(own, name) is not None}
+        elsewhere = dict(base.elsewhere)
+        if record.origin is not None:
+            for name in values:
+                elsewhere[name] = record.elsewhere.get(name) or record.origin
+        values.update({name: value for name, value in stated.items() if name in _TYPE_FIELDS})
+        return replace(
+            base, **values, elsewhere=MappingProxyType(elsewhere), unread=(base.unread | own.unread) - values.keys()
+        )
+
+    def _marking(self, text: str) -> Marking:
+        marking = self._markings.get(text)
+        if marking is None:
+            marking = self._markings[text] = read_marking(text)
+        return marking
+
+    def _classification(self, text: str) -> Classification | None:
+        if text not in self._classified:
+            self._classified[text] = read_classification(text)
+        return self._classified[text]
+
+    def _area(self, record: Instrument) -> tuple[Area | None, bool]:
+        if record.area:
+            listed = self._areas.get(_key(record.area))
+            if listed is not None:
+                return listed, listed.system == "none"
+        for text in (record.area_classification, record.area):
+            if not text:
+                continue
+            classification = self._classification(text)
+            if classification is None:
+                continue
+            if classification.unclassified:
+                self._unclassified.add(text)
+                return None, True
+            return self._from_text(text, record), False
+        return None, False
+
+    def _from_text(self, text: str, record: Instrument) -> Area | None:
+        key = _key(text)
+        area = self._made.get(key)
+        if area is None:
+            made = area_from_classification(text)
+            if made is None:
+                return None
+            area = self._made[key] = made
+        return area
+
+
+def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
+    """Return one row a signal: rows that say nothing new about it are left out."""
+    kept: list[Instrument] = []
+    for row in rows:
+        if not any(
+            all(same_value(getattr(row, name), getattr(other, name)) for name in SIGNAL_FIELDS) for other in kept
+        ):
+            kept.append(row)
+    return tuple(kept)
+
+
+def _with_loops(
+    found: list[Installed], codes: Mapping[str, PlantCode], data: PlantData
+) -> list[Installed]:
+    """Give each instrument its loop: the column's, else the one its tag gives."""
+    valves: dict[tuple[str, str], str] = {}
+    derived: list[str | None] = []
+    for each in found:
+        loop = None
+        if each.tag is not None and each.tag.parsed:
+            loop = loop_of(each.tag, data.numbering, codes)
+            if loop and each.letters.endswith("V") and each.live:
+                valves.setdefault((each.tag.prefix or "", each.tag.number or ""), each.record.loop or loop)
+        derived.append(loop)
+    result: list[Installed] = []
+    for each, loop in zip(found, derived, strict=True):
+        if each.record.loop:
+            result.append(replace(each, loop=each.record.loop, loop_from="column"))
+            continue
+        if loop and each.tag is not None and each.letters[:1] in ("X", "Z", "H", "Y"):
+            loop = valves.get((each.tag.prefix or "", each.tag.number or ""), loop)
+        result.append(replace(each, loop=loop, loop_from="tag" if loop else ""))
+    return result
+
+
+def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[Installed]:
+    """Give each instrument its kind, and tell the measuring points of older lists."""
+    bears: set[str] = set()
+    for each in found:
+        if each.live and each.loop and _names_measurement(each):
+            bears.add(_key(each.loop))
+    result: list[Installed] = []
+    for each in found:
+        record = each.record
+        own_signal = any(row.signal or row.io_type or row.io_address for row in each.signals) or bool(record.device_type)
+        point = bool(
+            each.loop
+            and _key(each.loop) not in bears
+            and own_signal
+            and len(each.letters) >= 2
+            and each.letters[-1] in "IRCA"
+            and each.letters not in codes
+            and record.location != "system"
+        )
+        kind, kind_from = record.kind, "row"
+        if kind is None and each.listed_type is not None and each.listed_type.kind is not None:
+            kind, kind_from = each.listed_type.kind, "type"
+        if kind is None and each.letters and not each.equipment_tag:
+            kind_from = "letters"
+            if point:
+                kind = _point_kind(record)
+            if kind is None:
+                kind = derive_kind(
+                    each.letters,
+                    has_signal=any(row.signal or row.io_type or row.io_address for row in each.signals)
+                    or bool(record.ex_marking),
+                    location=record.location,
+                    codes=codes,
+                )
+        result.append(
+            replace(each, kind=kind, kind_from=kind_from if kind is not None else "", measuring_point=point)
+        )
+    return result
+
+
+def _names_measurement(each: Installed) -> bool:
+    return any(letter in "TE" for letter in each.letters[1:])
+
+
+def _point_kind(record: Instrument) -> Kind | None:
+    text = f"{record.signal or ''} {record.io_type or ''}".casefold()
+    if any(word in text for word in ("pt100", "pt 100", "rtd", "tc", "thermo", "mv", "ohm")):
+        return Kind.ELEMENT
+    if "ma" in text or "hart" in text or record.io_type in ("AI",):
+        return Kind.TRANSMITTER
+    return None
+
+
+def _areas_seen(listed: Iterable[Area], found: Iterable[Installed]) -> tuple[AreaInPlant, ...]:
+    seen: dict[str, AreaInPlant] = {}
+    for area in listed:
+        if area.code:
+            seen.setdefault(_key(area.code), AreaInPlant(record=area, name=area.code))
+    for each in found:
+        if each.live and each.area is not None and each.area.code:
+            seen.setdefault(_key(each.area.code), AreaInPlant(record=each.area, name=each.area.code))
+    return tuple(sorted(seen.values(), key=lambda area: natural_key(area.name)))

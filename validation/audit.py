@@ -1,0 +1,383 @@
+"""The audit: every rule over every subject of a plant, with the five outcomes counted."""
+
+from __future__ import annotations
+
+import gc
+from collections import Counter
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
+from typing import Any
+
+from instruments.installed import Installed
+from instruments.origin import Cell
+from instruments.tag import natural_key
+from loops.circuit import Circuit
+from loops.plant import Plant
+from validation.finding import (
+    Clear,
+    Finding,
+    Found,
+    NotApplicable,
+    Outcome,
+    Review,
+    Severity,
+    Unchecked,
+    Verdict,
+)
+from validation.rule import Registry, Rule, Subject, load_rules, title_of
+
+
+@dataclass(slots=True)
+class Coverage:
+    """What one rule came to: its subjects by outcome, and which blanks left it unchecked."""
+
+    rule: str
+    outcomes: Counter[Outcome] = field(default_factory=Counter)
+    because: Counter[str] = field(default_factory=Counter)
+    unchecked: dict[tuple[str, ...], list[str]] = field(default_factory=dict)
+    assumed: Counter[str] = field(default_factory=Counter)
+
+    def count(self, outcome: Outcome) -> int:
+        """Return the number of subjects with that outcome."""
+        return self.outcomes[outcome]
+
+
+@dataclass(frozen=True, slots=True)
+class Broken:
+    """A rule that raised: the code, the subject and what it said."""
+
+    rule: str
+    subject: str
+    error: str
+
+
+@dataclass(slots=True)
+class Audit:
+    """All that the rules said of a plant."""
+
+    plant: Plant
+    findings: list[Finding] = field(default_factory=list)
+    coverage: dict[str, Coverage] = field(default_factory=dict)
+    broken: list[Broken] = field(default_factory=list)
+    assumptions: tuple[str, ...] = ()
+
+    def of(self, outcome: Outcome) -> list[Finding]:
+        """Return the findings, or the reviews."""
+        return [finding for finding in self.findings if finding.outcome is outcome]
+
+    def counts(self) -> dict[str, int]:
+        """Return the number of findings by severity, and of reviews."""
+        counts = {severity.value: 0 for severity in Severity}
+        for finding in self.of(Outcome.FINDING):
+            counts[finding.severity.value] += 1
+        counts["review"] = len(self.of(Outcome.REVIEW))
+        return counts
+
+
+def audit(
+    plant: Plant,
+    *,
+    rules: Registry | None = None,
+    codes: Iterable[str] | None = None,
+    raise_errors: bool = False,
+    on_rule: Callable[[int, int, str], None] | None = None,
+) -> Audit:
+    """Run the rules over the plant.
+
+    Parameters
+    ----------
+    plant
+        The whole plant.
+    rules
+        The registry; default: every rule of the package.
+    codes
+        Only these rules.
+    raise_errors
+        Raise what a rule raises, for tests; otherwise the rule is reported as broken.
+    on_rule
+        Called before each rule with its number, their count and its code.
+    """
+    registry = rules if rules is not None else load_rules()
+    wanted = None if codes is None else frozenset(codes)
+    chosen = [each for each in registry if wanted is None or each.code in wanted]
+    result = Audit(plant=plant)
+    # Millions of short-lived results and no cycles among them: the collector would only walk the records.
+    collecting = gc.isenabled()
+    gc.disable()
+    try:
+        for number, each in enumerate(chosen, start=1):
+            if on_rule is not None:
+                on_rule(number, len(chosen), each.code)
+            result.coverage[each.code] = _run(each, plant, result, raise_errors)
+    finally:
+        if collecting:
+            gc.enable()
+    result.findings.sort(key=finding_order)
+    result.assumptions = _assumptions(plant, result)
+    return result
+
+
+def finding_order(finding: Finding) -> tuple[Any, ...]:
+    """Danger first, then the rule, the subject in natural order, the part and the fields."""
+    return (
+        finding.outcome is Outcome.REVIEW,
+        finding.severity.rank,
+        finding.rule,
+        natural_key(finding.subject),
+        finding.part,
+        finding.fields,
+    )
+
+
+def check_one(rule: Rule, subject: Any, plant: Plant) -> Verdict:
+    """Return what a rule says of one subject: instrument, circuit, loop or area."""
+    if rule.applies is not None and not rule.applies(subject, plant):
+        return NotApplicable()
+    missing = tuple(title for title, get in rule.needs if get(subject) is None)
+    if missing:
+        return Unchecked(*missing)
+    return rule.check(subject, plant)
+
+
+def reaudit(installed: Installed, plant: Plant, *, rules: Registry | None = None) -> list[Finding]:
+    """Return the findings on one instrument and its circuits, by the rules about single subjects."""
+    registry = rules if rules is not None else load_rules()
+    result = Audit(plant=plant)
+    circuits = plant.circuits_of(installed)
+    for each in registry:
+        if each.whole is not None and plant.whole_finding(each.code, each.whole):
+            continue
+        subjects: Sequence[Any] = ()
+        if each.on is Subject.INSTRUMENT:
+            subjects = (installed,)
+        elif each.on is Subject.CIRCUIT:
+            subjects = circuits
+        coverage = Coverage(rule=each.code)
+        for subject in subjects:
+            if not installed.live and not each.not_live_too:
+                continue
+            _take(check_one(each, subject, plant), each, subject, coverage, result)
+    result.findings.sort(key=finding_order)
+    return result.findings
+
+
+def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverage:
+    coverage = Coverage(rule=rule.code)
+    outcomes = coverage.outcomes
+    blocked: tuple[str, ...] | None = None
+    if rule.whole is not None:
+        try:
+            verdict = plant.whole_finding(rule.code, rule.whole)
+        except Exception as error:
+            if raise_errors:
+                raise
+            result.broken.append(Broken(rule.code, plant.file_name, f"{type(error).__name__}: {error}"))
+            verdict = None
+        if verdict:
+            _take(verdict, rule, plant, coverage, result)
+            blocked = tuple(dict.fromkeys(title_of(name) for each in _each(verdict) for name in each.fields)) or (
+                "column",
+            )
+    if rule.on is Subject.WHOLE:
+        _guard(lambda: _take(rule.check(plant), rule, plant, coverage, result), rule, plant.file_name, result,
+               raise_errors)
+        return coverage
+    if rule.on is Subject.GROUP:
+        _run_groups(rule, plant, coverage, result, raise_errors, blocked)
+        return coverage
+    applies, needs, check = rule.applies, rule.needs, rule.check
+    not_applicable = unsaid = 0
+    for subject in _subjects(rule, plant):
+        if not rule.not_live_too and not subject.live:
+            not_applicable += 1
+            continue
+        try:
+            if applies is not None and not applies(subject, plant):
+                not_applicable += 1
+                continue
+            if blocked is not None:
+                _unchecked(blocked, subject.name, coverage)
+                continue
+            missing = [title for title, get in needs if get(subject) is None] if needs else None
+            if missing:
+                _unchecked(tuple(missing), subject.name, coverage)
+                continue
+            verdict = check(subject, plant)
+            if verdict is None:
+                unsaid += 1
+            else:
+                _take(verdict, rule, subject, coverage, result)
+        except Exception as error:
+            if raise_errors:
+                raise
+            result.broken.append(Broken(rule.code, subject.name, f"{type(error).__name__}: {error}"))
+            outcomes[Outcome.UNCHECKED] += 1
+            coverage.because["the rule is broken"] += 1
+    outcomes[Outcome.NOT_APPLICABLE] += not_applicable
+    outcomes[Outcome.CLEAR] += unsaid
+    return coverage
+
+
+def _run_groups(
+    rule: Rule, plant: Plant, coverage: Coverage, result: Audit, raise_errors: bool, blocked: tuple[str, ...] | None
+) -> None:
+    members: dict[int, Installed] = {}
+    for installed in plant.instruments:
+        if (not installed.live and not rule.not_live_too) or (
+            rule.applies is not None and not rule.applies(installed, plant)
+        ):
+            coverage.outcomes[Outcome.NOT_APPLICABLE] += 1
+            continue
+        missing = blocked or tuple(title for title, get in rule.needs if get(installed) is None)
+        if missing:
+            _unchecked(missing, installed.name, coverage)
+            continue
+        members[id(installed)] = installed
+    said: dict[int, Outcome] = {}
+    if rule.groups is not None and members:
+        for group in rule.groups(plant):
+            kept = tuple(installed for installed in group if id(installed) in members)
+            if len(kept) < 2:
+                continue
+            named = group_name(kept)
+
+            def run(kept: tuple[Installed, ...] = kept, named: str = named) -> None:
+                outcome = _report(rule.check(kept, plant), rule, named, kept[0], coverage, result)
+                for installed in kept:
+                    before = said.get(id(installed))
+                    if before is None or _WORSE.index(outcome) < _WORSE.index(before):
+                        said[id(installed)] = outcome
+
+            _guard(run, rule, named, result, raise_errors)
+    alone = Outcome.CLEAR if rule.alone_is_clear else Outcome.NOT_APPLICABLE
+    for key in members:
+        coverage.outcomes[said.get(key, alone)] += 1
+
+
+_WORSE = [Outcome.FINDING, Outcome.REVIEW, Outcome.UNCHECKED, Outcome.CLEAR, Outcome.NOT_APPLICABLE]
+
+
+def group_name(group: Sequence[Installed]) -> str:
+    """Return a group's name: its tags in natural order, equal tags once."""
+    tags = {_bare(installed.name) for installed in group}
+    return ", ".join(sorted(tags, key=natural_key))
+
+
+def _bare(name: str) -> str:
+    head, bracket, tail = name.rpartition(" (")
+    return head if bracket and tail.endswith(")") and tail[:-1].isdigit() else name
+
+
+def _guard(action: Callable[[], Any], rule: Rule, subject: str, result: Audit, raise_errors: bool) -> None:
+    try:
+        action()
+    except Exception as error:
+        if raise_errors:
+            raise
+        result.broken.append(Broken(rule.code, subject, f"{type(error).__name__}: {error}"))
+
+
+def _subjects(rule: Rule, plant: Plant) -> Iterable[Any]:
+    if rule.on is Subject.INSTRUMENT:
+        return plant.instruments
+    if rule.on is Subject.CIRCUIT:
+        return plant.circuits
+    if rule.on is Subject.LOOP:
+        return plant.loops
+    if rule.on is Subject.AREA:
+        return plant.areas_seen
+    raise ValueError(f"{rule.code}: no subjects for {rule.on}")
+
+
+def _take(verdict: Verdict, rule: Rule, subject: Any, coverage: Coverage, result: Audit) -> None:
+    coverage.outcomes[_report(verdict, rule, _name(subject), subject, coverage, result)] += 1
+
+
+def _name(subject: Any) -> str:
+    return subject.file_name if isinstance(subject, Plant) else subject.name
+
+
+def _report(
+    verdict: Verdict, rule: Rule, name: str, subject: Any, coverage: Coverage, result: Audit
+) -> Outcome:
+    if verdict is None:
+        return Outcome.CLEAR
+    if isinstance(verdict, Clear):
+        coverage.assumed.update(verdict.assumed)
+        return Outcome.CLEAR
+    if isinstance(verdict, NotApplicable):
+        return Outcome.NOT_APPLICABLE
+    if isinstance(verdict, Unchecked):
+        coverage.because.update(verdict.fields)
+        coverage.unchecked.setdefault(verdict.fields, []).append(name)
+        return Outcome.UNCHECKED
+    outcome = Outcome.CLEAR
+    for each in _each(verdict):
+        finding = _finding(each, rule, name, subject)
+        result.findings.append(finding)
+        coverage.assumed.update(each.assumed)
+        if outcome is not Outcome.FINDING:
+            outcome = finding.outcome
+    return outcome
+
+
+def _each(verdict: Verdict) -> Iterator[Found]:
+    if isinstance(verdict, Found):
+        yield verdict
+    elif isinstance(verdict, Sequence):
+        yield from verdict
+
+
+def _unchecked(fields: tuple[str, ...], name: str, coverage: Coverage) -> None:
+    coverage.outcomes[Outcome.UNCHECKED] += 1
+    coverage.because.update(fields)
+    coverage.unchecked.setdefault(fields, []).append(name)
+
+
+def _finding(found: Found, rule: Rule, name: str, subject: Any) -> Finding:
+    template = found.message or rule.message
+    values: Mapping[str, Any] = found.values
+    return Finding(
+        rule=rule.code,
+        severity=rule.severity,
+        outcome=Outcome.REVIEW if isinstance(found, Review) else Outcome.FINDING,
+        subject=found.subject or name,
+        part=found.part,
+        fields=tuple(title_of(field) for field in found.fields),
+        message=template.format_map(values),
+        values=values,
+        found=found.found,
+        wanted=found.wanted,
+        off_by=found.off_by,
+        working=found.working,
+        assumed=found.assumed,
+        fixes=found.fixes,
+        cells=_cells(found, subject),
+        cause=template,
+    )
+
+
+def _cells(found: Found, subject: Any) -> tuple[Cell, ...]:
+    cells: list[Cell] = []
+    owner = subject.device if isinstance(subject, Circuit) else subject
+    if hasattr(owner, "cells"):
+        for name in found.fields:
+            if name.startswith("row.") and isinstance(subject, Circuit):
+                if subject.row is not None:
+                    cells.extend(subject.row.cells(name[4:]))
+                continue
+            cells.extend(owner.cells(name))
+    cells.extend(found.cells)
+    if not cells and isinstance(owner, Installed):
+        cells.extend(owner.cells("tag"))
+    return tuple(dict.fromkeys(cells))
+
+
+def _assumptions(plant: Plant, result: Audit) -> tuple[str, ...]:
+    said: dict[str, None] = dict.fromkeys(plant.assumptions)
+    for coverage in result.coverage.values():
+        for text in coverage.assumed:
+            said.setdefault(text)
+    return tuple(said)
+
+

@@ -1,0 +1,142 @@
+"""manage.py audit: one command from the lists to the exception list and the loop sheets."""
+
+from __future__ import annotations
+
+import hashlib
+import sys
+from argparse import ArgumentParser
+from pathlib import Path
+from typing import Any
+
+from django.core.management.base import BaseCommand
+
+from instruments import VERSION
+from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.workbook.lists import NoTags, read_lists
+from instruments.workbook.reader import UnreadableFile
+from loops.columns import SHEETS as LOOP_SHEETS
+from loops.plant import assemble
+from validation.audit import Audit, audit
+from validation.finding import Outcome, Severity
+from validation.report.findings_json import as_text, counts
+from validation.report.outputs import CannotWrite, Outputs
+from validation.report.progress import Progress
+
+FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
+
+
+class Command(BaseCommand):
+    """Read the lists, run every rule, write the exception list, the loop sheets and findings.json."""
+
+    help = (
+        "Reads a plant's instrument list (.xlsx, .xlsm or .csv; several files are one plant), runs every rule over "
+        "the whole of it and writes exceptions.xlsx, loop-sheets.pdf and findings.json. Exit status: 0 finished; "
+        "1 findings at or above --fail-on; 2 something cannot be read or written; 3 a rule broke."
+    )
+    requires_system_checks: list[str] = []
+
+    def add_arguments(self, parser: ArgumentParser) -> None:
+        """Declare the options."""
+        parser.add_argument("lists", nargs="*", metavar="LIST", help="the list, or all lists of one plant")
+        parser.add_argument("--to", required=True, metavar="DIR", help="the folder for the outputs")
+        parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
+        parser.add_argument("--mapping", metavar="mapping.toml", help="how headings are to be understood")
+        parser.add_argument("--no-sheets", action="store_true", help="leave out loop-sheets.pdf")
+        parser.add_argument("--no-annotated", action="store_true", help="leave out the annotated copy")
+        parser.add_argument(
+            "--fail-on", choices=[severity.value for severity in Severity],
+            help="exit with 1 where there is a finding of this severity or a worse one",
+        )
+
+    def handle(self, *args: Any, **options: Any) -> None:
+        """Run and leave with the exit status."""
+        sys.exit(self.run_audit(options))
+
+    def run_audit(self, options: dict[str, Any]) -> int:
+        """Return the exit status."""
+        if not options["lists"]:
+            return self._cannot("name the list to audit; the plant's own index cannot be kept yet")
+        if options["mapping"]:
+            return self._cannot("--mapping: mapping files cannot be given back yet; run without it")
+        paths = [Path(name) for name in options["lists"]]
+        plant_toml = Path(options["plant"]) if options["plant"] else None
+        with Progress(self.stderr) as progress:
+            try:
+                progress.stage("reading")
+                inputs = {str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]}
+                lists = read_lists(paths, (*INSTRUMENT_SHEETS, *LOOP_SHEETS), plant_toml=plant_toml)
+                progress.stage("putting the plant together")
+                plant = assemble(lists)
+                result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
+                folder = Path(options["to"])
+                with Outputs(folder) as outputs:
+                    self._write(outputs, result, inputs, options, progress)
+            except (UnreadableFile, NoTags, CannotWrite) as error:
+                return self._cannot(str(error))
+            except OSError as error:
+                return self._cannot(f"{error.filename or 'a file'}: {(error.strerror or str(error)).lower()}")
+        self._say(result, Path(options["to"]), outputs)
+        if result.broken:
+            return BROKEN
+        if options["fail_on"]:
+            limit = Severity(options["fail_on"]).rank
+            if any(finding.severity.rank <= limit for finding in result.of(Outcome.FINDING)):
+                return FOUND
+        return FINISHED
+
+    def _write(
+        self, outputs: Outputs, result: Audit, inputs: dict[str, str], options: dict[str, Any], progress: Progress
+    ) -> None:
+        from validation.report.exceptions import write_exceptions
+
+        progress.stage("writing exceptions.xlsx")
+        outputs.add("exceptions.xlsx", lambda path: write_exceptions(result, path))
+        if not options["no_sheets"]:
+            from loops.sheet.pdf import write_sheets
+            from validation.report.sheet_notes import notes_by_loop
+
+            progress.stage("drawing loop-sheets.pdf")
+            outputs.add(
+                "loop-sheets.pdf",
+                lambda path: write_sheets(
+                    result.plant, path, notes=notes_by_loop(result),
+                    on_sheet=lambda number, of: progress.step("sheets", number, of),
+                ),
+            )
+        digests = dict(outputs.digests)
+        text = as_text(result, digests=digests, version=VERSION, inputs=inputs)
+        outputs.add("findings.json", lambda path: path.write_text(text, encoding="utf-8") and None)
+
+    def _cannot(self, text: str) -> int:
+        self.stderr.write(f"audit: {text}")
+        return UNREADABLE
+
+    def _say(self, result: Audit, folder: Path, outputs: Outputs) -> None:
+        figures = counts(result)
+        say = self.stdout.write
+        say(
+            f"{figures['tags']} tags, {figures['loops']} loops, {figures['circuits']} circuits from "
+            f"{figures['rows']} rows; {figures['cells_read']} cells read, {figures['cells_unread']} unread"
+        )
+        say(
+            f"findings: {figures['danger']} danger, {figures['fault']} fault, {figures['gap']} gap; "
+            f"{figures['review']} to review; {figures['unchecked']} checks could not be made for want of data"
+        )
+        guessed = [note for sheet in result.plant.lists.sheets for note in sheet.guesses]
+        for note in guessed[:20]:
+            say(f"heading guessed: {note}")
+        for each in result.broken[:5]:
+            self.stderr.write(f"rule {each.rule} could not be run on {each.subject}: {each.error}")
+        if len(result.broken) > 5:
+            self.stderr.write(f"and {len(result.broken) - 5} more; see findings.json")
+        say(f"written to {folder}: {', '.join(outputs.digests)}")
+
+
+def _digest(path: Path) -> str:
+    try:
+        with path.open("rb") as file:
+            return hashlib.file_digest(file, "sha256").hexdigest()
+    except IsADirectoryError as error:
+        raise UnreadableFile(str(path), "", "is a folder; name a file") from error
+    except OSError as error:
+        raise UnreadableFile(str(path), "", (error.strerror or str(error)).lower()) from error
