@@ -1,9 +1,9 @@
 """The command that runs every test: pytest, with lint, types, import contracts and migrations among them."""
 
-import argparse
 import os
 import sys
 from collections.abc import Sequence
+from typing import Any
 
 import pytest
 from django.conf import settings
@@ -19,12 +19,16 @@ class Command(BaseCommand):
     )
     requires_system_checks = ()  # they are among the tests
 
-    def add_arguments(self, parser: CommandParser) -> None:
-        """Take everything but --help, options included."""
-        parser.add_argument("arguments", nargs=argparse.REMAINDER, metavar="...", help="arguments of pytest")
+    def create_parser(self, prog_name: str, subcommand: str, **kwargs: Any) -> CommandParser:
+        """Make a parser for the help alone, without Django's options: pytest takes them all."""
+        return CommandParser(
+            prog=f"{os.path.basename(prog_name)} {subcommand}",
+            usage="%(prog)s [argument of pytest ...]",
+            description=self.help,
+        )
 
     def run_from_argv(self, argv: list[str]) -> None:
-        """Hand the command line on unread: Django's parser would refuse pytest's options."""
+        """Hand the command line on unread, whatever Django would make of it."""
         if argv[2:3] in (["-h"], ["--help"]):
             self.print_help(*argv[:2])
             return
