@@ -49,7 +49,9 @@ class Fix:
         The fields it changes and their new values, as they would be written in the list; empty
         where the fix is no value. Applied, it clears its finding.
     subject
-        The subject whose row it changes, where that is not the finding's own.
+        The tag, number or code of the row that it changes, where that is not the finding's own subject.
+    sheet
+        The kind of sheet that the row stands in.
     makes
         Codes of the rules that would find something once it is applied.
     """
@@ -57,6 +59,7 @@ class Fix:
     text: str
     change: Mapping[str, str] = field(default=MappingProxyType({}))
     subject: str = ""
+    sheet: str = "Instruments"
     makes: tuple[str, ...] = ()
 
 

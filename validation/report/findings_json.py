@@ -109,7 +109,8 @@ def finding_data(finding: Finding) -> dict[str, Any]:
             {
                 "text": fix.text,
                 "change": dict(fix.change),
-                **({"subject": fix.subject} if fix.subject else {}),
+                "subject": fix.subject or finding.subject,
+                "sheet": fix.sheet,
                 "makes": list(fix.makes),
             }
             for fix in finding.fixes
