@@ -388,11 +388,11 @@ _CLASS: Final = re.compile(
     r"\b(?:class|cl|klasse|kl|tol|tolerance)[ .:]{0,2}(?:aa|a|b|c|1|2|3)\b(?: ?/ ?(?:aa|a|b|c)\b)?"
 )
 
-_THERMOCOUPLE_WORD: Final = re.compile(r"\b(?:tc|thermocouples?|thermoelemente?|thermopaare?)(?=[a-z]?\b)")
+_THERMOCOUPLE_WORD: Final = re.compile(r"\b(?:tc|thermocouples?|\w*thermoelemente?|thermopaare?)(?=[a-z]?\b)")
 _LETTER_BEHIND: Final = re.compile(  # "TC type K", "Typ K", "TC-K", "TCK", "type J/K"
-    r"(?<![a-z])(?:type|typ|tc|te|thermocouples?|thermoelemente?|thermopaare?)"
-    r"[ :=.\-_(/\"']{0,3}([a-z])(?![a-z0-9])"
-    r"(?: ?(?:/|&|\+|or|and|oder|und) ?([a-z])(?![a-z0-9]))?"
+    r"(?<![a-z])"
+    r"(?:(?:type|typ(?!e)|tc)[ :=.\-_(/\"']{0,3}|(?:te|thermocouple|thermoelement)[ :=.\-_(/\"']{1,3})"
+    r"([a-z])(?![a-z0-9])(?: ?(?:/|&|\+|or|and|oder|und) ?([a-z])(?![a-z0-9]))?"
 )
 _LETTER_BEFORE: Final = re.compile(  # "K type", "K-Typ"
     r"(?<![a-z0-9/&+])([a-z])[ \-]?(?:type|typ|thermocouples?|tc)(?![a-z])"
@@ -400,7 +400,7 @@ _LETTER_BEFORE: Final = re.compile(  # "K type", "K-Typ"
 _FIRST_LETTER: Final = re.compile(r"([a-z])(?![a-z0-9])")
 _BESIDE_A_LETTER: Final = re.compile(
     r"\b(?:duplex|simplex|dual|double|single|twin|mi|mims|(?:un)?grounded|insulated|isolated|exposed|junction"
-    r"|sheath(?:ed)?|wires?|w|class|cl|klasse|kl|mm|iec|ansi|din|en|[0-9]+)\b|[^a-z0-9]"
+    r"|sheath(?:ed)?|wires?|w|tc|thermocouples?|mm|iec|ansi|din|en|[0-9]+)\b|[^a-z0-9]"
 )
 
 # The alloys of the two legs, by the chemist's and by the trade's names.
@@ -415,6 +415,13 @@ _METALS: Final = {
     "kupfer": "cu",
     **dict.fromkeys(("constantan", "konstantan", "const", "konst", "con", "ko"), "cuni"),
 }
+_ELEMENTS: Final = (
+    (re.compile(r"nickel"), "ni"),
+    (re.compile(r"chrom(?:ium)?(?!el)"), "cr"),
+    (re.compile(r"alumini?um"), "al"),
+    (re.compile(r"rhodium"), "rh"),
+    (re.compile(r"platin(?:um)?(?=[ \-]{0,2}(?:[0-9]{1,2} ?%? ?)?rh)"), "pt"),
+)
 _LEG: Final = (
     r"(nicrosil|nisil|ni[ \-]?cr[ \-]?si|ni[ \-]?cr|ni[ \-]?si|ni[ \-]?al|cu[ \-]?ni|chromel|alumel"
     r"|constantan|konstantan|const|konst|con|ko|iron|eisen|copper|kupfer|cr|al|fe|cu|ni)"
@@ -440,6 +447,8 @@ def _plain(text: str) -> str:
     folded = folded.translate({0x2018: "'", 0x2019: "'", 0x201C: '"', 0x201D: '"', 0x201E: '"', 0x2212: "-"})
     folded = re.sub(r"[\u2010-\u2015]", "-", " ".join(folded.split()))
     folded = re.sub(r"\bt[./] ?c\b\.?", "tc", folded)
+    for name, symbol in _ELEMENTS:
+        folded = name.sub(symbol, folded)
     return re.sub(r"([0-9]) ?[x\u00d7*] ?", r"\1 ", folded)
 
 
@@ -479,11 +488,13 @@ def read_sensor_type(text: str) -> SensorType | None:
         return None
     plain = _CLASS.sub(" ", plain)
     resistances = {found for pattern in _PLATINUM for found in pattern.findall(plain)}
-    letters = _alloy_letters(plain)
-    if _THERMOCOUPLE_WORD.search(plain) or not (resistances or _RESISTOR_WORD.search(plain)):
-        # beside a resistor "type B" is its class
-        letters |= _stated_letters(plain)
-    if letters and not resistances and (first := _FIRST_LETTER.match(plain)):
+    letters = _alloy_letters(plain) | _stated_letters(plain)
+    if resistances or _RESISTOR_WORD.search(plain):
+        if not _THERMOCOUPLE_WORD.search(plain):
+            letters -= {"A", "B", "C"}  # beside a resistor "type B" is its class
+        if letters:
+            return None
+    elif letters and (first := _FIRST_LETTER.match(plain)):
         letters |= {first[1].upper()} & _BARE_LETTERS
     if not letters and not resistances:
         letters = {_BESIDE_A_LETTER.sub("", plain).upper()} & _BARE_LETTERS

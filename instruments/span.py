@@ -225,6 +225,17 @@ def range_with_span(
     return nearest_range_inside(*_without_noise(lrv, wider), lrl, url)
 
 
+def usual_over_range(url: float) -> float:
+    """Pressure that a gauge or absolute body usually bears: twice its upper limit.
+
+    Common practice, no source. For comparison only: what a body bears is on its record.
+
+    >>> usual_over_range(10.0)
+    20.0
+    """
+    return 2.0 * abs(url)
+
+
 def zero_shift_limit(url: float, percent: float) -> float:
     """Largest zero elevation or suppression of a body, from its limit in percent of URL.
 
