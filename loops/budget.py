@@ -2,14 +2,20 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from instruments.installed import Installed
 from instruments.kind import Kind
+
+from instruments.installed import Installed
 from instruments.origin import Cell
 from instruments.plant_data import PlantData
-from loops.cable import Conductor, ResistancePer, conductor_ohm_per_km_20c, loop_resistance_ohm, read_conductor_size
+from loops.cable import (
+    Conductor,
+    ResistancePer,
+    conductor_ohm_per_km_20c,
+    loop_resistance_ohm,
+    read_conductor_size,
+)
 from loops.circuit import ANALOGUE_INPUT, Circuit
 from loops.power import (
     HIGH_ALARM_MA,
@@ -121,7 +127,9 @@ def cable_path(circuit: Circuit) -> CablePath | None:
     per_km = ohm_per_km(circuit)
     if circuit.cable_length_m is None or per_km is None:
         return None
-    return CablePath(length_m=circuit.cable_length_m.number, ohm_per_km_20c=per_km[0], per=per_km[1], conductor=per_km[2])
+    return CablePath(
+        length_m=circuit.cable_length_m.number, ohm_per_km_20c=per_km[0], per=per_km[1], conductor=per_km[2]
+    )
 
 
 def ohm_per_km(circuit: Circuit) -> tuple[float, ResistancePer, Conductor | None] | None:
@@ -132,7 +140,9 @@ def ohm_per_km(circuit: Circuit) -> tuple[float, ResistancePer, Conductor | None
         stranding = (kind.class_ or "").strip()
         digits = [int(letter) for letter in stranding if letter.isdigit()]
         conductor = replace(
-            conductor, conductor_class=digits[0] if digits else conductor.conductor_class, tinned=bool(kind.tinned)
+            conductor,
+            conductor_class=digits[0] if digits else conductor.conductor_class,
+            tinned=bool(kind.tinned),
         )
     if kind is not None and kind.ohm_per_km is not None:
         per: ResistancePer = "loop" if kind.resistance_per == "loop" else "conductor"
@@ -207,16 +217,28 @@ def lift_off(circuit: Circuit, data: PlantData) -> Budget:
     kindest = worst = at_20 = None
     if lift_off_v is not None and source.kindest_v is not None:
         kindest = voltage_budget(
-            source.kindest_v, current_ma, needed_v=lift_off_v, resistances=(*kind_series, *cable), fixed_drops=drops
+            source.kindest_v,
+            current_ma,
+            needed_v=lift_off_v,
+            resistances=(*kind_series, *cable),
+            fixed_drops=drops,
         )
     if lift_off_v is not None and source.worst_v is not None and not missing:
         worst = voltage_budget(
-            source.worst_v, current_ma, needed_v=lift_off_v, resistances=(*worst_series, *cable), fixed_drops=drops
+            source.worst_v,
+            current_ma,
+            needed_v=lift_off_v,
+            resistances=(*worst_series, *cable),
+            fixed_drops=drops,
         )
         at_20 = None
         if source.same_at_20_ma:
             at_20 = voltage_budget(
-                source.worst_v, NOMINAL_MA, needed_v=lift_off_v, resistances=(*worst_series, *cable), fixed_drops=drops
+                source.worst_v,
+                NOMINAL_MA,
+                needed_v=lift_off_v,
+                resistances=(*worst_series, *cable),
+                fixed_drops=drops,
             )
     return Budget(
         current_ma=current_ma,
@@ -337,7 +359,9 @@ def _source(
     barrier = circuit.barrier
     if circuit.barrier_named and barrier is None:
         missing.append("barrier")
-        return _Source(name="barrier", kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=False)
+        return _Source(
+            name="barrier", kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=False
+        )
     entry = None
     name = "supply"
     if barrier is not None and _is_isolator(barrier):
@@ -345,13 +369,13 @@ def _source(
     elif barrier is None and circuit.card is not None and circuit.card.available_20ma_v is not None:
         entry, name = circuit.card, "card"
     if entry is not None:
-        volts, title = _available_v(entry.available_20ma_v, entry.available_alarm_v, entry.high_alarm_ma, current_ma)
+        volts, title = _available_v(
+            entry.available_20ma_v, entry.available_alarm_v, entry.high_alarm_ma, current_ma
+        )
         if volts is None:
             missing.append(title)
         cells.extend(entry.cells("available_alarm_v" if current_ma > NOMINAL_MA else "available_20ma_v"))
-        return _Source(
-            name=name, kindest_v=volts, worst_v=volts, receiver_counts=False, same_at_20_ma=False
-        )
+        return _Source(name=name, kindest_v=volts, worst_v=volts, receiver_counts=False, same_at_20_ma=False)
     if circuit.supply_min_v is not None:
         cells.extend(circuit.supply_min_v.cells)
         volts = circuit.supply_min_v.number
@@ -362,7 +386,10 @@ def _source(
         cells.extend(circuit.supply_nominal_v.cells)
         assumed.append(f"supply {nominal_v:g} V may be {percent:g} % low")
         return _Source(
-            name=name, kindest_v=nominal_v, worst_v=nominal_v * (1 - percent / 100), receiver_counts=True,
+            name=name,
+            kindest_v=nominal_v,
+            worst_v=nominal_v * (1 - percent / 100),
+            receiver_counts=True,
             same_at_20_ma=True,
         )
     missing.append("supply V min")
@@ -440,5 +467,3 @@ def _indicator(
         else:
             series.append((member.name, kind.resistance_ohm))
         cells.extend(member.cells("type.resistance_ohm"))
-
-

@@ -9,28 +9,30 @@ from dataclasses import dataclass, field, replace
 from types import MappingProxyType
 from typing import Any
 
-from instruments.area import Area, Classification, area_from_classification, read_classification
-from instruments.installed import NOT_LIVE, Installed
 from instruments.kind import Kind, derive_kind
+from instruments.quantity import Quantity
+from instruments.workbook.lists import Lists
+
+from instruments.area import Area, Classification, area_from_classification, read_classification, understood
+from instruments.installed import NOT_LIVE, Installed
 from instruments.marking import Marking, read_marking
 from instruments.origin import Cell, Origin
-from instruments.plant_codes import CODES, PlantCode
+from instruments.plant_codes import PlantCode, codes_with
 from instruments.plant_data import PlantData
-from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
 from instruments.tag import (
-    PROFILES,
     TagProfile,
     TagReading,
+    assembly_key,
     best_profile,
     is_equipment_shape,
+    is_valve,
     loop_of,
     match_key,
     natural_key,
-    profile_from_pattern,
+    plant_profile,
     read_tag,
 )
-from instruments.workbook.lists import Lists
 from instruments.workbook.problem import CellProblem
 from loops.circuit import Circuit, Loop
 from loops.record import Cable, CableType, LoopRow, Termination
@@ -41,16 +43,48 @@ _FIELDS = tuple(each.name for each in dataclasses.fields(Instrument) if each.nam
 _TYPE_FIELDS = tuple(each.name for each in dataclasses.fields(DeviceType) if each.name not in _RECORD_OWN)
 
 # What a second row of one instrument may say differently: its other signal and how that is wired.
-SIGNAL_FIELDS = frozenset({
-    "signal", "wires", "io_type", "io_address", "card", "system", "power_supply", "barrier", "receiver_ohm",
-    "junction_box", "terminals", "cable", "cable_type", "cable_length_m", "conductor", "pair", "contact",
-    "trip_action", "failure_direction", "bad_signal_detection",
-})
+SIGNAL_FIELDS = frozenset(
+    {
+        "signal",
+        "wires",
+        "io_type",
+        "io_address",
+        "card",
+        "system",
+        "power_supply",
+        "barrier",
+        "receiver_ohm",
+        "junction_box",
+        "terminals",
+        "cable",
+        "cable_type",
+        "cable_length_m",
+        "conductor",
+        "pair",
+        "contact",
+        "trip_action",
+        "failure_direction",
+        "bad_signal_detection",
+    }
+)
 # Not statements about the instrument.
-_NO_STATEMENT = frozenset({
-    "tag", "tag_written", "tag_cell", "tag_number", "kind_written", "place", "remarks", "revision", "hold", "own",
-    "range_unit", "system_unit", "settings_unit",
-})
+_NO_STATEMENT = frozenset(
+    {
+        "tag",
+        "tag_written",
+        "tag_cell",
+        "tag_number",
+        "kind_written",
+        "place",
+        "remarks",
+        "revision",
+        "hold",
+        "own",
+        "range_unit",
+        "system_unit",
+        "settings_unit",
+    }
+)
 COMPARED = tuple(name for name in _FIELDS if name not in _NO_STATEMENT)
 # Fields that a row and its device type can both state.
 ROW_AND_TYPE = ("ex_marking", "certificate", "signal", "wires", "ip_code", "maker", "model")
@@ -190,10 +224,11 @@ def assemble(lists: Lists) -> Plant:
     io_list: tuple[Instrument, ...] = records.get("IO list", ())
     if not index:
         index, io_list = io_list, ()
-    codes = {**CODES, **_plant_codes(data)}
+    codes = codes_with(data.plant_codes)
     profile, assumptions = _profile(data, index)
     types, types_twice = _by_name(records.get("Device types", ()), "code")
-    areas, areas_twice = _by_name(records.get("Areas", ()), "code")
+    listed_areas = tuple(understood(area) for area in records.get("Areas", ()))
+    areas, areas_twice = _by_name(listed_areas, "code")
     cables, cables_twice = _by_name(records.get("Cables", ()), "number")
     cable_types, cable_types_twice = _by_name(records.get("Cable types", ()), "code")
     readings: dict[str, TagReading] = {}
@@ -202,7 +237,10 @@ def assemble(lists: Lists) -> Plant:
         reading = readings.get(text)
         if reading is None:
             reading = readings[text] = read_tag(
-                text, profile=profile, codes=codes, users_letters=frozenset(data.users_letters),
+                text,
+                profile=profile,
+                codes=codes,
+                users_letters=frozenset(data.users_letters),
                 numbering=data.numbering,
             )
         return reading
@@ -219,7 +257,7 @@ def assemble(lists: Lists) -> Plant:
         names[name] += 1
         placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
     first = [fitter.install(*each) for each in placed]
-    first = _with_loops(first, codes, data)
+    first = _with_loops(first, data)
     first = _with_kinds(first, codes)
     first.sort(key=lambda each: (natural_key(each.name), each.name))
     by_tag: dict[Any, list[Installed]] = defaultdict(list)
@@ -232,7 +270,7 @@ def assemble(lists: Lists) -> Plant:
         instruments=tuple(first),
         circuits=(),
         loops=(),
-        areas_seen=_areas_seen(records.get("Areas", ()), first),
+        areas_seen=_areas_seen(listed_areas, first),
         types=types,
         types_twice=types_twice,
         areas=areas,
@@ -274,26 +312,14 @@ def _lookup_key(reading: TagReading) -> Any:
     return match_key(reading) if reading.parsed else _key(reading.normalised)
 
 
-def _plant_codes(data: PlantData) -> dict[str, PlantCode]:
-    from instruments.kind import kind_from_words
-
-    codes: dict[str, PlantCode] = {}
-    for code, (kind_text, letter) in data.plant_codes.items():
-        codes[code] = PlantCode(code=code, kind=kind_from_words(kind_text), letter=letter or None, meaning=kind_text)
-    return codes
-
-
 def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, tuple[str, ...]]:
-    stated = (data.tag_pattern or "").strip()
-    if stated:
-        for profile in PROFILES.values() if isinstance(PROFILES, Mapping) else PROFILES:
-            if profile.name == stated.casefold():
-                return profile, ()
-        try:
-            return profile_from_pattern(stated), ()
-        except ValueError as error:
-            chosen = best_profile([record.tag for record in index if record.tag])
-            return chosen, (f"the plant's tag pattern could not be used ({error}); tags read as {chosen.name}",)
+    try:
+        stated = plant_profile(data.tag_pattern)
+    except ValueError as error:
+        chosen = best_profile([record.tag for record in index if record.tag])
+        return chosen, (f"the plant's tag pattern could not be used ({error}); tags read as {chosen.name}",)
+    if stated is not None:
+        return stated, ()
     chosen = best_profile([record.tag for record in index if record.tag])
     return chosen, (f"tag pattern not stated: most tags fit {chosen.name}",)
 
@@ -356,14 +382,12 @@ def _one_or_several(
 
 def disagreements(one: Instrument, other: Instrument) -> tuple[str, ...]:
     """Return the fields that both rows fill and in which they disagree, signal and wiring among them."""
-    found = tuple(
-        name
-        for name in COMPARED
-        if not same_value(getattr(one, name), getattr(other, name))
-    )
+    found = tuple(name for name in COMPARED if not same_value(getattr(one, name), getattr(other, name)))
     if one.own is not None and other.own is not None:
         found += tuple(
-            f"type.{name}" for name in _TYPE_FIELDS if not same_value(getattr(one.own, name), getattr(other.own, name))
+            f"type.{name}"
+            for name in _TYPE_FIELDS
+            if not same_value(getattr(one.own, name), getattr(other.own, name))
         )
     return found
 
@@ -373,7 +397,9 @@ def rows_agree(one: Instrument, other: Instrument) -> bool:
     differing = set(disagreements(one, other)) - SIGNAL_FIELDS
     if not differing:
         return True
-    both_addressed = bool(one.io_address and other.io_address) and _key(one.io_address) != _key(other.io_address)
+    both_addressed = bool(one.io_address and other.io_address) and _key(one.io_address) != _key(
+        other.io_address
+    )
     return both_addressed and differing <= {"service"}
 
 
@@ -390,7 +416,11 @@ def same_value(one: Any, other: Any) -> bool:
         if one.unit.kind != other.unit.kind:
             return False
         unstated = ("unstated", None)
-        if one.reference != other.reference and one.reference not in unstated and other.reference not in unstated:
+        if (
+            one.reference != other.reference
+            and one.reference not in unstated
+            and other.reference not in unstated
+        ):
             return False
         return abs(one.base - other.base) <= 1e-9 * max(abs(one.base), abs(other.base))
     if isinstance(one, str) and isinstance(other, str):
@@ -464,7 +494,8 @@ class _Fitter:
     def assumptions(self) -> tuple[str, ...]:
         """What was taken from the rows' own words, listed once."""
         return tuple(
-            f"'{text}' in an area column is read as: not a hazardous area" for text in sorted(self._unclassified)
+            f"'{text}' in an area column is read as: not a hazardous area"
+            for text in sorted(self._unclassified)
         )
 
     def install(
@@ -478,8 +509,11 @@ class _Fitter:
         if not live and record.tag:
             name = f"{name} ({record.status})"
         body = device.body if device else None
-        if body is None and device is not None and device.url is not None and device.url.reference in (
-            "gauge", "absolute", "differential"
+        if (
+            body is None
+            and device is not None
+            and device.url is not None
+            and device.url.reference in ("gauge", "absolute", "differential")
         ):
             body = device.url.reference
         signals = _signals(rows)
@@ -519,7 +553,10 @@ class _Fitter:
                 elsewhere[name] = record.elsewhere.get(name) or record.origin
         values.update({name: value for name, value in stated.items() if name in _TYPE_FIELDS})
         return replace(
-            base, **values, elsewhere=MappingProxyType(elsewhere), unread=(base.unread | own.unread) - values.keys()
+            base,
+            **values,
+            elsewhere=MappingProxyType(elsewhere),
+            unread=(base.unread | own.unread) - values.keys(),
         )
 
     def _marking(self, text: str) -> Marking:
@@ -566,32 +603,33 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
     kept: list[Instrument] = []
     for row in rows:
         if not any(
-            all(same_value(getattr(row, name), getattr(other, name)) for name in SIGNAL_FIELDS) for other in kept
+            all(same_value(getattr(row, name), getattr(other, name)) for name in SIGNAL_FIELDS)
+            for other in kept
         ):
             kept.append(row)
     return tuple(kept)
 
 
-def _with_loops(
-    found: list[Installed], codes: Mapping[str, PlantCode], data: PlantData
-) -> list[Installed]:
+def _with_loops(found: list[Installed], codes: Mapping[str, PlantCode], data: PlantData) -> list[Installed]:
     """Give each instrument its loop: the column's, else the one its tag gives."""
     valves: dict[tuple[str, str], str] = {}
     derived: list[str | None] = []
     for each in found:
         loop = None
         if each.tag is not None and each.tag.parsed:
-            loop = loop_of(each.tag, data.numbering, codes)
-            if loop and each.letters.endswith("V") and each.live:
-                valves.setdefault((each.tag.prefix or "", each.tag.number or ""), each.record.loop or loop)
+            loop = loop_of(each.tag, numbering=data.numbering)
+            key = assembly_key(each.tag)
+            if key is not None and is_valve(each.tag) and each.live and (each.record.loop or loop):
+                valves.setdefault(key, each.record.loop or loop)
         derived.append(loop)
     result: list[Installed] = []
     for each, loop in zip(found, derived, strict=True):
         if each.record.loop:
             result.append(replace(each, loop=each.record.loop, loop_from="column"))
             continue
-        if loop and each.tag is not None and each.letters[:1] in ("X", "Z", "H", "Y"):
-            loop = valves.get((each.tag.prefix or "", each.tag.number or ""), loop)
+        key = assembly_key(each.tag) if each.tag is not None else None
+        if key is not None:
+            loop = valves.get(key, loop)
         result.append(replace(each, loop=loop, loop_from="tag" if loop else ""))
     return result
 
@@ -605,7 +643,9 @@ def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[
     result: list[Installed] = []
     for each in found:
         record = each.record
-        own_signal = any(row.signal or row.io_type or row.io_address for row in each.signals) or bool(record.device_type)
+        own_signal = any(row.signal or row.io_type or row.io_address for row in each.signals) or bool(
+            record.device_type
+        )
         point = bool(
             each.loop
             and _key(each.loop) not in bears

@@ -7,8 +7,9 @@ from collections import defaultdict
 from collections.abc import Sequence
 from typing import TYPE_CHECKING, Any
 
-from instruments.installed import Installed
 from instruments.kind import Kind
+
+from instruments.installed import Installed
 from instruments.record import DeviceType, Instrument
 from instruments.tag import natural_key
 from loops.circuit import (
@@ -28,7 +29,9 @@ if TYPE_CHECKING:
     from loops.plant import Plant
 
 _NO_IO = frozenset({"", "none", "soft", "-", "local", "no", "n/a", "na", "0"})
-_VOLTS = re.compile(r"(?<![\d.,])(\d{1,3}(?:[.,]\d{1,2})?)\s*v(?![a-z]*a\b)\s*(ac|dc|d\.c\.|a\.c\.|=|~)?", re.IGNORECASE)
+_VOLTS = re.compile(
+    r"(?<![\d.,])(\d{1,3}(?:[.,]\d{1,2})?)\s*v(?![a-z]*a\b)\s*(ac|dc|d\.c\.|a\.c\.|=|~)?", re.IGNORECASE
+)
 _LOOP_POWERED = re.compile(r"\b(loop|2[\s-]?wire|two[\s-]?wire|2l)\b", re.IGNORECASE)
 _KIND_WORDS = (
     (re.compile(r"^(?:is[\s-]?|sis[\s-]?|h)?ai\b|analog\w* in", re.IGNORECASE), ANALOGUE_INPUT),
@@ -40,12 +43,25 @@ _KIND_WORDS = (
     (re.compile(r"^t/?c\b|thermoc", re.IGNORECASE), THERMOCOUPLE),
 )
 # Devices whose signal makes a circuit though no I/O is given for it.
-_SIGNAL_KINDS = frozenset({
-    Kind.TRANSMITTER, Kind.ELEMENT, Kind.SWITCH, Kind.POSITIONER, Kind.HAND_SWITCH,
-})
+_SIGNAL_KINDS = frozenset(
+    {
+        Kind.TRANSMITTER,
+        Kind.ELEMENT,
+        Kind.SWITCH,
+        Kind.POSITIONER,
+        Kind.HAND_SWITCH,
+    }
+)
 _FIELD_ORDER = {
-    Kind.ELEMENT: 0, Kind.CONTROL_VALVE: 0, Kind.SWITCH: 1, Kind.TRANSMITTER: 1, Kind.POSITIONER: 1,
-    Kind.HAND_SWITCH: 1, Kind.INDICATOR: 2, Kind.BARRIER: 4, Kind.CARD: 5,
+    Kind.ELEMENT: 0,
+    Kind.CONTROL_VALVE: 0,
+    Kind.SWITCH: 1,
+    Kind.TRANSMITTER: 1,
+    Kind.POSITIONER: 1,
+    Kind.HAND_SWITCH: 1,
+    Kind.INDICATOR: 2,
+    Kind.BARRIER: 4,
+    Kind.CARD: 5,
 }
 
 
@@ -68,7 +84,9 @@ def wire(plant: Plant) -> tuple[tuple[Circuit, ...], tuple[Loop, ...]]:
     for each in plant.instruments:
         if not each.live:
             continue
-        made.extend((each, signal, rows.row_for(each, signal)) for signal in _signals(each, by_loop, plant, rows))
+        made.extend(
+            (each, signal, rows.row_for(each, signal)) for signal in _signals(each, by_loop, plant, rows)
+        )
     circuits = _circuits(made, by_loop, plant, rows)
     on_loop: dict[str, list[Circuit]] = defaultdict(list)
     for circuit in circuits:
@@ -175,9 +193,7 @@ def _signals(
 
 
 def _has_io(row: Instrument) -> bool:
-    return bool(
-        row.io_address or (row.io_type and row.io_type.strip().casefold() not in _NO_IO)
-    )
+    return bool(row.io_address or (row.io_type and row.io_type.strip().casefold() not in _NO_IO))
 
 
 def transmitter_of(element: Installed, loop: Sequence[Installed]) -> Installed | None:
@@ -228,7 +244,7 @@ def _circuits(
             for other in by_loop.get(_key(each.loop), ())
             if id(other) not in carrying and _rides_on(other, carriers[_key(each.loop)]) is each
         ]
-        members = sorted([each, *riders], key=lambda one: (_FIELD_ORDER.get(one.kind, 3) if one.kind else 3))
+        members = sorted([each, *riders], key=lambda one: _FIELD_ORDER.get(one.kind, 3) if one.kind else 3)
         circuits.append(_circuit(called, each, signal, row, kind, tuple(members), plant))
     return tuple(circuits)
 
@@ -245,7 +261,11 @@ def _rides_on(other: Installed, carriers: Sequence[Installed]) -> Installed | No
         wanted = frozenset({Kind.POSITIONER})
     else:
         return None
-    suitable = [each for each in carriers if each.kind in wanted or (each.measuring_point and wanted != {Kind.POSITIONER})]
+    suitable = [
+        each
+        for each in carriers
+        if each.kind in wanted or (each.measuring_point and wanted != {Kind.POSITIONER})
+    ]
     suffix = other.tag.suffix if other.tag else None
     for each in suitable:
         if each.tag is not None and each.tag.suffix == suffix:
@@ -370,7 +390,11 @@ def _length(row: LoopRow | None, signal: Instrument, record: Instrument, plant: 
     for owner in (signal, record):
         if owner.cable_length_m is not None:
             return _given(owner.cable_length_m, "row", owner, "cable_length_m")
-    cables = [plant.cables.get(_key(name)) for name in re.split(r"[,;\n]", signal.cable or record.cable or "") if name.strip()]
+    cables = [
+        plant.cables.get(_key(name))
+        for name in re.split(r"[,;\n]", signal.cable or record.cable or "")
+        if name.strip()
+    ]
     found = [cable for cable in cables if cable is not None]
     if found and len(found) == len(cables) and all(cable.length_m is not None for cable in found):
         return Given(

@@ -175,12 +175,17 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
             verdict = None
         if verdict:
             _take(verdict, rule, plant, coverage, result)
-            blocked = tuple(dict.fromkeys(title_of(name) for each in _each(verdict) for name in each.fields)) or (
-                "column",
-            )
+            blocked = tuple(
+                dict.fromkeys(title_of(name) for each in _each(verdict) for name in each.fields)
+            ) or ("column",)
     if rule.on is Subject.WHOLE:
-        _guard(lambda: _take(rule.check(plant), rule, plant, coverage, result), rule, plant.file_name, result,
-               raise_errors)
+        _guard(
+            lambda: _take(rule.check(plant), rule, plant, coverage, result),
+            rule,
+            plant.file_name,
+            result,
+            raise_errors,
+        )
         return coverage
     if rule.on is Subject.GROUP:
         _run_groups(rule, plant, coverage, result, raise_errors, blocked)
@@ -219,7 +224,12 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
 
 
 def _run_groups(
-    rule: Rule, plant: Plant, coverage: Coverage, result: Audit, raise_errors: bool, blocked: tuple[str, ...] | None
+    rule: Rule,
+    plant: Plant,
+    coverage: Coverage,
+    result: Audit,
+    raise_errors: bool,
+    blocked: tuple[str, ...] | None,
 ) -> None:
     members: dict[int, Installed] = {}
     for installed in plant.instruments:
@@ -379,5 +389,3 @@ def _assumptions(plant: Plant, result: Audit) -> tuple[str, ...]:
         for text in coverage.assumed:
             said.setdefault(text)
     return tuple(said)
-
-

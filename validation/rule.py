@@ -236,10 +236,22 @@ def _getter(name: str, on: Subject) -> Callable[[Any], Any]:
 
 
 _INSTALLED_FIELDS = frozenset({"kind", "loop", "marking", "area", "body"})
-_CIRCUIT_FIELDS = frozenset({
-    "kind", "card", "barrier", "supply_min_v", "supply_nominal_v", "supply_max_v", "receiver_ohm",
-    "cable_length_m", "conductor", "hart", "wires", "loop",
-})
+_CIRCUIT_FIELDS = frozenset(
+    {
+        "kind",
+        "card",
+        "barrier",
+        "supply_min_v",
+        "supply_nominal_v",
+        "supply_max_v",
+        "receiver_ohm",
+        "cable_length_m",
+        "conductor",
+        "hart",
+        "wires",
+        "loop",
+    }
+)
 
 
 def _where(function: Callable[..., Any]) -> str:

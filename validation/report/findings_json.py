@@ -7,6 +7,7 @@ from collections.abc import Mapping
 from typing import Any
 
 from instruments.quantity import Quantity
+
 from instruments.tag import natural_key
 from validation.audit import Audit
 from validation.finding import Finding, Outcome
@@ -36,7 +37,9 @@ def counts(audit: Audit) -> dict[str, int]:
     }
 
 
-def as_data(audit: Audit, *, digests: Mapping[str, str], version: str, inputs: Mapping[str, str]) -> dict[str, Any]:
+def as_data(
+    audit: Audit, *, digests: Mapping[str, str], version: str, inputs: Mapping[str, str]
+) -> dict[str, Any]:
     """Return the audit as plain data.
 
     Parameters

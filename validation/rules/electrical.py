@@ -4,9 +4,10 @@ from __future__ import annotations
 
 import re
 
-from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.quantity import format_number
+
+from instruments.installed import Installed
 from loops.budget import Budget, feeds_a_transmitter, highest_volts, lift_off
 from loops.circuit import Circuit
 from loops.plant import Plant
@@ -88,18 +89,26 @@ def _lift_off_fixes(circuit: Circuit, budget: Budget) -> tuple[Fix, ...]:
     cable = budget.cable
     common = {"needed_v": budget.lift_off_v, "fixed_drops": budget.fixed_drops}
     length_m = longest_cable_m(
-        budget.source_v, budget.current_ma, ohm_per_km_20c=cable.ohm_per_km_20c, conductor_c=budget.hot_c,
-        per=cable.per, resistances=budget.resistances, **common,
+        budget.source_v,
+        budget.current_ma,
+        ohm_per_km_20c=cable.ohm_per_km_20c,
+        conductor_c=budget.hot_c,
+        per=cable.per,
+        resistances=budget.resistances,
+        **common,
     )
     if length_m:
-        fixes.append(
-            Fix(text=f"cable no longer than {length_m} m", **_length_change(circuit, length_m))
-        )
+        fixes.append(Fix(text=f"cable no longer than {length_m} m", **_length_change(circuit, length_m)))
     if cable.conductor is not None:
         size_mm2 = smallest_conductor(
-            budget.source_v, budget.current_ma, length_m=cable.length_m, conductor_c=budget.hot_c,
-            conductor_class=cable.conductor.conductor_class, tinned=cable.conductor.tinned,
-            resistances=budget.resistances, **common,
+            budget.source_v,
+            budget.current_ma,
+            length_m=cable.length_m,
+            conductor_c=budget.hot_c,
+            conductor_class=cable.conductor.conductor_class,
+            tinned=cable.conductor.tinned,
+            resistances=budget.resistances,
+            **common,
         )
         if size_mm2 is not None:
             fixes.append(
@@ -110,7 +119,11 @@ def _lift_off_fixes(circuit: Circuit, budget: Budget) -> tuple[Fix, ...]:
         volts = least_supply_v(budget.current_ma, resistances=resistances, **common)
         change: dict[str, object] = {}
         if circuit.row is not None and circuit.row.supply_min_v is not None:
-            change = {"change": {"supply V min": f"{volts:g}"}, "subject": _row_subject(circuit), "sheet": "Loops"}
+            change = {
+                "change": {"supply V min": f"{volts:g}"},
+                "subject": _row_subject(circuit),
+                "sheet": "Loops",
+            }
         fixes.append(Fix(text=f"supply of at least {volts:g} V at its lowest", **change))  # type: ignore[arg-type]
     return tuple(fixes)
 
@@ -177,7 +190,11 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
     )
     change: dict[str, object] = {}
     if circuit.row is not None and circuit.row.supply_max_v is not None:
-        change = {"change": {"supply V max": f"{highest_v:g}"}, "subject": _row_subject(circuit), "sheet": "Loops"}
+        change = {
+            "change": {"supply V max": f"{highest_v:g}"},
+            "subject": _row_subject(circuit),
+            "sheet": "Loops",
+        }
     kind = Found if over_at_best else Review
     return kind(
         values={
@@ -206,7 +223,8 @@ _CONTACT = re.compile(
 )
 _BUS = re.compile(
     r"fieldbus|profibus|modbus|profinet|ethernet|\bff\b|\bpa\b|\bdp\b|serial|rs-?485|\bbus\b|foundation|wireless|"
-    r"\bnet\b|ip\b", re.IGNORECASE,
+    r"\bnet\b|ip\b",
+    re.IGNORECASE,
 )
 _VOLTS_DC = re.compile(r"\b(?:12|24|48|110|120|230|240)\s*v\s*(?:ac|dc)?\b", re.IGNORECASE)
 
@@ -250,9 +268,7 @@ def _is_output(installed: Installed) -> bool:
 
 
 def _measures(installed: Installed) -> bool:
-    return installed.kind in (
-        Kind.TRANSMITTER, Kind.ANALYSER, Kind.DETECTOR, Kind.ELEMENT, Kind.SWITCH
-    )
+    return installed.kind in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.DETECTOR, Kind.ELEMENT, Kind.SWITCH)
 
 
 @rule(
@@ -312,7 +328,9 @@ def signal_against_input(installed: Installed, plant: Plant) -> Verdict:
     if found:
         return found if len(installed.signals) > 1 else [_without_part(found[0])]
     if not asked:
-        has_signal = any(row.signal for row in installed.signals) or bool(installed.type and installed.type.signal)
+        has_signal = any(row.signal for row in installed.signals) or bool(
+            installed.type and installed.type.signal
+        )
         return Unchecked("I/O type") if has_signal and missing_io and _wired(installed) else NotApplicable()
     return Unchecked("signal") if missing_signal else None
 

@@ -9,10 +9,10 @@ from pathlib import Path
 from typing import Any
 
 from django.core.management.base import BaseCommand
+from instruments.workbook.lists import NoTags, read_lists
 
 from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
-from instruments.workbook.lists import NoTags, read_lists
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
@@ -44,7 +44,8 @@ class Command(BaseCommand):
         parser.add_argument("--no-sheets", action="store_true", help="leave out loop-sheets.pdf")
         parser.add_argument("--no-annotated", action="store_true", help="leave out the annotated copy")
         parser.add_argument(
-            "--fail-on", choices=[severity.value for severity in Severity],
+            "--fail-on",
+            choices=[severity.value for severity in Severity],
             help="exit with 1 where there is a finding of this severity or a worse one",
         )
 
@@ -63,11 +64,15 @@ class Command(BaseCommand):
         with Progress(self.stderr) as progress:
             try:
                 progress.stage("reading")
-                inputs = {str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]}
+                inputs = {
+                    str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]
+                }
                 lists = read_lists(paths, (*INSTRUMENT_SHEETS, *LOOP_SHEETS), plant_toml=plant_toml)
                 progress.stage("putting the plant together")
                 plant = assemble(lists)
-                result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
+                result = audit(
+                    plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code)
+                )
                 folder = Path(options["to"])
                 with Outputs(folder) as outputs:
                     self._write(outputs, result, inputs, options, progress)
@@ -85,7 +90,12 @@ class Command(BaseCommand):
         return FINISHED
 
     def _write(
-        self, outputs: Outputs, result: Audit, inputs: dict[str, str], options: dict[str, Any], progress: Progress
+        self,
+        outputs: Outputs,
+        result: Audit,
+        inputs: dict[str, str],
+        options: dict[str, Any],
+        progress: Progress,
     ) -> None:
         from validation.report.exceptions import write_exceptions
 
@@ -93,13 +103,16 @@ class Command(BaseCommand):
         outputs.add("exceptions.xlsx", lambda path: write_exceptions(result, path))
         if not options["no_sheets"]:
             from loops.sheet.pdf import write_sheets
+
             from validation.report.sheet_notes import notes_by_loop
 
             progress.stage("drawing loop-sheets.pdf")
             outputs.add(
                 "loop-sheets.pdf",
                 lambda path: write_sheets(
-                    result.plant, path, notes=notes_by_loop(result),
+                    result.plant,
+                    path,
+                    notes=notes_by_loop(result),
                     on_sheet=lambda number, of: progress.step("sheets", number, of),
                 ),
             )
