@@ -48,8 +48,8 @@ NO_PIP = (
     "On Debian and Ubuntu 'apt install python3-venv' brings it; 'uv run manage.py ...' works too."
 )
 NOT_INSTALLED = (
-    "the packages were not installed; what was said of it stands above. Mostly it is that no package index was "
-    "reached: the first start, and the first after a change of dependencies, needs one. Look at the network, "
+    "the packages were not installed; what was said of it stands above. Mostly no package index was reached: "
+    "the first start needs one, and so does the first after a change of dependencies. Look at the network, "
     "the proxy (HTTPS_PROXY) and pip's settings (PIP_INDEX_URL, PIP_CERT), then give the same command again."
 )
 
