@@ -63,7 +63,7 @@ class Column:
     unit: str | None = None
     unit_from: tuple[str, ...] = ()
     into: tuple[str, ...] = ()
-    words: Mapping[str, tuple[str, ...]] = field(default=NO_WORDS)
+    words: Mapping[str, tuple[str, ...]] = field(default_factory=lambda: NO_WORDS)
     owner: str = ""
 
 

@@ -4,9 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from types import MappingProxyType
 
-from instruments.record import Record
+from instruments.record import Record, nothing
 
 STANDARD_ATMOSPHERE_PA = 101325.0
 DEFAULT_REQUIRED = ("tag", "service", "kind", "P&ID", "range", "range unit")
@@ -25,7 +24,7 @@ class PlantRow(Record):
     atmospheric_pressure: str | None = None
     default_reference: str | None = None
     required_fields: str | None = None
-    thresholds: Mapping[str, str] = field(default=MappingProxyType({}))
+    thresholds: Mapping[str, str] = field(default_factory=nothing)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -40,13 +39,13 @@ class PlantData:
     name: str | None = None
     tag_pattern: str | None = None
     numbering: str = "parallel"
-    users_letters: Mapping[str, str] = field(default=MappingProxyType({}))
-    plant_codes: Mapping[str, tuple[str, str]] = field(default=MappingProxyType({}))
+    users_letters: Mapping[str, str] = field(default_factory=nothing)
+    plant_codes: Mapping[str, tuple[str, str]] = field(default_factory=nothing)
     jurisdiction: str | None = None  # IEC, ATEX, US, Canada
     atmospheric_pa: float = STANDARD_ATMOSPHERE_PA
     default_reference: str = "gauge"
     required_fields: tuple[str, ...] | None = None
-    thresholds: Mapping[str, float] = field(default=MappingProxyType({}))
+    thresholds: Mapping[str, float] = field(default_factory=nothing)
     assumptions: tuple[str, ...] = ()
 
     def threshold(self, name: str, default: float) -> float:

@@ -5,13 +5,19 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from types import MappingProxyType
+from typing import Any
 
 from instruments.kind import Kind
 from instruments.origin import Cell, Origin
 from instruments.quantity import Quantity
 from instruments.unit import Unit
 
-NOTHING: Mapping[str, str] = MappingProxyType({})
+_NOTHING: Mapping[str, Any] = MappingProxyType({})
+
+
+def nothing() -> Mapping[str, Any]:
+    """Return the one empty mapping that all records without a note of some kind share."""
+    return _NOTHING
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -37,10 +43,10 @@ class Record:
     """
 
     origin: Origin | None = None
-    elsewhere: Mapping[str, Origin] = field(default=MappingProxyType({}))
-    blanks: Mapping[str, str] = NOTHING
+    elsewhere: Mapping[str, Origin] = field(default_factory=nothing)
+    blanks: Mapping[str, str] = field(default_factory=nothing)
     unread: frozenset[str] = frozenset()
-    unitless: Mapping[str, str] = NOTHING
+    unitless: Mapping[str, str] = field(default_factory=nothing)
     other: tuple[tuple[str, str], ...] = ()
 
     def cells(self, name: str) -> tuple[Cell, ...]:
