@@ -1,0 +1,366 @@
+"""Marrowbeck Works for tests: its lists in fixtures, with any changes, as rows, as a workbook or as files."""
+
+from __future__ import annotations
+
+import csv
+import random
+import re
+import tomllib
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass, field
+from functools import cache
+from pathlib import Path
+from types import MappingProxyType
+from typing import Any
+
+from openpyxl import Workbook
+from openpyxl.cell.cell import Cell
+from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
+from openpyxl.utils import get_column_letter
+from openpyxl.worksheet.worksheet import Worksheet
+
+FOLDER = Path(__file__).parent.parent / "fixtures" / "marrowbeck"
+DEMO = FOLDER / "instrument-list.xlsx"
+INDEX = "Instrument index"
+PACKAGE = "Package K-501"
+
+Rows = list[list[str]]
+Sheets = dict[str, Rows]
+
+_NUMBER = re.compile(r"-?(?:0|[1-9]\d*)(?:\.\d+)?")
+_BOLD = Font(bold=True)
+_TITLE = Font(bold=True, size=14)
+_GREY = PatternFill("solid", start_color="D9D9D9")
+_SECTION = PatternFill("solid", start_color="EEECE1")
+_THIN = Border(*(Side(style="thin"),) * 4)
+_WRAPPED = Alignment(wrap_text=True, vertical="center", horizontal="center")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Look:
+    """How one sheet stands in the workbook: where its headings are, and what its cells look like.
+
+    `heading` counts rows from 1 and is 0 where the sheet has none: there each row is a name and a
+    value, and the name is the column by which it is found. `key` is the heading of the column that
+    names a row.
+    """
+
+    title: str
+    file: str
+    heading: int = 0
+    heading_rows: int = 1
+    key: str = ""
+    text: tuple[str, ...] = ()
+    hidden: tuple[str, ...] = ()
+    decimals: Mapping[str, str] = field(default_factory=dict)
+    widths: Mapping[str, float] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Change:
+    """One mistake: the row it is made in, the cells with their old and new text, and what must be found.
+
+    `row` is what the sheet's key column says. A `copied` change leaves the row alone and makes its
+    edits in a copy beneath it. `also` are the companions: other rules that the same mistake breaks.
+    Both name the rule, or the rule and the subject (``SET07 PT-1001``) where that is not the row.
+    """
+
+    number: int
+    sheet: str
+    row: str
+    cells: Mapping[str, tuple[str, str]]
+    rule: str
+    why: str
+    subject: str = ""
+    part: str = ""
+    review: bool = False
+    copied: bool = False
+    also: tuple[str, ...] = ()
+
+
+@cache
+def looks() -> tuple[Look, ...]:
+    """Return the sheets of the workbook in their order."""
+    told: list[dict[str, Any]] = tomllib.loads((FOLDER / "workbook.toml").read_text(encoding="utf-8"))[
+        "sheet"
+    ]
+    return tuple(
+        Look(**{name: tuple(value) if isinstance(value, list) else value for name, value in each.items()})
+        for each in told
+    )
+
+
+def look_of(title: str) -> Look:
+    """Return how the sheet `title` looks."""
+    return next(look for look in looks() if look.title == title)
+
+
+def twin_rows() -> Sheets:
+    """Return the clean twin: the rows of every sheet by its title, as text, padded to one width."""
+    return {look.title: _read(FOLDER / "clean" / look.file) for look in looks()}
+
+
+@cache
+def changes() -> tuple[Change, ...]:
+    """Return the mistakes that make the demo of the clean twin."""
+    told = tomllib.loads((FOLDER / "changes.toml").read_text(encoding="utf-8"))["change"]
+    return tuple(change_from(number, **each) for number, each in enumerate(told, start=1))
+
+
+def change_from(number: int, cells: Mapping[str, Sequence[str]], **told: Any) -> Change:
+    """Return a change as changes.toml tells it: cells by heading, each with its old and its new text."""
+    lists = {name: tuple(value) if isinstance(value, list) else value for name, value in told.items()}
+    return Change(
+        number=number,
+        cells=MappingProxyType({heading: (old, new) for heading, (old, new) in cells.items()}),
+        **lists,
+    )
+
+
+def headings(title: str, rows: Rows) -> list[str]:
+    """Return a sheet's headings, a merged parent joined to each of its children.
+
+    A sheet without headings has its columns' letters.
+    """
+    look = look_of(title)
+    if not look.heading:
+        return [get_column_letter(number) for number in range(1, len(rows[0]) + 1)]
+    lines = rows[look.heading - 1 : look.heading - 1 + look.heading_rows]
+    if len(lines) == 1:
+        return lines[0]
+    joined, parent = [], ""
+    for above, below in zip(*lines, strict=True):
+        parent = above or parent
+        joined.append(f"{parent} {below}".strip())
+    return joined
+
+
+def row_number(title: str, rows: Rows, name: str) -> int:
+    """Return the place, counted from 0, of the row that the key column calls `name`."""
+    look = look_of(title)
+    column = headings(title, rows).index(look.key) if look.heading else 0
+    start = look.heading - 1 + look.heading_rows if look.heading else 0
+    found = [number for number, row in enumerate(rows) if number >= start and row[column] == name]
+    if len(found) != 1:
+        raise LookupError(f"{title} has {len(found)} rows that are called {name}")
+    return found[0]
+
+
+def with_changes(sheets: Sheets, made: Iterable[Change]) -> Sheets:
+    """Return the sheets with the changes made; ValueError where a cell does not hold the old text.
+
+    A row is looked for by the name it has in `sheets`, so that a change of tags hides no other change.
+    """
+    result = {title: [list(row) for row in rows] for title, rows in sheets.items()}
+    copies: list[tuple[str, int, list[str]]] = []
+    for change in made:
+        rows = sheets[change.sheet]
+        at = row_number(change.sheet, rows, change.row)
+        names = headings(change.sheet, rows)
+        target = list(rows[at]) if change.copied else result[change.sheet][at]
+        for heading, (old, new) in change.cells.items():
+            column = names.index(heading)
+            if rows[at][column] != old:
+                raise ValueError(
+                    f"change {change.number}: {change.row}, {heading} holds {rows[at][column]!r}, not {old!r}"
+                )
+            target[column] = new
+        if change.copied:
+            copies.append((change.sheet, at, target))
+    for title, at, row in sorted(copies, key=lambda copy: copy[1], reverse=True):
+        result[title].insert(at + 1, row)
+    return result
+
+
+def demo_rows() -> Sheets:
+    """Return the rows of the demo: the twin with all its changes."""
+    return with_changes(twin_rows(), changes())
+
+
+def write_twin(path: Path, made: Iterable[Change] = ()) -> Path:
+    """Write the clean twin as a workbook, with the changes made."""
+    return write_workbook(path, with_changes(twin_rows(), made))
+
+
+def write_demo(path: Path) -> Path:
+    """Write the demo workbook."""
+    return write_workbook(path, demo_rows())
+
+
+def write_files(folder: Path, sheets: Sheets) -> list[Path]:
+    """Write each sheet as a file of its own and return the files: several lists that are one plant."""
+    folder.mkdir(parents=True, exist_ok=True)
+    written = []
+    for title, rows in sheets.items():
+        path = folder / look_of(title).file
+        with path.open("w", newline="", encoding="utf-8") as file:
+            csv.writer(file, lineterminator="\n").writerows(rows)
+        written.append(path)
+    return written
+
+
+def shuffled(sheets: Sheets, seed: int) -> Sheets:
+    """Return the sheets with sheets, columns and rows in another order.
+
+    Rows stay within their section, since a section row speaks of those beneath it, and ditto marks
+    are written out first, since they speak of the row above. Columns under one parent stay together.
+    """
+    order = random.Random(seed)
+    result: Sheets = {}
+    titles = list(sheets)
+    order.shuffle(titles)
+    for title in titles:
+        look, rows = look_of(title), without_dittos(title, sheets[title])
+        if not look.heading or not look.key:
+            result[title] = rows
+            continue
+        start = look.heading - 1 + look.heading_rows
+        head, body = rows[:start], rows[start:]
+        key = headings(title, rows).index(look.key)
+        body = _rows_shuffled(body, key, order)
+        columns = _columns_shuffled(head[look.heading - 1 :], order)
+        # A title block and notes belong to no column.
+        lines = head[look.heading - 1 :] + body
+        moved = [[row[column] for column in columns] if _is_data(row) else row for row in lines]
+        result[title] = head[: look.heading - 1] + moved
+    return result
+
+
+def without_dittos(title: str, rows: Rows) -> Rows:
+    """Return the rows with every ditto mark replaced by what it stands for."""
+    look = look_of(title)
+    start = look.heading - 1 + look.heading_rows if look.heading else 0
+    result: Rows = []
+    above: list[str] = []
+    for number, row in enumerate(rows):
+        line = list(row)
+        if number >= start and _is_data(row):
+            if above:
+                line = [above[at] if cell in ('"', "do") else cell for at, cell in enumerate(line)]
+            above = line
+        result.append(line)
+    return result
+
+
+def write_workbook(path: Path, sheets: Sheets) -> Path:
+    """Write sheets as a workbook that looks as people leave it; a text is never read as a formula."""
+    book = Workbook()
+    book.remove(book.worksheets[0])
+    for title, rows in sheets.items():
+        _write_sheet(book.create_sheet(title), look_of(title), rows)
+    book.properties.creator = "Marrowbeck Works"
+    book.properties.title = "Instrument index and schedules"
+    book.save(path)
+    return path
+
+
+def typed(text: str, *, as_text: bool = False) -> str | int | float | None:
+    """Return what a person's typing leaves in a cell: a number where it is one, else the text.
+
+    >>> typed("12"), typed("2.0"), typed("0.10"), typed("0034"), typed("1", as_text=True), typed("")
+    (12, 2, 0.1, '0034', '1', None)
+    """
+    if not text:
+        return None
+    if as_text or not _NUMBER.fullmatch(text):
+        return text
+    number = float(text)
+    return int(number) if number.is_integer() else number
+
+
+def _read(path: Path) -> Rows:
+    with path.open(newline="", encoding="utf-8") as file:
+        rows = list(csv.reader(file))
+    width = max(len(row) for row in rows)
+    return [row + [""] * (width - len(row)) for row in rows]
+
+
+def _is_data(row: Sequence[str]) -> bool:
+    return sum(1 for cell in row if cell) > 1
+
+
+def _rows_shuffled(body: Rows, key: int, order: random.Random) -> Rows:
+    result: Rows = []
+    block: Rows = []
+    for row in body:
+        if row[key]:
+            block.append(row)
+            continue
+        order.shuffle(block)
+        result += [*block, row]
+        block = []
+    order.shuffle(block)
+    return result + block
+
+
+def _columns_shuffled(head: Rows, order: random.Random) -> list[int]:
+    groups: list[list[int]] = []
+    below = head[1] if len(head) > 1 else [""] * len(head[0])
+    for column, above in enumerate(head[0]):
+        if above or not groups or not below[column]:
+            groups.append([column])
+        else:
+            groups[-1].append(column)
+    order.shuffle(groups)
+    return [column for group in groups for column in group]
+
+
+def _write_sheet(sheet: Worksheet, look: Look, rows: Rows) -> None:
+    names = headings(look.title, rows)
+    first = look.heading + look.heading_rows if look.heading else 1
+    for number, row in enumerate(rows, start=1):
+        data = _is_data(row)
+        for column, text in enumerate(row, start=1):
+            if not text:
+                continue
+            name = names[column - 1]
+            cell = sheet.cell(number, column)
+            value = typed(text, as_text=number < first or name in look.text)
+            cell.value = value
+            if isinstance(value, str):
+                cell.data_type = "s"  # '=1+1' is a text that somebody typed, not a sum
+            _dress(cell, look, number, first, data=data)
+            if number >= first and name in look.decimals:
+                cell.number_format = look.decimals[name]
+    _merge_headings(sheet, look, rows)
+    _set_widths(sheet, look, names)
+    if look.heading:
+        sheet.freeze_panes = sheet.cell(first, 1 + names.index(look.key) + 1)
+
+
+def _dress(cell: Cell, look: Look, number: int, first: int, *, data: bool) -> None:
+    if not look.heading:
+        cell.font = _BOLD if cell.column == 1 else Font()
+    elif number < look.heading:
+        cell.font = _TITLE if number == 1 else _BOLD
+    elif number < first:
+        cell.font, cell.fill, cell.border, cell.alignment = _BOLD, _GREY, _THIN, _WRAPPED
+    elif data:
+        cell.border = _THIN
+    else:
+        cell.font, cell.fill = _BOLD, _SECTION
+
+
+def _merge_headings(sheet: Worksheet, look: Look, rows: Rows) -> None:
+    if look.heading_rows < 2:
+        return
+    top, bottom = look.heading, look.heading + 1
+    above, below = rows[top - 1], rows[bottom - 1]
+    column = 0
+    while column < len(above):
+        end = column
+        while end + 1 < len(above) and below[end + 1] and not above[end + 1]:
+            end += 1
+        if end > column:
+            sheet.merge_cells(start_row=top, end_row=top, start_column=column + 1, end_column=end + 1)
+        elif not below[column]:
+            sheet.merge_cells(start_row=top, end_row=bottom, start_column=column + 1, end_column=column + 1)
+        column = end + 1
+
+
+def _set_widths(sheet: Worksheet, look: Look, names: Sequence[str]) -> None:
+    for column, name in enumerate(names, start=1):
+        letter = get_column_letter(column)
+        sheet.column_dimensions[letter].width = look.widths.get(name, 11)
+        if name in look.hidden:
+            sheet.column_dimensions[letter].hidden = True
