@@ -109,11 +109,10 @@ def changes() -> tuple[Change, ...]:
 
 def change_from(number: int, cells: Mapping[str, Sequence[str]], **told: Any) -> Change:
     """Return a change as changes.toml tells it: cells by heading, each with its old and its new text."""
-    lists = {name: tuple(value) if isinstance(value, list) else value for name, value in told.items()}
     return Change(
         number=number,
         cells=MappingProxyType({heading: (old, new) for heading, (old, new) in cells.items()}),
-        **lists,
+        **_with_tuples(told),
     )
 
 
@@ -266,6 +265,10 @@ def typed(text: str, *, as_text: bool = False) -> str | int | float | None:
         return text
     number = float(text)
     return int(number) if number.is_integer() else number
+
+
+def _with_tuples(told: Mapping[str, Any]) -> Any:
+    return {name: tuple(value) if isinstance(value, list) else value for name, value in told.items()}
 
 
 def _read(path: Path) -> Rows:
