@@ -4,9 +4,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
-from instruments.kind import Kind
-
 from instruments.installed import Installed
+from instruments.kind import Kind
 from instruments.origin import Cell
 from instruments.plant_data import PlantData
 from loops.cable import (
@@ -114,7 +113,7 @@ def feeds_a_transmitter(circuit: Circuit) -> bool | None:
     device = circuit.device
     if circuit.kind not in (None, ANALOGUE_INPUT):
         return False
-    if device.kind not in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.DETECTOR):
+    if device.kind not in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR):
         return False
     text = f"{circuit.signal_row.signal or ''} {(device.type.signal if device.type else '') or ''}".casefold()
     if text.strip() and "ma" not in text and "hart" not in text:

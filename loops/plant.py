@@ -9,16 +9,16 @@ from dataclasses import dataclass, field, replace
 from types import MappingProxyType
 from typing import Any
 
-from instruments.kind import Kind, derive_kind
-from instruments.quantity import Quantity
 from instruments.workbook.lists import Lists
 
 from instruments.area import Area, Classification, area_from_classification, read_classification, understood
 from instruments.installed import NOT_LIVE, Installed
+from instruments.kind import Kind, derive_kind, read_kind
 from instruments.marking import Marking, read_marking
 from instruments.origin import Cell, Origin
 from instruments.plant_codes import PlantCode, codes_with
 from instruments.plant_data import PlantData
+from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
 from instruments.tag import (
     TagProfile,
@@ -637,47 +637,57 @@ def _with_loops(found: list[Installed], codes: Mapping[str, PlantCode], data: Pl
 def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[Installed]:
     """Give each instrument its kind, and tell the measuring points of older lists."""
     bears: set[str] = set()
+    transmits: set[str] = set()
     for each in found:
-        if each.live and each.loop and _names_measurement(each):
-            bears.add(_key(each.loop))
+        if each.live and each.loop:
+            functions = each.letters[1:]
+            if "T" in functions or "E" in functions:
+                bears.add(_key(each.loop))
+            if "T" in functions:
+                transmits.add(_key(each.loop))
     result: list[Installed] = []
     for each in found:
         record = each.record
-        own_signal = any(row.signal or row.io_type or row.io_address for row in each.signals) or bool(
-            record.device_type
-        )
+        loop = _key(each.loop)
+        signal = any(row.signal or row.io_type or row.io_address or row.card for row in each.signals)
         point = bool(
-            each.loop
-            and _key(each.loop) not in bears
-            and own_signal
+            loop
+            and loop not in bears
+            and (signal or record.device_type)
             and len(each.letters) >= 2
             and each.letters[-1] in "IRCA"
             and each.letters not in codes
             and record.location != "system"
         )
-        kind, kind_from = record.kind, "row"
+        letters = "" if each.equipment_tag else each.letters
+        asked: dict[str, Any] = {
+            "has_signal": signal or bool(record.ex_marking),
+            "location": record.location,
+            "codes": codes,
+            "scheme": each.tag.scheme if each.tag else "isa",
+            "measuring_point": point,
+            "transmitter_in_loop": loop in transmits and "T" not in letters[1:],
+        }
+        kind, kind_from = None, ""
+        if record.kind_written:
+            read = read_kind(record.kind_written, letters=letters, **asked)
+            if read.stated:
+                kind, kind_from = read.kind, "row"
+        if kind is None and record.kind is not None:
+            kind, kind_from = record.kind, "row"
         if kind is None and each.listed_type is not None and each.listed_type.kind is not None:
             kind, kind_from = each.listed_type.kind, "type"
-        if kind is None and each.letters and not each.equipment_tag:
-            kind_from = "letters"
-            if point:
-                kind = _point_kind(record)
-            if kind is None:
-                kind = derive_kind(
-                    each.letters,
-                    has_signal=any(row.signal or row.io_type or row.io_address for row in each.signals)
-                    or bool(record.ex_marking),
-                    location=record.location,
-                    codes=codes,
-                )
+        if kind is None and letters:
+            kind, kind_from = derive_kind(letters, **asked), "letters"
+            if point and kind not in _MEASURING:
+                kind = _point_kind(record) or kind
         result.append(
             replace(each, kind=kind, kind_from=kind_from if kind is not None else "", measuring_point=point)
         )
     return result
 
 
-def _names_measurement(each: Installed) -> bool:
-    return any(letter in "TE" for letter in each.letters[1:])
+_MEASURING = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH})
 
 
 def _point_kind(record: Instrument) -> Kind | None:

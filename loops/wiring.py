@@ -7,9 +7,8 @@ from collections import defaultdict
 from collections.abc import Sequence
 from typing import TYPE_CHECKING, Any
 
-from instruments.kind import Kind
-
 from instruments.installed import Installed
+from instruments.kind import Kind
 from instruments.record import DeviceType, Instrument
 from instruments.tag import natural_key
 from loops.circuit import (
@@ -43,26 +42,22 @@ _KIND_WORDS = (
     (re.compile(r"^t/?c\b|thermoc", re.IGNORECASE), THERMOCOUPLE),
 )
 # Devices whose signal makes a circuit though no I/O is given for it.
-_SIGNAL_KINDS = frozenset(
-    {
-        Kind.TRANSMITTER,
-        Kind.ELEMENT,
-        Kind.SWITCH,
-        Kind.POSITIONER,
-        Kind.HAND_SWITCH,
-    }
-)
+_SIGNAL_KINDS = frozenset(kind for kind in Kind if kind.wired in ("yes", "element"))
+_TRANSMITTERS = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR})
+_VALVE_DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
+_DRIVEN_VALVES = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
+# From the field to the system; what is not named stands with the device.
 _FIELD_ORDER = {
     Kind.ELEMENT: 0,
     Kind.CONTROL_VALVE: 0,
-    Kind.SWITCH: 1,
-    Kind.TRANSMITTER: 1,
-    Kind.POSITIONER: 1,
-    Kind.HAND_SWITCH: 1,
+    Kind.ON_OFF_VALVE: 0,
     Kind.INDICATOR: 2,
+    Kind.JUNCTION_BOX: 3,
     Kind.BARRIER: 4,
+    Kind.ISOLATOR: 4,
     Kind.CARD: 5,
 }
+_WITH_DEVICE = 1
 
 
 def wire(plant: Plant) -> tuple[tuple[Circuit, ...], tuple[Loop, ...]]:
@@ -163,13 +158,15 @@ def _signal_kind(each: Installed, signal: Instrument) -> str | None:
             return RESISTANCE_THERMOMETER
         if "tc" in text or "thermo" in text or "type" in text:
             return THERMOCOUPLE
-    if each.kind is Kind.TRANSMITTER or each.measuring_point:
+    if each.kind in _TRANSMITTERS or each.measuring_point:
         return ANALOGUE_INPUT if "ma" in text or "hart" in text or not text else None
-    if each.kind is Kind.SWITCH:
+    if each.kind in (Kind.SWITCH, Kind.HAND_SWITCH):
         return DIGITAL_INPUT
-    if each.kind is Kind.POSITIONER:
-        return ANALOGUE_OUTPUT if "ma" in text else (DIGITAL_OUTPUT if "v" in text else None)
-    if each.kind is Kind.CONTROL_VALVE:
+    if each.kind in (Kind.POSITIONER, Kind.IP_CONVERTER):
+        return ANALOGUE_OUTPUT
+    if each.kind in (Kind.SOLENOID, Kind.LAMP, Kind.SOUNDER):
+        return DIGITAL_OUTPUT
+    if each.kind in _DRIVEN_VALVES:
         return ANALOGUE_OUTPUT if "ma" in text else None
     return None
 
@@ -201,7 +198,7 @@ def transmitter_of(element: Installed, loop: Sequence[Installed]) -> Installed |
 
     Where the loop has several, the one with the element's suffix.
     """
-    transmitters = [each for each in loop if each is not element and each.kind is Kind.TRANSMITTER]
+    transmitters = [each for each in loop if each is not element and each.kind in _TRANSMITTERS]
     if not transmitters:
         return None
     suffix = element.tag.suffix if element.tag else None
@@ -244,27 +241,29 @@ def _circuits(
             for other in by_loop.get(_key(each.loop), ())
             if id(other) not in carrying and _rides_on(other, carriers[_key(each.loop)]) is each
         ]
-        members = sorted([each, *riders], key=lambda one: _FIELD_ORDER.get(one.kind, 3) if one.kind else 3)
+        members = sorted(
+            [each, *riders],
+            key=lambda one: _FIELD_ORDER.get(one.kind, _WITH_DEVICE) if one.kind else _WITH_DEVICE,
+        )
         circuits.append(_circuit(called, each, signal, row, kind, tuple(members), plant))
     return tuple(circuits)
 
 
 def _rides_on(other: Installed, carriers: Sequence[Installed]) -> Installed | None:
     """Return the device whose signal passes through a device that has none of its own."""
+    wanted: frozenset[Kind]
     if other.kind is Kind.ELEMENT:
-        wanted: frozenset[Any] = frozenset({Kind.TRANSMITTER})
+        wanted = _TRANSMITTERS
     elif other.kind is Kind.INDICATOR:
         if not (other.record.signal or other.listed_type or other.record.ex_marking):
             return None
-        wanted = frozenset({Kind.TRANSMITTER})
-    elif other.kind is Kind.CONTROL_VALVE:
-        wanted = frozenset({Kind.POSITIONER})
+        wanted = _TRANSMITTERS
+    elif other.kind in _DRIVEN_VALVES:
+        wanted = _VALVE_DRIVES
     else:
         return None
     suitable = [
-        each
-        for each in carriers
-        if each.kind in wanted or (each.measuring_point and wanted != {Kind.POSITIONER})
+        each for each in carriers if each.kind in wanted or (each.measuring_point and wanted is _TRANSMITTERS)
     ]
     suffix = other.tag.suffix if other.tag else None
     for each in suitable:

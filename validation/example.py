@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.workbook.lists import Lists, read_sheets
+
+from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.workbook.sheet import Sheet
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import Plant, assemble

@@ -4,10 +4,9 @@ from __future__ import annotations
 
 import re
 
+from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.quantity import format_number
-
-from instruments.installed import Installed
 from loops.budget import Budget, feeds_a_transmitter, highest_volts, lift_off
 from loops.circuit import Circuit
 from loops.plant import Plant
@@ -264,11 +263,18 @@ def signal_class(text: str | None) -> str | None:
 
 
 def _is_output(installed: Installed) -> bool:
-    return installed.kind in (Kind.POSITIONER, Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE)
+    return installed.kind in (Kind.POSITIONER, Kind.IP_CONVERTER, Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE)
 
 
 def _measures(installed: Installed) -> bool:
-    return installed.kind in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.DETECTOR, Kind.ELEMENT, Kind.SWITCH)
+    return installed.kind in (
+        Kind.TRANSMITTER,
+        Kind.ANALYSER,
+        Kind.GAS_DETECTOR,
+        Kind.FIRE_DETECTOR,
+        Kind.ELEMENT,
+        Kind.SWITCH,
+    )
 
 
 @rule(
@@ -342,7 +348,7 @@ def _without_part(found: Found) -> Found:
 
 
 def _wired(installed: Installed) -> bool:
-    return installed.kind is not None and installed.kind.wired is True
+    return installed.kind is not None and installed.kind.wired == "yes"
 
 
 def _takers(row: object, plant: Plant) -> list[tuple[str, str, str]]:
@@ -367,7 +373,11 @@ def _wrong_way(installed: Installed, sort: str, kinds: frozenset[str]) -> bool:
         if _measures(installed) and installed.kind is not Kind.SWITCH:
             return "AI" not in kinds
         if _is_output(installed):
-            return "AO" not in kinds and kinds <= {"AI"} and installed.kind is Kind.POSITIONER
+            return (
+                "AO" not in kinds
+                and kinds <= {"AI"}
+                and installed.kind in (Kind.POSITIONER, Kind.IP_CONVERTER)
+            )
     if sort == "contact" and _measures(installed):
         return "DI" not in kinds
     return False

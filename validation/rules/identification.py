@@ -6,7 +6,7 @@ from collections import defaultdict
 from collections.abc import Iterable, Iterator
 
 from instruments.installed import Installed
-from instruments.kind import can_bear, dimension_allowed, kinds_for_letters, letters_for
+from instruments.kind import can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
 from instruments.letters import read_letters
 from instruments.tag import (
     TagReading,
@@ -23,6 +23,7 @@ from instruments.tag import (
     read_tag,
 )
 from instruments.unit import Unit
+from instruments.unit_table import unit_label
 from loops.plant import Plant, disagreements
 from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule, title_of
@@ -98,7 +99,8 @@ def one_tag_twice(group: tuple[Installed, ...], plant: Plant) -> Verdict:
             names.update(dict.fromkeys(disagreements(one.record, other.record)))
     fields = tuple(names)
     details = "; ".join(
-        " / ".join(dict.fromkeys(_shown(each, name) for each in group if _shown(each, name))) for name in fields
+        " / ".join(dict.fromkeys(_shown(each, name) for each in group if _shown(each, name)))
+        for name in fields
     )
     cells = tuple(cell for each in group for name in ("tag", *fields) for cell in each.cells(name))
     return Found(
@@ -179,7 +181,9 @@ def _canonical_of(group: Iterable[Installed], plant: Plant) -> str:
         if reading is None or not reading.parsed or reading.look_alikes:
             continue
         mended = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes)
-        doubtful = mended is not None and match_key(read_tag(mended, profile=plant.profile)) != match_key(reading)
+        doubtful = mended is not None and match_key(read_tag(mended, profile=plant.profile)) != match_key(
+            reading
+        )
         here = (0 if doubtful else 1, widths.get(len(reading.number), 0))
         if here > rank:
             best, rank = canonical_tag(reading, profile=plant.profile), here
@@ -236,8 +240,11 @@ def tag_off_pattern(installed: Installed, plant: Plant) -> Verdict:
     else:
         reason = reading.reason or "it cannot be parted into letters and number"
     return Found(
-        values={"tag": installed.record.tag_written or installed.record.tag, "profile": plant.profile.name,
-                "reason": reason},
+        values={
+            "tag": installed.record.tag_written or installed.record.tag,
+            "profile": plant.profile.name,
+            "reason": reason,
+        },
         fields=("tag",),
         found=installed.record.tag or "",
         wanted=nearest or "",
@@ -471,22 +478,32 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
     """
     kind = installed.kind
     assert kind is not None
-    bears = can_bear(kind, installed.letters, codes=plant.codes, measuring_point=installed.measuring_point)
-    if bears is None:
-        return Unchecked("kind that the letters can be compared with")
-    if bears:
-        return None
-    wanted = kinds_for_letters(installed.letters, codes=plant.codes)
     reading = installed.tag
     assert reading is not None
-    tags = [_with_letters(reading, letters, plant) for letters in letters_for(kind, installed.letters)]
+    bears = can_bear(
+        kind,
+        installed.letters,
+        codes=plant.codes,
+        scheme=reading.scheme,
+        measuring_point=installed.measuring_point,
+    )
+    if bears is None:
+        return NotApplicable("practice differs on these letters")
+    if bears:
+        return None
+    derived = derive_kind(installed.letters, has_signal=True, codes=plant.codes, scheme=reading.scheme)
+    letters = letters_for_kind(kind, installed.letters, codes=plant.codes)
+    tags = [_with_letters(reading, each, plant) for each in letters]
     written = installed.record.kind_written or str(kind)
     return Found(
         values={"kind": str(kind), "letters": installed.letters, "written": written},
         fields=("kind", "tag") if installed.kind_from == "row" else ("device_type", "tag"),
         found=written,
-        wanted=" or ".join(str(each) for each in wanted),
-        fixes=tuple(Fix(text=f"tag {tag}", change={"tag": tag}) for tag in tags if tag),
+        wanted="" if derived is None else derived.value,
+        fixes=(
+            *(Fix(text=f"tag {tag}", change={"tag": tag}) for tag in tags if tag),
+            *((Fix(text=f"kind {derived.value}", change={"kind": derived.value}),) if derived else ()),
+        ),
     )
 
 
@@ -502,9 +519,16 @@ def _range_unit(installed: Installed) -> Unit | None:
     "TAG10",
     severity=Severity.FAULT,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: bool(installed.letters) and not installed.equipment_tag
-    and (installed.record.lrv is not None or installed.record.urv is not None or installed.kind is None
-         or installed.kind.measures is not False),
+    applies=lambda installed, plant: (
+        bool(installed.letters)
+        and not installed.equipment_tag
+        and (
+            installed.record.lrv is not None
+            or installed.record.urv is not None
+            or installed.kind is None
+            or installed.kind.measures != "no"
+        )
+    ),
     message="{letters} with a range in {unit}: {unit} is no unit of {variable}",
     basis=ISA,
 )
@@ -522,9 +546,6 @@ def unit_against_letters(installed: Installed, plant: Plant) -> Verdict:
     >>> said("TAG10", [{"tag": "PIT-6004", "LRV": "0", "URV": "50", "range unit": "bar"}])
     []
     """
-    from instruments.kind import measured_variable
-    from instruments.quantity import unit_label
-
     unit = _range_unit(installed)
     if unit is None:
         return Unchecked("range unit")
@@ -532,22 +553,23 @@ def unit_against_letters(installed: Installed, plant: Plant) -> Verdict:
     allowed = dimension_allowed(
         installed.letters,
         unit.kind,
-        dp_body=installed.body == "differential",
+        dp_body=None if installed.body is None else installed.body == "differential",
         square_root_known=record.square_root_device is not None or record.square_root_system is not None,
         codes=plant.codes,
+        scheme=installed.tag.scheme if installed.tag else "isa",
     )
     if allowed is None:
         return Unchecked("square root")
     if allowed:
         return None
-    label = unit_label(unit, unit.reference)
+    label = unit_label(unit)
     variable = measured_variable(installed.letters, codes=plant.codes)
     field = "lrv" if record.lrv is not None else "range_unit"
     return Found(
-        values={"letters": installed.letters, "unit": label, "variable": variable},
+        values={"letters": installed.letters, "unit": label, "variable": variable or "the measured variable"},
         fields=("tag", "range_unit" if record.range_unit is not None else field),
         found=label,
-        wanted=f"a unit of {variable}",
+        wanted=f"a unit of {variable or 'the measured variable'}",
         cells=(*record.cells("lrv"), *record.cells("urv")),
     )
 
@@ -588,5 +610,3 @@ def several_tags_in_a_cell(installed: Installed, plant: Plant) -> Verdict:
         wanted="; ".join(means),
         fixes=(Fix(text=f"a row each: {', '.join(means)}"),),
     )
-
-
