@@ -1,4 +1,4 @@
-"""How numbers are written: decimal point or comma, thousands, signs, and what stands before or behind (<, ~, max).
+"""How numbers are written: decimal point or comma, thousands, signs, and what stands around them (<, ~, max).
 
 Nothing is evaluated and nothing is guessed: what has two readings is trouble, with both of them.
 """
@@ -39,8 +39,8 @@ class Number:
 _GLYPHS = str.maketrans(
     {
         "−": "-", "–": "-", "—": "-", "‐": "-", "‑": "-", "‒": "-", "﹣": "-", "－": "-", "＋": "+",
-        "\u00a0": " ", "\u2007": " ", "\u2009": " ", "\u200a": " ", "\u202f": " ", "\u2002": " ", "\u2003": " ",
-        "\u2008": " ", "\u3000": " ", "\t": " ", "\n": " ", "\r": " ",
+        "\u00a0": " ", "\u2002": " ", "\u2003": " ", "\u2007": " ", "\u2008": " ", "\u2009": " ",
+        "\u200a": " ", "\u202f": " ", "\u3000": " ", "\t": " ", "\n": " ", "\r": " ",
         "\u200b": None, "\u200c": None, "\u200d": None, "\u2060": None, "\ufeff": None, "\u00ad": None,
         "’": "'", "‘": "'", "´": "'", "`": "'", "．": ".", "，": ",",
         **{chr(0xFF10 + digit): str(digit) for digit in range(10)},
@@ -67,13 +67,15 @@ QUALIFIERS: Final = {
     "typical": "norm", "oper": "norm", "op": "norm",
 }  # fmt: skip
 _BEFORE = re.compile(
-    r"\(?(<=|=<|>=|=>|[<>≤≥≦≧~∼～≈]|less than|more than|up to|approximately|approx|about|circa|maximum|minimum|"
+    r"\(?(<=|=<|>=|=>|[<>≤≥≦≧~∼～≈]|less than|more than|up to|approximately|approx|about|circa|"
+    r"maximum|minimum|"
     r"nominal|typical|normal|maxi|mini|etwa|over|oper|norm|max|min|nor|nom|typ|abt|app|est|bis|ca|op)"
     r"(?![A-Za-z])\)?[.:=]? *(?=[-+.,0-9(])",
     re.IGNORECASE,
 )
 _BEHIND = re.compile(
-    r"[ .,]*\(?(?<![A-Za-z])(approximately|approx|maximum|minimum|nominal|typical|normal|norm|max|min|nor|nom|typ)\.?\)?$",
+    r"[ .,]*\(?(?<![A-Za-z])(approximately|approx|maximum|minimum|nominal|typical|normal|norm|"
+    r"max|min|nor|nom|typ)\.?\)?$",
     re.IGNORECASE,
 )
 
@@ -81,8 +83,8 @@ _BEHIND = re.compile(
 def split_qualifier(text: str) -> tuple[str, str | None]:
     """Split a text into what it says and the qualifier before or behind it.
 
-    >>> split_qualifier("<5"), split_qualifier("max. 5 barg"), split_qualifier("5 max"), split_qualifier("5 mbar")
-    (('5', '<'), ('5 barg', 'max'), ('5', 'max'), ('5 mbar', None))
+    >>> [split_qualifier(text) for text in ("<5", "max. 5 barg", "5 max", "5 mbar")]
+    [('5', '<'), ('5 barg', 'max'), ('5', 'max'), ('5 mbar', None)]
     """
     before = _BEFORE.match(text)
     if before:
@@ -101,16 +103,14 @@ NUMBER_PATTERN: Final = (
 """What may be a number, without its sign; which number it is, `read_number` says."""
 
 _WHOLE = re.compile(rf"([-+]?) ?({NUMBER_PATTERN}|[0-9]+\.)$")
-_GROUPED = {
-    mark: re.compile(rf"[1-9][0-9]{{0,2}}(?:{re.escape(mark)}[0-9]{{3}})+$") for mark in ".,"
-}
+_GROUPED = {mark: re.compile(rf"[1-9][0-9]{{0,2}}(?:{re.escape(mark)}[0-9]{{3}})+$") for mark in ".,"}
 _INDIAN = re.compile(r"[1-9][0-9]?(?:,[0-9]{2})+,[0-9]{3}$")
-_LOOK_ALIKES = str.maketrans({"O": "0", "o": "0", "О": "0", "о": "0", "l": "1", "I": "1", "|": "1", "S": "5"})
+_LOOK_ALIKES = str.maketrans("OoОоlI|S", "00001115")  # О and о are Cyrillic too
 _DAMAGED = re.compile(r"[-+]?[0-9OoОоlI|S]+(?:[.,][0-9OoОоlI|S]+)?$")
 
 
 def _readings(digits: str) -> tuple[float, ...]:
-    """All numbers that digits with points and commas may mean; the first two differ where they are ambiguous."""
+    """All numbers that digits with points and commas may mean: none, one, or two where they are ambiguous."""
     points, commas = digits.count("."), digits.count(",")
     if not points and not commas:
         return (float(digits),)
@@ -210,8 +210,8 @@ def decimal_convention(texts: Iterable[object]) -> str | None:
     str or None
         ``"."`` or ``","``, None where nothing decides or where the cells contradict each other.
 
-    >>> decimal_convention(["0,5", "2,500"]), decimal_convention(["2,500", 3.0]), decimal_convention(["1,000.5"])
-    (',', None, '.')
+    >>> [decimal_convention(texts) for texts in (["0,5", "2,500"], ["2,500", 3.0], ["1,000.5"])]
+    [',', None, '.']
     """
     marks: set[str] = set()
     for text in texts:

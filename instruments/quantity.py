@@ -101,8 +101,8 @@ class Quantity:
         UnitMismatch
             Another kind of unit, another reference, or no unit on this side.
 
-        >>> read_quantity("10 kg/cm2(g)").to(read_unit("psig"))
-        142.23343307121
+        >>> round(read_quantity("10 kg/cm2(g)").to(read_unit("psig")), 3)
+        142.233
         """
         if self.unit is None:
             raise UnitMismatch(f"{self.text} has no unit")
@@ -158,8 +158,8 @@ def _quantity(text: str, number: float, unit: Unit | None, qualifier: str | None
 def format_number(value: float) -> str:
     """Print a number to six significant digits, without float noise and without an exponent.
 
-    >>> format_number(0.30000000000000004), format_number(-84.0), format_number(1234567.0), format_number(10.488)
-    ('0.3', '-84', '1234567', '10.488')
+    >>> [format_number(value) for value in (0.30000000000000004, -84.0, 1234567.0, 10.488)]
+    ['0.3', '-84', '1234567', '10.488']
     """
     if not math.isfinite(value):
         return str(value)
@@ -185,12 +185,19 @@ _RANGES: dict[tuple[str, Unit | None, str | None], Range | CellTrouble] = {}
 
 _SIGNED = re.compile(rf"([-+]?) ?({NUMBER_PATTERN})(?![0-9])")
 _NOTE = re.compile(
-    r"[ ,]*(?:[(\[] ?(?:see )?(?:note|notes|remark|rem)s?\.? ?[0-9][0-9 ,&]{0,8}[)\]]|(?:see )?notes? [0-9]{1,3}|\*{1,3})$",
+    r"[ ,]*(?:[(\[] ?(?:see )?(?:note|remark|rem)s?\.? ?[0-9][0-9 ,&]{0,8}[)\]]|(?:see )?notes? [0-9]{1,3}|"
+    r"\*{1,3})$",
+    re.IGNORECASE,
+)
+_CONNECTION = re.compile(
+    r"(?:[0-9]{1,2}[ -])?[0-9]{1,2} ?/ ?[0-9]{1,2} ?(?:\"|''|in\b|inch|npt|bsp|nb\b)|(?:dn|nps) ?[0-9]",
     re.IGNORECASE,
 )
 _LETTERS_ONLY = re.compile(r"[^a-z]+")
 _FULL_VACUUM = frozenset({"fv", "fullvacuum", "fullvac", "fullv", "vollvakuum", "vacuum", "fvac"})
-_ATMOSPHERIC = frozenset({"atm", "atmos", "atmosphere", "atmospheric", "atmosphericpressure", "atmpress", "drucklos"})
+_ATMOSPHERIC = frozenset(
+    {"atm", "atmos", "atmosphere", "atmospheric", "atmosphericpressure", "atmpress", "drucklos"}
+)
 _AMBIENT = frozenset({"amb", "ambient", "ambienttemp", "ambienttemperature", "ambtemp", "umgebung"})
 _AND_VACUUM = re.compile(
     r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?(?:/|&|\+|,|and|to|-) ?(?=[0-9]))"
@@ -247,11 +254,15 @@ def _own_unit(written: str, unit: Unit | None) -> Unit | CellTrouble | None:
     return found
 
 
-def _value(text: str, sign: str, digits: str, unit: Unit | None, decimal: str | None) -> Quantity | CellTrouble:
+def _value(
+    text: str, sign: str, digits: str, unit: Unit | None, decimal: str | None
+) -> Quantity | CellTrouble:
     number = read_number(digits, decimal=decimal)
     if isinstance(number, CellTrouble):
         minus = "-" if sign == "-" else ""
-        return CellTrouble(reason=number.reason, readings=tuple(minus + reading for reading in number.readings))
+        return CellTrouble(
+            reason=number.reason, readings=tuple(minus + reading for reading in number.readings)
+        )
     return _quantity(text, -number.value + 0.0 if sign == "-" else number.value, unit)
 
 
@@ -298,13 +309,17 @@ def _agree(one: float, other: float, size: float) -> bool:
     return abs(one - other) <= 0.01 * size  # both are rounded by hand
 
 
-def _read_one(cell: str, unit: Unit | None, decimal: str | None, kinds: tuple[str, ...]) -> Quantity | CellTrouble:
+def _read_one(
+    cell: str, unit: Unit | None, decimal: str | None, kinds: tuple[str, ...]
+) -> Quantity | CellTrouble:
     text = plain_signs(cell).strip()
     if not text:
         return CellTrouble(reason="the cell is empty")
     if len(text) > LONGEST_CELL:
         return CellTrouble(reason="the text is too long for a value")
     text = _NOTE.sub("", text).strip()
+    if _CONNECTION.match(text):
+        return CellTrouble(reason=f"'{text}' is a pipe size")
     keyword = _keyword(text, unit, kinds)
     if keyword is not None:
         return keyword
@@ -361,7 +376,8 @@ def read_quantity(
     Quantity or CellTrouble
         Trouble says what was found and the readings that were considered.
 
-    >>> str(read_quantity("100 psig", unit=read_unit("barg"))), str(read_quantity(12.5, unit=read_unit("BAR G")))
+    >>> barg = read_unit("BAR G")
+    >>> str(read_quantity("100 psig", unit=barg)), str(read_quantity(12.5, unit=barg))
     ('100 psig', '12.5 barg')
     >>> str(read_quantity("FV", unit=read_unit("mbar"))), read_quantity("5 furlongs").reason
     ('-1.01325 barg', "unit 'furlongs' is not known")
@@ -396,27 +412,40 @@ def _from_number(cell: float, unit: Unit | None) -> Quantity | CellTrouble:
 # A range
 
 _BETWEEN = re.compile(
-    r" ?(?P<sep>\.{2,4}|…|up to|to|bis|thru|through|till|until|and|und|-{1,2}>|→|[-/~∼～÷:;|]|,(?= )|(?=\+))"
-    rf" ?(?P<sign>[-+]?) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])",
+    r" ?(?P<sep>\.{2,4}|…|up to|to|bis|thru|through|till|until|and|und|-{1,2}>|→|[-/~∼～÷:;|]|,(?= )|(?=\+)|"
+    r"(?= max))"
+    rf" ?(?:max(?:imum)?[.: =]+)?(?P<sign>[-+]?) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])",
     re.IGNORECASE,
 )
 _INTRODUCTION = re.compile(
-    r"(?:(?:calibrated|calibration|cal|measuring|meas|set|scale|range|messbereich|bereich|from|von|between|zwischen|lrv|min)"
+    r"(?:(?:calibrated|calibration|cal|measuring|meas|set|scale|range|messbereich|bereich|from|von|between|zwischen|"
+    r"lrv|min)"
     r"(?![A-Za-z])[.:= ]*)+",
     re.IGNORECASE,
 )
-_PLUS_MINUS = re.compile(rf"(?:0 ?)?(?:±|\+ ?/ ?-|-/\+|\+-) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])", re.IGNORECASE)
+_PLUS_MINUS = re.compile(
+    rf"(?:0 ?)?(?:±|\+ ?/ ?-|-/\+|\+-) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])", re.IGNORECASE
+)
 _PAIR_IN_BRACKETS = re.compile(r"[(\[]([^()\[\]]+)[)\]] ?(.*)$")
 _SIGNAL = (
     r"(?P<signal>[0-9]+(?:[.,][0-9]+)? ?(?:mA ?)?(?:-|to|\.{2,3}|…|/|bis) ?[0-9]+(?:[.,][0-9]+)? ?"
     r"(?:mA|V)(?: ?d\.?c\.?)?(?: ?\+? ?HART)?)"
 )
-_SIGNAL_FIRST = re.compile(rf"[(\[]?{_SIGNAL}[)\]]?(?![A-Za-z]) ?(?:[=:,;/@]|≙|->|→|for|corresponds to)? ?(?=.)", re.IGNORECASE)
-_SIGNAL_LAST = re.compile(rf" ?(?:[=:,;/@]|≙|->|→|[(\[]|(?<= )) ?{_SIGNAL} ?[)\]]?$", re.IGNORECASE)
-_SIGNAL_ENDS = re.compile(
-    r"4 ?mA ?(?:=|:|@|≙) ?(?P<low>[^=:@≙]{1,30}?) ?[,;/] ?20 ?mA ?(?:=|:|@|≙) ?(?P<high>[^=:@≙]{1,30})$", re.IGNORECASE
+_SIGNAL_FIRST = re.compile(
+    rf"[(\[]?{_SIGNAL}[)\]]?(?![A-Za-z]) ?(?:[=:,;/@]|≙|->|→|for|corresponds to)? ?(?=.)", re.IGNORECASE
 )
-_PNEUMATIC = re.compile(r"(?:3 ?(?:-|to) ?15 ?psi|0[.,]2 ?(?:-|to) ?1(?:[.,]0)? ?bar|20 ?(?:-|to) ?100 ?kPa)g?$", re.IGNORECASE)
+_SIGNAL_LAST = re.compile(rf" ?(?:[=:,;/@]|≙|->|→|[(\[]|(?<= )) ?{_SIGNAL} ?[)\]]?$", re.IGNORECASE)
+_CURRENT_SIGNAL = re.compile(
+    r"[(\[]?[04] ?(?:mA ?)?(?:-|to|\.{2,3}|…|/|bis) ?20 ?mA(?: ?d\.?c\.?)?(?: ?\+? ?HART)?[)\]]?$",
+    re.IGNORECASE,
+)
+_SIGNAL_ENDS = re.compile(
+    r"4 ?mA ?(?:=|:|@|≙) ?(?P<low>[^=:@≙]{1,30}?) ?[,;/] ?20 ?mA ?(?:=|:|@|≙) ?(?P<high>[^=:@≙]{1,30})$",
+    re.IGNORECASE,
+)
+_PNEUMATIC = re.compile(
+    r"(?:3 ?(?:-|to) ?15 ?psi|0[.,]2 ?(?:-|to) ?1(?:[.,]0)? ?bar|20 ?(?:-|to) ?100 ?kPa)g?$", re.IGNORECASE
+)
 _EQUALS = re.compile(r" ?(?:=|≙) ?")
 
 
@@ -425,7 +454,14 @@ def _ends(
 ) -> Range | CellTrouble:
     if isinstance(low, CellTrouble):
         return low
-    return high if isinstance(high, CellTrouble) else Range(low, high, signal)
+    if isinstance(high, CellTrouble):
+        return high
+    if {low.reference, high.reference} == {"gauge", "vacuum"}:  # -30..0 inHg vac: one of them had a sign
+        low, high = (
+            end.in_unit(end.unit.referred_to("gauge")) if end.unit and end.reference == "vacuum" else end
+            for end in (low, high)
+        )
+    return Range(low, high, signal)
 
 
 def _same_side(low: Unit | None, high: Unit | None) -> tuple[Unit | None, Unit | None]:
@@ -447,7 +483,11 @@ def _vacuum_end(text: str, unit: Unit | None, decimal: str | None) -> Range | Ce
     if isinstance(high, CellTrouble) or high.unit is None or high.unit.kind != "pressure":
         return None
     gauge = high.unit.referred_to("gauge") if high.reference == "unstated" else high.unit
-    low = 0.0 if high.reference == "absolute" else convert(FULL_VACUUM_BAR, unit_of("bar", gauge.reference), gauge)
+    low = (
+        0.0
+        if high.reference == "absolute"
+        else convert(FULL_VACUUM_BAR, unit_of("bar", gauge.reference), gauge)
+    )
     return Range(_quantity("FV", low, gauge), _quantity(high.text, high.number, gauge), None)
 
 
@@ -475,8 +515,8 @@ def _read_pair(text: str, unit: Unit | None, decimal: str | None) -> Range | Cel
     if not first:
         start = next((at for at, sign in enumerate(text) if sign in "0123456789"), 0)
         start -= 1 if start and text[start - 1] in "-+" else 0
-        front = read_unit(text[:start].strip(" :=")) if start else None
-        if front is None or not _SIGNED.match(text, start):
+        front = _own_unit(text[:start], unit) if start else None
+        if front is None or isinstance(front, CellTrouble) or not _SIGNED.match(text, start):
             return CellTrouble(reason=f"'{text}' is not a range")
         return _read_pair(text[start:].strip(), front, decimal)
     trouble: CellTrouble | None = None
@@ -489,10 +529,15 @@ def _read_pair(text: str, unit: Unit | None, decimal: str | None) -> Range | Cel
         if isinstance(unit_high, CellTrouble):
             trouble = trouble or unit_high
             continue
-        if between["sep"] == "/" and written.strip() in ('"', "''", "in", "inch"):
-            return CellTrouble(reason=f"'{text}' is a pipe size, not a range")
         if not written.strip(" .") and unit_low is not None:
             unit_high = unit_low
+        if unit_low and unit_high and not commensurable(unit_low, unit_high):
+            if unit_low.canonical != "inch":  # 0"-100" WC
+                return CellTrouble(
+                    reason=f"the ends of '{text}' measure different things",
+                    readings=(unit_label(unit_low), unit_label(unit_high)),
+                )
+            unit_low = unit_high
         low, high = _same_side(unit_low if unit_low is not None else unit_high, unit_high)
         return _ends(
             _value(text[: between.start()].strip(), first[1], first[2], low, decimal),
@@ -515,6 +560,10 @@ def _read_range(cell: str, unit: Unit | None, decimal: str | None) -> Range | Ce
     if len(text) > LONGEST_CELL:
         return CellTrouble(reason="the text is too long for a range")
     text = " ".join(_NOTE.sub("", text).split())
+    if _CONNECTION.match(text):
+        return CellTrouble(reason=f"'{text}' is a pipe size")
+    if _CURRENT_SIGNAL.match(text):
+        return CellTrouble(reason=f"'{text}' is a signal, no range", readings=(f"signal {text}",))
     ends = _SIGNAL_ENDS.match(text)
     if ends:
         high = _single(ends["high"], unit, decimal)
@@ -542,18 +591,21 @@ def _with_signal(pair: Range | CellTrouble, signal: str) -> Range | CellTrouble:
     return pair if isinstance(pair, CellTrouble) else Range(pair.lrv, pair.urv, signal)
 
 
-_SECOND_RANGE = re.compile(r" ?(?:[(\[] ?(?P<inside>[^()\[\]]+)[)\]]|(?: [/] ?|=|;)(?P<after>[^/=;]+))$")
+_SECOND_RANGE_STARTS = re.compile(r" ?[(\[/=;,] ?(?=[-+]?[.,]?[0-9])")
 
 
 def _said_twice(text: str, unit: Unit | None, decimal: str | None) -> Range | CellTrouble | None:
     """Read '0-10 bar (0-145 psi)': one range in two units; two different ranges are trouble."""
-    found = _SECOND_RANGE.search(text)
-    if not found:
+    pairs = None
+    for found in _SECOND_RANGE_STARTS.finditer(text):
+        first = _read_pair(text[: found.start()].strip(), unit, decimal)
+        second = _read_pair(text[found.end() :].strip(" )]"), None, decimal)
+        if isinstance(first, Range) and isinstance(second, Range):
+            pairs = first, second
+            break
+    if pairs is None:
         return None
-    first = _read_pair(text[: found.start()].strip(), unit, decimal)
-    second = _read_pair((found["inside"] or found["after"]).strip(), None, decimal)
-    if isinstance(first, CellTrouble) or isinstance(second, CellTrouble):
-        return None
+    first, second = pairs
     if first.urv.unit and second.urv.unit:
         try:
             low, high = second.lrv.to(first.urv.unit), second.urv.to(first.urv.unit)
@@ -566,9 +618,7 @@ def _said_twice(text: str, unit: Unit | None, decimal: str | None) -> Range | Ce
     return CellTrouble(reason=f"'{text}' holds two ranges", readings=readings)
 
 
-def read_range(
-    cell: object, *, unit: Unit | None = None, decimal: str | None = "."
-) -> Range | CellTrouble:
+def read_range(cell: object, *, unit: Unit | None = None, decimal: str | None = ".") -> Range | CellTrouble:
     """Read a range that stands in one cell.
 
     Parameters
@@ -588,8 +638,8 @@ def read_range(
     >>> lrv, urv, signal = read_range("4-20mA = 0-250 m³/h")
     >>> str(lrv), str(urv), signal
     ('0 m³/h', '250 m³/h', '4-20mA')
-    >>> [str(end) for end in read_range("-50–+150 °C")[:2]], [end.number for end in read_range("10--5")[:2]]
-    (['-50 °C', '150 °C'], [10.0, -5.0])
+    >>> [[str(end) for end in read_range(text)[:2]] for text in ("-50–+150 °C", "10--5 bar")]
+    [['-50 °C', '150 °C'], ['10 bar', '-5 bar']]
     """
     if not isinstance(cell, str):
         number = read_number(cell)
@@ -597,7 +647,8 @@ def read_range(
             return number
         single = Quantity.made(number.value, unit)
         return CellTrouble(
-            reason=f"'{single}' is one figure where a range is wanted", readings=(f"0 to {single}", str(single))
+            reason=f"'{single}' is one figure where a range is wanted",
+            readings=(f"0 to {single}", str(single)),
         )
     key = (cell, unit, decimal)
     known = _RANGES.get(key)
@@ -614,7 +665,8 @@ def read_range(
 _LABEL = r"(?:maximum|minimum|normal|norm|max|min|nor|nom|rated|n)\.?(?![A-Za-z/])"
 _LABELLED = re.compile(rf"({_LABEL}) ?[:=]? ?|(?P<behind> ?[(]?({_LABEL})[)]?$)", re.IGNORECASE)
 _PARTS = re.compile(
-    rf" ?(?:[/;|]|,(?= )) ?(?=[-+<>~]? ?[.,]?[0-9]|{_LABEL} ?[:=]? ?[-+]?[0-9]|(?:-+|n\.?/?a\.?)? ?(?:[/;|]|$))",
+    rf" ?(?:[/;|]|,(?= )) ?(?=[-+<>~]? ?[.,]?[0-9]|{_LABEL} ?[:=]? ?[-+]?[0-9]|"
+    r"(?:-+|n\.?/?a\.?)? ?(?:[/;|]|$))",
     re.IGNORECASE,
 )
 _DASHED = re.compile(rf"({NUMBER_PATTERN}) ?- ?({NUMBER_PATTERN}) ?- ?({NUMBER_PATTERN})(?![0-9])(.*)$")
@@ -691,8 +743,8 @@ def read_triplet(
 def with_reference(quantity: Quantity, reference: str | None) -> Quantity:
     """Let a pressure whose reference is unstated take a body's or the plant's; any other stays as it is.
 
-    >>> str(with_reference(read_quantity("5 bar"), "gauge")), str(with_reference(read_quantity("5 bara"), "gauge"))
-    ('5 barg', '5 bara')
+    >>> [str(with_reference(read_quantity(text), "gauge")) for text in ("5 bar", "5 bara")]
+    ['5 barg', '5 bara']
     """
     if quantity.unit is None or quantity.reference != "unstated" or reference in (None, "unstated"):
         return quantity

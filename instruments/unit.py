@@ -1,8 +1,7 @@
-"""Units: the closed table of what may be written, which spelling means which unit, and how large each unit is.
+"""Which spelling means which unit: a grammar of what people write, in front of the closed table of units.
 
-A spelling is never guessed. It is cleaned (blanks, dots, glyphs), then composed from the parts below (a
-quantity, a time, a reference to gauge or absolute); what no composition gives is no unit. Only canonical
-names reach the unit library: of raw text it makes nonsense without a word (psi(a) is psi x year to it).
+A spelling is never guessed. It is cleaned (blanks, dots, glyphs) and then composed from parts: a quantity, a
+time, a reference to gauge or absolute. What no composition gives is no unit.
 """
 
 from __future__ import annotations
@@ -10,375 +9,45 @@ from __future__ import annotations
 import re
 import unicodedata
 from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import dataclass
-from functools import cache
 from itertools import product
-from typing import Any, Final
+from types import MappingProxyType
+from typing import Final
+
+from instruments.unit_table import (
+    BASE_UNITS,
+    CANONICAL,
+    REFERENCES,
+    Unit,
+    UnitMismatch,
+    base_unit,
+    commensurable,
+    comparable,
+    convert,
+    difference,
+    unit,
+    unit_label,
+)
+
+__all__ = [
+    "BASE_UNITS",
+    "CANONICAL",
+    "REFERENCES",
+    "Unit",
+    "UnitMismatch",
+    "base_unit",
+    "commensurable",
+    "comparable",
+    "convert",
+    "difference",
+    "other_readings",
+    "read_reference",
+    "read_unit",
+    "unit",
+    "unit_label",
+]
 
 LONGEST_SPELLING: Final = 64
 """Characters of a text that may still be a unit; anything longer is a sentence."""
-
-REFERENCES: Final = ("gauge", "absolute", "differential", "vacuum", "unstated")
-"""What a pressure may be referred to; vacuum is gauge counted downwards."""
-
-
-class UnitMismatch(ValueError):
-    """Two units that do not measure the same thing, or pressures of different reference."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
-class Unit:
-    """One unit of the table. There is one object for each, so two are equal only if they are the same.
-
-    Attributes
-    ----------
-    canonical
-        The name of the unit in the table (``bar``, ``m3/h``, ``percent of LEL``).
-    kind
-        What it measures: ``pressure``, ``temperature``, ``volflow`` ...
-    dimension
-        What it may be converted into; finer than the kind where the kind holds things that no
-        factor connects (LEL and mol %, pH and turbidity, heads that need a density).
-    factor, offset
-        ``base value = number x factor + offset``, in the kind's base unit (see `base_unit`). The
-        factor is None where no number does it, and negative for a vacuum, which counts downwards.
-    reference
-        One of `REFERENCES` for pressures, else None. The factor says nothing of it: a gauge
-        pressure's base value is a gauge pressure in Pa.
-    basis
-        What else was said or is understood: ``dc``, ``pk-pk``, ``normal (0 degC, 101.325 kPa)``.
-    si_factor
-        The factor to SI as unit tables print it, a text where no number does it: for gas volumes
-        at base conditions m3/s at those conditions, whatever they are.
-    """
-
-    canonical: str
-    kind: str
-    factor: float | None
-    offset: float = 0.0
-    reference: str | None = None
-    basis: str = ""
-    dimension: str = ""
-    si_factor: float | str = 1.0
-
-    def as_vector(self) -> dict[str, str | float]:
-        """Return kind, canonical name and SI factor, as `read unit --json` gives them.
-
-        >>> read_unit("KG/CM2G").as_vector()
-        {'kind': 'pressure', 'canonical': 'kgf/cm2', 'si_factor': 98066.5}
-        """
-        return {"kind": self.kind, "canonical": self.canonical, "si_factor": self.si_factor}
-
-    def referred_to(self, reference: str) -> Unit:
-        """Return the same unit with another reference; a unit that is no pressure returns itself."""
-        if self.kind != "pressure" or reference == self.reference:
-            return self
-        return unit(self.canonical, reference)
-
-    def __str__(self) -> str:
-        return unit_label(self)
-
-    def __reduce__(self) -> tuple[Any, tuple[str, str | None, str]]:
-        return unit, (self.canonical, self.reference, self.basis)
-
-
-BASE_UNITS: Final[Mapping[str, str]] = {
-    "pressure": "Pa",
-    "temperature": "K",
-    "dtemp": "K",
-    "volflow": "m3/s",
-    "stdflow": "m3/s at 0 degC and 101.325 kPa",
-    "massflow": "kg/s",
-    "ratio": "1",
-    "length": "m",
-    "vel": "m/s",
-    "accel": "m/s2",
-    "speed": "1/s",
-    "cond": "S/m",
-    "curr": "A",
-    "volt": "V",
-    "res": "ohm",
-    "power": "W",
-    "conc": "kg/m3",
-    "volume": "m3",
-    "density": "kg/m3",
-    "dynvisc": "Pa s",
-    "kinvisc": "m2/s",
-    "mass": "kg",
-    "other": "1",
-}
-"""Base unit of each kind: what `Unit.factor` leads to."""
-
-_PINT_BASE: Final = {
-    "pressure": "pascal", "temperature": "kelvin", "dtemp": "delta_degC", "volflow": "meter**3/second",
-    "stdflow": "meter**3/second", "massflow": "kilogram/second", "length": "meter", "vel": "meter/second",
-    "accel": "meter/second**2", "speed": "1/second", "cond": "siemens/meter", "curr": "ampere", "volt": "volt",
-    "res": "ohm", "power": "watt", "conc": "kilogram/meter**3", "volume": "meter**3",
-    "density": "kilogram/meter**3", "dynvisc": "pascal*second", "kinvisc": "meter**2/second", "mass": "kilogram",
-    "ratio": "dimensionless",
-}  # fmt: skip
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class _Entry:
-    """A line of the table: `size` is a number in the base unit, or what the unit library calls the unit."""
-
-    kind: str
-    size: float | str
-    label: str
-    times: float = 1.0
-    dimension: str = ""
-    basis: str = ""
-    si_text: str = ""
-
-
-NORMAL: Final = "normal (0 degC, 101.325 kPa)"  # DIN 1343
-STANDARD: Final = "standard (15 degC, 101.325 kPa)"  # ISO 13443
-US_STANDARD: Final = "standard (60 degF, 14.696 psia)"  # common practice in the US, from memory
-
-_TO_NORMAL: Final = {
-    NORMAL: 1.0,
-    STANDARD: 273.15 / 288.15,
-    US_STANDARD: 273.15 / ((60.0 + 459.67) / 1.8) * 14.696 * 6894.757293168 / 101325.0,
-}
-"""Volume of a gas at 0 degC and 101.325 kPa over its volume at other base conditions (ideal gas)."""
-
-
-def _entry(kind: str, size: float | str, label: str, **more: Any) -> _Entry:
-    return _Entry(kind=kind, size=size, label=label, **more)
-
-
-_TABLE: Final[Mapping[str, _Entry]] = {
-    # Conventional water and mercury columns: 1000 kg/m3 and 13 595.1 kg/m3 at standard gravity (NIST SP 811 B.8).
-    "inH2O": _entry("pressure", "inH2O", "inH2O", basis="conventional (1000 kg/m3)"),
-    "inH2O@4C": _entry("pressure", "inH2O_4C", "inH2O@4°C", basis="water at 4 degC / 39.2 degF"),
-    # 998.2 kg/m3; the figure as tables print it, for the unit library has none.
-    "inH2O@20C": _entry("pressure", 248.641, "inH2O@20°C", basis="water at 20 degC / 68 degF"),
-    "inH2O@60F": _entry("pressure", "inH2O_60F", "inH2O@60°F", basis="water at 60 degF"),
-    "mmH2O": _entry("pressure", "kilogram_force/meter**2", "mmH2O", basis="conventional (1000 kg/m3)"),
-    "cmH2O": _entry("pressure", "cmH2O", "cmH2O", basis="conventional (1000 kg/m3)"),
-    "mH2O": _entry("pressure", "cmH2O", "mH2O", times=100.0, basis="conventional (1000 kg/m3)"),
-    "m of process liquid (needs SG)": _entry(
-        "pressure", "", "mlc", dimension="head of process liquid", si_text="SG x 9806.65"),
-    "ftH2O": _entry("pressure", "ftH2O", "ftH2O", basis="conventional (1000 kg/m3)"),
-    "inHg": _entry("pressure", "inHg", "inHg", basis="conventional (13595.1 kg/m3)"),
-    "mmHg": _entry("pressure", "mmHg", "mmHg", basis="conventional (13595.1 kg/m3)"),
-    "torr": _entry("pressure", "torr", "Torr"),
-    "psi": _entry("pressure", "psi", "psi"),
-    "kgf/cm2": _entry("pressure", "kilogram_force/centimeter**2", "kg/cm²"),
-    "bar": _entry("pressure", "bar", "bar"),
-    "mbar": _entry("pressure", "millibar", "mbar"),
-    "Pa": _entry("pressure", "pascal", "Pa"),
-    "kPa": _entry("pressure", "kilopascal", "kPa"),
-    "MPa": _entry("pressure", "megapascal", "MPa"),
-    "hPa": _entry("pressure", "hectopascal", "hPa"),
-    "atm": _entry("pressure", "standard_atmosphere", "atm"),
-    "degC": _entry("temperature", "delta_degC", "°C", si_text="t+273.15"),
-    "degF": _entry("temperature", "delta_degF", "°F", si_text="(t+459.67)/1.8"),
-    "K": _entry("temperature", "kelvin", "K"),
-    "degR": _entry("temperature", "delta_degF", "°R"),
-    "delta_degC": _entry("dtemp", "delta_degC", "Δ°C"),
-    "m3/h": _entry("volflow", "meter**3/hour", "m³/h"),
-    "m3/s": _entry("volflow", "meter**3/second", "m³/s"),
-    "L/s": _entry("volflow", "liter/second", "l/s"),
-    "1e6 L/d": _entry("volflow", "liter/day", "Ml/d", times=1e6),
-    "1e6 US gal/d": _entry("volflow", "gallon/day", "MGD", times=1e6),
-    "ft3/min": _entry("volflow", "foot**3/minute", "ft³/min"),
-    "US gal/min": _entry("volflow", "gallon/minute", "US gpm"),
-    "imp gal/min": _entry("volflow", "imperial_gallon/minute", "imp gpm"),
-    "bbl/d": _entry("volflow", "oil_barrel/day", "bbl/d"),
-    "1e3 bbl/d": _entry("volflow", "oil_barrel/day", "Mbbl/d", times=1e3),
-    "bbl/h": _entry("volflow", "oil_barrel/hour", "bbl/h"),
-    "L/min": _entry("volflow", "liter/minute", "l/min"),
-    "L/h": _entry("volflow", "liter/hour", "l/h"),
-    "cm3/min": _entry("volflow", "centimeter**3/minute", "cm³/min"),
-    "Nm3/h": _entry("stdflow", "meter**3/hour", "Nm³/h", basis=NORMAL),
-    "Sm3/h": _entry("stdflow", "meter**3/hour", "Sm³/h", basis=STANDARD),
-    "Sm3/d": _entry("stdflow", "meter**3/day", "Sm³/d", basis=STANDARD),
-    "1e6 Sm3/d": _entry("stdflow", "meter**3/day", "MMSCMD", times=1e6, basis=STANDARD),
-    "scf/min": _entry("stdflow", "foot**3/minute", "scfm", basis=US_STANDARD),
-    "scf/h": _entry("stdflow", "foot**3/hour", "scfh", basis=US_STANDARD),
-    "1e3 scf/d": _entry("stdflow", "foot**3/day", "MSCFD", times=1e3, basis=US_STANDARD),
-    "1e6 scf/d": _entry("stdflow", "foot**3/day", "MMSCFD", times=1e6, basis=US_STANDARD),
-    "NL/min": _entry("stdflow", "liter/minute", "Nl/min", basis=NORMAL),
-    "NL/h": _entry("stdflow", "liter/hour", "Nl/h", basis=NORMAL),
-    "kg/h": _entry("massflow", "kilogram/hour", "kg/h"),
-    "t/h": _entry("massflow", "metric_ton/hour", "t/h", basis="metric tonne"),
-    "t/d": _entry("massflow", "metric_ton/day", "t/d", basis="metric tonne"),
-    "lb/h": _entry("massflow", "pound/hour", "lb/h"),
-    "1e3 lb/h": _entry("massflow", "pound/hour", "klb/h", times=1e3),
-    "kg/s": _entry("massflow", "kilogram/second", "kg/s"),
-    "percent": _entry("ratio", "percent", "%", dimension="ratio"),
-    "percent valve travel": _entry("ratio", "percent", "% open", dimension="valve travel"),
-    "percent of LEL": _entry("ratio", "percent", "% LEL", dimension="lower explosive limit"),
-    "percent v/v": _entry("ratio", "percent", "% v/v", dimension="volume ratio"),
-    "percent mol": _entry("ratio", "percent", "mol%", dimension="mole ratio"),
-    "percent RH": _entry("ratio", "percent", "% RH", dimension="relative humidity"),
-    "ppm": _entry("ratio", "ppm", "ppm", dimension="ratio"),
-    "ppm w/w": _entry("ratio", "ppm", "ppm w/w", dimension="mass ratio"),
-    "ppm v/v": _entry("ratio", "ppm", "ppm v/v", dimension="volume ratio"),
-    "ppb": _entry("ratio", 1e-9, "ppb", dimension="ratio"),
-    "specific gravity": _entry(
-        "ratio", 1.0, "SG", dimension="specific gravity", si_text="x 999.016 (60F) or 1000"),
-    "mm": _entry("length", "millimeter", "mm"),
-    "cm": _entry("length", "centimeter", "cm"),
-    "m": _entry("length", "meter", "m"),
-    "inch": _entry("length", "inch", "in"),
-    "ft": _entry("length", "foot", "ft"),
-    "mil (0.001 in)": _entry("length", "thou", "mil"),
-    "um": _entry("length", "micrometer", "µm"),
-    "mm/s": _entry("vel", "millimeter/second", "mm/s"),
-    "in/s": _entry("vel", "inch/second", "in/s"),
-    "g (standard gravity)": _entry("accel", "standard_gravity", "g"),
-    "rev/min": _entry("speed", "1/minute", "rpm"),  # as a turn: the unit library's own rpm is radians
-    "cycles/min": _entry("speed", "1/minute", "cpm"),
-    "Hz": _entry("speed", "1/second", "Hz"),
-    "uS/cm": _entry("cond", "microsiemens/centimeter", "µS/cm"),
-    "mS/cm": _entry("cond", "millisiemens/centimeter", "mS/cm"),
-    "mA": _entry("curr", "milliampere", "mA"),
-    "A": _entry("curr", "ampere", "A"),
-    "V": _entry("volt", "volt", "V"),
-    "mV": _entry("volt", "millivolt", "mV"),
-    "ohm": _entry("res", "ohm", "ohm"),
-    "kW": _entry("power", "kilowatt", "kW"),
-    "MW": _entry("power", "megawatt", "MW"),
-    "kcal/h": _entry("power", "kilocalorie/hour", "kcal/h", basis="thermochemical calorie"),
-    "Btu/h": _entry("power", "Btu/hour", "Btu/h", basis="international table"),
-    "1e6 Btu/h": _entry("power", "Btu/hour", "MMBtu/h", times=1e6, basis="international table"),
-    "mg/L": _entry("conc", "milligram/liter", "mg/l"),
-    "ug/L": _entry("conc", "microgram/liter", "µg/l"),
-    "g/L": _entry("conc", "gram/liter", "g/l"),
-    "m3": _entry("volume", "meter**3", "m³"),
-    "L": _entry("volume", "liter", "l"),
-    "kg/m3": _entry("density", "kilogram/meter**3", "kg/m³"),
-    "g/cm3": _entry("density", "gram/centimeter**3", "g/cm³"),
-    "lb/ft3": _entry("density", "pound/foot**3", "lb/ft³"),
-    "cP": _entry("dynvisc", "centipoise", "cP"),
-    "cSt": _entry("kinvisc", "centistokes", "cSt"),
-    "kg": _entry("mass", "kilogram", "kg"),
-    "tonne": _entry("mass", "metric_ton", "t"),
-    "lb": _entry("mass", "pound", "lb"),
-    "pH (dimensionless log)": _entry("other", 1.0, "pH", dimension="pH"),
-    "NTU": _entry("other", 1.0, "NTU", dimension="turbidity NTU"),
-    "FNU": _entry("other", 1.0, "FNU", dimension="turbidity FNU"),
-    "degAPI = 141.5/SG60 - 131.5": _entry("other", 1.0, "°API", dimension="API gravity", si_text="nonlinear"),
-}  # fmt: skip
-
-CANONICAL: Final = tuple(_TABLE)
-"""The canonical names, all of them."""
-
-_OFFSETS: Final = {"degC": 273.15, "degF": 459.67 / 1.8}
-
-
-@cache
-def _registry() -> Any:
-    # Half a second: nobody pays it who reads no unit.
-    import pint
-
-    return pint.UnitRegistry(cache_folder=None)
-
-
-@cache
-def _size(canonical: str) -> float | None:
-    """Size of a unit in the base unit of its kind, gas volumes as if all had one base."""
-    entry = _TABLE[canonical]
-    if isinstance(entry.size, float):
-        return entry.size
-    if not entry.size:
-        return None
-    registry = _registry()
-    size = entry.times * registry.Quantity(1.0, entry.size).to(_PINT_BASE[entry.kind]).magnitude
-    return float(f"{size:.14g}")  # the last digits are the noise of a chain of multiplications
-
-
-@cache
-def unit(canonical: str, reference: str | None = None, basis: str = "") -> Unit:
-    """Return a unit by its canonical name.
-
-    Parameters
-    ----------
-    canonical : str
-        A name of the table, as ``"bar"``.
-    reference : str or None
-        For pressures; None is ``"unstated"``, and for the torr ``"absolute"``, as it is by custom.
-    basis : str
-        Beside what the table understands by itself, such as ``"dc"``.
-
-    Raises
-    ------
-    KeyError
-        The table has no such unit.
-    ValueError
-        The reference is none of `REFERENCES`, or the unit is no pressure.
-    """
-    entry = _TABLE[canonical]
-    pressure = entry.kind == "pressure"
-    custom = ("absolute" if canonical == "torr" else "unstated") if pressure else None
-    if (reference is not None and not pressure) or (pressure and (reference or custom) not in REFERENCES):
-        raise ValueError(f"{reference} is no reference of {canonical}")
-    return _the_one(canonical, reference or custom, basis or entry.basis)
-
-
-@cache
-def _the_one(canonical: str, reference: str | None, basis: str) -> Unit:
-    entry = _TABLE[canonical]
-    size = _size(canonical)
-    si_factor: float | str = entry.si_text or (1.0 if size is None else size)
-    factor = size
-    if size is not None and entry.kind == "stdflow":
-        factor = size * _TO_NORMAL[entry.basis]
-    if factor is not None and reference == "vacuum":
-        factor = -factor
-    return Unit(
-        canonical=canonical,
-        kind=entry.kind,
-        factor=factor,
-        offset=_OFFSETS.get(canonical, 0.0),
-        reference=reference,
-        basis=basis,
-        dimension=entry.dimension or entry.kind,
-        si_factor=si_factor,
-    )
-
-
-def base_unit(kind: str) -> str:
-    """Name of the unit in which base values of a kind are counted."""
-    return BASE_UNITS[kind]
-
-
-# ---------------------------------------------------------------------------------------------------------
-# Labels: the trade's spelling, which reads back to the same unit.
-
-_SHORT_SUFFIX: Final = {"bar": "ga", "mbar": "ga", "psi": "gad", "kPa": "ga", "MPa": "ga", "hPa": "g", "Pa": "g",
-                        "kgf/cm2": "ga"}  # fmt: skip
-_LETTER: Final = {"gauge": "g", "absolute": "a", "differential": "d"}
-
-
-def unit_label(unit: Unit, reference: str | None = None) -> str:
-    """Spelling of a unit for people: the trade's own, and one that reads back to the same unit.
-
-    Parameters
-    ----------
-    unit : Unit
-        The unit.
-    reference : str or None
-        Instead of the unit's own reference.
-
-    >>> [unit_label(read_unit(text)) for text in ("BARG", "psi(d)", "inwg", "DEG C", "M3/HR", "inHg vac")]
-    ['barg', 'psid', 'inH2O(g)', '°C', 'm³/h', 'inHg vac']
-    """
-    entry = _TABLE[unit.canonical]
-    label = entry.label
-    if unit.kind != "pressure":
-        return f"{label} {unit.basis.upper()}" if unit.basis in ("dc", "ac") else (
-            f"{label} {unit.basis}" if unit.basis and unit.basis != entry.basis else label)  # fmt: skip
-    reference = reference or unit.reference
-    if reference == "vacuum":
-        return f"{label} vac"
-    letter = _LETTER.get(reference or "", "")
-    if not letter or (unit.canonical == "torr" and letter == "a"):
-        return label
-    return label + letter if letter in _SHORT_SUFFIX.get(unit.canonical, "") else f"{label}({letter})"
 
 
 # ---------------------------------------------------------------------------------------------------------
@@ -403,15 +72,15 @@ _AFTER = str.maketrans(
 # UTF-8 that was read as Windows-1252: Â stands before the sign that was meant.
 _MOJIBAKE = re.compile("Â(?=[°²³µº·])")
 _PER = re.compile(r"(?<![a-z])per(?!\s*cent)(?![a-z])", re.IGNORECASE)
-_INVERSE = re.compile(r"[ .*]([A-Za-z]{1,4})\^?-([123])$")
+_INVERSE = re.compile(r"(?:^|[ .*])([A-Za-z]{1,4})\^?-\^?([123])$")
 _DROPPED = str.maketrans(dict.fromkeys(" \t\n\r\f\v.()[]{}_,^*'-;"))
 
 
 def _cleaned(text: str) -> str:
     """Bring glyphs to one form and powers with a minus under a stroke; letters keep their case.
 
-    >>> _cleaned("kg·m⁻³"), _cleaned("℃"), _cleaned("mÂ³/h")
-    ('kg/m3', '°C', 'm^3/h')
+    >>> _cleaned("kg·m⁻³"), _cleaned("℃"), _cleaned("mÂ³/h"), _cleaned("min-1")
+    ('kg/m3', '°C', 'm^3/h', '1/min')
     """
     text = _MOJIBAKE.sub("", text).translate(_BEFORE)
     text = unicodedata.normalize("NFKC", text).translate(_AFTER).strip()
@@ -420,7 +89,7 @@ def _cleaned(text: str) -> str:
     inverse = _INVERSE.search(text)
     if inverse:
         power = "" if inverse[2] == "1" else inverse[2]
-        text = f"{text[: inverse.start()]}/{inverse[1]}{power}"
+        text = f"{text[: inverse.start()] or '1'}/{inverse[1]}{power}"
     return text
 
 
@@ -431,7 +100,13 @@ def _compact(text: str) -> str:
     ('inWC', 'inWC', 'BarA', 'degC', 'uS/cm')
     """
     text = text.translate(_DROPPED)
-    return text.replace('"', "in").replace("°", "deg").replace("μ", "u").replace("Δ", "delta").replace("Ω", "ohm")
+    return (
+        text.replace('"', "in")
+        .replace("°", "deg")
+        .replace("μ", "u")
+        .replace("Δ", "delta")
+        .replace("Ω", "ohm")
+    )
 
 
 # ---------------------------------------------------------------------------------------------------------
@@ -468,8 +143,8 @@ _BARREL = _words("bbl bbls barrel barrels bo")
 _KILOGRAM = _words("kg kgs kgm kilogram kilograms kilogramme kilogrammes")
 _TONNE = _words("t te tonne tonnes mt mton mtons metricton metrictons metrictonne metrictonnes")
 _POUND = _words("lb lbs lbm pound pounds #")
-_THOUSAND = _words("k m 1000 103 1e3")
-_MILLION = _words("mm 1000000 106 1e6")
+_THOUSAND = _words("k m 1000 103 1e3 x1000 x103")  # 103 is 10^3 when its accent has gone
+_MILLION = _words("mm 1000000 106 1e6 x106")
 
 _MM = _words("mm millimeter millimetre millimeters millimetres")
 _CM = _words("cm centimeter centimetre centimeters centimetres")
@@ -504,7 +179,7 @@ _SUFFIX: Final = {
 _LONGEST_SUFFIX = max(map(len, _SUFFIX))
 _PREFIX: Final = {
     **dict.fromkeys(_words("abs absolute"), "absolute"),
-    **dict.fromkeys(_words("delta diff differential dp"), "differential"),
+    **dict.fromkeys(_words("deltap delta diff differential dp"), "differential"),
     **dict.fromkeys(_words("vac vacuum"), "vacuum"),
 }
 _WATER = _words("h2o h20 wc wcol watercolumn water aq ofwater ofh2o ofh20 ofwc ofwatercolumn")
@@ -554,7 +229,9 @@ def _pressure_spellings() -> Iterator[tuple[str, str, str | None]]:
         yield spelling, "kgf/cm2", "gauge"
 
 
-_PRESSURES: Final = {spelling: (canonical, reference) for spelling, canonical, reference in _pressure_spellings()}
+_PRESSURES: Final = {
+    spelling: (canonical, reference) for spelling, canonical, reference in _pressure_spellings()
+}
 _WHOLE_WORDS: Final = frozenset({"at", "ata", "ate", "atü", "atue"})  # take no suffix: att, atg are no units
 
 _WATER_BASIS = re.compile(r"(?:@|at)?([0-9]{1,4})(?:deg)?([cf])$")
@@ -599,7 +276,7 @@ def _pressure(key: str) -> Unit | None:
 
 # --- temperature
 
-_DEGREE = _words("deg degs degree degrees grad grd grade grados graus graden degrés degres o 0")
+_DEGREES = _words("deg degs degree degrees grad grd grade grados graus graden degrés degres")
 _SCALES: Final = {
     **dict.fromkeys(_words("c celsius celcius celsuis centigrade"), "degC"),
     **dict.fromkeys(_words("f fahrenheit farenheit"), "degF"),
@@ -612,26 +289,20 @@ _DIFFERENCE = _words("diff difference delta differenz")
 def _temperature(key: str) -> Unit | None:
     difference = False
     for word in _DIFFERENCE:
-        if key.startswith(word) and len(key) > len(word):
+        if key.startswith(word):
             difference, key = True, key[len(word) :]
-        elif key.endswith(word) and len(key) > len(word):
+        elif key.endswith(word):
             difference, key = True, key[: -len(word)]
-        if difference:
-            break
     scale = _SCALES.get(key)
     if scale is None:
-        for degree in _DEGREE:
+        for degree in _DEGREES:
             if key.startswith(degree):
-                scale = _SCALES.get(key[len(degree) :])
-            elif degree == "deg" and key.endswith(degree):
-                scale = _SCALES.get(key[:-3])
-            if scale:
-                break
-    if scale is None:
-        return None
+                scale = scale or _SCALES.get(key[len(degree) :])
+        if key.endswith("deg"):  # C°
+            scale = scale or _SCALES.get(key[:-3])
     if difference:
         return unit("delta_degC") if scale in ("degC", "K") else None
-    return unit(scale)
+    return unit(scale) if scale else None
 
 
 # --- ratios and concentrations, which may name the substance they speak of
@@ -639,7 +310,9 @@ def _temperature(key: str) -> Unit | None:
 _PERCENT = _words("% pct percent prozent percentage")
 _OF: Final[Mapping[str, tuple[str, ...]]] = {
     "percent": ("",),
-    "percent valve travel": _words("open opening travel stroke valvetravel valveopening valve position lift auf"),
+    "percent valve travel": _words(
+        "open opening travel stroke valvetravel valveopening valve position lift auf"
+    ),
     "percent of LEL": _words("lel oflel lfl oflfl ueg lie"),
     "percent v/v": _words("v/v vol volume byvol byvolume v vol/vol"),
     "percent mol": _words("mol mole molar mol/mol"),
@@ -654,8 +327,9 @@ _PARTS: Final[Mapping[str, tuple[str, ...]]] = {
 }
 _SUBSTANCES = frozenset(
     _words(
-        "o2 h2 h2s co co2 ch4 nh3 so2 nox no no2 n2o n2 cl2 clo2 hcl hf hcn h2so4 naoh nacl naocl caco3 cl f fe al mn "
-        "nh4 po4 no3 o3 voc hc c2h4 c3h8 c6h6 h2o do toc cod bod tss ss methane oxygen hydrogen propane oil ammonia"
+        "o2 h2 h2s co co2 ch4 nh3 so2 nox no no2 n2o n2 cl2 clo2 hcl hf hcn h2so4 naoh nacl naocl caco3 "
+        "cl f fe al mn nh4 po4 no3 o3 voc hc c2h4 c3h8 c6h6 h2o do toc cod bod tss ss mlss ts ds tds "
+        "methane oxygen hydrogen propane ammonia"
     )
 )
 
@@ -754,7 +428,7 @@ def _flow_spellings() -> Iterator[tuple[str, str]]:
         "1e6 US gal/d": _words("mgd usmgd mgdus mgpd"),
         "1e6 L/d": _words("mld mlpd"),
         "bbl/d": _words("bpd bopd blpd bwpd"),
-        "1e3 bbl/d": _words("mbpd kbpd mbd kbd mbopd"),
+        "1e3 bbl/d": _words("mbpd kbpd kbd mbopd"),
         "bbl/h": ("bph",),
         "lb/h": ("pph",),
         "1e3 lb/h": _words("kpph mpph"),
@@ -788,27 +462,22 @@ def _flow(key: str) -> Unit | None:
         # m3/h (n), m³/h i.N., m3/hr std: the base conditions behind the unit instead of before it.
         for words, letter in _CONDITIONS_BEHIND.items():
             if key.endswith(words):
-                stem = key[: -len(words)]
-                if _TABLE[_FLOWS[stem]].kind == "volflow" if stem in _FLOWS else False:
-                    canonical = _FLOWS.get(letter + stem)
-                    if canonical:
-                        break
+                canonical = canonical or _FLOWS.get(letter + key[: -len(words)])
     return None if canonical is None else unit(canonical)
 
 
 # --- everything else: a spelling means its unit, whatever stands around it
 
 _PEAKS: Final = {
-    **dict.fromkeys(_words("pkpk pp pktopk peaktopeak peakpeak p2p ptop ss"), "pk-pk"),
+    **dict.fromkeys(_words("pkpk pp pktopk peaktopeak peakpeak p2p ptop"), "pk-pk"),
     **dict.fromkeys(_words("pk peak 0pk 0p zeropeak"), "pk"),
     **dict.fromkeys(_words("rms eff"), "rms"),
 }
-_DIRECT: Final = {**dict.fromkeys(_words("dc ="), "dc"), **dict.fromkeys(_words("ac ~"), "ac")}
+_DIRECT: Final = {**dict.fromkeys(_words("dc ="), "dc"), **dict.fromkeys(_words("ac ~ rms"), "ac")}
 _QUALIFIED: Final[Mapping[str, Mapping[str, str]]] = {
-    **dict.fromkeys(("um", "mil (0.001 in)", "mm"), {k: v for k, v in _PEAKS.items() if v != "rms"}),
-    **dict.fromkeys(("mm/s", "in/s", "g (standard gravity)"), {k: v for k, v in _PEAKS.items() if v != "pk-pk"}),
-    **dict.fromkeys(("V", "mV", "A", "mA"), {**_DIRECT, "rms": "ac"}),
-}
+    "um": _PEAKS, "mil (0.001 in)": _PEAKS, "mm": _PEAKS, "mm/s": _PEAKS, "in/s": _PEAKS,
+    "g (standard gravity)": _PEAKS, "V": _DIRECT, "mV": _DIRECT, "A": _DIRECT, "mA": _DIRECT,
+}  # fmt: skip
 
 
 def _plain_spellings() -> Iterator[tuple[str, str]]:
@@ -822,13 +491,14 @@ def _plain_spellings() -> Iterator[tuple[str, str]]:
         "um": _MICRON,
         "mm/s": (*_over(_MM, _SECOND), "mmps"),
         "in/s": (*_over(_INCH, _SECOND), "ips", "inps"),
-        "g (standard gravity)": _words("g gs"),
-        "rev/min": (*_words("rpm revpm upm"), *_over(_words("r rev revs revolution revolutions u 1 tr"), _MINUTE)),
-        "cycles/min": (*_words("cpm"), *_over(_words("cycles cycle cyc c"), _MINUTE)),
-        "Hz": (*_words("hz hertz"), *_over(_words("1 cycles cycle cyc"), _SECOND)),
-        "uS/cm": _over(
-            _words("us usiemens microsiemens micros umho umhos micromho micromhos"), _CM
+        "g (standard gravity)": ("g",),
+        "rev/min": (
+            *_words("rpm revpm upm"),
+            *_over(_words("r rev revs revolution revolutions u 1 tr"), _MINUTE),
         ),
+        "cycles/min": (*_words("cpm"), *_over(_words("cycles cycle cyc"), _MINUTE)),
+        "Hz": (*_words("hz hertz"), *_over(_words("1 cycles cycle cyc"), _SECOND)),
+        "uS/cm": _over(_words("us usiemens microsiemens micros umho umhos micromho micromhos"), _CM),
         "mS/cm": _over(_words("ms msiemens millisiemens mmho mmhos millimho millimhos"), _CM),
         "mA": _words("ma milliamp milliamps milliampere milliamperes"),
         "A": _words("a amp amps ampere amperes"),
@@ -839,7 +509,10 @@ def _plain_spellings() -> Iterator[tuple[str, str]]:
         "MW": _words("mw megawatt megawatts"),
         "kcal/h": (*_over(_words("kcal kcals kilocalorie kilocalories"), _HOUR), "kcalph"),
         "Btu/h": (*_over(_words("btu btus"), _HOUR), "btuh", "btuph"),
-        "1e6 Btu/h": (*_over(_with(_MILLION, _words("btu btus")), _HOUR), *_with(_MILLION, ("btuh", "btuph"))),
+        "1e6 Btu/h": (
+            *_over(_with(_MILLION, _words("btu btus")), _HOUR),
+            *_with(_MILLION, ("btuh", "btuph")),
+        ),
         "m3": _M3,
         "L": _LITRE,
         "kg/m3": _over(_KILOGRAM, tuple(m3 for m3 in _M3 if not m3.startswith("k"))),
@@ -857,7 +530,9 @@ def _plain_spellings() -> Iterator[tuple[str, str]]:
         "pH (dimensionless log)": _words("ph phunit phunits phvalue"),
         "NTU": _words("ntu ntus"),
         "FNU": _words("fnu fnus"),
-        "degAPI = 141.5/SG60 - 131.5": _words("api degapi degreeapi degreesapi apigravity degapigravity oapi"),
+        "degAPI = 141.5/SG60 - 131.5": _words(
+            "api apideg degapi degreeapi degreesapi apigravity degapigravity oapi"
+        ),
     }
     for canonical, words in spellings.items():
         for word in words:
@@ -883,35 +558,36 @@ def _plain(key: str) -> Unit | None:
 # Case: most lists are typed in any case. It decides only where two readings are left.
 
 _LETTERS: Final[Mapping[str, str]] = {
-    "m": "m", "M": "m", "t": "tonne", "T": "tonne", "g": "g (standard gravity)", "C": "degC", "F": "degF", "K": "K",
-    "R": "degR", "A": "A", "V": "V", "l": "L", "L": "L", "c": "degC", "f": "degF", "v": "V",
+    "m": "m", "M": "m", "t": "tonne", "T": "tonne", "g": "g (standard gravity)", "C": "degC", "F": "degF",
+    "K": "K", "R": "degR", "A": "A", "V": "V", "l": "L", "L": "L", "c": "degC", "f": "degF", "v": "V",
 }  # fmt: skip
 """A letter by itself. G is gauge, gauss or a swollen g; small k, r and a are too many things: none reads."""
 
 _BY_CASE: Final[Mapping[str, str]] = {"Ml/": "1e6 L/d", "ML/": "1e6 L/d", "ml/": "cm3/min", "mL/": "cm3/min"}
 _CONDUCTIVITY: Final = {"uS": "uS/cm", "umho": "uS/cm", "umhos": "uS/cm", "mS": "mS/cm"}
+"""Of water, lists leave the centimetre out."""
+_SMALL_O: Final = {**dict.fromkeys(("oC", "OC", "oc", "0C", "0c"), "degC"), "oF": "degF", "0F": "degF"}
+"""An o or a nought for the degree sign; OF and OK are words."""
 
 
-def _by_case(compact: str, key: str) -> Unit | None | bool:
-    """Read what depends on capitals; False where nothing does."""
+def _by_case(compact: str, key: str) -> tuple[bool, str | None]:
+    """Whether capitals alone decide, and the canonical name that they give."""
     if len(compact) == 1 and compact.isalpha():
-        letter = _LETTERS.get(compact)
-        return unit(letter) if letter else None
-    if key in ("mw",) and compact[0] == "m":
-        return None  # milliwatts, which the table has not, or megawatts
+        return True, _LETTERS.get(compact)
+    if compact in _SMALL_O:
+        return True, _SMALL_O[compact]
+    if compact in ("mw", "mW", "pA", "AT", "At"):
+        return True, None  # milliwatt, picoampere: not in the table, and neither MW nor Pa
+    if key == "mbd":
+        return True, None  # thousand barrels a day, or mbar differential
     if compact.startswith("mP") and key.startswith("mpa") and not key.startswith("mpas"):
-        return None  # millipascal, or megapascal
-    if key == "at" and compact != "at":
-        return None
-    if key == "pa" and compact == "pA":
-        return None
+        return True, None  # a millipascal as it is written, a megapascal as it is meant
     canonical = _BY_CASE.get(compact[:3])
     if canonical:
-        time = _DAY if canonical == "1e6 L/d" else _MINUTE
-        return unit(canonical) if key[3:] in time else None
-    if compact in _CONDUCTIVITY:  # of water, everybody leaves the centimetre out
-        return unit(_CONDUCTIVITY[compact])
-    return False
+        return True, canonical if key[3:] in (_DAY if canonical == "1e6 L/d" else _MINUTE) else None
+    if compact in _CONDUCTIVITY:
+        return True, _CONDUCTIVITY[compact]
+    return False, None
 
 
 _CANONICAL_BY_TEXT: Final = {name.casefold(): name for name in CANONICAL}
@@ -919,17 +595,19 @@ _CANONICAL_BY_TEXT: Final = {name.casefold(): name for name in CANONICAL}
 
 def _read(text: str) -> Unit | None:
     cleaned = _cleaned(text)
-    while len(cleaned) > 2 and (cleaned[0], cleaned[-1]) in (("(", ")"), ("[", "]")) and (
-        cleaned[0] not in cleaned[1:] and cleaned[-1] not in cleaned[:-1]
+    while (
+        len(cleaned) > 2
+        and (cleaned[0], cleaned[-1]) in (("(", ")"), ("[", "]"))
+        and (cleaned[0] not in cleaned[1:] and cleaned[-1] not in cleaned[:-1])
     ):
         cleaned = cleaned[1:-1].strip()
     if not cleaned or len(cleaned) > LONGEST_SPELLING:
         return None
     compact = _compact(cleaned)
     key = compact.lower()
-    decided = _by_case(compact, key)
-    if not isinstance(decided, bool):
-        return decided
+    decided, canonical = _by_case(compact, key)
+    if decided:
+        return unit(canonical) if canonical else None
     for read in (_pressure, _temperature, _flow, _fraction, _plain):
         found = read(key)
         if found:
@@ -955,8 +633,8 @@ def read_unit(text: str) -> Unit | None:
     Unit or None
         None where the spelling means no unit of the table, or more than one. It is never guessed.
 
-    >>> str(read_unit("kg/cm² (g)")), str(read_unit("N m3/h")), str(read_unit("in. w.c.")), read_unit("Hazen")
-    ('kg/cm²g', 'Nm³/h', 'inH2O', None)
+    >>> [str(read_unit(text)) for text in ("kg/cm² (g)", "N m3/h", "in. w.c.")], read_unit("Hazen")
+    (['kg/cm²g', 'Nm³/h', 'inH2O'], None)
     """
     try:
         return _KNOWN[text]
@@ -971,86 +649,31 @@ def read_unit(text: str) -> Unit | None:
 def read_reference(text: str) -> str | None:
     """Read what stands alone behind a number in a column of pressures: ``g``, ``(a)``, ``abs``.
 
-    >>> read_reference("(g)"), read_reference("abs."), read_reference("bar")
-    ('gauge', 'absolute', None)
+    >>> read_reference("(g)"), read_reference("abs."), read_reference("bar"), read_reference("V")
+    ('gauge', 'absolute', None, None)
     """
-    return _SUFFIX.get(_compact(_cleaned(text)).lower()) if len(text) <= LONGEST_SPELLING else None
+    if len(text) > LONGEST_SPELLING or text.strip() in ("v", "V"):  # volts
+        return None
+    return _SUFFIX.get(_compact(_cleaned(text)).lower())
 
 
-def commensurable(one: Unit, other: Unit) -> bool:
-    """Whether a factor leads from one unit to the other.
+_BARE: Final[Mapping[str, tuple[str, ...]]] = MappingProxyType(
+    {
+        "m": ("metre", "minute"), "M": ("metre", "thousand or million"), "t": ("tonne", "time"),
+        "T": ("tonne", "temperature"), "g": ("standard gravity", "gram", "gauge"),
+        "C": ("degree Celsius", "coulomb"), "F": ("degree Fahrenheit", "flow"), "K": ("kelvin", "thousand"),
+        "R": ("degree Rankine", "ohm"), "A": ("ampere", "absolute"), "V": ("volt", "volume"),
+        "#": ("psi", "pound"), '"': ("inch", "ditto"),
+    }
+)  # fmt: skip
 
-    A plain percent takes what it is a percentage of from the other side, as a pressure of unstated
-    reference does; %LEL and % v/v are different things.
+
+def other_readings(text: str) -> tuple[str, ...]:
+    """What a bare letter or sign may mean, the reading that `read_unit` gives first; empty for all else.
+
+    Where the measured variable of the tag contradicts that first reading, the cell has two.
+
+    >>> other_readings("#"), other_readings("bar")
+    (('psi', 'pound'), ())
     """
-    if one.dimension == other.dimension:
-        return True
-    if one.kind != "ratio" or other.kind != "ratio":
-        return False
-    plain, named = (one, other) if one.dimension == "ratio" else (other, one)
-    if plain.dimension != "ratio" or named.dimension == "specific gravity":
-        return False
-    return plain.canonical == "percent" or named.dimension in ("volume ratio", "mass ratio", "mole ratio")
-
-
-def convert(value: float, from_unit: Unit, to_unit: Unit) -> float:
-    """Convert a value; a temperature is a temperature here, not a difference.
-
-    Raises
-    ------
-    UnitMismatch
-        The units measure different things, or need a density, or are pressures referred to
-        different things. Unstated goes with every reference.
-
-    >>> round(convert(10.0, read_unit("kg/cm2(g)"), read_unit("barg")), 5)
-    9.80665
-    """
-    if from_unit is to_unit:
-        return value
-    if not commensurable(from_unit, to_unit):
-        raise UnitMismatch(f"{from_unit} cannot be converted into {to_unit}")
-    if not comparable(from_unit.reference, to_unit.reference):
-        raise UnitMismatch(f"{from_unit} and {to_unit} are referred to different pressures")
-    if from_unit.factor is None or to_unit.factor is None:
-        if from_unit.canonical == to_unit.canonical:
-            return value
-        raise UnitMismatch(f"{from_unit} cannot be converted into {to_unit}")
-    if from_unit.canonical == to_unit.canonical and from_unit.factor == to_unit.factor:
-        return value
-    return _without_noise((value * from_unit.factor + from_unit.offset - to_unit.offset) / to_unit.factor)
-
-
-def difference(value: float, from_unit: Unit, to_unit: Unit) -> float:
-    """Convert a span, a deadband or a tolerance: sizes alone count, no offset, no reference.
-
-    Raises
-    ------
-    UnitMismatch
-        The units measure different things.
-
-    >>> difference(100.0, read_unit("degC"), read_unit("degF")), difference(1.0, read_unit("degC"), read_unit("degF"))
-    (180.0, 1.8)
-    """
-    temperatures = {"temperature", "dtemp"}
-    if not commensurable(from_unit, to_unit) and not {from_unit.kind, to_unit.kind} <= temperatures:
-        raise UnitMismatch(f"{from_unit} cannot be converted into {to_unit}")
-    if from_unit.canonical == to_unit.canonical:
-        return value
-    if from_unit.factor is None or to_unit.factor is None:
-        raise UnitMismatch(f"{from_unit} cannot be converted into {to_unit}")
-    return _without_noise(value * abs(from_unit.factor) / abs(to_unit.factor))
-
-
-def _without_noise(value: float) -> float:
-    return float(f"{value:.14g}")
-
-
-def comparable(one: str | None, other: str | None) -> bool:
-    """Whether two references may be compared: equal, gauge with vacuum, or one of them unstated.
-
-    >>> comparable("gauge", "vacuum"), comparable("gauge", "absolute"), comparable("unstated", "absolute")
-    (True, False, True)
-    """
-    if one == other or one is None or other is None or "unstated" in (one, other):
-        return True
-    return {one, other} == {"gauge", "vacuum"}
+    return _BARE.get(text.strip(), ())
