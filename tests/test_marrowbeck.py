@@ -68,7 +68,7 @@ def test_what_the_index_names_is_listed() -> None:
         (INDEX, "Barrier / Isolator", "Device types", "Code"),
         (INDEX, "Area", "Areas", "Area"),
         (INDEX, "Cable No.", "Cables", "Cable No."),
-        (PACKAGE, "Catalog Code", "Device types", "Code"),
+        (PACKAGE, "Device Code", "Device types", "Code"),
         (PACKAGE, "Module", "Device types", "Code"),
         (PACKAGE, "Area", "Areas", "Area"),
         (PACKAGE, "Cable No.", "Cables", "Cable No."),
