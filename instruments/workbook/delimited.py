@@ -5,9 +5,10 @@ from __future__ import annotations
 import codecs
 import csv
 import io
+import itertools
 import re
 from collections import Counter
-from collections.abc import Iterable
+from collections.abc import Iterable, Iterator
 from pathlib import PurePath
 from typing import Final
 
@@ -27,12 +28,86 @@ NAMES: Final = {",": "commas", ";": "semicolons", "\t": "tabs", "|": "bars"}
 MAX_CELLS: Final = 20_000_000
 """Rows times columns, blank ones included."""
 
-_SAMPLE: Final = 400
-"""Records by which the separator is chosen."""
+MAX_LINE: Final = 8_000_000
+"""Characters in a line that are read at most."""
 
-_SAID: Final = re.compile(r"sep=(.)", re.IGNORECASE)
+_SAMPLE: Final = 400
+"""Records by which the separator is chosen, of a million characters at most."""
+
+_SAID: Final = re.compile(r"sep=([^\w\s\"]|\t)", re.IGNORECASE)
 _FORMULA_TEXT: Final = re.compile(r'="((?:[^"]|"")*)"')
 _UTF_16: Final = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
+
+
+class _Text:
+    """The lines of a text, decoded as they are asked for: a whole text may take four times its bytes."""
+
+    def __init__(self, data: bytes, file: str) -> None:
+        self.file = file
+        self.notes: list[str] = []
+        self._data = data
+        self._encoding, self._errors = self._found()
+        first = next(self._lines(), "").rstrip("\r\n")
+        # A spreadsheet does not show a line that says the separator, so the addresses count from the next.
+        self.said = _SAID.fullmatch(first)
+
+    def lines(self) -> Iterator[str]:
+        """Return the lines, each with its end."""
+        return itertools.islice(self._lines(), 1 if self.said else 0, None)
+
+    def line_number(self, number: int) -> str:
+        """Return the place of a line, counted from 1 in `lines`."""
+        return f"line {number + bool(self.said)}"
+
+    def _lines(self) -> Iterator[str]:
+        stream = io.TextIOWrapper(io.BytesIO(self._data), self._encoding, self._errors, newline="")
+        for number, line in enumerate(stream, 1):
+            if "\0" in line:
+                raise UnreadableFile(
+                    self.file,
+                    f"line {number}",
+                    "holds a NUL character, as no text does: save it as CSV in UTF-8",
+                )
+            if len(line) > MAX_LINE:
+                raise UnreadableFile(
+                    self.file, f"line {number}", f"is longer than {MAX_LINE:,} characters, as no row is"
+                )
+            yield line
+
+    def _found(self) -> tuple[str, str]:
+        """Return the encoding, and what is done about bytes that are none in it."""
+        data = self._data
+        if data.startswith(_UTF_16):
+            try:
+                for _ in _decoded(data, "utf-16", "strict"):
+                    pass
+            except UnicodeError:
+                raise UnreadableFile(
+                    self.file, "", "says that it is in UTF-16, and is not all of it"
+                ) from None
+            return "utf-16", "strict"
+        damaged = beyond_ascii = 0
+        for piece in _decoded(data, "utf-8-sig", "replace"):
+            damaged += piece.count("\ufffd")
+            if not piece.isascii():
+                beyond_ascii += sum(1 for character in piece if character > "\x7f")
+        if not damaged:
+            return "utf-8-sig", "strict"
+        # A text with a few damaged bytes must not have every degree sign read as two other characters.
+        if beyond_ascii > 2 * damaged:
+            self.notes.append(f"{damaged} characters are damaged and stand as \ufffd")
+            return "utf-8-sig", "replace"
+        self.notes.append("not in UTF-8: read as Windows-1252")
+        if unknown := sum(piece.count("\ufffd") for piece in _decoded(data, "cp1252", "replace")):
+            self.notes.append(f"{unknown} characters are unknown there and stand as \ufffd")
+        return "cp1252", "replace"
+
+
+def _decoded(data: bytes, encoding: str, errors: str) -> Iterator[str]:
+    decoder = codecs.getincrementaldecoder(encoding)(errors)
+    for at in range(0, len(data), 1 << 20):
+        yield decoder.decode(data[at : at + (1 << 20)])
+    yield decoder.decode(b"", final=True)
 
 
 def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> Sheet:
@@ -53,53 +128,45 @@ def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> She
         It holds NUL characters, its encoding cannot be read, a quotation mark is not closed, or it is too
         large.
     """
-    text, notes = _decoded(data, file)
-    if (at := text.find("\0")) >= 0:
-        raise UnreadableFile(
-            file,
-            f"line {text.count(chr(10), 0, at) + 1}",
-            "holds a NUL character, as no text does: save it as CSV in UTF-8",
-        )
-    separator = None
-    first, _, rest = text.partition("\n")
-    if said := _SAID.fullmatch(first.rstrip("\r")):
-        # A spreadsheet does not show this line, so the addresses count from the next.
-        separator, text = said[1], rest
-    if separator is None:
-        separator = find_separator(text)
-        if separator != "," and shape_of(text, separator)[1] > 1:
+    text = _Text(data, file)
+    notes = text.notes
+    if text.said:
+        separator = text.said[1]
+    else:
+        separator, columns = find_separator(text.lines())
+        if separator != "," and columns > 1:
             notes.append(f"columns taken to be separated by {NAMES[separator]}")
-    records, quotes_are_text = _records(text, separator, file)
+    records, quotes_are_text = _records(text, separator, max_cells)
     if quotes_are_text:
         notes.append('the quotation marks were taken as part of the text (") and not as quotes')
-    width = max(map(len, records), default=0)
-    while records and not any(records[-1]):
+    while records and all(map(shows_nothing, records[-1])):
         records.pop()
+    width = max(map(len, records), default=0)
     if len(records) > MAX_ROWS or width > MAX_COLUMNS or len(records) * width > max_cells:
         raise UnreadableFile(
             file, "", f"has {len(records):,} rows and {width:,} columns; at most {max_cells:,} cells are read"
         )
     ragged = _ragged(records)
     if ragged:
-        rows = ", ".join(str(row + 1) for row in sorted(ragged)[:10])
+        shown = ", ".join(str(row + 1) for row in sorted(ragged)[:10])
         notes.append(
-            f"rows with more or fewer cells than is usual here: {len(ragged)}, in row {rows}"
+            f"rows with more or fewer cells than is usual here: {len(ragged)}, in row {shown}"
             + (" ..." if len(ragged) > 10 else "")
         )
-    rows_read: list[list[Value]] = []
+    rows: list[list[Value]] = []
+    texts: dict[str, Value] = {}
     for record in records:
-        row: list[Value] = [_value(cell) for cell in record]
+        row = [texts[cell] if cell in texts else texts.setdefault(cell, _value(cell)) for cell in record]
         row += [None] * (width - len(row))
-        rows_read.append(row)
-    errors = take_out_errors(rows_read)
-    filled = sum(len(row) - row.count(None) for row in rows_read)
+        rows.append(row)
+    errors = take_out_errors(rows)
     return Sheet(
         file=file,
         name=PurePath(file).stem,
-        rows=rows_read,
+        rows=rows,
         errors=errors,
         ragged=ragged,
-        cells_filled=filled + len(errors),
+        cells_filled=sum(len(row) - row.count(None) for row in rows) + len(errors),
         notes=tuple(notes),
     )
 
@@ -113,102 +180,83 @@ def _value(cell: str) -> Value:
     return cell
 
 
-def _decoded(data: bytes, file: str) -> tuple[str, list[str]]:
-    notes: list[str] = []
-    if data.startswith(_UTF_16):
-        try:
-            return data.decode("utf-16"), notes
-        except UnicodeDecodeError as error:
-            raise UnreadableFile(
-                file, "", f"says that it is in UTF-16, and is not from byte {error.start} on"
-            ) from None
-    try:
-        return data.decode("utf-8-sig"), notes
-    except UnicodeDecodeError:
-        pass
-    # A file in UTF-8 with a few damaged bytes must not have every degree sign read as two other characters.
-    mended = data.decode("utf-8-sig", "replace")
-    damaged = mended.count("\ufffd")
-    beyond_ascii = sum(1 for character in mended if character > "\x7f") - damaged
-    if beyond_ascii > damaged:
-        notes.append(f"{damaged} characters are damaged and stand as \ufffd")
-        return mended, notes
-    text = data.decode("cp1252", "replace")
-    notes.append("not in UTF-8: read as Windows-1252")
-    if unknown := text.count("\ufffd"):
-        notes.append(f"{unknown} characters are unknown there and stand as \ufffd")
-    return text, notes
-
-
-def _parsed(text: str, separator: str, *, strict: bool = True) -> Iterable[list[str]]:
-    return csv.reader(io.StringIO(text, newline=""), delimiter=separator, strict=strict)
-
-
-def shape_of(text: str, separator: str) -> tuple[float, int]:
-    """Return the commonest number of cells above one, after the share of the first records that has it."""
+def _shape(sample: str, separator: str) -> tuple[float, int]:
+    """Return the commonest number of cells above one, after the share of the records that has it."""
     widths: list[int] = []
     try:
-        for record in _parsed(text, separator, strict=False):
+        for record in csv.reader(io.StringIO(sample, newline=""), delimiter=separator):
             if any(record):
                 widths.append(len(record))
             if len(widths) == _SAMPLE:
                 break
     except csv.Error:
         pass
-    usual = Counter(width for width in widths if width > 1).most_common()
+    usual = Counter(width for width in widths if width > 1)
     if not usual:
         return 0.0, 1
     # The wider of equally common ones: title rows are narrow.
-    number, times = max(usual, key=lambda found: (found[1], found[0]))
+    number, times = max(usual.items(), key=lambda found: (found[1], found[0]))
     return times / len(widths), number
 
 
-def find_separator(text: str) -> str:
-    r"""Return what separates the columns: the mark that cuts most rows into equally many cells, and many.
+def find_separator(lines: Iterable[str]) -> tuple[str, int]:
+    r"""Return the mark that cuts most rows into equally many cells, and many, and how many these are.
 
-    >>> find_separator("tag;lrv;urv\nPT-1;0,5;1,5\nPT-2;0;2,5\n")
-    ';'
-    >>> find_separator("tag\tservice\nPT-1\tfeed, hot\n")
-    '\t'
+    >>> find_separator(["tag;lrv;urv\n", "PT-1;0,5;1,5\n", "PT-2;0;2,5\n"])
+    (';', 3)
+    >>> find_separator(["tag\tservice\n", "PT-1\tfeed, hot\n"])
+    ('\t', 2)
     """
+    kept: list[str] = []
+    length = 0
+    for line in itertools.islice(lines, _SAMPLE):
+        kept.append(line[: 1 << 20])
+        length += len(line)
+        if length > 1 << 20:
+            break
+    sample = "".join(kept)
+    shapes = {separator: _shape(sample, separator) for separator in SEPARATORS}
+    # Squared: semicolons in the texts of a list of two columns cut most of its rows into three.
+    best = max(SEPARATORS, key=lambda separator: shapes[separator][0] ** 2 * (shapes[separator][1] - 1))
+    return best, shapes[best][1]
 
-    def weight(separator: str) -> float:
-        share, number = shape_of(text, separator)
-        return share * (number - 1)
 
-    return max(SEPARATORS, key=weight)
-
-
-def _records(text: str, separator: str, file: str) -> tuple[list[list[str]], bool]:
+def _records(text: _Text, separator: str, max_cells: int) -> tuple[list[list[str]], bool]:
     """Return the records, and whether quotation marks had to be taken as text."""
     records: list[list[str]] = []
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=separator, strict=True)
+    reader = csv.reader(text.lines(), delimiter=separator, strict=True)
     begun = 1
     try:
-        for record in reader:
+        for record in _counted(reader, text.file, max_cells):
             records.append(record)
             begun = reader.line_num + 1
     except csv.Error as error:
         # "WC for inches of water opens a quote that the next "WC closes, and a row is lost in between.
         # Where each line makes a whole row by itself, nobody quotes in this file.
-        plain = _unquoted(text, separator)
+        plain = _unquoted(text, separator, max_cells)
         if plain is not None:
             return plain, True
         raise UnreadableFile(
-            file,
-            f"line {begun}",
+            text.file,
+            text.line_number(begun),
             f"a quotation mark in the row that begins here is not closed where its cell ends ({error})",
         ) from None
     return records, False
 
 
-def _unquoted(text: str, separator: str) -> list[list[str]] | None:
+def _counted(records: Iterable[list[str]], file: str, max_cells: int) -> Iterator[list[str]]:
+    cells = 0
+    for record in records:
+        cells += len(record) or 1
+        if cells > max_cells:
+            raise UnreadableFile(file, "", f"has more than {max_cells:,} cells, and no more are read")
+        yield record
+
+
+def _unquoted(text: _Text, separator: str, max_cells: int) -> list[list[str]] | None:
+    reader = csv.reader(text.lines(), delimiter=separator, quoting=csv.QUOTE_NONE, strict=True)
     try:
-        records = list(
-            csv.reader(
-                io.StringIO(text, newline=""), delimiter=separator, quoting=csv.QUOTE_NONE, strict=True
-            )
-        )
+        records = list(_counted(reader, text.file, max_cells))
     except csv.Error:
         return None
     widths = Counter(len(record) for record in records if any(record))

@@ -28,9 +28,8 @@ _MAIN: Final = frozenset(
     }
 )
 _XML_SPACE: Final = "http://www.w3.org/XML/1998/namespace space"
-_ESCAPE: Final = str.maketrans(
-    {"&": "&amp;", "<": "&lt;", ">": "&gt;", '"': "&quot;", "\r": "&#13;", "\n": "&#10;", "\t": "&#9;"}
-)
+_IN_TEXT: Final = str.maketrans({"&": "&amp;", "<": "&lt;", ">": "&gt;", "\r": "&#13;"})
+_IN_ATTRIBUTE: Final = _IN_TEXT | str.maketrans({'"': "&quot;", "\n": "&#10;", "\t": "&#9;"})
 _ENCODING: Final = re.compile(
     rb"""\A(?:\xef\xbb\xbf)?<\?xml[^>]{0,200}?encoding\s*=\s*["']([A-Za-z0-9._-]+)["']"""
 )
@@ -186,7 +185,7 @@ def rewritten(pieces: Iterable[bytes]) -> Iterator[bytes]:
             row, column = _cell(attributes.get("r"), row=row, after=column)
             address = cell_address(row, column)
             attributes = {"r": address} | {key: value for key, value in attributes.items() if key != "r"}
-        written = "".join(f' {key}="{value.translate(_ESCAPE)}"' for key, value in attributes.items())
+        written = "".join(f' {key}="{value.translate(_IN_ATTRIBUTE)}"' for key, value in attributes.items())
         out.append(f"<{name.replace('~', 'other-')}{written}>")
 
     def end(name: str) -> None:
@@ -197,7 +196,7 @@ def rewritten(pieces: Iterable[bytes]) -> Iterator[bytes]:
             out.append(f"</{name.replace('~', 'other-')}>")
 
     reader = XmlReader(
-        start=start, end=end, text=lambda found: out.append(found.translate(_ESCAPE)), keep_space=True
+        start=start, end=end, text=lambda found: out.append(found.translate(_IN_TEXT)), keep_space=True
     )
     for piece in pieces:
         reader.feed(piece)

@@ -320,7 +320,7 @@ def _merged(
     kept: list[tuple[int, int, int, int]] = []
     left = height * width
     passed_over = 0
-    for top, first, bottom, last in ranges:
+    for top, first, bottom, last in sorted(ranges):
         bottom, last = min(bottom, height - 1), min(last, width - 1)
         area = (bottom - top + 1) * (last - first + 1)
         if top > bottom or first > last or area == 1:

@@ -210,11 +210,13 @@ def look(pieces: Iterable[bytes], looks: Looks, *, dense: int, room: int) -> She
 def runs_of(rich: bytes) -> list[Run]:
     """Return the runs of a rich text, ``<r>`` by ``<r>``; nothing where it is all of one look."""
     runs: list[Run] = []
-    for run in rich.split(b"<r>")[1:]:
+    for following in rich.split(b"<r>")[1:]:
+        run = following.partition(b"</r>")[0]
         struck: bool | None = None
         shown = run
-        if run.lstrip().startswith(b"<rPr"):
-            properties, _, shown = run.partition(b"</rPr>")
+        # Properties of its own, even if there are none, take the place of the cell's.
+        if run.lstrip().startswith((b"<rPr>", b"<rPr/>", b"<rPr />")):
+            properties, _, shown = run.rpartition(b"</rPr>")
             strike = _STRIKE.search(properties)
             struck = strike is not None and strike[1] not in (b"0", b"false")
         text = _TEXT.search(shown)
@@ -327,8 +329,7 @@ class _Look:
             raise NotPlain
         filled = 0
         taken, shapes, uses = self._taken, self._shapes, self._uses
-        stops = [start.start() for start in starts[1:]]
-        stops.append(len(text))
+        stops = [*(start.start() for start in starts), len(text)][1:]
         for start, stop in zip(starts, stops, strict=True):
             digits = start[1]
             number = int(digits) if len(digits) < 8 else MAX_ROWS + 1
@@ -345,7 +346,7 @@ class _Look:
             filled += len(cells)
             # A5,B5,D5 and A6,B6,D6 have one shape: A,B,D. Few rows of a list have one of their own.
             key = (b",".join(cells) + b",").replace(digits + b",", b",")
-            shape = shapes.get(key) or self._shape(key, number)
+            shape = shapes.get(key) or self._shape(key, number, cells)
             uses[key] += 1
             self._numbers.append(number)
             self._highest.append(shape.highest)
@@ -353,11 +354,11 @@ class _Look:
         if filled != text.count(b"</c>"):
             raise NotPlain
 
-    def _shape(self, key: bytes, row: int) -> _Shape:
+    def _shape(self, key: bytes, row: int, cells: Sequence[bytes]) -> _Shape:
         columns = []
-        for letters in key.split(b",")[:-1]:
+        for letters, cell in zip(key.split(b","), cells, strict=False):
             if not letters.isalpha():
-                raise BrokenXml(f"has a cell of another row, {letters[:20].decode()}, in row {row}")
+                raise BrokenXml(f"has a cell of another row, {cell[:20].decode()}, in row {row}")
             column = column_number(letters.decode()) if len(letters) < 4 else MAX_COLUMNS
             if column >= MAX_COLUMNS:
                 raise BrokenXml(
