@@ -5,10 +5,10 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 from enum import StrEnum
-from types import MappingProxyType
 from typing import Any
 
 from instruments.origin import Cell
+from instruments.record import nothing
 
 
 class Severity(StrEnum):
@@ -57,7 +57,7 @@ class Fix:
     """
 
     text: str
-    change: Mapping[str, str] = field(default=MappingProxyType({}))
+    change: Mapping[str, str] = field(default_factory=nothing)
     subject: str = ""
     sheet: str = "Instruments"
     makes: tuple[str, ...] = ()
@@ -90,7 +90,7 @@ class Found:
         Cells beside those of `fields`.
     """
 
-    values: Mapping[str, Any] = field(default=MappingProxyType({}))
+    values: Mapping[str, Any] = field(default_factory=nothing)
     fields: tuple[str, ...] = ()
     part: str = ""
     found: str = ""
