@@ -1,0 +1,321 @@
+"""Files in, all the records of all their sheets out: the one entrance to reading a plant's lists."""
+
+from __future__ import annotations
+
+import os
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass
+from pathlib import PurePath
+from types import MappingProxyType
+from typing import Any
+
+from instruments.column import SheetKind
+from instruments.plant_data import PlantData
+from instruments.workbook.headings import SheetMatch, match_sheet
+from instruments.workbook.normalise import SheetRecords, read_records
+from instruments.workbook.number_format import as_text
+from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet, read_plant_toml
+from instruments.workbook.problem import CellProblem
+from instruments.workbook.reader import read_file
+from instruments.workbook.sheet import Sheet
+from instruments.workbook.words import folded
+
+__all__ = ["Lists", "NoTags", "SheetReport", "read_lists", "records_of_sheets"]
+
+
+class NoTags(Exception):
+    """No sheet of the files that were given holds tags; says what each was taken for."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class SheetReport:
+    """What became of one sheet.
+
+    Attributes
+    ----------
+    kind
+        The kind's name; None where the sheet was not understood.
+    skipped
+        Why it was left out; blank where it was read.
+    match
+        How its heading was understood.
+    rows, records
+        Rows that became records, and how many.
+    cells_filled, cells_read, cells_unread
+        What became of its cells; of a sheet that was left out they are filled only.
+    sections, notes
+        Section rows; title lines, notes and legends: row counted from 1, and text.
+    """
+
+    file: str
+    sheet: str
+    kind: str | None = None
+    skipped: str = ""
+    match: SheetMatch | None = None
+    rows: int = 0
+    records: int = 0
+    cells_filled: int = 0
+    cells_read: int = 0
+    cells_unread: int = 0
+    merged: int = 0
+    sections: tuple[tuple[int, str], ...] = ()
+    notes: tuple[tuple[int, str], ...] = ()
+    remarks: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Lists:
+    """Everything that a plant's lists say.
+
+    Attributes
+    ----------
+    records
+        Records by the name of their kind of sheet.
+    problems
+        The cells that could not be read.
+    sheets
+        What became of each sheet.
+    plant
+        The plant's data, with what was assumed.
+    assumptions
+        What was taken for granted while reading.
+    files
+        The files, as given.
+    index_file
+        The file that holds the index (the first, if several do).
+    index_columns
+        The fields that columns of the index fill.
+    """
+
+    records: Mapping[str, tuple[Any, ...]]
+    problems: tuple[CellProblem, ...]
+    sheets: tuple[SheetReport, ...]
+    plant: PlantData
+    assumptions: tuple[str, ...] = ()
+    files: tuple[str, ...] = ()
+    index_file: str = ""
+    index_columns: frozenset[str] = frozenset()
+
+
+_LEFT_OUT = ("cover", "revision", "rev history", "history", "legend", "note", "notes", "readme", "contents", "index of", "abbreviation",
+             "title", "deckblatt", "legende", "aenderung", "lookup", "dropdown", "lists", "validation")
+
+
+def read_lists(
+    paths: Sequence[str | os.PathLike[str]],
+    kinds: Sequence[SheetKind],
+    *,
+    plant_toml: str | os.PathLike[str] | None = None,
+    on_progress: Callable[[str], None] | None = None,
+) -> Lists:
+    """Read a plant's lists.
+
+    Parameters
+    ----------
+    paths
+        Workbooks and delimited texts, in any mixture; all of them are one plant.
+    kinds
+        The kinds of sheet that are known.
+    plant_toml
+        A file with the plant's data; what it states goes before a Plant sheet.
+    on_progress
+        Called with a line for each file and sheet.
+
+    Raises
+    ------
+    UnreadableFile
+        A file cannot be read; says where and why.
+    NoTags
+        No sheet holds tags.
+    """
+    tell = on_progress or (lambda line: None)
+    entries = list(read_plant_toml(plant_toml)) if plant_toml is not None else []
+    sheets: list[Sheet] = []
+    for path in paths:
+        tell(f"reading {os.fspath(path)}")
+        sheets.extend(read_file(path))
+    return records_of_sheets(
+        sheets, kinds, stated=entries, files=tuple(os.fspath(path) for path in paths), on_progress=tell
+    )
+
+
+def records_of_sheets(
+    sheets: Sequence[Sheet],
+    kinds: Sequence[SheetKind],
+    *,
+    stated: Sequence[PlantEntry] = (),
+    files: Sequence[str] = (),
+    on_progress: Callable[[str], None] | None = None,
+) -> Lists:
+    """Understand sheets that are read: their kinds first, then the plant's data, then their rows.
+
+    Parameters
+    ----------
+    sheets
+        The sheets of all files.
+    kinds
+        The kinds of sheet that are known.
+    stated
+        What a plant.toml says.
+    files
+        The files' names, for the report.
+    on_progress
+        Called with a line for each sheet.
+
+    Raises
+    ------
+    NoTags
+        No sheet holds tags.
+    """
+    tell = on_progress or (lambda line: None)
+    matches = _match(sheets, kinds)
+    if not any(match is not None and match.kind.key == (("tag",),) for match in matches):
+        raise NoTags(_no_tags(sheets, matches))
+    entries: list[PlantEntry] = []
+    for sheet, match in zip(sheets, matches, strict=True):
+        if match is not None and _is_plant(match.kind):
+            entries.extend(read_plant_sheet(sheet, match))
+    plant, row, plant_problems = plant_data([*entries, *stated])
+    records: dict[str, list[Any]] = {}
+    problems: list[CellProblem] = list(plant_problems)
+    assumptions: dict[str, None] = dict.fromkeys(plant.assumptions)
+    reports: list[SheetReport] = []
+    columns: set[str] = set()
+    index_file = ""
+    for sheet, match in zip(sheets, matches, strict=True):
+        if match is None:
+            reports.append(_left_out(sheet))
+            continue
+        if _is_plant(match.kind):
+            reports.append(_plant_report(sheet, match, plant_problems))
+            continue
+        tell(f"understanding {sheet.file}, sheet {sheet.name}: {match.kind.name}")
+        found = read_records(sheet, match, plant=plant)
+        records.setdefault(match.kind.name, []).extend(found.records)
+        problems.extend(found.problems)
+        for each in found.assumptions:
+            assumptions.setdefault(each if len(sheets) == 1 else f"{match.kind.name}: {each}")
+        for note in match.notes:
+            assumptions.setdefault(f"{sheet.name}: {note}")
+        reports.append(_report(sheet, match, found))
+        if match.kind.key == (("tag",),):
+            index_file = index_file or sheet.file
+            columns |= match.fields | set(match.columns)
+    if row is not None:
+        records["Plant"] = [row]
+    return Lists(
+        records=MappingProxyType({name: tuple(each) for name, each in records.items()}),
+        problems=tuple(problems),
+        sheets=tuple(reports),
+        plant=plant,
+        assumptions=tuple(assumptions),
+        files=tuple(files) or tuple(dict.fromkeys(sheet.file for sheet in sheets)),
+        index_file=PurePath(index_file).name,
+        index_columns=frozenset(columns),
+    )
+
+
+def _is_plant(kind: SheetKind) -> bool:
+    return "thresholds" in getattr(kind.record, "__dataclass_fields__", {})
+
+
+def _match(sheets: Sequence[Sheet], kinds: Sequence[SheetKind]) -> list[SheetMatch | None]:
+    """Match all sheets: those that list codes first, so that a column of such codes is known for one."""
+    found: list[SheetMatch | None] = [match_sheet(sheet, kinds) for sheet in sheets]
+    codes: set[str] = set()
+    for sheet, match in zip(sheets, found, strict=True):
+        if match is not None and match.kind.key != (("tag",),) and "code" in match.columns:
+            index = match.columns["code"].index
+            codes.update(
+                folded(as_text(row[index])) for row in sheet.rows[match.first_row :] if row[index] is not None
+            )
+    if codes:
+        known = frozenset(codes)
+        for number, (sheet, match) in enumerate(zip(sheets, found, strict=True)):
+            if match is not None and match.kind.key == (("tag",),):
+                found[number] = match_sheet(sheet, kinds, codes=known)
+    index_kinds = [kind for kind in kinds if kind.key == (("tag",),)]
+    if index_kinds and not any(match is not None and match.kind is index_kinds[0] for match in found):
+        # The only list with tags is the index, whatever it is called: the I/O list first, then an alarm list.
+        others = [
+            (number, match)
+            for number, match in enumerate(found)
+            if match is not None and match.kind.record is index_kinds[0].record
+        ]
+        others.sort(key=lambda each: [kind.name for kind in kinds].index(each[1].kind.name))
+        chosen = others[0][1].kind if others else None
+        for number, match in others:
+            if match.kind is chosen:
+                again = match_sheet(sheets[number], kinds, forced=index_kinds[0], codes=frozenset(codes))
+                if again is not None:
+                    found[number] = again
+    return found
+
+
+def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None]) -> str:
+    if not sheets:
+        return "no sheet was found in the files"
+    said = "; ".join(
+        f"{PurePath(sheet.file).name}, sheet '{sheet.name}': "
+        + (f"taken for {match.kind.name}" if match else "no heading found" if any(any(c is not None for c in r) for r in sheet.rows) else "empty")
+        for sheet, match in list(zip(sheets, matches, strict=True))[:12]
+    )
+    return (
+        f"no list with tags was found: a sheet needs a heading such as 'Tag' or 'Tag No.' over its tags ({said})"
+    )
+
+
+def _left_out(sheet: Sheet) -> SheetReport:
+    name = folded(sheet.name)
+    if not any(any(cell is not None for cell in row) for row in sheet.rows):
+        why = "empty"
+    elif any(word in name for word in _LEFT_OUT):
+        why = f"a sheet named {sheet.name} holds no list"
+    else:
+        why = "no heading of a known list was found"
+    return SheetReport(
+        file=sheet.file, sheet=sheet.name, skipped=why, cells_filled=sheet.cells_filled, remarks=sheet.notes
+    )
+
+
+def _plant_report(sheet: Sheet, match: SheetMatch, problems: Sequence[CellProblem]) -> SheetReport:
+    cells = {each.cell for each in problems if (each.cell.file, each.cell.sheet) == (sheet.file, sheet.name)}
+    return SheetReport(
+        file=sheet.file,
+        sheet=sheet.name,
+        kind=match.kind.name,
+        match=match,
+        rows=1,
+        records=1,
+        cells_filled=sheet.cells_filled,
+        cells_read=sheet.cells_filled - len(cells),
+        cells_unread=len(cells),
+        remarks=sheet.notes,
+    )
+
+
+def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport:
+    remarks = list(sheet.notes)
+    if not sheet.visible:
+        remarks.append("hidden in the workbook; read like the others")
+    if sheet.hidden_rows or sheet.hidden_columns:
+        remarks.append(
+            f"{len(sheet.hidden_rows)} hidden rows and {len(sheet.hidden_columns)} hidden columns, read like the others"
+        )
+    if found.merged:
+        remarks.append(f"{found.merged} cells filled from merged cells")
+    return SheetReport(
+        file=sheet.file,
+        sheet=sheet.name,
+        kind=match.kind.name,
+        match=match,
+        rows=found.rows,
+        records=len(found.records),
+        cells_filled=found.cells_filled,
+        cells_read=found.cells_read,
+        cells_unread=found.cells_unread,
+        merged=found.merged,
+        sections=found.sections,
+        notes=found.notes,
+        remarks=tuple(remarks),
+    )
