@@ -227,23 +227,22 @@ def permitted_dust_surface_c(area: Area) -> PermittedSurface:
             reason=f"a layer of {area.layer_mm:g} mm needs the layer's own curve or a test; the rule is for "
             f"{LAYER_TESTED_MM:g} mm",
         )
-    missing = tuple(
-        name for name, value in (("cloud_ignition_c", cloud), ("layer_ignition_c", layer)) if value is None
-    )
-    if missing:
+    if cloud is not None and layer is not None and follows is not None:
+        assumed = f"a dust layer of no more than {LAYER_TESTED_MM:g} mm"
         return PermittedSurface(
-            upper_bound_c=follows,
-            working=parts[0][1] if parts else "",
-            reason="no permitted surface temperature, nor all that it follows from",
-            missing=("dust_surface_c",) if len(missing) == 2 else missing,
+            limit_c=follows,
+            working=f"min({', '.join(text for _, text in parts)}) = {follows:.4g} degC",
+            assumptions=() if area.layer_mm is not None else (assumed,),
         )
-    assert follows is not None  # noqa: S101 - both parts are there
+    if not parts:
+        missing = "dust_surface_c"
+    else:
+        missing = "layer_ignition_c" if layer is None else "cloud_ignition_c"
     return PermittedSurface(
-        limit_c=follows,
-        working=f"min({', '.join(text for _, text in parts)}) = {follows:.4g} degC",
-        assumptions=()
-        if area.layer_mm is not None
-        else (f"a dust layer of no more than {LAYER_TESTED_MM:g} mm",),
+        upper_bound_c=follows,
+        working=parts[0][1] if parts else "",
+        reason="no permitted surface temperature, nor all that it follows from",
+        missing=(missing,),
     )
 
 

@@ -658,7 +658,7 @@ def test_a_line_break_is_a_blank_and_a_separator_at_once() -> None:
         ("ABC 20 ATEX 0001 x, Rev. 2", "ABC 20 ATEX 0001", "X", True),
         ("4711-0815X", "4711-0815", "X", False),
         ("E123456", "E123456", "", False),
-        ("QPS 17US0003X issue 2", "QPS 17US0003", "X", False),
+        ("ABC 17US0003X issue 2", "ABC 17US0003", "X", False),
         ("ABC 20 ATEX 01", "ABC 20 ATEX 01", "", False),
         ("file 123 U", "file 123", "U", False),
         ("17.0003X (note 4)", "17.0003X (note 4)", "X", False),
