@@ -95,11 +95,11 @@ class _Text:
             return "utf-8-sig", "strict"
         # A text with a few damaged bytes must not have every degree sign read as two other characters.
         if beyond_ascii > 2 * damaged:
-            self.notes.append(f"{damaged} characters are damaged and stand as \ufffd")
+            self.notes.append(f"damaged characters, shown as \ufffd: {damaged}")
             return "utf-8-sig", "replace"
         self.notes.append("not in UTF-8: read as Windows-1252")
         if unknown := sum(piece.count("\ufffd") for piece in _decoded(data, "cp1252", "replace")):
-            self.notes.append(f"{unknown} characters are unknown there and stand as \ufffd")
+            self.notes.append(f"characters that Windows-1252 has not, shown as \ufffd: {unknown}")
         return "cp1252", "replace"
 
 

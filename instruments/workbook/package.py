@@ -528,7 +528,7 @@ def _beside(package: Package, seen: SeenSheet) -> None:
             seen.notes.append(f"drawing not read: {error.place} {error.reason}")
     if seen.look.elsewhere:
         seen.notes.append(
-            f"{seen.look.elsewhere} formulas refer to another workbook: their saved values were read"
+            f"formulas that refer to another workbook, read by their saved values: {seen.look.elsewhere}"
         )
 
 

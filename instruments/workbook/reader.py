@@ -282,12 +282,12 @@ def _joined(
     if far:
         shown = ", ".join(cell_address(*position) for position in sorted(far)[:5])
         notes.append(
-            f"{len(far)} filled cells stand far from the list and were left out of it: {shown}"
+            f"filled cells far from the list, left out of it: {len(far)}, at {shown}"
             + (" ..." if len(far) > 5 else "")
         )
     merged, overlapping = _merged(look.merged, height, width)
     if overlapping:
-        notes.append(f"{overlapping} merged ranges overlap others and were passed over")
+        notes.append(f"merged ranges that overlap others, passed over: {overlapping}")
     return Sheet(
         file=file,
         name=seen.entry.name,

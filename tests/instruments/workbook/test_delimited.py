@@ -50,7 +50,7 @@ SEMICOLONS = "columns taken to be separated by semicolons"
             [*ROWS, ["\ufffd", "\ufffd"]],
             (
                 "not in UTF-8: read as Windows-1252",
-                "2 characters are unknown there and stand as \ufffd",
+                "characters that Windows-1252 has not, shown as \ufffd: 2",
                 SEMICOLONS,
             ),
         ),
@@ -58,7 +58,7 @@ SEMICOLONS = "columns taken to be separated by semicolons"
         (
             TEXT.encode() * 2 + b"TT-\xff;1\n",
             [*ROWS, *ROWS, ["TT-\ufffd", "1"]],
-            ("1 characters are damaged and stand as \ufffd", SEMICOLONS),
+            ("damaged characters, shown as \ufffd: 1", SEMICOLONS),
         ),
     ],
 )

@@ -5,6 +5,7 @@ import datetime
 import io
 import math
 import os
+import pickle
 import random
 import re
 import subprocess
@@ -312,7 +313,7 @@ def test_values_from_another_workbook_are_read_and_said(tmp_path: Path) -> None:
     sheet = one(tmp_path, worksheet('<row r="1"><c r="A1"><f>[1]Data!B2*2</f><v>5</v></c></row>'))
     assert (sheet.rows, sheet.notes) == (
         [[5.0]],
-        ("1 formulas refer to another workbook: their saved values were read",),
+        ("formulas that refer to another workbook, read by their saved values: 1",),
     )
 
 
@@ -436,10 +437,7 @@ def test_cells_far_from_the_list_are_told_of_and_left_out(tmp_path: Path) -> Non
         },
         merged=((1, 0, 2, 1),),
         cells_filled=10,
-        notes=(
-            "4 filled cells stand far from the list and were left out of it: XFD2, C900000,"
-            " D900000, XFD1048576",
-        ),
+        notes=("filled cells far from the list, left out of it: 4, at XFD2, C900000, D900000, XFD1048576",),
     )
 
 
@@ -486,7 +484,7 @@ def test_merged_ranges_that_overlap_are_passed_over(tmp_path: Path) -> None:
     )
     assert (sheet.merged, sheet.notes) == (
         ((0, 0, 8, 8),),
-        ("999 merged ranges overlap others and were passed over",),
+        ("merged ranges that overlap others, passed over: 999",),
     )
 
 
@@ -843,6 +841,13 @@ def test_a_large_sheet_takes_little_memory(tmp_path: Path) -> None:
     height, kilobytes = map(int, done.stdout.split())
     assert height == 20_000
     assert kilobytes < 60_000
+
+
+def test_sheets_and_errors_pass_from_process_to_process(tmp_path: Path) -> None:
+    sheets = read_file(saved(tmp_path, zipped(parts(SPELT, shared=texts("<t>a</t>", "<t>b</t>")))))
+    assert pickle.loads(pickle.dumps(sheets)) == sheets  # noqa: S301 - made here
+    error = pickle.loads(pickle.dumps(UnreadableFile("a.xlsx", "sheet 'B'", "is broken")))  # noqa: S301 - made here
+    assert (str(error), error.place) == ("a.xlsx, sheet 'B': is broken.", "sheet 'B'")
 
 
 # Addresses
