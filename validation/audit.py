@@ -145,7 +145,9 @@ def reaudit(installed: Installed, plant: Plant, *, rules: Registry | None = None
     result = Audit(plant=plant)
     circuits = plant.circuits_of(installed)
     for each in registry:
-        if each.whole is not None and plant.whole_finding(each.code, each.whole):
+        if each.whole is not None and any(
+            found.stops_rows for found in _each(plant.whole_finding(each.code, each.whole))
+        ):
             continue
         subjects: Sequence[Any] = ()
         if each.on is Subject.INSTRUMENT:
@@ -175,9 +177,11 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
             verdict = None
         if verdict:
             _take(verdict, rule, plant, coverage, result)
-            blocked = tuple(
-                dict.fromkeys(title_of(name) for each in _each(verdict) for name in each.fields)
-            ) or ("column",)
+            stopping = [each for each in _each(verdict) if each.stops_rows]
+            if stopping:
+                blocked = tuple(
+                    dict.fromkeys(title_of(name) for each in stopping for name in each.fields)
+                ) or ("column",)
     if rule.on is Subject.WHOLE:
         _guard(
             lambda: _take(rule.check(plant), rule, plant, coverage, result),

@@ -88,6 +88,8 @@ class Found:
         The subject's name, where it is not the object the rule was given.
     cells
         Cells beside those of `fields`.
+    stops_rows
+        For what is wrong with a whole column: whether the rows cannot be checked because of it.
     """
 
     values: Mapping[str, Any] = field(default_factory=nothing)
@@ -102,6 +104,7 @@ class Found:
     message: str = ""
     subject: str = ""
     cells: tuple[Cell, ...] = ()
+    stops_rows: bool = True
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
