@@ -143,7 +143,12 @@ def _magnitude(written: str, decimal: str | None) -> float | CellTrouble:
         value = found[0] if decimal in digits else found[1]
     else:
         value = found[0]
-    return value * float(f"1e{exponent}") if exponent else value
+    if not exponent:
+        return value
+    scaled = value * float(f"1e{exponent}")
+    return (
+        scaled if scaled or not value else math.inf
+    )  # a number too small to hold is refused like one too large
 
 
 def read_number(cell: object, *, decimal: str | None = ".") -> Number | CellTrouble:

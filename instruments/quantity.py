@@ -70,8 +70,8 @@ class Quantity:
         at 0 degC and 101.325 kPa. None without a unit, and where no factor leads there (a head of
         process liquid).
     qualifier
-        ``<``, ``>``, ``~``, ``min``, ``norm``, ``max`` or ``full vacuum`` (``3.5 barg / FV``), if
-        one was written.
+        ``<``, ``>``, ``~``, ``min``, ``norm``, ``max``, ``rising``, ``falling`` or ``full vacuum``
+        (``3.5 barg / FV``), if one was written.
     """
 
     text: str = field(compare=False)
@@ -113,11 +113,12 @@ class Quantity:
         return Quantity.made(self.to(unit), unit)
 
     def same_as(self, other: Quantity) -> bool:
-        """Whether both mean the same value, whatever unit each is written in (1e-9 relative)."""
+        """Whether both mean the same value, whatever unit each is written in (1e-9 relative).
+
+        A reference that one of them leaves unstated makes no difference.
+        """
         if self.unit is None or other.unit is None:
             return self.unit is other.unit and math.isclose(self.number, other.number, rel_tol=1e-9)
-        if self.reference != other.reference and {self.reference, other.reference} != {"gauge", "vacuum"}:
-            return False
         try:
             number = other.to(self.unit)
         except UnitMismatch:
@@ -189,6 +190,18 @@ _NOTE = re.compile(
     r"\*{1,3})$",
     re.IGNORECASE,
 )
+_ADDED = re.compile(
+    r"[ ,]*[(\[]?(?:√|sqrt|sq\.? ?root|sq\.? ?rt|square root|linear|lin|adjustable|adj|factory set|set|"
+    r"calibrated|cal)"
+    r"\.?[)\]]?$",
+    re.IGNORECASE,
+)
+_DIRECTION = re.compile(
+    r"[ ,]*[(\[]?(?:(?P<rising>↑|rising|rise|increasing|incr?|steigend)|"
+    r"(?P<falling>↓|falling|fall|decreasing|decr?|fallend))"
+    r"\.?[)\]]?$",
+    re.IGNORECASE,
+)
 _CONNECTION = re.compile(
     r"(?:[0-9]{1,2}[ -])?[0-9]{1,2} ?/ ?[0-9]{1,2} ?(?:\"|''|in\b|inch|npt|bsp|nb\b)|(?:dn|nps) ?[0-9]",
     re.IGNORECASE,
@@ -200,7 +213,7 @@ _ATMOSPHERIC = frozenset(
 )
 _AMBIENT = frozenset({"amb", "ambient", "ambienttemp", "ambienttemperature", "ambtemp", "umgebung"})
 _AND_VACUUM = re.compile(
-    r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?(?:/|&|\+|,|and|to|-) ?(?=[0-9]))"
+    r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?(?:/|&|\+|,|and|to|-(?= )) ?(?=[0-9]))"
     r"|(?: ?(?:/|&|\+|,|and) ?(?:f\.?v\.?|full vac(?:uum)?)$)",
     re.IGNORECASE,
 )
@@ -271,7 +284,10 @@ _UNITS_IN_FRONT: Final = ("other", "ratio")  # pH 7, SG 0.85, % 50
 
 def _single(text: str, unit: Unit | None, decimal: str | None) -> Quantity | CellTrouble:
     """Read one number with or without a unit behind it (in front of it for pH and SG)."""
-    text, qualifier = split_qualifier(text)
+    text, qualifier = split_qualifier(_ADDED.sub("", text))
+    direction = _DIRECTION.search(text)
+    if direction:
+        text, qualifier = text[: direction.start()], direction.lastgroup
     found = _SIGNED.match(text)
     if not found:
         start = next((at for at, sign in enumerate(text) if sign in "0123456789"), 0)
@@ -559,7 +575,7 @@ def _read_range(cell: str, unit: Unit | None, decimal: str | None) -> Range | Ce
         return CellTrouble(reason="the cell is empty")
     if len(text) > LONGEST_CELL:
         return CellTrouble(reason="the text is too long for a range")
-    text = " ".join(_NOTE.sub("", text).split())
+    text = _ADDED.sub("", " ".join(_NOTE.sub("", text).split()))
     if _CONNECTION.match(text):
         return CellTrouble(reason=f"'{text}' is a pipe size")
     if _CURRENT_SIGNAL.match(text):

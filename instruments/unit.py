@@ -72,7 +72,7 @@ _AFTER = str.maketrans(
 # UTF-8 that was read as Windows-1252: Â stands before the sign that was meant.
 _MOJIBAKE = re.compile("Â(?=[°²³µº·])")
 _PER = re.compile(r"(?<![a-z])per(?!\s*cent)(?![a-z])", re.IGNORECASE)
-_INVERSE = re.compile(r"(?:^|[ .*])([A-Za-z]{1,4})\^?-\^?([123])$")
+_INVERSE = re.compile(r"(?:^|[ .*])([A-Za-z]{1,4})\^?-\^?([123])(?=$|[ (\[])")
 _DROPPED = str.maketrans(dict.fromkeys(" \t\n\r\f\v.()[]{}_,^*'-;"))
 
 
@@ -89,7 +89,7 @@ def _cleaned(text: str) -> str:
     inverse = _INVERSE.search(text)
     if inverse:
         power = "" if inverse[2] == "1" else inverse[2]
-        text = f"{text[: inverse.start()] or '1'}/{inverse[1]}{power}"
+        text = f"{text[: inverse.start()] or '1'}/{inverse[1]}{power}{text[inverse.end() :]}"
     return text
 
 
@@ -578,8 +578,8 @@ def _by_case(compact: str, key: str) -> tuple[bool, str | None]:
         return True, _SMALL_O[compact]
     if compact in ("mw", "mW", "pA", "AT", "At"):
         return True, None  # milliwatt, picoampere: not in the table, and neither MW nor Pa
-    if key == "mbd":
-        return True, None  # thousand barrels a day, or mbar differential
+    if key == "mbd" or compact == "vac":
+        return True, None  # thousand barrels a day, or mbar differential; vacuum, or volts AC
     if compact.startswith("mP") and key.startswith("mpa") and not key.startswith("mpas"):
         return True, None  # a millipascal as it is written, a megapascal as it is meant
     canonical = _BY_CASE.get(compact[:3])

@@ -282,7 +282,7 @@ def _size(canonical: str) -> float | None:
         return None
     registry = _registry()
     size = entry.times * registry.Quantity(1.0, entry.size).to(_PINT_BASE[entry.kind]).magnitude
-    return float(f"{size:.14g}")  # the last digits are the noise of a chain of multiplications
+    return float(f"{size:.15g}")  # the last digits are the noise of a chain of multiplications
 
 
 @cache
