@@ -610,7 +610,7 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
     return tuple(kept)
 
 
-def _with_loops(found: list[Installed], codes: Mapping[str, PlantCode], data: PlantData) -> list[Installed]:
+def _with_loops(found: list[Installed], data: PlantData) -> list[Installed]:
     """Give each instrument its loop: the column's, else the one its tag gives."""
     valves: dict[tuple[str, str], str] = {}
     derived: list[str | None] = []

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from instruments.workbook.lists import Lists, read_sheets
+from instruments.workbook.lists import Lists, records_of_sheets
 
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.workbook.sheet import Sheet
@@ -38,7 +38,7 @@ def example_lists(instruments: Rows, **sheets: Rows | Mapping[str, Any]) -> List
         if isinstance(rows, Mapping):
             rows = [{"name": "Example", **rows}]
         tables.append(_sheet(name, rows))
-    return read_sheets(tables, KINDS)
+    return records_of_sheets(tables, KINDS)
 
 
 def example_plant(instruments: Rows, **sheets: Rows | Mapping[str, Any]) -> Plant:

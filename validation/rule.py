@@ -133,7 +133,8 @@ def rule(
     nothing, the values that disagree (`Found`, one or several), a `Review`, `Unchecked`,
     `NotApplicable` or `Clear` with assumptions. `needs` are field names: plain for the
     instrument's row, ``type.`` for the limits that hold for it, ``area.`` for its area, ``row.``
-    for a circuit's row of the loop list; alternatives are joined by ``|``.
+    for a circuit's row of the loop list, ``record.`` for a column where its plain name means more than the column
+    (``loop`` is also derived from the tag); alternatives are joined by ``|``.
     """
 
     def register(check: Callable[..., Verdict]) -> Callable[..., Verdict]:
@@ -221,7 +222,9 @@ def _getter(name: str, on: Subject) -> Callable[[Any], Any]:
     elif on in (Subject.INSTRUMENT, Subject.GROUP):
         if owner == "" and field in _INSTALLED_FIELDS:
             return attrgetter(field)
-        base = {"": "record", "type": "type", "area": "area"}[owner]
+        base = {"": "record", "record": "record", "type": "type", "area": "area"}[owner]
+        if owner == "record":
+            return attrgetter(name)
     else:
         return attrgetter(field)
     if owner == "":

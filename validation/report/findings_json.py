@@ -7,7 +7,6 @@ from collections.abc import Mapping
 from typing import Any
 
 from instruments.quantity import Quantity
-
 from instruments.tag import natural_key
 from validation.audit import Audit
 from validation.finding import Finding, Outcome
@@ -22,7 +21,7 @@ def counts(audit: Audit) -> dict[str, int]:
         "tags": sum(1 for each in plant.instruments if each.record.tag),
         "instruments": len(plant.instruments),
         "live": len(plant.live),
-        "rows": sum(sheet.rows_read for sheet in lists.sheets),
+        "rows": sum(sheet.rows for sheet in lists.sheets),
         "rows_merged": sum(each.merged_rows - 1 for each in plant.instruments),
         "loops": len(plant.loops),
         "circuits": len(plant.circuits),

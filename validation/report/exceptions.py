@@ -1,0 +1,597 @@
+"""exceptions.xlsx: the exception list that a person works through with a pencil, sheet by sheet."""
+
+from __future__ import annotations
+
+import doctest
+import re
+from collections import Counter
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from pathlib import Path
+from typing import Any, Final
+
+from instruments.column import SheetKind
+from instruments.columns import INSTRUMENTS
+from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.origin import Cell, column_letters
+from instruments.workbook.lists import SheetReport
+from instruments.workbook.problem import CellProblem
+from loops.columns import SHEETS as LOOP_SHEETS
+from validation.audit import Audit, Coverage
+from validation.finding import Finding, Fix, Outcome, Severity
+from validation.report.book import Book, Column, Look, Page, Shown, Table
+from validation.report.causes import Cause, causes_of, some_of
+from validation.report.caution import CAUTION
+from validation.report.findings_json import counts
+from validation.rule import Registry, Rule, load_rules
+
+__all__ = ["write_exceptions"]
+
+FAMILIES: Final[Mapping[str, str]] = {
+    "TAG": "identification",
+    "DAT": "completeness",
+    "RNG": "ranging",
+    "PRO": "process limits",
+    "ELC": "circuit electrical",
+    "HAZ": "hazardous area",
+    "ISC": "intrinsic safety of the circuit",
+    "WIR": "wiring and I/O",
+    "SET": "alarms and trips",
+    "CTL": "control and safety functions",
+    "DOC": "documents",
+    "COM": "commissioning",
+    "XCH": "cross-checks of lists",
+}
+
+_LOOKS: Final = {Severity.DANGER: Look.DANGER, Severity.FAULT: Look.FAULT, Severity.GAP: Look.GAP}
+_MEANING: Final = {
+    Severity.DANGER: "someone can get hurt, or a protection fails",
+    Severity.FAULT: "it will not measure, drive or fit as built",
+    Severity.GAP: "the record is wrong or incomplete",
+}
+_COMMONEST: Final = 10
+_MOST_LINES: Final = 200
+
+
+def write_exceptions(result: Audit, path: Path, *, rules: Registry | None = None) -> None:
+    """Write the exception list of an audit; the same bytes for the same audit.
+
+    Parameters
+    ----------
+    result
+        What the rules said.
+    path
+        The workbook to write.
+    rules
+        The registry that the audit used; default: every rule of the package.
+
+    Raises
+    ------
+    OSError
+        The file cannot be written.
+    """
+    registry = rules if rules is not None else load_rules()
+    report = _Report(result, registry)
+    book = Book(title=report.title, source=report.source, footer=CAUTION.partition(". ")[0])
+    book.add_page(report.summary())
+    book.add_table(report.causes())
+    book.add_table(report.findings("Findings", Outcome.FINDING, "no findings"))
+    book.add_table(report.findings("Reviews", Outcome.REVIEW, "nothing to review"))
+    book.add_table(report.coverage())
+    book.add_table(report.unread())
+    book.add_table(report.columns())
+    book.add_table(report.rules())
+    book.save(path)
+
+
+class _Report:
+    """What each sheet says."""
+
+    def __init__(self, result: Audit, registry: Registry) -> None:
+        self.result = result
+        self.plant = result.plant
+        self.lists = result.plant.lists
+        self.registry = registry
+        self.causes_found = causes_of(result.findings)
+        name = self.plant.data.name
+        self.title = f"Exception list - {name}" if name else "Exception list"
+        self.source = ", ".join(self.lists.files)
+
+    # --- Summary --------------------------------------------------------------------------------------------
+
+    def summary(self) -> Page:
+        page = Page(name="Summary", widths=(12.0,) * 12)
+        page.title(self.title)
+        page.paragraph(CAUTION, look=Look.SMALL)
+        self._what_was_read(page)
+        self._figures(page)
+        self._broken(page)
+        self._commonest(page)
+        self._assumed(page)
+        self._absent(page)
+        self._skipped(page)
+        return page
+
+    def _what_was_read(self, page: Page) -> None:
+        page.section("What was read")
+        page.table(
+            ("file", "sheet", "read as", "rows", "cells filled", "read", "unread"),
+            [
+                (
+                    sheet.file,
+                    sheet.sheet,
+                    f"not read: {sheet.skipped}" if sheet.skipped else sheet.kind,
+                    sheet.rows_read,
+                    sheet.cells_filled,
+                    sheet.cells_read,
+                    sheet.cells_unread,
+                )
+                for sheet in self.lists.sheets
+            ],
+            spans=(3, 2, 3, 1, 1, 1, 1),
+        )
+        figures = counts(self.result)
+        page.paragraph(
+            f"{_count(figures['tags'], 'tag')} on {_count(figures['instruments'], 'instrument')}, "
+            f"{figures['live']:,} of them live; {_count(figures['loops'], 'loop')}, "
+            f"{_count(figures['circuits'], 'circuit')}, from {_count(figures['rows'], 'row')} of "
+            f"{_count(figures['sheets'], 'sheet')} in {_count(figures['files'], 'file')}. "
+            f"{_count(figures['cells_read'], 'cell')} read, {figures['cells_unread']:,} unread."
+        )
+
+    def _figures(self, page: Page) -> None:
+        page.section("Findings by severity and family")
+        found: Counter[tuple[str, str]] = Counter()
+        for finding in self.result.findings:
+            what = "review" if finding.outcome is Outcome.REVIEW else finding.severity.value
+            found[_family(finding.rule), what] += 1
+        for code, coverage in self.result.coverage.items():
+            found[_family(code), "unchecked"] += coverage.count(Outcome.UNCHECKED)
+        families = list(dict.fromkeys([*FAMILIES, *sorted({family for family, _ in found})]))
+        checked = {_family(code) for code in self.result.coverage} | {family for family, _ in found}
+        kinds = [*(severity.value for severity in Severity), "all", "review", "unchecked"]
+        for family in families:
+            found[family, "all"] = sum(found[family, severity.value] for severity in Severity)
+        rows: list[Sequence[Shown]] = [
+            (f"{family} {FAMILIES.get(family, '')}".strip(), *(found[family, kind] for kind in kinds))
+            for family in families
+            if family in checked
+        ]
+        totals = [sum(found[family, kind] for family in families) for kind in kinds]
+        rows.append((("all", Look.TOTAL), *((total, Look.TOTAL) for total in totals)))
+        page.table(
+            ("family", *(severity.value for severity in Severity), "findings", "to review", "unchecked"),
+            rows,
+            spans=(4, 1, 1, 1, 1, 2, 2),
+        )
+        page.paragraph(
+            "; ".join(f"{severity.value}: {meaning}" for severity, meaning in _MEANING.items())
+            + "; to review: the data is there, a competent person must decide; unchecked: a value that the rule "
+            "needs is blank or could not be read, and the sheet Coverage says which.",
+            look=Look.SMALL,
+        )
+
+    def _broken(self, page: Page) -> None:
+        if not self.result.broken:
+            return
+        page.section("Rules that broke: what they would have said is missing")
+        page.table(
+            ("code", "subject", "what it raised"),
+            [(each.rule, each.subject, each.error) for each in self.result.broken[:_MOST_LINES]],
+            spans=(1, 3, 8),
+        )
+        _and_more(page, len(self.result.broken))
+
+    def _commonest(self, page: Page) -> None:
+        page.section("The ten most common causes")
+        commonest = [cause for cause in self.causes_found if cause.outcome is Outcome.FINDING][:_COMMONEST]
+        if not commonest:
+            page.paragraph("No findings.")
+            return
+        page.table(
+            ("findings", "severity", "code", "cause", "subjects"),
+            [
+                (cause.count, _severity(cause), cause.rule, cause.text, some_of(cause.subjects, most=5))
+                for cause in commonest
+            ],
+            spans=(1, 1, 1, 6, 3),
+        )
+        page.paragraph(
+            "All causes stand on the sheet Causes, each finding on the sheet Findings.", look=Look.SMALL
+        )
+
+    def _assumed(self, page: Page) -> None:
+        page.section("What was assumed")
+        rests: Counter[str] = Counter()
+        for coverage in self.result.coverage.values():
+            rests.update(coverage.assumed)
+        assumptions = self.result.assumptions
+        if not assumptions:
+            page.paragraph("Nothing.")
+            return
+        page.table(
+            ("assumption", "checks that rest on it"),
+            [(text, rests[text] or None) for text in assumptions[:_MOST_LINES]],
+            spans=(10, 2),
+        )
+        _and_more(page, len(assumptions))
+
+    def _absent(self, page: Page) -> None:
+        page.section("Sheets that were absent, and what they would let be checked")
+        there = {sheet.kind for sheet in self.lists.sheets if not sheet.skipped}
+        rows = [
+            (kind.name, *self._for_want_of(kind))
+            for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
+            if kind.name not in there
+        ]
+        if not rows:
+            page.paragraph("None.")
+            return
+        page.table(
+            ("sheet", "unchecked for want of", "rules, with the checks each could not make"),
+            rows,
+            spans=(2, 5, 5),
+        )
+
+    def _for_want_of(self, kind: SheetKind) -> tuple[str, str]:
+        """Return the fields that only such a sheet brings and rules found blank, and those rules."""
+        titles = _titles_of(kind)
+        wanted: Counter[str] = Counter()
+        rules: Counter[str] = Counter()
+        for code, coverage in self.result.coverage.items():
+            for fields, subjects in coverage.unchecked.items():
+                named = {title for field in fields for title in field.split(" or ") if title in titles}
+                wanted.update(dict.fromkeys(named, len(subjects)))
+                if named:
+                    rules[code] += len(subjects)
+        if not rules:
+            return "nothing that a rule of this audit missed", ""
+        return _with_counts(wanted), ", ".join(f"{code} ({times:,})" for code, times in sorted(rules.items()))
+
+    def _skipped(self, page: Page) -> None:
+        page.section("What was skipped, and what was noticed in reading")
+        lines: list[tuple[str, str, str]] = []
+        for sheet in self.lists.sheets:
+            if sheet.skipped:
+                lines.append((sheet.file, sheet.sheet, f"not read: {sheet.skipped}"))
+            kept = len(sheet.match.unknown) if sheet.match is not None else 0
+            if kept:
+                what = f"{_count(kept, 'column')} not understood, kept: see the sheet Columns"
+                lines.append((sheet.file, sheet.sheet, what))
+            lines.extend((sheet.file, sheet.sheet, f"heading guessed: {note}") for note in sheet.guesses)
+            lines.extend((sheet.file, sheet.sheet, note) for note in sheet.notes)
+        figures = counts(self.result)
+        not_live = figures["instruments"] - figures["live"]
+        if not_live:
+            lines.append(
+                (
+                    "",
+                    "",
+                    f"{_count(not_live, 'instrument')} deleted, void, future, spare or demolished: not checked",
+                )
+            )
+        if figures["rows_merged"]:
+            lines.append(
+                ("", "", f"{_count(figures['rows_merged'], 'row')} taken as a further row of an instrument")
+            )
+        if not lines:
+            page.paragraph("Nothing.")
+            return
+        page.table(("file", "sheet", "what"), lines[:_MOST_LINES], spans=(3, 2, 7))
+        _and_more(page, len(lines))
+
+    # --- Causes, Findings, Reviews --------------------------------------------------------------------------
+
+    def causes(self) -> Table[Cause]:
+        return Table(
+            name="Causes",
+            columns=(
+                Column(heading="count", least=6, most=8, look=Look.COUNT),
+                Column(heading="severity", least=8, most=9),
+                Column(heading="outcome", least=8, most=9),
+                Column(heading="code", least=6, most=8),
+                Column(heading="rule", least=16, most=28),
+                Column(heading="cause", least=24, most=48),
+                Column(heading="found", most=16),
+                Column(heading="wanted", most=16),
+                Column(heading="fix for all of them", least=12, most=28),
+                Column(heading="cells that all of them name", least=10, most=22),
+                Column(heading="subjects", least=12, most=36),
+            ),
+            items=self.causes_found,
+            row=self._cause_row,
+            frozen=4,
+            empty="no findings",
+        )
+
+    def _cause_row(self, cause: Cause) -> Sequence[Shown]:
+        rule = self._rule(cause.rule)
+        return (
+            cause.count,
+            _severity(cause),
+            cause.outcome.value,
+            cause.rule,
+            rule.title if rule is not None else "",
+            cause.text,
+            cause.found,
+            cause.wanted,
+            _listed(cause.fixes),
+            _sheets_and_cells(cause.cells),
+            some_of(cause.subjects),
+        )
+
+    def findings(self, name: str, outcome: Outcome, empty: str) -> Table[Finding]:
+        return Table(
+            name=name,
+            columns=(
+                Column(heading="severity", least=8, most=9),
+                Column(heading="code", least=6, most=8),
+                Column(heading="subject", least=9, most=16),
+                Column(heading="part", least=4, most=10),
+                Column(
+                    heading="what is wrong" if outcome is Outcome.FINDING else "what to decide",
+                    least=20,
+                    most=34,
+                ),
+                Column(heading="found", least=6, most=14),
+                Column(heading="wanted", least=6, most=14),
+                Column(heading="off by", least=5, most=11),
+                Column(heading="working", least=8, most=28),
+                Column(heading="fix", least=8, most=28),
+                Column(heading="file", least=5, most=12),
+                Column(heading="sheet and cell", least=8, most=14),
+                Column(heading="basis", least=8, most=16),
+                Column(heading="done by", least=8, most=8),
+                Column(heading="remark", least=14, most=14),
+            ),
+            items=self.result.of(outcome),
+            row=self._finding_row,
+            frozen=3,
+            empty=empty,
+        )
+
+    def _finding_row(self, finding: Finding) -> Sequence[Shown]:
+        rule = self._rule(finding.rule)
+        working = [finding.working] if finding.working else []
+        working.extend(f"assumed: {text}" for text in finding.assumed)
+        return (
+            _severity(finding),
+            finding.rule,
+            finding.subject,
+            finding.part,
+            finding.message,
+            finding.found,
+            finding.wanted,
+            finding.off_by,
+            "\n".join(working),
+            _listed([_fix(fix) for fix in finding.fixes]),
+            "\n".join(dict.fromkeys(cell.file for cell in finding.cells)),
+            _sheets_and_cells(finding.cells),
+            rule.basis if rule is not None else "",
+            None,
+            None,
+        )
+
+    # --- Coverage, Rules ------------------------------------------------------------------------------------
+
+    def coverage(self) -> Table[tuple[str, Coverage]]:
+        return Table(
+            name="Coverage",
+            columns=(
+                Column(heading="code", least=6, most=8),
+                Column(heading="rule", least=20, most=50),
+                Column(heading="severity", least=8, most=9),
+                Column(heading="subject", least=8, most=14),
+                *(
+                    Column(heading=heading, least=8, most=10, look=Look.COUNT)
+                    for heading in ("subjects", "clear", "finding", "review", "unchecked", "not applicable")
+                ),
+                Column(heading="unchecked because of these blanks", least=20, most=60),
+            ),
+            items=tuple(self.result.coverage.items()),
+            row=self._coverage_row,
+            frozen=1,
+            empty="no rule ran",
+        )
+
+    def _coverage_row(self, item: tuple[str, Coverage]) -> Sequence[Shown]:
+        code, coverage = item
+        rule = self._rule(code)
+        return (
+            code,
+            rule.title if rule is not None else "",
+            _severity(rule) if rule is not None else "",
+            rule.on.value if rule is not None else "",
+            sum(coverage.outcomes.values()),
+            coverage.count(Outcome.CLEAR),
+            coverage.count(Outcome.FINDING),
+            coverage.count(Outcome.REVIEW),
+            coverage.count(Outcome.UNCHECKED),
+            coverage.count(Outcome.NOT_APPLICABLE),
+            _with_counts(coverage.because),
+        )
+
+    def rules(self) -> Table[Rule]:
+        return Table(
+            name="Rules",
+            columns=(
+                Column(heading="code", least=6, most=8),
+                Column(heading="severity", least=8, most=9),
+                Column(heading="rule", least=20, most=40),
+                Column(heading="subject", least=8, most=14),
+                Column(heading="needs", least=10, most=28),
+                Column(heading="basis", least=12, most=34),
+                Column(heading="why it matters, and what to do", least=30, most=80),
+            ),
+            items=tuple(self.registry),
+            row=_rule_row,
+            frozen=1,
+            empty="there are no rules",
+        )
+
+    def _rule(self, code: str) -> Rule | None:
+        return self.registry[code] if code in self.registry else None  # noqa: SIM401 (it has no get)
+
+    # --- Unread cells, Columns ------------------------------------------------------------------------------
+
+    def unread(self) -> Table[CellProblem]:
+        return Table(
+            name="Unread cells",
+            columns=(
+                Column(heading="file", least=8, most=22),
+                Column(heading="sheet", least=8, most=20),
+                Column(heading="cell", least=6, most=9),
+                Column(heading="subject", least=9, most=20),
+                Column(heading="field", least=8, most=20),
+                Column(heading="what stands there", least=12, most=34),
+                Column(heading="why it could not be read", least=16, most=44),
+                Column(heading="readings considered", least=12, most=34),
+                Column(heading="cells", least=6, most=9, look=Look.COUNT),
+            ),
+            items=self.plant.problems,
+            row=_problem_row,
+            frozen=3,
+            empty="every cell of a known column was read",
+        )
+
+    def columns(self) -> Table[Sequence[Shown]]:
+        return Table(
+            name="Columns",
+            columns=(
+                Column(heading="file", least=8, most=24),
+                Column(heading="sheet", least=8, most=22),
+                Column(heading="column", least=6, most=8),
+                Column(heading="heading", least=12, most=40),
+                Column(heading="field", least=12, most=28),
+                Column(heading="how matched", least=10, most=28),
+                Column(heading="likelihood", least=8, most=10, look=Look.SHARE),
+                Column(heading="unit of the column", least=8, most=16),
+            ),
+            items=[row for sheet in self.lists.sheets for row in _column_rows(sheet)],
+            row=lambda row: row,
+            empty="no sheet was read",
+        )
+
+
+def _rule_row(rule: Rule) -> Sequence[Shown]:
+    return (
+        rule.code,
+        _severity(rule),
+        rule.title,
+        rule.on.value,
+        ", ".join(title for title, _ in rule.needs),
+        rule.basis,
+        _prose(rule.text),
+    )
+
+
+def _problem_row(problem: CellProblem) -> Sequence[Shown]:
+    return (
+        problem.cell.file,
+        problem.cell.sheet,
+        f"column {column_letters(problem.cell.column)}" if problem.whole_column else problem.cell.address,
+        problem.subject,
+        problem.title,
+        problem.text,
+        problem.reason,
+        " or ".join(problem.readings),
+        problem.cells_concerned,
+    )
+
+
+def _column_rows(sheet: SheetReport) -> Iterator[Sequence[Shown]]:
+    match = sheet.match
+    if match is None:
+        return
+    rows: list[tuple[int, Sequence[Shown]]] = []
+    for each in match.columns.values():
+        unit = str(each.unit) if each.unit is not None else ""
+        if each.unit_index is not None and not unit:
+            unit = f"in column {column_letters(each.unit_index)}"
+        rows.append((each.index, (each.heading, each.column.title, each.how, float(each.likelihood), unit)))
+        rows.extend(
+            (index, ("", each.column.title, "says the rest of it", None, "")) for index, _ in each.parts
+        )
+    rows.extend(
+        (index, (heading, "unit", "the unit of the columns beside it", None, ""))
+        for index, heading in match.unit_columns
+    )
+    rows.extend(
+        (index, (heading, ("kept", Look.GAP), "not understood; kept under its own heading", None, ""))
+        for index, heading in match.unknown
+    )
+    for index, row in sorted(rows, key=lambda item: item[0]):
+        yield (sheet.file, sheet.sheet, column_letters(index), *row)
+
+
+# --- words --------------------------------------------------------------------------------------------------
+
+
+def _family(code: str) -> str:
+    return code.rstrip("0123456789")
+
+
+def _severity(of: Finding | Cause | Rule) -> Shown:
+    return (of.severity.value, _LOOKS[of.severity])
+
+
+def _count(number: int, what: str) -> str:
+    return f"{number:,} {what}" if number == 1 else f"{number:,} {what}s"
+
+
+def _with_counts(times: Mapping[str, int]) -> str:
+    """Return names with their counts, the most common first."""
+    ordered = sorted(times.items(), key=lambda item: (-item[1], item[0]))
+    return ", ".join(f"{name} ({number:,})" for name, number in ordered)
+
+
+def _and_more(page: Page, number: int) -> None:
+    if number > _MOST_LINES:
+        page.paragraph(f"and {number - _MOST_LINES:,} more; all of them stand in findings.json.")
+
+
+def _listed(texts: Iterable[str]) -> str:
+    """Return each text on a line of its own, marked where there are several."""
+    lines = list(texts)
+    return lines[0] if len(lines) == 1 else "\n".join(f"\u2022 {text}" for text in lines)
+
+
+def _fix(fix: Fix) -> str:
+    return f"{fix.text} (then finds {', '.join(fix.makes)})" if fix.makes else fix.text
+
+
+def _sheets_and_cells(cells: Sequence[Cell]) -> str:
+    """Return the cells of each sheet on a line: ``Instruments: F112, G112``."""
+    by_sheet: dict[tuple[str, str], list[str]] = {}
+    for cell in cells:
+        by_sheet.setdefault((cell.file, cell.sheet), []).append(cell.address)
+    return "\n".join(
+        f"{sheet}: {', '.join(dict.fromkeys(addresses))}" if sheet else ", ".join(dict.fromkeys(addresses))
+        for (_, sheet), addresses in by_sheet.items()
+    )
+
+
+def _titles_of(kind: SheetKind) -> frozenset[str]:
+    """Return the titles, as rules name them, of the fields that no plain column of the index brings."""
+    owner = "area " if kind.name == "Areas" else ""
+    own = {column.title for column in INSTRUMENTS.columns if not column.owner}
+    titles = {f"{owner}{column.title}" for column in kind.columns}
+    return frozenset(titles - own)
+
+
+_TICKS: Final = re.compile(r"``([^`]*)``")
+
+
+def _prose(text: str) -> str:
+    """Return a rule's text without its first line and its examples, each paragraph on one line.
+
+    >>> _prose("A title.\\n\\nWhy: it\\nfails.\\n\\nWhat to do: mend it.\\n\\n>>> 1 + 1\\n2\\n")
+    'Why: it fails.\\nWhat to do: mend it.'
+    """
+    _, _, body = text.partition("\n")
+    try:
+        parts: list[Any] = doctest.DocTestParser().parse(body)
+    except ValueError:
+        parts = [body.partition(">>>")[0]]
+    said = "".join(part for part in parts if isinstance(part, str))
+    paragraphs = (" ".join(paragraph.split()) for paragraph in re.split(r"\n[ \t]*\n", said))
+    return _TICKS.sub(r"\1", "\n".join(paragraph for paragraph in paragraphs if paragraph))
