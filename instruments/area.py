@@ -234,15 +234,12 @@ def permitted_dust_surface_c(area: Area) -> PermittedSurface:
             working=f"min({', '.join(text for _, text in parts)}) = {follows:.4g} degC",
             assumptions=() if area.layer_mm is not None else (assumed,),
         )
-    if not parts:
-        missing = "dust_surface_c"
-    else:
-        missing = "layer_ignition_c" if layer is None else "cloud_ignition_c"
+    other_half = "layer_ignition_c" if layer is None else "cloud_ignition_c"
     return PermittedSurface(
         upper_bound_c=follows,
         working=parts[0][1] if parts else "",
         reason="no permitted surface temperature, nor all that it follows from",
-        missing=(missing,),
+        missing=(other_half,) if parts else ("dust_surface_c",),
     )
 
 
@@ -365,9 +362,7 @@ ZONE_MORE: Final = Token(
     r"(?:[/,&+]|and|und)\s*(?:(?:Zone|Zn|Z)\.?\s*)?(20|21|22|[0-2])(?![\dA-HJ-SU-Za-z.])", any_case=True
 )
 ZONE_BARE: Final = Token(r"(20|21|22|[0-2])(?:\.0)?(?=$|[\s/,;-])")
-INSIDE: Final = Token(
-    r"\(?\s*(?:inside|internal(?:ly)?|process(?:[\s-]side)?|innen)(?![A-Za-z])\s*\)?", any_case=True
-)
+INSIDE: Final = Token(r"\(?\s*(?:inside|internal(?:ly)?|process(?:[\s-]side)?|innen)(?![A-Za-z])\s*\)?", any_case=True)
 OUTSIDE: Final = Token(
     r"\(?\s*(?:outside|external(?:ly)?|body|aussen|außen|surroundings?)(?![A-Za-z])\s*\)?", any_case=True
 )
@@ -414,9 +409,7 @@ class _Draft:
 
     @property
     def empty(self) -> bool:
-        return not (
-            self.zones or self.classes or self.division or self.gas_groups or self.dust_groups or self.letters
-        )
+        return not (self.zones or self.classes or self.division or self.gas_groups or self.dust_groups or self.letters)
 
 
 def _take_element(scanner: Scanner, draft: _Draft, *, letters_alone: bool = False) -> bool:
@@ -540,12 +533,8 @@ def _take_words(scanner: Scanner, draft: _Draft) -> bool:
 def _classification(draft: _Draft) -> Classification:
     """Return what a whole text says; raises where its parts do not fit together."""
     notes: list[str] = []
-    gas_zone, gas_inside = _one_zone(
-        [z for z in draft.zones if z in GAS_ZONES], draft.inside, GAS_ZONES, notes
-    )
-    dust_zone, dust_inside = _one_zone(
-        [z for z in draft.zones if z in DUST_ZONES], draft.inside, DUST_ZONES, notes
-    )
+    gas_zone, gas_inside = _one_zone([z for z in draft.zones if z in GAS_ZONES], draft.inside, GAS_ZONES, notes)
+    dust_zone, dust_inside = _one_zone([z for z in draft.zones if z in DUST_ZONES], draft.inside, DUST_ZONES, notes)
     inside = gas_inside or dust_inside
     if draft.inside and draft.inside != inside:
         raise UnreadableMarking("a zone inside without one outside")
@@ -558,9 +547,7 @@ def _classification(draft: _Draft) -> Classification:
     dust_letters = [x for x in letters if x in CLASS_LETTERS["II"]]
     gas = bool(gas_zone or draft.gas_groups or "I" in classes or gas_letters)
     dust = bool(dust_zone or draft.dust_groups or {"II", "III"} & set(classes) or dust_letters)
-    if (draft.gas_groups and dust_zone and not gas_zone) or (
-        draft.dust_groups and gas_zone and not dust_zone
-    ):
+    if (draft.gas_groups and dust_zone and not gas_zone) or (draft.dust_groups and gas_zone and not dust_zone):
         raise UnreadableMarking("the group is not for this zone")
     if classes and ((gas_letters and "I" not in classes) or (dust_letters and "II" not in classes)):
         raise UnreadableMarking("the group is not for this class")
@@ -773,9 +760,7 @@ def _understood_text(name: str, written: str) -> dict[str, str | float | None] |
     text = normalised(written[: MAX_LENGTH + 1])[0]
     if name == "division" and re.fullmatch(r"[12](?:\.0)?", text):
         return {"division": text[0]}
-    if name == "class_" and (
-        match := re.fullmatch(r"(?:III|II|I|[123](?:\.0)?)(?:[,/& ]+(?:III|II|I|[123]))*", text)
-    ):
+    if name == "class_" and (match := re.fullmatch(r"(?:III|II|I|[123](?:\.0)?)(?:[,/& ]+(?:III|II|I|[123]))*", text)):
         numbers = re.findall(r"III|II|I|[123]", match[0].replace(".0", ""))
         return {"class_": ",".join(dict.fromkeys("I" * int(n) if n.isdigit() else n for n in numbers))}
     if name in ("zone", "class_", "division") and _says_unclassified(text):
