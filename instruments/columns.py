@@ -647,7 +647,8 @@ PLANT = SheetKind(
     name="Plant",
     record=PlantRow,
     names=("plant", "plant data", "project", "settings of the plant", "anlage"),
-    key=(("name", "jurisdiction"), ("name", "numbering"), ("name", "tag_pattern"), ("name", "default_reference")),
+    key=(("jurisdiction",), ("numbering",), ("tag_pattern",), ("default_reference",), ("users_letters",), ("plant_codes",),
+         ("required_fields",), ("atmospheric_pressure",)),
     columns=(
         _text("name", "name", "name", "plant", "plant name", "site"),
         _text("tag_pattern", "tag pattern", "tag pattern", "pattern", "tag format", "tag profile"),

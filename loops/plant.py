@@ -131,6 +131,7 @@ class Plant:
     profile: TagProfile
     codes: Mapping[str, PlantCode]
     assumptions: tuple[str, ...] = ()
+    more_problems: tuple[CellProblem, ...] = ()
     _by_tag: dict[Any, tuple[Installed, ...]] = field(default_factory=dict)
     _by_loop: dict[str, Loop] = field(default_factory=dict)
     _circuits_of: dict[int, tuple[Circuit, ...]] = field(default_factory=dict)
@@ -151,7 +152,7 @@ class Plant:
     @property
     def problems(self) -> tuple[CellProblem, ...]:
         """The cells that could not be read."""
-        return self.lists.problems
+        return (*self.lists.problems, *self.more_problems)
 
     @property
     def live(self) -> tuple[Installed, ...]:
@@ -286,6 +287,7 @@ def assemble(lists: Lists) -> Plant:
         profile=profile,
         codes=codes,
         assumptions=(*lists.assumptions, *assumptions, *fitter.assumptions),
+        more_problems=tuple(fitter.problems),
         _by_tag={key: tuple(found) for key, found in by_tag.items()},
         _columns=lists.index_columns,
     )
@@ -485,7 +487,8 @@ class _Fitter:
         self._types = types
         self._areas = areas
         self._made: dict[str, Area] = {}
-        self._classified: dict[str, Classification | None] = {}
+        self._classified: dict[tuple[str, bool], Classification | None] = {}
+        self.problems: list[CellProblem] = []
         self._markings: dict[str, Marking] = {}
         self._unclassified: set[str] = set()
         self._own: dict[int, DeviceType] = {}
@@ -565,33 +568,50 @@ class _Fitter:
             marking = self._markings[text] = read_marking(text)
         return marking
 
-    def _classification(self, text: str) -> Classification | None:
-        if text not in self._classified:
-            self._classified[text] = read_classification(text)
-        return self._classified[text]
+    def _classification(self, text: str, own_column: bool) -> Classification | None:
+        key = (text, own_column)
+        if key not in self._classified:
+            self._classified[key] = read_classification(text, own_column=own_column)
+        return self._classified[key]
 
     def _area(self, record: Instrument) -> tuple[Area | None, bool]:
         if record.area:
             listed = self._areas.get(_key(record.area))
             if listed is not None:
-                return listed, listed.system == "none"
-        for text in (record.area_classification, record.area):
+                return listed, listed.unclassified
+        for text, field_name in ((record.area_classification, "area_classification"), (record.area, "area")):
             if not text:
                 continue
-            classification = self._classification(text)
+            own_column = field_name == "area_classification"
+            classification = self._classification(text, own_column)
             if classification is None:
+                if own_column:
+                    self._unread(record, text)
                 continue
             if classification.unclassified:
                 self._unclassified.add(text)
                 return None, True
-            return self._from_text(text, record), False
+            return self._from_text(text, own_column), False
         return None, False
 
-    def _from_text(self, text: str, record: Instrument) -> Area | None:
+    def _unread(self, record: Instrument, text: str) -> None:
+        for cell in record.cells("area_classification")[:1]:
+            self.problems.append(
+                CellProblem(
+                    cell=cell,
+                    field="area_classification",
+                    title="area classification",
+                    subject=record.tag or "",
+                    text=text,
+                    reason="no zone or division, and no word for an unclassified place, is read in it",
+                )
+            )
+
+    def _from_text(self, text: str, own_column: bool) -> Area | None:
         key = _key(text)
         area = self._made.get(key)
         if area is None:
-            made = area_from_classification(text)
+            made = area_from_classification(text, own_column=own_column)
             if made is None:
                 return None
             area = self._made[key] = made

@@ -36,7 +36,7 @@ def example_lists(instruments: Rows, **sheets: Rows | Mapping[str, Any]) -> List
         if not rows:
             continue
         if isinstance(rows, Mapping):
-            rows = [{"name": "Example", **rows}]
+            rows = [{"name": "Example", "numbering": "parallel", **rows}]
         tables.append(_sheet(name, rows))
     return records_of_sheets(tables, KINDS)
 

@@ -151,7 +151,7 @@ def tags_that_look_alike(group: tuple[Installed, ...], plant: Plant) -> Verdict:
 
     >>> from validation.example import said
     >>> said("TAG03", [{"tag": "FT-101", "service": "a"}, {"tag": "FT-0101", "service": "b"}])
-    ['FT-101, FT-0101: FT-101, FT-0101 differ only by leading zeros or by characters that look alike']
+    ['FT-0101, FT-101: FT-0101, FT-101 differ only by leading zeros or by characters that look alike']
     >>> said("TAG03", [{"tag": "FT-101", "service": "a"}, {"tag": "FT-102", "service": "b"}])
     []
     """
