@@ -9,6 +9,7 @@ import math
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass
+from decimal import Decimal
 from typing import Final
 
 LONGEST_NUMBER: Final = 40
@@ -145,10 +146,8 @@ def _magnitude(written: str, decimal: str | None) -> float | CellTrouble:
         value = found[0]
     if not exponent:
         return value
-    scaled = value * float(f"1e{exponent}")
-    return (
-        scaled if scaled or not value else math.inf
-    )  # a number too small to hold is refused like one too large
+    scaled = float(Decimal(repr(value)).scaleb(int(exponent)))
+    return scaled if scaled or not value else math.inf  # a number too small to hold is refused like one too large
 
 
 def read_number(cell: object, *, decimal: str | None = ".") -> Number | CellTrouble:

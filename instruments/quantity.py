@@ -149,8 +149,6 @@ class Triplet(NamedTuple):
 def _quantity(text: str, number: float, unit: Unit | None, qualifier: str | None = None) -> Quantity:
     if unit is None:
         return Quantity(text, number, None, None, None, qualifier)
-    if unit.reference == "vacuum" and number < 0.0:
-        unit = unit.referred_to("gauge")  # -20 inHg vac: the sign says it once more
     factor = unit.factor
     base = None if factor is None else number * factor + unit.offset + 0.0
     return Quantity(text, number, unit, unit.reference, base, qualifier)
@@ -208,9 +206,7 @@ _CONNECTION = re.compile(
 )
 _LETTERS_ONLY = re.compile(r"[^a-z]+")
 _FULL_VACUUM = frozenset({"fv", "fullvacuum", "fullvac", "fullv", "vollvakuum", "vacuum", "fvac"})
-_ATMOSPHERIC = frozenset(
-    {"atm", "atmos", "atmosphere", "atmospheric", "atmosphericpressure", "atmpress", "drucklos"}
-)
+_ATMOSPHERIC = frozenset({"atm", "atmos", "atmosphere", "atmospheric", "atmosphericpressure", "atmpress", "drucklos"})
 _AMBIENT = frozenset({"amb", "ambient", "ambienttemp", "ambienttemperature", "ambtemp", "umgebung"})
 _AND_VACUUM = re.compile(
     r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?(?:/|&|\+|,|and|to|-(?= )) ?(?=[0-9]))"
@@ -257,26 +253,23 @@ def _own_unit(written: str, unit: Unit | None) -> Unit | CellTrouble | None:
         found = read_unit(written.partition("@")[0])  # a condition (850 kg/m3 @ 20 °C) changes no value
     if found is None:
         return CellTrouble(reason=f"unit '{written}' is not known")
-    if (
-        unit is not None
-        and found.reference == "unstated"
-        and unit.kind == "pressure"
-        and unit.reference != "unstated"
-    ):
+    if unit is not None and found.reference == "unstated" and unit.kind == "pressure" and unit.reference != "unstated":
         return found.referred_to(unit.reference or "unstated")
     return found
 
 
-def _value(
-    text: str, sign: str, digits: str, unit: Unit | None, decimal: str | None
-) -> Quantity | CellTrouble:
+def _written(text: str, number: float, unit: Unit | None) -> Quantity:
+    if number < 0.0 and unit is not None and unit.reference == "vacuum":
+        unit = unit.referred_to("gauge")  # -20 inHg vac: the sign says it once more
+    return _quantity(text, number, unit)
+
+
+def _value(text: str, sign: str, digits: str, unit: Unit | None, decimal: str | None) -> Quantity | CellTrouble:
     number = read_number(digits, decimal=decimal)
     if isinstance(number, CellTrouble):
         minus = "-" if sign == "-" else ""
-        return CellTrouble(
-            reason=number.reason, readings=tuple(minus + reading for reading in number.readings)
-        )
-    return _quantity(text, -number.value + 0.0 if sign == "-" else number.value, unit)
+        return CellTrouble(reason=number.reason, readings=tuple(minus + reading for reading in number.readings))
+    return _written(text, -number.value + 0.0 if sign == "-" else number.value, unit)
 
 
 _UNITS_IN_FRONT: Final = ("other", "ratio")  # pH 7, SG 0.85, % 50
@@ -325,9 +318,7 @@ def _agree(one: float, other: float, size: float) -> bool:
     return abs(one - other) <= 0.01 * size  # both are rounded by hand
 
 
-def _read_one(
-    cell: str, unit: Unit | None, decimal: str | None, kinds: tuple[str, ...]
-) -> Quantity | CellTrouble:
+def _read_one(cell: str, unit: Unit | None, decimal: str | None, kinds: tuple[str, ...]) -> Quantity | CellTrouble:
     text = plain_signs(cell).strip()
     if not text:
         return CellTrouble(reason="the cell is empty")
@@ -418,7 +409,7 @@ def read_quantity(
 def _from_number(cell: float, unit: Unit | None) -> Quantity | CellTrouble:
     if not math.isfinite(cell):
         return CellTrouble(reason="not a finite number")
-    value = _quantity(f"{cell:.15g}", cell, unit)
+    value = _written(f"{cell:.15g}", cell, unit)
     if len(_NUMBERS) < _MOST_KEPT:
         _NUMBERS[cell, unit] = value
     return value
@@ -439,9 +430,7 @@ _INTRODUCTION = re.compile(
     r"(?![A-Za-z])[.:= ]*)+",
     re.IGNORECASE,
 )
-_PLUS_MINUS = re.compile(
-    rf"(?:0 ?)?(?:±|\+ ?/ ?-|-/\+|\+-) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])", re.IGNORECASE
-)
+_PLUS_MINUS = re.compile(rf"(?:0 ?)?(?:±|\+ ?/ ?-|-/\+|\+-) ?(?P<digits>{NUMBER_PATTERN})(?![0-9])", re.IGNORECASE)
 _PAIR_IN_BRACKETS = re.compile(r"[(\[]([^()\[\]]+)[)\]] ?(.*)$")
 _SIGNAL = (
     r"(?P<signal>[0-9]+(?:[.,][0-9]+)? ?(?:mA ?)?(?:-|to|\.{2,3}|…|/|bis) ?[0-9]+(?:[.,][0-9]+)? ?"
@@ -465,9 +454,7 @@ _PNEUMATIC = re.compile(
 _EQUALS = re.compile(r" ?(?:=|≙) ?")
 
 
-def _ends(
-    low: Quantity | CellTrouble, high: Quantity | CellTrouble, signal: str | None = None
-) -> Range | CellTrouble:
+def _ends(low: Quantity | CellTrouble, high: Quantity | CellTrouble, signal: str | None = None) -> Range | CellTrouble:
     if isinstance(low, CellTrouble):
         return low
     if isinstance(high, CellTrouble):
@@ -499,11 +486,7 @@ def _vacuum_end(text: str, unit: Unit | None, decimal: str | None) -> Range | Ce
     if isinstance(high, CellTrouble) or high.unit is None or high.unit.kind != "pressure":
         return None
     gauge = high.unit.referred_to("gauge") if high.reference == "unstated" else high.unit
-    low = (
-        0.0
-        if high.reference == "absolute"
-        else convert(FULL_VACUUM_BAR, unit_of("bar", gauge.reference), gauge)
-    )
+    low = 0.0 if high.reference == "absolute" else convert(FULL_VACUUM_BAR, unit_of("bar", gauge.reference), gauge)
     return Range(_quantity("FV", low, gauge), _quantity(high.text, high.number, gauge), None)
 
 
@@ -531,22 +514,22 @@ def _read_pair(text: str, unit: Unit | None, decimal: str | None) -> Range | Cel
     if not first:
         start = next((at for at, sign in enumerate(text) if sign in "0123456789"), 0)
         start -= 1 if start and text[start - 1] in "-+" else 0
-        front = _own_unit(text[:start], unit) if start else None
-        if front is None or isinstance(front, CellTrouble) or not _SIGNED.match(text, start):
-            return CellTrouble(reason=f"'{text}' is not a range")
-        return _read_pair(text[start:].strip(), front, decimal)
+        front = _own_unit(text[:start], unit) if text[:start].strip(" .:=") else None
+        if isinstance(front, Unit) and _SIGNED.match(text, start):
+            return _read_pair(text[start:].strip(), front, decimal)
+        return _no_pair(text, unit, decimal)
     trouble: CellTrouble | None = None
     for between in _BETWEEN.finditer(text, first.end()):
-        unit_low = _own_unit(text[first.end() : between.start()], None)
+        written_low, written_high = text[first.end() : between.start()].strip(" ."), text[between.end() :].strip(" .")
+        unit_low = _own_unit(written_low, None) if written_low else None
+        unit_high = _own_unit(written_high or written_low, unit)
         if isinstance(unit_low, CellTrouble):
             continue
-        written = text[between.end() :]
-        unit_high = _own_unit(written, unit)
         if isinstance(unit_high, CellTrouble):
             trouble = trouble or unit_high
             continue
-        if not written.strip(" .") and unit_low is not None:
-            unit_high = unit_low
+        if unit_low is None or not written_high:
+            unit_low = unit_high
         if unit_low and unit_high and not commensurable(unit_low, unit_high):
             if unit_low.canonical != "inch":  # 0"-100" WC
                 return CellTrouble(
@@ -554,19 +537,23 @@ def _read_pair(text: str, unit: Unit | None, decimal: str | None) -> Range | Cel
                     readings=(unit_label(unit_low), unit_label(unit_high)),
                 )
             unit_low = unit_high
-        low, high = _same_side(unit_low if unit_low is not None else unit_high, unit_high)
+        low, high = _same_side(unit_low, unit_high)
         return _ends(
             _value(text[: between.start()].strip(), first[1], first[2], low, decimal),
             _value(text[between.start("sign") :].strip(), between["sign"], between["digits"], high, decimal),
         )
-    if trouble:
+    if trouble is not None:
         return trouble
+    return _no_pair(text, unit, decimal)
+
+
+def _no_pair(text: str, unit: Unit | None, decimal: str | None) -> CellTrouble:
     single = _single(text, unit, decimal)
-    if isinstance(single, Quantity):
-        return CellTrouble(
-            reason=f"'{text}' is one figure where a range is wanted", readings=(f"0 to {single}", str(single))
-        )
-    return single
+    if isinstance(single, CellTrouble):
+        return single if single.readings else CellTrouble(reason=f"'{text}' is not a range")
+    return CellTrouble(
+        reason=f"'{text}' is one figure where a range is wanted", readings=(f"0 to {single}", str(single))
+    )
 
 
 def _read_range(cell: str, unit: Unit | None, decimal: str | None) -> Range | CellTrouble:
@@ -718,6 +705,8 @@ def read_triplet(
     if len(cell) > LONGEST_CELL:
         return CellTrouble(reason="the text is too long for three values")
     text = " ".join(plain_signs(cell.strip().replace("\n", " / ")).split())
+    if not text:
+        return CellTrouble(reason="the cell is empty")
     dashed = _DASHED.match(text)
     parts = [dashed[1], dashed[2], dashed[3] + dashed[4]] if dashed else _PARTS.split(text)
     labelled = [_label(part.strip()) for part in parts]

@@ -100,13 +100,7 @@ def _compact(text: str) -> str:
     ('inWC', 'inWC', 'BarA', 'degC', 'uS/cm')
     """
     text = text.translate(_DROPPED)
-    return (
-        text.replace('"', "in")
-        .replace("°", "deg")
-        .replace("μ", "u")
-        .replace("Δ", "delta")
-        .replace("Ω", "ohm")
-    )
+    return text.replace('"', "in").replace("°", "deg").replace("μ", "u").replace("Δ", "delta").replace("Ω", "ohm")
 
 
 # ---------------------------------------------------------------------------------------------------------
@@ -229,9 +223,7 @@ def _pressure_spellings() -> Iterator[tuple[str, str, str | None]]:
         yield spelling, "kgf/cm2", "gauge"
 
 
-_PRESSURES: Final = {
-    spelling: (canonical, reference) for spelling, canonical, reference in _pressure_spellings()
-}
+_PRESSURES: Final = {spelling: (canonical, reference) for spelling, canonical, reference in _pressure_spellings()}
 _WHOLE_WORDS: Final = frozenset({"at", "ata", "ate", "atü", "atue"})  # take no suffix: att, atg are no units
 
 _WATER_BASIS = re.compile(r"(?:@|at)?([0-9]{1,4})(?:deg)?([cf])$")
@@ -310,9 +302,7 @@ def _temperature(key: str) -> Unit | None:
 _PERCENT = _words("% pct percent prozent percentage")
 _OF: Final[Mapping[str, tuple[str, ...]]] = {
     "percent": ("",),
-    "percent valve travel": _words(
-        "open opening travel stroke valvetravel valveopening valve position lift auf"
-    ),
+    "percent valve travel": _words("open opening travel stroke valvetravel valveopening valve position lift auf"),
     "percent of LEL": _words("lel oflel lfl oflfl ueg lie"),
     "percent v/v": _words("v/v vol volume byvol byvolume v vol/vol"),
     "percent mol": _words("mol mole molar mol/mol"),
@@ -530,9 +520,7 @@ def _plain_spellings() -> Iterator[tuple[str, str]]:
         "pH (dimensionless log)": _words("ph phunit phunits phvalue"),
         "NTU": _words("ntu ntus"),
         "FNU": _words("fnu fnus"),
-        "degAPI = 141.5/SG60 - 131.5": _words(
-            "api apideg degapi degreeapi degreesapi apigravity degapigravity oapi"
-        ),
+        "degAPI = 141.5/SG60 - 131.5": _words("api apideg degapi degreeapi degreesapi apigravity degapigravity oapi"),
     }
     for canonical, words in spellings.items():
         for word in words:
