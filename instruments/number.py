@@ -16,7 +16,7 @@ LONGEST_NUMBER: Final = 40
 """Characters of a text that may still be a number."""
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
+@dataclass(frozen=True, slots=True)
 class CellTrouble:
     """Why a cell could not be read, in words to print, and the readings that were considered.
 

@@ -201,7 +201,7 @@ _DIRECTION = re.compile(
     re.IGNORECASE,
 )
 _CONNECTION = re.compile(
-    r"(?:[0-9]{1,2}[ -])?[0-9]{1,2} ?/ ?[0-9]{1,2} ?(?:\"|''|in\b|inch|npt|bsp|nb\b)|(?:dn|nps) ?[0-9]",
+    r"(?:[0-9]{1,2}[ -])?[0-9]{1,2} ?/ ?[0-9]{1,2} ?(?:\"|''|in\b|inch|npt|bsp|nb\b)|(?:dn|nps) ?[0-9]|[0-9]{1,4} ?nb$",
     re.IGNORECASE,
 )
 _LETTERS_ONLY = re.compile(r"[^a-z]+")
@@ -253,8 +253,8 @@ def _own_unit(written: str, unit: Unit | None) -> Unit | CellTrouble | None:
         found = read_unit(written.partition("@")[0])  # a condition (850 kg/m3 @ 20 °C) changes no value
     if found is None:
         return CellTrouble(reason=f"unit '{written}' is not known")
-    if unit is not None and found.reference == "unstated" and unit.kind == "pressure" and unit.reference != "unstated":
-        return found.referred_to(unit.reference or "unstated")
+    if unit is not None and found.reference == "unstated" and found.canonical == unit.canonical:
+        return unit
     return found
 
 
@@ -370,8 +370,8 @@ def read_quantity(
     cell : object
         Text or number.
     unit : Unit or None
-        What heading or unit column say. A unit in the cell wins over it; a reference that the cell
-        leaves unstated is taken from it.
+        What heading or unit column say. A unit in the cell wins over it; where both name the same
+        unit, a reference that the cell leaves unstated is taken from it.
     decimal : str or None
         The sheet's decimal mark, see `instruments.number.read_number`.
     kinds : tuple of str
@@ -672,6 +672,7 @@ _PARTS = re.compile(
     r"(?:-+|n\.?/?a\.?)? ?(?:[/;|]|$))",
     re.IGNORECASE,
 )
+_LEGEND = re.compile(r"([a-z]{1,8})\.?/([a-z]{1,8})\.?/([a-z]{1,8})[.: =]+(?=[-+0-9<>])", re.IGNORECASE)
 _DASHED = re.compile(rf"({NUMBER_PATTERN}) ?- ?({NUMBER_PATTERN}) ?- ?({NUMBER_PATTERN})(?![0-9])(.*)$")
 _OPEN = frozenset({"", "-", "--", "---", "n/a", "na", "n.a.", "n.a", "tba", "tbc", "tbd"})
 _SLOTS = {"mi": 0, "no": 1, "n": 1, "n.": 1, "ra": 1, "ma": 2}
@@ -707,6 +708,8 @@ def read_triplet(
     text = " ".join(plain_signs(cell.strip().replace("\n", " / ")).split())
     if not text:
         return CellTrouble(reason="the cell is empty")
+    legend = _LEGEND.match(text)  # N/M/Max 2/5/8: it says that there are three, and their sizes which is which
+    text = text[legend.end() :] if legend else text
     dashed = _DASHED.match(text)
     parts = [dashed[1], dashed[2], dashed[3] + dashed[4]] if dashed else _PARTS.split(text)
     labelled = [_label(part.strip()) for part in parts]
@@ -716,6 +719,8 @@ def read_triplet(
             slots = [1]
         elif len(parts) == 3:
             slots = [0, 1, 2]
+            if legend and legend[1].lower().startswith("max") and legend[3].lower().startswith("min"):
+                slots = [2, 1, 0]
     known = [slot for slot in slots if slot is not None]
     if len(known) < len(slots) or len(set(known)) < len(known):
         return CellTrouble(
