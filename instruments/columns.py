@@ -468,7 +468,7 @@ INSTRUMENTS = SheetKind(
               "valve fail position", "fail state", "fails", "fo fc", "fo/fc", "valve failure", "action on failure",
               "fail safe position", "valve action", "spring action", "fo/fc/fl", "failure"),
         *SETTINGS,
-        _quantity("set_pressure", "set pressure", PRESSURE, "set pressure", "set press", "relief set pressure",
+        _quantity("set_pressure", "set pressure", (), "set pressure", "set press", "relief set pressure",
                   "set point barg", "set", "set p", "ansprechdruck", "relief set", "rv set", "set point", "sp",
                   "psv set pressure", "setpoint", "setting", "switch setting", "set value",
                   unit_from=("settings_unit",)),
