@@ -296,13 +296,23 @@ def _can_bear(kind: Kind, letters: str, measuring_point: bool | None) -> bool | 
     reading = read_letters(letters, users_letters=USERS_CHOICE)
     if reading.legal == "illegal":
         return None
-    if kind is derive_kind(letters, has_signal=True) or kind is derive_kind(letters, has_signal=False):
+    if kind in _derivable(letters):
         return True
     said = _BEARS[kind](reading, reading.function_letters, reading.first, measuring_point)
     # A user's choice (GAS, Drive, ...) and user's or unclassified functions may mean anything.
     if said is False and (reading.first in USERS_CHOICE or reading.function_letters & set("XUBNJ")):
         return None
     return said
+
+
+@lru_cache(maxsize=4096)
+def _derivable(letters: str) -> frozenset[Kind | None]:
+    """Every kind that the letters bear in one place or another."""
+    return frozenset(
+        _derive(letters, has_signal, location, False, False)
+        for has_signal in (True, False, None)
+        for location in (None, "field", "panel", "system")
+    )
 
 
 def _is_point(reading: LettersReading, measuring_point: bool | None) -> bool | None:
@@ -584,7 +594,7 @@ def letters_for_kind(kind: Kind, letters: str, *, codes: Mapping[str, PlantCode]
     if kind in (Kind.JUNCTION_BOX, Kind.PANEL):
         return ("JB",) if kind is Kind.JUNCTION_BOX else ()
     found = [f"{head}{body}" for body in _USUAL_LETTERS.get(kind, ())]
-    return tuple(f for f in found if read_letters(f).legal != "illegal" and can_bear(kind, f) is not False)
+    return tuple(f for f in found if read_letters(f).legal == "legal" and can_bear(kind, f) is not False)
 
 
 # ------------------------------------------------------------------------------------- words for kinds
@@ -618,8 +628,8 @@ def read_kind(
     """The kind of one row from its words and its letters.
 
     Words often leave open which kind is meant: a flowmeter may be transmitter, element or gauge, an indicator
-    a dial or a function of the system. Then the letters choose among those that the words can mean; where none
-    of them goes with the letters, the words stand, and the disagreement is for a rule to find.
+    a dial or a function of the system. Then the letters choose among those that the words can mean; where
+    none of them goes with the letters, the words stand, and the disagreement is for a rule to find.
 
     >>> read_kind("Electromagnetic flowmeter", letters="FE").kind
     <Kind.ELEMENT: 'element'>
@@ -650,11 +660,13 @@ def read_kind(
     elif letters:
         for wanted in (True, None):
             for candidate in candidates:
-                bears = can_bear(
-                    candidate, letters, codes=codes, scheme=scheme, measuring_point=measuring_point
-                )
-                if bears is wanted:
-                    return KindReading(kind=candidate, stated=True, candidates=candidates)
+                bears = can_bear(candidate, letters, codes=codes, scheme=scheme, measuring_point=measuring_point)
+                if bears is not wanted:
+                    continue
+                if bears is None and candidate is Kind.INDICATOR and derived is not None:
+                    # 'Flow indicator' beside FIT: the device that indicates is the transmitter.
+                    candidate = derived
+                return KindReading(kind=candidate, stated=True, candidates=candidates)
     return KindReading(kind=kind, stated=True, candidates=candidates)
 
 

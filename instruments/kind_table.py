@@ -60,7 +60,7 @@ class Kind(StrEnum):
 
     @property
     def measures(self) -> Measures:
-        """Whether it measures: "yes", "no", "setting", "set pressure", "system" (a range in the system only)."""
+        """Whether it measures: "yes", "no", "setting", "set pressure", "system" (a range there only)."""
         return _TRAITS[self].measures
 
     @property
@@ -120,6 +120,4 @@ _TRAITS: Final[Mapping[Kind, _Traits]] = {
     Kind.SOFT_FUNCTION: _Traits("no", "no", "system", False, "system"),
 }
 
-VALVES: Final = frozenset(
-    {Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.MANUAL_VALVE, Kind.RELIEF_VALVE, Kind.REGULATOR}
-)
+VALVES: Final = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.MANUAL_VALVE, Kind.RELIEF_VALVE, Kind.REGULATOR})

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 import unicodedata
-from functools import lru_cache
+from functools import cache, lru_cache
 from typing import Final
 
 from instruments.kind_table import Kind
@@ -76,6 +76,10 @@ _ONE_WORD_TABLE: Final = (
     (
         r"d ?[/.] ?p\.? | diff\.? ?press(?:ure)?\.? | delta ?-? ?p",
         "dp",
+    ),
+    (
+        r"start ?[/-] ?stop",
+        "startstop",
     ),
     (
         r"c ?/ ?v",
@@ -151,7 +155,6 @@ _ONE_WORD_TABLE: Final = (
         "with",
     ),
 )
-_ONE_WORD: Final = tuple((_words(text), f" {word} ") for text, word in _ONE_WORD_TABLE)
 
 # Behind these words stands what a thing is for, or what it comes with.
 _CUT: Final = re.compile(
@@ -164,7 +167,7 @@ _CUT: Final = re.compile(
 _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     (
         r"""
-        (?:network|ethernet|kvm) switch(?:es)? | frequency converters? | camera\w* | cables? | pumps?
+        (?:network|ethernet|kvm) switch(?:es)? | frequency converters? | camera\w* | cables? | pumps? | soft starters?
         motors? | pumpe | motor
         """,
         (),
@@ -194,7 +197,8 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     ),
     (
         r"""
-        turbidi?meters? | photometers? | \w*spectro\w* | \w*chromatograph\w* | refractometers?
+        turbidi?meters? | colou?rimeters? | nephelometers? | viscosimeters? | viscometers? | hygrometers?
+        (?:particle|dust) (?:counters?|monitors?) | photometers? | \w*spectro\w* | \w*chromatograph\w* | refractometers?
         polarimeters? | gcs? | \w*analy[sz]ers? | analy[sz]ators? | \w*analysator(?:en)?
         \w*analyse\w*gerat\w* | \w*analyse\w*geraet\w* | analyseurs? | analizador(?:es)?
         analizzator[ei] | anal
@@ -202,7 +206,7 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
         (_K.ANALYSER,),
     ),
     (
-        r"(?:am|volt|watt|hour|run ?time|panel)(?: hour)? ?meters? | tachometers? | drehzahlmesser",
+        r"(?:am|volt|watt|hour|run ?time|run hours?|panel)(?: hour)? ?meters? | tachometers? | drehzahlmesser",
         (_K.INDICATOR, _K.TRANSMITTER, _K.ELEMENT),
     ),
     (
@@ -220,8 +224,9 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     # Detectors
     (
         r"""
-        (?:gas|h2s|co|co2|lel|o2|oxygen|ch4|methane|hydrocarbon|hc|toxic)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
-        (?:ammonia|nh3|chlorine|cl2|hydrogen|h2|so2|refrigerant)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
+        (?:gas|h2s|co|co2|lel|o2|oxygen|ch4|methane)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
+        (?:hydrocarbon|hc|toxic|ammonia|nh3|chlorine)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
+        (?:cl2|hydrogen|h2|so2|refrigerant)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
         (?:combustible|flammable|open path)(?: gas| leak| ir| point)? (?:detector|alarm|head)s?
         gasmelder | gaswarn\w* | gasdetector(?:en)?
         """,
@@ -281,11 +286,23 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     ),
     (
         r"""
-        load ?cells? | \w*wagezellen? | \w*waegezellen? | electrodes? | \w*elektroden? | accelerometers?
+        (?:load|weigh|weighing) ?cells? | weigh(?:ing)? modules? | \w*wagezellen? | \w*waegezellen?
+        electrodes? | \w*elektroden? | accelerometers?
         strain gauges? | pick ?-? ?ups? | tacho(?:generator)?s? | key ?phasors? | thermopiles?
-        elements? | elem | elementos?
         """,
         (_K.ELEMENT, _K.TRANSMITTER),
+    ),
+    (
+        r"elements? | elem | elementos?",
+        (_K.ELEMENT,),
+    ),
+    (
+        r"rain gau?ges? | weather stations? | anemometers? | echo sounders?",
+        (_K.TRANSMITTER, _K.ELEMENT, _K.SWITCH, _K.GAUGE),
+    ),
+    (
+        r"feedbacks? | ruckmeldung\w* | rueckmeldung\w*",
+        (_K.SWITCH, _K.TRANSMITTER, _K.INDICATOR),
     ),
     (
         r"(?:pressure|level|flow|druck|niveau|fullstands?|fuellstands?) ?(?:sensor(?:en|s)?|probes?|sonden?)",
@@ -305,7 +322,7 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     (
         r"""
         \w*sensor(?:en|es|s)? | probes? | capteurs? | \w*sonden? | sondes? | sondas? | \w*fuhler
-        \w*fuehler | opnemers? | heads?
+        \w*fuehler | \w*opnemers? | heads?
         """,
         _SENSOR,
     ),
@@ -318,10 +335,11 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
         push ?-? ?buttons? | pbs? | epb | emergency stops? | (?:mode )?selectors? | \w*taster
         not ?-? ?aus\w* | \w*wahlschalter | \w*schlusselschalter | \w*handschalter
         bout(?:on|ons)(?: poussoirs?)? | commutateurs? | pulsador(?:es)? | selectora? | drukknop(?:pen)?
+        (?:startstop|push ?-? ?button)(?: stations?| switch(?:es)?)? | control stations?
         keuzeschakelaars? | noodstop | (?:manual )?(?:alarm )?call ?points? | break ?glass(?:es)? | mcp
         hoa | local control stations? | lcs | joysticks? | \w*handmelder
         """,
-        (_K.HAND_SWITCH, _K.SWITCH),
+        (_K.HAND_SWITCH,),
     ),
     (
         r"""
@@ -369,7 +387,7 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
         sight flow indicators? | flow sights? | sights? | \w*standglas(?:er)? | \w*standglaeser
         \w*schauglas(?:er)? | \w*schauglaeser | visor(?:es)? | mirillas? | peilglas | kijkglas
         magnetic level (?:gau?ges?|indicators?) | mlgs? | mlis? | level gau?ges? | gauge cocks?
-        \w*standanzeiger | \w*standsanzeiger | \w*standsanzeige
+        \w*standanzeiger | \w*standsanzeiger | \w*standsanzeige | \w*klappenanzeiger
         """,
         (_K.GLASS, _K.GAUGE, _K.INDICATOR),
     ),
@@ -405,9 +423,13 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     (
         r"""
         \w*indicators? | indic | ind | indicateurs? | indicador(?:es)? | \w*anzeigen? | \w*anzeiger
-        aanwijzers? | indications? | totali[sz]ers? | counters?
+        aanwijzers? | indications?
         """,
         _INDICATOR,
+    ),
+    (
+        r"totali[sz]ers? | counters?",
+        (*_INDICATOR, _K.TRANSMITTER),
     ),
     # What drives a valve
     (
@@ -426,6 +448,7 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     ),
     (
         r"""
+        valvulas? (?:de )?solenoides? | solenoides?
         solenoids?(?: (?:operated|actuated|pilot))*(?: valves?| vlvs?| coils?)?
         sol(?:enoid)? ?v(?:alve|lv)?s? | sov | sols? | \w*magnetventile? | electro ?-? ?vannes?
         electro ?-? ?valvulas? | \w*magneetklep(?:pen)? | pilot valves?
@@ -506,7 +529,7 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
         (_K.BARRIER, _K.ISOLATOR),
     ),
     (
-        r"relays? | relais | rele | reles | summators? | multipliers?",
+        r"relays? | relais | rele | reles | summators? | multipliers? | extractors? | ratio stations?",
         (_K.SOFT_FUNCTION, _K.ISOLATOR, _K.SOLENOID, _K.SWITCH),
     ),
     (
@@ -548,9 +571,9 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
     (
         r"""
         soft(?:ware)?(?: (?:function|tag|point|alarm|signal|block|indicator|controller)s?| switch(?:es)?)?
-        (?:dcs|scada|plc|hmi|system|virtual|software|calculated|derived)(?: \w+)? (?:function|tag|point|indication)s?
-        (?:dcs|scada|plc|hmi|system|virtual|software|calculated|derived)(?: \w+)? (?:indicator|controller|alarm)s?
-        (?:dcs|scada|plc|hmi|system|virtual|software|calculated|derived)(?: \w+)? (?:signal|value|recorder|display)s?
+        (?:dcs|scada|plc|hmi|system|virtual|calculated|derived)(?: \w+)? (?:function|tag|point)s?
+        (?:dcs|scada|plc|hmi|system|virtual|calculated|derived)(?: \w+)? (?:indication|indicator|controller)s?
+        (?:dcs|scada|plc|hmi|system|virtual|calculated|derived)(?: \w+)? (?:alarm|value|recorder|display)s?
         calculations? | calcs? | functions? | function blocks? | software ?funktion | interlocks?
         logic | setpoints? | set points? | computing \w+
         """,
@@ -561,8 +584,23 @@ _HEADS_TABLE: Final[tuple[tuple[str, tuple[Kind, ...]], ...]] = (
         r"\w*met(?:er|re)s? | \w*messgerate? | \w*messgeraete? | \w*messer",
         _FLOWMETER,
     ),
+    (
+        r"(?:loading|hand|auto ?/? ?manual|control) stations?",
+        (_K.SOFT_FUNCTION, _K.INDICATOR, _K.HAND_SWITCH),
+    ),
 )
-_HEADS: Final = tuple((_words(text), kinds) for text, kinds in _HEADS_TABLE)
+
+
+# Compiled when the first words are read: a hundred patterns would slow the start of every command.
+@cache
+def _one_word() -> tuple[tuple[re.Pattern[str], str], ...]:
+    return tuple((_words(text), f" {word} ") for text, word in _ONE_WORD_TABLE)
+
+
+@cache
+def _heads() -> tuple[tuple[re.Pattern[str], tuple[Kind, ...]], ...]:
+    return tuple((_words(text), kinds) for text, kinds in _HEADS_TABLE)
+
 
 _ANALYSIS: Final = _words(
     r"""
@@ -609,7 +647,7 @@ _SHUT_WORDS: Final = _words(
 _SELF_WORDS: Final = _words(
     r"""
     self ?-? ?(?:act|operat|regulat|contain|actuat)\w* | selfacting | reduc\w+ | reduz\w+ | reduktion\w*
-    \w*minder\w* | eigenmedium | autoregul\w*
+    \w*minder\w* | eigenmedium | autoregul\w* | blanket\w*
     """
 )
 _MANUAL_WORDS: Final = _words(
@@ -647,7 +685,8 @@ def kinds_of_words(text: str) -> tuple[Kind, ...]:
         return ()
     plain = _plain(text)
     for kind in Kind:
-        if plain.strip() == str(kind).lower().replace("/", " ") or text.strip().lower() == kind:
+        # An indicator may be a dial, a switch one for the hand: these two words alone decide nothing.
+        if text.strip().lower() == kind.lower() and kind not in (_K.INDICATOR, _K.SWITCH):
             return (kind,)
     alternatives = [a.strip() for a in re.split(r" ?[/|;()\[\]\n] ?| - ", plain) if a.strip()]
     found = [kinds for kinds in (_phrase(f" {a} ", plain) for a in alternatives) if kinds is not None]
@@ -662,9 +701,7 @@ def kinds_of_words(text: str) -> tuple[Kind, ...]:
 
 
 _WEAK: Final = frozenset({_K.INDICATOR, _K.GAUGE, _K.GLASS, _K.SOFT_FUNCTION})
-_STRONG: Final = frozenset(
-    {_K.TRANSMITTER, _K.ANALYSER, _K.SWITCH, _K.ELEMENT, _K.GAS_DETECTOR, _K.FIRE_DETECTOR}
-)
+_STRONG: Final = frozenset({_K.TRANSMITTER, _K.ANALYSER, _K.SWITCH, _K.ELEMENT, _K.GAS_DETECTOR, _K.FIRE_DETECTOR})
 
 
 def _plain(text: str) -> str:
@@ -672,7 +709,7 @@ def _plain(text: str) -> str:
     folded = unicodedata.normalize("NFKD", text.casefold())
     plain = "".join(c for c in folded if not unicodedata.combining(c))
     plain = re.sub(r"[‐-―−]", "-", plain).replace("Δ", "d").replace("'", " ")
-    for pattern, word in _ONE_WORD:
+    for pattern, word in _one_word():
         plain = pattern.sub(word, plain)
     plain = plain.replace(".", " ").replace("_", " ").replace(":", " ")
     return f" {' '.join(plain.split())} "
@@ -697,7 +734,7 @@ def _phrase(phrase: str, whole: str) -> tuple[Kind, ...] | None:
             if rest and head:
                 comes_with = _head(rest, whole) if cut and cut[1] == "with" else None
                 if comes_with and _completes(head[0], comes_with[0]):
-                    return comes_with
+                    return tuple(dict.fromkeys((*comes_with, *head)))
             return head
     return None
 
@@ -716,7 +753,7 @@ def _head(phrase: str, whole: str) -> tuple[Kind, ...] | None:
     best: tuple[int, int, int] | None = None
     kinds: tuple[Kind, ...] = ()
     seen: set[Kind] = set()
-    for at, (pattern, means) in enumerate(_HEADS):
+    for at, (pattern, means) in enumerate(_heads()):
         for match in pattern.finditer(phrase):
             if len(means) == 1:
                 seen.update(means)
@@ -741,7 +778,11 @@ def _head(phrase: str, whole: str) -> tuple[Kind, ...] | None:
             return (_K.GAS_DETECTOR, *kinds)
         if kinds == _FLOWMETER and "flow" in whole:
             return kinds
-        return (_K.TRANSMITTER, _K.ANALYSER) if kinds == (_K.TRANSMITTER,) else (_K.ANALYSER, *kinds)
+        if kinds == (_K.TRANSMITTER,):
+            return (_K.TRANSMITTER, _K.ANALYSER)
+        return tuple(dict.fromkeys((_K.ANALYSER, *kinds)))
+    if kinds == _DETECTOR and _PROCESS_VARIABLE.search(whole):
+        return (_K.SWITCH, _K.TRANSMITTER, _K.ELEMENT)
     if kinds == _SENSOR and re.search(r"temp|therm", whole):
         return (_K.ELEMENT, _K.TRANSMITTER)
     if kinds == _SENSOR and _PROCESS_VARIABLE.search(whole):
@@ -752,6 +793,8 @@ def _head(phrase: str, whole: str) -> tuple[Kind, ...] | None:
 def _valve(phrase: str, whole: str) -> tuple[Kind, ...]:
     """Which valve: the words before it say so, else those of the whole text."""
     for words in (phrase, whole):
+        if re.search("sicherheits(?:absperr|schnell)", words):
+            return (_K.ON_OFF_VALVE,)
         if _RELIEF_WORDS.search(words):
             return (_K.RELIEF_VALVE,)
         if re.search(r"\bsafety\b", words) and not _SHUT_WORDS.search(words):

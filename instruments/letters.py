@@ -31,7 +31,7 @@ Legality = Literal["legal", "ambiguous", "illegal"]
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class LetterMeaning:
-    """One letter in one place: ``edition`` is "1984", "2009" or "both"; ``users_choice`` means the plant defines it."""
+    """One letter in one place, in the edition "1984", "2009" or "both"; a user's choice the plant defines."""
 
     letter: str
     role: Role
@@ -40,65 +40,63 @@ class LetterMeaning:
     users_choice: bool = False
 
 
-def _row(letter: str, **roles: str) -> Iterator[LetterMeaning]:
-    for role, words in roles.items():
-        words, _, edition = words.partition("@")
-        users = words.startswith("user's choice")
+def _row(letter: str, roles: Mapping[Role, str]) -> Iterator[LetterMeaning]:
+    for role, text in roles.items():
+        words, _, edition = text.partition("@")
         yield LetterMeaning(
             letter=letter,
             role=role,
             words=words,
             edition=edition or "both",
-            users_choice=users,  # type: ignore[arg-type]
+            users_choice=words.startswith("user's choice"),
         )
 
 
-#: Every letter in every place it may stand, after ISA-5.1; an '@' names the only edition that has the meaning.
-LETTERS: tuple[LetterMeaning, ...] = tuple(
-    meaning
-    for letter, roles in {
-        "A": {"first": "analysis", "readout": "alarm"},
-        "B": {"first": "burner/combustion", "readout": "user's choice B", "output": "user's choice B"},
-        "C": {"first": "user's choice C", "output": "control", "function": "closed"},
-        "D": {"first": "user's choice D", "modifier": "differential", "function": "deviation"},
-        "E": {"first": "voltage", "readout": "element"},
-        "F": {"first": "flow", "modifier": "ratio"},
-        "G": {"first": "user's choice G", "readout": "gauge/glass"},
-        "H": {"first": "hand", "function": "high"},
-        "I": {"first": "current", "readout": "indicate"},
-        "J": {"first": "power", "modifier": "scan@1984", "readout": "scan@2009"},
-        "K": {"first": "time/schedule", "modifier": "time rate of change", "output": "control station"},
-        "L": {"first": "level", "readout": "light", "function": "low"},
-        "M": {"first": "user's choice M", "modifier": "momentary@1984", "function": "middle"},
-        "N": {"first": "user's choice N", "readout": "user's choice N", "output": "user's choice N"},
-        "O": {"first": "user's choice O", "readout": "orifice", "function": "open"},
-        "P": {"first": "pressure", "readout": "test point"},
-        "Q": {"first": "quantity", "modifier": "total", "readout": "totalise"},
-        "R": {"first": "radiation", "readout": "record", "function": "run"},
-        "S": {"first": "speed/frequency", "modifier": "safety", "output": "switch", "function": "stop"},
-        "T": {"first": "temperature", "output": "transmit"},
-        "U": {"first": "multivariable", "readout": "multifunction", "output": "multifunction"},
-        "V": {"first": "vibration/mech. analysis", "output": "valve"},
-        "W": {"first": "weight/force", "readout": "well/probe"},
-        "X": {
-            "first": "unclassified",
-            "modifier": "x-axis",
-            "readout": "unclassified",
-            "output": "unclassified",
-        },
-        "Y": {"first": "event/state/presence", "modifier": "y-axis", "output": "relay/compute/convert"},
-        "Z": {"first": "position/dimension", "modifier": "z-axis/SIS", "output": "actuator/driver"},
-    }.items()
-    for meaning in _row(letter, **roles)
-)
+# Behind an '@' stands the only edition that has the meaning.
+_TABLE: Mapping[str, Mapping[Role, str]] = {
+    "A": {"first": "analysis", "readout": "alarm"},
+    "B": {"first": "burner/combustion", "readout": "user's choice B", "output": "user's choice B"},
+    "C": {"first": "user's choice C", "output": "control", "function": "closed"},
+    "D": {"first": "user's choice D", "modifier": "differential", "function": "deviation"},
+    "E": {"first": "voltage", "readout": "element"},
+    "F": {"first": "flow", "modifier": "ratio"},
+    "G": {"first": "user's choice G", "readout": "gauge/glass"},
+    "H": {"first": "hand", "function": "high"},
+    "I": {"first": "current", "readout": "indicate"},
+    "J": {"first": "power", "modifier": "scan@1984", "readout": "scan@2009"},
+    "K": {"first": "time/schedule", "modifier": "time rate of change", "output": "control station"},
+    "L": {"first": "level", "readout": "light", "function": "low"},
+    "M": {"first": "user's choice M", "modifier": "momentary@1984", "function": "middle"},
+    "N": {"first": "user's choice N", "readout": "user's choice N", "output": "user's choice N"},
+    "O": {"first": "user's choice O", "readout": "orifice", "function": "open"},
+    "P": {"first": "pressure", "readout": "test point"},
+    "Q": {"first": "quantity", "modifier": "total", "readout": "totalise"},
+    "R": {"first": "radiation", "readout": "record", "function": "run"},
+    "S": {"first": "speed/frequency", "modifier": "safety", "output": "switch", "function": "stop"},
+    "T": {"first": "temperature", "output": "transmit"},
+    "U": {"first": "multivariable", "readout": "multifunction", "output": "multifunction"},
+    "V": {"first": "vibration/mech. analysis", "output": "valve"},
+    "W": {"first": "weight/force", "readout": "well/probe"},
+    "X": {
+        "first": "unclassified",
+        "modifier": "x-axis",
+        "readout": "unclassified",
+        "output": "unclassified",
+    },
+    "Y": {"first": "event/state/presence", "modifier": "y-axis", "output": "relay/compute/convert"},
+    "Z": {"first": "position/dimension", "modifier": "z-axis/SIS", "output": "actuator/driver"},
+}
+
+#: Every letter in every place it may stand, after ISA-5.1.
+LETTERS: tuple[LetterMeaning, ...] = tuple(m for letter, roles in _TABLE.items() for m in _row(letter, roles))
 
 #: First letters that mean nothing until the plant says what (ISA-5.1: user's choice).
 USERS_CHOICE = frozenset(m.letter for m in LETTERS if m.role == "first" and m.users_choice)
 
-#: First letters of the measuring circuits of KKS (VGB-B 105, from memory): CP is a pressure, CT a temperature.
+#: First letters of the measuring circuits of KKS (VGB-B 105, from memory): CP pressure, CT temperature.
 KKS_FIRST: Mapping[str, str] = {
-    "CP": "P", "CT": "T", "CF": "F", "CL": "L", "CG": "Z", "CS": "S", "CY": "V", "CQ": "A", "CE": "E", "CK": "K",
-    "CM": "M", "CW": "W", "CR": "R", "CD": "D", "CH": "H", "CU": "U",
+    "CP": "P", "CT": "T", "CF": "F", "CL": "L", "CG": "Z", "CS": "S", "CY": "V", "CQ": "A", "CE": "E",
+    "CK": "K", "CM": "M", "CW": "W", "CR": "R", "CD": "D", "CH": "H", "CU": "U",
 }  # fmt: skip
 
 _WORDS: Mapping[tuple[str, str], str] = {(m.role, m.letter): m.words for m in LETTERS}
@@ -152,9 +150,7 @@ class _Parse:
     error: str = ""
 
 
-def read_letters(
-    letters: str, *, users_letters: Iterable[str] = frozenset(), edition: str = "2009"
-) -> LettersReading:
+def read_letters(letters: str, *, users_letters: Iterable[str] = frozenset(), edition: str = "2009") -> LettersReading:
     """Read identification letters by the table and the rules of succession.
 
     Parameters
@@ -414,9 +410,7 @@ _MEANT_ELSEWHERE = {"PH": ("AT", "AIT", "AE"), "PHT": ("AT", "AIT"), "PHIT": ("A
 def _proposals(first: str, modifiers: str) -> tuple[tuple[str, int], ...]:
     """Legal combinations under a first letter, made from the table, with how usual each is."""
     levels = ("", "H", "L", "HH", "LL", "HHH", "LLL")
-    bodies = {
-        f"{r}{o}" for r in ("", "I", "R", "Q", "IR", "IQ", "IA", "RQ") for o in ("", *"CSTVY", "CV", "TS")
-    }
+    bodies = {f"{r}{o}" for r in ("", "I", "R", "Q", "IR", "IQ", "IA", "RQ") for o in ("", *"CSTVY", "CV", "TS")}
     bodies |= {f"{b}{h}" for b in ("A", "S", "IS", "IA") for h in levels} | set(_USUAL_BODIES)
     found: dict[str, int] = {}
     for modifier in ("", *modifiers):
@@ -445,9 +439,7 @@ def _distance(a: str, b: str) -> int:
 
 
 @lru_cache(maxsize=4096)
-def nearest_legal_letters(
-    letters: str, *, limit: int = 4, codes: frozenset[str] = frozenset()
-) -> tuple[str, ...]:
+def nearest_legal_letters(letters: str, *, limit: int = 4, codes: frozenset[str] = frozenset()) -> tuple[str, ...]:
     """The legal letters nearest to letters that break the rules, the likeliest first.
 
     Parameters

@@ -12,7 +12,8 @@ __all__ = ["dimension_allowed", "measured_variable"]
 
 _VARIABLES: Final[Mapping[str, str]] = {
     "A": "analysis", "B": "burner", "E": "voltage", "F": "flow", "H": "hand", "I": "current", "J": "power",
-    "K": "time", "L": "level", "P": "pressure", "Q": "quantity", "R": "radiation", "S": "speed", "T": "temperature",
+    "K": "time", "L": "level", "P": "pressure", "Q": "quantity", "R": "radiation", "S": "speed",
+    "T": "temperature",
     "U": "multivariable", "V": "vibration", "W": "weight", "X": "unclassified", "Y": "state", "Z": "position",
 }  # fmt: skip
 _MODIFIED: Final[Mapping[tuple[str, str], str]] = {
@@ -55,7 +56,7 @@ def measured_variable(
     return _MODIFIED.get((first, reading.modifier[:1])) or _VARIABLES.get(first)
 
 
-#: Kinds of unit that each first letter's range may have, and those of which nothing is said (common practice).
+#: Kinds of unit that each first letter's range may have, and those of which nothing is said (practice).
 _DIMENSIONS: Final[Mapping[str, tuple[frozenset[str], frozenset[str]]]] = {
     first: (frozenset(allowed.split()), frozenset(open_.split()))
     for first, allowed, open_ in (
@@ -118,9 +119,7 @@ def dimension_allowed(
     reading = read_letters(letters, users_letters=USERS_CHOICE)
     if reading.legal == "illegal":
         return None
-    return _allowed(
-        reading.first, reading.modifier, reading.function_letters, unit_kind, dp_body, square_root_known
-    )
+    return _allowed(reading.first, reading.modifier, reading.function_letters, unit_kind, dp_body, square_root_known)
 
 
 def _allowed(
@@ -137,7 +136,7 @@ def _allowed(
     allowed, untold = _DIMENSIONS[first]
     if unit_kind in allowed:
         return True
-    if "C" in functions and unit_kind == "ratio":
+    if "C" in functions and unit_kind == "ratio" and modifier != "F":
         # A controller's output stands in percent.
         return None
     if "E" in functions and unit_kind in ("volt", "curr", "res", "length", "speed"):

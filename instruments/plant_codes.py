@@ -26,8 +26,8 @@ class PlantCode:
     letters: str | None = None
 
 
-#: Codes that nearly every plant writes (common practice, no source). None has a first letter: whether SDV-1201
-#: belongs to loop X-1201, SDV-1201 or P-1201 is for each plant to say.
+#: Codes that nearly every plant writes (common practice, no source). None has a first letter: whether
+#: SDV-1201 belongs to loop X-1201, SDV-1201 or P-1201 is for each plant to say.
 CODES: Mapping[str, PlantCode] = MappingProxyType(
     {
         code: PlantCode(code=code, meaning=meaning, kind=kind, letters=letters)

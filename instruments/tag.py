@@ -73,7 +73,7 @@ class TagReading:
     note
         What stands beside the tag in its cell.
     legal
-        "legal", "ambiguous" or "illegal" by the rules of succession; "code" for a plant code; "" where not asked.
+        "legal", "ambiguous" or "illegal" by the rules of succession; "code"; "" where not asked.
     undefined
         The first letter, where it is a user's choice that the plant has not defined.
     code
@@ -446,8 +446,8 @@ def is_valve(reading: TagReading) -> bool:
 def assembly_key(reading: TagReading) -> tuple[str, str] | None:
     """What a valve and the devices of its assembly share: prefix and number; None for what can be in none.
 
-    A valve, and whatever begins with X, Z, H or Y: ZSO-1201, XY-1201 and HS-1201 belong to the loop of the valve
-    with the number 1201. Several valves may share a number; each is then as likely.
+    A valve, and whatever begins with X, Z, H or Y: ZSO-1201, XY-1201 and HS-1201 belong to the loop of the
+    valve with the number 1201. Several valves may share a number; each is then as likely.
     """
     if not reading.parsed or reading.scheme in ("kks", ""):
         return None
@@ -459,7 +459,8 @@ def assembly_key(reading: TagReading) -> tuple[str, str] | None:
 
 
 _BARE_LOOP = re.compile(
-    r"(?:LOOP|LP|KREIS|L)?[-. /:]?(?:(?P<p>[0-9]{1,4}[A-Z]?)[-./ ])?(?P<n>[0-9]{1,6})(?:[-./ ]?(?P<x>[A-Z]{1,2}))?"
+    r"(?:LOOP|LP|KREIS|L)?[-. /:]?(?:(?P<p>[0-9]{1,4}[A-Z]?)[-./ ])?(?P<n>[0-9]{1,6})"
+    r"(?:[-./ ]?(?P<x>[A-Z]{1,2}))?"
 )
 
 
@@ -556,13 +557,15 @@ _AS_LETTER = str.maketrans("01", "OI")
 
 
 def look_alike_key(tag: TagReading | str, *, profile: TagProfile = DEFAULT) -> Key:
-    """By what two tags look the same: as `match_key`, without leading zeros and with digits for letters like them.
+    """By what two tags look the same: as `match_key`, without leading zeros, digits for letters like them.
 
-    O and 0, I and 1, small l and 1, Cyrillic and Greek letters like Latin ones. Capital L is no 1: TE-12L is the
-    twelfth element of TE-12.
+    O and 0, I and 1, small l and 1, Cyrillic and Greek letters like Latin ones. Capital L is no 1: TE-12L is
+    the twelfth element of TE-12.
 
-    >>> look_alike_key("FT-1O1") == look_alike_key("FT-0101"), look_alike_key("TE-12L") == look_alike_key("TE-121")
-    (True, False)
+    >>> look_alike_key("FT-1O1") == look_alike_key("FT-0101")
+    True
+    >>> look_alike_key("TE-12L") == look_alike_key("TE-121")
+    False
     """
     reading = read_tag(tag, profile=profile) if isinstance(tag, str) else tag
     if reading.parsed and (reading.legal != "illegal" or reading.scheme == "kks"):
@@ -588,7 +591,7 @@ def look_alike_key(tag: TagReading | str, *, profile: TagProfile = DEFAULT) -> K
 
 
 def _digits_out_of(text: str, number: str, suffix: str) -> tuple[str, str]:
-    """The number and suffix with look-alike letters at the front of the suffix read as digits of the number."""
+    """The number and suffix, with look-alike letters at the front of the suffix read as digits."""
     if not suffix or "/" in suffix or suffix[0].isdigit():
         return number, suffix
     if _lower_l(text, suffix):
@@ -598,7 +601,7 @@ def _digits_out_of(text: str, number: str, suffix: str) -> tuple[str, str]:
 
 
 def _mended(reading: TagReading, profile: TagProfile) -> TagReading | None:
-    """The reading of a tag in which letters and digits have been exchanged for their look-alikes; None if none is."""
+    """The reading of a tag once letters and digits are exchanged for their look-alikes, if it is one."""
     text = _with_small_l(reading.text) if reading.text else reading.normalised
     # The tokens behind the first that holds letters are numbers; the first itself is letters.
     pieces = re.split(r"([-./ ])", text)
@@ -673,22 +676,15 @@ def canonical_tag(reading: TagReading, *, profile: TagProfile = DEFAULT) -> str:
     """
     if not reading.parsed:
         return reading.normalised
-    return (
-        _written(profile, reading.prefix, reading.letters, reading.number, reading.suffix)
-        or reading.normalised
-    )
-
-
-_FORMS: Final = ("{p}-{l}-{n}{x}", "{p}{l}{n}{x}", "{p}-{l}{n}{x}", "{p}{l}-{n}{x}", "{l}-{p}-{n}{x}", "{l}-{n}{x}",
-                 "{l}{n}{x}")  # fmt: skip
+    return _written(profile, reading.prefix, reading.letters, reading.number, reading.suffix) or reading.normalised
 
 
 def _written(profile: TagProfile, prefix: str, letters: str, number: str, suffix: str) -> str | None:
-    """The parts as a tag that fits the profile and reads as these parts; zeros may be put before the number."""
+    """The parts as a tag that fits the profile and reads as these parts; zeros may come before the number."""
     plain = profile.write(prefix, letters, number, suffix)
     if profile.parts(plain) == (prefix, letters, number, suffix):
         return plain
-    # A plant's own pattern does not say how it is written: try the usual forms, and numbers filled with zeros.
+    # A plant's own pattern does not say how it is written: try the usual forms, and zeros before the number.
     for width in range(len(number), 7):
         filled = number.zfill(width)
         for text in _forms(profile.separator, prefix, letters, filled, suffix):
@@ -734,8 +730,8 @@ def nearest_fitting_tag(
 ) -> str | None:
     """The tag that fits the plant's pattern and is nearest to a text that does not; None where none is near.
 
-    It mends separators and brackets, drops notes, puts digits for letters that look like them and the reverse,
-    and fills the number with zeros where the pattern asks for more digits.
+    It mends separators and brackets, drops notes, puts digits for letters that look like them and the
+    reverse, and fills the number with zeros where the pattern asks for more digits.
 
     >>> [nearest_fitting_tag(t) for t in ("PT_1001", "FT-IO1", "pt:1001", "SPARE")]
     ['PT-1001', 'FT-101', 'PT-1001', None]

@@ -77,7 +77,7 @@ NOT_TAGS: Final = frozenset(
     ]
 )
 
-# Words that people write beside a tag: its state, who supplies it, or which of a motor's or valve's signals it is.
+# Words that people write beside a tag: its state, its supplier, which of a motor's or valve's signals it is.
 _NOTE_WORDS: Final = frozenset(
     [
         "NEW",
@@ -219,11 +219,11 @@ _LETTERS = re.compile(r"((?:[0-9]{1,4}[A-Z]?[-./ ]?)?)([A-Z]{1,6})")
 def split_note(text: str, *, profile: TagProfile = DEFAULT) -> tuple[str, str]:
     """A cell's tag and the note that stands beside it; the note is empty where there is none.
 
-    Only a tag that reads has a note: marks around it, anything in brackets behind it, and the words that people
-    write there (its state, its supplier, which signal of a motor or valve it is).
+    Only a tag that reads has a note: marks around it, anything in brackets behind it, and the words that
+    people write there (its state, its supplier, which signal of a motor or valve it is).
 
-    >>> split_note("PT-1001 (Note 3)"), split_note("*PT-1001"), split_note("PT-1001 NEW"), split_note("PT-1001")
-    (('PT-1001', 'Note 3'), ('PT-1001', '*'), ('PT-1001', 'NEW'), ('PT-1001', ''))
+    >>> split_note("PT-1001 (Note 3)"), split_note("PT-1001 NEW"), split_note("PT-1001")
+    (('PT-1001', 'Note 3'), ('PT-1001', 'NEW'), ('PT-1001', ''))
     """
     whole = tidy(text)
     if len(whole) > _LONGEST_CELL:
@@ -252,9 +252,7 @@ def split_note(text: str, *, profile: TagProfile = DEFAULT) -> tuple[str, str]:
     for at in [m.start() for m in re.finditer(r"[ ,:-]", tag)][:12]:
         head, tail = tag[:at], tag[at:].strip(" ,:-")
         word = re.match(r"[^\W\d_]+(?:-[^\W\d_]+)?", tail)
-        known = word is not None and (
-            word[0].upper() in _NOTE_WORDS or word[0].upper().split("-")[0] in _NOTE_WORDS
-        )
+        known = word is not None and (word[0].upper() in _NOTE_WORDS or word[0].upper().split("-")[0] in _NOTE_WORDS)
         if known and profile.parts(latin(head)[0]):
             return head, ", ".join(filter(None, [*notes, tail]))
     if notes and tags_of_cell(latin(tag)[0], profile=profile):
@@ -263,7 +261,7 @@ def split_note(text: str, *, profile: TagProfile = DEFAULT) -> tuple[str, str]:
 
 
 def tags_of_cell(normalised: str, *, profile: TagProfile = DEFAULT) -> tuple[str, ...]:
-    """The tags that one cell means, where it holds two tags, a list or a range; empty where it holds none or one.
+    """The tags that one cell means, where it holds two tags, a list or a range; else none.
 
     >>> tags_of_cell("PT-1001A~C"), tags_of_cell("FIT-0101/0102"), tags_of_cell("LI/LAH-12")
     (('PT-1001A', 'PT-1001B', 'PT-1001C'), ('FIT-0101', 'FIT-0102'), ('LI-12', 'LAH-12'))
@@ -279,7 +277,7 @@ def tags_of_cell(normalised: str, *, profile: TagProfile = DEFAULT) -> tuple[str
 
 
 class _Tag:
-    """One tag of a cell: the text in front of its letters, its letters, separator, number, separator and suffix."""
+    """One tag of a cell: the text before its letters, its letters, separator, number and suffix."""
 
     __slots__ = ("head", "letters", "middle", "number", "suffix")
 
@@ -301,7 +299,7 @@ class _Tag:
 
 
 class _Cell:
-    """Reads the pieces of one cell from left to right; each may leave out what it shares with the one before."""
+    """Reads the pieces of one cell from left to right; each may leave out what it shares with the last."""
 
     def __init__(self, profile: TagProfile) -> None:
         self.profile = profile
@@ -402,9 +400,7 @@ class _Cell:
             first, rest = self._whole(piece[:hyphen]), piece[hyphen + 1 :]
             if first is None:
                 continue
-            end = self._whole(rest) or (
-                None if re.fullmatch("[0-9]{1,2}", rest) else self._short(rest, first)
-            )
+            end = self._whole(rest) or (None if re.fullmatch("[0-9]{1,2}", rest) else self._short(rest, first))
             if end:
                 between = self._between(first, end, most=_MOST_BY_HYPHEN)
                 if between:
@@ -447,7 +443,7 @@ class _Cell:
 
     @staticmethod
     def _shortened(base: str, letters: str) -> str:
-        """Letters that only replace the end of the first group: C behind ZSO is ZSC, LL behind LSHH is LSLL."""
+        """Letters that replace the end of the first group: C behind ZSO is ZSC, LL behind LSHH is LSLL."""
         if not re.fullmatch(r"[HLMCORS]{1,3}", letters) and len(letters) > 1:
             return letters
         whole = letters_stem(base) + letters

@@ -1,4 +1,4 @@
-"""How a plant writes its tags: the profiles that are known, a plant's own pattern, and which one a list follows."""
+"""How a plant writes its tags: the known profiles, a plant's own pattern, and which one a list follows."""
 
 from __future__ import annotations
 
@@ -20,7 +20,7 @@ __all__ = [
     "profile_from_pattern",
 ]
 
-# CFIHOS 2.0 gives a tag at most 33 characters; the rest is for blanks. Nothing longer is matched against a pattern.
+# CFIHOS 2.0 gives a tag at most 33 characters; the rest is for blanks. Nothing longer meets a pattern.
 LONGEST_TAG: Final = 64
 
 _SUFFIX = r"[A-Z]{1,2}[0-9]?(?:/[A-Z0-9]{1,2})*"
@@ -30,10 +30,10 @@ _SUFFIX = r"[A-Z]{1,2}[0-9]?(?:/[A-Z0-9]{1,2})*"
 class TagProfile:
     """One way of writing tags.
 
-    ``pattern`` has the groups p (prefix), l (letters), n (number), x (suffix), and p2, x2 for another place of
-    the prefix or suffix. ``separator`` is the canonical one. ``examples`` are tags that it must read.
-    ``scheme`` says whose letters they are, and where they stand: "isa", "area" (ISA letters in front of area and
-    number), "kks", or "" (free text: letters are not asked for).
+    ``pattern`` has the groups p (prefix), l (letters), n (number), x (suffix), and p2, x2 for another place
+    of the prefix or suffix. ``separator`` is the canonical one. ``examples`` are tags that it must read.
+    ``scheme`` says whose letters they are, and where they stand: "isa", "area" (ISA letters in front of area
+    and number), "kks", or "" (free text: letters are not asked for).
     """
 
     name: str
@@ -41,8 +41,8 @@ class TagProfile:
     separator: str = "-"
     examples: tuple[str, ...] = ()
     scheme: str = "isa"
-    underscores: bool = False
     regex: re.Pattern[str] = field(repr=False, compare=False)
+    places: tuple[int, ...] = field(repr=False, compare=False)
 
     def parts(self, normalised: str) -> tuple[str, str, str, str] | None:
         """Prefix, letters, number and suffix of a normalised tag; None where it does not fit."""
@@ -51,13 +51,9 @@ class TagProfile:
         match = self.regex.fullmatch(normalised)
         if match is None:
             return None
-        groups = match.groupdict("")
-        return (
-            groups.get("p") or groups.get("p2", ""),
-            groups["l"],
-            groups["n"],
-            groups.get("x") or groups.get("x2", ""),
-        )
+        groups = (*match.groups(""), "")
+        p, p2, l, n, x, x2 = self.places  # noqa: E741
+        return (groups[p] or groups[p2], groups[l], groups[n], groups[x] or groups[x2])
 
     def write(self, prefix: str, letters: str, number: str, suffix: str) -> str:
         """A tag from its parts, in the canonical form of this profile."""
@@ -72,7 +68,10 @@ class TagProfile:
 
 
 def _profile(name: str, pattern: str, **rest: Any) -> TagProfile:
-    return TagProfile(name=name, pattern=pattern, regex=re.compile(pattern, re.IGNORECASE), **rest)
+    regex = re.compile(pattern, re.IGNORECASE)
+    # The last place is empty text: that of a group which the pattern does not have.
+    places = tuple(regex.groupindex.get(group, 0) - 1 for group in ("p", "p2", "l", "n", "x", "x2"))
+    return TagProfile(name=name, pattern=pattern, regex=regex, places=places, **rest)
 
 
 def _isa(separators: str, **rest: Any) -> TagProfile:
@@ -146,20 +145,20 @@ PROFILES: Mapping[str, TagProfile] = MappingProxyType(
 
 DEFAULT: Final = PROFILES["isa-hyphen"]
 
-# The same with the underscore, for plants that write nothing else; elsewhere PT_1001 is a misspelling of PT-1001.
+# The same with the underscore, for plants that write little else; elsewhere PT_1001 is a slip for PT-1001.
 _UNDERSCORED = (
-    _isa("[-./ _]", name="isa-hyphen", separator="_", underscores=True),
-    _unit_prefix("[-./ _]", name="isa-unit-prefix", separator="_", underscores=True),
+    _isa("[-./ _]", name="isa-hyphen", separator="_"),
+    _unit_prefix("[-./ _]", name="isa-unit-prefix", separator="_"),
 )
 
 
 def best_profile(texts: Iterable[str]) -> TagProfile:
     """The profile that most of a list's tags fit, with the separator that most of them use.
 
-    Where fewer than half fit any, the list is free text: only uniqueness is asked of its tags. The order of the
-    texts and repeated ones change nothing.
+    Where fewer than half fit any, the list is free text: only uniqueness is asked of its tags. The order of
+    the texts and repeated ones change nothing.
 
-    >>> best_profile(["20PT0034", "20PT0035", "20-FT-1"]).name, best_profile(["Boiler A", "Pump"]).name
+    >>> best_profile(["20PT0034", "20PT0035", "20-FT-1"]).name, best_profile(["4th pump", "PT1/PT2 out"]).name
     ('isa-hyphen', 'free-text')
     """
     tags = {n for n in map(normalise_tag, texts) if any(c.isdigit() for c in n)}
@@ -247,12 +246,11 @@ def profile_from_pattern(pattern: str) -> TagProfile:
     if odd:
         raise ValueError(f"the tag pattern names the group {odd[0]}; it may name p, l, n, x, p2 and x2")
     _refuse_slow(pattern)
-    profile = TagProfile(name="plant pattern", pattern=pattern, regex=regex)
-    return replace(profile, separator=_separator_of(pattern))
+    return _profile("plant pattern", pattern, separator=_separator_of(pattern))
 
 
 def _separator_of(pattern: str) -> str:
-    """The separator that a pattern itself writes in front of its number; a hyphen where that cannot be seen."""
+    """The separator that a pattern writes in front of its number; a hyphen where that cannot be seen."""
     found = re.search(r"(\\?[-./ _]|\\s|\[[-./ _\\]+\])(\?|\*|\{0,1\})?\)?\(\?P<n>", pattern)
     if not found:
         return "" if re.search(r"\)\(\?P<n>", pattern) else "-"
@@ -276,10 +274,11 @@ _Nodes = Sequence[_Node]
 
 
 def _refuse_slow(pattern: str) -> None:
-    """Raise ValueError for a pattern that can part one text in very many ways, as repeats inside of repeats can.
+    """Raise ValueError for a pattern that can part one text in very many ways, as repeats in repeats can.
 
-    Wherever a pattern may go on or leave off, the next character should say which; where it does not, the ways
-    multiply. The parse tree is the standard library's own; its module has no public name since Python 3.11.
+    Wherever a pattern may go on or leave off, the next character should say which; where it does not, the
+    ways multiply. The parse tree is the standard library's own; its module has no public name since
+    Python 3.11.
     """
     from re import _parser  # type: ignore[attr-defined]
 
@@ -299,8 +298,8 @@ def _ways(nodes: _Nodes, follow: frozenset[str], *, depth: int = 0) -> int:
             least, most, body = int(value[0]), min(int(value[1]), LONGEST_TAG), value[2]
             if most > 1 and (_ways(body, _starts(body, _NOTHING), depth=depth + 1) > 1 or not _width(body)):
                 raise ValueError(
-                    "the tag pattern has a repeat inside of a repeat, or a choice inside of one, and the next "
-                    "character does not tell which goes on; such a pattern can take for ever"
+                    "the tag pattern has a repeat inside of a repeat, or a choice inside of one, and the "
+                    "next character does not tell which goes on; such a pattern can take for ever"
                 )
             ways *= _ways(body, behind, depth=depth + 1)
             if most > least and _characters(body) & behind:
@@ -320,8 +319,8 @@ def _ways(nodes: _Nodes, follow: frozenset[str], *, depth: int = 0) -> int:
             raise ValueError("the tag pattern refers back to a group; such a pattern can take for ever")
         if ways > _MOST_WAYS:
             raise ValueError(
-                "the tag pattern can part one text in too many ways; write what separates its repeats, or how many "
-                "characters each may have"
+                "the tag pattern can part one text in too many ways; write what separates its repeats, or "
+                "how many characters each may have"
             )
     return ways
 

@@ -1,4 +1,4 @@
-"""The spelling of a tag before it is read: blanks, dashes, hidden characters, and letters that only look Latin."""
+"""The spelling of a tag before it is read: blanks, dashes, hidden characters, letters that look Latin."""
 
 from __future__ import annotations
 
@@ -8,9 +8,7 @@ import unicodedata
 __all__ = ["latin", "normalise_tag", "tidy"]
 
 # Dashes that people and spreadsheets put for a hyphen; the soft hyphen stands where a browser broke a tag.
-_DASHES = dict.fromkeys(
-    (0x00AD, *range(0x2010, 0x2016), 0x2043, 0x2212, 0x02D7, 0x207B, 0xFE58, 0xFE63, 0xFF0D), "-"
-)
+_DASHES = dict.fromkeys((0x00AD, *range(0x2010, 0x2016), 0x2043, 0x2212, 0x02D7, 0x207B, 0xFE58, 0xFE63, 0xFF0D), "-")
 _CYRILLIC = dict(zip("АВЕЅІЈКМНОРСТУХ", "ABESIJKMHOPCTYX", strict=True))
 _GREEK = dict(zip("ΑΒΕΖΗΙΚΜΝΟΡΤΥΧ", "ABEZHIKMNOPTYX", strict=True))
 _LOOK_ALIKES = _CYRILLIC | _GREEK
@@ -22,7 +20,7 @@ _AROUND = re.compile(r" ?([-/]) ?")
 
 
 def tidy(text: str) -> str:
-    """A tag as written, with plain blanks and hyphens and without hidden characters; case and letters are kept.
+    """A tag as written, with plain blanks and hyphens and no hidden characters; case and letters are kept.
 
     >>> tidy("pt\\u2011 1001\\u200b ")
     'pt-1001'
@@ -40,7 +38,7 @@ def _is_hidden(character: str) -> bool:
 
 
 def latin(text: str) -> tuple[str, str]:
-    """A tag in upper case with Latin letters for those that only look so, and the characters that were replaced."""
+    """A tag in upper case with Latin letters for those that only look so, and the characters replaced."""
     upper = text.upper()
     if upper.isascii():
         return upper, ""
@@ -67,7 +65,7 @@ def normalise(text: str) -> tuple[str, str]:
     done, odd = latin(tidy(text))
     if done.isascii():
         return done, odd
-    # Upper case can undo NFKC, and a replaced letter can join the accent behind it; it settles at once or twice.
+    # Upper case can undo NFKC, and a replaced letter can join the accent behind it; it settles soon.
     for _ in range(8):
         again, more = latin(tidy(done))
         if again == done:

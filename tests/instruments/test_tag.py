@@ -161,7 +161,11 @@ def test_hidden_characters_go(hidden: str) -> None:
 
 @pytest.mark.parametrize(
     ("odd", "plain"),
-    [("АВЕКМНОРСТХУІЅЈ", "ABEKMHOPCTXYISJ"), ("ΑΒΕΖΗΙΚΜΝΟΡΤΥΧ", "ABEZHIKMNOPTYX"), ("рт", "PT")],
+    [
+        ("АВЕКМНОРСТХУІЅЈ", "ABEKMHOPCTXYISJ"),
+        ("ΑΒΕΖΗΙΚΜΝΟΡΤΥΧ", "ABEZHIKMNOPTYX"),
+        ("рт", "PT"),
+    ],
 )
 def test_look_alikes_become_latin(odd: str, plain: str) -> None:
     assert normalise_tag(odd) == plain
@@ -184,7 +188,8 @@ def test_any_text_is_read(text: str) -> None:
 
 
 TAG_LIKE = st.from_regex(
-    r"(?:[0-9]{1,2}[A-C]?[-. ]?)?[A-Z]{1,5}[-. _/]?[0-9OIl]{1,5}[-. ]?(?:[A-Z]{0,2}|[0-9]{1,2})(?:/[A-Z])?( ?\(?[A-Za-z ]{0,9}\)?)?",
+    r"(?:[0-9]{1,2}[A-C]?[-. ]?)?[A-Z]{1,5}[-. _/]?[0-9OIl]{1,5}[-. ]?(?:[A-Z]{0,2}|[0-9]{1,2})"
+    r"(?:/[A-Z])?( ?\(?[A-Za-z ]{0,9}\)?)?",
     fullmatch=True,
 )
 
@@ -536,7 +541,8 @@ def test_a_pattern_that_cannot_be_used_says_why(pattern: str, why: str) -> None:
     "pattern",
     [
         DEFAULT.pattern,
-        r"^(?:(?P<p>[0-9]{1,4}[A-Z]?)[-./ ]|(?P<p2>[0-9]{1,4}))?(?P<l>[A-Z]{1,6})[-./ ]?(?P<n>[0-9]{1,6})(?:[-./ ]?(?P<x>[A-Z]{1,2}[0-9]?(?:/[A-Z0-9]{1,2})*)|-(?P<x2>[0-9]{1,2}))?$",
+        r"^(?:(?P<p>[0-9]{1,4}[A-Z]?)[-./ ]|(?P<p2>[0-9]{1,4}))?(?P<l>[A-Z]{1,6})[-./ ]?(?P<n>[0-9]{1,6})"
+        r"(?:[-./ ]?(?P<x>[A-Z]{1,2}[0-9]?(?:/[A-Z0-9]{1,2})*)|-(?P<x2>[0-9]{1,2}))?$",
         r"(?P<l>[A-Z]+)-?(?P<n>\d+)(?P<x>[A-Z]*)",
         r"(?P<p>.*)-(?P<l>[A-Z]+)-(?P<n>\d+).*",
         r"(?P<l>(?:FT|PT|TT|LT))(?P<n>\d+)",
