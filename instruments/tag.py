@@ -368,7 +368,8 @@ def _digit_slip(text: str, suffix: str) -> str:
         return ""
     if _lower_l(text, suffix):
         return "lower-case l after digits: probably digit 1"
-    if re.fullmatch("[OI][OI0-9]*", suffix):
+    # A lone I may be the ninth of a lettered set: TE-12A to TE-12L.
+    if suffix != "I" and re.fullmatch("[OI][OI0-9]*", suffix):
         where = "between" if suffix[1:].isdigit() else "after"
         return f"letter {suffix[0]} {where} digits: probably {'0' if suffix[0] == 'O' else '1'}"
     return ""
@@ -740,7 +741,9 @@ def nearest_fitting_tag(
     if read.means or read.placeholder or len(read.normalised) > 80:
         return None
     if read.parsed and read.legal != "illegal":
-        number, suffix = _digits_out_of(read.text, read.number, read.suffix)
+        number, suffix = read.number, read.suffix
+        if suffix and _digit_slip(read.text, suffix):
+            number, suffix = _digits_out_of(read.text, number, suffix)
         done = _written(profile, read.prefix, read.letters, number, suffix)
         return done if done != normalise_tag(text) else None
     tag = _with_small_l(split_note(text, profile=profile)[0])

@@ -71,6 +71,8 @@ UNSEEN = {
     "LT-000": ("", "LT", "000", "", "L-000", "warn"),
     "PT-2l": ("", "PT", "2", "L", "P-2", "warn"),
     "PT-20O": ("", "PT", "20", "O", "P-20", "warn"),
+    "FT-1I1": ("", "FT", "1", "I1", "F-1", "warn"),
+    "TE-12I": ("", "TE", "12", "I", "T-12", "valid"),  # the ninth of a lettered set
     "PT-2O2": ("", "PT", "2", "O2", "P-2", "warn"),
     "ТТ-300": ("", "TT", "300", "", "T-300", "warn"),  # Cyrillic
     "ΡΤ-300": ("", "PT", "300", "", "P-300", "warn"),  # Greek
@@ -397,9 +399,7 @@ def test_every_profile_reads_its_examples(name: str) -> None:
         reading = read_tag(example, profile=profile)
         assert reading.parsed, example
         assert reading.verdict in ("valid", "site"), example
-        assert match_key(read_tag(canonical_tag(reading, profile=profile), profile=profile)) == match_key(
-            reading
-        )
+        assert match_key(read_tag(canonical_tag(reading, profile=profile), profile=profile)) == match_key(reading)
 
 
 @pytest.mark.parametrize(
@@ -589,6 +589,7 @@ def test_a_plants_profile_by_name_or_pattern() -> None:
         ("FT-10l", "FT-101"),
         ("PT-1001", None),
         ("PT-1001A", None),
+        ("TE-12I", None),
         ("TCI-4", None),
         ("ZIO-3", None),
         ("SPARE", None),
