@@ -211,13 +211,16 @@ class Plant:
         return self._notes[name]
 
 
-def assemble(lists: Lists) -> Plant:
+def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
     """Put the plant together from its lists.
 
     Parameters
     ----------
     lists
         All records of all sheets, as read.
+    profile
+        How the plant writes its tags, where that is known already: a part of a plant must not be read
+        otherwise than the whole.
     """
     data = lists.plant
     records: Mapping[str, tuple[Any, ...]] = lists.records
@@ -226,7 +229,9 @@ def assemble(lists: Lists) -> Plant:
     if not index:
         index, io_list = io_list, ()
     codes = codes_with(data.plant_codes)
-    profile, assumptions = _profile(data, index)
+    assumptions: tuple[str, ...] = ()
+    if profile is None:
+        profile, assumptions = _profile(data, index)
     types, types_twice = _by_name(records.get("Device types", ()), "code")
     listed_areas = tuple(understood(area) for area in records.get("Areas", ()))
     areas, areas_twice = _by_name(listed_areas, "code")
@@ -387,9 +392,7 @@ def disagreements(one: Instrument, other: Instrument) -> tuple[str, ...]:
     found = tuple(name for name in COMPARED if not same_value(getattr(one, name), getattr(other, name)))
     if one.own is not None and other.own is not None:
         found += tuple(
-            f"type.{name}"
-            for name in _TYPE_FIELDS
-            if not same_value(getattr(one.own, name), getattr(other.own, name))
+            f"type.{name}" for name in _TYPE_FIELDS if not same_value(getattr(one.own, name), getattr(other.own, name))
         )
     return found
 
@@ -399,9 +402,7 @@ def rows_agree(one: Instrument, other: Instrument) -> bool:
     differing = set(disagreements(one, other)) - SIGNAL_FIELDS
     if not differing:
         return True
-    both_addressed = bool(one.io_address and other.io_address) and _key(one.io_address) != _key(
-        other.io_address
-    )
+    both_addressed = bool(one.io_address and other.io_address) and _key(one.io_address) != _key(other.io_address)
     return both_addressed and differing <= {"service"}
 
 
@@ -418,11 +419,7 @@ def same_value(one: Any, other: Any) -> bool:
         if one.unit.kind != other.unit.kind:
             return False
         unstated = ("unstated", None)
-        if (
-            one.reference != other.reference
-            and one.reference not in unstated
-            and other.reference not in unstated
-        ):
+        if one.reference != other.reference and one.reference not in unstated and other.reference not in unstated:
             return False
         return abs(one.base - other.base) <= 1e-9 * max(abs(one.base), abs(other.base))
     if isinstance(one, str) and isinstance(other, str):
@@ -497,8 +494,7 @@ class _Fitter:
     def assumptions(self) -> tuple[str, ...]:
         """What was taken from the rows' own words, listed once."""
         return tuple(
-            f"'{text}' in an area column is read as: not a hazardous area"
-            for text in sorted(self._unclassified)
+            f"'{text}' in an area column is read as: not a hazardous area" for text in sorted(self._unclassified)
         )
 
     def install(
@@ -623,8 +619,7 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
     kept: list[Instrument] = []
     for row in rows:
         if not any(
-            all(same_value(getattr(row, name), getattr(other, name)) for name in SIGNAL_FIELDS)
-            for other in kept
+            all(same_value(getattr(row, name), getattr(other, name)) for name in SIGNAL_FIELDS) for other in kept
         ):
             kept.append(row)
     return tuple(kept)
@@ -701,9 +696,7 @@ def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[
             kind, kind_from = derive_kind(letters, **asked), "letters"
             if point and kind not in _MEASURING:
                 kind = _point_kind(record) or kind
-        result.append(
-            replace(each, kind=kind, kind_from=kind_from if kind is not None else "", measuring_point=point)
-        )
+        result.append(replace(each, kind=kind, kind_from=kind_from if kind is not None else "", measuring_point=point))
     return result
 
 

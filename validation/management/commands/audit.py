@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from django.core.management.base import BaseCommand
-from instruments.workbook.lists import NoTags, read_lists
+from instruments.workbook.lists import NoTags, SheetReport, read_lists
 
 from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
@@ -18,6 +18,7 @@ from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import Audit, audit
 from validation.finding import Outcome, Severity
+from validation.mend import with_consequences
 from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
@@ -73,6 +74,7 @@ class Command(BaseCommand):
                 result = audit(
                     plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code)
                 )
+                with_consequences(result, on_fix=lambda number, of: progress.step("fixes", number, of))
                 folder = Path(options["to"])
                 with Outputs(folder) as outputs:
                     self._write(outputs, result, inputs, options, progress)
@@ -135,7 +137,7 @@ class Command(BaseCommand):
             f"findings: {figures['danger']} danger, {figures['fault']} fault, {figures['gap']} gap; "
             f"{figures['review']} to review; {figures['unchecked']} checks could not be made for want of data"
         )
-        guessed = [note for sheet in result.plant.lists.sheets for note in sheet.guesses]
+        guessed = [note for sheet in result.plant.lists.sheets for note in _guesses(sheet)]
         for note in guessed[:20]:
             say(f"heading guessed: {note}")
         for each in result.broken[:5]:
@@ -153,3 +155,13 @@ def _digest(path: Path) -> str:
         raise UnreadableFile(str(path), "", "is a folder; name a file") from error
     except OSError as error:
         raise UnreadableFile(str(path), "", (error.strerror or str(error)).lower()) from error
+
+
+def _guesses(sheet: SheetReport) -> list[str]:
+    if sheet.match is None:
+        return []
+    return [
+        f"{sheet.sheet}, '{each.heading}' is taken for {each.column.title}"
+        for each in sheet.match.columns.values()
+        if each.how != "synonym"
+    ]
