@@ -111,21 +111,21 @@ def _words(text: str) -> tuple[str, ...]:
     return tuple(text.split())
 
 
-_HOUR = _words("h hr hrs hour hours std stunde stunden")
-_MINUTE = _words("min mins minute minutes mn")
-_SECOND = _words("s sec secs second seconds sek")
-_DAY = _words("d day days dy tag tage")
+_HOUR = _words("h hr hrs hour hours std stunde stunden heure heures hora uur")
+_MINUTE = _words("min mins minute minutes mn minuten")
+_SECOND = _words("s sec secs second seconds sek sekunde")
+_DAY = _words("d day days dy tag tage jour jours dag")
 _TIMES = {"h": _HOUR, "m": _MINUTE, "s": _SECOND, "d": _DAY}
 
 _M3 = _words("m3 cum cbm mc kl kiloliter kilolitre kiloliters kilolitres") + tuple(
     f"{cubic}{metre}" for cubic in ("cubic", "cu") for metre in _words("meter metre meters metres m mtr")
 )
-_LITRE = _words("l lt ltr ltrs lit liter litre liters litres dm3")
+_LITRE = _words("l lt lts ltr ltrs lit liter litre liters litres dm3")
 _MEGALITRE = _words("megaliter megalitre megaliters megalitres")  # Ml itself asks for its case
 _CM3 = _words("cm3 ccm cc cucm")
 _FT3 = _words("ft3 cf cft cuft cubicft cubicfeet cubicfoot cufeet")
 _GALLON = _words("gal gals gallon gallons")
-_US_GALLON = _GALLON + tuple(f"us{gallon}" for gallon in _GALLON) + tuple(f"{gallon}us" for gallon in _GALLON)
+_US_GALLON = ("usg", *_GALLON, *(f"us{gallon}" for gallon in _GALLON), *(f"{gallon}us" for gallon in _GALLON))
 _IMPERIAL_GALLON = tuple(
     word
     for gallon in _GALLON
@@ -133,8 +133,8 @@ _IMPERIAL_GALLON = tuple(
     for word in (f"{imperial}{gallon}", f"{gallon}{imperial}")
     if word != f"{gallon}i"
 )
-_BARREL = _words("bbl bbls barrel barrels bo")
-_KILOGRAM = _words("kg kgs kgm kilogram kilograms kilogramme kilogrammes")
+_BARREL = _words("bbl bbls barrel barrels bo b")
+_KILOGRAM = _words("kg kgs kilo kilos kilogram kilograms kilogramme kilogrammes")
 _TONNE = _words("t te tonne tonnes mt mton mtons metricton metrictons metrictonne metrictonnes")
 _POUND = _words("lb lbs lbm pound pounds #")
 _THOUSAND = _words("k m 1000 103 1e3 x1000 x103")  # 103 is 10^3 when its accent has gone
@@ -268,7 +268,7 @@ def _pressure(key: str) -> Unit | None:
 
 # --- temperature
 
-_DEGREES = _words("deg degs degree degrees grad grd grade grados graus graden degrés degres")
+_DEGREES = _words("deg degs degr degree degrees grad grd grade grados graus graden degrés degres")
 _SCALES: Final = {
     **dict.fromkeys(_words("c celsius celcius celsuis centigrade"), "degC"),
     **dict.fromkeys(_words("f fahrenheit farenheit"), "degF"),
@@ -336,7 +336,7 @@ def _ratio_spellings() -> Iterator[tuple[str, str]]:
     per_litre = (*_LITRE, "dm3")
     for canonical, numerators in {
         "mg/L": _words("mg mgs milligram milligrams"),
-        "ug/L": _words("ug microgram micrograms"),
+        "ug/L": _words("ug mcg microgram micrograms"),
         "g/L": _words("g gm gms gram grams"),
     }.items():
         for spelling in _over(numerators, (*per_litre, "1")):  # mg/1: an l that a scan took for a one
@@ -423,6 +423,7 @@ def _flow_spellings() -> Iterator[tuple[str, str]]:
         "lb/h": ("pph",),
         "1e3 lb/h": _words("kpph mpph"),
         "m3/h": _words("cmh acmh"),
+        "m3/s": _words("cumec cumecs"),
         "Nm3/h": _words("ncmh nmch"),
         "Sm3/h": ("scmh",),
         "Sm3/d": ("scmd",),
@@ -442,7 +443,7 @@ _FLOWS: Final = dict(_flow_spellings())
 _CONDITIONS_BEHIND: Final = {
     **dict.fromkeys(_words("n in norm normal normiert"), "n"),
     **dict.fromkeys(_words("std standard"), "s"),
-    **dict.fromkeys(_words("act actual betr ib"), "a"),
+    **dict.fromkeys(_words("act actual betr betrieb ib"), "a"),
 }
 
 
@@ -459,7 +460,7 @@ def _flow(key: str) -> Unit | None:
 # --- everything else: a spelling means its unit, whatever stands around it
 
 _PEAKS: Final = {
-    **dict.fromkeys(_words("pkpk pp pktopk peaktopeak peakpeak p2p ptop"), "pk-pk"),
+    **dict.fromkeys(_words("pkpk pk/pk pp p/p pktopk peaktopeak peakpeak p2p ptop"), "pk-pk"),
     **dict.fromkeys(_words("pk peak 0pk 0p zeropeak"), "pk"),
     **dict.fromkeys(_words("rms eff"), "rms"),
 }
@@ -484,13 +485,13 @@ def _plain_spellings() -> Iterator[tuple[str, str]]:
         "g (standard gravity)": ("g",),
         "rev/min": (
             *_words("rpm revpm upm"),
-            *_over(_words("r rev revs revolution revolutions u 1 tr"), _MINUTE),
+            *_over(_words("r rev revs revolution revolutions u umdr 1 tr"), _MINUTE),
         ),
         "cycles/min": (*_words("cpm"), *_over(_words("cycles cycle cyc"), _MINUTE)),
         "Hz": (*_words("hz hertz"), *_over(_words("1 cycles cycle cyc"), _SECOND)),
         "uS/cm": _over(_words("us usiemens microsiemens micros umho umhos micromho micromhos"), _CM),
         "mS/cm": _over(_words("ms msiemens millisiemens mmho mmhos millimho millimhos"), _CM),
-        "mA": _words("ma milliamp milliamps milliampere milliamperes"),
+        "mA": _words("ma mamp mamps milliamp milliamps milliampere milliamperes"),
         "A": _words("a amp amps ampere amperes"),
         "V": _words("v volt volts"),
         "mV": _words("mv millivolt millivolts"),
@@ -601,7 +602,20 @@ def _read(text: str) -> Unit | None:
         if found:
             return found
     name = _CANONICAL_BY_TEXT.get(text.strip().casefold())
-    return unit(name) if name else None
+    if name:
+        return unit(name)
+    return _at_a_temperature(cleaned)
+
+
+_TEMPERATURE_OF_THE_SAMPLE = re.compile(r"(?:@|\bat\b) ?[0-9]{1,3}(?:\.[0-9])? ?(?:°|deg\.?)? ?[CF]$", re.IGNORECASE)
+
+
+def _at_a_temperature(cleaned: str) -> Unit | None:
+    """Read uS/cm @ 25 degC: a condition of the sample, where it says nothing of the unit's size."""
+    condition = _TEMPERATURE_OF_THE_SAMPLE.search(cleaned)
+    found = _read(cleaned[: condition.start()]) if condition else None
+    unaffected = found is not None and found.kind in ("cond", "density", "dynvisc", "kinvisc")
+    return found if unaffected else None
 
 
 _KNOWN: dict[str, Unit | None] = {}
