@@ -15,6 +15,9 @@ from typing import Final
 LONGEST_NUMBER: Final = 40
 """Characters of a text that may still be a number."""
 
+LONGEST_RAW: Final = 1000
+"""Characters of a cell that are looked at, blanks and all: the rest is never copied."""
+
 
 @dataclass(frozen=True, slots=True)
 class CellTrouble:
@@ -173,10 +176,10 @@ def read_number(cell: object, *, decimal: str | None = ".") -> Number | CellTrou
         return CellTrouble(reason=f"{cell!r:.40} is not a number")
     if not isinstance(cell, str):
         return _finite(cell)
-    text = plain_signs(cell).strip()
+    text = plain_signs(cell[:LONGEST_RAW]).strip()
     if not text:
         return CellTrouble(reason="the cell is empty")
-    if len(text) > LONGEST_NUMBER:
+    if len(text) > LONGEST_NUMBER or len(cell) > LONGEST_RAW:
         return CellTrouble(reason="the text is too long for a number")
     text, qualifier = split_qualifier(text)
     found = _WHOLE.match(text)

@@ -8,6 +8,7 @@ from dataclasses import dataclass, field
 from typing import Final, NamedTuple
 
 from instruments.number import (
+    LONGEST_RAW,
     NUMBER_PATTERN,
     CellTrouble,
     Number,
@@ -319,10 +320,10 @@ def _agree(one: float, other: float, size: float) -> bool:
 
 
 def _read_one(cell: str, unit: Unit | None, decimal: str | None, kinds: tuple[str, ...]) -> Quantity | CellTrouble:
-    text = plain_signs(cell).strip()
+    text = plain_signs(cell[:LONGEST_RAW]).strip()
     if not text:
         return CellTrouble(reason="the cell is empty")
-    if len(text) > LONGEST_CELL:
+    if len(text) > LONGEST_CELL or len(cell) > LONGEST_RAW:
         return CellTrouble(reason="the text is too long for a value")
     text = _NOTE.sub("", text).strip()
     if _CONNECTION.match(text):
@@ -557,10 +558,10 @@ def _no_pair(text: str, unit: Unit | None, decimal: str | None) -> CellTrouble:
 
 
 def _read_range(cell: str, unit: Unit | None, decimal: str | None) -> Range | CellTrouble:
-    text = plain_signs(cell).strip()
+    text = plain_signs(cell[:LONGEST_RAW]).strip()
     if not text:
         return CellTrouble(reason="the cell is empty")
-    if len(text) > LONGEST_CELL:
+    if len(text) > LONGEST_CELL or len(cell) > LONGEST_RAW:
         return CellTrouble(reason="the text is too long for a range")
     text = _ADDED.sub("", " ".join(_NOTE.sub("", text).split()))
     if _CONNECTION.match(text):

@@ -349,16 +349,22 @@ _FRACTIONS: Final = dict(_ratio_spellings())
 
 
 def _fraction(key: str) -> Unit | None:
-    canonical = _FRACTIONS.get(key)
-    if canonical is None:
-        for length in range(1, 9):
-            if key[-length:] in _SUBSTANCES and len(key) > length:
-                stem = key[:-length].removesuffix("as")
-                canonical = _FRACTIONS.get(stem)
-                if canonical and canonical != "specific gravity":
-                    break
-                canonical = None
+    canonical = _FRACTIONS.get(key) or next(
+        (_FRACTIONS[stem] for stem in _without_substance(key) if stem in _FRACTIONS), None
+    )
     return None if canonical is None else unit(canonical)
+
+
+_LONGEST_SUBSTANCE = max(map(len, _SUBSTANCES))
+
+
+def _without_substance(key: str) -> Iterator[str]:
+    """Leave out the substance at the end (ppm H2S, mg/l as CaCO3) or behind the sign (% CH4 v/v)."""
+    for length in range(1, min(_LONGEST_SUBSTANCE, len(key) - 1) + 1):
+        if key[-length:] in _SUBSTANCES:
+            yield key[:-length].removesuffix("as")
+        if key.startswith("%") and key[1 : length + 1] in _SUBSTANCES:
+            yield key[0] + key[length + 1 :]
 
 
 # --- flow
@@ -369,9 +375,10 @@ _AT_STANDARD = ("s", "std", "standard")
 
 
 def _flow_spellings() -> Iterator[tuple[str, str]]:
-    normal_m3 = (*_with(_AT_NORMAL, _M3), "m3n", "mn3")
+    normal_m3 = (*_with(_AT_NORMAL, _M3), "m3n", "mn3", "ncm")
+    standard_m3 = (*_with(_AT_STANDARD, _M3), "scm")
     scf = _with(_AT_STANDARD, _FT3)
-    million_m3 = (*_with(_MILLION, _with(_AT_STANDARD, _M3)),)
+    million_m3 = _with(_MILLION, standard_m3)
     numerators: dict[str, tuple[tuple[str, ...], str]] = {
         "m3/h": (_with(_ACTUAL, _M3), "h"),
         "m3/s": (_with(_ACTUAL, _M3), "s"),
@@ -388,8 +395,8 @@ def _flow_spellings() -> Iterator[tuple[str, str]]:
         "bbl/h": (_BARREL, "h"),
         "cm3/min": (_with(_ACTUAL, _CM3), "m"),
         "Nm3/h": (normal_m3, "h"),
-        "Sm3/h": (_with(_AT_STANDARD, _M3), "h"),
-        "Sm3/d": (_with(_AT_STANDARD, _M3), "d"),
+        "Sm3/h": (standard_m3, "h"),
+        "Sm3/d": (standard_m3, "d"),
         "1e6 Sm3/d": (million_m3, "d"),
         "scf/min": (scf, "m"),
         "scf/h": (scf, "h"),
