@@ -102,9 +102,10 @@ def _dress(cell: Any, style: _Style) -> None:
         cell.fill = PatternFill("solid", start_color=style.fill, end_color=style.fill)
     under = Side(style="medium", color="404040") if style.under else thin
     cell.border = Border(left=thin, right=thin, top=thin, bottom=under)
-    cell.alignment = Alignment(
-        wrap_text=True, vertical=style.vertical, horizontal="right" if style.right else None
-    )
+    # The indent keeps a number off the text in the next column.
+    across = {"horizontal": "right", "indent": 1} if style.right else {}
+    wrapped = not style.number_format
+    cell.alignment = Alignment(wrap_text=wrapped, vertical=style.vertical, **across)
     if style.number_format:
         cell.number_format = style.number_format
     else:
@@ -112,26 +113,35 @@ def _dress(cell: Any, style: _Style) -> None:
         cell.quotePrefix = True
 
 
-# A column's width counts digits of the workbook's usual font, 7 pixels each; 5 pixels are the cell's own edges.
+# A column's width counts digits of the workbook's usual font (in Arial 10, 7 pixels each); 5 are the cell's edges.
 _DIGIT_PX: Final = 7.0
 _EDGES_PX: Final = 5.0
+_INDENT_PX: Final = 9.0
 # Screens and printers set the same words up to so much wider than the font's metrics.
 _WIDER: Final = 1.06
-_PADDING_PT: Final = 3.0
+_PADDING_PT: Final = 2.5
 _HIGHEST_PT: Final = 409.0  # a row is no higher (Excel's specification limits)
 
 
+def _edges_px(style: _Style) -> float:
+    return _EDGES_PX + _INDENT_PX if style.right else _EDGES_PX
+
+
 def _room_em(width: float, style: _Style) -> float:
-    return round((width * _DIGIT_PX - _EDGES_PX) / (style.em_px * _WIDER), 2)
+    return round((width * _DIGIT_PX - _edges_px(style)) / (style.em_px * _WIDER), 2)
 
 
 def _width_of(text: str, style: _Style) -> float:
     em = max((em_of(line, bold=style.bold) for line in text.split("\n")), default=0.0)
-    return (em * style.em_px * _WIDER + _EDGES_PX) / _DIGIT_PX + 0.1
+    return (em * style.em_px * _WIDER + _edges_px(style)) / _DIGIT_PX + 0.1
 
 
 def _height_of(text: str, width: float, style: _Style) -> float:
     return lines_of(text, _room_em(width, style), bold=style.bold) * style.line_pt + _PADDING_PT
+
+
+_LINE_PT: Final = _STYLES[Look.TEXT].line_pt
+"""Of a row in a table, whose looks are all of one size."""
 
 
 Value = str | int | float | None
@@ -207,8 +217,11 @@ class Page:
         self, headings: Sequence[str], rows: Iterable[Sequence[Shown]], *, spans: Sequence[int]
     ) -> None:
         """Add a small table; `spans` are the grid columns that each of its columns takes."""
-        self._row([(heading, Look.HEADING) for heading in headings], spans)
-        for row in rows:
+        made = list(rows)
+        counted = [bool(made) and all(_is_count(row[index]) for row in made) for index in range(len(spans))]
+        looks = [Look.COUNT_HEADING if each else Look.HEADING for each in counted]
+        self._row(list(zip(headings, looks, strict=True)), spans)
+        for row in made:
             self._row(row, spans)
 
     def _across(self, text: str, look: Look) -> None:
@@ -245,6 +258,10 @@ def _page_text(text: str) -> str:
     return text if len(text) <= _MOST_ON_A_PAGE_ROW else text[: _MOST_ON_A_PAGE_ROW - len(CUT)] + CUT
 
 
+def _is_count(shown: Shown) -> bool:
+    return not isinstance(shown[0] if isinstance(shown, tuple) else shown, str)
+
+
 def _look(shown: Shown, usual: Look) -> tuple[Value, Look]:
     if isinstance(shown, tuple):
         return shown
@@ -258,7 +275,7 @@ def _look(shown: Shown, usual: Look) -> tuple[Value, Look]:
 # A clock in the file would give the same audit another digest each time.
 _NO_TIME: Final = datetime.datetime(1980, 1, 1)  # noqa: DTZ001 (a workbook's times have no zone)
 _ZIP_TIME: Final = (1980, 1, 1, 0, 0, 0)
-_SAMPLE: Final = 4_000
+_SAMPLE: Final = 2_000
 _MOST_IN_HEADER: Final = 80
 _ROWS_AT_ONCE: Final = 500
 _MANY_ROWS: Final = 250_000
@@ -298,6 +315,8 @@ class Book:
         self._footer = footer
         self._book = Workbook()
         self._book.remove(self._book.active)
+        # Widths are counted in digits of this font; openpyxl has no other way to it.
+        self._book._named_styles["Normal"].font = Font(name=_FONT, size=10)
         self._book.properties.creator = "Ferrule"
         self._book.properties.title = cell_text(title)[:255]
         self._book.properties.created = self._book.properties.modified = _NO_TIME
@@ -396,7 +415,7 @@ class Book:
 
     def _table_rows(self, table: Table[Any], items: Sequence[Any], widths: Sequence[float]) -> Iterator[str]:
         columns = [
-            (column_letters(index), column.look, width)
+            (column_letters(index), column.look, _room_em(width, _STYLES[Look.TEXT]))
             for index, (column, width) in enumerate(zip(table.columns, widths, strict=True))
         ]
         yield self._heading_row(table, widths)
@@ -408,38 +427,45 @@ class Book:
             yield self._table_row(number, columns, table.row(item))
 
     def _heading_row(self, table: Table[Any], widths: Sequence[float]) -> str:
-        style = _STYLES[Look.HEADING]
         cells: list[str] = []
         height = 0.0
         for index, (column, width) in enumerate(zip(table.columns, widths, strict=True)):
-            look = Look.COUNT_HEADING if _STYLES[column.look].right else Look.HEADING
+            look = _heading_look(column)
             cells.append(self._cell(column_letters(index), 1, column.heading, look))
-            height = max(height, _height_of(column.heading, width, style))
+            height = max(height, _height_of(column.heading, width, _STYLES[look]))
         # The buttons of the filters stand below the words.
-        return f'<row r="1" ht="{height + style.line_pt:g}" customHeight="1">{"".join(cells)}</row>'
+        return f'<row r="1" ht="{height + _LINE_PT:g}" customHeight="1">{"".join(cells)}</row>'
 
     def _table_row(
         self, number: int, columns: Sequence[tuple[str, Look, float]], row: Sequence[Shown]
     ) -> str:
         cells: list[str] = []
-        height = _STYLES[Look.TEXT].line_pt + _PADDING_PT
-        for (letters, usual, width), shown in zip(columns, row, strict=True):
-            value, look = _look(shown, usual)
-            if isinstance(value, str):
+        lines = 1
+        for (letters, usual, room_em), shown in zip(columns, row, strict=True):
+            value, look = shown if isinstance(shown, tuple) else (shown, usual)
+            if isinstance(value, str) and value:
                 value = cell_text(value)
-                height = max(height, _height_of(value, width, _STYLES[look]))
+                if len(value) > room_em or "\n" in value:
+                    lines = max(lines, lines_of(value, room_em, bold=_STYLES[look].bold))
             cells.append(self._cell(letters, number, value, look))
+        height = min(lines * _LINE_PT + _PADDING_PT, _HIGHEST_PT)
         # Not customHeight: Excel fits the row anew when somebody edits it. LibreOffice would not fit one without ht.
-        return f'<row r="{number}" ht="{min(height, _HIGHEST_PT):g}">{"".join(cells)}</row>'
+        return f'<row r="{number}" ht="{height:g}">{"".join(cells)}</row>'
 
     def _cell(self, letters: str, row: int, value: Value, look: Look) -> str:
         style = self._style_ids[look]
         if value is None or value == "":
             return f'<c r="{letters}{row}" s="{style}"/>'
         if isinstance(value, str):
-            text = value.translate(_MARKUP)
-            return f'<c r="{letters}{row}" s="{style}" t="inlineStr"><is><t xml:space="preserve">{text}</t></is></c>'
+            return (
+                f'<c r="{letters}{row}" s="{style}" t="inlineStr"><is><t xml:space="preserve">'
+                f"{value.translate(_MARKUP)}</t></is></c>"
+            )
         return f'<c r="{letters}{row}" s="{style}"><v>{value!r}</v></c>'
+
+
+def _heading_look(column: Column) -> Look:
+    return Look.COUNT_HEADING if _STYLES[column.look].right else Look.HEADING
 
 
 def _filled(frame: bytes, sheet: _Sheet) -> Iterator[bytes]:
@@ -468,18 +494,18 @@ def _in_header(text: str) -> str:
 
 def _widths(table: Table[Any]) -> list[float]:
     """Return widths that show each column's longest line, up to its greatest width; beyond, text wraps."""
-    widths = [
-        max(_width_of(word, _STYLES[Look.HEADING]) for word in column.heading.split())
-        for column in table.columns
-    ]
+    widths = [float(column.least) for column in table.columns]
     for item in islice(table.items, _SAMPLE):
         for index, (shown, column) in enumerate(zip(table.row(item), table.columns, strict=True)):
             value, look = _look(shown, column.look)
             if value is None or widths[index] >= column.most:
                 continue
             text = value if isinstance(value, str) else f"{value:,}"
-            widths[index] = max(widths[index], _width_of(cell_text(text), _STYLES[look]))
-    return [
-        round(min(max(width, column.least), column.most), 2)
-        for width, column in zip(widths, table.columns, strict=True)
-    ]
+            width = _width_of(cell_text(text), _STYLES[look])
+            widths[index] = min(max(widths[index], width), column.most)
+    # No word of a heading is broken, however narrow its column.
+    headings = (
+        max(_width_of(word, _STYLES[_heading_look(column)]) for word in column.heading.split())
+        for column in table.columns
+    )
+    return [round(max(both), 2) for both in zip(widths, headings, strict=True)]

@@ -23,7 +23,7 @@ WORTH_A_SPLIT: Final = 3
 
 _LISTED: Final = 3
 _LONGEST_LISTED: Final = 60
-_LONGEST_NAME: Final = 90
+_LONGEST_NAME: Final = 50
 # A number and its unit, no second number: '10.488 V' and '2.5 mm2', but neither '4-20 mA' nor '0 to 6 bar'.
 _MEASURE: Final = re.compile(r"([-+]?\d{1,15}(?:\.\d{1,15})?(?:e[-+]?\d{1,3})?)(%|(?: [^\s\d]\S{0,20}){0,3})")
 
@@ -68,10 +68,10 @@ class Cause:
 def causes_of(findings: Iterable[Finding]) -> tuple[Cause, ...]:
     """Put findings together by cause, the most common first.
 
-    Findings with the same rule, outcome, message template and fields belong together. They are told apart
-    further, where each part then holds three or more on average, by the cells that several of them
-    share (each device type's limit is a cause of its own), then by what was found and wanted. Values
-    that differ nearly every time, such as computed volts, tell nothing apart.
+    Findings with the same rule, outcome, message template and fields belong together. Where they do not
+    all say the same, they are told apart by what was found and wanted, then by the cells that several of
+    them share (each device type's limit is a cause of its own), if each part then holds three or more on
+    average: values that differ nearly every time, such as computed volts, tell nothing apart.
     """
     alike: dict[Hashable, list[Finding]] = {}
     for finding in findings:
@@ -152,11 +152,11 @@ def _by_found(group: Sequence[Finding]) -> Callable[[Finding], Hashable]:
     return lambda finding: finding.found
 
 
-_WAYS: Final[tuple[_Way, ...]] = (_by_shared_cells, _by_found_and_wanted, _by_wanted, _by_found)
+_WAYS: Final[tuple[_Way, ...]] = (_by_found_and_wanted, _by_wanted, _by_shared_cells, _by_found)
 
 
 def _split(group: list[Finding], ways: tuple[_Way, ...]) -> list[list[Finding]]:
-    if not ways or len(group) < 2 * WORTH_A_SPLIT:
+    if not ways or len(group) < 2 * WORTH_A_SPLIT or len({finding.message for finding in group}) == 1:
         return [group]
     key = ways[0](group)
     parts: dict[Hashable, list[Finding]] = {}
@@ -233,6 +233,8 @@ def _in_common(texts: Sequence[str]) -> str | None:
     if len(units) == 1 and None not in units:
         ends = sorted((float(measure[1]), measure[1]) for measure in measures if measure is not None)
         return f"{ends[0][1]} to {ends[-1][1]}{units.pop()}"
-    if len(different) <= _LISTED and all(0 < len(text) <= _LONGEST_LISTED for text in different):
+    # Alternatives only where each is said by two or more: two tags of two findings have nothing in common.
+    few = len(different) <= _LISTED and len(different) * 2 <= len(texts)
+    if few and all(0 < len(text) <= _LONGEST_LISTED for text in different):
         return " or ".join(sorted(different, key=natural_key))
     return None

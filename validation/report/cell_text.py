@@ -73,26 +73,26 @@ _ADVANCES: Final = (
     333, 556, 556, 500, 556, 556, 278, 556, 556, 222, 222, 500, 222, 833, 556, 556,
     556, 556, 333, 500, 278, 556, 500, 722, 500, 500, 500, 334, 260, 334, 584,
 )  # fmt: skip
-_EM: Final = {chr(32 + index): advance / 1000 for index, advance in enumerate(_ADVANCES)}
-_OTHER_EM: Final = 0.75  # accented, Greek and Cyrillic letters are no wider but for a few
-_WIDE_EM: Final = 1.0  # from the Asian scripts on
 _BOLD: Final = 1.09  # bold Arial against plain, for words
+
+
+class _Widths(dict[str, float]):
+    def __missing__(self, character: str) -> float:
+        # Accented, Greek and Cyrillic letters are no wider, but for a few; from the Asian scripts on all are.
+        return 0.75 if character < "\u2e80" else 1.0
+
+
+_EM: Final = _Widths({chr(32 + index): advance / 1000 for index, advance in enumerate(_ADVANCES)})
 
 
 def em_of(text: str, *, bold: bool = False) -> float:
     """Return the width of one line of text, in sizes of its font (Arial).
 
-    >>> em_of("PT-101"), em_of("danger", bold=True) > em_of("danger")
-    (3.278, True)
+    >>> round(em_of("PT-101"), 3), em_of("danger", bold=True) > em_of("danger")
+    (3.279, True)
     """
-    widths = _EM
-    em = 0.0
-    for character in text:
-        width = widths.get(character)
-        if width is None:
-            width = _OTHER_EM if character < "\u2e80" else _WIDE_EM
-        em += width
-    return round(em * _BOLD if bold else em, 4)
+    em = sum(map(_EM.__getitem__, text))
+    return em * _BOLD if bold else em
 
 
 @lru_cache(maxsize=20_000)

@@ -6,7 +6,7 @@ import doctest
 import re
 from collections import Counter
 from collections.abc import Iterable, Iterator, Mapping, Sequence
-from pathlib import Path
+from pathlib import Path, PurePath
 from typing import Any, Final
 
 from instruments.column import SheetKind
@@ -79,6 +79,7 @@ def write_exceptions(result: Audit, path: Path, *, rules: Registry | None = None
     book.add_table(report.coverage())
     book.add_table(report.unread())
     book.add_table(report.columns())
+    book.add_table(report.notes())
     book.add_table(report.rules())
     book.save(path)
 
@@ -94,12 +95,20 @@ class _Report:
         self.causes_found = causes_of(result.findings)
         name = self.plant.data.name
         self.title = f"Exception list - {name}" if name else "Exception list"
-        self.source = ", ".join(self.lists.files)
+        files = dict.fromkeys((*self.lists.files, *(sheet.file for sheet in self.lists.sheets)))
+        names = Counter(PurePath(file).name for file in files)
+        # The folder is told where the name alone would not do.
+        self.files = {file: name if names[name := PurePath(file).name] == 1 else file for file in files}
+        self.source = ", ".join(self.files[file] for file in self.lists.files)
+
+    def file(self, file: str) -> str:
+        """Return a file's name as the list shows it."""
+        return self.files.get(file) or PurePath(file).name
 
     # --- Summary --------------------------------------------------------------------------------------------
 
     def summary(self) -> Page:
-        page = Page(name="Summary", widths=(12.0,) * 12)
+        page = Page(name="Summary", widths=(6.0,) * 24)
         page.title(self.title)
         page.paragraph(CAUTION, look=Look.SMALL)
         self._what_was_read(page)
@@ -117,17 +126,17 @@ class _Report:
             ("file", "sheet", "read as", "rows", "cells filled", "read", "unread"),
             [
                 (
-                    sheet.file,
+                    self.file(sheet.file),
                     sheet.sheet,
                     f"not read: {sheet.skipped}" if sheet.skipped else sheet.kind,
-                    sheet.rows_read,
+                    sheet.rows,
                     sheet.cells_filled,
                     sheet.cells_read,
                     sheet.cells_unread,
                 )
                 for sheet in self.lists.sheets
             ],
-            spans=(3, 2, 3, 1, 1, 1, 1),
+            spans=(6, 4, 6, 2, 2, 2, 2),
         )
         figures = counts(self.result)
         page.paragraph(
@@ -157,11 +166,11 @@ class _Report:
             if family in checked
         ]
         totals = [sum(found[family, kind] for family in families) for kind in kinds]
-        rows.append((("all", Look.TOTAL), *((total, Look.TOTAL) for total in totals)))
+        rows.append((("all", Look.HEADING), *((total, Look.TOTAL) for total in totals)))
         page.table(
             ("family", *(severity.value for severity in Severity), "findings", "to review", "unchecked"),
             rows,
-            spans=(4, 1, 1, 1, 1, 2, 2),
+            spans=(6, 2, 2, 2, 2, 2, 2),
         )
         page.paragraph(
             "; ".join(f"{severity.value}: {meaning}" for severity, meaning in _MEANING.items())
@@ -177,7 +186,7 @@ class _Report:
         page.table(
             ("code", "subject", "what it raised"),
             [(each.rule, each.subject, each.error) for each in self.result.broken[:_MOST_LINES]],
-            spans=(1, 3, 8),
+            spans=(2, 5, 17),
         )
         _and_more(page, len(self.result.broken))
 
@@ -190,10 +199,16 @@ class _Report:
         page.table(
             ("findings", "severity", "code", "cause", "subjects"),
             [
-                (cause.count, _severity(cause), cause.rule, cause.text, some_of(cause.subjects, most=5))
+                (
+                    cause.count,
+                    _severity(cause),
+                    cause.rule,
+                    _with_cells(cause),
+                    some_of(cause.subjects, most=5),
+                )
                 for cause in commonest
             ],
-            spans=(1, 1, 1, 6, 3),
+            spans=(2, 2, 2, 11, 7),
         )
         page.paragraph(
             "All causes stand on the sheet Causes, each finding on the sheet Findings.", look=Look.SMALL
@@ -211,25 +226,32 @@ class _Report:
         page.table(
             ("assumption", "checks that rest on it"),
             [(text, rests[text] or None) for text in assumptions[:_MOST_LINES]],
-            spans=(10, 2),
+            spans=(20, 4),
         )
         _and_more(page, len(assumptions))
 
     def _absent(self, page: Page) -> None:
         page.section("Sheets that were absent, and what they would let be checked")
         there = {sheet.kind for sheet in self.lists.sheets if not sheet.skipped}
-        rows = [
-            (kind.name, *self._for_want_of(kind))
-            for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
-            if kind.name not in there
-        ]
-        if not rows:
+        absent = [kind for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS) if kind.name not in there]
+        rows: list[Sequence[Shown]] = []
+        missed_by_none: list[str] = []
+        for kind in absent:
+            fields, rules = self._for_want_of(kind)
+            if rules:
+                rows.append((kind.name, fields, rules))
+            else:
+                missed_by_none.append(kind.name)
+        if missed_by_none:
+            page.paragraph(f"Absent, and missed by no rule of this audit: {', '.join(missed_by_none)}.")
+        elif not rows:
             page.paragraph("None.")
+        if not rows:
             return
         page.table(
             ("sheet", "unchecked for want of", "rules, with the checks each could not make"),
             rows,
-            spans=(2, 5, 5),
+            spans=(3, 9, 12),
         )
 
     def _for_want_of(self, kind: SheetKind) -> tuple[str, str]:
@@ -243,40 +265,35 @@ class _Report:
                 wanted.update(dict.fromkeys(named, len(subjects)))
                 if named:
                     rules[code] += len(subjects)
-        if not rules:
-            return "nothing that a rule of this audit missed", ""
         return _with_counts(wanted), ", ".join(f"{code} ({times:,})" for code, times in sorted(rules.items()))
 
     def _skipped(self, page: Page) -> None:
         page.section("What was skipped, and what was noticed in reading")
         lines: list[tuple[str, str, str]] = []
+        noted = 0
         for sheet in self.lists.sheets:
-            if sheet.skipped:
-                lines.append((sheet.file, sheet.sheet, f"not read: {sheet.skipped}"))
-            kept = len(sheet.match.unknown) if sheet.match is not None else 0
-            if kept:
-                what = f"{_count(kept, 'column')} not understood, kept: see the sheet Columns"
-                lines.append((sheet.file, sheet.sheet, what))
-            lines.extend((sheet.file, sheet.sheet, f"heading guessed: {note}") for note in sheet.guesses)
-            lines.extend((sheet.file, sheet.sheet, note) for note in sheet.notes)
+            said = [f"not read: {sheet.skipped}"] if sheet.skipped else []
+            if sheet.match is not None and sheet.match.unknown:
+                unknown = _count(len(sheet.match.unknown), "column")
+                said.append(f"{unknown} not understood, kept: see the sheet Columns")
+            said.extend(sheet.remarks)
+            lines.extend((self.file(sheet.file), sheet.sheet, text) for text in said)
+            noted += len(sheet.sections) + len(sheet.notes)
         figures = counts(self.result)
         not_live = figures["instruments"] - figures["live"]
         if not_live:
-            lines.append(
-                (
-                    "",
-                    "",
-                    f"{_count(not_live, 'instrument')} deleted, void, future, spare or demolished: not checked",
-                )
-            )
+            what = f"{_count(not_live, 'instrument')} deleted, void, future, spare or demolished: not checked"
+            lines.append(("", "", what))
         if figures["rows_merged"]:
-            lines.append(
-                ("", "", f"{_count(figures['rows_merged'], 'row')} taken as a further row of an instrument")
-            )
+            what = f"{_count(figures['rows_merged'], 'row')} taken as a further row of an instrument"
+            lines.append(("", "", what))
+        if noted:
+            what = f"{_count(noted, 'row')} taken as titles, notes and sections, not applied: see the sheet Notes"
+            lines.append(("", "", what))
         if not lines:
             page.paragraph("Nothing.")
             return
-        page.table(("file", "sheet", "what"), lines[:_MOST_LINES], spans=(3, 2, 7))
+        page.table(("file", "sheet", "what"), lines[:_MOST_LINES], spans=(6, 4, 14))
         _and_more(page, len(lines))
 
     # --- Causes, Findings, Reviews --------------------------------------------------------------------------
@@ -289,13 +306,13 @@ class _Report:
                 Column(heading="severity", least=8, most=9),
                 Column(heading="outcome", least=8, most=9),
                 Column(heading="code", least=6, most=8),
-                Column(heading="rule", least=16, most=28),
-                Column(heading="cause", least=24, most=48),
-                Column(heading="found", most=16),
-                Column(heading="wanted", most=16),
-                Column(heading="fix for all of them", least=12, most=28),
-                Column(heading="cells that all of them name", least=10, most=22),
-                Column(heading="subjects", least=12, most=36),
+                Column(heading="rule", least=14, most=26),
+                Column(heading="cause", least=24, most=36),
+                Column(heading="found", most=12),
+                Column(heading="wanted", most=12),
+                Column(heading="fix for all of them", least=12, most=24),
+                Column(heading="cells that all of them name", least=10, most=16),
+                Column(heading="subjects", least=12, most=28),
             ),
             items=self.causes_found,
             row=self._cause_row,
@@ -320,28 +337,25 @@ class _Report:
         )
 
     def findings(self, name: str, outcome: Outcome, empty: str) -> Table[Finding]:
+        what = "what is wrong" if outcome is Outcome.FINDING else "what to decide"
         return Table(
             name=name,
             columns=(
                 Column(heading="severity", least=8, most=9),
                 Column(heading="code", least=6, most=8),
-                Column(heading="subject", least=9, most=16),
-                Column(heading="part", least=4, most=10),
-                Column(
-                    heading="what is wrong" if outcome is Outcome.FINDING else "what to decide",
-                    least=20,
-                    most=34,
-                ),
-                Column(heading="found", least=6, most=14),
-                Column(heading="wanted", least=6, most=14),
-                Column(heading="off by", least=5, most=11),
-                Column(heading="working", least=8, most=28),
-                Column(heading="fix", least=8, most=28),
-                Column(heading="file", least=5, most=12),
-                Column(heading="sheet and cell", least=8, most=14),
-                Column(heading="basis", least=8, most=16),
-                Column(heading="done by", least=8, most=8),
-                Column(heading="remark", least=14, most=14),
+                Column(heading="subject", least=9, most=14),
+                Column(heading="part", least=4, most=9),
+                Column(heading=what, least=20, most=31),
+                Column(heading="found", least=6, most=12),
+                Column(heading="wanted", least=6, most=12),
+                Column(heading="off by", least=5, most=9),
+                Column(heading="working", least=8, most=25),
+                Column(heading="fix", least=8, most=25),
+                Column(heading="file", least=5, most=10),
+                Column(heading="sheet and cell", least=8, most=13),
+                Column(heading="basis", least=8, most=20),
+                Column(heading="done by", least=9, most=9),
+                Column(heading="remark", least=13, most=13),
             ),
             items=self.result.of(outcome),
             row=self._finding_row,
@@ -364,7 +378,7 @@ class _Report:
             finding.off_by,
             "\n".join(working),
             _listed([_fix(fix) for fix in finding.fixes]),
-            "\n".join(dict.fromkeys(cell.file for cell in finding.cells)),
+            "\n".join(dict.fromkeys(self.file(cell.file) for cell in finding.cells)),
             _sheets_and_cells(finding.cells),
             rule.basis if rule is not None else "",
             None,
@@ -448,9 +462,22 @@ class _Report:
                 Column(heading="cells", least=6, most=9, look=Look.COUNT),
             ),
             items=self.plant.problems,
-            row=_problem_row,
+            row=self._problem_row,
             frozen=3,
             empty="every cell of a known column was read",
+        )
+
+    def _problem_row(self, problem: CellProblem) -> Sequence[Shown]:
+        return (
+            self.file(problem.cell.file),
+            problem.cell.sheet,
+            f"column {column_letters(problem.cell.column)}" if problem.whole_column else problem.cell.address,
+            problem.subject,
+            problem.title,
+            problem.text,
+            problem.reason,
+            " or ".join(problem.readings),
+            problem.cells_concerned,
         )
 
     def columns(self) -> Table[Sequence[Shown]]:
@@ -464,11 +491,30 @@ class _Report:
                 Column(heading="field", least=12, most=28),
                 Column(heading="how matched", least=10, most=28),
                 Column(heading="likelihood", least=8, most=10, look=Look.SHARE),
-                Column(heading="unit of the column", least=8, most=16),
+                Column(heading="unit of the column", least=11, most=16),
             ),
-            items=[row for sheet in self.lists.sheets for row in _column_rows(sheet)],
+            items=[
+                (self.file(sheet.file), sheet.sheet, *row)
+                for sheet in self.lists.sheets
+                for row in _column_rows(sheet)
+            ],
             row=lambda row: row,
             empty="no sheet was read",
+        )
+
+    def notes(self) -> Table[tuple[SheetReport, int, str, str]]:
+        return Table(
+            name="Notes",
+            columns=(
+                Column(heading="file", least=8, most=24),
+                Column(heading="sheet", least=8, most=22),
+                Column(heading="row", least=6, most=10, look=Look.COUNT),
+                Column(heading="taken as", least=10, most=20),
+                Column(heading="text", least=30, most=110),
+            ),
+            items=[row for sheet in self.lists.sheets for row in _note_rows(sheet)],
+            row=lambda row: (self.file(row[0].file), row[0].sheet, *row[1:]),
+            empty="no row was taken as a title, a note or a section",
         )
 
 
@@ -481,20 +527,6 @@ def _rule_row(rule: Rule) -> Sequence[Shown]:
         ", ".join(title for title, _ in rule.needs),
         rule.basis,
         _prose(rule.text),
-    )
-
-
-def _problem_row(problem: CellProblem) -> Sequence[Shown]:
-    return (
-        problem.cell.file,
-        problem.cell.sheet,
-        f"column {column_letters(problem.cell.column)}" if problem.whole_column else problem.cell.address,
-        problem.subject,
-        problem.title,
-        problem.text,
-        problem.reason,
-        " or ".join(problem.readings),
-        problem.cells_concerned,
     )
 
 
@@ -520,7 +552,13 @@ def _column_rows(sheet: SheetReport) -> Iterator[Sequence[Shown]]:
         for index, heading in match.unknown
     )
     for index, row in sorted(rows, key=lambda item: item[0]):
-        yield (sheet.file, sheet.sheet, column_letters(index), *row)
+        yield (column_letters(index), *row)
+
+
+def _note_rows(sheet: SheetReport) -> list[tuple[SheetReport, int, str, str]]:
+    rows = [(sheet, row, "section", text) for row, text in sheet.sections]
+    rows.extend((sheet, row, "title or note", text) for row, text in sheet.notes)
+    return sorted(rows, key=lambda row: row[1:])
 
 
 # --- words --------------------------------------------------------------------------------------------------
@@ -568,6 +606,13 @@ def _sheets_and_cells(cells: Sequence[Cell]) -> str:
         f"{sheet}: {', '.join(dict.fromkeys(addresses))}" if sheet else ", ".join(dict.fromkeys(addresses))
         for (_, sheet), addresses in by_sheet.items()
     )
+
+
+def _with_cells(cause: Cause) -> str:
+    """Return what is wrong and, where many findings go back to the same cells, those."""
+    if cause.count == 1 or not cause.cells:
+        return cause.text
+    return f"{cause.text}\n({_sheets_and_cells(cause.cells)})"
 
 
 def _titles_of(kind: SheetKind) -> frozenset[str]:
