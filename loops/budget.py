@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import lru_cache
 
 from instruments.installed import Installed
 from instruments.kind import Kind
@@ -134,7 +135,7 @@ def cable_path(circuit: Circuit) -> CablePath | None:
 def ohm_per_km(circuit: Circuit) -> tuple[float, ResistancePer, Conductor | None] | None:
     """Return the resistance of the circuit's cable at 20 degC: the cable type's own, else the standard's maximum."""
     kind = circuit.cable_type
-    conductor = read_conductor_size(circuit.conductor) if circuit.conductor else None
+    conductor = _conductor(circuit.conductor) if circuit.conductor else None
     if conductor is not None and kind is not None:
         stranding = (kind.class_ or "").strip()
         digits = [int(letter) for letter in stranding if letter.isdigit()]
@@ -338,6 +339,11 @@ def highest_volts(circuit: Circuit, data: PlantData) -> HighestVolts:
     )
 
 
+@lru_cache(maxsize=4096)
+def _conductor(text: str) -> Conductor | None:
+    return read_conductor_size(text)
+
+
 @dataclass(frozen=True, slots=True, kw_only=True)
 class _Source:
     name: str
@@ -358,9 +364,7 @@ def _source(
     barrier = circuit.barrier
     if circuit.barrier_named and barrier is None:
         missing.append("barrier")
-        return _Source(
-            name="barrier", kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=False
-        )
+        return _Source(name="barrier", kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=False)
     entry = None
     name = "supply"
     if barrier is not None and _is_isolator(barrier):
@@ -368,9 +372,7 @@ def _source(
     elif barrier is None and circuit.card is not None and circuit.card.available_20ma_v is not None:
         entry, name = circuit.card, "card"
     if entry is not None:
-        volts, title = _available_v(
-            entry.available_20ma_v, entry.available_alarm_v, entry.high_alarm_ma, current_ma
-        )
+        volts, title = _available_v(entry.available_20ma_v, entry.available_alarm_v, entry.high_alarm_ma, current_ma)
         if volts is None:
             missing.append(title)
         cells.extend(entry.cells("available_alarm_v" if current_ma > NOMINAL_MA else "available_20ma_v"))

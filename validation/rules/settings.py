@@ -80,14 +80,20 @@ def _judge(ways: Sequence[_Way], fails: Callable[[tuple[float, ...]], bool]) -> 
     return results[0], changed, (ways[0].assumed,) if changed and ways[0].assumed else ()
 
 
-def _say(found: Found, ways: Sequence[_Way], fails: Callable[[tuple[float, ...]], bool]) -> Found | None:
-    """Return the finding, the same as a review where an unstated reference decides it, or nothing."""
+def _say(make: Callable[[], Found], ways: Sequence[_Way], fails: Callable[[tuple[float, ...]], bool]) -> Found | None:
+    """Return the finding, the same as a review where an unstated reference decides it, or nothing.
+
+    The finding is made only where there is one: most settings are right, and texts cost time.
+    """
     failed, changed, assumed = _judge(ways, fails)
+    if not failed and not changed:
+        return None
+    found = make()
     if changed:
         values = {name: getattr(found, name) for name in found.__dataclass_fields__}
         values["assumed"] = (*found.assumed, *assumed)
         return Review(**values)
-    return found if failed else None
+    return found
 
 
 def _given(installed: Installed, names: Iterable[str]) -> list[tuple[str, Quantity]]:
@@ -200,7 +206,7 @@ def settings_out_of_order(installed: Installed, plant: Plant) -> Verdict:
         fixes = (Fix(text="; ".join(f"{title} {value}" for title, value in change.items()), change=change),)
     shown = ", ".join(f"{title_of(name)} {value}" for name, value in given)
     return _say(
-        Found(
+        lambda: Found(
             values={"settings": shown},
             fields=wrong or tuple(name for name, _ in given),
             found=shown,
@@ -259,6 +265,7 @@ class _Placed:
 
 
 def _placed(installed: Installed, plant: Plant) -> tuple[list[_Placed], list[str]]:
+    """Return the settings on their ranges, and what could not be placed."""
     placed: list[_Placed] = []
     unplaced: list[str] = list(_unread(installed, WITH_TRIP))
     for name, value in _given(installed, WITH_TRIP):
@@ -320,24 +327,24 @@ def setting_outside_range(installed: Installed, plant: Plant) -> Verdict:
                 return True
             return _is_reached(_setting_ma(*numbers, installed, each.which))
 
-        title = title_of(each.name)
-        shown = _say(
-            Found(
-                values={"title": title, "setting": str(each.value), "range": _range_text(each)},
-                fields=(each.name, *_range_fields(each)),
-                part=title,
-                found=str(each.value),
-                wanted=f"within {_range_text(each)}",
-                fixes=_to_the_end(each),
-            ),
-            each.ways,
-            speaks,
-        )
+        shown = _say(lambda each=each: _outside_range(each), each.ways, speaks)  # type: ignore[misc]
         if shown is not None:
             found.append(shown)
     if found:
         return found
     return Unchecked(*dict.fromkeys(unplaced)) if unplaced else None
+
+
+def _outside_range(each: _Placed) -> Found:
+    title = title_of(each.name)
+    return Found(
+        values={"title": title, "setting": str(each.value), "range": _range_text(each)},
+        fields=(each.name, *_range_fields(each)),
+        part=title,
+        found=str(each.value),
+        wanted=f"within {_range_text(each)}",
+        fixes=_to_the_end(each),
+    )
 
 
 def _range_fields(each: _Placed) -> tuple[str, str]:
@@ -391,37 +398,39 @@ def setting_never_reached(installed: Installed, plant: Plant) -> Verdict:
         def unreached(numbers: tuple[float, ...], each: _Placed = each) -> bool:
             return not _is_reached(_setting_ma(*numbers, installed, each.which))
 
-        ma = _setting_ma(*each.ways[0].numbers, installed, each.which)
-        end_ma = MEASUREMENT_MAX_MA if ma > 12 else MEASUREMENT_MIN_MA
-        title = title_of(each.name)
-        lrv, urv = format_number(each.lrv.number), format_number(each.urv.number)
-        shown = _say(
-            Found(
-                values={
-                    "title": title,
-                    "setting": str(each.value),
-                    "range": _range_text(each),
-                    "ma": f"{format_number(round(ma, 3))} mA",
-                    "end": f"{format_number(end_ma)} mA",
-                },
-                fields=(each.name, *_range_fields(each)),
-                part=title,
-                found=f"{each.value} at {format_number(round(ma, 3))} mA",
-                wanted=f"within {_range_text(each)}",
-                off_by=f"{format_number(round(abs(ma - end_ma), 3))} mA",
-                working=f"4 mA + 16 mA x ({each.value} - {lrv}) / ({urv} - {lrv}) = {format_number(round(ma, 3))} mA"
-                if _is_linear(each, installed)
-                else "",
-                fixes=_to_the_end(each),
-            ),
-            each.ways,
-            unreached,
-        )
+        shown = _say(lambda each=each: _never_reached(each, installed), each.ways, unreached)  # type: ignore[misc]
         if shown is not None:
             found.append(shown)
     if found:
         return found
     return Unchecked(*dict.fromkeys(unplaced)) if unplaced else None
+
+
+def _never_reached(each: _Placed, installed: Installed) -> Found:
+    ma = _setting_ma(*each.ways[0].numbers, installed, each.which)
+    end_ma = MEASUREMENT_MAX_MA if ma > 12 else MEASUREMENT_MIN_MA
+    title = title_of(each.name)
+    needs = f"{format_number(round(ma, 3))} mA"
+    working = ""
+    if _is_linear(each, installed):
+        lrv, urv = format_number(each.lrv.number), format_number(each.urv.number)
+        working = f"4 mA + 16 mA x ({each.value} - {lrv}) / ({urv} - {lrv}) = {needs}"
+    return Found(
+        values={
+            "title": title,
+            "setting": str(each.value),
+            "range": _range_text(each),
+            "ma": needs,
+            "end": f"{format_number(end_ma)} mA",
+        },
+        fields=(each.name, *_range_fields(each)),
+        part=title,
+        found=f"{each.value} at {needs}",
+        wanted=f"within {_range_text(each)}",
+        off_by=f"{format_number(round(abs(ma - end_ma), 3))} mA",
+        working=working,
+        fixes=_to_the_end(each),
+    )
 
 
 def _is_linear(each: _Placed, installed: Installed) -> bool:
@@ -489,7 +498,7 @@ def _against_trip(installed: Installed, plant: Plant, *, at_or_beyond: bool) -> 
     if at_or_beyond:
         numbers = ways[0].numbers
         return _say(
-            Found(
+            lambda: Found(
                 values={
                     "title": title,
                     "alarm": str(alarm),
@@ -537,7 +546,7 @@ def _too_near(installed: Installed, plant: Plant, name: str, alarm: Quantity, tr
     farthest = trip.number - sign * span * percent / 100 / factor
     wanted = Quantity.made(farthest, trip.unit, trip.reference)
     return _say(
-        Found(
+        lambda: Found(
             values={
                 "title": title,
                 "alarm": str(alarm),
@@ -629,7 +638,7 @@ def trip_above_design(installed: Installed, plant: Plant) -> Verdict:
     if ways is None:
         return Unchecked(f"trip and {title_of(name)} in one dimension and reference")
     return _say(
-        Found(
+        lambda: Found(
             values={"trip": str(trip), "design": str(design)},
             fields=("trip", name),
             part="trip",
@@ -910,7 +919,7 @@ def redundant_trips_differ(group: tuple[Installed, ...], plant: Plant) -> Verdic
     )
     cells = tuple(cell for each in group for cell in each.cells("trip"))
     found = Found(values={"settings": settings}, fields=("trip",), found=settings, wanted="one setting", cells=cells)
-    shown: Found | None = found if len(directions) > 1 else _say(found, ways, differ)
+    shown: Found | None = found if len(directions) > 1 else _say(lambda: found, ways, differ)
     if shown is not None and not isinstance(shown, Review) and how_redundant(group, plant) == "suffix":
         values_of = {name: getattr(shown, name) for name in shown.__dataclass_fields__}
         values_of["message"] = (
