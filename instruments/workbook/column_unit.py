@@ -1,4 +1,4 @@
-"""Units of the columns that hold bare numbers (volts, ohm, nF, metres): what a number written in another size means there."""
+"""The unit of a column of bare numbers (volts, ohm, nF, metres), and what a number of another size means in it."""
 
 from __future__ import annotations
 
@@ -14,26 +14,73 @@ __all__ = ["factor_to", "read_plain_number"]
 # Unit to what it is in the quantity's base: exact by definition (SI prefixes, inch 25.4 mm).
 _SIZES: Final[dict[str, tuple[str, float]]] = {}
 for _quantity, _units in {
-    "volt": {"v": 1.0, "mv": 1e-3, "kv": 1e3, "vdc": 1.0, "v dc": 1.0, "volt": 1.0, "volts": 1.0, "vac": 1.0, "v d.c.": 1.0},
+    "volt": {
+        "v": 1.0,
+        "mv": 1e-3,
+        "kv": 1e3,
+        "vdc": 1.0,
+        "v dc": 1.0,
+        "volt": 1.0,
+        "volts": 1.0,
+        "vac": 1.0,
+        "v d.c.": 1.0,
+    },
     "ampere": {"a": 1.0, "ma": 1e-3, "ua": 1e-6, "madc": 1e-3, "ma dc": 1e-3},
     "ohm": {"ohm": 1.0, "ohms": 1.0, "ω": 1.0, "r": 1.0, "kohm": 1e3, "kω": 1e3, "k ohm": 1e3},
     "watt": {"w": 1.0, "mw": 1e-3, "watt": 1.0, "watts": 1.0, "kw": 1e3},
     "farad": {"pf": 1e-12, "nf": 1e-9, "uf": 1e-6, "mf": 1e-3, "µf": 1e-6},
     "henry": {"nh": 1e-9, "uh": 1e-6, "mh": 1e-3, "h": 1.0, "microhenry": 1e-6, "henry": 1.0},
     "metre": {
-        "m": 1.0, "mtr": 1.0, "mtrs": 1.0, "metre": 1.0, "metres": 1.0, "meter": 1.0, "meters": 1.0, "mm": 1e-3, "cm": 1e-2,
-        "km": 1e3, "ft": 0.3048, "feet": 0.3048, "foot": 0.3048, "in": 0.0254, "inch": 0.0254, "yd": 0.9144, "lm": 1.0,
+        "m": 1.0,
+        "mtr": 1.0,
+        "mtrs": 1.0,
+        "metre": 1.0,
+        "metres": 1.0,
+        "meter": 1.0,
+        "meters": 1.0,
+        "mm": 1e-3,
+        "cm": 1e-2,
+        "km": 1e3,
+        "ft": 0.3048,
+        "feet": 0.3048,
+        "foot": 0.3048,
+        "in": 0.0254,
+        "inch": 0.0254,
+        "yd": 0.9144,
+        "lm": 1.0,
     },
     "square metre": {"mm2": 1e-6, "sq mm": 1e-6, "sqmm": 1e-6, "cm2": 1e-4, "m2": 1.0, "mm^2": 1e-6},
     "ohm per metre": {
-        "ohm/km": 1e-3, "ω/km": 1e-3, "ohms/km": 1e-3, "ohm/m": 1.0, "ohm/1000m": 1e-3, "mohm/m": 1e-3, "mω/m": 1e-3,
-        "ohm/1000ft": 1.0 / 304.8, "ohm/kft": 1.0 / 304.8, "ohms/1000ft": 1.0 / 304.8, "ohm/mft": 1.0 / 304.8, "ω/1000ft": 1.0 / 304.8,
+        "ohm/km": 1e-3,
+        "ω/km": 1e-3,
+        "ohms/km": 1e-3,
+        "ohm/m": 1.0,
+        "ohm/1000m": 1e-3,
+        "mohm/m": 1e-3,
+        "mω/m": 1e-3,
+        "ohm/1000ft": 1.0 / 304.8,
+        "ohm/kft": 1.0 / 304.8,
+        "ohms/1000ft": 1.0 / 304.8,
+        "ohm/mft": 1.0 / 304.8,
+        "ω/1000ft": 1.0 / 304.8,
     },
     "farad per metre": {
-        "pf/m": 1e-12, "nf/km": 1e-12, "nf/m": 1e-9, "uf/km": 1e-9, "pf/ft": 1e-12 / 0.3048, "nf/1000ft": 1e-9 / 304.8, "pf/km": 1e-15,
+        "pf/m": 1e-12,
+        "nf/km": 1e-12,
+        "nf/m": 1e-9,
+        "uf/km": 1e-9,
+        "pf/ft": 1e-12 / 0.3048,
+        "nf/1000ft": 1e-9 / 304.8,
+        "pf/km": 1e-15,
     },
     "henry per metre": {
-        "uh/m": 1e-6, "mh/km": 1e-6, "uh/km": 1e-9, "nh/m": 1e-9, "uh/ft": 1e-6 / 0.3048, "mh/m": 1e-3, "mh/1000ft": 1e-3 / 304.8,
+        "uh/m": 1e-6,
+        "mh/km": 1e-6,
+        "uh/km": 1e-9,
+        "nh/m": 1e-9,
+        "uh/ft": 1e-6 / 0.3048,
+        "mh/m": 1e-3,
+        "mh/1000ft": 1e-3 / 304.8,
     },
     "henry per ohm": {"uh/ohm": 1e-6, "uh/ω": 1e-6, "mh/ohm": 1e-3, "mh/ω": 1e-3},
     "percent": {"%": 0.01, "pct": 0.01, "percent": 0.01, "% url": 0.01, "% of url": 0.01, "%url": 0.01},
@@ -78,11 +125,15 @@ def factor_to(column_unit: str, written: str) -> tuple[float, float] | None:
 
 
 _NUMBER_AND_UNIT: Final = re.compile(
-    r"(?P<number>[<>≤≥~≈]?\s?[-+−–]?\s?(?:\d[\d.,' \u00a0]{0,20}\d|\d|[.,]\d{1,9})(?:[eE][-+]?\d{1,3})?)\s?(?P<unit>[^\d\s].{0,23})?", re.DOTALL
+    r"(?P<number>[<>≤≥~≈]?\s?[-+−–]?\s?(?:\d[\d.,' \u00a0]{0,20}\d|\d|[.,]\d{1,9})(?:[eE][-+]?\d{1,3})?)\s?"
+    r"(?P<unit>[^\d\s].{0,23})?",
+    re.DOTALL,
 )
 
 
-def read_plain_number(cell: object, column_unit: str, *, heading_unit: str | None, decimal: str | None) -> float | CellTrouble:
+def read_plain_number(
+    cell: object, column_unit: str, *, heading_unit: str | None, decimal: str | None
+) -> float | CellTrouble:
     """Read a bare number of a column with a unit of its own.
 
     Parameters
@@ -96,8 +147,10 @@ def read_plain_number(cell: object, column_unit: str, *, heading_unit: str | Non
     decimal
         The sheet's decimal mark.
 
-    >>> read_plain_number("250 Ω", "ohm", heading_unit=None, decimal="."), read_plain_number(300.0, "m", heading_unit="ft", decimal=".")
-    (250.0, 91.44)
+    >>> read_plain_number("250 Ω", "ohm", heading_unit=None, decimal=".")
+    250.0
+    >>> read_plain_number(300.0, "m", heading_unit="ft", decimal=".")
+    91.44
     >>> read_plain_number("12 furlongs", "m", heading_unit=None, decimal=".").reason
     "unit 'furlongs' is not a unit of this column (m)"
     """

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, replace
 from functools import lru_cache
 from itertools import islice
 from typing import Final
@@ -54,6 +54,11 @@ class ColumnMatch:
         What the cells leave out because the heading says it: ``Zone`` before a bare 2.
     parts
         Columns that say the rest of it, each with its own prefix: gas group, temperature class.
+    piece
+        Which of how many values in each cell is meant, where a column holds two (design P/T); else None.
+    only
+        The first letter of the tags that the column speaks of (a flow column says nothing of a pressure);
+        blank: all.
     """
 
     column: Column
@@ -66,6 +71,8 @@ class ColumnMatch:
     unit_index: int | None = None
     prefix: str = ""
     parts: tuple[tuple[int, str], ...] = ()
+    piece: tuple[int, int] | None = None
+    only: str = ""
 
     @property
     def field(self) -> str:
@@ -138,7 +145,7 @@ _PHRASES: Final = tuple(
 )
 # SafetyNotes, TagName: names as programs write them.
 _HUMPS: Final = re.compile(r"(?<=[a-z])(?=[A-Z][a-z])")
-_INITIALS: Final = re.compile(r"\b(?:[a-z]\.\s?){2,5}[a-z]?\b\.?")
+_INITIALS: Final = re.compile(r"\b(?:[a-z]\.\s?){1,5}[a-z]\b\.?")
 _SPLIT: Final = re.compile(r"[^0-9a-z%#µμ°Ω&]+")
 _ONE_WORD: Final[Mapping[str, str]] = {
     spelling: word
@@ -182,6 +189,10 @@ _ONE_WORD: Final[Mapping[str, str]] = {
         "range": ("ranges", "rng", "rge"),
         "messbereich": ("messber", "messbereiche"),
         "einheit": ("einh",),
+        "betriebstemperatur": ("betriebstemp",),
+        "auslegungstemperatur": ("auslegungstemp", "ausltemp"),
+        "betriebsdruck": ("betriebsdr",),
+        "auslegungsdruck": ("auslegungsdr",),
         "bezeichnung": ("bez", "bezeichn"),
         "address": ("addr", "adress", "addresses"),
         "supply": ("supplies", "suppl"),
@@ -194,19 +205,28 @@ _ONE_WORD: Final[Mapping[str, str]] = {
     for spelling in spellings
 }
 # Words that say nothing about which field it is.
-_DROPPED: Final = frozenset({
-    "no", "nr", "num", "number", "nos", "nummer", "nbr", "#", "of", "the", "for", "a", "an", "and", "or", "der", "die",
-    "das", "des", "und", "in", "at", "&", "numero", "n°", "du", "et", "oder", "s",
-})
-_NEUTRAL: Final = frozenset({
-    "detail", "data", "information", "info", "general", "particular", "instrument", "field", "project", "client", "site",
-    "current", "actual", "final", "existing", "ref", "reference", "as", "built", "proposed", "main", "process", "column",
-    "technical", "electrical", "daten", "allgemein", "requirement", "condition", "parameter", "characteristic", "value",
-    "connection", "title", "hazardous", "plant", "mechanical", "specification",
-})
-_KEEP_S: Final = frozenset({"class", "status", "process", "gas", "bus", "address", "loss", "us", "as", "is", "access",
-                            "chassis", "basis", "press", "cis", "dcs", "plcs", "pls", "sis", "fgs", "pcs", "bpcs",
-                            "fails", "sps", "adsress", "abs"})
+_DROPPED: Final = frozenset(
+    (
+        "no", "nr", "num", "number", "nos", "nummer", "nbr", "#", "of", "the", "for", "a", "an", "and", "or", "der",
+        "die", "das", "des", "und", "in", "at", "&", "numero", "n°", "du", "et", "oder", "s",
+    )
+)  # fmt: skip
+_NEUTRAL: Final = frozenset(
+    (
+        "detail", "data", "information", "info", "general", "particular", "instrument", "field", "project",
+        "client", "site", "current", "actual", "final", "existing", "ref", "reference", "as", "built", "proposed",
+        "main", "process", "column", "technical", "electrical", "daten", "allgemein", "requirement", "condition",
+        "parameter", "characteristic", "value", "connection", "title", "hazardous", "plant", "mechanical",
+        "specification",
+    )
+)  # fmt: skip
+_KEEP_S: Final = frozenset(
+    (
+        "class", "status", "process", "gas", "bus", "address", "loss", "us", "as", "is", "access", "chassis",
+        "basis", "press", "cis", "dcs", "plcs", "pls", "sis", "fgs", "pcs", "bpcs", "fails", "sps", "adsress",
+        "abs",
+    )
+)  # fmt: skip
 
 
 @lru_cache(maxsize=65536)
@@ -242,27 +262,33 @@ def _one_word(word: str) -> str:
 _WEAK: Final = frozenset(
     heading_words(text)
     for text in (
-        "min", "max", "from", "to", "unit", "type", "class", "low", "high", "name", "item", "set", "normal", "fail", "zone",
-        "index", "box", "run", "by", "ex", "me", "point", "zero", "span", "scale", "td", "co", "ca", "la", "pi", "po", "ci",
-        "li", "io", "cn", "ui", "ii", "uo", "h", "l", "hh", "ll", "function", "position", "art", "package", "power",
-        "supply", "output", "signal", "state", "device", "text", "id", "code", "source", "drop", "in", "field", "circuit",
-        "loop tag", "ident", "process min", "process max", "vmax", "level", "enclosure", "connection", "temperature", "pressure",
-        "start", "end", "group", "marking", "reference", "connected to", "value", "diode", "limit", "length", "ort", "size",
-        "installation", "architecture", "room", "deck", "grid", "burst", "sensor", "class of sensor", "product", "stoff",
-        "material", "dimension", "interlock", "channel", "address", "failure", "trip", "listing", "approval", "operating",
+        "min", "max", "from", "to", "unit", "type", "class", "low", "high", "name", "item", "set", "normal", "fail",
+        "zone", "index", "box", "run", "by", "ex", "me", "point", "zero", "span", "scale", "td", "co", "ca", "la",
+        "pi", "po", "ci", "li", "io", "cn", "ui", "ii", "uo", "h", "l", "hh", "ll", "function", "position", "art",
+        "package", "power", "supply", "output", "signal", "state", "device", "text", "id", "code", "source", "drop",
+        "in", "field", "circuit", "loop tag", "ident", "process min", "process max", "vmax", "level", "enclosure",
+        "connection", "temperature", "pressure", "start", "end", "group", "marking", "reference", "connected to",
+        "value", "diode", "limit", "length", "ort", "size", "installation", "architecture", "room", "deck", "grid",
+        "burst", "sensor", "class of sensor", "product", "stoff", "material", "dimension", "interlock", "channel",
+        "address", "failure", "trip", "listing", "approval", "operating",
     )
-)
+)  # fmt: skip
 # Headings that need the heading above them to mean anything.
-_DEPENDENT: Final = frozenset({
-    "min", "max", "normal", "unit", "low", "high", "from", "to", "type", "length", "size", "class", "group", "zone", "code",
-    "temperature", "pressure", "set", "trip", "name", "description", "value", "eu", "uom", "von", "bis", "l", "h", "typ",
-    "einheit", "setpoint", "tag", "address", "marking", "service", "material", "model",
-})
+_DEPENDENT: Final = frozenset(
+    (
+        "min", "max", "normal", "unit", "low", "high", "from", "to", "type", "length", "size", "class", "group",
+        "zone", "code", "temperature", "pressure", "set", "trip", "name", "description", "value", "eu", "uom",
+        "von", "bis", "l", "h", "typ", "einheit", "setpoint", "tag", "address", "marking", "service", "material",
+        "model",
+    )
+)  # fmt: skip
 _GENERIC_UNITS: Final = frozenset(
     heading_words(text)
-    for text in ("unit", "e.u.", "uom", "engineering unit", "eng. units", "einheit", "unit of measure", "me", "unite",
-                 "dimension", "unit of measurement", "u/m", "measuring unit", "masseinheit", "einh.")
-)
+    for text in (
+        "unit", "e.u.", "uom", "engineering unit", "eng. units", "einheit", "unit of measure", "me", "unite",
+        "dimension", "unit of measurement", "u/m", "measuring unit", "masseinheit", "einh.",
+    )
+)  # fmt: skip
 _TITLE_WORDS: Final = re.compile(
     r"\b(?:doc(?:ument)?|rev(?:ision)?|date|project|client|sheet|page|prepared|checked|approved|title|job|contract|"
     r"customer|purchaser|location of plant|issued?|datum|blatt|projekt|kunde|erstellt|geprueft)\b"
@@ -304,6 +330,10 @@ class _Names:
                 return [(strength - 0.08, "synonym", column) for strength, column in found]
         return []
 
+    def knows(self, words: tuple[str, ...]) -> bool:
+        """Whether words are a heading, in whatever order."""
+        return words in self.exact or tuple(sorted(words)) in self.loose
+
     def like(self, words: tuple[str, ...]) -> list[tuple[float, str, Column]]:
         """Return the columns whose headings words resemble."""
         known = self._likes.get(words)
@@ -323,11 +353,13 @@ class _Names:
 
 
 # Min is like max in letters only.
-_QUALIFYING: Final = frozenset({
-    "min", "max", "normal", "low", "high", "ll", "hh", "l", "h", "from", "to", "upper", "lower", "unit", "von", "bis", "anfang",
-    "ende", "design", "operating", "system", "device", "former", "old", "iic", "iib", "iia", "seal", "ambient", "process",
-    "type", "length", "class", "group", "size", "position", "direction", "no",
-})
+_QUALIFYING: Final = frozenset(
+    (
+        "min", "max", "normal", "low", "high", "ll", "hh", "l", "h", "from", "to", "upper", "lower", "unit", "von",
+        "bis", "anfang", "ende", "design", "operating", "system", "device", "former", "old", "iic", "iib", "iia",
+        "seal", "ambient", "process", "type", "length", "class", "group", "size", "position", "direction", "no",
+    )
+)  # fmt: skip
 
 
 def _qualifiers(text: str) -> frozenset[str]:
@@ -392,7 +424,7 @@ def unit_for(column: Column, text: str) -> Unit | str | None:
     return None
 
 
-_NO_UNITS: Final = frozenset({"l", "h", "ll", "hh", "min", "max", "no", "in", "from", "to", "at"})
+_NO_UNITS: Final = frozenset(["l", "h", "ll", "hh", "min", "max", "no", "in", "from", "to", "at"])
 
 
 def _without_unit(text: str) -> Iterator[tuple[str, str]]:
@@ -422,17 +454,20 @@ class _Finder:
         self._known: dict[_Levels, tuple[_Candidate, ...]] = {}
 
     def candidates(self, levels: _Levels) -> tuple[_Candidate, ...]:
+        """Return what a heading may be by its words."""
         known = self._known.get(levels)
         if known is None:
-            known = self._known[levels] = tuple(self._candidates(levels))
+            known = self._known[levels] = tuple(self._candidates(levels, alike=False))
         return known
 
-    def _candidates(self, levels: _Levels) -> Iterable[_Candidate]:
+    def candidates_or_alike(self, levels: _Levels) -> tuple[_Candidate, ...]:
+        """Return what a heading may be by its words, else by likeness."""
+        return self.candidates(levels) or tuple(self._candidates(levels, alike=True))
+
+    def _candidates(self, levels: _Levels, *, alike: bool) -> Iterable[_Candidate]:
         best: dict[str, _Candidate] = {}
 
-        def offer(
-            found: Sequence[tuple[float, str, Column]], factor: float, unit_text: str | None, weak: bool
-        ) -> None:
+        def offer(found: Sequence[tuple[float, str, Column]], factor: float, unit_text: str | None, weak: bool) -> None:
             for strength, how, column in found:
                 stated = None if unit_text is None else unit_for(column, unit_text)
                 if unit_text is not None and stated is None:
@@ -442,13 +477,20 @@ class _Finder:
                 if (
                     other is None
                     or strength > other.strength
-                    or (stated and not other.unit_text and strength > 0.9 * other.strength)
+                    or (stated and not other.unit_text and strength > 0.8 * other.strength)
                 ):
                     best[column.field] = _Candidate(
                         strength, how, column, stated if isinstance(stated, Unit) else None, unit_text or "", weak
                     )
 
         whole = levels.joined
+        if alike and heading_words(levels.texts[-1]) in _GENERIC_UNITS:
+            return ()
+        if alike:
+            offer(self.names.like(heading_words(whole)), 1.0, None, True)
+            for rest, unit in _without_unit(whole):
+                offer(self.names.like(heading_words(rest)), 1.0, unit, True)
+            return best.values()
         for text, factor in self._readings(levels):
             words = heading_words(text)
             if not words or words in _GENERIC_UNITS:
@@ -460,10 +502,6 @@ class _Finder:
                 if short and short != words:
                     weak = short in _WEAK
                     offer(self.names.find(short), factor * (0.85 if weak else 1.0), unit, weak)
-        if not best:
-            offer(self.names.like(heading_words(whole)), 1.0, None, True)
-            for rest, unit in _without_unit(whole):
-                offer(self.names.like(heading_words(rest)), 1.0, unit, True)
         return best.values()
 
     def _readings(self, levels: _Levels) -> Iterator[tuple[str, float]]:
@@ -471,7 +509,8 @@ class _Finder:
         texts = levels.texts
         yield levels.joined, 1.0
         if len(texts) == 3:
-            yield f"{texts[0]} {texts[2]}", 0.98
+            if all(word in _NEUTRAL for word in heading_words(texts[1])):
+                yield f"{texts[0]} {texts[2]}", 0.98
             yield f"{texts[1]} {texts[2]}", 0.97
         if len(texts) > 1:
             above, below = " ".join(texts[:-1]), texts[-1]
@@ -497,11 +536,11 @@ class _Finder:
         words, over = heading_words(below), heading_words(above)
         if all(word in _NEUTRAL for word in over):
             return True
+        if words in (("ll",), ("hh",), ("l",), ("h",)):
+            return bool({"alarm", "setting", "setpoint", "limit", "trip", "set"} & set(over))
         if words and all(word in _DEPENDENT for word in words):
             fields = {column.field for _, _, column in self.names.find(words)}
             return any(column.field in fields for _, _, column in self.names.find(over))
-        if words in (("ll",), ("hh",), ("l",), ("h",)):
-            return bool({"alarm", "setting", "setpoint", "limit", "trip", "set"} & set(over))
         return True
 
 
@@ -517,21 +556,24 @@ _TWO_NUMBERS: Final = re.compile(
 )
 _KEYWORD: Final = re.compile(r"amb(?:ient)?|atm|fv|full vac(?:uum)?|vac(?:uum)?", re.IGNORECASE)
 _NUMBER_AND_WORDS: Final = re.compile(r"[+\-]?[\d.,]{1,12}\s?[^\d\s]{0,12}(?:\s[^\d\s]{1,12}){0,2}")
-_TAG_LIKE: Final = re.compile(r"[\W_]{0,2}[0-9]{0,4}[\W_]?[A-Za-zА-яΑ-ω]{1,24}[A-Za-z0-9А-яΑ-ω._/\\ \-–‑−()+*~:=,&]{0,40}")
+_TAG_LIKE: Final = re.compile(
+    r"[\W_]{0,2}[0-9]{0,4}[\W_]?[A-Za-zА-яΑ-ω]{1,24}[A-Za-z0-9А-яΑ-ω._/\\ \-–‑−()+*~:=,&]{0,40}"
+)
 _IO_WORD: Final = re.compile(
     r"(?:h?(?:[ad][io]|p[io]|r?tdi?|rtd|tc|ff|pa|bus|hart|soft|serial|analog(?:ue)?[ -]?(?:in|out)(?:put)?|"
-    r"digital[ -]?(?:in|out)(?:put)?|discrete[ -]?(?:in|out)(?:put)?|ae|aa|be|ba|de|da|uio|uai|eth(?:ernet)?|modbus|pulse))"
+    r"digital[ -]?(?:in|out)(?:put)?|discrete[ -]?(?:in|out)(?:put)?|ae|aa|be|ba|de|da|uio|uai|eth(?:ernet)?|modbus|"
+    r"pulse))"
     r"(?:[ \-]?(?:is|hart|ex|nis|s|sis|4-20.{0,8}))?(?:\s?[/+,&]\s?[a-z]{2,4}){0,3}",
     re.IGNORECASE,
 )
 _SIGNAL: Final = re.compile(
-    r"(?i).*(?:m\s?a\b|hart|contact|\bvfc\b|volt[ -]?free|pt ?-?\s?1?00|thermocouple|\btype [kjtnrsbe]\b|pulse|modbus|fieldbus|"
-    r"profibus|foundation|\d\s?v(?:dc|ac)?\b|namur|relay|solenoid|dry|potential[ -]?free|\brtd\b|\bt/?c\b|rs-?485|psi|bar\b|"
-    r"pneumatic|frequency|\bhz\b|binary|\bff\b|\bpa\b|digital|analog|npn|pnp|prox|potential)"
+    r"(?i)(?:m\s?a\b|hart|contact|\bvfc\b|volt[ -]?free|pt ?-?\s?1?00|thermocouple|\btype [kjtnrsbe]\b|pulse|modbus|"
+    r"fieldbus|profibus|foundation|\d\s?v(?:dc|ac)?\b|namur|relay|solenoid|dry|potential[ -]?free|\brtd\b|"
+    r"\bt/?c\b|rs-?485|psi|bar\b|pneumatic|frequency|\bhz\b|binary|\bff\b|\bpa\b|digital|analog|npn|pnp|prox|potential)"
 )
 _AREA_CLASS: Final = re.compile(
-    r"(?i).*(?:zone|\bz ?[012]{1,2}\b|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|unclass|haz|^n/?a$|^none$|\bex\b|^(?:0|1|2|20|21|22)$|"
-    r"^ii[abc]|general purpose|^nh$|^\W{0,2}z[012])"
+    r"(?i)(?:zone|\bz ?[012]{1,2}\b|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|unclass|haz|^n/?a$|^none$|\bex\b|"
+    r"^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$|^\W{0,2}z[012])"
 )
 _DOCUMENT: Final = re.compile(r"(?=.*\d)[\w.\-/&() ]{4,60}")
 _CODE_LIKE: Final = re.compile(r"(?=.*[A-Za-z])(?=.*\d)[\w.\-/+*]{2,30}")
@@ -573,11 +615,15 @@ class _Contents:
         self.count = len(texts)
         self.numbers = numbers
         self.sequence = sequence and last > 0 and bool(texts)
-        self._fits: dict[str, float] = {}
+        self._fits: dict[int, float] = {}
 
     def part(self, pattern: re.Pattern[str]) -> float:
         """Return the part of the cells that a pattern fits whole."""
         return sum(pattern.fullmatch(text) is not None for text in self.texts) / self.count if self.count else 0.0
+
+    def holds(self, pattern: re.Pattern[str]) -> float:
+        """Return the part of the cells that hold a pattern."""
+        return sum(pattern.search(text) is not None for text in self.texts) / self.count if self.count else 0.0
 
     def units(self) -> float:
         """Return the part of the cells that are units; of the different texts, where that is more."""
@@ -597,9 +643,10 @@ class _Contents:
         """Return how far the cells fit a column, 0 to 1; 0.6 where there are none to judge by."""
         if not self.count:
             return 0.6
-        known = self._fits.get(column.field)
+        # By the column and not its field: two kinds of sheet may read one field name in two ways.
+        known = self._fits.get(id(column))
         if known is None:
-            known = self._fits[column.field] = self._fit(column, codes)
+            known = self._fits[id(column)] = self._fit(column, codes)
         return known
 
     def _fit(self, column: Column, codes: frozenset[str]) -> float:
@@ -615,11 +662,18 @@ class _Contents:
         if reads in (Reads.QUANTITY, Reads.NUMBER, Reads.COUNT):
             if self.part(_TWO_NUMBERS) > 0.5:
                 return 0.2
-            return max(self.part(_ONE_NUMBER), self.part(_NUMBER_AND_WORDS)) if not self.sequence or self.count < 8 else 0.5
+            return (
+                max(self.part(_ONE_NUMBER), self.part(_NUMBER_AND_WORDS))
+                if not self.sequence or self.count < 8
+                else 0.5
+            )
         if reads is Reads.RANGE:
             return self.part(_TWO_NUMBERS)
         if reads is Reads.TRIPLET:
-            return sum(_NUMBER.match(text) is not None or _KEYWORD.fullmatch(text) is not None for text in self.texts) / self.count
+            return (
+                sum(_NUMBER.match(text) is not None or _KEYWORD.fullmatch(text) is not None for text in self.texts)
+                / self.count
+            )
         if reads is Reads.WORD:
             return self.in_words(column.words)
         if reads is Reads.YES_NO:
@@ -641,12 +695,12 @@ class _Contents:
         if name == "io_type":
             return self.part(_IO_WORD)
         if name == "signal":
-            return max(self.part(_SIGNAL), 0.4 * (1 - self.part(_IO_WORD)))
+            return max(self.holds(_SIGNAL), 0.4 * (1 - self.part(_IO_WORD)))
         if name in ("area_classification", "process_zone"):
-            return self.part(_AREA_CLASS)
+            return self.holds(_AREA_CLASS)
         if name == "area":
             listed = sum(folded(text) in codes for text in self.texts) / self.count
-            return max(listed, 0.6 * (1 - self.part(_AREA_CLASS)))
+            return max(listed, 0.6 * (1 - self.holds(_AREA_CLASS)))
         if name == "device_type":
             listed = sum(folded(text) in codes for text in self.texts) / self.count
             return listed if codes else 0.3 * self.part(_CODE_LIKE)
@@ -672,7 +726,9 @@ class _Contents:
         return 0.25 if self.numbers == self.count and name in _NEVER_NUMBERS else 0.6
 
 
-_NEVER_NUMBERS: Final = frozenset({"fluid", "maker", "phase", "scope", "status", "signal", "service", "junction_box", "kind"})
+_NEVER_NUMBERS: Final = frozenset((
+    "fluid", "maker", "phase", "scope", "status", "signal", "service", "junction_box", "kind",
+))  # fmt: skip
 
 
 # --- the heading of one sheet ---------------------------------------------------------------------------------------
@@ -707,18 +763,19 @@ def match_sheet(
     wanted = [forced] if forced is not None else list(kinds)
     finders = [_Finder(kind) for kind in wanted]
     listed = _field_and_value(sheet, wanted)
-    tried = 0
     best: SheetMatch | None = None
-    for top, bottom in _blocks(sheet, finders):
+    contents: dict[tuple[int, int, str], _Contents] = {}
+    for tried, (top, bottom) in enumerate(_blocks(sheet, finders), start=1):
         levels = _levels(sheet, top, bottom)
         found = [
-            match for finder in finders if (match := _assign(sheet, finder, levels, top, bottom, codes)) is not None
+            match
+            for finder in finders
+            if (match := _assign(sheet, finder, levels, top, bottom, codes=codes, contents=contents)) is not None
         ]
         chosen = _choose(sheet, found, top)
         if chosen is not None and (best is None or chosen.score > best.score):
             best = chosen
-        tried += 1
-        if tried >= 4 and best is not None or tried >= 12:
+        if (tried >= 4 and best is not None) or tried >= 12:
             break
     if listed is not None and (best is None or listed.score >= best.score):
         return listed
@@ -735,21 +792,27 @@ def _rows_to_look_at(sheet: Sheet) -> Iterator[tuple[int, dict[int, str]]]:
 def _blocks(sheet: Sheet, finders: Sequence[_Finder]) -> list[tuple[int, int]]:
     """Return the rows that may be a heading, first and last, the likeliest first."""
     hits: dict[int, int] = {}
+    known: dict[str, bool] = {}
     for number, texts in _rows_to_look_at(sheet):
         count = 0
         for text in texts.values():
-            levels = _Levels((text,))
-            words = heading_words(text)
-            if words in _GENERIC_UNITS or any(
-                candidate.how == "synonym" for finder in finders for candidate in finder.candidates(levels)
-            ):
-                count += 1
+            hit = known.get(text)
+            if hit is None:
+                hit = known[text] = _is_heading_text(text, finders)
+            count += hit
         if count:
             hits[number] = count
-    best_rows = sorted(hits, key=lambda row: (-hits[row], row))[:8]
+    best_rows = sorted(hits, key=lambda row: (-hits[row], row))[:5]
     scored: dict[tuple[int, int], float] = {}
     for row in best_rows:
-        for top, bottom in ((row, row), (row - 1, row), (row, row + 1), (row - 2, row), (row - 1, row + 1), (row, row + 2)):
+        for top, bottom in (
+            (row, row),
+            (row - 1, row),
+            (row, row + 1),
+            (row - 2, row),
+            (row - 1, row + 1),
+            (row, row + 2),
+        ):
             if top < 0 or bottom >= len(sheet.rows) or (top, bottom) in scored:
                 continue
             if any(not any(cell is not None for cell in sheet.rows[each]) for each in range(top, bottom + 1)):
@@ -758,6 +821,15 @@ def _blocks(sheet: Sheet, finders: Sequence[_Finder]) -> list[tuple[int, int]]:
     # Of equals the shorter, then the higher: a repeated heading further down is no better.
     order = sorted(scored, key=lambda block: (-scored[block], block[1] - block[0], block[0]))
     return [block for block in order if scored[block] > 0]
+
+
+def _is_heading_text(text: str, finders: Sequence[_Finder]) -> bool:
+    """Whether a text, with or without what is in its brackets or behind its comma, is a heading of any kind."""
+    for each in dict.fromkeys((text, _BRACKET.sub(" ", text), text.partition(",")[0])):
+        words = heading_words(each)
+        if words and (words in _GENERIC_UNITS or any(finder.names.knows(words) for finder in finders)):
+            return True
+    return False
 
 
 def _name_score(sheet: Sheet, finders: Sequence[_Finder], top: int, bottom: int) -> float:
@@ -775,9 +847,7 @@ def _name_score(sheet: Sheet, finders: Sequence[_Finder], top: int, bottom: int)
         fields = {name for column in finder.kind.columns if column.field in taken for name in _fills(column)}
         keyed = any(all(name in fields for name in key) for key in finder.kind.key)
         best = max(best, sum(taken.values()) + (2.0 if keyed else 0.0))
-    numbers = sum(
-        isinstance(cell, float) for row in range(top, bottom + 1) for cell in sheet.rows[row]
-    )
+    numbers = sum(isinstance(cell, float) for row in range(top, bottom + 1) for cell in sheet.rows[row])
     return best - 0.5 * numbers - 0.05 * (bottom - top)
 
 
@@ -785,9 +855,7 @@ def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, _Levels]:
     """Return the heading of each column in the rows from `top` to `bottom`."""
     rows = range(top, bottom + 1)
     width = sheet.width
-    texts: list[list[str | None]] = []
-    for row in rows:
-        texts.append([as_text(cell).strip() or None if cell is not None else None for cell in sheet.rows[row]])
+    texts = [[as_text(cell).strip() or None for cell in sheet.rows[row]] for row in rows]
     spread: list[list[bool]] = [[False] * width for _ in rows]
     across: set[tuple[int, int]] = set()
     for first_row, first_column, last_row, last_column in sheet.merged:
@@ -841,7 +909,9 @@ def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, _Levels]:
 
 def _is_title_row(texts: Sequence[str | None]) -> bool:
     filled = [text for text in texts if text]
-    return any(_TITLE_WORDS.search(folded(text)) for text in filled if len(text) < 30) and len(filled) <= 6 or len(filled) == 1
+    return (any(_TITLE_WORDS.search(folded(text)) for text in filled if len(text) < 30) and len(filled) <= 6) or len(
+        filled
+    ) == 1
 
 
 def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, _Levels]) -> None:
@@ -857,8 +927,10 @@ def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, _Levels]) -> None
             over = None
         if over and column in found:
             words = heading_words(found[column].joined)
-            if words and all(word in _DEPENDENT for word in words) and not all(
-                word in _NEUTRAL for word in heading_words(over)
+            if (
+                words
+                and all(word in _DEPENDENT for word in words)
+                and not all(word in _NEUTRAL for word in heading_words(over))
             ):
                 found[column] = _Levels((f"{over} {found[column].joined}",))
 
@@ -876,23 +948,29 @@ def _occupies(column: Column) -> tuple[str, ...]:
 
 
 def _assign(
-    sheet: Sheet, finder: _Finder, levels: Mapping[int, _Levels], top: int, bottom: int, codes: frozenset[str]
+    sheet: Sheet,
+    finder: _Finder,
+    levels: Mapping[int, _Levels],
+    top: int,
+    bottom: int,
+    *,
+    codes: frozenset[str],
+    contents: dict[tuple[int, int, str], _Contents],
 ) -> SheetMatch | None:
     """Give each heading its field, the surest first; None where the sheet is not of this kind."""
     kind = finder.kind
     header_rows, first_row, units = _rows_below(sheet, finder, levels, top, bottom)
-    contents: dict[int, _Contents] = {}
 
     def content(index: int) -> _Contents:
-        found = contents.get(index)
+        heading = levels[index].texts[-1] if index in levels else ""
+        found = contents.get((index, first_row, heading))
         if found is None:
-            heading = levels[index].texts[-1] if index in levels else ""
-            found = contents[index] = _Contents(sheet, index, first_row, heading)
+            found = contents[index, first_row, heading] = _Contents(sheet, index, first_row, heading)
         return found
 
     offers: list[tuple[float, int, _Candidate, float, bool]] = []
     for index, heading in levels.items():
-        candidates = finder.candidates(heading)
+        candidates = finder.candidates_or_alike(heading)
         if not candidates:
             continue
         several = sum(candidate.how == "synonym" for candidate in candidates) > 1
@@ -907,7 +985,9 @@ def _assign(
     taken: set[str] = set()
     used: set[int] = set()
     notes: list[str] = []
-    for score, index, candidate, fit, several in offers:
+    _match_pairs(kind, levels, content, columns, used)
+    taken.update(columns)
+    for _, index, candidate, _, several in offers:
         column = candidate.column
         if index in used or taken.intersection(_occupies(column)) or column.field in columns:
             continue
@@ -919,6 +999,7 @@ def _assign(
             likelihood=round(min(1.0, candidate.strength), 3),
             unit=candidate.unit,
             unit_text=candidate.unit_text,
+            only=_only(column, levels[index]),
         )
         taken.update(_occupies(column))
         used.add(index)
@@ -932,9 +1013,7 @@ def _assign(
             if match.index == index and not match.unit_text:
                 stated = unit_for(match.column, text)
                 if stated is not None:
-                    columns[name] = replace(
-                        match, unit=stated if isinstance(stated, Unit) else None, unit_text=text
-                    )
+                    columns[name] = replace(match, unit=stated if isinstance(stated, Unit) else None, unit_text=text)
     fields = {name for match in columns.values() for name in _fills(match.column)} | set(columns)
     if not any(all(name in fields for name in key) for key in kind.key):
         return None
@@ -953,6 +1032,62 @@ def _assign(
         notes=tuple(notes),
         score=score,
     )
+
+
+_SPEAKS_OF: Final = {"flow": "F", "flowrate": "F", "durchfluss": "F", "level": "L", "fuellstand": "L"}
+
+
+def _only(column: Column, heading: _Levels) -> str:
+    """The first letter of the tags that a column of operating values speaks of, where its heading names a variable."""
+    if not column.field.startswith("operating_value"):
+        return ""
+    return next((_SPEAKS_OF[word] for word in heading_words(heading.joined) if word in _SPEAKS_OF), "")
+
+
+# Two values in one cell: what the heading says beside pressure and temperature.
+_PAIRED: Final = {
+    "design": ("design_pressure", "design_temperature"),
+    "operating": ("operating_pressure_normal", "operating_temperature_normal"),
+}
+_TWO_VALUES: Final = re.compile(r"[^/|\n;]{1,20}[/|\n;][^/|\n;]{1,20}")
+_PRESSURE_WORDS: Final = frozenset({"pressure", "p"})
+_TEMPERATURE_WORDS: Final = frozenset({"temperature", "t"})
+
+
+def _match_pairs(
+    kind: SheetKind,
+    levels: Mapping[int, _Levels],
+    content: Callable[[int], _Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+) -> None:
+    """Find the columns that hold a pressure and a temperature in each cell: Design P/T (barg / degC)."""
+    known = {column.field: column for column in kind.columns}
+    for index, heading in levels.items():
+        text = _BRACKET.sub(" ", heading.joined)
+        words = heading_words(text)
+        if not (_PRESSURE_WORDS.intersection(words) and _TEMPERATURE_WORDS.intersection(words)):
+            continue
+        names = next((_PAIRED[word] for word in words if word in _PAIRED), None)
+        if names is None or any(name not in known or name in columns for name in names):
+            continue
+        if content(index).part(_TWO_VALUES) < 0.5:
+            continue
+        bracket = _BRACKET.search(heading.joined)
+        units = [piece.strip() for piece in re.split(r"[/|,;]", bracket[1])] if bracket else []
+        first = next(word for word in words if word in _PRESSURE_WORDS or word in _TEMPERATURE_WORDS)
+        for place, name in enumerate(names if first in _PRESSURE_WORDS else names[::-1]):
+            stated = unit_for(known[name], units[place]) if len(units) == 2 else None
+            columns[name] = ColumnMatch(
+                column=known[name],
+                index=index,
+                heading=heading.joined,
+                likelihood=0.9,
+                unit=stated if isinstance(stated, Unit) else None,
+                unit_text=units[place] if stated is not None else "",
+                piece=(place, 2),
+            )
+        used.add(index)
 
 
 def _believed(candidate: _Candidate, cells: _Contents, fit: float, several: bool) -> bool:
@@ -992,6 +1127,8 @@ def _add_tag_without_heading(
     if "tag" in columns or not any(key == ("tag",) for key in kind.key) or len(columns) < 2:
         return
     column = kind.column("tag")
+    if _join_tag(column, levels, content, columns, used, width, notes):
+        return
     best: tuple[float, int] | None = None
     for index in range(width):
         if index in used:
@@ -1010,6 +1147,51 @@ def _add_tag_without_heading(
         used.add(best[1])
         notes.append(f"column '{heading}' is taken for the tag: its cells look like tags")
 
+
+_LETTERS_ONLY: Final = re.compile(r"[A-Z]{1,6}")
+_NUMBER_ONLY: Final = re.compile(r"[0-9]{1,6}[A-Z]?")
+_SUFFIX_ONLY: Final = re.compile(r"[A-Z]{1,2}[0-9]?|[0-9]{1,2}")
+
+
+def _join_tag(
+    column: Column,
+    levels: Mapping[int, _Levels],
+    content: Callable[[int], _Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+    width: int,
+    notes: list[str],
+) -> bool:
+    """Join a tag that stands in columns of its own: letters, number and suffix."""
+    for index in range(width - 1):
+        letters, number = content(index), content(index + 1)
+        if letters.count < 2 or number.count < 2 or index not in levels or index + 1 not in levels:
+            continue
+        if letters.part(_LETTERS_ONLY) < 0.9 or number.part(_NUMBER_ONLY) < 0.9:
+            continue
+        if sum(text[:1] in _TAG_FIRST for text in letters.texts) < 0.8 * letters.count or letters.part(_IO_WORD) > 0.5:
+            continue
+        parts = [(index + 1, "-")]
+        suffix = content(index + 2) if index + 2 < width else None
+        if (
+            suffix is not None
+            and suffix.count
+            and suffix.part(_SUFFIX_ONLY) > 0.9
+            and heading_words(levels[index + 2].joined if index + 2 in levels else "")[:1]
+            in (("suffix",), ("sfx",), ("suf",), ("tag",))
+        ):
+            parts.append((index + 2, ""))
+        heading = " ".join(levels[each].joined for each in (index, *(each for each, _ in parts)) if each in levels)
+        columns["tag"] = ColumnMatch(
+            column=column, index=index, heading=heading, how="contents", likelihood=0.7, parts=tuple(parts)
+        )
+        used.update((index, *(each for each, _ in parts)))
+        notes.append(f"columns '{heading}' are joined to the tag")
+        return True
+    return False
+
+
+_TAG_FIRST: Final = frozenset("ABEFHIJKLPQRSTUVWXYZCDGMN")
 
 # --- rows that belong to the heading --------------------------------------------------------------------------------
 
@@ -1041,9 +1223,7 @@ def _rows_below(
     return tuple(rows), rows[-1] + 1, units
 
 
-def _is_heading_more(
-    cells: Mapping[int, str], finder: _Finder, levels: Mapping[int, _Levels]
-) -> dict[int, str] | None:
+def _is_heading_more(cells: Mapping[int, str], finder: _Finder, levels: Mapping[int, _Levels]) -> dict[int, str] | None:
     """Return the units of a row that still belongs to the heading; None where it is data."""
     numeric: dict[int, list[Column]] = {}
     tag_index = None
@@ -1055,7 +1235,8 @@ def _is_heading_more(
     texts = list(cells.values())
     if len(texts) >= 3 and (
         [text.strip("()[].") for text in texts] == [str(number) for number in range(1, len(texts) + 1)]
-        or [text.strip("()[].").casefold() for text in texts] == [chr(97 + number) for number in range(min(26, len(texts)))]
+        or [text.strip("()[].").casefold() for text in texts]
+        == [chr(97 + number) for number in range(min(26, len(texts)))]
     ):
         return {}
     units = {
@@ -1094,11 +1275,7 @@ def _place_units(
     by_index = {match.index: match for match in columns.values()}
     beside: list[tuple[int, str]] = []
     known = {column.field: column for column in kind.columns}
-    generic = [
-        index
-        for index, heading in sorted(levels.items())
-        if index not in used and _is_unit_heading(heading)
-    ]
+    generic = [index for index, heading in sorted(levels.items()) if index not in used and _is_unit_heading(heading)]
     left_over: list[int] = []
     for index in generic:
         cells = content(index)
@@ -1124,8 +1301,9 @@ def _place_units(
         else:
             name = ""
         for match in own_group:
-            if not name or name not in match.column.unit_from and not (
-                name == "range_unit" and "settings_unit" in match.column.unit_from
+            if not name or (
+                name not in match.column.unit_from
+                and not (name == "range_unit" and "settings_unit" in match.column.unit_from)
             ):
                 columns[match.field] = by_index[match.index] = replace(match, unit_index=index)
                 if (index, levels[index].joined) not in beside:
@@ -1147,7 +1325,11 @@ def _is_unit_heading(heading: _Levels) -> bool:
 def _neighbours(index: int, step: int, by_index: Mapping[int, ColumnMatch]) -> list[ColumnMatch]:
     found: list[ColumnMatch] = []
     at = index + step
-    while (match := by_index.get(at)) is not None and match.column.reads in _NUMERIC and match.column.reads is not Reads.COUNT:
+    while (
+        (match := by_index.get(at)) is not None
+        and match.column.reads in _NUMERIC
+        and match.column.reads is not Reads.COUNT
+    ):
         found.append(match)
         at += step
     return found
@@ -1157,18 +1339,34 @@ def _neighbours(index: int, step: int, by_index: Mapping[int, ColumnMatch]) -> l
 _CLASS_PARTS: Final[tuple[tuple[str, str, tuple[str, ...]], ...]] = (
     ("class", "Class", ("class", "nec class", "hazard class")),
     ("division", "Div", ("division", "div")),
-    ("group", "Group", ("gas group", "group", "explosion group", "explosionsgruppe", "gas gr", "gas grp", "gr", "ex group",
-                        "gas/dust group", "apparatus group", "equipment group", "dust group", "gasgruppe", "groupe")),
-    ("temperature", "", ("t class", "temperature class", "tclass", "temperaturklasse", "t code", "temp code", "t rating",
-                         "temp rating", "temperature code", "t-klasse", "temperature rating", "temp klasse")),
+    (
+        "group",
+        "Group",
+        (
+            "gas group", "group", "explosion group", "explosionsgruppe", "gas gr", "gas grp", "gr", "ex group",
+            "gas/dust group", "apparatus group", "equipment group", "dust group", "gasgruppe", "groupe",
+        ),
+    ),
+    (
+        "temperature",
+        "",
+        (
+            "t class", "temperature class", "tclass", "temperaturklasse", "t code", "temp code", "t rating",
+            "temp rating", "temperature code", "t-klasse", "temperature rating", "temp klasse",
+        ),
+    ),
     ("epl", "", ("epl", "equipment protection level")),
     ("ambient", "", ("marked ambient", "ta range", "tamb")),
-)
+)  # fmt: skip
 _PART_WORDS: Final = {heading_words(text): (name, prefix) for name, prefix, texts in _CLASS_PARTS for text in texts}
 
 
 def _join_parts(
-    kind: SheetKind, levels: Mapping[int, _Levels], content: Callable[[int], _Contents], columns: dict[str, ColumnMatch], used: set[int]
+    kind: SheetKind,
+    levels: Mapping[int, _Levels],
+    content: Callable[[int], _Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
 ) -> None:
     """Join gas group, temperature class and the like to the classification or the marking they stand beside."""
     known = {column.field: column for column in kind.columns}
@@ -1180,7 +1378,11 @@ def _join_parts(
             columns[name] = replace(match, prefix="Zone")
         elif match is not None and heading_words(match.heading)[-1:] == ("class",):
             columns[name] = replace(match, prefix="Class")
-    owners = {match.index: name for name, match in columns.items() if name in ("area_classification", "ex_marking", "protection")}
+    owners = {
+        match.index: name
+        for name, match in columns.items()
+        if name in ("area_classification", "ex_marking", "protection")
+    }
     for index in sorted(levels):
         if index in used:
             continue
@@ -1215,7 +1417,9 @@ def _join_parts(
 def _part_of(heading: _Levels) -> tuple[str, str] | None:
     for text in (heading.joined, heading.texts[-1]):
         words = heading_words(text)
-        found = _PART_WORDS.get(words) or _PART_WORDS.get(tuple(word for word in words if word not in ("area", "hazardous", "ex")))
+        found = _PART_WORDS.get(words) or _PART_WORDS.get(
+            tuple(word for word in words if word not in ("area", "hazardous", "ex"))
+        )
         if found:
             return found
     return None
@@ -1224,7 +1428,9 @@ def _part_of(heading: _Levels) -> tuple[str, str] | None:
 # --- which kind of sheet --------------------------------------------------------------------------------------------
 
 # Names that nearly any sheet may bear.
-_FAINT_NAMES: Final = frozenset({"list", "data", "index", "io", "class", "cable", "loop", "trip", "alarm", "area", "i/o", "types"})
+_FAINT_NAMES: Final = frozenset((
+    "list", "data", "index", "io", "class", "cable", "loop", "trip", "alarm", "area", "i/o", "types",
+))  # fmt: skip
 
 
 def _name_points(kind: SheetKind, text: str) -> float:
@@ -1263,7 +1469,7 @@ def _choose(sheet: Sheet, found: Sequence[SheetMatch], top: int) -> SheetMatch |
         own_name = next(by_name for _, by_name, match in rated if match is best)
         for by_name, match in sorted(others, key=lambda each: (-each[0], -each[1].score)):
             more = len(best.columns) - len(match.columns)
-            if by_name > own_name and more <= 12 or more <= 0:
+            if (by_name > own_name and more <= 12) or more <= 0:
                 best = match
                 break
     by_name = next(by_name for _, by_name, match in rated if match is best)
@@ -1283,10 +1489,17 @@ def _field_and_value(sheet: Sheet, kinds: Sequence[SheetKind]) -> SheetMatch | N
             if filled and isinstance(filled[0], str) and len(filled) <= 4:
                 for _, _, column in names.find(heading_words(filled[0].strip(" :="))):
                     known.add(column.field)
-        named = max(_name_points(kind, sheet.name), _name_points(kind, re.split(r"[\\/]", sheet.file)[-1].rpartition(".")[0]))
-        if len(known) >= (2 if named else 3) or named and sheet.width <= 3 and known:
+        named = max(
+            _name_points(kind, sheet.name), _name_points(kind, re.split(r"[\\/]", sheet.file)[-1].rpartition(".")[0])
+        )
+        if len(known) >= (2 if named else 3) or (named and sheet.width <= 3 and known):
             return SheetMatch(
-                kind=kind, header_rows=(), first_row=0, columns={}, named=bool(named), score=len(known) + 3.0 * named,
+                kind=kind,
+                header_rows=(),
+                first_row=0,
+                columns={},
+                named=bool(named),
+                score=len(known) + 3.0 * named,
                 notes=("a field and its value on each row",),
             )
     return None

@@ -97,8 +97,27 @@ class Lists:
     index_columns: frozenset[str] = frozenset()
 
 
-_LEFT_OUT = ("cover", "revision", "rev history", "history", "legend", "note", "notes", "readme", "contents", "index of", "abbreviation",
-             "title", "deckblatt", "legende", "aenderung", "lookup", "dropdown", "lists", "validation")
+_LEFT_OUT = (
+    "cover",
+    "revision",
+    "rev history",
+    "history",
+    "legend",
+    "note",
+    "notes",
+    "readme",
+    "contents",
+    "index of",
+    "abbreviation",
+    "title",
+    "deckblatt",
+    "legende",
+    "aenderung",
+    "lookup",
+    "dropdown",
+    "lists",
+    "validation",
+)
 
 
 def read_lists(
@@ -226,9 +245,7 @@ def _match(sheets: Sequence[Sheet], kinds: Sequence[SheetKind]) -> list[SheetMat
     for sheet, match in zip(sheets, found, strict=True):
         if match is not None and match.kind.key != (("tag",),) and "code" in match.columns:
             index = match.columns["code"].index
-            codes.update(
-                folded(as_text(row[index])) for row in sheet.rows[match.first_row :] if row[index] is not None
-            )
+            codes.update(folded(as_text(row[index])) for row in sheet.rows[match.first_row :] if row[index] is not None)
     if codes:
         known = frozenset(codes)
         for number, (sheet, match) in enumerate(zip(sheets, found, strict=True)):
@@ -257,12 +274,16 @@ def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None]) -> s
         return "no sheet was found in the files"
     said = "; ".join(
         f"{PurePath(sheet.file).name}, sheet '{sheet.name}': "
-        + (f"taken for {match.kind.name}" if match else "no heading found" if any(any(c is not None for c in r) for r in sheet.rows) else "empty")
+        + (
+            f"taken for {match.kind.name}"
+            if match
+            else "no heading found"
+            if any(any(c is not None for c in r) for r in sheet.rows)
+            else "empty"
+        )
         for sheet, match in list(zip(sheets, matches, strict=True))[:12]
     )
-    return (
-        f"no list with tags was found: a sheet needs a heading such as 'Tag' or 'Tag No.' over its tags ({said})"
-    )
+    return f"no list with tags was found: a sheet needs a heading such as 'Tag' or 'Tag No.' over its tags ({said})"
 
 
 def _left_out(sheet: Sheet) -> SheetReport:

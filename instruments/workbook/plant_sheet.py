@@ -66,9 +66,15 @@ def read_plant_sheet(sheet: Sheet, match: SheetMatch) -> tuple[PlantEntry, ...]:
             index = filled[1][0]
             # A unit of its own behind the value belongs to it.
             text = " ".join(_text(sheet, number, at) for at, _ in filled[1:3])
-            if len(filled) > 2 and not re.fullmatch(r"[^\d\W]{1,12}|%|[^\W\d]{1,6}\([a-z]{1,4}\)", _text(sheet, number, filled[2][0])):
+            if len(filled) > 2 and not re.fullmatch(
+                r"[^\d\W]{1,12}|%|[^\W\d]{1,6}\([a-z]{1,4}\)", _text(sheet, number, filled[2][0])
+            ):
                 text = _text(sheet, number, index)
-            if folded(name) in ("field", "name of field", "item", "setting") and folded(text) in ("value", "setting", "wert"):
+            if folded(name) in ("field", "name of field", "item", "setting") and folded(text) in (
+                "value",
+                "setting",
+                "wert",
+            ):
                 continue
             entries.append(PlantEntry(name=name, text=text, cell=_cell(sheet, number, index)))
         return tuple(entries)
@@ -98,7 +104,7 @@ def _cell(sheet: Sheet, row: int, column: int) -> Cell:
 
 
 def read_plant_toml(path: str | os.PathLike[str]) -> tuple[PlantEntry, ...]:
-    """Return what a plant.toml says: the names of the Plant sheet, with blanks or underscores, at top level or in [plant].
+    """Return what a plant.toml says, at top level or in [plant]: the Plant sheet's names, with blanks or underscores.
 
     Raises
     ------
@@ -122,9 +128,7 @@ def read_plant_toml(path: str | os.PathLike[str]) -> tuple[PlantEntry, ...]:
     lines = text.splitlines()
     entries: list[PlantEntry] = []
     for name, value in _flat(found):
-        line = next(
-            (number for number, line in enumerate(lines, start=1) if line.lstrip(" \"'").startswith(name)), 1
-        )
+        line = next((number for number, line in enumerate(lines, start=1) if line.lstrip(" \"'").startswith(name)), 1)
         entries.append(
             PlantEntry(
                 name=name.replace("_", " "),
@@ -197,7 +201,9 @@ def plant_data(
     """
     found = _Understood()
     names = {
-        heading_words(text): column.field for column in kind.columns for text in (column.title, column.field, *column.headings)
+        heading_words(text): column.field
+        for column in kind.columns
+        for text in (column.title, column.field, *column.headings)
     }
     any_entry: PlantEntry | None = None
     for entry in entries:
@@ -225,13 +231,14 @@ def plant_data(
     row = None
     if any_entry is not None:
         cells = {field: (entry.cell.column,) for field, entry in found.entries.items()}
+        written: dict[str, Any] = dict(found.values)
         row = PlantRow(
             origin=Origin(
                 place=Place(file=any_entry.cell.file, sheet=any_entry.cell.sheet, columns=MappingProxyType(cells)),
                 row=any_entry.cell.row,
             ),
             thresholds=MappingProxyType(dict(found.threshold_texts)),
-            **found.values,
+            **written,
         )
     return data, row, tuple(found.problems)
 
@@ -341,7 +348,12 @@ def _atmosphere(found: _Understood) -> float:
     pascal = getattr(quantity, "base", None)
     unit = getattr(quantity, "unit", None)
     reference = getattr(quantity, "reference", None)
-    if unit is not None and unit.kind == "pressure" and reference not in ("gauge", "differential") and pascal is not None:
+    if (
+        unit is not None
+        and unit.kind == "pressure"
+        and reference not in ("gauge", "differential")
+        and pascal is not None
+    ):
         if low <= pascal <= high:
             return float(pascal)
         found.problem(entry, "no atmosphere has this pressure")

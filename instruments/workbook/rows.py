@@ -56,29 +56,33 @@ class RowsOfSheet:
 
 
 _END: Final = re.compile(
-    r"\W{0,4}(?:end of (?:the )?(?:list|document|schedule|index|report|sheet|file)|end|ende(?: der liste)?|listenende|fin de liste|"
+    r"\W{0,4}(?:end of (?:the )?(?:list|document|schedule|index|report|sheet|file)|end|ende(?: der liste)?|"
+    r"listenende|fin de liste|"
     r"notes?|general notes?|legend|legende|abbreviations?|abkuerzungen|anmerkungen|bemerkungen|hinweise|key|"
     r"remarks|footnotes?|nomenclature)\b\s?[:.]?.{0,200}",
     re.DOTALL,
 )
 _NOTE: Final = re.compile(
-    r"\W{0,3}(?:note|notes|page|sheet|seite|blatt|total|sum|count|prepared|checked|approved|printed|issued|rev|revision|date|"
-    r"continued|cont\.?|fortsetzung|see|hold list|confidential|doc|document|copyright|\(c\)|n\.b\.|nb|\*)\b[\s.:#]?.{0,300}",
+    r"\W{0,3}(?:note|notes|page|sheet|seite|blatt|total|sum|count|prepared|checked|approved|printed|issued|rev|"
+    r"revision|date|continued|cont\.?|fortsetzung|see|hold list|confidential|doc|document|copyright|\(c\)|n\.b\.|"
+    r"nb|\*)\b[\s.:#]?.{0,300}",
     re.DOTALL,
 )
 _SECTION: Final = re.compile(
-    r"(?:process |plant )?(?:unit|area|system|section|zone|train|anlage|bereich|teilanlage|package|plant|skid|building|gebaeude|"
-    r"module|deck|level|system|circuit|part)\b.{0,120}"
+    r"(?:process |plant )?(?:unit|area|system|section|zone|train|anlage|bereich|teilanlage|package|plant|skid|"
+    r"building|gebaeude|module|deck|level|system|circuit|part)\b.{0,120}"
 )
 _TAG_LIKE: Final = re.compile(r"[^\w(]{0,3}[\w.\-/ ()+*,&~‑–−]{0,60}", re.DOTALL)
-_UNIT_TITLE: Final = re.compile(r"(?:unit|area|section|system|anlage|bereich|zone|train|page|sheet|note|rev)\b", re.IGNORECASE)
+_UNIT_TITLE: Final = re.compile(
+    r"(?:unit|area|section|system|anlage|bereich|zone|train|page|sheet|note|rev)\b", re.IGNORECASE
+)
 
 
 def looks_like_tag(text: str) -> bool:
     """Whether a text of a tag column may be a tag: letters and digits, and not too many words.
 
-    >>> [looks_like_tag(text) for text in ("PT-1001", "PT-1001 A/B (Note 3)", "UNIT 10 - FEED", "Filter gallery", "1. VFC = contact")]
-    [True, True, False, False, False]
+    >>> [looks_like_tag(text) for text in ("PT-1001", "PT-1001 A/B (Note 3)", "UNIT 10 - FEED", "1. VFC = contact")]
+    [True, True, False, False]
     """
     if len(text) > 60 or _UNIT_TITLE.match(text):
         return False
@@ -135,7 +139,7 @@ class _Sorter:
         self.notes: list[tuple[int, str]] = []
         self.headings: list[int] = list(match.header_rows)
         self.instead: dict[int, dict[int, Value]] = {}
-        self.merged = 0
+        self.filled = 0
         self.place: str | None = None
         self.pending: list[tuple[int, str]] = []
 
@@ -285,7 +289,7 @@ class _Sorter:
             for index, cell in filled.items()
             if isinstance(cell, str) and not re.fullmatch(r"[\d.]{1,8}", cell.strip())
         }
-        different = {folded(cell) for cell in wordy.values() if isinstance(cell, str)}
+        different = {folded(cell) for cell in wordy.values()}
         if len(different) != 1:
             if len(different) == 2 and len(wordy) == 2 and max(filled) <= 3 and not self._values(filled):
                 head = folded(str(next(iter(wordy.values()))))
@@ -316,11 +320,11 @@ class _Sorter:
             if value is None or top < first:
                 continue
             for row in range(top + 1, bottom + 1):
-                if self.merged >= MOST_MERGED:
+                if self.filled >= MOST_MERGED:
                     return
                 if sheet.at(row, left) is None:
                     self.instead.setdefault(row, {})[left] = value
-                    self.merged += 1
+                    self.filled += 1
         for (row, column), kept in sheet.partly_struck.items():
             if row >= first and column in self.mapped and row < len(sheet.rows):
                 self.instead.setdefault(row, {})[column] = kept.strip() or None
@@ -337,5 +341,10 @@ class _Sorter:
             headings=tuple(sorted(self.headings)),
             struck=struck,
             instead=self.instead,
-            merged=self.merged,
+            merged=sum(
+                self.sheet.at(row, column) is None
+                for row, cells in self.instead.items()
+                if row in rows
+                for column in cells
+            ),
         )

@@ -8,51 +8,61 @@ from collections.abc import Mapping
 from functools import lru_cache
 from typing import Final
 
-YES: Final = frozenset({
-    "y", "yes", "✓", "✔", "☑", "√", "x", "1", "●", "•", "■", "ja", "j", "oui", "si", "sí", "true", "wahr", "vrai", "t",
-    "on", "yes (y)", "○", "o", "req'd", "required", "ok", "with", "mit", "fitted",
-})
-NO: Final = frozenset({
-    "n", "no", "none", "nein", "non", "0", "false", "falsch", "faux", "☐", "off", "✗", "✘", "without", "ohne",
-    "not fitted", "not required",
-})
+YES: Final = frozenset(
+    (
+        "y", "yes", "✓", "✔", "☑", "√", "x", "1", "●", "•", "■", "ja", "j", "oui", "si", "sí", "true", "wahr",
+        "vrai", "t", "on", "yes (y)", "○", "o", "req'd", "required", "ok", "with", "mit", "fitted",
+    )
+)  # fmt: skip
+NO: Final = frozenset(
+    (
+        "n", "no", "none", "nein", "non", "0", "false", "falsch", "faux", "☐", "off", "✗", "✘", "without", "ohne",
+        "not fitted", "not required",
+    )
+)  # fmt: skip
 
-_FOLDS: Final = str.maketrans({"ä": "ae", "ö": "oe", "ü": "ue", "’": "'", "‘": "'", "–": "-", "—": "-", "−": "-", "‐": "-", "‑": "-"})
+_FOLDS: Final = str.maketrans(
+    {"ä": "ae", "ö": "oe", "ü": "ue", "’": "'", "‘": "'", "–": "-", "—": "-", "−": "-", "‐": "-", "‑": "-"}
+)
 
 
-@lru_cache(maxsize=65536)
 def folded(text: str) -> str:
     """Return a text as words are compared: one blank between words, no case, umlauts and accents in plain letters.
 
     >>> folded("  Klemmenkasten\\nFÜHLER – ouverte à gauche ")
     'klemmenkasten fuehler - ouverte a gauche'
     """
+    return " ".join((text.lower() if text.isascii() else _plain_letters(text)).split())
+
+
+@lru_cache(maxsize=16384)
+def _plain_letters(text: str) -> str:
     text = unicodedata.normalize("NFKC", text).casefold().translate(_FOLDS)
     if not text.isascii():
         text = "".join(sign for sign in unicodedata.normalize("NFD", text) if not unicodedata.combining(sign))
-    return " ".join(text.split())
+    return text
 
 
 _PLAIN_PLACEHOLDERS: Final = {
     "not applicable": (
-        "n/a", "n.a.", "na", "n.a", "n / a", "n\\a", "-", "--", "---", "----", ".", "..", "nil", "none", "not applicable",
-        "not appl.", "n/r", "not required", "entfaellt", "entf.", "entf", "keine", "/", "//", "- -", "_", "__",
-        "k.a.", "k. a.", "keine angabe", "sans objet", "s.o.", "s/o", "n.v.t.",
-    ),
+            "n/a", "n.a.", "na", "n.a", "n / a", "n\\a", "-", "--", "---", "----", ".", "..", "nil", "none",
+            "not applicable", "not appl.", "n/r", "not required", "entfaellt", "entf.", "entf", "keine", "/", "//",
+            "- -", "_", "__", "k.a.", "k. a.", "keine angabe", "sans objet", "s.o.", "s/o", "n.v.t.",
+        ),
     "to be defined": (
-        "tba", "tbc", "tbd", "tbn", "t.b.a.", "t.b.c.", "t.b.d.", "t.b.a", "t.b.c", "t.b.d", "later", "?", "??", "???",
-        "xxx", "xx", "xxxx", "to be advised", "to be confirmed", "to be defined", "to be determined",
-        "to be decided", "unknown", "not known", "pending", "offen", "folgt", "spaeter", "noch offen", "wird nachgereicht",
-        "...", "****", "***", "**", "awaited", "to follow", "tbe", "a definir", "*",
-    ),
+            "tba", "tbc", "tbd", "tbn", "t.b.a.", "t.b.c.", "t.b.d.", "t.b.a", "t.b.c", "t.b.d", "later", "?", "??",
+            "???", "xxx", "xx", "xxxx", "to be advised", "to be confirmed", "to be defined", "to be determined",
+            "to be decided", "unknown", "not known", "pending", "offen", "folgt", "spaeter", "noch offen",
+            "wird nachgereicht", "...", "****", "***", "**", "awaited", "to follow", "tbe", "a definir", "*",
+        ),
     "by vendor": (
-        "vendor", "by vendor", "vta", "vendor to advise", "by supplier", "by others", "by package vendor",
-        "as per vendor", "per vendor", "vendor std", "vendor standard", "by manufacturer", "by mfr", "by contractor",
-        "by client", "by owner", "by package supplier", "v.t.a.", "bei lieferant", "durch lieferant", "bauseits",
-        "vendor scope", "vendor supply", "vendor data", "refer vendor",
-    ),
+            "vendor", "by vendor", "vta", "vendor to advise", "by supplier", "by others", "by package vendor",
+            "as per vendor", "per vendor", "vendor std", "vendor standard", "by manufacturer", "by mfr",
+            "by contractor", "by client", "by owner", "by package supplier", "v.t.a.", "bei lieferant",
+            "durch lieferant", "bauseits", "vendor scope", "vendor supply", "vendor data", "refer vendor",
+        ),
     "on hold": ("hold", "on hold"),
-}
+}  # fmt: skip
 _PLACEHOLDERS: Final = {text: reason for reason, texts in _PLAIN_PLACEHOLDERS.items() for text in texts}
 _HOLD: Final = re.compile(r"(?:on )?hold\s?(?:no\.?|nr\.?|#|-|:)?\s?([0-9]{1,4}[a-z]?)")
 _NOTE: Final = re.compile(
@@ -63,7 +73,26 @@ _NOTE: Final = re.compile(
 _BARE_NOTE: Final = re.compile(r"\(?note\s?(?:no\.?|#)?\s?([0-9]{1,3})\)?")
 
 
-@lru_cache(maxsize=65536)
+_MAY_REFER: Final = (
+    "hold", "on hold", "see", "refer", "ref", "s.", "siehe", "acc", "as per", "note",
+)  # fmt: skip
+
+
+# Nearly all cells are settled by one look: a digit in a text that does not begin as a reference does.
+_A_VALUE: Final = re.compile(
+    r"(?!hold|on hold|see|ref|s\.|siehe|acc|as per|note)[0-9a-z][^\n]{0,24}?[0-9]", re.IGNORECASE
+)
+
+
+def is_plainly_a_value(text: str) -> bool:
+    """Whether one look tells that a text is no placeholder and no ditto mark; most that are none need a second.
+
+    >>> is_plainly_a_value("PT-1001"), is_plainly_a_value("note 4"), is_plainly_a_value("TBA")
+    (True, False, False)
+    """
+    return _A_VALUE.match(text) is not None
+
+
 def placeholder(text: str) -> str | None:
     """Return why a cell that holds a placeholder is blank; None where its text is a value.
 
@@ -72,13 +101,14 @@ def placeholder(text: str) -> str | None:
     >>> placeholder("4-20 mA") is None
     True
     """
-    if len(text) > 60:
+    if len(text) > 60 or _A_VALUE.match(text):
         return None
     plain = folded(text)
-    reason = _PLACEHOLDERS.get(plain) or _PLACEHOLDERS.get(plain.strip("()[] "))
-    if reason:
+    bare = plain.strip("()[] ")
+    reason = _PLACEHOLDERS.get(plain) or _PLACEHOLDERS.get(bare)
+    if reason or not bare.startswith(_MAY_REFER):
         return reason
-    found = _HOLD.fullmatch(plain.strip("()[] "))
+    found = _HOLD.fullmatch(bare)
     if found:
         return f"hold {found[1]}"
     found = _NOTE.fullmatch(plain)
@@ -90,13 +120,15 @@ def placeholder(text: str) -> str | None:
     return None
 
 
-_DITTO: Final = frozenset({
-    '"', "''", "“", "”", "″", "„", "〃", "ditto", "dto", "dto.", "do.", "-\"-", "- \" -", "-''-", "\" \"", "as above", "same as above",
-    "idem", "wie oben", "wie vor", "s.o", "-do-", "- do -", "do", "as abv", "\"\"", "''''",
-})
+_DITTO: Final = frozenset(
+    (
+        '"', "''", "“", "”", "″", "„", "〃", "ditto", "dto", "dto.", "do.", '-"-', '- " -', "-''-", '" "',
+        "as above", "same as above", "idem", "wie oben", "wie vor", "s.o", "-do-", "- do -", "do", "as abv", '""',
+        "''''",
+    )
+)  # fmt: skip
 
 
-@lru_cache(maxsize=4096)
 def is_ditto(text: str) -> bool:
     """Whether a cell repeats the one above it.
 
@@ -106,21 +138,28 @@ def is_ditto(text: str) -> bool:
     # DO in capitals is a digital output.
     if len(text) > 16 or text == "DO":
         return False
-    return folded(text).strip() in _DITTO or text.strip() in _DITTO
+    return text.lower().strip() in _DITTO or (not text.isascii() and folded(text) in _DITTO)
 
 
 _STATUS_WORDS: Final[Mapping[str, str]] = {
     word: status
     for status, words in {
         "deleted": ("deleted", "removed", "delete", "geloescht", "supprime", "entfallen", "dropped"),
-        "void": ("void", "voided", "cancelled", "canceled", "not used", "unused", "superseded", "annule", "ungueltig"),
+        "void": (
+            "void", "voided", "cancelled", "canceled", "not used", "unused", "superseded", "annule", "ungueltig",
+        ),
         "spare": ("spare", "reserve", "reserved", "spares", "unassigned"),
         "future": ("future", "for future use", "future use", "zukuenftig", "kuenftig", "futur"),
         "demolished": ("demolished", "decommissioned", "dismantled", "demontiert", "stillgelegt", "scrapped"),
     }.items()
     for word in words
-}
+}  # fmt: skip
 _STATUS: Final = "|".join(sorted(map(re.escape, _STATUS_WORDS), key=len, reverse=True))
+_STATUS_STEM: Final = re.compile(
+    "delet|remov|lösch|loesch|suppr|entfall|dropp|void|cancel|used|unus|supers|annul|ungült|ungult|ungueltig|spare|reserv|"
+    "unassig|futur|künft|kuenft|demol|decom|dismant|demont|stillg|scrap",
+    re.IGNORECASE,
+)
 _STATUS_WHOLE: Final = re.compile(rf"\W*({_STATUS})\W*(?:rev\.? ?\w{{1,3}}|row|tag|instrument)?\W*")
 _STATUS_AT_HEAD: Final = re.compile(
     r"\W*(deleted|voided|void|not used|cancelled|canceled|demolished|spare|future|removed)\s?[-:;,(/].*", re.DOTALL
@@ -149,7 +188,7 @@ def not_live(text: str, *, status_column: bool = False) -> str | None:
     >>> not_live("Spare pump discharge"), not_live("Void tank level"), not_live("Deleted in rev C", status_column=True)
     (None, None, 'deleted')
     """
-    if len(text) > 200:
+    if len(text) > 200 or _STATUS_STEM.search(text) is None:
         return None
     plain = folded(text)
     found = _STATUS_WHOLE.fullmatch(plain)

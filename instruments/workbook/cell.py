@@ -1,0 +1,420 @@
+"""How one cell is read: what it says, why it says nothing, or what the trouble with it is."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Mapping, Sequence
+from typing import Any, Final, NamedTuple
+
+from instruments.column import Column, Reads
+from instruments.number import CellTrouble, read_number
+from instruments.quantity import Quantity, read_quantity, read_range, read_triplet
+from instruments.unit import Unit, read_unit
+from instruments.workbook.column_unit import read_plain_number
+from instruments.workbook.number_format import as_text
+from instruments.workbook.sheet import Value
+from instruments.workbook.words import Words, folded, is_ditto, is_plainly_a_value, placeholder, yes_or_no
+
+__all__ = [
+    "BAD",
+    "DITTO",
+    "NOTHING",
+    "STATES",
+    "Outcome",
+    "Read",
+    "UnitCell",
+    "count_cell",
+    "joined_cell",
+    "number_cell",
+    "one_of_several",
+    "quantity_cell",
+    "text_cell",
+    "trouble",
+    "unit_cell",
+    "with_prefix",
+    "word_cell",
+    "yes_cell",
+]
+
+
+class Outcome(NamedTuple):
+    """What one cell says.
+
+    Attributes
+    ----------
+    value
+        What was read; None where there is a reason below.
+    blank
+        Why it is blank although something stands in it.
+    trouble
+        Why it could not be read.
+    unitless
+        It holds a number that needs a unit and has none; with `trouble` where its unit was not read.
+    ditto
+        It repeats the cell above.
+    aside
+        It says something that the field cannot hold, and that is no mistake: kept under its heading.
+    """
+
+    value: Any = None
+    blank: str | None = None
+    trouble: CellTrouble | None = None
+    unitless: bool = False
+    ditto: bool = False
+    aside: bool = False
+
+
+Read = Callable[[Value], Outcome]
+
+NOTHING: Final = Outcome()
+DITTO: Final = Outcome(ditto=True)
+_UNITLESS: Final = Outcome(unitless=True)
+
+
+def trouble(reason: str, readings: Sequence[str] = ()) -> CellTrouble:
+    """Make the trouble of a cell."""
+    return CellTrouble(reason=reason, readings=tuple(readings))
+
+
+def _in_trouble(reason: str, readings: Sequence[str] = ()) -> Outcome:
+    return Outcome(trouble=trouble(reason, readings))
+
+
+# --- texts and words --------------------------------------------------------------------------------------------------
+
+# Fields in which a word that elsewhere holds a place is a value.
+_KEPT: Final[Mapping[str, frozenset[str]]] = {
+    "scope": frozenset({"by vendor"}),
+    "status": frozenset({"on hold", "to be defined"}),
+    "hold": frozenset({"on hold"}),
+    "area_classification": frozenset({"not applicable"}),
+}
+_DASHES: Final = frozenset({"-", "--", "---", "----", ".", "..", "_", "__", "- -", "/", "//", ""})
+# DO is a digital output there.
+_NO_DITTO: Final = frozenset({"io_type", "signal", "kind"})
+# What a list of wiring parts by lines.
+_BY_LINES: Final = frozenset(
+    (
+        "terminals",
+        "junction_box",
+        "io_address",
+        "line",
+        "equipment",
+        "cable",
+        "pair",
+        "from_terminal",
+        "to_terminal",
+        "pid",
+    )
+)
+# Words that are matched generously: another text there says something else and is no mistake.
+_GENEROUS: Final = frozenset({"location", "mounting", "system"})
+
+
+def _plain(cell: Value) -> str:
+    return (cell if isinstance(cell, str) else as_text(cell)).strip()
+
+
+def _unless_blank(field: str, read: Callable[[str], Outcome]) -> Read:
+    """Wrap a reader of texts: placeholders and ditto marks before the rest."""
+    kept = _KEPT.get(field, frozenset())
+    ditto = field not in _NO_DITTO
+
+    def outcome(cell: Value) -> Outcome:
+        text = _plain(cell)
+        if is_plainly_a_value(text):
+            return read(text)
+        if ditto and is_ditto(text):
+            return DITTO
+        reason = placeholder(text)
+        held = "on hold" in kept and reason is not None and reason.startswith("hold")
+        if reason and not held and (reason not in kept or folded(text) in _DASHES):
+            return Outcome(blank=reason)
+        return read(text)
+
+    return outcome
+
+
+def text_cell(field: str) -> Read:
+    r"""Return the reader of a column of texts.
+
+    >>> text_cell("service")("Feed\n pressure").value, text_cell("terminals")("TB1:1\nTB1:2").value
+    ('Feed pressure', 'TB1:1, TB1:2')
+    >>> text_cell("maker")("by vendor").blank, text_cell("area_classification")("N/A").value
+    ('by vendor', 'N/A')
+    """
+    joint = ", " if field in _BY_LINES else " "
+
+    def read(text: str) -> Outcome:
+        if "\n" in text or "\r" in text:
+            text = joint.join(piece.strip(" ,;") for piece in text.splitlines() if piece.strip(" ,;"))
+        return Outcome(value=" ".join(text.split()) or None)
+
+    if field != "remarks":
+        return _unless_blank(field, read)
+
+    def remark(cell: Value) -> Outcome:
+        text = _plain(cell)
+        if folded(text) in _DASHES:
+            return Outcome(blank="not applicable")
+        return DITTO if is_ditto(text) else read(text)
+
+    return remark
+
+
+def word_cell(column: Column) -> Read:
+    """Return the reader of a column that holds one of a closed set of words."""
+    words = Words(column.words)
+    generous = column.field in _GENEROUS
+
+    def read(text: str) -> Outcome:
+        found = words.find(text)
+        if len(found) == 1 or (found and generous):
+            return Outcome(value=found[0])
+        if generous:
+            return Outcome(aside=True)
+        return _in_trouble(f"'{text}' is not one of: {', '.join(words.canonical)}", found or words.canonical[:4])
+
+    blank = _unless_blank(column.field, read)
+
+    def outcome(cell: Value) -> Outcome:
+        text = _plain(cell)
+        # NO and NC are words in a column of contacts, none is one in a column of systems.
+        if folded(text) not in _DASHES and len(found := words.find(text)) == 1:
+            return Outcome(value=found[0])
+        return blank(cell)
+
+    return outcome
+
+
+def yes_cell(field: str) -> Read:
+    """Return the reader of a column of yes and no.
+
+    >>> [yes_cell("hart")(text).value for text in ("Y", "HART 7", "no", "x")]
+    [True, True, False, True]
+    >>> yes_cell("hart")("4-20 mA").trouble.reason
+    "'4-20 mA' is neither yes nor no"
+    """
+
+    def read(text: str) -> Outcome:
+        said = _said(field, text)
+        return (
+            Outcome(value=said) if said is not None else _in_trouble(f"'{text}' is neither yes nor no", ("yes", "no"))
+        )
+
+    blank = _unless_blank(field, read)
+
+    def outcome(cell: Value) -> Outcome:
+        text = _plain(cell)
+        if folded(text) not in _DASHES and (said := _said(field, text)) is not None:
+            return Outcome(value=said)
+        return blank(cell)
+
+    return outcome
+
+
+def _said(field: str, text: str) -> bool | None:
+    """Return what a yes/no cell says, in the words of its own column too."""
+    plain = folded(text)
+    if field == "hart" and (
+        re.fullmatch(r"[567](?:\.\d)?", plain)
+        or (re.search(r"\bhart\b", plain) and not re.search(r"\bno\b|\bnon\b|\bnot\b|without", plain))
+    ):
+        return True
+    if field.startswith("square_root"):
+        if re.fullmatch(r"lin(?:ear)?\.?", plain):
+            return False
+        if re.fullmatch(r"(?:sq(?:uare)?\.?\s?(?:rt|root)|sqrt|√|root|radiziert|radizierend)\.?", plain):
+            return True
+    return yes_or_no(text)
+
+
+def count_cell(field: str) -> Read:
+    """Return the reader of a column of whole numbers.
+
+    >>> [count_cell("wires")(cell).value for cell in (2.0, "4-wire", "3W", "12 x 2 x 1.5")]
+    [2, 4, 3, 12]
+    """
+    return _unless_blank(field, _count)
+
+
+def _count(text: str) -> Outcome:
+    number = read_number(text)
+    if not isinstance(number, CellTrouble):
+        if number.value == int(number.value) and 0 <= number.value < 1e6:
+            return Outcome(value=int(number.value))
+        return _in_trouble(f"'{text}' is no count")
+    by_size = re.fullmatch(r"(\d{1,4})\s?[x×*]\s?[23]\s?[x×*].{0,20}", text)
+    found = by_size or re.fullmatch(r"(\d{1,4})\s?[- ]?\s?[^\d]{1,24}", text)
+    return Outcome(value=int(found[1])) if found else _in_trouble(f"'{text}' is no count")
+
+
+def number_cell(field: str, unit: str, *, stated: str | None, decimal: str | None) -> Read:
+    """Return the reader of a column of bare numbers; parameters as for `read_plain_number`."""
+
+    def read(cell: Value) -> Outcome:
+        value = read_plain_number(cell, unit, heading_unit=stated, decimal=decimal)
+        return Outcome(trouble=value) if isinstance(value, CellTrouble) else Outcome(value=value)
+
+    blank = _unless_blank(field, read)
+    return lambda cell: read(cell) if type(cell) is float else blank(cell)
+
+
+# --- texts that stand in several columns, values that stand in one ----------------------------------------------------
+
+_BARE: Final = {
+    "Zone": re.compile(r"(?:2[0-2]|[0-2])(?:\s?/\s?(?:2[0-2]|[0-2]))?"),
+    "Class": re.compile(r"I{1,3}|[123]"),
+    "Div": re.compile(r"[12]"),
+    "Group": re.compile(r"[A-G](?:\s?[,&/+ ]\s?[A-G]){0,6}"),
+}
+
+
+def with_prefix(prefix: str, text: str) -> str:
+    """Return a text with what its heading says and its cell leaves out.
+
+    >>> with_prefix("Zone", "2"), with_prefix("Group", "IIB"), with_prefix("Div", "2")
+    ('Zone 2', 'IIB', 'Div 2')
+    """
+    bare = _BARE.get(prefix)
+    return f"{prefix} {text}" if bare is not None and bare.fullmatch(text) else text
+
+
+def one_of_several(cell: Value, place: int, count: int) -> Value:
+    """Return one of several values of a cell; the whole cell where it has not that many.
+
+    >>> one_of_several("20 / 90", 1, 2), one_of_several("20", 1, 2)
+    ('90', '20')
+    """
+    if not isinstance(cell, str):
+        return cell
+    pieces = [piece.strip() for piece in re.split(r"[/|\n;]", cell)]
+    return (pieces[place] or None) if len(pieces) == count else cell
+
+
+def joined_cell(cells: Sequence[Value], joints: Sequence[str]) -> str | None:
+    """Return the text that stands in several cells of a row, each with what stands before it: PT, -1001, A."""
+    return (
+        "".join(f"{joint}{_plain(cell)}" for joint, cell in zip(joints, cells, strict=True) if cell is not None) or None
+    )
+
+
+# --- units ------------------------------------------------------------------------------------------------------------
+
+
+class _Mark:
+    """A unit cell that is no unit."""
+
+
+BAD: Final = _Mark()
+"""A unit cell that could not be read: what it speaks for has no value."""
+
+STATES: Final = _Mark()
+"""A unit cell that says that its row has two states and no unit."""
+
+UnitCell = Unit | _Mark | None
+
+_TWO_STATES: Final = re.compile(
+    r"(?:bool(?:ean)?|binary|bin[aä]r|digital|discrete|logic(?:al)?|states?|on\s?[/-]\s?off|open(?:ed)?\s?[/-]\s?closed?|"
+    r"closed?\s?[/-]\s?open|0\s?/\s?1|1\s?/\s?0|contact|run\s?[/-]\s?stop|start\s?[/-]\s?stop|ein\s?[/-]\s?aus|"
+    r"auf\s?[/-]\s?zu|status|true\s?/\s?false|no\s?/\s?nc|alarm|trip|yes\s?/\s?no|normal\s?/\s?(?:alarm|trip|fault)|"
+    r"healthy\s?/\s?fault)",
+    re.IGNORECASE,
+)
+
+
+def unit_cell(cell: Value) -> Outcome:
+    """Read a cell of a column of units.
+
+    >>> str(unit_cell("[barg]").value), unit_cell("Boolean").value is STATES, unit_cell("-").blank
+    ('barg', True, 'not applicable')
+    >>> unit_cell("Hazen").trouble.reason, unit_cell("bar / °C").trouble.readings
+    ("unit 'Hazen' is not known", ('bar', '°C'))
+    """
+    text = _plain(cell)
+    if is_ditto(text):
+        return DITTO
+    bracketed = re.fullmatch(r"[\[(]\s?(.*?)\s?[\])]", text)
+    unit = read_unit(text) or (read_unit(bracketed[1]) if bracketed else None)
+    if unit is not None:
+        return Outcome(value=unit)
+    if _TWO_STATES.fullmatch(text):
+        return Outcome(value=STATES)
+    reason = placeholder(text)
+    if reason:
+        return Outcome(blank=reason)
+    pieces = [piece.strip() for piece in re.split(r"[/;,|\n]|\bor\b", text) if piece.strip()]
+    units = [each for piece in pieces if (each := read_unit(piece)) is not None]
+    if len(units) > 1 and len(units) == len(pieces):
+        if len(set(units)) == 1:
+            return Outcome(value=units[0])
+        return _in_trouble(f"'{text}' holds several units", [str(each) for each in units])
+    return _in_trouble(f"unit '{text}' is not known")
+
+
+# --- quantities -------------------------------------------------------------------------------------------------------
+
+
+def quantity_cell(cell: Value, unit: UnitCell, column: Column, *, decimal: str | None, default: Unit | None) -> Outcome:
+    """Read a cell of a column of quantities, ranges or triplets.
+
+    Parameters
+    ----------
+    cell
+        The cell; None says nothing.
+    unit
+        What the row or the heading give it; its own goes before.
+    column
+        The column: how it is read, and which kinds of unit it can hold.
+    decimal
+        The decimal mark; None where nothing tells, so that 1,000 is trouble.
+    default
+        The unit of a number without one, where the field has a natural one.
+    """
+    if cell is None:
+        return NOTHING
+    if type(cell) is not float:
+        if not isinstance(cell, str):
+            return _in_trouble("the spreadsheet made a date or time of it")
+        text = cell.strip()
+        if is_ditto(text):
+            return DITTO
+        reason = placeholder(text)
+        if reason:
+            return Outcome(blank=reason)
+        if _TWO_STATES.fullmatch(text):
+            return Outcome(blank="two states, no range")
+        cell = text if column.reads is Reads.TRIPLET else " ".join(text.split())
+    if unit is STATES:
+        return Outcome(blank="two states, no unit")
+    given = unit if isinstance(unit, Unit) else default if unit is None else None
+    parts: tuple[Quantity | None, ...]
+    if column.reads is Reads.RANGE:
+        pair = read_range(cell, unit=given, decimal=decimal)
+        if isinstance(pair, CellTrouble):
+            return _without_value(pair)
+        parts = (pair.lrv, pair.urv)
+    elif column.reads is Reads.TRIPLET:
+        three = read_triplet(cell, unit=given, decimal=decimal, kinds=column.kinds)
+        if isinstance(three, CellTrouble):
+            return _without_value(three)
+        parts = tuple(three)
+    else:
+        value = read_quantity(cell, unit=given, decimal=decimal, kinds=column.kinds)
+        if isinstance(value, CellTrouble):
+            return _without_value(value)
+        parts = (value,)
+    for part in parts:
+        if part is None:
+            continue
+        if part.unit is None:
+            return Outcome(unitless=True, trouble=trouble("its unit could not be read")) if unit is BAD else _UNITLESS
+        if column.kinds and part.unit.kind not in column.kinds:
+            return _in_trouble(f"'{part}' is no {' or '.join(column.kinds)}")
+    if all(part is None for part in parts):
+        return Outcome(blank="not applicable")
+    return Outcome(value=parts if len(parts) > 1 else parts[0])
+
+
+def _without_value(found: CellTrouble) -> Outcome:
+    return Outcome(blank=found.blank) if found.blank else Outcome(trouble=found)
