@@ -10,7 +10,8 @@ from typing import TYPE_CHECKING, Final, Literal, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
-from instruments.letters import USERS_CHOICE, read_letters
+from instruments.letters import USERS_CHOICE
+from instruments.measurement import variable_of
 
 if TYPE_CHECKING:
     from loops.plant import Plant
@@ -78,8 +79,8 @@ def _read_voting(text: str) -> Voting | None:
 def redundant_groups(plant: Plant) -> tuple[RedundantGroup, ...]:
     """Return the redundant instruments of a plant, found once.
 
-    Split range, wide beside narrow range, and several points of one multipoint are not redundant: a row
-    that says so belongs to no group by its suffix.
+    What is alike but for its suffix may be split range, wide beside narrow range, or the points of a
+    multipoint: whether such a group is redundant a person must say.
     """
     return plant.once("redundant groups", _find)  # type: ignore[no-any-return]
 
@@ -114,31 +115,16 @@ def _declared(plant: Plant) -> dict[Installed, frozenset[int]]:
 _SENSES: Final = frozenset(
     {Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR, Kind.ELEMENT, Kind.SWITCH}
 )
-_SAYS_OTHERWISE: Final = re.compile(
-    r"\b(?:wide|narrow|low|high|fine|coarse)[ \-]range\b|\([wn]\.?/?r\.?\)|\b[wn]/r\b"
-    r"|\bsplit[ \-]?range\b|\bmulti[ \-]?points?\b"
-    r"|\bgro(?:ss|ß)er? (?:mess)?bereich\b|\bkleiner? (?:mess)?bereich\b|\bweit-?bereich\b|\bfein-?bereich\b",
-    re.IGNORECASE,
-)
 # Letters whose variable the letter itself does not name: two of them are one variable only in one dimension.
 _ANY_VARIABLE: Final = frozenset("AQUXY") | frozenset(USERS_CHOICE)
-
-
-@lru_cache(maxsize=8192)
-def _variable(letters: str) -> str:
-    """First letter and what makes another variable of it (difference, ratio, total), not a safety system's Z or S."""
-    reading = read_letters(letters, users_letters=USERS_CHOICE)
-    return letters[:1] + "".join(letter for letter in reading.modifier if letter in "DFJKQ")
 
 
 def measured_variable_of(installed: Installed) -> str:
     """Return the measured variable that the tag names: P, PD, T ...; a plant code such as GD is its own."""
     reading = installed.tag
-    if reading is None or not reading.letters:
-        return ""
-    if reading.code is not None:
-        return _variable(reading.code.letters) if reading.code.letters else reading.letters
-    return _variable(reading.letters)
+    if reading is not None and reading.code is not None and not reading.code.letters:
+        return reading.letters
+    return variable_of(installed)
 
 
 def _senses(installed: Installed) -> bool:
@@ -349,16 +335,5 @@ def _nothing(installed: Installed) -> str:
 
 
 def _by_suffix(members: Sequence[Installed]) -> Sequence[Installed]:
-    """Return the rows of one letters and number that nothing tells apart but their suffix."""
-    kept = [each for each in members if not _is_told_apart(each)]
-    return kept if len({_suffix(each) for each in kept}) == len(kept) else _one_each(kept)
-
-
-def _one_each(members: Sequence[Installed]) -> Sequence[Installed]:
-    # Rows that share a whole tag are another mistake: the first of them speaks for it here.
+    """Return one row for each suffix: rows that share a whole tag are another mistake, and the first speaks."""
     return tuple({_suffix(each): each for each in reversed(members)}.values())[::-1]
-
-
-def _is_told_apart(installed: Installed) -> bool:
-    record = installed.record
-    return any(text is not None and _SAYS_OTHERWISE.search(text) for text in (record.service, record.remarks))
