@@ -255,11 +255,11 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
     grouped, alone = _same_tag(index, reading_of)
     placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
     for rows in grouped:
-        placed.extend(_one_or_several(rows, reading_of))
+        placed.extend(_one_or_several(rows, reading_of, profile))
     names: dict[str, int] = defaultdict(int)
     for record in sorted(alone, key=_contents):
         reading = reading_of(record.tag) if record.tag else None
-        name = record.tag or _untagged_name(record)
+        name = _called(record, profile) or _untagged_name(record)
         names[name] += 1
         placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
     first = [fitter.install(*each) for each in placed]
@@ -363,15 +363,22 @@ def _same_tag(
     return list(groups.values()), alone
 
 
+def _called(record: Instrument, profile: TagProfile) -> str:
+    """Return what a row is called: its tag; where the plant's tags are free text, as it is written."""
+    if profile.name == "free-text" and record.tag_written and record.tag_cell is None:
+        return record.tag_written.strip()
+    return record.tag or ""
+
+
 def _one_or_several(
-    rows: list[Instrument], reading_of: Callable[[str], TagReading]
+    rows: list[Instrument], reading_of: Callable[[str], TagReading], profile: TagProfile
 ) -> list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]]:
     reading = reading_of(rows[0].tag or "")
-    name = rows[0].tag or ""
+    name = _called(rows[0], profile)
     if len(rows) == 1:
         return [(rows[0], reading, (rows[0],), name)]
     rows = sorted(rows, key=_contents)
-    name = rows[0].tag or ""
+    name = _called(rows[0], profile)
     merged: list[list[Instrument]] = []
     for row in rows:
         for group in merged:

@@ -163,5 +163,5 @@ def _guesses(sheet: SheetReport) -> list[str]:
     return [
         f"{sheet.sheet}, '{each.heading}' is taken for {each.column.title}"
         for each in sheet.match.columns.values()
-        if each.how != "synonym"
+        if each.how == "likeness"
     ]
