@@ -134,9 +134,7 @@ _Way = Callable[[Sequence[Finding]], Callable[[Finding], Hashable]]
 
 
 def _by_shared_cells(group: Sequence[Finding]) -> Callable[[Finding], Hashable]:
-    shared = {
-        cell for cell, times in Counter(cell for each in group for cell in each.cells).items() if times > 1
-    }
+    shared = {cell for cell, times in Counter(cell for each in group for cell in each.cells).items() if times > 1}
     return lambda finding: frozenset(cell for cell in finding.cells if cell in shared)
 
 
@@ -159,11 +157,11 @@ def _split(group: list[Finding], ways: tuple[_Way, ...]) -> list[list[Finding]]:
     if not ways or len(group) < 2 * WORTH_A_SPLIT or len({finding.message for finding in group}) == 1:
         return [group]
     key = ways[0](group)
+    if len({key(finding) for finding in group}) * WORTH_A_SPLIT > len(group):
+        return _split(group, ways[1:])
     parts: dict[Hashable, list[Finding]] = {}
     for finding in group:
         parts.setdefault(key(finding), []).append(finding)
-    if len(parts) * WORTH_A_SPLIT > len(group):
-        return _split(group, ways[1:])
     return [small for part in parts.values() for small in _split(part, ways[1:])]
 
 

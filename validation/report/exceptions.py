@@ -210,9 +210,7 @@ class _Report:
             ],
             spans=(2, 2, 2, 11, 7),
         )
-        page.paragraph(
-            "All causes stand on the sheet Causes, each finding on the sheet Findings.", look=Look.SMALL
-        )
+        page.paragraph("All causes stand on the sheet Causes, each finding on the sheet Findings.", look=Look.SMALL)
 
     def _assumed(self, page: Page) -> None:
         page.section("What was assumed")
@@ -288,7 +286,7 @@ class _Report:
             what = f"{_count(figures['rows_merged'], 'row')} taken as a further row of an instrument"
             lines.append(("", "", what))
         if noted:
-            what = f"{_count(noted, 'row')} taken as titles, notes and sections, not applied: see the sheet Notes"
+            what = f"{_count(noted, 'row')} taken as titles, notes and sections: see the sheet Notes"
             lines.append(("", "", what))
         if not lines:
             page.paragraph("Nothing.")
@@ -494,9 +492,7 @@ class _Report:
                 Column(heading="unit of the column", least=11, most=16),
             ),
             items=[
-                (self.file(sheet.file), sheet.sheet, *row)
-                for sheet in self.lists.sheets
-                for row in _column_rows(sheet)
+                (self.file(sheet.file), sheet.sheet, *row) for sheet in self.lists.sheets for row in _column_rows(sheet)
             ],
             row=lambda row: row,
             empty="no sheet was read",
@@ -509,7 +505,7 @@ class _Report:
                 Column(heading="file", least=8, most=24),
                 Column(heading="sheet", least=8, most=22),
                 Column(heading="row", least=6, most=10, look=Look.COUNT),
-                Column(heading="taken as", least=10, most=20),
+                Column(heading="taken as", least=10, most=24),
                 Column(heading="text", least=30, most=110),
             ),
             items=[row for sheet in self.lists.sheets for row in _note_rows(sheet)],
@@ -534,15 +530,15 @@ def _column_rows(sheet: SheetReport) -> Iterator[Sequence[Shown]]:
     match = sheet.match
     if match is None:
         return
+    if not match.header_rows:
+        yield (None, None, None, "a field and its value on each row", None, None)
     rows: list[tuple[int, Sequence[Shown]]] = []
     for each in match.columns.values():
         unit = str(each.unit) if each.unit is not None else ""
         if each.unit_index is not None and not unit:
             unit = f"in column {column_letters(each.unit_index)}"
         rows.append((each.index, (each.heading, each.column.title, each.how, float(each.likelihood), unit)))
-        rows.extend(
-            (index, ("", each.column.title, "says the rest of it", None, "")) for index, _ in each.parts
-        )
+        rows.extend((index, ("", each.column.title, "says the rest of it", None, "")) for index, _ in each.parts)
     rows.extend(
         (index, (heading, "unit", "the unit of the columns beside it", None, ""))
         for index, heading in match.unit_columns
@@ -557,7 +553,7 @@ def _column_rows(sheet: SheetReport) -> Iterator[Sequence[Shown]]:
 
 def _note_rows(sheet: SheetReport) -> list[tuple[SheetReport, int, str, str]]:
     rows = [(sheet, row, "section", text) for row, text in sheet.sections]
-    rows.extend((sheet, row, "title or note", text) for row, text in sheet.notes)
+    rows.extend((sheet, row, "title or note, not applied", text) for row, text in sheet.notes)
     return sorted(rows, key=lambda row: row[1:])
 
 

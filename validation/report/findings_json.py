@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+import math
 from collections.abc import Mapping
 from typing import Any
 
@@ -36,9 +37,7 @@ def counts(audit: Audit) -> dict[str, int]:
     }
 
 
-def as_data(
-    audit: Audit, *, digests: Mapping[str, str], version: str, inputs: Mapping[str, str]
-) -> dict[str, Any]:
+def as_data(audit: Audit, *, digests: Mapping[str, str], version: str, inputs: Mapping[str, str]) -> dict[str, Any]:
     """Return the audit as plain data.
 
     Parameters
@@ -62,9 +61,7 @@ def as_data(
                 {"rule": code, "outcomes_add_up_to": sum(coverage.outcomes.values())}
                 for code, coverage in audit.coverage.items()
             ],
-            "broken": [
-                {"rule": each.rule, "subject": each.subject, "error": each.error} for each in audit.broken
-            ],
+            "broken": [{"rule": each.rule, "subject": each.subject, "error": each.error} for each in audit.broken],
             "caution": CAUTION,
         },
         "counts": counts(audit),
@@ -122,15 +119,21 @@ def finding_data(finding: Finding) -> dict[str, Any]:
 
 
 def as_text(audit: Audit, **named: Any) -> str:
-    """Return findings.json as text."""
-    return json.dumps(as_data(audit, **named), ensure_ascii=False, indent=1, allow_nan=False) + "\n"
+    """Return findings.json as text that can be written as UTF-8, whatever the lists hold."""
+    text = json.dumps(as_data(audit, **named), ensure_ascii=False, indent=1, allow_nan=False) + "\n"
+    # Half a character, as in a file's name that is no UTF-8, cannot be written; its escape in JSON can.
+    return text.encode("utf-8", "backslashreplace").decode("utf-8")
 
 
 def _plain(value: Any) -> Any:
+    if isinstance(value, float) and not math.isfinite(value):
+        return str(value)  # JSON has no word for it
     if isinstance(value, bool | int | float | str) or value is None:
         return value
     if isinstance(value, Quantity):
         return str(value)
-    if isinstance(value, list | tuple | frozenset | set):
+    if isinstance(value, list | tuple):
         return [_plain(each) for each in value]
+    if isinstance(value, frozenset | set):
+        return [_plain(each) for each in sorted(value, key=str)]  # a set has no order of its own
     return str(value)

@@ -51,7 +51,8 @@ class Outputs:
             self._made.append((part, self.folder / name))
             write(part)
             digest = hashlib.sha256()
-            with part.open("rb") as file:
+            # Open for writing too: Windows brings nothing to the disk through a file opened for reading.
+            with part.open("r+b") as file:
                 while block := file.read(1 << 20):
                     digest.update(block)
                 os.fsync(file.fileno())
@@ -65,23 +66,31 @@ class Outputs:
         self, kind: type[BaseException] | None, error: BaseException | None, trace: TracebackType | None
     ) -> None:
         if error is not None:
-            for part, _ in self._made:
-                part.unlink(missing_ok=True)
+            self._discard()
             return
         try:
-            for part, final in self._made:
+            # Before the first takes its name: one that cannot would leave old and new side by side.
+            for _, final in self._made:
                 if final.is_dir():
                     raise CannotWrite(final, "is a folder")
+            for part, final in self._made:
                 os.replace(part, final)
-            folder = os.open(self.folder, os.O_RDONLY)
-            try:
-                os.fsync(folder)
-            finally:
-                os.close(folder)
+            if os.name == "posix":  # elsewhere a folder cannot be opened
+                folder = os.open(self.folder, os.O_RDONLY)
+                try:
+                    os.fsync(folder)
+                finally:
+                    os.close(folder)
         except OSError as problem:
-            for part, _ in self._made:
-                part.unlink(missing_ok=True)
+            self._discard()
             raise CannotWrite(self.folder, _words(problem)) from problem
+        except CannotWrite:
+            self._discard()
+            raise
+
+    def _discard(self) -> None:
+        for part, _ in self._made:
+            part.unlink(missing_ok=True)
 
 
 def _words(error: OSError) -> str:
