@@ -3,13 +3,12 @@
 from __future__ import annotations
 
 import dataclasses
+import re
 from collections import defaultdict
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from types import MappingProxyType
 from typing import Any
-
-from instruments.workbook.lists import Lists
 
 from instruments.area import Area, Classification, area_from_classification, read_classification, understood
 from instruments.installed import NOT_LIVE, Installed
@@ -33,6 +32,7 @@ from instruments.tag import (
     plant_profile,
     read_tag,
 )
+from instruments.workbook.lists import Lists
 from instruments.workbook.problem import CellProblem
 from loops.circuit import Circuit, Loop
 from loops.record import Cable, CableType, LoopRow, Termination
@@ -41,6 +41,7 @@ from loops.wiring import wire
 _RECORD_OWN = frozenset(each.name for each in dataclasses.fields(Record))
 _FIELDS = tuple(each.name for each in dataclasses.fields(Instrument) if each.name not in _RECORD_OWN)
 _TYPE_FIELDS = tuple(each.name for each in dataclasses.fields(DeviceType) if each.name not in _RECORD_OWN)
+_TYPE_ONLY = frozenset(_TYPE_FIELDS) - frozenset(_FIELDS)
 
 # What a second row of one instrument may say differently: its other signal and how that is wired.
 SIGNAL_FIELDS = frozenset(
@@ -178,6 +179,10 @@ class Plant:
         """Return the live instruments with that tag, however it is written."""
         return self._by_tag.get(_lookup_key(read_tag(text, profile=self.profile, codes=self.codes)), ())
 
+    def sharing_a_tag(self) -> tuple[tuple[Installed, ...], ...]:
+        """Return the groups of live instruments that have one tag though their rows disagree."""
+        return tuple(group for group in self._by_tag.values() if len(group) > 1)
+
     def loop_of(self, installed: Installed) -> Loop | None:
         """Return the loop an instrument belongs to."""
         return self._by_loop.get(_key(installed.loop)) if installed.loop else None
@@ -190,8 +195,9 @@ class Plant:
         """Return the catalogue entry that a text names: a code, or a tag of the list with a device type."""
         if not text:
             return None
-        found = self.types.get(_key(text))
-        if found is not None:
+        key = _key(text)
+        found = self.types.get(key)
+        if found is not None or key in self.types_twice:
             return found
         for installed in self.by_tag(text):
             if installed.type is not None:
@@ -232,11 +238,11 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
     assumptions: tuple[str, ...] = ()
     if profile is None:
         profile, assumptions = _profile(data, index)
-    types, types_twice = _by_name(records.get("Device types", ()), "code")
+    types, types_twice = _unlike_left_out(*_by_name(records.get("Device types", ()), "code"))
     listed_areas = tuple(understood(area) for area in records.get("Areas", ()))
     areas, areas_twice = _by_name(listed_areas, "code")
-    cables, cables_twice = _by_name(records.get("Cables", ()), "number")
-    cable_types, cable_types_twice = _by_name(records.get("Cable types", ()), "code")
+    cables, cables_twice = _unlike_left_out(*_by_name(records.get("Cables", ()), "number"))
+    cable_types, cable_types_twice = _unlike_left_out(*_by_name(records.get("Cable types", ()), "code"))
     readings: dict[str, TagReading] = {}
 
     def reading_of(text: str) -> TagReading:
@@ -251,14 +257,23 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
             )
         return reading
 
-    fitter = _Fitter(data, types, areas)
+    def reading_of_row(row: Instrument) -> TagReading:
+        reading = reading_of(row.tag or "")
+        written = row.tag_written
+        if written is None or written == row.tag or row.tag_cell is not None:
+            return reading
+        # Letters that only look Latin, and a small l, are seen in the tag as it is written.
+        as_written = reading_of(written)
+        return as_written if match_key(as_written) == match_key(reading) else reading
+
+    fitter = _Fitter(data, types, {key: area for key, area in areas.items() if key not in areas_twice})
     grouped, alone = _same_tag(index, reading_of)
     placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
     for rows in grouped:
-        placed.extend(_one_or_several(rows, reading_of, profile))
+        placed.extend(_one_or_several(rows, reading_of_row, profile))
     names: dict[str, int] = defaultdict(int)
     for record in sorted(alone, key=_contents):
-        reading = reading_of(record.tag) if record.tag else None
+        reading = reading_of_row(record) if record.tag else None
         name = _called(record, profile) or _untagged_name(record)
         names[name] += 1
         placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
@@ -315,8 +330,12 @@ def _key(text: str | None) -> str:
     return "".join(text.split()).casefold() if text else ""
 
 
+# Between two digits a separator parts two numbers, so that 1-12 is not 11-2.
+_NO_SEPARATOR = re.compile(r"(?<![0-9])[\W_]+|[\W_]+(?![0-9])")
+
+
 def _lookup_key(reading: TagReading) -> Any:
-    return match_key(reading) if reading.parsed else _key(reading.normalised)
+    return match_key(reading) if reading.parsed else _NO_SEPARATOR.sub("", reading.normalised).casefold()
 
 
 def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, tuple[str, ...]]:
@@ -332,6 +351,7 @@ def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, 
 
 
 def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], frozenset[str]]:
+    """Return the entries by name, and the names that two different entries have."""
     found: dict[str, Any] = {}
     twice: set[str] = set()
     for record in records:
@@ -348,6 +368,13 @@ def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], fr
         ):
             twice.add(key)
     return found, frozenset(twice)
+
+
+def _unlike_left_out(
+    found: dict[str, Any], twice: frozenset[str]
+) -> tuple[dict[str, Any], frozenset[str]]:
+    """Leave out what two different entries are called: to take the first would let the order of rows decide."""
+    return {key: entry for key, entry in found.items() if key not in twice} if twice else found, twice
 
 
 def _same_tag(
@@ -371,12 +398,11 @@ def _called(record: Instrument, profile: TagProfile) -> str:
 
 
 def _one_or_several(
-    rows: list[Instrument], reading_of: Callable[[str], TagReading], profile: TagProfile
+    rows: list[Instrument], reading_of_row: Callable[[Instrument], TagReading], profile: TagProfile
 ) -> list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]]:
-    reading = reading_of(rows[0].tag or "")
     name = _called(rows[0], profile)
     if len(rows) == 1:
-        return [(rows[0], reading, (rows[0],), name)]
+        return [(rows[0], reading_of_row(rows[0]), (rows[0],), name)]
     rows = sorted(rows, key=_contents)
     name = _called(rows[0], profile)
     merged: list[list[Instrument]] = []
@@ -390,7 +416,10 @@ def _one_or_several(
     placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
     for number, group in enumerate(merged, start=1):
         called = name if number == 1 else f"{name} ({number})"
-        placed.append((_merge(group), reading_of(group[0].tag or ""), tuple(group), called))
+        # What is odd about a tag stands in one row's cell: that row speaks for those that agree with it.
+        readings = {id(row): reading_of_row(row) for row in group}
+        group.sort(key=lambda row: (not readings[id(row)].look_alikes, row.tag_cell is None))
+        placed.append((_merge(group), readings[id(group[0])], tuple(group), called))
     return placed
 
 
@@ -450,18 +479,65 @@ def _merge(group: Sequence[Instrument]) -> Instrument:
                 origin = row.elsewhere.get(name) or row.origin
                 if origin is not None:
                     elsewhere[name] = origin
-    unread = frozenset(name for row in group for name in row.unread) - values.keys()
+    own = _merged_own(group)
+    if own is not None:
+        values["own"] = own
+
+    def still_blank(name: str) -> bool:
+        return values.get(name, getattr(own if name in _TYPE_ONLY else first, name, None)) is None
+
+    unitless: dict[str, str] = {}
+    blanks: dict[str, str] = {}
+    for row in group:
+        for name, text in row.unitless.items():
+            if still_blank(name) and name not in unitless:
+                unitless[name] = text
+                if name not in first.unitless and row.origin is not None:
+                    elsewhere[name] = row.elsewhere.get(name) or row.origin
+        for name, text in row.blanks.items():
+            if still_blank(name):
+                blanks.setdefault(name, text)
     return replace(
         first,
         **values,
         elsewhere=MappingProxyType(elsewhere),
-        unread=frozenset(name for name in unread if values.get(name, getattr(first, name)) is None),
+        unread=frozenset(name for row in group for name in row.unread if still_blank(name)),
+        unitless=MappingProxyType(unitless),
+        blanks=MappingProxyType(blanks),
+    )
+
+
+def _merged_own(group: Sequence[Instrument]) -> DeviceType | None:
+    """Return the limits that the rows of one instrument state, taken together."""
+    stated = [row.own for row in group if row.own is not None]
+    if len(stated) < 2:
+        return stated[0] if stated else None
+    first, values = stated[0], {}
+    elsewhere: dict[str, Origin] = dict(first.elsewhere)
+    for other in stated[1:]:
+        for name in _TYPE_FIELDS:
+            value = getattr(other, name)
+            if value is None or name in values or getattr(first, name) is not None:
+                continue
+            values[name] = value
+            origin = other.elsewhere.get(name) or other.origin
+            if origin is not None:
+                elsewhere[name] = origin
+    return replace(
+        first,
+        **values,
+        elsewhere=MappingProxyType(elsewhere),
+        unread=frozenset(name for each in stated for name in each.unread)
+        - {name for name in _TYPE_FIELDS if values.get(name, getattr(first, name)) is not None},
     )
 
 
 def _contents(record: Instrument) -> tuple[Any, ...]:
     """Return what rows are sorted by, so that the order of rows changes no name."""
-    return tuple(_content(getattr(record, name)) for name in _FIELDS if name != "own")
+    plain = tuple(_content(getattr(record, name)) for name in _FIELDS if name != "own")
+    if record.own is None:
+        return plain
+    return (*plain, *(_content(getattr(record.own, name)) for name in _TYPE_FIELDS))
 
 
 def _content(value: Any) -> str:

@@ -54,7 +54,12 @@ def mended(plant: Plant, finding: Finding, fix: Fix) -> Lists:
         raise CannotStand(f"no row of {fix.sheet} is {fix.subject or finding.subject}")
     changed = tuple(_changed(row, kind, fix.change) if id(row) in meant else row for row in rows)
     records[name] = changed
-    return replace(plant.lists, records=MappingProxyType(records))
+    fields = {column.title.casefold(): column.field for column in kind.columns}
+    written = {
+        cell for row in rows if id(row) in meant for title in fix.change for cell in row.cells(fields[title.casefold()])
+    }
+    problems = tuple(each for each in plant.lists.problems if each.whole_column or each.cell not in written)
+    return replace(plant.lists, records=MappingProxyType(records), problems=problems)
 
 
 def _meant(plant: Plant, subject: str, rows: Iterable[Any], sheet: str) -> frozenset[int]:
@@ -93,6 +98,8 @@ def _changed(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Record:
         value = value_of(column, text) if text else None
         if column.reads is Reads.KIND:
             values["kind_written"] = text
+        if column.reads is Reads.TAG:
+            values["tag_written"] = text
         if column.owner == "own":
             own[column.field] = value
         else:
