@@ -24,6 +24,9 @@ WORTH_A_SPLIT: Final = 3
 _LISTED: Final = 3
 _LONGEST_LISTED: Final = 60
 _LONGEST_NAME: Final = 50
+_SAYS_ENOUGH: Final = 5
+_WORD: Final = re.compile(r"[^\W\d_]+")
+_LEFT_OPEN: Final = re.compile(r"\[[^\]]*\]")
 # A number and its unit, no second number: '10.488 V' and '2.5 mm2', but neither '4-20 mA' nor '0 to 6 bar'.
 _MEASURE: Final = re.compile(r"([-+]?\d{1,15}(?:\.\d{1,15})?(?:e[-+]?\d{1,3})?)(%|(?: [^\s\d]\S{0,20}){0,3})")
 
@@ -36,7 +39,8 @@ class Cause:
     ----------
     text
         What is wrong: the message with the values that all of them share; what differs is shown as a
-        range, as a few alternatives, or by its name in square brackets.
+        range, as a few alternatives, or by its name in square brackets. Where that leaves nearly
+        nothing, the first message as an example.
     count
         The number of findings.
     subjects
@@ -200,10 +204,15 @@ def _text(group: Sequence[Finding]) -> str:
     if len(messages) == 1:
         return group[0].message
     try:
-        return "".join(_filled(group))
+        pieces = list(_filled(group))
     except (ValueError, LookupError, AttributeError, TypeError):
         # A template that its own values do not fit: the first message is at least true of one of them.
         return group[0].message
+    left_open = any(_LEFT_OPEN.fullmatch(piece) for piece in pieces)
+    said = " ".join(piece for piece in pieces if not _LEFT_OPEN.fullmatch(piece))
+    if left_open and len(_WORD.findall(said)) < _SAYS_ENOUGH:
+        return f"such as: {group[0].message}"
+    return "".join(pieces)
 
 
 def _filled(group: Sequence[Finding]) -> Iterable[str]:

@@ -166,14 +166,15 @@ def test_rule_outcome_template_and_fields_are_never_mixed() -> None:
 def test_values_in_common(texts: Sequence[str], expected: str) -> None:
     findings = [
         finding(
-            subject=f"PT-{number}", message=f"it is {text} ({number})", values={"value": text, "n": str(number)},
-            cause="it is {value} ({n})", found="", wanted="", cells=(),
+            subject=f"PT-{number}", message=f"what stands in the list is {text} ({number})",
+            values={"value": text, "n": str(number)}, cause="what stands in the list is {value} ({n})",
+            found="", wanted="", cells=(),
         )
         for number, text in enumerate(texts)
     ]  # fmt: skip
     (cause,) = causes_of(findings)
     ends = f"0 to {len(texts) - 1}"
-    assert cause.text == f"it is {expected} ({ends})"
+    assert cause.text == f"what stands in the list is {expected} ({ends})"
 
 
 @pytest.mark.parametrize(
@@ -194,8 +195,34 @@ def test_a_template_that_does_not_fit_leaves_the_first_message(template: str, va
 
 
 def test_braces_in_a_value_are_no_placeholders() -> None:
-    findings = [finding(message=f"tag {{x}} {n}", cause="tag {tag} {n}", values={"tag": "{x}", "n": n}) for n in "ab"]
-    assert said(findings) == [(2, "tag {x} [n]")]
+    findings = [
+        finding(
+            message=f"the tag {{x}} is not the one of its loop: {n}",
+            cause="the tag {tag} is not the one of its loop: {n}",
+            values={"tag": "{x}", "n": n},
+        )
+        for n in "ab"
+    ]
+    assert said(findings) == [(2, "the tag {x} is not the one of its loop: [n]")]
+
+
+@pytest.mark.parametrize(
+    ("template", "text"),
+    [
+        ("{reason}: {marking}, in {place}", "such as: gas on dust: Ex db, in Z1"),
+        ("{marking} does not fit {place}", "such as: Ex db does not fit Z1"),
+        ("{marking} does not fit the area {place}", "[marking] does not fit the area [place]"),
+        ("{marking} in the same place", "such as: Ex db in the same place"),
+        ("no marking: {n}", "no marking: 1 to 2"),
+    ],
+)
+def test_a_template_that_says_nearly_nothing_gives_an_example(template: str, text: str) -> None:
+    values = [
+        {"reason": "gas on dust", "marking": "Ex db", "place": "Z1", "n": "1"},
+        {"reason": "no group", "marking": "Ex ia", "place": "Z2", "n": "2"},
+    ]
+    findings = [finding(message=template.format_map(each), cause=template, values=each) for each in values]
+    assert said(findings) == [(2, text)]
 
 
 def test_the_order_is_count_then_findings_then_severity() -> None:
