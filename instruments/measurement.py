@@ -85,6 +85,14 @@ class Measurement:
         The fields of the measured quantity: minimum, normal, maximum.
     values
         Its values; None for a blank.
+    ranged
+        Whether it has a range, in the field or in the system.
+    flat
+        Whether LRV equals URV, so that no other question about the range has an answer.
+    asked
+        Whether an instrument of its kind, in its loop, must have a range.
+    mixed
+        Whether its pressures are referred to different things; None: not worked out yet.
     """
 
     installed: Installed
@@ -94,16 +102,10 @@ class Measurement:
     body: str | None
     names: tuple[str, str, str]
     values: tuple[Quantity | None, Quantity | None, Quantity | None]
-
-    @property
-    def ranged(self) -> bool:
-        """Whether it has a range, in the field or in the system."""
-        return self.field is not None or self.system is not None
-
-    @property
-    def flat(self) -> bool:
-        """Whether LRV equals URV, so that no other question about the range has an answer."""
-        return self.field.flat if self.field is not None else self.system is not None and self.system.flat
+    ranged: bool
+    flat: bool
+    asked: bool = False
+    mixed: bool | None = None
 
     def reference(self, quantity: Quantity) -> str | None:
         """Return what a pressure is referred to: its own, else the body's; None where neither is known."""
@@ -135,42 +137,42 @@ class Measurement:
         return referred(at(quantity), self.reference(quantity) or open_as, to, atmospheric_pa=atmospheric_pa)
 
 
-def measurement_of(installed: Installed) -> Measurement:
-    """Return what an instrument measures, worked out from its row, its body and its letters."""
+def measurement_of(installed: Installed, *, asked: bool = False) -> Measurement:
+    """Return what an instrument measures, worked out from its row, its body and its letters.
+
+    Parameters
+    ----------
+    installed
+        The instrument.
+    asked
+        Whether it must have a range.
+    """
     record = installed.record
-    field = scale(record.lrv, record.urv)
-    system = scale(record.system_lrv, record.system_urv)
+    field, system = scale(record.lrv, record.urv), scale(record.system_lrv, record.system_urv)
     variable = variable_of(installed)
     body = installed.body or _body_told(installed, variable, field, system)
-    names, values = (
-        _OPERATING_VALUE,
-        (
-            record.operating_value_min,
-            record.operating_value_normal,
-            record.operating_value_max,
-        ),
-    )
-    if values == (None, None, None):
+    low, normal, high = record.operating_value_min, record.operating_value_normal, record.operating_value_max
+    names = _OPERATING_VALUE
+    if low is None and normal is None and high is None:
         if variable == "P" and body != "differential":
-            names, values = (
-                _OPERATING_PRESSURE,
-                (
-                    record.operating_pressure_min,
-                    record.operating_pressure_normal,
-                    record.operating_pressure_max,
-                ),
-            )
+            names = _OPERATING_PRESSURE
+            low, normal = record.operating_pressure_min, record.operating_pressure_normal
+            high = record.operating_pressure_max
         elif variable == "T":
-            names, values = (
-                _OPERATING_TEMPERATURE,
-                (
-                    record.operating_temperature_min,
-                    record.operating_temperature_normal,
-                    record.operating_temperature_max,
-                ),
-            )
+            names = _OPERATING_TEMPERATURE
+            low, normal = record.operating_temperature_min, record.operating_temperature_normal
+            high = record.operating_temperature_max
     return Measurement(
-        installed=installed, variable=variable, field=field, system=system, body=body, names=names, values=values
+        installed=installed,
+        variable=variable,
+        field=field,
+        system=system,
+        body=body,
+        names=names,
+        values=(low, normal, high),
+        ranged=field is not None or system is not None,
+        flat=field.flat if field is not None else system is not None and system.flat,
+        asked=asked,
     )
 
 
@@ -181,6 +183,10 @@ _OPERATING_TEMPERATURE: Final = (
     "operating_temperature_normal",
     "operating_temperature_max",
 )
+
+
+_MOST_KEPT: Final = 50_000
+_SCALES: dict[tuple[int, int], Scale] = {}
 
 
 def scale(lrv: Quantity | None, urv: Quantity | None) -> Scale | None:
@@ -195,6 +201,17 @@ def scale(lrv: Quantity | None, urv: Quantity | None) -> Scale | None:
     """
     if lrv is None or urv is None:
         return None
+    # Lists repeat their ranges, and their reader keeps one object for each value that it has seen.
+    key = (id(lrv), id(urv))
+    known = _SCALES.get(key)
+    if known is None:
+        known = _scale(lrv, urv)
+        if len(_SCALES) < _MOST_KEPT:
+            _SCALES[key] = known  # holds both ends, so that no other object can get their ids
+    return known
+
+
+def _scale(lrv: Quantity, urv: Quantity) -> Scale:
     one, other = lrv.unit, urv.unit
     if one is None or other is None or not (one is other or same_dimension(one, other)):
         low, high = sorted((lrv.number, urv.number))

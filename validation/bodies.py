@@ -24,7 +24,7 @@ def measured(installed: Installed, plant: Plant) -> Measurement:
     known: dict[Installed, Measurement] = plant.once("measurements", _none_yet)
     found = known.get(installed)
     if found is None:
-        found = known[installed] = measurement_of(installed)
+        found = known[installed] = measurement_of(installed, asked=_must_have_a_range(installed, plant))
     return found
 
 
@@ -44,8 +44,7 @@ _CARRIES_THE_RANGE: Final = frozenset({Kind.TRANSMITTER, Kind.ANALYSER})
 _WITHOUT_RANGE: Final = frozenset({Kind.GLASS, Kind.FIRE_DETECTOR})
 
 
-def range_is_asked(installed: Installed, plant: Plant) -> bool:
-    """Whether an instrument of its kind must have a range."""
+def _must_have_a_range(installed: Installed, plant: Plant) -> bool:
     kind = installed.kind
     return (
         kind is not None
@@ -57,13 +56,14 @@ def range_is_asked(installed: Installed, plant: Plant) -> bool:
 
 def with_range(installed: Installed, plant: Plant) -> bool:
     """Whether it has a range, or must have one."""
-    return measured(installed, plant).ranged or range_is_asked(installed, plant)
+    measurement = measured(installed, plant)
+    return measurement.ranged or measurement.asked
 
 
 def with_span(installed: Installed, plant: Plant) -> bool:
     """Whether it has a range, or must have one, and RNG01 does not find that its ends are one."""
     measurement = measured(installed, plant)
-    return not measurement.flat if measurement.ranged else range_is_asked(installed, plant)
+    return not measurement.flat if measurement.ranged else measurement.asked
 
 
 _ON_A_BODY: Final = frozenset({"yes", "setting"})
@@ -76,10 +76,10 @@ def stands_on_a_body(installed: Installed) -> bool:
 
 def ranged_body(installed: Installed, plant: Plant) -> bool:
     """Whether it has a field range set on a body, or must have one, and RNG01 finds nothing."""
-    field = measured(installed, plant).field
-    if field is None:
-        return not measured(installed, plant).flat and range_is_asked(installed, plant)
-    return not field.flat and stands_on_a_body(installed)
+    measurement = measured(installed, plant)
+    if measurement.field is None:
+        return measurement.asked and not measurement.flat
+    return not measurement.flat and stands_on_a_body(installed)
 
 
 # ------------------------------------------------------------------------------------------ other device types
@@ -227,7 +227,7 @@ def _is_like(other: DeviceType, now: DeviceType, kind: Kind | None) -> bool:
 
 def _passes(installed: Installed, plant: Plant) -> frozenset[str] | None:
     """Return the codes of the checks that cannot be made of a type; None where it fails one."""
-    measurement = measurement_of(installed)
+    measurement = measurement_of(installed, asked=_must_have_a_range(installed, plant))
     unknown: set[str] = set()
     for code, check in _CHECKS.items():
         verdict = check(measurement, plant)

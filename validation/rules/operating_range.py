@@ -110,6 +110,34 @@ def _pressures(measurement: Measurement) -> Iterator[tuple[float, str | None]]:
                 yield at(end), measurement.reference(end)
 
 
+def _plain_scale(measurement: Measurement) -> Scale | None:
+    """Return the range with which all operating values can be compared as they stand; None where more must be asked.
+
+    They have its very dimension, and are pressures of one reference if they are pressures.
+    """
+    scale = measurement.field if measurement.field is not None else measurement.system
+    if scale is None or scale.unit is None or scale.flat:
+        return None
+    dimension, reference = scale.unit.dimension, scale.urv.reference
+    for value in measurement.values:
+        if value is not None:
+            unit = value.unit
+            if unit is None or unit.dimension != dimension or value.reference != reference or value.base is None:
+                return None
+    return scale if scale.lrv.reference == reference else None
+
+
+def _stands_inside(measurement: Measurement) -> bool:
+    """Whether minimum and maximum are given and stand inside the range beyond doubt."""
+    low, normal, high = measurement.values
+    if low is None or high is None:
+        return False
+    scale = _plain_scale(measurement)
+    if scale is None:
+        return False
+    return all(value is None or scale.low <= at(value) <= scale.high for value in (low, normal, high))
+
+
 # ------------------------------------------------------------------------------------------------------------ RNG07
 
 
@@ -142,6 +170,8 @@ def operated_outside_range(installed: Installed, plant: Plant) -> Verdict:
 
 def beyond_range(measurement: Measurement, plant: Plant) -> Verdict:
     """RNG07 without its fixes."""
+    if _stands_inside(measurement):
+        return None
     if measurement.values == (None, None, None):
         return Unchecked(_blank_title(measurement, 2), _blank_title(measurement, 0))
     return read_both_ways(lambda open_as: _beyond(measurement, plant, open_as), _pressures(measurement), plant)
@@ -359,6 +389,11 @@ def normal_at_an_end(installed: Installed, plant: Plant) -> Verdict:
         return NotApplicable("the normal value is zero")
     if normal.unit is None:
         return Unchecked(title_of(measurement.names[1]))
+    scale = _plain_scale(measurement)
+    if scale is not None and not (scale.is_pressure and measurement.variable == "F"):
+        low, high = _percents(plant)
+        if low <= 100.0 * (at(normal) - scale.low) / scale.span <= high:
+            return None
     verdict = read_both_ways(lambda open_as: _off_place(measurement, plant, open_as), _pressures(measurement), plant)
     return with_fixes(verdict, lambda found: _range_for_normal(measurement, plant))
 

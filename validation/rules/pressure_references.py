@@ -10,7 +10,7 @@ from instruments.measurement import Measurement, at, in_unit
 from instruments.pressure import referred, stated_reference
 from instruments.quantity import Quantity, format_number
 from loops.plant import Plant
-from validation.bodies import measured, range_is_asked, stands_on_a_body
+from validation.bodies import measured, stands_on_a_body
 from validation.finding import Found, Review, Severity, Unchecked, Verdict
 from validation.mending import written
 from validation.rule import Subject, rule
@@ -34,7 +34,7 @@ class _Told(NamedTuple):
 
     reference: str
     name: str
-    text: str
+    shown: object
     fields: tuple[str, ...]
 
 
@@ -54,9 +54,9 @@ def _told(measurement: Measurement) -> list[_Told]:
             continue
         low, high = (stated_reference(end, body=body) for end in (scale.lrv, scale.urv))
         if low is not None:
-            told.append(_Told(low, name, str(scale), fields))
+            told.append(_Told(low, name, scale, fields))
         if high is not None and high != low:
-            told.append(_Told(high, name, str(scale), fields))
+            told.append(_Told(high, name, scale, fields))
     ranged = {each.reference for each in told}
     for field, name in _SETTINGS:
         value: Quantity | None = getattr(record, field)
@@ -64,7 +64,7 @@ def _told(measurement: Measurement) -> list[_Told]:
             reference = stated_reference(value, body=body)
             # A setting that goes with the range tells nothing new.
             if reference is not None and reference not in ranged:
-                told.append(_Told(reference, name, str(value), (field,)))
+                told.append(_Told(reference, name, value, (field,)))
     if body is not None:
         stated = device is not None and device.body is not None
         told.append(_Told(body, "body", body, ("type.body" if stated else "type.url",)))
@@ -73,15 +73,46 @@ def _told(measurement: Measurement) -> list[_Told]:
             if limit is not None and _is_pressure(limit):
                 reference = stated_reference(limit, body=body)
                 if reference is not None and reference != body:
-                    told.append(_Told(reference, name, str(limit), (field,)))
+                    told.append(_Told(reference, name, limit, (field,)))
     return told
 
 
 def mixed_references(measurement: Measurement) -> bool:
     """Whether RNG06 finds that references are mixed; a gauge range on a differential body it only reviews."""
-    told = _told(measurement)
-    references = {each.reference for each in told}
-    return len(references) > 1 and not _is_vented(measurement, told, references)
+    if measurement.mixed is None:
+        if _agrees(measurement):
+            measurement.mixed = False
+        else:
+            told = _told(measurement)
+            references = {each.reference for each in told}
+            measurement.mixed = len(references) > 1 and not _is_vented(measurement, told, references)
+    return measurement.mixed
+
+
+_SAYS_NOTHING: Final = frozenset({None, "unstated"})
+
+
+def _agrees(measurement: Measurement) -> bool:
+    """Whether all references are the same as they are written, so that nothing more need be asked."""
+    installed = measurement.installed
+    record, device, field, system = installed.record, installed.type, measurement.field, measurement.system
+    values = [
+        record.setting_ll,
+        record.setting_l,
+        record.setting_h,
+        record.setting_hh,
+        record.trip,
+        record.set_pressure,
+    ]
+    if field is not None:
+        values += (field.lrv, field.urv)
+    if system is not None:
+        values += (system.lrv, system.urv)
+    if device is not None:
+        values += (device.lrl, device.url)
+    references = {value.reference for value in values if value is not None}
+    references.add(installed.body)
+    return len(references - _SAYS_NOTHING) < 2
 
 
 def _is_vented(measurement: Measurement, told: Sequence[_Told], references: set[str]) -> bool:
@@ -99,19 +130,22 @@ def _with_pressures(installed: Installed, plant: Plant) -> bool:
     if measurement.flat:
         return False
     field, system, record = measurement.field, measurement.system, installed.record
-    pressures = (
-        (field is not None and field.is_pressure)
-        + (system is not None and system.is_pressure)
-        + any(_is_pressure(getattr(record, name)) for name, _ in _SETTINGS)
-    )
-    if not stands_on_a_body(installed):
+    in_field = field is not None and field.is_pressure
+    on_a_body = stands_on_a_body(installed)
+    if in_field and on_a_body:
+        return True
+    in_system = system is not None and system.is_pressure
+    settings = (record.setting_ll, record.setting_l, record.setting_h, record.setting_hh, record.trip)
+    in_settings = any(map(_is_pressure, (*settings, record.set_pressure)))
+    if not on_a_body:
         # A function of the system or a valve has no body, but what it states must agree.
+        pressures = in_field + in_system + in_settings
         return pressures > 1 or (pressures == 1 and installed.body is not None)
-    if pressures:
+    if in_system or in_settings:
         return True
     if field is not None:
         return False
-    return installed.body is not None or (measurement.variable in ("P", "PD") and range_is_asked(installed, plant))
+    return installed.body is not None or (measurement.variable in ("P", "PD") and measurement.asked)
 
 
 @rule(
@@ -139,15 +173,16 @@ def references_mixed(installed: Installed, plant: Plant) -> Verdict:
     []
     """
     measurement = measured(installed, plant)
-    told = _told(measurement)
-    references = {each.reference for each in told}
-    if len(references) > 1:
-        return _mixed(measurement, plant, told, references)
+    if not _agrees(measurement):
+        told = _told(measurement)
+        references = {each.reference for each in told}
+        if len(references) > 1:
+            return _mixed(measurement, plant, told, references)
     blank: list[str] = []
     if stands_on_a_body(installed):
         if installed.body is None:
             blank.append("body")
-        if measurement.field is None and range_is_asked(installed, plant):
+        if measurement.field is None and measurement.asked:
             record = installed.record
             blank += [title for title, end in (("LRV", record.lrv), ("URV", record.urv)) if end is None]
     return Unchecked(*blank) if blank else None
@@ -156,7 +191,7 @@ def references_mixed(installed: Installed, plant: Plant) -> Verdict:
 def _mixed(measurement: Measurement, plant: Plant, told: Sequence[_Told], references: set[str]) -> Found:
     fields = tuple(dict.fromkeys(field for each in told for field in each.fields))
     if _is_vented(measurement, told, references):
-        gauge = ", ".join(dict.fromkeys(f"{each.name} {each.text}" for each in told if each.reference == "gauge"))
+        gauge = ", ".join(dict.fromkeys(f"{each.name} {each.shown}" for each in told if each.reference == "gauge"))
         return Review(
             values={"items": gauge},
             fields=fields,
@@ -164,7 +199,7 @@ def _mixed(measurement: Measurement, plant: Plant, told: Sequence[_Told], refere
             wanted="differential",
             message="{items} on a differential body: is its low side open to the atmosphere?",
         )
-    items = ", ".join(dict.fromkeys(f"{each.name} {each.text}" for each in told))
+    items = ", ".join(dict.fromkeys(f"{each.name} {each.shown}" for each in told))
     ordered = sorted(references, key=_ORDER.__getitem__)
     return Found(
         values={"references": f"{', '.join(ordered[:-1])} and {ordered[-1]}", "items": items},

@@ -10,6 +10,7 @@ from instruments.kind import Kind, touches_process
 from instruments.measurement import Measurement, amount, at, in_unit
 from instruments.pressure import stated_reference
 from instruments.quantity import Quantity, format_number
+from instruments.record import Instrument
 from instruments.span import above, below
 from instruments.unit import Unit
 from loops.plant import Plant
@@ -125,6 +126,8 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
     >>> said("PRO01", [{**row, "design pressure": "12 barg"}])
     []
     """
+    if _is_well_above(installed.record):
+        return None
     measurement = measured(installed, plant)
     found: list[Found] = []
     blank: list[str] = []
@@ -144,6 +147,28 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
     if found:
         return found
     return Unchecked(*blank) if blank else None
+
+
+def _is_well_above(record: Instrument) -> bool:
+    """Whether both design values and both maxima are given, and stand right beyond doubt."""
+    for design, operating in (
+        (record.design_pressure, record.operating_pressure_max),
+        (record.design_temperature, record.operating_temperature_max),
+    ):
+        if design is None or operating is None or design.base is None or operating.base is None:
+            return False
+        if design.reference != operating.reference or design.base < operating.base:
+            return False
+    for design, normal in (
+        (record.design_pressure, record.operating_pressure_normal),
+        (record.design_temperature, record.operating_temperature_normal),
+    ):
+        if normal is not None and design is not None:
+            if normal.base is None or design.base is None or normal.reference != design.reference:
+                return False
+            if normal.base > design.base:
+                return False
+    return True
 
 
 def _designed_below(part: str, design: Quantity, operating: _Named, measurement: Measurement, plant: Plant) -> Verdict:
@@ -349,8 +374,8 @@ def above_static_limit(measurement: Measurement, plant: Plant) -> Verdict:
 _OFF_THE_PROCESS: Final = frozenset({"panel", "cabinet", "control room", "system"})
 _WETTED: Final = frozenset({None, Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH, Kind.GAUGE, Kind.GLASS})
 _KEPT_AWAY: Final = {
-    "impulse line": "impulse line: the process temperature is taken not to reach the body",
-    "thermowell": "thermowell: the process temperature is taken not to reach the head",
+    "impulse line": NotApplicable("impulse line: the process temperature is taken not to reach the body"),
+    "thermowell": NotApplicable("thermowell: the process temperature is taken not to reach the head"),
 }
 
 
@@ -397,6 +422,9 @@ def too_hot_or_too_cold(installed: Installed, plant: Plant) -> Verdict:
     >>> said("PRO05", [{**row, "design temperature": "110 degC"}], types=types)
     []
     """
+    record = installed.record
+    if record.device_temperature is None and record.mounting in _KEPT_AWAY:
+        return _KEPT_AWAY[record.mounting]
     measurement = measured(installed, plant)
     return with_fixes(
         outside_temperature_limits(measurement, plant), lambda found: type_fixes("PRO05", measurement, plant)
@@ -419,7 +447,7 @@ def outside_temperature_limits(measurement: Measurement, plant: Plant) -> Verdic
         if mounting != "remote seal":
             return found or (Unchecked(*dict.fromkeys(blank)) if blank else None)
     elif mounting in _KEPT_AWAY:
-        return NotApplicable(_KEPT_AWAY[mounting])
+        return _KEPT_AWAY[mounting]
     highs, lows = _process_temperatures(installed, blank)
     if mounting == "remote seal":
         _compare(installed, "seal", highs, lows, found, blank)

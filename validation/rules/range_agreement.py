@@ -13,7 +13,7 @@ from instruments.span import SLACK
 from instruments.unit import Unit, unit_label
 from loops.plant import Plant
 from loops.redundancy import how_redundant, in_redundant_group, redundant_groups
-from validation.bodies import measured, range_is_asked
+from validation.bodies import measured
 from validation.finding import Fix, Found, Review, Severity, Unchecked, Verdict
 from validation.mending import SAME_RANGE, read_both_ways, written
 from validation.rule import Subject, rule
@@ -29,7 +29,7 @@ def _with_two_ranges(installed: Installed, plant: Plant) -> bool:
         return not field.flat and not system.flat
     if measurement.flat or installed.kind is None or installed.kind.wired not in _WIRED:
         return False
-    return range_is_asked(installed, plant)
+    return measurement.asked
 
 
 @rule(
@@ -135,7 +135,7 @@ def _in_group(installed: Installed, plant: Plant) -> bool:
     if not in_redundant_group(installed, plant):
         return False
     measurement = measured(installed, plant)
-    return not measurement.flat if measurement.ranged else range_is_asked(installed, plant)
+    return not measurement.flat if measurement.ranged else measurement.asked
 
 
 @rule(

@@ -120,11 +120,13 @@ def outside_body(measurement: Measurement, plant: Plant) -> Verdict:
     field, device = measurement.field, measurement.installed.type
     if field is None or device is None or (device.lrl is None and device.url is None):
         return Unchecked("LRV", "URV", "LRL", "URL")
-    trouble = _not_comparable(measurement, plant, device.lrl, device.url)
+    trouble = _not_comparable(measurement, device.lrl, device.url)
     if trouble is not None:
         return trouble
     low = None if device.lrl is None else at(device.lrl)
     high = None if device.url is None else at(device.url)
+    if low is not None and high is not None and low <= field.low and field.high <= high:
+        return None
     found: list[Found] = []
     for end, name, value in (("LRV", "lrv", field.lrv), ("URV", "urv", field.urv)):
         off = beyond_limit(at(value), low, high)
@@ -159,7 +161,7 @@ def outside_body(measurement: Measurement, plant: Plant) -> Verdict:
     return Unchecked(*blank) if blank else None
 
 
-def _not_comparable(measurement: Measurement, plant: Plant, *limits: Quantity | None) -> Unchecked | None:
+def _not_comparable(measurement: Measurement, *limits: Quantity | None) -> Unchecked | None:
     """Why a field range cannot be compared with the limits of its body."""
     field = measurement.field
     if field is None or field.unit is None:
@@ -277,14 +279,16 @@ def below_minimum_span(measurement: Measurement, plant: Plant) -> Verdict:
     field, device = measurement.field, measurement.installed.type
     if field is None or device is None or device.minimum_span is None:
         return Unchecked("minimum span")
-    trouble = _not_comparable(measurement, plant)
+    trouble = _not_comparable(measurement)
     if trouble is not None:
         return trouble
-    unit = field.unit
+    unit, least_unit = field.unit, device.minimum_span.unit
     assert unit is not None
+    if least_unit is unit and field.span >= abs(device.minimum_span.number * (unit.factor or 1.0)):
+        return None
     least = _span_in(device.minimum_span, unit)
     if least is None:
-        return Unchecked("limit unit" if device.minimum_span.unit is None else BODY_UNIT)
+        return Unchecked("limit unit" if least_unit is None else BODY_UNIT)
     span = difference_in(field.span, unit)
     if not above(least, span):
         return None
@@ -409,21 +413,21 @@ def turned_down_too_far(installed: Installed, plant: Plant) -> Verdict:
 def over_turndown(measurement: Measurement, plant: Plant) -> Verdict:
     """RNG04 without its fixes."""
     field, device = measurement.field, measurement.installed.type
-    if not _turns_down(measurement) or (device is not None and device.minimum_span is not None):
-        most, _ = _maximum_turndown(measurement, plant)
-        if not _turns_down(measurement) or most is None:
-            return NotApplicable()
+    most, of_type = _maximum_turndown(measurement, plant)
+    if not _turns_down(measurement) or (most is None and device is not None and device.minimum_span is not None):
+        return NotApplicable()
     if field is None or device is None or device.url is None:
         return Unchecked("URL")
-    most, of_type = _maximum_turndown(measurement, plant)
     if most is None or most <= 0.0:
         return Unchecked("maximum turndown")
-    trouble = _not_comparable(measurement, plant, device.lrl, device.url)
+    trouble = _not_comparable(measurement, device.lrl, device.url)
     if trouble is not None:
         return trouble
     unit = device.url.unit
     assert unit is not None
     assert field.unit is not None
+    if device.lrl is not None and max(abs(at(device.lrl)), abs(at(device.url))) <= most * field.span:
+        return None
     lrl = 0.0 if device.lrl is None else in_unit(at(device.lrl), unit)
     url = in_unit(at(device.url), unit)
     ratio = turndown(lrl, url, difference_in(field.span, unit))
@@ -495,7 +499,7 @@ def zero_beyond_shift(measurement: Measurement, plant: Plant) -> Verdict:
         return NotApplicable()
     if field is None or device.url is None:
         return Unchecked("URL")
-    trouble = _not_comparable(measurement, plant, device.url)
+    trouble = _not_comparable(measurement, device.url)
     if trouble is not None:
         return trouble
     unit = device.url.unit

@@ -2,16 +2,17 @@
 
 from __future__ import annotations
 
-from typing import Final
+from functools import lru_cache
+from typing import Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import Measurement, amount, at
 from instruments.quantity import format_number
-from instruments.sensor import read_sensor_type, sensor_limits, sensors_for_range
+from instruments.sensor import SensorLimits, SensorType, read_sensor_type, sensor_limits, sensors_for_range
 from instruments.span import beyond_limit
 from loops.plant import Plant
-from validation.bodies import body_check, measured, range_is_asked, type_fixes
+from validation.bodies import body_check, measured, type_fixes
 from validation.finding import Fix, Found, NotApplicable, Severity, Unchecked, Verdict
 from validation.mending import with_fixes
 from validation.rule import Subject, rule
@@ -19,47 +20,68 @@ from validation.rule import Subject, rule
 _SENSES_TEMPERATURE: Final = frozenset({None, Kind.ELEMENT, Kind.TRANSMITTER})
 
 
+class _Named(NamedTuple):
+    """The sensor that a list names, what it can measure, and where it says so."""
+
+    sensor: SensorType
+    limits: SensorLimits
+    field: str
+    owner: Installed
+
+
+@lru_cache(maxsize=4096)
+def _read(text: str) -> tuple[SensorType, SensorLimits] | None:
+    sensor, limits = read_sensor_type(text), sensor_limits(text)
+    return None if sensor is None or limits is None else (sensor, limits)
+
+
 def _with_sensor(installed: Installed, plant: Plant) -> bool:
-    if installed.kind not in _SENSES_TEMPERATURE:
-        return False
-    measurement = measured(installed, plant)
-    if measurement.flat or measurement.variable not in ("T", ""):
+    return _asks_for_a_sensor(measured(installed, plant))
+
+
+def _asks_for_a_sensor(measurement: Measurement) -> bool:
+    installed = measurement.installed
+    if measurement.variable not in ("T", "") or measurement.flat or installed.kind not in _SENSES_TEMPERATURE:
         return False
     scale = measurement.field or measurement.system
     if scale is None:
-        return measurement.variable == "T" and range_is_asked(installed, plant)
-    if scale.unit is None or scale.unit.kind != "temperature":
-        return False
-    return measurement.variable == "T" or _sensor(installed, plant) is not None
+        return measurement.variable == "T" and measurement.asked
+    if scale.unit is None:
+        return measurement.variable == "T"
+    return scale.unit.kind == "temperature" and (measurement.variable == "T" or _own_sensor(installed) is not None)
 
 
-def _sensor(installed: Installed, plant: Plant) -> tuple[str, str] | None:
-    """Return the text that names the sensor and its field: the type's sensor, else the words of row and type."""
+def _own_sensor(installed: Installed) -> _Named | None:
+    """Return the sensor that the type names, else the words of the row or of the type."""
     record, device = installed.record, installed.type
+    stated = device.sensor_type if device is not None else None
+    if stated and _read(stated) is None and any(sign.isdigit() for sign in stated):
+        return None  # Ni100, Cu10: named well enough, and no standard function is held for it
     texts = (
-        ("type.sensor_type", device.sensor_type if device is not None else None),
+        ("type.sensor_type", stated),
         ("signal", record.signal),
         ("kind", record.kind_written),
         ("type.signal", device.signal if device is not None else None),
         ("type.description", device.description if device is not None else None),
-        ("model", record.model),
     )
     for field, text in texts:
-        if text and (field == "type.sensor_type" or read_sensor_type(text) is not None):
-            return text, field
+        found = _read(text) if text else None
+        if found is not None:
+            return _Named(*found, field, installed)
     return None
 
 
-def _element_s_sensor(installed: Installed, plant: Plant) -> tuple[str, str, Installed] | None:
-    if installed.kind is Kind.ELEMENT:
+def _sensor_of(installed: Installed, plant: Plant) -> _Named | None:
+    """Return the sensor of an instrument; of a transmitter that names none, its element's in the loop."""
+    own = _own_sensor(installed)
+    if own is not None or installed.kind is Kind.ELEMENT:
+        return own
+    if installed.type is not None and installed.type.sensor_type:
         return None
     loop = plant.loop_of(installed)
-    for each in loop.members if loop is not None else ():
-        if each is not installed and each.kind is Kind.ELEMENT:
-            found = _sensor(each, plant)
-            if found is not None and read_sensor_type(found[0]) is not None:
-                return (*found, each)
-    return None
+    elements = (each for each in (loop.members if loop is not None else ()) if each.kind is Kind.ELEMENT)
+    named = (_own_sensor(each) for each in elements if each is not installed)
+    return next((each for each in named if each is not None), None)
 
 
 @rule(
@@ -94,47 +116,37 @@ def outside_sensor(measurement: Measurement, plant: Plant) -> Verdict:
     """RNG14 without its fixes."""
     installed = measurement.installed
     scale = measurement.field or measurement.system
-    if not _with_sensor(installed, plant) or scale is None:
+    if scale is None or not _asks_for_a_sensor(measurement):
         return NotApplicable()
     if scale.unit is None:
         return Unchecked("range unit")
-    named = _sensor(installed, plant)
-    limits = sensor_limits(named[0]) if named is not None else None
-    other: Installed | None = None
-    if limits is None:
-        at_element = _element_s_sensor(installed, plant) if named is None else None
-        if at_element is None:
-            return Unchecked("sensor type")
-        named, other = at_element[:2], at_element[2]
-        limits = sensor_limits(named[0])
-    sensor = read_sensor_type(named[0]) if named is not None else None
-    if limits is None or sensor is None or named is None:
+    named = _sensor_of(installed, plant)
+    if named is None:
         return Unchecked("sensor type")
+    low, high = named.limits.min_c, named.limits.max_c
     ends = (("lrv", scale.lrv), ("urv", scale.urv))
     if scale is measurement.system:
         ends = (("system_lrv", scale.lrv), ("system_urv", scale.urv))
-    off = {name: beyond_limit(at(end) - _KELVIN, limits.min_c, limits.max_c) for name, end in ends}
-    outside = [name for name in off if off[name]]
+    off = {name: beyond_limit(at(end) - _KELVIN, low, high) for name, end in ends}
+    outside = tuple(name for name in off if off[name])
     if not outside:
         return None
-    worst = max(off.values(), key=abs)
-    unit = scale.unit
-    limit_text = f"{format_number(limits.min_c)} to {format_number(limits.max_c)} °C"
+    own = named.owner is installed
+    limits = f"{format_number(low)} to {format_number(high)} °C"
+    in_celsius = f"{scale} = {format_number(at(scale.lrv) - _KELVIN)} to {format_number(at(scale.urv) - _KELVIN)} °C"
     return Found(
         values={
             "range": str(scale),
-            "sensor": sensor.name if other is None else f"{sensor.name} of {other.name}",
-            "limits": limit_text,
-            "basis": limits.basis,
+            "sensor": named.sensor.name if own else f"{named.sensor.name} of {named.owner.name}",
+            "limits": limits,
+            "basis": named.limits.basis,
         },
-        fields=(*outside, *((named[1],) if other is None else ())),
+        fields=(*outside, *((named.field,) if own else ())),
         found=str(scale),
-        wanted=f"within {limit_text}",
-        off_by=amount(worst, unit),
-        cells=() if other is None else other.cells(named[1]),
-        working=""
-        if unit.canonical == "degC"
-        else f"{scale} = {format_number(at(scale.lrv) - _KELVIN)} to {format_number(at(scale.urv) - _KELVIN)} °C",
+        wanted=f"within {limits}",
+        off_by=amount(max(off.values(), key=abs), scale.unit),
+        working="" if scale.unit.canonical == "degC" else in_celsius,
+        cells=() if own else named.owner.cells(named.field),
     )
 
 
