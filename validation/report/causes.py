@@ -209,7 +209,7 @@ def _text(group: Sequence[Finding]) -> str:
         # A template that its own values do not fit: the first message is at least true of one of them.
         return group[0].message
     left_open = any(_LEFT_OPEN.fullmatch(piece) for piece in pieces)
-    said = " ".join(piece for piece in pieces if not _LEFT_OPEN.fullmatch(piece))
+    said = " ".join(literal for literal, *_ in string.Formatter().parse(group[0].cause))
     if left_open and len(_WORD.findall(said)) < _SAYS_ENOUGH:
         return f"such as: {group[0].message}"
     return "".join(pieces)

@@ -214,12 +214,14 @@ def test_braces_in_a_value_are_no_placeholders() -> None:
         ("{marking} does not fit the area {place}", "[marking] does not fit the area [place]"),
         ("{marking} in the same place", "such as: Ex db in the same place"),
         ("no marking: {n}", "no marking: 1 to 2"),
+        ("{marking} in {area}", "such as: Ex db in the area behind the old pump house"),
     ],
 )
 def test_a_template_that_says_nearly_nothing_gives_an_example(template: str, text: str) -> None:
+    area = "the area behind the old pump house"
     values = [
-        {"reason": "gas on dust", "marking": "Ex db", "place": "Z1", "n": "1"},
-        {"reason": "no group", "marking": "Ex ia", "place": "Z2", "n": "2"},
+        {"reason": "gas on dust", "marking": "Ex db", "place": "Z1", "n": "1", "area": area},
+        {"reason": "no group", "marking": "Ex ia", "place": "Z2", "n": "2", "area": area},
     ]
     findings = [finding(message=template.format_map(each), cause=template, values=each) for each in values]
     assert said(findings) == [(2, text)]
