@@ -337,7 +337,7 @@ INSTRUMENTS = SheetKind(
               "process description"),
         _text("device_type", "device type", "device type", "type code", "catalogue code", "device code", "typecode",
               "catalogue type", "device", "instrument type code", "type ref", "data sheet type", "geraetetyp",
-              "gerätetyp", "type id"),
+              "gerätetyp", "type id", "type", "type no", "instrument code"),
         Column(field="kind", title="kind", reads=Reads.KIND,
                headings=("kind", "instrument type", "type", "device kind", "inst type", "type of instrument",
                          "instrument kind", "class", "device class", "geräteart", "geraeteart", "art", "tag class",

@@ -412,7 +412,8 @@ def quantity_cell(cell: Value, unit: UnitCell, column: Column, *, decimal: str |
         if column.kinds and part.unit.kind not in column.kinds:
             return _in_trouble(f"'{part}' is no {' or '.join(column.kinds)}")
     if all(part is None for part in parts):
-        return Outcome(blank="not applicable")
+        single = read_quantity(cell, unit=given, decimal=decimal, kinds=column.kinds)
+        return Outcome(blank=(single.blank if isinstance(single, CellTrouble) else None) or "not applicable")
     return Outcome(value=parts if len(parts) > 1 else parts[0])
 
 

@@ -5,30 +5,33 @@ from __future__ import annotations
 import re
 from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
-from functools import lru_cache
 from itertools import islice
 from typing import Final
 
-from rapidfuzz import fuzz, process
-
 from instruments.column import Column, Reads, SheetKind
-from instruments.kind import kind_from_words
-from instruments.unit import Unit, read_unit
-from instruments.workbook.column_unit import factor_to
+from instruments.unit import Unit
+from instruments.workbook.contents import IO_WORD, Contents
+from instruments.workbook.heading_words import (
+    BRACKET,
+    DEPENDENT,
+    GENERIC_UNITS,
+    NEUTRAL,
+    NUMERIC,
+    Candidate,
+    Finder,
+    Levels,
+    heading_words,
+    names_of,
+    unit_for,
+)
 from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet
-from instruments.workbook.words import Words, folded, is_ditto, placeholder, yes_or_no
+from instruments.workbook.words import folded, placeholder
 
-__all__ = ["ColumnMatch", "SheetMatch", "heading_words", "match_sheet"]
+__all__ = ["ColumnMatch", "SheetMatch", "match_sheet"]
 
 LOOKED_AT_ROWS: Final = 400
 """Rows in which a heading is looked for; title pages and notes come before it."""
-
-SAMPLE: Final = 300
-"""Filled cells of a column by which its contents are judged."""
-
-LIKE_ENOUGH: Final = 86.0
-"""Likeness (0..100) from which a heading that is no synonym is taken for a misspelt one."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -119,618 +122,6 @@ class SheetMatch:
         return frozenset(name for match in self.columns.values() for name in _fills(match.column))
 
 
-# --- the words of a heading -----------------------------------------------------------------------------------------
-
-_PHRASES: Final = tuple(
-    (re.compile(pattern), f" {word} ")
-    for pattern, word in (
-        (r"\bp\s?(?:&|\+|and)\s?i\s?d\b", "pid"),
-        (r"\bp\.\s?&?\s?i\.\s?d\b", "pid"),
-        (r"\br\s?(?:&|\+|und)\s?i\b", "ri"),
-        (r"\bi\s?/\s?o\b", "io"),
-        (r"\be\s?/\s?a\b", "ea"),
-        (r"\by\s?/\s?n\b|\byes\s?/\s?no\b|\bja\s?/\s?nein\b", ""),
-        (r"\bn\.?\s?[oc]\.?\s?/\s?n\.?\s?[oc]\b", "nonc"),
-        (r"\bs\s?/\s?n\b", "serial"),
-        (r"\bd\s?/\s?p\b", "dp"),
-        (r"\bset\s?-?\s?(?:points?|pts?)\b", "setpoint"),
-        (r"\b(?:low|lo|l)[\s-]?(?:low|lo|l)\b", "ll"),
-        (r"\b(?:high|hi|h)[\s-]?(?:high|hi|h)\b", "hh"),
-        (r"\bmess ?stellen?\s?-?\s?(?:nr|nummer)\b", "messstellen"),
-        (r"\bmess(?:bereichs?|b\.)\s?-?\s?anfang\b", "messbereich anfang"),
-        (r"\bmess(?:bereichs?|b\.)\s?-?\s?ende\b", "messbereich ende"),
-        (r"\bmess ?bereichs?-?einheit\b", "messbereich einheit"),
-        (r"\bein-? ?/ ?ausgang\b", "ea"),
-    )
-)
-# SafetyNotes, TagName: names as programs write them.
-_HUMPS: Final = re.compile(r"(?<=[a-z])(?=[A-Z][a-z])")
-_INITIALS: Final = re.compile(r"\b(?:[a-z]\.\s?){1,5}[a-z]\b\.?")
-_SPLIT: Final = re.compile(r"[^0-9a-z%#µμ°Ω&]+")
-_ONE_WORD: Final[Mapping[str, str]] = {
-    spelling: word
-    for word, spellings in {
-        "operating": ("oper", "op", "opg", "opr", "operation", "operational", "opn"),
-        "pressure": ("press", "pres"),
-        "temperature": ("temp", "tmp", "temperatures"),
-        "min": ("minimum", "mini", "minim"),
-        "max": ("maximum", "maxi", "maxim"),
-        "normal": ("norm", "nor", "nom", "nominal", "nrm"),
-        "design": ("des", "dsgn", "desgn"),
-        "calibrated": ("cal", "calib", "calibr", "calibration", "calibrate"),
-        "instrument": ("instr", "inst", "instruments", "instrumentation"),
-        "equipment": ("equip", "eqpt", "eqp", "equipt", "equpt", "eqmt"),
-        "description": ("desc", "descr", "descrip", "descriptions", "descrpt"),
-        "hazardous": ("haz", "hazard"),
-        "class": ("classification", "classn", "classif", "cl", "classifn"),
-        "location": ("loc", "locn", "locat"),
-        "manufacturer": ("mfr", "manuf", "mfg", "manufacture", "mfgr", "manufact", "manu"),
-        "revision": ("rev",),
-        "drawing": ("dwg", "drg", "drwg"),
-        "terminal": ("term", "terminals", "terms"),
-        "unit": ("units",),
-        "alarm": ("alarms", "alm", "alms"),
-        "setting": ("settings",),
-        "setpoint": ("sp", "setpoints", "setpt"),
-        "low": ("lo",),
-        "high": ("hi",),
-        "ll": ("lolo",),
-        "hh": ("hihi",),
-        "signal": ("sig", "signals", "sgnl"),
-        "remark": ("remarks", "rem", "rmk", "rmks"),
-        "comment": ("comments",),
-        "note": ("notes",),
-        "length": ("len", "lg", "lgth"),
-        "certificate": ("cert", "certificates", "certification"),
-        "position": ("pos", "posn"),
-        "engineering": ("eng", "engg", "engrg"),
-        "certificated": (),
-        "category": ("cat",),
-        "range": ("ranges", "rng", "rge"),
-        "messbereich": ("messber", "messbereiche"),
-        "einheit": ("einh",),
-        "betriebstemperatur": ("betriebstemp",),
-        "auslegungstemperatur": ("auslegungstemp", "ausltemp"),
-        "betriebsdruck": ("betriebsdr",),
-        "auslegungsdruck": ("auslegungsdr",),
-        "bezeichnung": ("bez", "bezeichn"),
-        "address": ("addr", "adress", "addresses"),
-        "supply": ("supplies", "suppl"),
-        "junction": ("junct",),
-        "conductor": ("cond",),
-        "voltage": ("volts", "volt"),
-        "temperaturklasse": ("temp.klasse", "tklasse"),
-        "failure": ("fails",),
-    }.items()
-    for spelling in spellings
-}
-# Words that say nothing about which field it is.
-_DROPPED: Final = frozenset(
-    (
-        "no", "nr", "num", "number", "nos", "nummer", "nbr", "#", "of", "the", "for", "a", "an", "and", "or", "der",
-        "die", "das", "des", "und", "in", "at", "&", "numero", "n°", "du", "et", "oder", "s",
-    )
-)  # fmt: skip
-_NEUTRAL: Final = frozenset(
-    (
-        "detail", "data", "information", "info", "general", "particular", "instrument", "field", "project",
-        "client", "site", "current", "actual", "final", "existing", "ref", "reference", "as", "built", "proposed",
-        "main", "process", "column", "technical", "electrical", "daten", "allgemein", "requirement", "condition",
-        "parameter", "characteristic", "value", "connection", "title", "hazardous", "plant", "mechanical",
-        "specification",
-    )
-)  # fmt: skip
-_KEEP_S: Final = frozenset(
-    (
-        "class", "status", "process", "gas", "bus", "address", "loss", "us", "as", "is", "access", "chassis",
-        "basis", "press", "cis", "dcs", "plcs", "pls", "sis", "fgs", "pcs", "bpcs", "fails", "sps", "adsress",
-        "abs",
-    )
-)  # fmt: skip
-
-
-@lru_cache(maxsize=65536)
-def heading_words(text: str) -> tuple[str, ...]:
-    """Return the words of a heading as headings are compared: abbreviations written out, punctuation and "no." gone.
-
-    >>> heading_words("Oper. Press. (Max.)"), heading_words("P & ID No."), heading_words("I/O Type")
-    (('operating', 'pressure', 'max'), ('pid',), ('io', 'type'))
-    >>> heading_words("E.U."), heading_words("Set Pts HI-HI"), heading_words("Tag #")
-    (('eu',), ('setpoint', 'hh'), ('tag',))
-    """
-    if " " not in text:
-        text = _HUMPS.sub(" ", text)
-    plain = folded(text[:200]).replace("μ", "u").replace("µ", "u")
-    plain = _INITIALS.sub(lambda found: found[0].replace(".", "").replace(" ", "") + " ", plain)
-    for pattern, word in _PHRASES:
-        plain = pattern.sub(word, plain)
-    words = [word for word in _SPLIT.split(plain) if word]
-    kept = [_one_word(word) for word in words if word not in _DROPPED]
-    return tuple(kept or words)
-
-
-def _one_word(word: str) -> str:
-    known = _ONE_WORD.get(word)
-    if known:
-        return known
-    if len(word) > 3 and word.endswith("s") and not word.endswith("ss") and word not in _KEEP_S:
-        return _ONE_WORD.get(word[:-1], word[:-1])
-    return word
-
-
-# Headings of one everyday word: they are believed only where the contents fit.
-_WEAK: Final = frozenset(
-    heading_words(text)
-    for text in (
-        "min", "max", "from", "to", "unit", "type", "class", "low", "high", "name", "item", "set", "normal", "fail",
-        "zone", "index", "box", "run", "by", "ex", "me", "point", "zero", "span", "scale", "td", "co", "ca", "la",
-        "pi", "po", "ci", "li", "io", "cn", "ui", "ii", "uo", "h", "l", "hh", "ll", "function", "position", "art",
-        "package", "power", "supply", "output", "signal", "state", "device", "text", "id", "code", "source", "drop",
-        "in", "field", "circuit", "loop tag", "ident", "process min", "process max", "vmax", "level", "enclosure",
-        "connection", "temperature", "pressure", "start", "end", "group", "marking", "reference", "connected to",
-        "value", "diode", "limit", "length", "ort", "size", "installation", "architecture", "room", "deck", "grid",
-        "burst", "sensor", "class of sensor", "product", "stoff", "material", "dimension", "interlock", "channel",
-        "address", "failure", "trip", "listing", "approval", "operating",
-    )
-)  # fmt: skip
-# Headings that need the heading above them to mean anything.
-_DEPENDENT: Final = frozenset(
-    (
-        "min", "max", "normal", "unit", "low", "high", "from", "to", "type", "length", "size", "class", "group",
-        "zone", "code", "temperature", "pressure", "set", "trip", "name", "description", "value", "eu", "uom",
-        "von", "bis", "l", "h", "typ", "einheit", "setpoint", "tag", "address", "marking", "service", "material",
-        "model",
-    )
-)  # fmt: skip
-_GENERIC_UNITS: Final = frozenset(
-    heading_words(text)
-    for text in (
-        "unit", "e.u.", "uom", "engineering unit", "eng. units", "einheit", "unit of measure", "me", "unite",
-        "dimension", "unit of measurement", "u/m", "measuring unit", "masseinheit", "einh.",
-    )
-)  # fmt: skip
-_TITLE_WORDS: Final = re.compile(
-    r"\b(?:doc(?:ument)?|rev(?:ision)?|date|project|client|sheet|page|prepared|checked|approved|title|job|contract|"
-    r"customer|purchaser|location of plant|issued?|datum|blatt|projekt|kunde|erstellt|geprueft)\b"
-)
-
-
-class _Names:
-    """The headings of one kind of sheet, by their words."""
-
-    def __init__(self, kind: SheetKind) -> None:
-        self.exact: dict[tuple[str, ...], list[tuple[float, Column]]] = {}
-        self.loose: dict[tuple[str, ...], list[tuple[float, Column]]] = {}
-        for column in kind.columns:
-            own = 0.05 if column.owner == "own" else 0.0
-            seen: set[tuple[str, ...]] = set()
-            for rank, heading in enumerate((column.title, *column.headings)):
-                words = heading_words(heading)
-                if not words or words in seen:
-                    continue
-                seen.add(words)
-                strength = 1.0 - own - min(0.001 * rank, 0.04)
-                self.exact.setdefault(words, []).append((strength, column))
-                self.loose.setdefault(tuple(sorted(words)), []).append((strength - 0.03, column))
-        self.texts = {words: " ".join(words) for words in self.exact if len(" ".join(words)) > 4}
-        self._likes: dict[tuple[str, ...], list[tuple[float, str, Column]]] = {}
-
-    def find(self, words: tuple[str, ...]) -> list[tuple[float, str, Column]]:
-        """Return the columns that words name: strength, how, column."""
-        found = self.exact.get(words)
-        if found:
-            return [(strength, "synonym", column) for strength, column in found]
-        found = self.loose.get(tuple(sorted(words)))
-        if found:
-            return [(strength, "synonym", column) for strength, column in found]
-        rest = tuple(word for word in words if word not in _NEUTRAL)
-        if rest and rest != words:
-            found = self.exact.get(rest) or self.loose.get(tuple(sorted(rest)))
-            if found:
-                return [(strength - 0.08, "synonym", column) for strength, column in found]
-        return []
-
-    def knows(self, words: tuple[str, ...]) -> bool:
-        """Whether words are a heading, in whatever order."""
-        return words in self.exact or tuple(sorted(words)) in self.loose
-
-    def like(self, words: tuple[str, ...]) -> list[tuple[float, str, Column]]:
-        """Return the columns whose headings words resemble."""
-        known = self._likes.get(words)
-        if known is None:
-            known = self._likes[words] = []
-            text = " ".join(words)
-            # Short words resemble too much: line and lime, tag and tab.
-            if 4 < len(text) <= 60 and not any(word.isdigit() for word in words):
-                for like, score, key in process.extract(
-                    text, self.texts, scorer=fuzz.token_sort_ratio, score_cutoff=LIKE_ENOUGH, limit=4
-                ):
-                    if _qualifiers(like) == _qualifiers(text):
-                        known.extend(
-                            (0.75 * score / 100 * strength, "likeness", column) for strength, column in self.exact[key]
-                        )
-        return known
-
-
-# Min is like max in letters only.
-_QUALIFYING: Final = frozenset(
-    (
-        "min", "max", "normal", "low", "high", "ll", "hh", "l", "h", "from", "to", "upper", "lower", "unit", "von",
-        "bis", "anfang", "ende", "design", "operating", "system", "device", "former", "old", "iic", "iib", "iia",
-        "seal", "ambient", "process", "type", "length", "class", "group", "size", "position", "direction", "no",
-    )
-)  # fmt: skip
-
-
-def _qualifiers(text: str) -> frozenset[str]:
-    return _QUALIFYING.intersection(text.split())
-
-
-_NAMES: dict[int, tuple[SheetKind, _Names]] = {}
-
-
-def _names(kind: SheetKind) -> _Names:
-    found = _NAMES.get(id(kind))
-    if found is None or found[0] is not kind:
-        found = _NAMES[id(kind)] = (kind, _Names(kind))
-    return found[1]
-
-
-# --- what a heading can be ------------------------------------------------------------------------------------------
-
-
-@dataclass(frozen=True, slots=True)
-class _Levels:
-    """The texts of a heading from top to bottom; `spread` for a top that stands over several columns."""
-
-    texts: tuple[str, ...]
-    spread: bool = False
-
-    @property
-    def joined(self) -> str:
-        return " ".join(" ".join(text.split()) for text in self.texts)
-
-
-@dataclass(frozen=True, slots=True)
-class _Candidate:
-    strength: float
-    how: str
-    column: Column
-    unit: Unit | None
-    unit_text: str
-    weak: bool
-
-
-_NUMERIC: Final = frozenset({Reads.QUANTITY, Reads.NUMBER, Reads.COUNT, Reads.RANGE, Reads.TRIPLET})
-_BRACKET: Final = re.compile(r"[(\[{<]([^()\[\]{}<>]{1,24})[)\]}>]")
-_PARTS: Final = re.compile(r"[/|\n;]|\s[-–]\s")
-
-
-def unit_in(text: str) -> Unit | None:
-    """Return the unit that a text is, None where it is none."""
-    text = text.strip()
-    if not text or len(text) > 24:
-        return None
-    return read_unit(text)
-
-
-def unit_for(column: Column, text: str) -> Unit | str | None:
-    """Return the unit that a text states for a column; None where it is none, or none that its values can be in."""
-    if column.reads in (Reads.QUANTITY, Reads.RANGE, Reads.TRIPLET):
-        unit = unit_in(text)
-        return unit if unit is not None and (not column.kinds or unit.kind in column.kinds) else None
-    if column.reads is Reads.NUMBER and column.unit:
-        return text.strip() if factor_to(column.unit, text) is not None else None
-    return None
-
-
-_NO_UNITS: Final = frozenset(["l", "h", "ll", "hh", "min", "max", "no", "in", "from", "to", "at"])
-
-
-def _without_unit(text: str) -> Iterator[tuple[str, str]]:
-    """Yield a heading without each piece that may be its unit: in brackets, behind a comma, at its end."""
-    for found in _BRACKET.finditer(text):
-        inside = found[1].strip()
-        # (L) and (H) are alarms, not litres and henries.
-        if inside.casefold() not in _NO_UNITS:
-            yield text[: found.start()] + " " + text[found.end() :], inside
-    comma, mark, rest = text.rpartition(",")
-    if mark and rest.strip():
-        yield comma, rest.strip()
-    words = text.split()
-    for count in (3, 2, 1):
-        if len(words) > count:
-            tail = " ".join(words[-count:]).strip(",.;:")
-            if tail.casefold() not in _NO_UNITS and len(tail) <= 20:
-                yield " ".join(words[:-count]).rstrip(" ,;:-"), tail
-
-
-class _Finder:
-    """Finds what the headings of a sheet can be, for one kind of sheet."""
-
-    def __init__(self, kind: SheetKind) -> None:
-        self.kind = kind
-        self.names = _names(kind)
-        self._known: dict[_Levels, tuple[_Candidate, ...]] = {}
-
-    def candidates(self, levels: _Levels) -> tuple[_Candidate, ...]:
-        """Return what a heading may be by its words."""
-        known = self._known.get(levels)
-        if known is None:
-            known = self._known[levels] = tuple(self._candidates(levels, alike=False))
-        return known
-
-    def candidates_or_alike(self, levels: _Levels) -> tuple[_Candidate, ...]:
-        """Return what a heading may be by its words, else by likeness."""
-        return self.candidates(levels) or tuple(self._candidates(levels, alike=True))
-
-    def _candidates(self, levels: _Levels, *, alike: bool) -> Iterable[_Candidate]:
-        best: dict[str, _Candidate] = {}
-
-        def offer(found: Sequence[tuple[float, str, Column]], factor: float, unit_text: str | None, weak: bool) -> None:
-            for strength, how, column in found:
-                stated = None if unit_text is None else unit_for(column, unit_text)
-                if unit_text is not None and stated is None:
-                    continue
-                strength *= factor
-                other = best.get(column.field)
-                if (
-                    other is None
-                    or strength > other.strength
-                    or (stated and not other.unit_text and strength > 0.8 * other.strength)
-                ):
-                    best[column.field] = _Candidate(
-                        strength, how, column, stated if isinstance(stated, Unit) else None, unit_text or "", weak
-                    )
-
-        whole = levels.joined
-        if alike and heading_words(levels.texts[-1]) in _GENERIC_UNITS:
-            return ()
-        if alike:
-            offer(self.names.like(heading_words(whole)), 1.0, None, True)
-            for rest, unit in _without_unit(whole):
-                offer(self.names.like(heading_words(rest)), 1.0, unit, True)
-            return best.values()
-        for text, factor in self._readings(levels):
-            words = heading_words(text)
-            if not words or words in _GENERIC_UNITS:
-                continue
-            weak = words in _WEAK
-            offer(self.names.find(words), factor * (0.7 if weak else 1.0), None, weak)
-            for rest, unit in _without_unit(text):
-                short = heading_words(rest)
-                if short and short != words:
-                    weak = short in _WEAK
-                    offer(self.names.find(short), factor * (0.85 if weak else 1.0), unit, weak)
-        return best.values()
-
-    def _readings(self, levels: _Levels) -> Iterator[tuple[str, float]]:
-        """Yield the texts that a heading may be read as, the surest first."""
-        texts = levels.texts
-        yield levels.joined, 1.0
-        if len(texts) == 3:
-            if all(word in _NEUTRAL for word in heading_words(texts[1])):
-                yield f"{texts[0]} {texts[2]}", 0.98
-            yield f"{texts[1]} {texts[2]}", 0.97
-        if len(texts) > 1:
-            above, below = " ".join(texts[:-1]), texts[-1]
-            if self._stands_alone(above, below):
-                yield below, 0.9
-            if not levels.spread:
-                yield above, 0.9
-                if len(texts) == 3:
-                    yield texts[0], 0.9
-        for text in dict.fromkeys((levels.joined, *(texts if len(texts) > 1 and not levels.spread else ()))):
-            pieces = [piece for piece in _PARTS.split(text) if piece.strip()]
-            if len(pieces) > 1:
-                for piece in pieces[:4]:
-                    yield piece, 0.92
-            bracket = _BRACKET.search(text)
-            if bracket:
-                outside = f"{text[: bracket.start()]} {text[bracket.end() :]}"
-                if outside.strip():
-                    yield outside, 0.93
-                yield bracket[1], 0.88
-
-    def _stands_alone(self, above: str, below: str) -> bool:
-        words, over = heading_words(below), heading_words(above)
-        if all(word in _NEUTRAL for word in over):
-            return True
-        if words in (("ll",), ("hh",), ("l",), ("h",)):
-            return bool({"alarm", "setting", "setpoint", "limit", "trip", "set"} & set(over))
-        if words and all(word in _DEPENDENT for word in words):
-            fields = {column.field for _, _, column in self.names.find(words)}
-            return any(column.field in fields for _, _, column in self.names.find(over))
-        return True
-
-
-# --- what the contents say ------------------------------------------------------------------------------------------
-
-_NUMBER: Final = re.compile(r"[<>≤≥~≈±+\-−–(]{0,3}\s?(?:\d|[.,]\d)")
-_ONE_NUMBER: Final = re.compile(
-    r"[<>≤≥~≈±+\-−–(]{0,3}\s?(?:\d[\d.,' ]{0,15}|[.,]\d{1,8})(?:e[+-]?\d{1,3})?\)?\s?(?:[^\d\s].{0,20})?", re.IGNORECASE
-)
-_TWO_NUMBERS: Final = re.compile(
-    r"\(?[+\-−–]?\s?[\d.,]{1,12}\s?[^\d\s]{0,8}?\s?(?:-|–|—|−|to|bis|\.{2,3}|…|~|÷|/|thru|through|and|\|)\s?[+\-−–]?\s?[.,]?\d.{0,30}",
-    re.IGNORECASE,
-)
-_KEYWORD: Final = re.compile(r"amb(?:ient)?|atm|fv|full vac(?:uum)?|vac(?:uum)?", re.IGNORECASE)
-_NUMBER_AND_WORDS: Final = re.compile(r"[+\-]?[\d.,]{1,12}\s?[^\d\s]{0,12}(?:\s[^\d\s]{1,12}){0,2}")
-_TAG_LIKE: Final = re.compile(
-    r"[\W_]{0,2}[0-9]{0,4}[\W_]?[A-Za-zА-яΑ-ω]{1,24}[A-Za-z0-9А-яΑ-ω._/\\ \-–‑−()+*~:=,&]{0,40}"
-)
-_IO_WORD: Final = re.compile(
-    r"(?:h?(?:[ad][io]|p[io]|r?tdi?|rtd|tc|ff|pa|bus|hart|soft|serial|analog(?:ue)?[ -]?(?:in|out)(?:put)?|"
-    r"digital[ -]?(?:in|out)(?:put)?|discrete[ -]?(?:in|out)(?:put)?|ae|aa|be|ba|de|da|uio|uai|eth(?:ernet)?|modbus|"
-    r"pulse))"
-    r"(?:[ \-]?(?:is|hart|ex|nis|s|sis|4-20.{0,8}))?(?:\s?[/+,&]\s?[a-z]{2,4}){0,3}",
-    re.IGNORECASE,
-)
-_SIGNAL: Final = re.compile(
-    r"(?i)(?:m\s?a\b|hart|contact|\bvfc\b|volt[ -]?free|pt ?-?\s?1?00|thermocouple|\btype [kjtnrsbe]\b|pulse|modbus|"
-    r"fieldbus|profibus|foundation|\d\s?v(?:dc|ac)?\b|namur|relay|solenoid|dry|potential[ -]?free|\brtd\b|"
-    r"\bt/?c\b|rs-?485|psi|bar\b|pneumatic|frequency|\bhz\b|binary|\bff\b|\bpa\b|digital|analog|npn|pnp|prox|potential)"
-)
-_AREA_CLASS: Final = re.compile(
-    r"(?i)(?:zone|\bz ?[012]{1,2}\b|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|unclass|haz|^n/?a$|^none$|\bex\b|"
-    r"^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$|^\W{0,2}z[012])"
-)
-_DOCUMENT: Final = re.compile(r"(?=.*\d)[\w.\-/&() ]{4,60}")
-_CODE_LIKE: Final = re.compile(r"(?=.*[A-Za-z])(?=.*\d)[\w.\-/+*]{2,30}")
-
-
-class _Contents:
-    """The cells below a heading, and how far they fit a field."""
-
-    def __init__(self, sheet: Sheet, index: int, first_row: int, heading: str) -> None:
-        heading = folded(heading)
-        cells = (
-            (number, row[index])
-            for number, row in enumerate(islice(sheet.rows, first_row, None), start=first_row)
-            if row[index] is not None
-        )
-        texts: list[str] = []
-        numbers = 0
-        sequence = True
-        last = 0.0
-        self.filled = False
-        for number, cell in islice(cells, SAMPLE):
-            self.filled = True
-            if isinstance(cell, float) and not isinstance(cell, bool):
-                numbers += 1
-                text = as_text(cell, sheet.number_formats.get((number, index)))
-                sequence = sequence and cell == int(cell) and last < cell <= last + 25 if abs(cell) < 1e9 else False
-                last = cell
-            else:
-                text = as_text(cell).strip()
-                if text.isdecimal() and len(text) < 7:
-                    sequence = sequence and last < int(text) <= last + 25
-                    last = float(text)
-                elif folded(text) == heading or placeholder(text) or is_ditto(text):
-                    continue
-                elif len(text) < 40:
-                    sequence = sequence and not any(sign.isdigit() for sign in text)
-            texts.append(text)
-        self.texts = texts
-        self.count = len(texts)
-        self.numbers = numbers
-        self.sequence = sequence and last > 0 and bool(texts)
-        self._fits: dict[int, float] = {}
-
-    def part(self, pattern: re.Pattern[str]) -> float:
-        """Return the part of the cells that a pattern fits whole."""
-        return sum(pattern.fullmatch(text) is not None for text in self.texts) / self.count if self.count else 0.0
-
-    def holds(self, pattern: re.Pattern[str]) -> float:
-        """Return the part of the cells that hold a pattern."""
-        return sum(pattern.search(text) is not None for text in self.texts) / self.count if self.count else 0.0
-
-    def units(self) -> float:
-        """Return the part of the cells that are units; of the different texts, where that is more."""
-        if not self.count:
-            return 0.0
-        known = {text: unit_in(text) is not None for text in set(self.texts)}
-        by_row = sum(known[text] for text in self.texts) / self.count
-        return max(by_row, sum(known.values()) / len(known))
-
-    def in_words(self, words: Mapping[str, tuple[str, ...]]) -> float:
-        """Return the part of the cells that are of a closed set of words."""
-        read = Words(words)
-        known = {text: len(read.find(text)) == 1 for text in set(self.texts)}
-        return sum(known[text] for text in self.texts) / self.count if self.count else 0.0
-
-    def fit(self, column: Column, codes: frozenset[str]) -> float:
-        """Return how far the cells fit a column, 0 to 1; 0.6 where there are none to judge by."""
-        if not self.count:
-            return 0.6
-        # By the column and not its field: two kinds of sheet may read one field name in two ways.
-        known = self._fits.get(id(column))
-        if known is None:
-            known = self._fits[id(column)] = self._fit(column, codes)
-        return known
-
-    def _fit(self, column: Column, codes: frozenset[str]) -> float:
-        reads = column.reads
-        if reads is Reads.TAG:
-            return 0.0 if self.sequence else self._tags()
-        if reads is Reads.KIND:
-            known = {text: kind_from_words(text) is not None for text in set(self.texts)}
-            part = sum(known[text] for text in self.texts) / self.count
-            return part if self.part(_IO_WORD) < 0.5 else 0.0
-        if reads is Reads.UNIT:
-            return self.units()
-        if reads in (Reads.QUANTITY, Reads.NUMBER, Reads.COUNT):
-            if self.part(_TWO_NUMBERS) > 0.5:
-                return 0.2
-            return (
-                max(self.part(_ONE_NUMBER), self.part(_NUMBER_AND_WORDS))
-                if not self.sequence or self.count < 8
-                else 0.5
-            )
-        if reads is Reads.RANGE:
-            return self.part(_TWO_NUMBERS)
-        if reads is Reads.TRIPLET:
-            return (
-                sum(_NUMBER.match(text) is not None or _KEYWORD.fullmatch(text) is not None for text in self.texts)
-                / self.count
-            )
-        if reads is Reads.WORD:
-            return self.in_words(column.words)
-        if reads is Reads.YES_NO:
-            return sum(yes_or_no(text) is not None for text in self.texts) / self.count
-        return self._text_fit(column.field, codes)
-
-    def _tags(self) -> float:
-        good = 0.0
-        for text in self.texts:
-            if _NUMBER_AND_WORDS.fullmatch(text) or _TWO_NUMBERS.fullmatch(text):
-                # A whole number may be a tag that lost its letters to a column of its own.
-                continue
-            if _TAG_LIKE.fullmatch(text) and text.count(" ") <= 4:
-                digits = any(sign.isdigit() for sign in text)
-                good += 1.0 if digits else 0.55 if " " not in text else 0.1
-        return good / self.count
-
-    def _text_fit(self, name: str, codes: frozenset[str]) -> float:
-        if name == "io_type":
-            return self.part(_IO_WORD)
-        if name == "signal":
-            return max(self.holds(_SIGNAL), 0.4 * (1 - self.part(_IO_WORD)))
-        if name in ("area_classification", "process_zone"):
-            return self.holds(_AREA_CLASS)
-        if name == "area":
-            listed = sum(folded(text) in codes for text in self.texts) / self.count
-            return max(listed, 0.6 * (1 - self.holds(_AREA_CLASS)))
-        if name == "device_type":
-            listed = sum(folded(text) in codes for text in self.texts) / self.count
-            return listed if codes else 0.3 * self.part(_CODE_LIKE)
-        if name == "model":
-            return 0.3 + 0.3 * self.part(_CODE_LIKE)
-        if name in ("equipment", "line"):
-            return 0.0 if self.sequence else 0.3 if self.numbers == self.count else 0.7
-        if name == "pid":
-            return 0.3 + 0.5 * self.part(_DOCUMENT)
-        if name == "unit":
-            return 0.7 * (1 - self.units())
-        if name == "place":
-            return 0.5
-        if name in ("service", "description", "remarks"):
-            spaced = sum(" " in text for text in self.texts) / self.count
-            return 0.2 if self.numbers == self.count else 0.5 + 0.4 * spaced
-        if name == "revision":
-            return sum(len(text) <= 6 for text in self.texts) / self.count
-        if name in ("ex_marking", "certificate", "protection"):
-            return 0.1 if self.numbers == self.count else 0.6
-        if name == "conductor":
-            return 0.6
-        return 0.25 if self.numbers == self.count and name in _NEVER_NUMBERS else 0.6
-
-
-_NEVER_NUMBERS: Final = frozenset((
-    "fluid", "maker", "phase", "scope", "status", "signal", "service", "junction_box", "kind",
-))  # fmt: skip
-
-
 # --- the heading of one sheet ---------------------------------------------------------------------------------------
 
 
@@ -761,20 +152,28 @@ def match_sheet(
         None where no row of the sheet is a heading of any kind.
     """
     wanted = [forced] if forced is not None else list(kinds)
-    finders = [_Finder(kind) for kind in wanted]
+    finders = [Finder(kind) for kind in wanted]
     listed = _field_and_value(sheet, wanted)
     best: SheetMatch | None = None
-    contents: dict[tuple[int, int, str], _Contents] = {}
+    strongest = 0.0
+    contents: dict[tuple[int, int, str], Contents] = {}
+    seen: set[tuple[Levels, ...]] = set()
     for tried, (top, bottom) in enumerate(_blocks(sheet, finders), start=1):
         levels = _levels(sheet, top, bottom)
+        texts = tuple(levels.values())
+        if texts in seen:
+            # The heading again, on a later page.
+            continue
+        seen.add(texts)
         found = [
             match
             for finder in finders
             if (match := _assign(sheet, finder, levels, top, bottom, codes=codes, contents=contents)) is not None
         ]
-        chosen = _choose(sheet, found, top)
-        if chosen is not None and (best is None or chosen.score > best.score):
-            best = chosen
+        strength = max((match.score for match in found), default=0.0)
+        # The words of the headings rank the blocks; the contents overrule them only where they say much more.
+        if found and (best is None or strength > strongest + 1.0):
+            best, strongest = _choose(sheet, found, top), strength
         if (tried >= 4 and best is not None) or tried >= 12:
             break
     if listed is not None and (best is None or listed.score >= best.score):
@@ -789,7 +188,7 @@ def _rows_to_look_at(sheet: Sheet) -> Iterator[tuple[int, dict[int, str]]]:
             yield number, texts
 
 
-def _blocks(sheet: Sheet, finders: Sequence[_Finder]) -> list[tuple[int, int]]:
+def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
     """Return the rows that may be a heading, first and last, the likeliest first."""
     hits: dict[int, int] = {}
     known: dict[str, bool] = {}
@@ -823,16 +222,16 @@ def _blocks(sheet: Sheet, finders: Sequence[_Finder]) -> list[tuple[int, int]]:
     return [block for block in order if scored[block] > 0]
 
 
-def _is_heading_text(text: str, finders: Sequence[_Finder]) -> bool:
+def _is_heading_text(text: str, finders: Sequence[Finder]) -> bool:
     """Whether a text, with or without what is in its brackets or behind its comma, is a heading of any kind."""
-    for each in dict.fromkeys((text, _BRACKET.sub(" ", text), text.partition(",")[0])):
+    for each in dict.fromkeys((text, BRACKET.sub(" ", text), text.partition(",")[0])):
         words = heading_words(each)
-        if words and (words in _GENERIC_UNITS or any(finder.names.knows(words) for finder in finders)):
+        if words and (words in GENERIC_UNITS or any(finder.names.knows(words) for finder in finders)):
             return True
     return False
 
 
-def _name_score(sheet: Sheet, finders: Sequence[_Finder], top: int, bottom: int) -> float:
+def _name_score(sheet: Sheet, finders: Sequence[Finder], top: int, bottom: int) -> float:
     levels = _levels(sheet, top, bottom)
     best = 0.0
     for finder in finders:
@@ -851,7 +250,7 @@ def _name_score(sheet: Sheet, finders: Sequence[_Finder], top: int, bottom: int)
     return best - 0.5 * numbers - 0.05 * (bottom - top)
 
 
-def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, _Levels]:
+def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, Levels]:
     """Return the heading of each column in the rows from `top` to `bottom`."""
     rows = range(top, bottom + 1)
     width = sheet.width
@@ -893,7 +292,7 @@ def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, _Levels]:
                 spread[at][column] = True
             else:
                 over = None
-    found: dict[int, _Levels] = {}
+    found: dict[int, Levels] = {}
     for column in range(width):
         kept: list[str] = []
         for at in range(len(texts)):
@@ -901,10 +300,16 @@ def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, _Levels]:
             if text and (not kept or folded(kept[-1]) != folded(text)):
                 kept.append(text)
         if kept:
-            found[column] = _Levels(tuple(kept), len(kept) > 1 and any(each[column] for each in spread[:-1]))
+            found[column] = Levels(tuple(kept), len(kept) > 1 and any(each[column] for each in spread[:-1]))
     if top > 0 and top == bottom:
         _leave_to_parents(sheet, top, found)
     return found
+
+
+_TITLE_WORDS: Final = re.compile(
+    r"\b(?:doc(?:ument)?|rev(?:ision)?|date|project|client|sheet|page|prepared|checked|approved|title|job|contract|"
+    r"customer|purchaser|location of plant|issued?|datum|blatt|projekt|kunde|erstellt|geprueft)\b"
+)
 
 
 def _is_title_row(texts: Sequence[str | None]) -> bool:
@@ -914,7 +319,7 @@ def _is_title_row(texts: Sequence[str | None]) -> bool:
     ) == 1
 
 
-def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, _Levels]) -> None:
+def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, Levels]) -> None:
     """Take out headings that mean nothing without the row above, where that row is a heading too."""
     above = [as_text(cell).strip() or None if cell is not None else None for cell in sheet.rows[top - 1]]
     if sum(text is not None for text in above) < 2 or _is_title_row(above):
@@ -929,10 +334,10 @@ def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, _Levels]) -> None
             words = heading_words(found[column].joined)
             if (
                 words
-                and all(word in _DEPENDENT for word in words)
-                and not all(word in _NEUTRAL for word in heading_words(over))
+                and all(word in DEPENDENT for word in words)
+                and not all(word in NEUTRAL for word in heading_words(over))
             ):
-                found[column] = _Levels((f"{over} {found[column].joined}",))
+                found[column] = Levels((f"{over} {found[column].joined}",))
 
 
 # --- which heading is which field -----------------------------------------------------------------------------------
@@ -949,26 +354,26 @@ def _occupies(column: Column) -> tuple[str, ...]:
 
 def _assign(
     sheet: Sheet,
-    finder: _Finder,
-    levels: Mapping[int, _Levels],
+    finder: Finder,
+    levels: Mapping[int, Levels],
     top: int,
     bottom: int,
     *,
     codes: frozenset[str],
-    contents: dict[tuple[int, int, str], _Contents],
+    contents: dict[tuple[int, int, str], Contents],
 ) -> SheetMatch | None:
     """Give each heading its field, the surest first; None where the sheet is not of this kind."""
     kind = finder.kind
     header_rows, first_row, units = _rows_below(sheet, finder, levels, top, bottom)
 
-    def content(index: int) -> _Contents:
+    def content(index: int) -> Contents:
         heading = levels[index].texts[-1] if index in levels else ""
         found = contents.get((index, first_row, heading))
         if found is None:
-            found = contents[index, first_row, heading] = _Contents(sheet, index, first_row, heading)
+            found = contents[index, first_row, heading] = Contents(sheet, index, first_row, heading)
         return found
 
-    offers: list[tuple[float, int, _Candidate, float, bool]] = []
+    offers: list[tuple[float, int, Candidate, float, bool]] = []
     for index, heading in levels.items():
         candidates = finder.candidates_or_alike(heading)
         if not candidates:
@@ -1021,6 +426,7 @@ def _assign(
         return None
     speaking = {index for index, _ in unit_columns} | {index for match in columns.values() for index, _ in match.parts}
     unknown = [(index, levels[index].joined) for index in levels if index not in used and index not in speaking]
+    guessed = "tag" in columns and columns["tag"].likelihood < 0.75 and columns["tag"].how == "contents"
     score = sum(match.likelihood * (1.0 if content(match.index).filled else 0.3) for match in columns.values())
     return SheetMatch(
         kind=kind,
@@ -1030,14 +436,14 @@ def _assign(
         unknown=tuple(_numbered(sorted(unknown), [match.heading for match in columns.values()])),
         unit_columns=tuple(sorted(unit_columns)),
         notes=tuple(notes),
-        score=score,
+        score=score - 2.0 * guessed,
     )
 
 
 _SPEAKS_OF: Final = {"flow": "F", "flowrate": "F", "durchfluss": "F", "level": "L", "fuellstand": "L"}
 
 
-def _only(column: Column, heading: _Levels) -> str:
+def _only(column: Column, heading: Levels) -> str:
     """The first letter of the tags that a column of operating values speaks of, where its heading names a variable."""
     if not column.field.startswith("operating_value"):
         return ""
@@ -1056,15 +462,15 @@ _TEMPERATURE_WORDS: Final = frozenset({"temperature", "t"})
 
 def _match_pairs(
     kind: SheetKind,
-    levels: Mapping[int, _Levels],
-    content: Callable[[int], _Contents],
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
     columns: dict[str, ColumnMatch],
     used: set[int],
 ) -> None:
     """Find the columns that hold a pressure and a temperature in each cell: Design P/T (barg / degC)."""
     known = {column.field: column for column in kind.columns}
     for index, heading in levels.items():
-        text = _BRACKET.sub(" ", heading.joined)
+        text = BRACKET.sub(" ", heading.joined)
         words = heading_words(text)
         if not (_PRESSURE_WORDS.intersection(words) and _TEMPERATURE_WORDS.intersection(words)):
             continue
@@ -1073,7 +479,7 @@ def _match_pairs(
             continue
         if content(index).part(_TWO_VALUES) < 0.5:
             continue
-        bracket = _BRACKET.search(heading.joined)
+        bracket = BRACKET.search(heading.joined)
         units = [piece.strip() for piece in re.split(r"[/|,;]", bracket[1])] if bracket else []
         first = next(word for word in words if word in _PRESSURE_WORDS or word in _TEMPERATURE_WORDS)
         for place, name in enumerate(names if first in _PRESSURE_WORDS else names[::-1]):
@@ -1090,7 +496,7 @@ def _match_pairs(
         used.add(index)
 
 
-def _believed(candidate: _Candidate, cells: _Contents, fit: float, several: bool) -> bool:
+def _believed(candidate: Candidate, cells: Contents, fit: float, several: bool) -> bool:
     if candidate.how == "likeness":
         return cells.count > 0 and fit >= 0.5
     if not cells.count:
@@ -1099,7 +505,7 @@ def _believed(candidate: _Candidate, cells: _Contents, fit: float, several: bool
         return False
     if candidate.weak or several:
         return fit >= 0.25
-    if candidate.column.reads in _NUMERIC and candidate.column.reads is not Reads.RANGE:
+    if candidate.column.reads in NUMERIC and candidate.column.reads is not Reads.RANGE:
         return fit > 0 or any(any(sign.isdigit() for sign in text) for text in cells.texts) or cells.count < 4
     return True
 
@@ -1116,18 +522,18 @@ def _numbered(unknown: Iterable[tuple[int, str]], known: Iterable[str]) -> Itera
 
 def _add_tag_without_heading(
     kind: SheetKind,
-    levels: Mapping[int, _Levels],
-    content: Callable[[int], _Contents],
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
     columns: dict[str, ColumnMatch],
     used: set[int],
     width: int,
     notes: list[str],
 ) -> None:
     """Take the column that holds tags for the tag column where no heading names it."""
-    if "tag" in columns or not any(key == ("tag",) for key in kind.key) or len(columns) < 2:
+    if "tag" in columns or ("tag",) not in kind.key or not columns:
         return
     column = kind.column("tag")
-    if _join_tag(column, levels, content, columns, used, width, notes):
+    if _join_tag(column, levels, content, columns, used, width, notes) or len(columns) < 2:
         return
     best: tuple[float, int] | None = None
     for index in range(width):
@@ -1155,8 +561,8 @@ _SUFFIX_ONLY: Final = re.compile(r"[A-Z]{1,2}[0-9]?|[0-9]{1,2}")
 
 def _join_tag(
     column: Column,
-    levels: Mapping[int, _Levels],
-    content: Callable[[int], _Contents],
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
     columns: dict[str, ColumnMatch],
     used: set[int],
     width: int,
@@ -1169,7 +575,7 @@ def _join_tag(
             continue
         if letters.part(_LETTERS_ONLY) < 0.9 or number.part(_NUMBER_ONLY) < 0.9:
             continue
-        if sum(text[:1] in _TAG_FIRST for text in letters.texts) < 0.8 * letters.count or letters.part(_IO_WORD) > 0.5:
+        if sum(text[:1] in _TAG_FIRST for text in letters.texts) < 0.8 * letters.count or letters.part(IO_WORD) > 0.5:
             continue
         parts = [(index + 1, "-")]
         suffix = content(index + 2) if index + 2 < width else None
@@ -1197,7 +603,7 @@ _TAG_FIRST: Final = frozenset("ABEFHIJKLPQRSTUVWXYZCDGMN")
 
 
 def _rows_below(
-    sheet: Sheet, finder: _Finder, levels: Mapping[int, _Levels], top: int, bottom: int
+    sheet: Sheet, finder: Finder, levels: Mapping[int, Levels], top: int, bottom: int
 ) -> tuple[tuple[int, ...], int, dict[int, str]]:
     """Return the heading's rows, the first row below, and the units of a unit row."""
     rows = list(range(top, bottom + 1))
@@ -1223,13 +629,13 @@ def _rows_below(
     return tuple(rows), rows[-1] + 1, units
 
 
-def _is_heading_more(cells: Mapping[int, str], finder: _Finder, levels: Mapping[int, _Levels]) -> dict[int, str] | None:
+def _is_heading_more(cells: Mapping[int, str], finder: Finder, levels: Mapping[int, Levels]) -> dict[int, str] | None:
     """Return the units of a row that still belongs to the heading; None where it is data."""
     numeric: dict[int, list[Column]] = {}
     tag_index = None
     for index, heading in levels.items():
         columns = [candidate.column for candidate in finder.candidates(heading)]
-        numeric[index] = [column for column in columns if column.reads in _NUMERIC]
+        numeric[index] = [column for column in columns if column.reads in NUMERIC]
         if tag_index is None and any(column.reads is Reads.TAG for column in columns):
             tag_index = index
     texts = list(cells.values())
@@ -1252,7 +658,7 @@ def _is_heading_more(cells: Mapping[int, str], finder: _Finder, levels: Mapping[
         if index not in levels:
             continue
         here = {each.column.field for each in finder.candidates(levels[index])}
-        there = {each.column.field for each in finder.candidates(_Levels((text,))) if each.how == "synonym"}
+        there = {each.column.field for each in finder.candidates(Levels((text,))) if each.how == "synonym"}
         same += bool(here & there) and folded(text) not in YES_LIKE
     return {} if same >= 3 and same * 2 > len(cells) else None
 
@@ -1265,8 +671,8 @@ YES_LIKE: Final = frozenset({"hart", "x", "no", "nc", "field", "system", "panel"
 
 def _place_units(
     kind: SheetKind,
-    levels: Mapping[int, _Levels],
-    content: Callable[[int], _Contents],
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
     columns: dict[str, ColumnMatch],
     used: set[int],
     taken: set[str],
@@ -1279,14 +685,14 @@ def _place_units(
     left_over: list[int] = []
     for index in generic:
         cells = content(index)
-        if cells.count and cells.units() < 0.34:
+        group = _neighbours(index, -1, by_index) or _neighbours(index, 1, by_index)
+        if cells.count and cells.units() < 0.34 and not (group and cells.holds(_DIGIT) < 0.5):
             if "unit" in known and "unit" not in columns and heading_words(levels[index].joined) == ("unit",):
                 columns["unit"] = ColumnMatch(
                     column=known["unit"], index=index, heading=levels[index].joined, how="contents", likelihood=0.9
                 )
                 used.add(index)
             continue
-        group = _neighbours(index, -1, by_index) or _neighbours(index, 1, by_index)
         own_group = [match for match in group if not match.unit_text and match.unit_index is None]
         if not own_group:
             left_over.append(index)
@@ -1317,9 +723,13 @@ def _place_units(
     return [(index, heading) for index, heading in beside if index not in used]
 
 
-def _is_unit_heading(heading: _Levels) -> bool:
+# Process units are numbered.
+_DIGIT: Final = re.compile(r"\d")
+
+
+def _is_unit_heading(heading: Levels) -> bool:
     words = heading_words(heading.joined)
-    return words in _GENERIC_UNITS or heading_words(heading.texts[-1]) in _GENERIC_UNITS
+    return words in GENERIC_UNITS or heading_words(heading.texts[-1]) in GENERIC_UNITS
 
 
 def _neighbours(index: int, step: int, by_index: Mapping[int, ColumnMatch]) -> list[ColumnMatch]:
@@ -1327,7 +737,7 @@ def _neighbours(index: int, step: int, by_index: Mapping[int, ColumnMatch]) -> l
     at = index + step
     while (
         (match := by_index.get(at)) is not None
-        and match.column.reads in _NUMERIC
+        and match.column.reads in NUMERIC
         and match.column.reads is not Reads.COUNT
     ):
         found.append(match)
@@ -1363,8 +773,8 @@ _PART_WORDS: Final = {heading_words(text): (name, prefix) for name, prefix, text
 
 def _join_parts(
     kind: SheetKind,
-    levels: Mapping[int, _Levels],
-    content: Callable[[int], _Contents],
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
     columns: dict[str, ColumnMatch],
     used: set[int],
 ) -> None:
@@ -1414,7 +824,7 @@ def _join_parts(
         used.add(index)
 
 
-def _part_of(heading: _Levels) -> tuple[str, str] | None:
+def _part_of(heading: Levels) -> tuple[str, str] | None:
     for text in (heading.joined, heading.texts[-1]):
         words = heading_words(text)
         found = _PART_WORDS.get(words) or _PART_WORDS.get(
@@ -1444,10 +854,14 @@ def _name_points(kind: SheetKind, text: str) -> float:
     return best
 
 
-def _choose(sheet: Sheet, found: Sequence[SheetMatch], top: int) -> SheetMatch | None:
-    if not found:
-        return None
-    title = " ".join(cell for row in sheet.rows[max(0, top - 12) : top] for cell in row if isinstance(cell, str))[:400]
+def _choose(sheet: Sheet, found: Sequence[SheetMatch], top: int) -> SheetMatch:
+    title = " ".join(
+        cell
+        for row in sheet.rows[max(0, top - 12) : top]
+        if len(row) - row.count(None) <= 2
+        for cell in row
+        if isinstance(cell, str)
+    )[:400]
     file_name = re.split(r"[\\/]", sheet.file)[-1].rpartition(".")[0]
     rated: list[tuple[float, float, SheetMatch]] = []
     for match in found:
@@ -1473,8 +887,7 @@ def _choose(sheet: Sheet, found: Sequence[SheetMatch], top: int) -> SheetMatch |
                 best = match
                 break
     by_name = next(by_name for _, by_name, match in rated if match is best)
-    score = next(score for score, _, match in rated if match is best)
-    return replace(best, named=by_name >= 1.0, score=score)
+    return replace(best, named=by_name >= 1.0)
 
 
 def _field_and_value(sheet: Sheet, kinds: Sequence[SheetKind]) -> SheetMatch | None:
@@ -1482,7 +895,7 @@ def _field_and_value(sheet: Sheet, kinds: Sequence[SheetKind]) -> SheetMatch | N
     for kind in kinds:
         if "thresholds" not in getattr(kind.record, "__dataclass_fields__", {}):
             continue
-        names = _names(kind)
+        names = names_of(kind)
         known: set[str] = set()
         for row in sheet.rows[:LOOKED_AT_ROWS]:
             filled = [cell for cell in row if cell is not None]

@@ -13,7 +13,7 @@ from types import MappingProxyType
 from typing import Any, Final
 
 from instruments.column import Column, Reads
-from instruments.kind import Kind, dimension_allowed, kind_from_words
+from instruments.kind import Kind, dimension_allowed, kind_from_words, kinds_from_words
 from instruments.number import CellTrouble, decimal_convention
 from instruments.origin import Origin, Place, column_letters
 from instruments.plant_data import PlantData
@@ -39,6 +39,7 @@ from instruments.workbook.cell import (
     yes_cell,
 )
 from instruments.workbook.column_unit import read_plain_number
+from instruments.workbook.heading_words import NUMERIC
 from instruments.workbook.headings import ColumnMatch, SheetMatch
 from instruments.workbook.number_format import as_text, format_kind
 from instruments.workbook.problem import CellProblem
@@ -159,20 +160,26 @@ class _SheetReader:
             reads = match.column.reads
             if reads in (Reads.TAG, Reads.UNIT):
                 continue
-            if name in _SETTINGS or name in _OPERATING or reads is Reads.TRIPLET or match.piece is not None:
-                later.append((name, match))
-            elif reads in (Reads.QUANTITY, Reads.RANGE):
-                self._read_quantities(name, match, self._units_for(match))
-            elif reads is Reads.NUMBER:
-                self._read_numbers(name, match)
-            elif reads is Reads.KIND:
+            if reads is Reads.KIND:
                 self._read_kinds(name, match)
+            elif reads in NUMERIC and reads is not Reads.COUNT:
+                later.append((name, match))
             else:
                 self._read_texts(name, match)
+        # Words first: whether 0 and 1 are a range, a digital signal tells.
+        measured: list[tuple[str, ColumnMatch]] = []
+        for name, match in later:
+            reads = match.column.reads
+            if name in _SETTINGS or name in _OPERATING or reads is Reads.TRIPLET or match.piece is not None:
+                measured.append((name, match))
+            elif reads is Reads.NUMBER:
+                self._read_numbers(name, match)
+            else:
+                self._read_quantities(name, match, self._units_for(match))
         for low, high in (("lrv", "urv"), ("system_lrv", "system_urv"), ("lrl", "url")):
             self._share_units(low, high)
         base = self._units_of_measurement()
-        for name, match in later:
+        for name, match in measured:
             if name in _SET_POINTS and self.letters:
                 self._read_set_points(name, match, base)
             else:
@@ -422,7 +429,8 @@ class _SheetReader:
                 continue
             key = (text, self.letters[position] if self.letters else "")
             if key not in known:
-                known[key] = kind_from_words(text, letters=key[1])
+                # Without words that name a kind the letters are asked later, as for a blank.
+                known[key] = kind_from_words(text, letters=key[1]) if kinds_from_words(text) else None
             kinds.append(known[key])
             if known[key] is None and keeps_text:
                 self.assumptions.setdefault(f"kind '{text}' is not known: the kind is taken from the tag's letters")
@@ -830,7 +838,7 @@ class _SheetReader:
 
     def _own_limits(self, position: int, fields: Mapping[str, Any], limits: dict[str, Any]) -> DeviceType | None:
         """Return the device limits that a row states for itself; None where it states none."""
-        unread = frozenset(self.unread.get(position, ())) & limits.keys()
+        unread = frozenset(limits).intersection(self.unread.get(position, ()))
         unitless = {name: text for name, text in self.unitless.get(position, {}).items() if name in limits}
         if not unread and not unitless and all(value is None for value in limits.values()):
             return None

@@ -18,7 +18,8 @@ from instruments.plant_codes import read_codes
 from instruments.plant_data import STANDARD_ATMOSPHERE_PA, PlantData, PlantRow
 from instruments.quantity import read_quantity
 from instruments.tag import plant_profile
-from instruments.workbook.headings import SheetMatch, heading_words
+from instruments.workbook.heading_words import heading_words
+from instruments.workbook.headings import SheetMatch
 from instruments.workbook.number_format import as_text
 from instruments.workbook.problem import CellProblem
 from instruments.workbook.sheet import Sheet, UnreadableFile
