@@ -27,7 +27,11 @@ from loops.record import LoopRow
 if TYPE_CHECKING:
     from loops.plant import Plant
 
-_NO_IO = frozenset({"", "none", "soft", "-", "local", "no", "n/a", "na", "0"})
+# What stands in an I/O column where there is no I/O.
+_NO_IO = frozenset(
+    {"", "none", "soft", "-", "local", "no", "n/a", "na", "0", "nil", "not applicable", "pneumatic", "mechanical",
+     "software", "calc", "calculated", "internal", "lokal", "keine", "ohne"}
+)  # fmt: skip
 _VOLTS = re.compile(
     r"(?<![\d.,])(\d{1,3}(?:[.,]\d{1,2})?)\s*v(?![a-z]*a\b)\s*(ac|dc|d\.c\.|a\.c\.|=|~)?", re.IGNORECASE
 )
@@ -175,9 +179,9 @@ def _signals(
     each: Installed, by_loop: dict[str, list[Installed]], plant: Plant, rows: _LoopRows
 ) -> list[Instrument]:
     """Return the rows of an instrument that make a circuit each."""
-    if each.record.location == "system" and not any(_has_io(row) for row in each.signals):
+    if each.record.location == "system" and not any(has_io(row) for row in each.signals):
         return []
-    with_io = [row for row in each.signals if _has_io(row)]
+    with_io = [row for row in each.signals if has_io(row)]
     if with_io:
         return with_io
     if id(each) in rows.by_device:
@@ -189,7 +193,8 @@ def _signals(
     return [each.record]
 
 
-def _has_io(row: Instrument) -> bool:
+def has_io(row: Instrument) -> bool:
+    """Whether a row gives a channel: an I/O address, or an I/O type that is not a word for none."""
     return bool(row.io_address or (row.io_type and row.io_type.strip().casefold() not in _NO_IO))
 
 
