@@ -69,6 +69,15 @@ class Kind(StrEnum):
         return _TRAITS[self].process
 
     @property
+    def with_article(self) -> str:
+        """The word behind its article, for messages.
+
+        >>> Kind.GAUGE.with_article, Kind.ANALYSER.with_article
+        ('a gauge', 'an analyser')
+        """
+        return f"{'an' if self.value[0] in 'aeioI' else 'a'} {self.value}"
+
+    @property
     def location(self) -> str:
         """Where it stands if nobody says: "field", "cabinet" or "system"."""
         return _TRAITS[self].location
