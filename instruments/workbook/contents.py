@@ -46,8 +46,8 @@ _SIGNAL: Final = re.compile(
     r"\bt/?c\b|rs-?485|psi|bar\b|pneumatic|frequency|\bhz\b|binary|\bff\b|\bpa\b|digital|analog|npn|pnp|prox|potential)"
 )
 _AREA_CLASS: Final = re.compile(
-    r"(?i)(?:zone|(?<![\w-])z ?(?:2[0-2]|[0-2])(?![\w-])|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|unclass|haz|^n/?a$|^none$|\bex\b|"
-    r"^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$)"
+    r"(?i)(?:zone|(?<![\w-])z ?(?:2[0-2]|[0-2])(?![\w-])|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|"
+    r"unclass|haz|^n/?a$|^none$|\bex\b|^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$)"
 )
 _DOCUMENT: Final = re.compile(r"(?=.*\d)[\w.\-/&() ]{4,60}")
 _CODE_LIKE: Final = re.compile(r"(?=.*[A-Za-z])(?=.*\d)[\w.\-/+*]{2,30}")

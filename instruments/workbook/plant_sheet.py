@@ -133,7 +133,7 @@ def read_plant_toml(path: str | os.PathLike[str]) -> tuple[PlantEntry, ...]:
         entries.append(
             PlantEntry(
                 name=name.replace("_", " "),
-                text=_toml_text(name, value),
+                text=_toml_text(value),
                 cell=Cell(file=file, sheet="", row=line, column=0),
             )
         )
@@ -148,14 +148,14 @@ def _flat(table: Mapping[str, Any]) -> Iterable[tuple[str, Any]]:
             yield name, value
 
 
-def _toml_text(name: str, value: Any) -> str:
+def _toml_text(value: Any) -> str:
     if isinstance(value, bool):
         return "yes" if value else "no"
     if isinstance(value, dict):
-        return "; ".join(f"{key} = {_toml_text(name, each)}" for key, each in value.items())
+        # SDV = ["on/off valve", "X"]
+        return "; ".join(f"{key} = {_toml_text(each).replace('; ', ', ')}" for key, each in value.items())
     if isinstance(value, list):
-        joint = ", " if all(isinstance(each, str) for each in value) and "code" in name else "; "
-        return joint.join(_toml_text(name, each) for each in value)
+        return "; ".join(map(_toml_text, value))
     return str(value)
 
 

@@ -137,8 +137,16 @@ TWO_ROWS = [
     (
         "Tag|Range|||Operating||Alarms|||\n|Min|Max|Units|Normal|Max|LL|L|H|HH\nPT-1|0|10|bar|4|6|1|2|8|9",
         {
-            "tag": 0, "lrv": 1, "urv": 2, "range_unit": 3, "operating_value_normal": 4, "operating_value_max": 5,
-            "setting_ll": 6, "setting_l": 7, "setting_h": 8, "setting_hh": 9,
+            "tag": 0,
+            "lrv": 1,
+            "urv": 2,
+            "range_unit": 3,
+            "operating_value_normal": 4,
+            "operating_value_max": 5,
+            "setting_ll": 6,
+            "setting_l": 7,
+            "setting_h": 8,
+            "setting_hh": 9,
         },
     ),
     (
@@ -150,10 +158,22 @@ TWO_ROWS = [
     ("Tag|Ambient|\n|Min|Max\nPT-1|-20|40", {"tag": 0, "ambient_min": 1, "ambient_max": 2}),
     ("Tag|Calibration details||\n|Min|Max|Unit\nPT-1|0|10|bar", {"tag": 0, "lrv": 1, "urv": 2, "range_unit": 3}),
     (
-        "INST|CALIBRATED|||ALARM / TRIP SETTINGS|||\nTAG NO.|RANGE||UNITS|LL|L|H|HH\n|MIN|MAX|||||\nPT-1|0|9|PSIG|1|2|7|8",
-        {"tag": 0, "lrv": 1, "urv": 2, "range_unit": 3, "setting_ll": 4, "setting_l": 5, "setting_h": 6, "setting_hh": 7},
+        (
+            "INST|CALIBRATED|||ALARM / TRIP SETTINGS|||\nTAG NO.|RANGE||UNITS|LL|L|H|HH\n|MIN|MAX|||||\nPT-1|0|"
+            "9|PSIG|1|2|7|8"
+        ),
+        {
+            "tag": 0,
+            "lrv": 1,
+            "urv": 2,
+            ("range_unit"): 3,
+            "setting_ll": 4,
+            "setting_l": 5,
+            "setting_h": 6,
+            "setting_hh": 7,
+        },
     ),
-]  # fmt: skip
+]
 
 
 @pytest.mark.parametrize(("text", "columns"), TWO_ROWS)
@@ -183,8 +203,12 @@ UNIT_COLUMNS = [
         {"operating_pressure": 2, "operating_temperature": 4},
     ),
     ("Tag|LRV|URV|H|Unit\nPT-1|0|10|8|bar\nPT-2|0|9|8|bar", {"range_unit": 4}, {}),
-    ("Tag|LRV|URV|DCS Min|DCS Max|Unit\nPT-1|0|9|0|9|bar\nPT-2|0|9|0|9|bar", {"range_unit": 5}, {"system_lrv": 5, "system_urv": 5}),
-]  # fmt: skip
+    (
+        ("Tag|LRV|URV|DCS Min|DCS Max|Unit\nPT-1|0|9|0|9|bar\nPT-2|0|9|0|9|bar"),
+        {"range_unit": 5},
+        {"system_lrv": 5, "system_urv": 5},
+    ),
+]
 
 
 @pytest.mark.parametrize(("text", "named", "beside"), UNIT_COLUMNS)
@@ -247,9 +271,19 @@ def test_pressure_and_temperature_in_one_column() -> None:
 
 PARTS = [
     ("Tag|Zone|Gas Group|T Class\nPT-1|2|IIB|T3\nPT-2|1|IIB|T3", "area_classification", 1, ((2, "Group"), (3, ""))),
-    ("Tag|Class|Division|Group|T Code\nPT-1|I|2|D|T3\nPT-2|I|1|C|T3", "area_classification", 1, ((2, "Div"), (3, "Group"), (4, ""))),
-    ("Tag|Ex Protection|Gas Group|T Class\nPT-1|Ex ia|IIC|T4\nPT-2|Ex d|IIB|T6", "ex_marking", 1, ((2, "Group"), (3, ""))),
-]  # fmt: skip
+    (
+        ("Tag|Class|Division|Group|T Code\nPT-1|I|2|D|T3\nPT-2|I|1|C|T3"),
+        "area_classification",
+        1,
+        ((2, "Div"), (3, "Group"), (4, "")),
+    ),
+    (
+        ("Tag|Ex Protection|Gas Group|T Class\nPT-1|Ex ia|IIC|T4\nPT-2|Ex d|IIB|T6"),
+        "ex_marking",
+        1,
+        ((2, "Group"), (3, "")),
+    ),
+]
 
 
 @pytest.mark.parametrize(("text", "field", "index", "parts"), PARTS)
@@ -270,11 +304,15 @@ KINDS_OF_SHEETS = [
     ("Tag|I/O Type|Address|Card\nPT-1|AI|1.1|C1\nPT-2|AI|1.2|C1", "IO list", "IO list"),
     ("Tag|I/O Type|Address|Card\nPT-1|AI|1.1|C1\nPT-2|AI|1.2|C1", "Sheet1", "IO list"),
     ("Tag|LL|L|H|HH|Unit|Priority\nPT-1|1|2|8|9|bar|1\nPT-2|1|2|8|9|bar|2", "Alarms", "Alarm and trip list"),
-    ("Tag|Service|P&ID|LRV|URV|Unit|I/O Type|Address\nPT-1|a|D-1|0|9|bar|AI|1.1\nPT-2|a|D-1|0|9|bar|AI|1.2", "Area 10", "Instruments"),
+    (
+        ("Tag|Service|P&ID|LRV|URV|Unit|I/O Type|Address\nPT-1|a|D-1|0|9|bar|AI|1.1\nPT-2|a|D-1|0|9|bar|AI|1.2"),
+        "Area 10",
+        "Instruments",
+    ),
     ("Tag|Service|Loop|Card|Barrier\nPT-1|Feed|P-1|C1|B1\nPT-2|Feed|P-2|C1|B1", "Index", "Instruments"),
     ("Name|Marrowbeck\nJurisdiction|ATEX\nNumbering|parallel", "Plant", "Plant"),
     ("Name|Jurisdiction|Numbering\nMarrowbeck|ATEX|parallel", "Plant", "Plant"),
-]  # fmt: skip
+]
 
 
 @pytest.mark.parametrize(("text", "name", "kind"), KINDS_OF_SHEETS)
@@ -330,9 +368,11 @@ def test_words(text: str, words: tuple[str, ...]) -> None:
 CELLS = st.one_of(
     st.none(),
     st.floats(allow_nan=False, allow_infinity=False),
-    st.sampled_from(["Tag", "Tag No.", "Min", "Max", "Unit", "Range", "PT-101", "bar", "Zone", "Type", "H", "Service", "END"]),
+    st.sampled_from(
+        ["Tag", ("Tag No."), "Min", "Max", "Unit", "Range", "PT-101", "bar", "Zone", "Type", "H", "Service", "END"]
+    ),
     st.text(max_size=30),
-)  # fmt: skip
+)
 
 
 @settings(max_examples=150, deadline=None)
