@@ -1,4 +1,8 @@
-"""Marrowbeck Works for tests: its lists in fixtures, with any changes, as rows, as a workbook or as files."""
+"""Marrowbeck Works for tests: its lists in fixtures, with any changes, as rows, as a workbook or as files.
+
+``python -m tests.marrowbeck`` writes anew what is made of the lists and the changes: the demo workbook and
+the text of its findings. Both are then read as a diff.
+"""
 
 from __future__ import annotations
 
@@ -19,8 +23,17 @@ from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
 from openpyxl.utils import get_column_letter
 from openpyxl.worksheet.worksheet import Worksheet
 
+from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.workbook.lists import read_lists
+from loops.columns import SHEETS as LOOP_SHEETS
+from loops.plant import assemble
+from validation.audit import Audit, audit
+
 FOLDER = Path(__file__).parent.parent / "fixtures" / "marrowbeck"
 DEMO = FOLDER / "instrument-list.xlsx"
+FINDINGS = FOLDER / "findings.txt"
+THE_LIST = "the list"
+KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 INDEX = "Instrument index"
 PACKAGE = "Package K-501"
 
@@ -42,7 +55,7 @@ class Look:
 
     `heading` counts rows from 1 and is 0 where the sheet has none: there each row is a name and a
     value, and the name is the column by which it is found. `key` is the heading of the column that
-    names a row.
+    names a row. `together` are columns that mean what they do by standing side by side.
     """
 
     title: str
@@ -52,6 +65,7 @@ class Look:
     key: str = ""
     text: tuple[str, ...] = ()
     hidden: tuple[str, ...] = ()
+    together: tuple[str, ...] = ()
     decimals: Mapping[str, str] = field(default_factory=dict)
     widths: Mapping[str, float] = field(default_factory=dict)
 
@@ -81,9 +95,7 @@ class Change:
 @cache
 def looks() -> tuple[Look, ...]:
     """Return the sheets of the workbook in their order."""
-    told: list[dict[str, Any]] = tomllib.loads((FOLDER / "workbook.toml").read_text(encoding="utf-8"))[
-        "sheet"
-    ]
+    told: list[dict[str, Any]] = tomllib.loads((FOLDER / "workbook.toml").read_text(encoding="utf-8"))["sheet"]
     return tuple(
         Look(**{name: tuple(value) if isinstance(value, list) else value for name, value in each.items()})
         for each in told
@@ -198,6 +210,46 @@ def write_files(folder: Path, sheets: Sheets) -> list[Path]:
     return written
 
 
+def audit_of(*paths: Path) -> Audit:
+    """Read lists and run every rule over them; a rule that raises fails the test."""
+    return audit(assemble(read_lists(paths, KINDS)), raise_errors=True)
+
+
+def found(result: Audit) -> list[str]:
+    """Return what an audit found and asks, in the words of `expected`: rule and subject."""
+    return sorted(
+        _line(each.rule, *((THE_LIST, each.part) if each.subject == result.plant.file_name else (each.subject, "")))
+        for each in result.findings
+    )
+
+
+def findings_text(result: Audit) -> str:
+    """Return the findings and reviews of an audit as text, a line each, in the order of the report."""
+    lines = []
+    for each in result.findings:
+        subject = THE_LIST if each.subject == result.plant.file_name else each.subject
+        word = each.outcome.value if each.outcome.value == "review" else each.severity.value
+        lines.append(f"{word} {_line(each.rule, subject, each.part)}")
+    return "".join(f"{line}\n" for line in lines)
+
+
+def expected(made: Iterable[Change]) -> list[str]:
+    """Return what must be found besides the twin's reviews: rule and subject, in brackets the part."""
+    lines = []
+    for change in made:
+        lines.append(_line(change.rule, change.subject or change.row, change.part))
+        for also in change.also:
+            rule, _, subject = also.partition(" ")
+            lines.append(_line(rule, subject or change.subject or change.row, ""))
+    return sorted(lines)
+
+
+def reviews() -> list[str]:
+    """Return the reviews of the clean twin: rule and subject, as reviews.txt lists them with their reasons."""
+    lines = (FOLDER / "reviews.txt").read_text(encoding="utf-8").splitlines()
+    return sorted(line.split(":")[0] for line in lines if line and not line.startswith("#"))
+
+
 def shuffled(sheets: Sheets, seed: int) -> Sheets:
     """Return the sheets with sheets, columns and rows in another order.
 
@@ -217,7 +269,7 @@ def shuffled(sheets: Sheets, seed: int) -> Sheets:
         head, body = rows[:start], rows[start:]
         key = headings(title, rows).index(look.key)
         body = _rows_shuffled(body, key, order)
-        columns = _columns_shuffled(head[look.heading - 1 :], order)
+        columns = _columns_shuffled(head[look.heading - 1 :], look.together, order)
         # A title block and notes belong to no column.
         lines = head[look.heading - 1 :] + body
         moved = [[row[column] for column in columns] if _is_data(row) else row for row in lines]
@@ -267,6 +319,10 @@ def typed(text: str, *, as_text: bool = False) -> str | int | float | None:
     return int(number) if number.is_integer() else number
 
 
+def _line(rule: str, subject: str, part: str) -> str:
+    return f"{rule} {subject} ({part})" if part else f"{rule} {subject}"
+
+
 def _with_tuples(told: Mapping[str, Any]) -> Any:
     return {name: tuple(value) if isinstance(value, list) else value for name, value in told.items()}
 
@@ -286,7 +342,7 @@ def _rows_shuffled(body: Rows, key: int, order: random.Random) -> Rows:
     result: Rows = []
     block: Rows = []
     for row in body:
-        if row[key]:
+        if row[key] and _is_data(row):
             block.append(row)
             continue
         order.shuffle(block)
@@ -296,14 +352,15 @@ def _rows_shuffled(body: Rows, key: int, order: random.Random) -> Rows:
     return result + block
 
 
-def _columns_shuffled(head: Rows, order: random.Random) -> list[int]:
+def _columns_shuffled(head: Rows, together: Sequence[str], order: random.Random) -> list[int]:
     groups: list[list[int]] = []
     below = head[1] if len(head) > 1 else [""] * len(head[0])
     for column, above in enumerate(head[0]):
-        if above or not groups or not below[column]:
-            groups.append([column])
-        else:
+        of_parent = not above and bool(below[column])
+        if groups and (of_parent or above in together[1:]):
             groups[-1].append(column)
+        else:
+            groups.append([column])
     order.shuffle(groups)
     return [column for group in groups for column in group]
 
@@ -367,3 +424,7 @@ def _set_widths(sheet: Worksheet, look: Look, names: Sequence[str]) -> None:
         sheet.column_dimensions[letter].width = look.widths.get(name, 11)
         if name in look.hidden:
             sheet.column_dimensions[letter].hidden = True
+
+
+if __name__ == "__main__":
+    FINDINGS.write_text(findings_text(audit_of(write_demo(DEMO))), encoding="utf-8")

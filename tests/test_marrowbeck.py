@@ -1,24 +1,39 @@
 """The demo plant: its lists, the workbook made of them, and what the audit says of both."""
 
 from collections import Counter
+from collections.abc import Callable, Iterator, Sequence
 from pathlib import Path
+from typing import Any
 
 import openpyxl
 import pytest
 from python_calamine import CalamineWorkbook
 
+from instruments.column import SheetKind
+from instruments.workbook import lists
+from instruments.workbook.headings import SheetMatch
+from instruments.workbook.reader import read_file
+from instruments.workbook.sheet import Sheet
+from loops.plant import assemble
 from tests.marrowbeck import (
     DEMO,
+    FINDINGS,
     INDEX,
+    KINDS,
     PACKAGE,
     Change,
     Sheets,
+    audit_of,
     change_from,
     changes,
     demo_rows,
+    expected,
+    findings_text,
+    found,
     headings,
     look_of,
     looks,
+    reviews,
     row_number,
     shuffled,
     twin_rows,
@@ -29,6 +44,9 @@ from tests.marrowbeck import (
     write_twin,
     write_workbook,
 )
+from validation.audit import Audit, audit
+from validation.finding import Outcome
+from validation.rule import load_rules
 
 
 def column(sheets: Sheets, title: str, heading: str) -> list[str]:
@@ -176,9 +194,7 @@ def test_files_hold_what_the_sheets_hold(tmp_path: Path) -> None:
     written = write_files(tmp_path, twin_rows())
     assert [path.name for path in written] == [look.file for look in looks()]
     for path in written:
-        assert path.read_text(encoding="utf-8") == (DEMO.parent / "clean" / path.name).read_text(
-            encoding="utf-8"
-        )
+        assert path.read_text(encoding="utf-8") == (DEMO.parent / "clean" / path.name).read_text(encoding="utf-8")
 
 
 def test_shuffling_moves_everything_and_loses_nothing() -> None:
@@ -188,9 +204,7 @@ def test_shuffling_moves_everything_and_loses_nothing() -> None:
     assert set(moved) == set(sheets)
     for title, rows in sheets.items():
         plain = without_dittos(title, rows)
-        assert Counter(cell for row in moved[title] for cell in row) == Counter(
-            cell for row in plain for cell in row
-        )
+        assert Counter(cell for row in moved[title] for cell in row) == Counter(cell for row in plain for cell in row)
     names = headings(INDEX, moved[INDEX])
     assert names != headings(INDEX, sheets[INDEX])
     at = row_number(INDEX, moved[INDEX], "FT-1007")
@@ -207,3 +221,83 @@ def test_a_ditto_mark_stands_for_what_is_above() -> None:
     plain = without_dittos(INDEX, rows)
     assert '"' not in {cell for row in plain for cell in row}
     assert plain[at][names.index("P&ID No.")] == "MBW-PID-102"
+
+
+def test_the_clean_twin_gives_no_finding_and_the_listed_reviews(tmp_path: Path) -> None:
+    result = audit_of(write_twin(tmp_path / "twin.xlsx"))
+    assert {outcome: count for outcome, count in result.counts().items() if outcome != "review"} == {
+        "danger": 0,
+        "fault": 0,
+        "gap": 0,
+    }
+    assert found(result) == reviews()
+    assert len(reviews()) <= 10
+
+
+@pytest.mark.parametrize("rows", [twin_rows, demo_rows])
+def test_neither_files_nor_another_order_change_what_is_found(rows: Callable[[], Sheets], tmp_path: Path) -> None:
+    as_found = found(audit_of(write_workbook(tmp_path / "list.xlsx", rows())))
+    moved = found(audit_of(write_workbook(tmp_path / "moved.xlsx", shuffled(rows(), 1))))
+    assert moved == as_found
+    # A row without a tag goes by its sheet, and a file's sheet goes by the file's name.
+    files = found(audit_of(*write_files(tmp_path / "files", rows())))
+    assert [line.replace("instrument-index:", f"{INDEX}:") for line in files] == as_found
+
+
+def test_every_rule_has_a_change() -> None:
+    assert {rule.code for rule in load_rules()} == {change.rule for change in changes()}
+
+
+def test_the_demo_gives_what_its_changes_say_and_nothing_else() -> None:
+    unasked = Counter(found(audit_of(DEMO)))
+    unasked.subtract(Counter(expected(changes()) + reviews()))
+    assert {line: count for line, count in unasked.items() if count} == {}
+
+
+def test_the_findings_of_the_demo_are_those_of_the_text() -> None:
+    assert findings_text(audit_of(DEMO)).splitlines() == FINDINGS.read_text(encoding="utf-8").splitlines()
+
+
+@pytest.fixture(scope="module")
+def audit_with(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Callable[[Change], Audit]]:
+    """Audit the twin with one change; what the change does not touch is read once, and headings are matched once."""
+    matched: dict[str, SheetMatch | None] = {}
+    match = lists.match_sheet
+
+    def match_once(sheet: Sheet, kinds: Sequence[SheetKind], **told: Any) -> SheetMatch | None:
+        key = f"{Path(sheet.file).name} {sorted(told)}"
+        if key not in matched:
+            matched[key] = match(sheet, kinds, **told)
+        return matched[key]
+
+    folder = tmp_path_factory.mktemp("change")
+    twin = twin_rows()
+    unchanged = {path.name: read_file(path) for path in write_files(folder / "twin", twin)}
+
+    def run(change: Change) -> Audit:
+        title = change.sheet
+        (changed,) = write_files(folder, {title: with_changes(twin, [change])[title]})
+        sheets = [
+            sheet
+            for name, each in unchanged.items()
+            for sheet in (read_file(changed) if name == changed.name else each)
+        ]
+        return audit(assemble(lists.records_of_sheets(sheets, KINDS)), raise_errors=True)
+
+    with pytest.MonkeyPatch.context() as patch:
+        patch.setattr(lists, "match_sheet", match_once)
+        yield run
+
+
+@pytest.mark.parametrize("change", changes(), ids=lambda each: f"{each.number}-{each.rule}-{each.row}")
+def test_a_change_alone_gives_its_rule_and_its_companions(
+    change: Change, audit_with: Callable[[Change], Audit]
+) -> None:
+    result = audit_with(change)
+    lines = Counter(line.replace("instrument-index:", f"{INDEX}:") for line in found(result))
+    lines.subtract(expected([change]) + reviews())
+    assert {line: count for line, count in lines.items() if count} == {}
+    own = [
+        each for each in result.findings if each.rule == change.rule and f"{each.rule} {each.subject}" not in reviews()
+    ]
+    assert {each.outcome is Outcome.REVIEW for each in own} == {change.review}
