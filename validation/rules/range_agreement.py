@@ -78,6 +78,8 @@ def ranges_differ(installed: Installed, plant: Plant) -> Verdict:
     unit = field.unit
     in_field = [in_unit(end, unit) for end in ends]
     shown = f"{format_number(in_field[0])} to {written(in_field[1], unit)}"
+    if shown == str(field):  # they differ in a digit that nobody would write
+        shown = f"{in_field[0]:.10g} to {in_field[1]:.10g} {unit_label(unit)}"
     worst = max(off, key=abs)
     names = [
         name
@@ -88,14 +90,14 @@ def ranges_differ(installed: Installed, plant: Plant) -> Verdict:
     return Found(
         values={
             "field": str(field),
-            "system": str(system),
-            "in_field_unit": "" if shown == str(system) else f" ({shown})",
+            "system": shown if system.unit is unit else str(system),
+            "in_field_unit": "" if system.unit is unit else f" ({shown})",
         },
         fields=tuple(names),
         found=f"field {field}, system {shown}",
         wanted="the same range",
         off_by=amount(worst, unit),
-        working="" if shown == str(system) else f"{system} = {shown}",
+        working="" if system.unit is unit else f"{system} = {shown}",
         fixes=(
             Fix(
                 text=f"system range as the field's: {field}",
