@@ -267,10 +267,10 @@ def device_columns(owner: str) -> tuple[Column, ...]:
 MARKING = _text("ex_marking", "Ex marking", "ex marking", "ex code", "marking", "ex protection", "explosion protection",
                 "ex", "ex kennzeichnung", "protection marking", "hazloc marking", "atex marking", "ex rating",
                 "ex class", "device marking", "marking ex", "ex certification", "zündschutzart", "ex schutz",
-                "ex protection marking", "protection type marking")
+                "ex protection marking", "protection type marking", "haz cert", "certification", "ex cert", "ex certificate", "hazardous certification", "hazardous area certification", "approval", "ex approval", "ex protection class", "atex", "area certification", "certificate", "haz area approval", "explosion proof", "ex type", "ex i / ex d", "ex ia / ex d")
 CERTIFICATE = _text("certificate", "certificate", "certificate", "certificate no", "cert no", "ex certificate", "cert",
                     "certificate number", "ex cert", "ex cert no", "zertifikat", "approval", "ex certificate no",
-                    "bescheinigung", "listing")
+                    "bescheinigung", "listing", "haz cert", "certification", "ex certification", "hazardous area certificate", "atex certificate", "iecex certificate", "cert number", "approval no", "approval number", "zertifikat nr", "bescheinigungsnummer", "eu type examination certificate", "type examination certificate")
 SIGNAL = _text("signal", "signal", "signal", "signal type", "sig", "sig type", "output", "output signal", "signalart",
                "ausgang", "signal range", "control signal")
 WIRES = Column(field="wires", title="wires", reads=Reads.COUNT,
@@ -284,11 +284,11 @@ MODEL = _text("model", "model", "model", "model no", "type no", "model number", 
               "model code", "modell", "catalogue no", "model type", "modele", "type", "type / model", "make / model", "manufacturer type", "device model")
 
 IO_TYPE = _text("io_type", "I/O type", "i/o type", "io type", "i/o", "io", "signal i/o", "type of i/o", "e/a typ",
-                "ea typ", "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type", "i/o signal", "type of signal")
+                "ea typ", "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type", "i/o signal", "type of signal", "typ", "signalart", "signaltyp")
 IO_ADDRESS = _text("io_address", "I/O address", "i/o address", "io address", "address", "plc address", "channel",
                    "dcs address", "i/o addr", "adresse", "rack slot channel", "node slot channel", "ea adresse",
                    "e/a adresse", "io channel", "i/o channel", "plc addr", "dcs channel", "i o address",
-                   "plc i/o address", "tag address", "sps adresse")
+                   "plc i/o address", "tag address", "sps adresse", "ch", "point", "rack/slot/channel", "rack/slot/ch", "node/card/channel", "card/channel", "kanal", "r/s/c", "rsc")
 CARD = _text("card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module",
              "baugruppe", "i o card")
 SYSTEM = _word("system", "system", SYSTEMS, "system", "control system", "system type", "dcs plc", "logic solver",
@@ -314,6 +314,11 @@ SETTINGS = (
               "set point trip", unit_from=("settings_unit",)),
     _word("trip_direction", "trip direction", HIGH_LOW, "trip direction", "trip dir", "direction of trip",
           "trip on", "trip high low"),
+    Column(field="settings", title="alarm settings", unit_from=("settings_unit",),
+           into=("setting_ll", "setting_l", "setting_h", "setting_hh", "trip"),
+           headings=("alarm settings", "alarm setting", "alarm set points", "alarms", "alarm", "alarm limits", "alarm trip settings",
+                     "alarm and trip settings", "alarms and trips", "set points", "alarm values", "grenzwerte", "trip alarm settings",
+                     "alarm trip set points", "settings", "alarm trip", "alarm points")),
     Column(field="settings_unit", title="settings unit", reads=Reads.UNIT,
            headings=("settings unit", "setting unit", "set point unit", "alarm unit", "alarm units", "sp unit",
                      "alarms unit", "alarms units", "setpoint unit", "unit of settings", "trip unit")),
@@ -331,10 +336,10 @@ INSTRUMENTS = SheetKind(
                          "plt stelle", "mst nr", "kks", "device tag", "instrument number", "tag id", "item no",
                          "positions nr", "plt nr", "repere", "point", "point name", "loop tag", "inst no",
                          "instrument tag no", "instrument tag number", "ident", "kennzeichen", "name", "item", "no", "position", "id", "instrument id", "tag name / no", "signal name", "symbol", "tag / item")),
-        _text("service", "service", "service", "service description", "description", "desc", "duty",
+        _text("service", "service", "service", "service description", "description", "kommentar", "desc", "duty",
               "instrument description", "function", "benennung", "bezeichnung", "beschreibung", "designation",
               "description of service", "service / description", "application", "purpose", "tag description",
-              "process description"),
+              "process description", "text", "comment", "langtext", "kurztext", "klartext", "signal description", "point description"),
         _text("device_type", "device type", "device type", "type code", "catalogue code", "device code", "typecode",
               "catalogue type", "device", "instrument type code", "type ref", "data sheet type", "geraetetyp",
               "gerätetyp", "type id", "type", "type no", "instrument code"),
@@ -342,7 +347,7 @@ INSTRUMENTS = SheetKind(
                headings=("kind", "instrument type", "type", "device kind", "inst type", "type of instrument",
                          "instrument kind", "class", "device class", "geräteart", "geraeteart", "art", "tag class",
                          "instr type", "equipment type", "messgerät", "device description", "gerät", "instrumenttype",
-                         "measuring principle", "principle", "messprinzip")),
+                         "measuring principle", "principle", "messprinzip", "typ", "instrument", "messgeraet")),
         UNIT_TEXT,
         _text("area", "area", "area", "area code", "hazardous area code", "plant area", "bereich", "zone area",
               "location area", "haz area", "hazardous area", "ex area", "area no", "area ref"),
@@ -541,7 +546,7 @@ INSTRUMENTS = SheetKind(
         _text("hold", "hold", "hold", "on hold", "hold no"),
         _text("revision", "revision", "rev", "revision", "row rev", "rev no", "index"),
         _text("remarks", "remarks", "remarks", "notes", "comments", "remark", "note", "comment", "bemerkung",
-              "bemerkungen", "safety notes", "anmerkung", "remarks / notes", "observations", "hinweis"),
+              "bemerkungen", "safety notes", "anmerkung", "remarks / notes", "observations", "hinweis", "kommentar"),
         *device_columns("own"),
     ),
 )

@@ -25,6 +25,7 @@ __all__ = [
     "UnitCell",
     "count_cell",
     "joined_cell",
+    "labelled_settings",
     "number_cell",
     "one_of_several",
     "quantity_cell",
@@ -260,6 +261,53 @@ def number_cell(field: str, unit: str, *, stated: str | None, decimal: str | Non
     return lambda cell: read(cell) if type(cell) is float else blank(cell)
 
 
+_LABEL: Final = re.compile(
+    r"(?<![A-Za-z])(HI[\s-]?HI|LO[\s-]?LO|H{1,2}|L{1,2}|HI|LO|HIGH|LOW|TRIP|[A-Z]{1,3}[SA](?:HH|LL|H|L))(?![A-Za-z])"
+    r"\s?[:=@]?\s?(?=[<>]?\s?-?[\d.])",
+    re.IGNORECASE,
+)
+_LEVELS: Final = {
+    "ll": 0,
+    "lolo": 0,
+    "l": 1,
+    "lo": 1,
+    "low": 1,
+    "h": 2,
+    "hi": 2,
+    "high": 2,
+    "hh": 3,
+    "hihi": 3,
+    "trip": 4,
+}
+
+
+def labelled_settings(text: str) -> tuple[str | None, ...] | None:
+    """Return the settings that one cell names, LL L H HH and trip, each with its unit; None where it names none.
+
+    >>> labelled_settings("H=18 HH=20 barg")
+    (None, None, '18 barg', '20 barg', None)
+    >>> labelled_settings("PSHH 12 barg / PSH 10 barg"), labelled_settings("see data sheet")
+    ((None, None, '10 barg', '12 barg', None), None)
+    """
+    labels = list(_LABEL.finditer(text))
+    if not labels or text[: labels[0].start()].strip():
+        return None
+    found: list[str | None] = [None] * 5
+    ends = [*(each.start() for each in labels[1:]), len(text)]
+    for each, end in zip(labels, ends, strict=True):
+        label = re.sub(r"[\s-]", "", each[1].casefold())
+        tail = re.search(r"(?:hh|ll|h|l)$", label)
+        place = _LEVELS.get(label, _LEVELS[tail[0]] if tail else -1)
+        if place < 0 or found[place] is not None:
+            return None
+        found[place] = text[each.end() : end].strip(" ,;/|")
+    units = {unit for said in found if said and (unit := said.lstrip("<>-0123456789., "))}
+    if len(units) == 1:
+        (unit,) = units
+        found = [f"{said} {unit}" if said and unit not in said else said for said in found]
+    return tuple(found)
+
+
 # --- texts that stand in several columns, values that stand in one ----------------------------------------------------
 
 _BARE: Final = {
@@ -273,11 +321,13 @@ _BARE: Final = {
 def with_prefix(prefix: str, text: str) -> str:
     """Return a text with what its heading says and its cell leaves out.
 
-    >>> with_prefix("Zone", "2"), with_prefix("Group", "IIB"), with_prefix("Div", "2")
-    ('Zone 2', 'IIB', 'Div 2')
+    >>> with_prefix("Zone", "2"), with_prefix("Group", "IIB"), with_prefix("Div", "2"), with_prefix("Slot", "4")
+    ('Zone 2', 'IIB', 'Div 2', 'Slot 4')
     """
     bare = _BARE.get(prefix)
-    return f"{prefix} {text}" if bare is not None and bare.fullmatch(text) else text
+    if not prefix or (bare is not None and not bare.fullmatch(text)):
+        return text
+    return f"{prefix} {text}"
 
 
 def one_of_several(cell: Value, place: int, count: int) -> Value:

@@ -9,6 +9,7 @@ from typing import Final
 
 from instruments.column import Column, Reads
 from instruments.kind import kind_from_words
+from instruments.workbook.cell import labelled_settings
 from instruments.workbook.heading_words import unit_in
 from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet
@@ -48,6 +49,14 @@ _SIGNAL: Final = re.compile(
 _AREA_CLASS: Final = re.compile(
     r"(?i)(?:zone|(?<![\w-])z ?(?:2[0-2]|[0-2])(?![\w-])|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|"
     r"unclass|haz|^n/?a$|^none$|\bex\b|^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$)"
+)
+_MARKING: Final = re.compile(
+    r"\bA?EE?x\b|\bEx ?[a-z]{1,2}\b|\bCl(?:ass)?\.? ?I|\bII ?[123](?:/[123])? ?[GD]\b|"
+    r"\bI\.?S\.?$|\bXP\b|\bNI\b|explosion ?proof",
+    re.IGNORECASE,
+)
+_CERTIFICATE: Final = re.compile(
+    r"\d\d ?\.? ?(?:ATEX|UKEX)|IECEx [A-Z]|(?:ATEX|UKEX|CML|CSA|UL|FM)\W{0,2}\d{2}|\d{4,}", re.IGNORECASE
 )
 _DOCUMENT: Final = re.compile(r"(?=.*\d)[\w.\-/&() ]{4,60}")
 _CODE_LIKE: Final = re.compile(r"(?=.*[A-Za-z])(?=.*\d)[\w.\-/+*]{2,30}")
@@ -152,6 +161,8 @@ class Contents:
             return self.in_words(column.words)
         if reads is Reads.YES_NO:
             return sum(yes_or_no(text) is not None for text in self.texts) / self.count
+        if column.into:
+            return sum(labelled_settings(text) is not None for text in self.texts) / self.count
         return self._text_fit(column.field, codes)
 
     def _tags(self) -> float:
@@ -193,8 +204,17 @@ class Contents:
             return 0.2 if self.numbers == self.count else 0.5 + 0.4 * spaced
         if name == "revision":
             return sum(len(text) <= 6 for text in self.texts) / self.count
-        if name in ("ex_marking", "certificate", "protection"):
-            return 0.1 if self.numbers == self.count else 0.6
+        if name in ("ex_marking", "protection"):
+            return max(
+                self.holds(_MARKING), 0.0 if self.numbers == self.count else 0.4 * (1 - self.holds(_CERTIFICATE))
+            )
+        if name == "certificate":
+            return max(
+                self.holds(_CERTIFICATE), 0.1 if self.numbers == self.count else 0.5 * (1 - self.holds(_MARKING))
+            )
+        if name == "io_address":
+            # A channel without its card, the same on each card, is no address.
+            return 0.6 if len(set(self.texts)) * 2 > self.count else 0.2
         if name == "conductor":
             return 0.6
         return 0.25 if self.numbers == self.count and name in _NEVER_NUMBERS else 0.6

@@ -184,7 +184,7 @@ _WEAK: Final = frozenset(
         "connection", "temperature", "pressure", "start", "end", "group", "marking", "reference", "connected to",
         "value", "diode", "limit", "length", "ort", "size", "installation", "architecture", "room", "deck", "grid",
         "burst", "sensor", "class of sensor", "product", "stoff", "material", "dimension", "interlock", "channel",
-        "address", "failure", "trip", "listing", "approval", "operating",
+        "kanal", "ch", "typ", "signalart", "failure", "trip", "listing", "approval", "operating",
     )
 )  # fmt: skip
 # Headings that need the heading above them to mean anything.

@@ -413,6 +413,7 @@ def _assign(
     _add_tag_without_heading(kind, levels, content, columns, used, sheet.width, notes)
     unit_columns = _place_units(kind, levels, content, columns, used, taken)
     _join_parts(kind, levels, content, columns, used)
+    _join_address(kind, levels, content, columns, used)
     for index, text in units.items():
         for name, match in columns.items():
             if match.index == index and not match.unit_text:
@@ -472,6 +473,9 @@ def _match_pairs(
     for index, heading in levels.items():
         text = BRACKET.sub(" ", heading.joined)
         words = heading_words(text)
+        if _match_ends(known, index, heading, content, columns):
+            used.add(index)
+            continue
         if not (_PRESSURE_WORDS.intersection(words) and _TEMPERATURE_WORDS.intersection(words)):
             continue
         names = next((_PAIRED[word] for word in words if word in _PAIRED), None)
@@ -496,6 +500,57 @@ def _match_pairs(
         used.add(index)
 
 
+_END_WORDS: Final = re.compile(r"\b(min|nor|max)[a-z]*\b\.?", re.IGNORECASE)
+_ENDS_LISTED: Final = re.compile(
+    r"(?:min|nor|max)[a-z]{0,6}\.?\s?[/|,;-]\s?(?:min|nor|max)[a-z]{0,6}\.?(?:\s?[/|,;-]\s?(?:min|nor|max)[a-z]{0,6}\.?)?",
+    re.IGNORECASE,
+)
+_THREE_OF: Final = {"min": 0, "nor": 1, "max": 2}
+
+
+def _match_ends(
+    known: Mapping[str, Column],
+    index: int,
+    heading: Levels,
+    content: Callable[[int], Contents],
+    columns: dict[str, ColumnMatch],
+) -> bool:
+    """Find a column whose heading says in which order its cells hold minimum, normal and maximum."""
+    listed = _ENDS_LISTED.search(heading.joined)
+    if listed is None:
+        return False
+    ends = [_THREE_OF[word.casefold()[:3]] for word in _END_WORDS.findall(listed[0])]
+    rest = f"{heading.joined[: listed.start()]} {heading.joined[listed.end() :]}"
+    words = heading_words(BRACKET.sub(" ", rest))
+    three = next(
+        (
+            column
+            for column in known.values()
+            if column.reads is Reads.TRIPLET
+            and words in {heading_words(each) for each in (column.title, *column.headings)}
+        ),
+        None,
+    )
+    if three is None or len(set(ends)) < len(ends) or any(three.into[end] in columns for end in ends):
+        return False
+    if len(ends) == 2 and content(index).part(_TWO_VALUES) < 0.5:
+        return False
+    bracket = BRACKET.search(rest)
+    stated = unit_for(three, bracket[1]) if bracket else None
+    for place, end in enumerate(ends):
+        name = three.into[end]
+        columns[name] = ColumnMatch(
+            column=known[name],
+            index=index,
+            heading=heading.joined,
+            likelihood=0.95,
+            unit=stated if isinstance(stated, Unit) else None,
+            unit_text=bracket[1] if bracket and stated is not None else "",
+            piece=(place, len(ends)),
+        )
+    return True
+
+
 def _believed(candidate: Candidate, cells: Contents, fit: float, several: bool) -> bool:
     if candidate.how == "likeness":
         return cells.count > 0 and fit >= 0.5
@@ -503,7 +558,7 @@ def _believed(candidate: Candidate, cells: Contents, fit: float, several: bool) 
         return True
     if candidate.column.reads is Reads.TAG and cells.sequence:
         return False
-    if candidate.weak or several:
+    if candidate.weak or several or (candidate.column.into and candidate.column.reads is Reads.TEXT):
         return fit >= 0.25
     if candidate.column.reads in NUMERIC and candidate.column.reads is not Reads.RANGE:
         return fit > 0 or any(any(sign.isdigit() for sign in text) for text in cells.texts) or cells.count < 4
@@ -822,6 +877,48 @@ def _join_parts(
             columns[owner] = replace(match, parts=(*match.parts, (index, prefix)))
         owners[index] = owner
         used.add(index)
+
+
+# Where an address in columns of its own goes from the large to the small.
+_ADDRESS_PARTS: Final[tuple[tuple[str, tuple[str, ...]], ...]] = (
+    ("Station", ("node", "station", "controller", "drop", "plc", "plc no", "rio", "cpu", "node no")),
+    ("Rack", ("rack", "chassis", "frame", "baugruppentraeger", "rack no")),
+    ("Slot", ("slot", "card", "module", "i/o card", "steckplatz", "slot no", "card no", "module no", "baugruppe")),
+    ("Ch", ("channel", "ch", "point", "kanal", "channel no", "ch no", "bit", "i/o channel", "point no")),
+)
+_ADDRESS_WORDS: Final = {heading_words(text): name for name, texts in _ADDRESS_PARTS for text in texts}
+
+
+def _join_address(
+    kind: SheetKind,
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+) -> None:
+    """Join rack, slot and channel to the address, where no one column holds it whole."""
+    known = {column.field: column for column in kind.columns}
+    match = columns.get("io_address")
+    if "io_address" not in known or (match is not None and _ADDRESS_WORDS.get(heading_words(match.heading)) != "Ch"):
+        return
+    parts: dict[str, int] = {}
+    for index, heading in levels.items():
+        name = _ADDRESS_WORDS.get(heading_words(heading.joined)) or _ADDRESS_WORDS.get(heading_words(heading.texts[-1]))
+        if name is not None and name not in parts and content(index).count:
+            parts[name] = index
+    if "Ch" not in parts or len(parts) < 2:
+        return
+    order = [(parts[name], name) for name, _ in _ADDRESS_PARTS if name in parts]
+    columns["io_address"] = ColumnMatch(
+        column=known["io_address"],
+        index=order[0][0],
+        heading=" ".join(levels[index].joined for index, _ in order),
+        how="contents",
+        likelihood=0.9,
+        prefix=order[0][1],
+        parts=tuple(order[1:]),
+    )
+    used.update(parts.values())
 
 
 def _part_of(heading: Levels) -> tuple[str, str] | None:

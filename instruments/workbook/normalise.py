@@ -28,6 +28,7 @@ from instruments.workbook.cell import (
     UnitCell,
     count_cell,
     joined_cell,
+    labelled_settings,
     number_cell,
     one_of_several,
     quantity_cell,
@@ -64,6 +65,9 @@ _RELIEF: Final = frozenset((Kind.RELIEF_VALVE, Kind.RUPTURE_DISC, Kind.REGULATOR
 _RELIEF_LETTERS: Final = frozenset(("PSV", "PRV", "PVRV", "TSV", "PSE", "PRD", "TRV", "PCV", "RV", "SV"))
 _TRIPPING: Final = frozenset((Kind.SWITCH, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR))
 _TRIPPING_LETTERS: Final = re.compile(r"[A-Z][^V]*[SA](?:H{1,3}|L{1,3})?")
+_SET_AT: Final = re.compile(
+    r"set(?:\s?(?:at|@|press(?:ure)?\.?|point))?\s?[:=@]?\s?([\d.,]{1,12}\s?\S.{0,20}?)", re.IGNORECASE
+)
 _ZERO_OR_ONE: Final = re.compile(r"[01]|0\s?(?:-|/|\.{2,3}|to)\s?1")
 _DIGITAL: Final = re.compile(r"d[io]\b|digital|discrete|b[ea]\b|d[ea]\b", re.IGNORECASE)
 
@@ -156,16 +160,20 @@ class _SheetReader:
                 self.values[name] = [unit if isinstance(unit, Unit) else None for unit in self.unit_cells[name]]
                 self._place(name, match)
         later: list[tuple[str, ColumnMatch]] = []
+        labelled: list[tuple[str, ColumnMatch]] = []
         for name, match in matches.items():
             reads = match.column.reads
             if reads in (Reads.TAG, Reads.UNIT):
                 continue
             if reads is Reads.KIND:
                 self._read_kinds(name, match)
+            elif match.column.into and reads is Reads.TEXT:
+                labelled.append((name, match))
             elif reads in NUMERIC and reads is not Reads.COUNT:
                 later.append((name, match))
             else:
                 self._read_texts(name, match)
+        self._take_set_cells()
         # Words first: whether 0 and 1 are a range, a digital signal tells.
         measured: list[tuple[str, ColumnMatch]] = []
         for name, match in later:
@@ -186,6 +194,8 @@ class _SheetReader:
                 of_range = name in _SETTINGS or name in _OPERATING
                 with self._seen(match):
                     self._read_quantities(name, match, self._units_for(match, base if of_range else None))
+        for _, match in labelled:
+            self._read_labelled(match, base)
         self._take_status()
         self._keep_unknown()
         self._add_notes_and_places()
@@ -410,6 +420,9 @@ class _SheetReader:
         prefixes = (match.prefix, *(prefix for _, prefix in match.parts))
         joined: list[Any] = []
         for position, texts in enumerate(zip(*columns, strict=True)):
+            if name == "io_address" and texts[-1] is None:
+                # A card without a channel is no address.
+                texts = (None,) * len(texts)
             said = [with_prefix(prefix, text) for prefix, text in zip(prefixes, texts, strict=True) if text]
             joined.append(" ".join(said) or None)
             if said and position in self.blanks:
@@ -704,6 +717,45 @@ class _SheetReader:
                 units = self._units_for(dataclasses.replace(match, column=column), base)
                 self._store(target, self._quantities(target, match, column, units)[0])
         self._set_aside(match, cells, taken)
+
+    def _read_labelled(self, match: ColumnMatch, base: Sequence[UnitCell]) -> None:
+        """Read a column that names several settings in each cell: H=18 HH=20 barg."""
+        cells = self.cells(match.index)
+        texts = {cell: as_text(cell).strip() for cell in set(cells) if cell is not None}
+        known = {
+            cell: None if placeholder(text) else labelled_settings(" ".join(text.split()))
+            for cell, text in texts.items()
+        }
+        for place, target in enumerate(match.column.into):
+            seen: list[Value] = [
+                found[place] if cell is not None and (found := known[cell]) is not None else None for cell in cells
+            ]
+            if any(each is not None for each in seen):
+                column = self.known[target]
+                with self._seeing(match.index, seen):
+                    units = self._units_for(dataclasses.replace(match, column=column), base)
+                    self._store(target, self._quantities(target, match, column, units)[0])
+                self.places.setdefault(target, (match.index,))
+        self._set_aside(match, cells, [cell is None or known[cell] is not None for cell in cells])
+
+    def _take_set_cells(self) -> None:
+        """Read "Set 12 barg" in a column of ranges as what it is: a set point."""
+        match = self.match.columns.get("range")
+        if match is None or not self.letters or not self.known.get("set_pressure"):
+            return
+        cells = self.cells(match.index)
+        said = [_SET_AT.fullmatch(cell.strip()) if isinstance(cell, str) else None for cell in cells]
+        if not any(said):
+            return
+        for position, each in enumerate(said):
+            if each is not None:
+                for name in match.column.into:
+                    self.blanks[position][name] = "set point"
+        with self._seeing(match.index, [each[1] if each is not None else None for each in said]):
+            self._read_set_points("trip", match, self._units_of_measurement())
+        self._columns[match.index] = [
+            None if each is not None else cell for cell, each in zip(cells, said, strict=True)
+        ]
 
     # --- the rest of a row --------------------------------------------------------------------------------------------
 

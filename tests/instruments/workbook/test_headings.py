@@ -40,6 +40,12 @@ ONE_COLUMN = [
     ("Signal", "4-20mA HART;dry contact", "signal"),
     ("Signal", "AI;DO", "io_type"),
     ("Signal Type", "AI;DO", "io_type"),
+    ("Haz. Cert.", "Ex ia IIC T4 Ga;Ex d IIB T6", "ex_marking"),
+    ("Haz. Cert.", "BVX 15 ATEX 1012X;IECEx BVX 16.0001", "certificate"),
+    ("Certificate No.", "BVX 15 ATEX 1012X;BVX 15 ATEX 1013X", "certificate"),
+    ("Typ", "AI;DO", "io_type"),
+    ("Kommentar", "Druck Zulauf;Temperatur Zulauf", "service"),
+    ("Alarm settings", "H=8 HH=9 barg;L=2", "settings"),
     ("Location", "Field;Control room", "location"),
     ("Location", "Filter gallery;Sample room 1", "place"),
     ("Unit", "10;20", "unit"),
@@ -332,6 +338,32 @@ def test_the_kind_of_a_sheet(text: str, name: str, kind: str) -> None:
 )
 def test_a_sheet_that_is_no_list_is_of_no_kind(name: str, text: str) -> None:
     assert match_sheet(sheet(text, name=name), KINDS) is None
+
+
+def test_a_heading_says_in_which_order_its_cells_hold_their_values() -> None:
+    found = matched("Tag|Op. Press Norm/Max (barg)|Op. Temp. Max/Min (°C)\nPT-1|12/16|90/10\nPT-2|12/16|90/10").columns
+    assert {name: (each.index, each.piece, str(each.unit)) for name, each in found.items() if each.piece} == {
+        "operating_pressure_normal": (1, (0, 2), "barg"),
+        "operating_pressure_max": (1, (1, 2), "barg"),
+        "operating_temperature_max": (2, (0, 2), "°C"),
+        "operating_temperature_min": (2, (1, 2), "°C"),
+    }
+
+
+ADDRESSES = [
+    ("Tag|Rack|Slot|Ch|I/O\nPT-1|1|1|0|AI\nPT-2|1|1|1|AI", 1, "Rack", ((2, "Slot"), (3, "Ch"))),
+    ("Tag|Card|Channel|Service\nPT-1|C1|0|Feed\nPT-2|C2|0|Feed", 1, "Slot", ((2, "Ch"),)),
+    ("Tag|Address|Channel|Service\nPT-1|1.0|0|Feed\nPT-2|2.0|0|Feed", 1, "", ()),
+    ("Tag|Channel|Service\nPT-1|1.01|Feed\nPT-2|1.02|Feed", 1, "", ()),
+]
+
+
+@pytest.mark.parametrize(("text", "index", "prefix", "parts"), ADDRESSES)
+def test_an_address_may_stand_in_columns_of_its_own(
+    text: str, index: int, prefix: str, parts: tuple[tuple[int, str], ...]
+) -> None:
+    found = matched(text).columns["io_address"]
+    assert (found.index, found.prefix, found.parts) == (index, prefix, parts)
 
 
 def test_a_kind_may_be_forced() -> None:

@@ -391,6 +391,44 @@ def test_a_set_point_is_read_by_what_it_belongs_to() -> None:
     ]
 
 
+SETTINGS_IN_ONE_CELL = [
+    ("H=8 HH=9 bar", {"setting_h": "8 barg", "setting_hh": "9 barg"}),
+    (
+        "LL 1, L 2, H 8, HH 9",
+        {"setting_ll": "1 barg", "setting_l": "2 barg", "setting_h": "8 barg", "setting_hh": "9 barg"},
+    ),
+    ("PSHH\\n9 barg\\nPSH\\n800 mbarg", {"setting_h": "800 mbarg", "setting_hh": "9 barg"}),
+    ("TRIP @ 9.5", {"trip": "9.5 barg"}),
+    ("Hi-Hi: 9", {"setting_hh": "9 barg"}),
+    ("see cause & effect", {"other": (("Alarm settings", "see cause & effect"),)}),
+    ("H 8 H 9", {"other": (("Alarm settings", "H 8 H 9"),)}),
+]
+
+
+@pytest.mark.parametrize(("text", "wanted"), SETTINGS_IN_ONE_CELL)
+def test_a_cell_may_name_several_settings(text: str, wanted: dict[str, Any]) -> None:
+    found = read(f"Tag|Range|Alarm settings\nPT-1|0-10 barg|{text}\nPT-2|0-10 barg|H=8\nPT-3|0-10 barg|H=8")
+    names = ("setting_ll", "setting_l", "setting_h", "setting_hh", "trip", "other")
+    assert all_said(found, *names)[0] == wanted
+    assert found.problems == ()
+
+
+def test_a_set_point_in_a_column_of_ranges_is_a_set_point() -> None:
+    found = read("Tag|Type|Range\nPSV-1|Relief valve|Set 12 barg\nPG-2|Gauge|0-25 barg\nPSL-3|Switch|Set at 2 barg")
+    names = ("lrv", "urv", "set_pressure", "trip", "blanks")
+    assert all_said(found, *names) == [
+        {"set_pressure": "12 barg", "blanks": {"lrv": "set point", "urv": "set point"}},
+        {"lrv": "0 barg", "urv": "25 barg"},
+        {"trip": "2 barg", "blanks": {"lrv": "set point", "urv": "set point"}},
+    ]
+    assert found.problems == ()
+
+
+def test_a_card_without_a_channel_is_no_address() -> None:
+    found = read("Tag|Card|Channel|Service\nPT-1|C1|1|Feed\nPT-2|C1||Feed")
+    assert all_said(found, "card", "io_address") == [{"card": "C1", "io_address": "Slot C1 Ch 1"}, {"card": "C1"}]
+
+
 # --- words ---
 
 WORDS = [
