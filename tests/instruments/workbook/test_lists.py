@@ -143,7 +143,7 @@ def test_what_was_taken_by_likeness_is_named_and_assumptions_are_told_once() -> 
     ],
 )
 def test_lists_without_tags_are_refused_and_told_what_is_wanted(sheets: list[Sheet], reason: str) -> None:
-    with pytest.raises(NoTags, match="no sheet|a heading such as 'Tag'") as caught:
+    with pytest.raises(NoTags, match=r"no sheet|a heading such as 'Tag'") as caught:
         lists(*sheets)
     assert reason in str(caught.value)
 
