@@ -270,6 +270,8 @@ def test_mixed_references_leave_the_span_unchecked() -> None:
 
 # ------------------------------------------------------------------------------------------------------------ RNG04
 
+FIVE = {"numbering": "parallel", "RNG04 maximum turndown": "5"}
+
 
 @pytest.mark.parametrize(
     ("turndown", "expected"),
@@ -291,19 +293,19 @@ def test_the_span_makes_the_turndown_and_not_the_urv(turndown: str, expected: li
         ([{**GAUGE, "maximum turndown": "", "minimum span": ""}], {}, "0.1 barg", "unchecked: maximum turndown"),
         (
             [{**GAUGE, "maximum turndown": ""}],
-            {"numbering": "parallel", "RNG04 maximum turndown": "5"},
+            FIVE,
             "2 barg",
             "clear",
         ),
         (
             [{**GAUGE, "maximum turndown": ""}],
-            {"numbering": "parallel", "RNG04 maximum turndown": "5"},
+            FIVE,
             "1.9 barg",
             "finding",
         ),
         (
             [GAUGE],
-            {"numbering": "parallel", "RNG04 maximum turndown": "5"},
+            FIVE,
             "1.9 barg",
             "clear",
         ),  # the type's own comes first
@@ -312,7 +314,7 @@ def test_the_span_makes_the_turndown_and_not_the_urv(turndown: str, expected: li
         ([{**GAUGE, "LRL": ""}], {}, "0.1 barg", "finding"),
         (
             [{**GAUGE, "LRL": "-20 barg"}],
-            {"numbering": "parallel", "RNG04 maximum turndown": "3"},
+            {**FIVE, "RNG04 maximum turndown": "3"},
             "0.3 barg",
             "finding",
         ),  # abs(LRL) counts
