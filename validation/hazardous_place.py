@@ -253,7 +253,14 @@ def type_is_lost(installed: Installed, plant: Plant) -> bool:
     record = installed.record
     if record.ex_marking is not None or not record.device_type:
         return False
+    if not plant.types:
+        # Without a catalogue the rows hold the markings themselves, unless none of them does.
+        return not plant.once("rows hold markings", _rows_hold_markings)
     return installed.listed_type is None or name_key(record.device_type) in plant.types_twice
+
+
+def _rows_hold_markings(plant: Plant) -> bool:
+    return any(each.record.ex_marking for each in plant.instruments)
 
 
 def repaired(marking: Marking) -> tuple[str, ...]:
@@ -508,6 +515,12 @@ def _ambient(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | None
 _GRAVITY: Final = ("refused", "review", "unknown", "accepted")
 
 
+def has_its_systems_group(area: Area, side: AreaSide) -> bool:
+    """Whether the group, where one is stated, is a letter in a division and II or III with a letter in a zone."""
+    group = area.dust_group if side == "dust" else area.gas_group
+    return not group or area.system is None or group.startswith("I") != (area.system == "division")
+
+
 def _division(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | None:
     if not _by_division(fit, entry):
         return None
@@ -520,6 +533,8 @@ def _division(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | Non
     if not crossing or location.outcome == "refused":
         return location
     group = translated_group(entry, fit.area, side=side)
+    if not has_its_systems_group(fit.area, side):
+        group = _unknown("dust group" if side == "dust" else "gas group")
     worse = min((location, group), key=lambda each: _GRAVITY.index(each.outcome))
     if fit.jurisdiction == "Canada" and worse.outcome == "refused":
         # No table is held for Canada: what the other country's table refuses is for a person to see as well.
@@ -542,6 +557,8 @@ def _letters(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | None
         location = fit.ask("HAZ09", side)
         if location is not None and location.outcome == "refused":
             return _unknown("EPL")
+    if not has_its_systems_group(fit.area, side):
+        return _unknown("dust group" if side == "dust" else "gas group")
     return division_group(entry.groups, fit.area.dust_group if side == "dust" else fit.area.gas_group)
 
 

@@ -19,6 +19,7 @@ from validation.hazardous_place import (
     area_fields,
     areas_of,
     described,
+    has_its_systems_group,
     is_passive,
     is_simple_apparatus,
     judge,
@@ -108,8 +109,6 @@ def no_area(installed: Installed, plant: Plant) -> Verdict:
     """
     if installed.unclassified:
         return None
-    if not kind_is_known(installed):
-        return Unchecked("kind")
     record, area = installed.record, installed.area
     if record.area and name_key(record.area) in plant.areas_twice:
         return Unchecked("area")
@@ -122,6 +121,8 @@ def no_area(installed: Installed, plant: Plant) -> Verdict:
     if record.location == "panel" and installed.kind not in _BOXES:
         # A panel may be a local one, or stand in the control room.
         return Unchecked("location")
+    if not kind_is_known(installed):
+        return Unchecked("kind")
     reason = record.blanks.get("area") or record.blanks.get("area_classification") or ""
     return Found(
         fields=("area", "area_classification"),
@@ -136,6 +137,8 @@ def _area_is_classified(area: Area, installed: Installed, plant: Plant) -> Verdi
     unread = [name for name in (*CLASSIFICATION_FIELDS, "system") if name in area.unread]
     if unread:
         return Unchecked(*(title_of(f"area.{name}") for name in unread))
+    if not kind_is_known(installed):
+        return Unchecked("kind")
     return Found(
         values={"area": area.code},
         fields=("area", "area.zone", "area.class_", "area.division"),
@@ -518,14 +521,15 @@ def unreadable_marking(installed: Installed, plant: Plant) -> Verdict:
 def _lacking(area: Area) -> Iterator[str]:
     """Give the fields without which the rules about markings cannot be worked."""
     sides = area.sides
-    if area.system == "division" or area.division or (area.class_ and not area.zone):
+    letters = (area.gas_group or area.dust_group or "I")[0] != "I"
+    if area.system == "division" or area.division or (not area.zone and (area.class_ or letters)):
         if not area.class_:
             yield "class_"
         if not area.division:
             yield "division"
-        if "gas" in sides and not area.gas_group:
+        if "gas" in sides and not (area.gas_group and has_its_systems_group(area, "gas")):
             yield "gas_group"
-        if "II" in area.classes and not area.dust_group:
+        if ("II" in area.classes and not area.dust_group) or not has_its_systems_group(area, "dust"):
             yield "dust_group"
         if area.temperature_class is None:
             yield "temperature_class"
@@ -535,12 +539,12 @@ def _lacking(area: Area) -> Iterator[str]:
         ):
             yield "zone"
         if "gas" in sides:
-            if not area.gas_group:
+            if not area.gas_group or not has_its_systems_group(area, "gas"):
                 yield "gas_group"
             if area.temperature_class is None:
                 yield "temperature_class"
         if "dust" in sides:
-            if not area.dust_group:
+            if not area.dust_group or not has_its_systems_group(area, "dust"):
                 yield "dust_group"
             yield from permitted_dust_surface_c(area).missing
     if not area.from_row_cell:
@@ -640,9 +644,11 @@ def incomplete_area(subject: AreaInPlant, plant: Plant) -> Verdict:
 def _words(name: str, area: Area) -> str:
     if name == "zone" and area.zone:
         return "dust zone" if area.gas_zone else "gas zone"
-    return title_of(f"area.{name}").removeprefix("area ") + (
-        " (the cell cannot be read)" if name in area.unread else ""
-    )
+    words = title_of(f"area.{name}").removeprefix("area ")
+    if name in area.unread:
+        return f"{words} (the cell cannot be read)"
+    stated = getattr(area, name)  # a group of the other system
+    return f"{words} ({stated} is none of the {area.system} system's)" if stated else words
 
 
 def _and(parts: list[str]) -> str:

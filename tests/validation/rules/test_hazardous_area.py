@@ -535,6 +535,9 @@ def test_ambient(marking: str | None, area: Row | str, expected: list[str] | str
         ("Ex db IIC T4 Gb", division("1"), ATEX, {}, "not applicable"),
         ("Ex db IIC T4 Gb", gas("1"), US, {}, "not applicable"),
         # blanks
+        ("Class I, Zone 1, AEx db IIC T4 Gb", division("2", ""), US, {}, "unchecked: area gas group"),
+        ("Class I, Zone 1, AEx db IIC T4 Gb", division("2", "IIC"), US, {}, "unchecked: area gas group"),
+        ("Class I Div 1 Gp ABCD T4", gas("2", "C"), US, {}, "unchecked: area gas group"),
         ("Class I Div 2 Gp ABCD T4", {**division(""), "division": ""}, None, {}, "unchecked: area division"),
         ("Class I Div 2 Gp ABCD T4", division(class_="", group=""), None, {}, "unchecked: area class"),
         (None, division(), None, {}, "unchecked: Ex marking"),
@@ -591,6 +594,7 @@ def test_who_speaks_of_division_against_zone(marking: str, area: Row, plant: Row
         ("Class II Div 1 Groups F,G T4", division("1"), "unchecked: Ex marking"),
         ("Class I Div 2 T4", division("2"), "unchecked: Ex marking"),
         ("Class I Div 2 Groups C,D T4", division("2", ""), "unchecked: area gas group"),
+        ("Class I Div 2 Groups C,D T4", division("2", "IIC"), "unchecked: area gas group"),
         ("Class I Div 2 Groups C,D T4", gas(jurisdiction="US"), "not applicable"),
         (None, division(), "unchecked: Ex marking"),
         (None, gas(), "not applicable"),
@@ -854,6 +858,8 @@ def test_who_is_asked(row: Row, expected: bool) -> None:
 
 
 def test_an_unknown_kind_is_unchecked() -> None:
+    assert outcomes("HAZ01", [{"tag": "XX-1", "Zone": "Zone 1"}]) == {"clear": 1}
+    assert unchecked_for("HAZ01", [{"tag": "XX-1", "area": "E"}], areas=[{"code": "E", "zone": ""}]) == {"kind": 1}
     for code in (*CODES[:2], *ON_MARKINGS):
         row = {"tag": "XX-1", "area classification": "", "Ex marking": ""}
         assert unchecked_for(code, [row]) == {"kind": 1}
@@ -963,7 +969,6 @@ DIV_2 = "in area A (Class I Div 2 Group D T3)"
         ({"tag": "PT-1", "certificate": "ABC 20 ATEX 0001"}, gas(), [f"PT-1: no Ex marking, {ZONE_1}"]),
         ({"tag": "PT-1"}, "safe", "not applicable"),
         ({"tag": "PT-1"}, "", "unchecked: area"),
-        ({"tag": "PT-1", "device type": "NO-SUCH"}, gas(), "unchecked: device type"),
         # the whole marking in the column for the protection
         ({"tag": "PT-1", "type of protection": "Ex d IIC T6"}, gas(), "clear"),
         ({"tag": "PT-1", "type of protection": "Ex d"}, gas(), [f"PT-1: no Ex marking, {ZONE_1}"]),
@@ -1024,6 +1029,17 @@ def test_no_column_for_the_marking_is_one_finding() -> None:
     assert said("HAZ02", [{**row, "Zone": "safe"} for row in rows]) == []
     types = [{"code": "X", "kind": "transmitter", "Ex marking": ""}]
     assert len(said("HAZ02", [{**row, "device type": "X"} for row in rows], types=types)) == 3
+
+
+def test_a_type_that_is_not_listed_may_hold_the_marking() -> None:
+    area, types = [{"code": "A", **gas()}], [{"code": "X", "kind": "transmitter", "Ex marking": "Ex ia IIC T4 Ga"}]
+    lost = {"tag": "PT-1", "device type": "Y", "area": "A", "Ex marking": ""}
+    marked = {"tag": "PT-2", "device type": "Y", "area": "A", "Ex marking": "Ex ia IIC T4 Ga"}
+    for code in ("HAZ02", "HAZ03"):
+        assert unchecked_for(code, [lost], areas=area, types=types) == {"device type": 1}
+        assert unchecked_for(code, [lost], areas=area) == {"device type": 1}
+    # Without a catalogue, rows that hold markings hold them all.
+    assert said("HAZ02", [lost, marked], areas=area) == [f"PT-1: no Ex marking, {ZONE_1}"]
 
 
 def test_a_type_listed_twice_leaves_its_marking_unchecked() -> None:
@@ -1114,6 +1130,11 @@ def test_an_unreadable_marking_of_a_type_stands_in_the_catalogue() -> None:
         (division("1", "G", "T3C", "II"), "clear"),
         (division("1", "", "T3C", "II"), ["A: area A (Class II Div 1 T3C) lacks its dust group"]),
         (division("1", "", "T3C", "III"), "clear"),
+        # a group of the other system is none
+        (gas(group="C"), ["A: area A (Zone 1 C T3) lacks its gas group (C is none of the zone system's)"]),
+        (division(group="IIC"),
+         ["A: area A (Class I Div 2 IIC T3) lacks its gas group (IIC is none of the division system's)"]),
+        (gas("", "C,D"), ["A: area A (C,D T3) lacks its class and division"]),
         ({"system": "none", "zone": ""}, "not applicable"),
         # HAZ01 finds it with those who stand there
         ({"zone": "", "name": "Pump bay"}, "unchecked: area zone"),
