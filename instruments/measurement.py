@@ -51,7 +51,7 @@ class Scale(NamedTuple):
     @property
     def reversed(self) -> bool:
         """Whether LRV is above URV."""
-        return self.lrv.number > self.urv.number if self.lrv.unit is self.urv.unit else at(self.lrv) > at(self.urv)
+        return at(self.lrv) > at(self.urv)  # not by the numbers: a vacuum is counted downwards
 
     @property
     def is_pressure(self) -> bool:
