@@ -1,122 +1,236 @@
-"""DAT: what is missing from the record, cannot be read, or is stated twice and differently."""
+"""DAT: what is missing from a row or cannot be read."""
 
 from __future__ import annotations
 
 import re
-from collections import defaultdict
-from collections.abc import Iterator
-from typing import Any
+from collections import Counter, defaultdict
+from collections.abc import Callable, Iterable, Iterator, Mapping
+from dataclasses import dataclass, replace
+from operator import attrgetter
+from typing import Any, Final
 
 from instruments.column import Reads
-from instruments.columns import INSTRUMENTS
+from instruments.columns import DEVICE_TYPES, INSTRUMENTS
 from instruments.installed import Installed
 from instruments.kind import Kind, touches_process
-from instruments.letters import read_letters
-from instruments.marking import read_marking
+from instruments.origin import Cell
 from instruments.plant_data import DEFAULT_REQUIRED
-from instruments.record import DeviceType, Record
+from instruments.quantity import Quantity
+from instruments.record import DeviceType, Instrument, Record
+from instruments.unit_table import unit_label
 from instruments.workbook.problem import CellProblem
-from loops.cable import read_conductor_size
-from loops.circuit import Loop
-from loops.plant import Plant, name_key, same_value
-from loops.wiring import transmitter_of, volts_in
-from validation.finding import Fix, Found, NotApplicable, Severity, Unchecked, Verdict
+from instruments.written import CannotStand, value_of
+from loops.plant import Plant
+from loops.wiring import transmitter_of
+from validation.finding import Fix, Found, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule, title_of
-from validation.rules.electrical import signal_class
+from validation.rules.whole_loops import alone
 
-_MEASURES_NO_RANGE = frozenset({Kind.FIRE_DETECTOR, Kind.GLASS})
 _TITLES = {column.title.casefold(): column.field for column in INSTRUMENTS.columns}
 
 
 # ------------------------------------------------------------------------------------------- required fields
 
+_RANGE_TITLES: Final = frozenset({"range", "range unit", "LRV", "URV"})
+_MEASURES_NO_RANGE: Final = frozenset({Kind.FIRE_DETECTOR, Kind.GLASS})
 
-def _required(plant: Plant) -> tuple[tuple[str, tuple[str, ...]], ...]:
-    """Return the fields that the plant requires: title, and the record's fields that fill it."""
-    names = plant.data.required_fields or DEFAULT_REQUIRED
-    required: list[tuple[str, tuple[str, ...]]] = []
-    for name in names:
+
+def _has_a_range(kind: Kind) -> bool:
+    return kind.measures == "yes" and kind not in _MEASURES_NO_RANGE
+
+
+def _on_a_wire(kind: Kind) -> bool:
+    return kind.wired in ("yes", "element")
+
+
+def _of_equipment(kind: Kind) -> bool:
+    return kind is not Kind.SOFT_FUNCTION
+
+
+def _fields(*names: str) -> frozenset[str]:
+    return frozenset(INSTRUMENTS.column(name).title for name in names)
+
+
+# A plant may require any field; asked is only the kind that can have it (common practice).
+_ASKED_OF: Final[tuple[tuple[frozenset[str], Callable[[Kind], bool]], ...]] = (
+    (_RANGE_TITLES, _has_a_range),
+    (
+        _fields("pid", "line", "equipment", "mounting", "fluid", "phase", "design_pressure", "design_temperature")
+        | {column.title for column in INSTRUMENTS.columns if column.title.startswith(("operating p", "operating t"))},
+        lambda kind: kind.process,
+    ),
+    (
+        _fields(
+            "signal",
+            "wires",
+            "io_type",
+            "io_address",
+            "card",
+            "system",
+            "power_supply",
+            "barrier",
+            "receiver_ohm",
+            "junction_box",
+            "terminals",
+            "cable",
+            "cable_type",
+            "cable_length_m",
+            "conductor",
+            "pair",
+        ),
+        _on_a_wire,
+    ),
+    (_fields("ex_marking", "certificate"), lambda kind: kind.electrical == "yes"),
+    (_fields("area", "area_classification", "ip_code", "maker", "model", "serial"), _of_equipment),
+    (_fields("failure_position"), lambda kind: kind in (Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE)),
+    (_fields("failure_direction"), lambda kind: kind in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR)),
+    (_fields("contact"), lambda kind: kind is Kind.SWITCH),
+    (_fields("set_pressure"), lambda kind: kind.measures == "set pressure"),
+    (
+        _fields("system_lrv", "system_urv", "system_range", "system_unit")
+        | {column.title for column in INSTRUMENTS.columns if column.title.startswith("operating value")},
+        lambda kind: kind in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.SOFT_FUNCTION),
+    ),
+)
+# What an element leaves to the transmitter that it is wired to.
+_TRANSMITTERS_OWN: Final = _RANGE_TITLES | next(titles for titles, of in _ASKED_OF if of is _on_a_wire)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Required:
+    """A field that the plant requires: its title, the record's fields, whether any sheet has a column for it."""
+
+    title: str
+    fields: tuple[str, ...]
+    column: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Asked:
+    """What is asked of one kind, and how all of it is looked up at once."""
+
+    required: tuple[_Required, ...]
+    values: Callable[[Instrument], tuple[Any, ...]]
+    unit: bool
+
+
+def _required(plant: Plant) -> tuple[_Required, ...]:
+    required: list[_Required] = []
+    for name in plant.data.required_fields or DEFAULT_REQUIRED:
         field = _TITLES.get(name.casefold())
-        if field is None:
+        # A row without a tag is found as such.
+        if field is None or field == "tag":
             continue
         column = INSTRUMENTS.column(field)
         fields = column.into if column.reads in (Reads.RANGE, Reads.TRIPLET) else (field,)
-        required.append((column.title, fields))
+        names = fields
+        if field == "range_unit":
+            # Units stand in cells or headings as often as in a column of their own.
+            names = ("range_unit", "lrv", "urv")
+        elif field == "kind":
+            names = ("kind", "device_type")
+        required.append(_Required(title=column.title, fields=fields, column=plant.has_column(*names)))
     return tuple(required)
 
 
-def _asked_of(title: str, installed: Installed, plant: Plant) -> bool:
-    kind = installed.kind
-    if title == "P&ID":
-        return kind is not None and kind.process
-    if title in ("range", "range unit", "LRV", "URV"):
-        if kind is None or kind.measures != "yes" or kind in _MEASURES_NO_RANGE:
-            return False
-        return not (kind is Kind.ELEMENT and _transmitter(installed, plant) is not None)
-    return True
+def _asked(kind: Kind | None, plant: Plant) -> _Asked:
+    plans: dict[Kind | None, _Asked] = plant.once("fields asked of each kind", lambda plant: {})
+    plan = plans.get(kind)
+    if plan is None:
+        every: tuple[_Required, ...] = plant.once("required fields", _required)
+        asked = tuple(each for each in every if _is_asked(each.title, kind))
+        names = [name for each in asked if each.title not in ("range unit", "kind") for name in each.fields]
+        plan = plans[kind] = _Asked(
+            required=asked,
+            # Two names that are never blank let it always give a tuple.
+            values=attrgetter("unread", "unitless", *names),
+            unit=any(each.title == "range unit" for each in asked),
+        )
+    return plan
 
 
-def _transmitter(installed: Installed, plant: Plant) -> Installed | None:
+def _is_asked(title: str, kind: Kind | None) -> bool:
+    if title == "kind":
+        return kind is None
+    return all(kind is not None and of(kind) for titles, of in _ASKED_OF if title in titles)
+
+
+def _has_unit(record: Instrument) -> bool:
+    if record.range_unit is not None:
+        return True
+    return any(end is not None and end.unit is not None for end in (record.lrv, record.urv))
+
+
+def _blank(required: _Required, installed: Installed) -> tuple[str, ...]:
+    """Return the fields that are blank, but for those that another rule speaks of."""
+    record = installed.record
+    if required.title == "kind":
+        # The kind is the device type's, where one is named; if it is not listed, that is the cause.
+        return () if record.kind_written or record.device_type else ("kind",)
+    if required.title == "range unit":
+        lost = record.unitless.keys() | record.unread
+        return () if _has_unit(record) or {"lrv", "urv", "range_unit"} & lost else ("range_unit",)
+    return tuple(
+        field
+        for field in required.fields
+        if getattr(record, field) is None
+        and field not in record.unread
+        and field not in record.unitless
+        and record.blanks.get(field) != SHARED_CELL
+    )
+
+
+# The reader's reason for what one device of a cell with several tags cannot have.
+SHARED_CELL: Final = "shared cell"
+
+
+def _leaves_to_transmitter(installed: Installed, plant: Plant) -> bool:
+    """Whether its range and wiring are its transmitter's, or it is found to have no transmitter."""
+    if installed.kind is not Kind.ELEMENT:
+        return False
     loop = plant.loop_of(installed)
-    return transmitter_of(installed, loop.members) if loop is not None else None
-
-
-def _filled(installed: Installed, title: str, fields: tuple[str, ...]) -> bool:
-    record = installed.record
-    if title == "kind":
-        return installed.kind is not None or bool(record.kind_written)
-    if title == "range unit":
-        quantities = (record.lrv, record.urv)
-        return record.range_unit is not None or any(each is not None and each.unit for each in quantities)
-    return all(getattr(record, field) is not None for field in fields)
-
-
-def _excused(installed: Installed, title: str, fields: tuple[str, ...]) -> bool:
-    """Whether another rule speaks of it: an unread cell, a number without its unit, a row without a tag."""
-    record = installed.record
-    if title == "tag":
+    if loop is not None and transmitter_of(installed, loop.members) is not None:
         return True
-    if title == "range unit" and ({"lrv", "urv"} & (record.unitless.keys() | record.unread)):
-        return True
-    return any(field in record.unread or field in record.unitless for field in fields)
-
-
-def _column_there(title: str, fields: tuple[str, ...], plant: Plant) -> bool:
-    if title == "kind":
-        return True
-    if title == "range unit":
-        # Units stand in cells or headings as often as in a column of their own.
-        return plant.has_column("range_unit", "lrv", "urv")
-    return plant.has_column(*fields)
+    return isinstance(alone(installed, plant), Found)
 
 
 def _required_column_absent(plant: Plant) -> Verdict:
-    absent: list[str] = []
-    asking = 0
-    for title, fields in _required(plant):
-        if _column_there(title, fields, plant):
-            continue
-        count = sum(1 for each in plant.live if not each.equipment_tag and _asked_of(title, each, plant))
-        if count:
-            absent.append(title)
-            asking = max(asking, count)
+    every: tuple[_Required, ...] = plant.once("required fields", _required)
+    absent = [each for each in every if not each.column]
     if not absent:
         return None
+    counts: Counter[str] = Counter()
+    for each in plant.live:
+        if not each.equipment_tag:
+            counts.update(
+                required.title for required in absent if _is_asked(required.title, each.kind) and _blank(required, each)
+            )
+    lacking = [each for each in absent if counts[each.title]]
+    if not lacking:
+        return None
     return Found(
-        values={"columns": ", ".join(absent), "count": asking},
-        fields=tuple(_TITLES[title.casefold()] for title in absent),
-        message="no sheet has a column for {columns}; {count} instruments need it",
+        values={"columns": ", ".join(f"{each.title} ({_instruments(counts[each.title])})" for each in lacking)},
+        fields=tuple(field for each in lacking for field in each.fields),
+        message="no sheet has a column for {columns}",
         found="no such column",
-        wanted=", ".join(absent),
+        wanted=", ".join(each.title for each in lacking),
         stops_rows=False,
     )
+
+
+def _instruments(count: int) -> str:
+    return f"{count} instrument{'' if count == 1 else 's'}"
+
+
+def _no_equipment(installed: Installed, plant: Plant) -> bool:
+    return not installed.equipment_tag
 
 
 @rule(
     "DAT01",
     severity=Severity.GAP,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: not installed.equipment_tag,
+    applies=_no_equipment,
     whole=_required_column_absent,
     message="required and blank: {fields}",
     basis="the plant's required fields; by default tag, service, kind, P&ID, range and unit (common practice)",
@@ -133,36 +247,46 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
     >>> said("DAT01", [{**row, "service": ""}, {**row, "tag": "PT-2"}])
     ['PT-1: required and blank: service']
     """
-    required: tuple[tuple[str, tuple[str, ...]], ...] = plant.once("required fields", _required)
+    record, kind = installed.record, installed.kind
+    asked = _asked(kind, plant)
+    if kind is not None and None not in asked.values(record) and (not asked.unit or _has_unit(record)):
+        return None
     blank: list[str] = []
     shown: list[str] = []
-    for title, fields in required:
-        if _filled(installed, title, fields) or not _asked_of(title, installed, plant):
+    absent: list[str] = []
+    leaves = None
+    for required in asked.required:
+        missing = _blank(required, installed)
+        if not missing:
             continue
-        if _excused(installed, title, fields) or not _column_there(title, fields, plant):
+        if kind is Kind.ELEMENT and required.title in _TRANSMITTERS_OWN:
+            if leaves is None:
+                leaves = _leaves_to_transmitter(installed, plant)
+            if leaves:
+                continue
+        if not required.column:
+            absent.append(required.title)
             continue
-        blank.append(_TITLES[title.casefold()])
-        reason = next(
-            (installed.record.blanks[each] for each in fields if each in installed.record.blanks), ""
-        )
+        whole = len(missing) == len(required.fields)
+        reason = next((record.blanks[field] for field in missing if field in record.blanks), "")
+        title = required.title if whole else ", ".join(title_of(field) for field in missing)
+        blank.extend(missing)
         shown.append(f"{title} ({reason})" if reason else title)
     if not blank:
-        return None
-    return Found(
-        values={"fields": ", ".join(shown)}, fields=tuple(blank), found="blank", wanted=", ".join(shown)
-    )
+        return Unchecked(*absent) if absent else None
+    return Found(values={"fields": ", ".join(shown)}, fields=tuple(blank), found="blank", wanted=", ".join(shown))
 
 
 def _no_line_or_equipment_column(plant: Plant) -> Verdict:
     if plant.has_column("line", "equipment"):
         return None
-    count = sum(1 for each in plant.live if _on_the_process(each, plant))
+    count = sum(1 for each in plant.live if each.kind is not None and _on_the_process(each, plant))
     if not count:
         return None
     return Found(
-        values={"count": count},
+        values={"count": f"{_instruments(count)} touch{'es' if count == 1 else ''}"},
         fields=("line", "equipment"),
-        message="no sheet has a column for line or equipment; {count} instruments touch the process",
+        message="no sheet has a column for line or equipment; {count} the process",
         found="no such column",
         wanted="line or equipment",
     )
@@ -170,9 +294,9 @@ def _no_line_or_equipment_column(plant: Plant) -> Verdict:
 
 def _on_the_process(installed: Installed, plant: Plant) -> bool:
     kind = installed.kind
-    if kind is None or installed.equipment_tag or kind is Kind.SOLENOID:
-        return False
-    if kind is Kind.SWITCH and installed.letters[:1] == "Z":
+    if kind is None:
+        return not installed.equipment_tag
+    if not kind.process or installed.equipment_tag:
         return False
     return touches_process(kind, installed.letters)
 
@@ -183,7 +307,7 @@ def _on_the_process(installed: Installed, plant: Plant) -> bool:
     on=Subject.INSTRUMENT,
     applies=_on_the_process,
     whole=_no_line_or_equipment_column,
-    message="a {kind} that is on neither a line nor equipment",
+    message="{kind} that is on neither a line nor equipment",
     basis="common practice",
 )
 def on_no_line(installed: Installed, plant: Plant) -> Verdict:
@@ -205,84 +329,138 @@ def on_no_line(installed: Installed, plant: Plant) -> Verdict:
     if unread:
         return Unchecked(*(title_of(field) for field in sorted(unread)))
     kind = installed.kind
+    if kind is None:
+        return Unchecked("kind")
+    reason = record.blanks.get("line") or record.blanks.get("equipment")
     return Found(
-        values={"kind": kind.value if kind else ""},
+        values={"kind": kind.with_article},
         fields=("line", "equipment"),
-        found="blank",
+        found=f"blank ({reason})" if reason else "blank",
         wanted="line or equipment",
     )
 
 
 # ------------------------------------------------------------------------------------------- units and cells
 
+_ORDER: Final[Mapping[str, int]] = {
+    column.field: number for number, column in enumerate((*INSTRUMENTS.columns, *DEVICE_TYPES.columns))
+}
+_UNIT_FROM: Final[Mapping[str, str]] = {
+    column.field: column.unit_from[0] for column in (*INSTRUMENTS.columns, *DEVICE_TYPES.columns) if column.unit_from
+}
+_OWN_FIELDS: Final = frozenset(DeviceType.__dataclass_fields__) - frozenset(Instrument.__dataclass_fields__)
 
-def _columns_without_unit(plant: Plant) -> dict[tuple[int, str], tuple[Record, int]]:
-    """Return the columns of which every filled cell lacks its unit: place and field, an example and a count."""
+
+def _in_order(fields: Iterable[str]) -> list[str]:
+    return sorted(fields, key=lambda field: (_ORDER.get(field, len(_ORDER)), field))
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Unitless:
+    """Where units are missing: whole columns by sheet and field, and what is wrong with them."""
+
+    columns: frozenset[tuple[int, str]]
+    found: tuple[Found, ...]
+
+
+def _index_rows(plant: Plant) -> Iterator[Instrument]:
+    records = plant.lists.records
+    yield from records.get("Instruments") or records.get("IO list", ())
+
+
+def _unitless(plant: Plant) -> _Unitless:
+    """Find the columns of which no filled cell has a unit, and the entries of the catalogue that lack one."""
     lacking: dict[tuple[int, str], list[Record]] = defaultdict(list)
-    filled: set[tuple[int, str]] = set()
-    records: list[Record] = [row for each in plant.instruments for row in (each.record, *each.signals)]
-    records.extend(plant.types.values())
-    for record in dict.fromkeys(map(_Same, records)):
-        origin = record.record.origin
-        if origin is None:
-            continue
-        for field in record.record.unitless:
-            lacking[(id(origin.place), field)].append(record.record)
-    wanted: dict[int, set[str]] = defaultdict(set)
+    types: tuple[DeviceType, ...] = plant.lists.records.get("Device types", ())
+    for record in (*_index_rows(plant), *types):
+        if record.unitless and record.origin is not None:
+            for field in record.unitless:
+                lacking[(id(record.origin.place), field)].append(record)
+    if not lacking:
+        return _Unitless(columns=frozenset(), found=())
+    asked: dict[int, list[str]] = defaultdict(list)
     for place, field in lacking:
-        wanted[place].add(field)
-    for each in records:
-        if each.origin is None:
+        asked[place].append(field)
+    filled: set[tuple[int, str]] = set()
+    for record in (*_index_rows(plant), *types):
+        if record.origin is None:
             continue
-        place = id(each.origin.place)
-        for field in wanted.get(place, ()):
-            if getattr(each, field, None) is not None:
+        place = id(record.origin.place)
+        for field in asked.get(place, ()):
+            owner = record.own if field in _OWN_FIELDS and isinstance(record, Instrument) else record
+            if getattr(owner, field, None) is not None:
                 filled.add((place, field))
-    return {
-        key: (found[0], len(found)) for key, found in lacking.items() if key not in filled and len(found) > 1
-    }
+    whole = {key: rows for key, rows in lacking.items() if key not in filled and len(rows) > 1}
+    return _Unitless(
+        columns=frozenset(whole),
+        found=(*_whole_columns(whole), *_catalogue_entries(types, whole.keys())),
+    )
 
 
-class _Same:
-    """A record compared by identity."""
-
-    __slots__ = ("record",)
-
-    def __init__(self, record: Record) -> None:
-        self.record = record
-
-    def __hash__(self) -> int:
-        return id(self.record)
-
-    def __eq__(self, other: object) -> bool:
-        return isinstance(other, _Same) and other.record is self.record
-
-
-def _whole_column_without_unit(plant: Plant) -> Verdict:
+def _whole_columns(whole: Mapping[tuple[int, str], list[Record]]) -> list[Found]:
+    """Report whole columns, together those that take their unit from one place: they lack it for one cause."""
+    ranges = {place for place, field in whole if _UNIT_FROM.get(field) == "range_unit"}
+    groups: dict[str, list[tuple[int, str]]] = defaultdict(list)
+    for place, field in whole:
+        source = _UNIT_FROM.get(field, field)
+        if source == "settings_unit" and place in ranges:
+            source = "range_unit"
+        owner = "type." if isinstance(whole[place, field][0], DeviceType) else ""
+        groups[f"{owner}{source}"].append((place, field))
     found: list[Found] = []
-    columns = plant.once("columns without unit", _columns_without_unit)
-    for (_, field), (record, count) in columns.items():
-        owner = "type." if isinstance(record, DeviceType) else ""
-        title = title_of(f"{owner}{field}")
+    for source, keys in groups.items():
+        owner = "type." if source.startswith("type.") else ""
+        fields = _in_order({field for _, field in keys})
+        example = whole[next(key for key in keys if key[1] == fields[0])][0]
         found.append(
             Found(
-                values={"title": title, "count": count},
-                fields=(f"{owner}{field}",),
-                part=title,
-                message="no value of {title} has a unit, in its cell, its heading or a unit column ({count} values)",
-                found=f"{record.unitless[field]} without unit",
+                values={
+                    "titles": ", ".join(title_of(f"{owner}{field}") for field in fields),
+                    "count": sum(len(whole[key]) for key in keys),
+                },
+                fields=tuple(f"{owner}{field}" for field in fields),
+                part=title_of(source),
+                message="no value of {titles} has a unit, in its cell, its heading or a unit column ({count} values)",
+                found=f"{example.unitless[fields[0]]} without unit",
                 wanted="a unit in the heading, or a unit column",
-                cells=record.cells(field),
+                cells=tuple(cell for key in keys for cell in whole[key][0].cells(key[1])),
                 stops_rows=False,
             )
         )
-    return sorted(found, key=lambda each: each.part)
+    return sorted(found, key=lambda each: (each.fields[0].startswith("type."), each.part))
+
+
+def _catalogue_entries(types: Iterable[DeviceType], whole: Iterable[tuple[int, str]]) -> Iterator[Found]:
+    """Report an entry of the catalogue itself, once, however many instruments are of its type."""
+    columns = frozenset(whole)
+    for entry in types:
+        if not entry.unitless or entry.origin is None:
+            continue
+        fields = [f for f in _in_order(entry.unitless) if (id(entry.origin.place), f) not in columns]
+        if fields:
+            values = ", ".join(f"{title_of(f'type.{field}')} {entry.unitless[field]}" for field in fields)
+            yield Found(
+                values={"values": values},
+                fields=tuple(f"type.{field}" for field in fields),
+                message="",
+                subject=entry.code or "",
+                found=values,
+                wanted="a unit",
+                cells=tuple(cell for field in fields for cell in entry.cells(field)),
+                stops_rows=False,
+            )
+
+
+def _whole_column_without_unit(plant: Plant) -> Verdict:
+    unitless: _Unitless = plant.once("columns without unit", _unitless)
+    return unitless.found or None
 
 
 @rule(
     "DAT05",
     severity=Severity.FAULT,
     on=Subject.INSTRUMENT,
+    applies=_no_equipment,
     whole=_whole_column_without_unit,
     message="{values} without a unit in cell, heading or unit column",
     basis="common practice",
@@ -300,59 +478,101 @@ def number_without_unit(installed: Installed, plant: Plant) -> Verdict:
     >>> said("DAT05", rows)
     ['PT-1: LRV 0, URV 10 without a unit in cell, heading or unit column']
     """
-    columns = plant.once("columns without unit", _columns_without_unit)
-    values: list[str] = []
-    fields: list[str] = []
-    for record, owner in (
-        (installed.record, ""),
-        (installed.record.own, "type."),
-        (installed.listed_type, "type."),
-    ):
-        if record is None or record.origin is None:
-            continue
-        for field, text in record.unitless.items():
-            if (id(record.origin.place), field) not in columns:
-                values.append(f"{title_of(owner + field)} {text}")
-                fields.append(owner + field)
-    if not values:
+    record = installed.record
+    if not record.unitless:
         return None
-    return Found(
-        values={"values": ", ".join(values)},
-        fields=tuple(fields),
-        found=", ".join(values),
-        wanted="a unit",
+    unitless: _Unitless = plant.once("columns without unit", _unitless)
+    fields: list[str] = []
+    in_columns: list[str] = []
+    for field in _in_order(record.unitless):
+        origin = record.elsewhere.get(field) or record.origin
+        whole = origin is not None and (id(origin.place), field) in unitless.columns
+        (in_columns if whole else fields).append(field)
+    if not fields:
+        return Unchecked(*(title_of(field) for field in in_columns))
+    values = ", ".join(f"{title_of(field)} {record.unitless[field]}" for field in fields)
+    return Found(values={"values": values}, fields=tuple(fields), found=values, wanted="a unit")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Unread:
+    """The cells that cannot be read: by instrument, and those that are no single instrument's."""
+
+    by_instrument: Mapping[int, tuple[CellProblem, ...]]
+    elsewhere: tuple[CellProblem, ...]
+
+
+def _unread_cells(plant: Plant) -> _Unread:
+    problems = _once_a_column(plant)
+    if not problems:
+        return _Unread(by_instrument={}, elsewhere=())
+    owners: dict[tuple[str, str, int], Installed] = {}
+    for each in plant.instruments:
+        for key in _rows_of(each):
+            if key not in owners or (each.live and not owners[key].live):
+                owners[key] = each
+    index = {(row.origin.place.file, row.origin.place.sheet) for row in _index_rows(plant) if row.origin is not None}
+    by_instrument: dict[int, list[CellProblem]] = defaultdict(list)
+    elsewhere: list[CellProblem] = []
+    for problem in problems:
+        cell = problem.cell
+        owner = owners.get((cell.file, cell.sheet, cell.row))
+        if owner is None and (cell.file, cell.sheet) in index and problem.subject:
+            # The row agrees with another of its tag, which speaks for both.
+            owner = next(iter(plant.by_tag(problem.subject)), None)
+        if problem.whole_column or owner is None:
+            elsewhere.append(problem)
+        else:
+            by_instrument[id(owner)].append(problem)
+    return _Unread(
+        by_instrument={key: tuple(found) for key, found in by_instrument.items()}, elsewhere=tuple(elsewhere)
     )
 
 
-def _problems_by_row(plant: Plant) -> dict[tuple[str, str, int], list[CellProblem]]:
-    by_row: dict[tuple[str, str, int], list[CellProblem]] = defaultdict(list)
-    for problem in plant.problems:
-        if not problem.whole_column:
-            by_row[(problem.cell.file, problem.cell.sheet, problem.cell.row)].append(problem)
-    return by_row
-
-
 def _rows_of(installed: Installed) -> Iterator[tuple[str, str, int]]:
-    for row in {id(each): each for each in (installed.record, *installed.signals)}.values():
+    for row in (installed.record, *installed.signals):
         if row.origin is not None:
             yield (row.origin.place.file, row.origin.place.sheet, row.origin.row)
             for origin in row.elsewhere.values():
                 yield (origin.place.file, origin.place.sheet, origin.row)
 
 
+def _once_a_column(plant: Plant) -> list[CellProblem]:
+    """Return the unread cells; those of a column that cannot be read at all as one."""
+    problems = list(plant.lists.problems)
+    columns: dict[tuple[str, str, int], list[CellProblem]] = defaultdict(list)
+    for problem in plant.more_problems:
+        columns[(problem.cell.file, problem.cell.sheet, problem.cell.column)].append(problem)
+    for found in columns.values():
+        cells = list({problem.cell: problem for problem in found}.values())
+        filled = _filled_cells(plant, cells[0])
+        if len(cells) > 1 and len(cells) == len(filled):
+            first = min(cells, key=lambda problem: problem.cell)
+            problems.append(replace(first, subject="", whole_column=True, cells_concerned=len(cells)))
+        else:
+            problems.extend(cells)
+    return problems
+
+
+def _filled_cells(plant: Plant, problem: CellProblem) -> set[Cell]:
+    return {
+        cell
+        for row in _index_rows(plant)
+        if getattr(row, problem.field, None) is not None
+        for cell in row.cells(problem.field)
+        if (cell.file, cell.sheet, cell.column) == (problem.cell.file, problem.cell.sheet, problem.cell.column)
+    }
+
+
 def _unread_elsewhere(plant: Plant) -> Verdict:
     """Whole columns, and cells of sheets that hold no instruments."""
-    own = {key for each in plant.instruments for key in _rows_of(each)}
-    found = [
-        _unread(problem, whole=problem.whole_column)
-        for problem in plant.problems
-        if problem.whole_column or (problem.cell.file, problem.cell.sheet, problem.cell.row) not in own
-    ]
-    return found or None
+    unread: _Unread = plant.once("unread cells", _unread_cells)
+    return [_unread(problem) for problem in unread.elsewhere] or None
 
 
-def _unread(problem: CellProblem, *, whole: bool) -> Found:
-    message = "{title}: '{text}' cannot be read: {reason}"
+def _unread(problem: CellProblem, record: Instrument | None = None) -> Found:
+    whole = problem.whole_column
+    message = ""
     if whole:
         message = "{title}: none of its {count} cells can be read, such as '{text}': {reason}"
     return Found(
@@ -365,19 +585,48 @@ def _unread(problem: CellProblem, *, whole: bool) -> Found:
         fields=(),
         part=problem.title,
         message=message,
-        subject="" if whole else problem.subject,
+        subject="" if whole or record is not None else problem.subject,
         found=problem.text,
         wanted=" or ".join(problem.readings),
-        fixes=tuple(Fix(text=f"{problem.title} {reading}") for reading in problem.readings),
+        fixes=tuple(
+            Fix(text=f"{problem.title} {reading}", change={} if record is None else _as_read(problem, reading, record))
+            for reading in problem.readings
+        ),
         cells=(problem.cell,),
         stops_rows=False,
     )
+
+
+_NUMBER = re.compile(r"[-+]?[0-9][0-9.,' ]*")
+
+
+def _as_read(problem: CellProblem, reading: str, record: Instrument) -> dict[str, str]:
+    """Return the change that writes one reading into the cell, where it can stand there with its unit."""
+    field = _TITLES.get(problem.title.casefold())
+    if field is None:
+        return {}
+    column = INSTRUMENTS.column(field)
+    texts = [reading]
+    numbers = _NUMBER.findall(problem.text)
+    if len(numbers) == 1 and _NUMBER.fullmatch(reading):
+        texts.insert(0, problem.text.replace(numbers[0].strip(), reading))
+    if record.range_unit is not None and "range_unit" in column.unit_from:
+        texts.append(f"{reading} {unit_label(record.range_unit)}")
+    for text in texts:
+        try:
+            value = value_of(column, text)
+        except CannotStand:
+            continue
+        if value is not None and not (isinstance(value, Quantity) and value.unit is None):
+            return {column.title: text}
+    return {}
 
 
 @rule(
     "DAT09",
     severity=Severity.GAP,
     on=Subject.INSTRUMENT,
+    applies=_no_equipment,
     whole=_unread_elsewhere,
     message="{title}: '{text}' cannot be read: {reason}",
     basis="the reader's closed tables",
@@ -395,427 +644,8 @@ def unread_cell(installed: Installed, plant: Plant) -> Verdict:
     >>> [line[:37] for line in said("DAT09", rows)]
     ["AIT-1: range unit: 'Hazen' cannot be "]
     """
-    by_row: dict[tuple[str, str, int], list[CellProblem]] = plant.once(
-        "unread cells by row", _problems_by_row
-    )
-    if not by_row:
+    unread: _Unread = plant.once("unread cells", _unread_cells)
+    problems = unread.by_instrument.get(id(installed))
+    if problems is None:
         return None
-    found: list[Found] = []
-    for key in dict.fromkeys(_rows_of(installed)):
-        found.extend(_unread(problem, whole=False) for problem in by_row.get(key, ()))
-    return [_without_subject(each) for each in found] or None
-
-
-def _without_subject(found: Found) -> Found:
-    from dataclasses import replace
-
-    return replace(found, subject="")
-
-
-# ------------------------------------------------------------------------------------------------ what is alone
-
-
-def _element_or_well(installed: Installed, plant: Plant) -> bool:
-    kind = installed.kind
-    if installed.equipment_tag:
-        return False
-    if kind is Kind.ELEMENT:
-        return True
-    return kind is Kind.PRIMARY_ELEMENT and (_is_well(installed) or installed.letters[-1:] == "E")
-
-
-def _is_well(installed: Installed) -> bool:
-    return installed.letters[:1] == "T" and installed.letters[-1:] == "W"
-
-
-_INDICATES = frozenset({Kind.GAUGE, Kind.INDICATOR, Kind.GLASS})
-_TAKES = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR, Kind.SWITCH})
-
-
-@rule(
-    "DAT06",
-    severity=Severity.FAULT,
-    on=Subject.INSTRUMENT,
-    applies=_element_or_well,
-    needs=("loop",),
-    message="{what} alone in its loop {loop}: {lacks}",
-    basis="common practice",
-)
-def element_alone(installed: Installed, plant: Plant) -> Verdict:
-    """An element with neither transmitter nor an input of its own in its loop, or a well without an element.
-
-    Why it matters: a sensor that goes nowhere was forgotten at its other end: no channel, no cable.
-
-    What to do: add the transmitter or the input, or correct the number of one of the two. Local
-    indication counts.
-
-    >>> from validation.example import said
-    >>> said("DAT06", [{"tag": "TE-1", "I/O type": ""}, {"tag": "TE-2", "I/O type": "RTD"}])
-    ['TE-1: an element alone in its loop T-1: it has neither a transmitter nor an input of its own']
-    """
-    loop = plant.loop_of(installed)
-    others = [each for each in loop.members if each is not installed] if loop is not None else []
-    if _is_well(installed):
-        if any(each.kind in _TAKES | _INDICATES | {Kind.ELEMENT} or each.measuring_point for each in others):
-            return None
-        return Found(
-            values={"what": "a well", "loop": installed.loop, "lacks": "it has no element"},
-            fields=("tag", "loop"),
-            found="no element",
-            wanted="an element, a transmitter or a thermometer",
-        )
-    if any(row.io_type or row.io_address or row.card for row in installed.signals):
-        return None
-    if any(each.kind in _TAKES | _INDICATES or each.measuring_point for each in others):
-        return None
-    if {"io_type", "io_address"} & installed.record.unread:
-        return Unchecked("I/O type")
-    if not plant.has_column("io_type", "io_address", "card"):
-        # The list does not say what is wired to what; a transmitter is still seen by its tag.
-        return Unchecked("I/O type", "I/O address")
-    return Found(
-        values={
-            "what": "an element",
-            "loop": installed.loop,
-            "lacks": "it has neither a transmitter nor an input of its own",
-        },
-        fields=("tag", "io_type"),
-        found="no transmitter, no input",
-        wanted="a transmitter, an input or a local indication",
-    )
-
-
-_FINAL = frozenset(
-    {Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID, Kind.REGULATOR}
-)
-_TAG_IN_TEXT = re.compile(r"[A-Za-z0-9][A-Za-z0-9\-./]{2,20}")
-
-
-def _is_controller(installed: Installed) -> bool:
-    letters = installed.letters
-    if "C" not in letters[1:] or installed.kind in _FINAL or installed.kind is Kind.SWITCH:
-        return False
-    if installed.tag is not None and installed.tag.code is not None:
-        return False
-    return any(function.startswith("C") for function in read_letters(letters).functions)
-
-
-def _measures(installed: Installed) -> bool:
-    return installed.measuring_point or (
-        installed.kind is not None and installed.kind.measures == "yes" and installed.kind.wired != "no"
-    )
-
-
-def _acts(installed: Installed) -> bool:
-    return installed.kind in _FINAL or any(
-        name_key(row.io_type).startswith(("ao", "isao")) for row in installed.signals if row.io_type
-    )
-
-
-def _names_another_controller(loop: Loop, controllers: list[Installed], plant: Plant) -> bool:
-    for circuit in loop.circuits:
-        parent = circuit.row.parent_loop if circuit.row is not None else None
-        if parent:
-            return True
-    for row in plant.loop_rows:
-        if row.parent_loop and name_key(row.number) == name_key(loop.name):
-            return True
-    for controller in controllers:
-        for text in _TAG_IN_TEXT.findall(controller.record.remarks or ""):
-            for named in plant.by_tag(text):
-                if named not in loop.members and _is_controller(named):
-                    return True
-    return False
-
-
-def _has_controller(loop: Loop, plant: Plant) -> bool:
-    return any(_is_controller(each) for each in loop.members)
-
-
-@rule(
-    "DAT07",
-    severity=Severity.FAULT,
-    on=Subject.LOOP,
-    applies=_has_controller,
-    message="{controller} has {lacks} in its loop",
-    basis="common practice",
-)
-def loop_not_whole(loop: Loop, plant: Plant) -> Verdict:
-    """A loop with a controller that has no measurement or no final element.
-
-    Why it matters: a controller without either controls nothing; one of them is missing from the
-    list, or carries another loop's number.
-
-    What to do: add what is missing or correct its loop. A controller that names another in its
-    remarks or as its parent loop needs no final element; a hand controller needs no measurement.
-
-    >>> from validation.example import said
-    >>> said("DAT07", [{"tag": "FIC-1"}, {"tag": "FT-1"}])
-    ['F-1: FIC-1 has no final element in its loop']
-    >>> said("DAT07", [{"tag": "FIC-1"}, {"tag": "FT-1"}, {"tag": "FV-1"}])
-    []
-    """
-    controllers = [each for each in loop.members if _is_controller(each)]
-    lacks: list[str] = []
-    # Hand and time are their own measurement.
-    by_hand = all(each.letters[:1] in "HK" for each in controllers)
-    if not by_hand and not any(_measures(each) for each in loop.members):
-        lacks.append("no measurement")
-    if not any(_acts(each) for each in loop.members) and not _names_another_controller(
-        loop, controllers, plant
-    ):
-        lacks.append("no final element")
-    if not lacks:
-        return None
-    return Found(
-        values={"controller": ", ".join(each.name for each in controllers), "lacks": " and ".join(lacks)},
-        fields=("tag",),
-        found=" and ".join(lacks),
-        wanted="measurement, controller and final element",
-    )
-
-
-# --------------------------------------------------------------------------------------- names and statements
-
-_NO_NAME = re.compile(
-    r"\b(?:loop|2[\s-]?wire|self|internal|integral|card|system|mains|battery|solar|ups|instrument air|air|local)\b",
-    re.IGNORECASE,
-)
-
-
-def _named(installed: Installed, plant: Plant) -> Iterator[tuple[str, str, str, str]]:
-    """Give each name that the row or its circuits use: title, the name, the sheet it is listed in, the field."""
-    record = installed.record
-    if record.device_type:
-        yield "device type", record.device_type, "Device types", "device_type"
-    if record.area and installed.area is None and not installed.unclassified:
-        yield "area", record.area, "Areas", "area"
-    elif record.area and installed.area is not None and not installed.area.from_row_cell:
-        yield "area", record.area, "Areas", "area"
-    circuits = plant.circuits_of(installed)
-    own = [circuit for circuit in circuits if circuit.device is installed]
-    rows = installed.signals or (record,)
-    for field, title in (("barrier", "barrier"), ("card", "card")):
-        names = dict.fromkeys(
-            [getattr(row, field) for row in rows] + [getattr(circuit.row, field, None) for circuit in own]
-        )
-        for name in names:
-            if name:
-                yield title, name, "Device types", field
-    for name in dict.fromkeys(row.power_supply for row in rows):
-        if name and volts_in(name) is None and not _NO_NAME.search(name):
-            yield "power supply", name, "Device types", "power_supply"
-    for row in rows:
-        for name in re.split(r"[,;\n]", row.cable or ""):
-            if name.strip():
-                yield "cable", name.strip(), "Cables", "cable"
-    names = dict.fromkeys(
-        [row.cable_type for row in rows] + [circuit.row.cable_type for circuit in own if circuit.row]
-    )
-    for name in names:
-        if name and read_conductor_size(name) is None:
-            yield "cable type", name, "Cable types", "cable_type"
-
-
-def _listed(sheet: str, name: str, plant: Plant) -> tuple[bool, bool]:
-    """Return whether the name is listed, and whether two different entries have it."""
-    key = name_key(name)
-    if sheet == "Device types":
-        return key in plant.types or bool(plant.by_tag(name)), key in plant.types_twice
-    if sheet == "Areas":
-        return key in plant.areas, key in plant.areas_twice
-    if sheet == "Cables":
-        return key in plant.cables, key in plant.cables_twice
-    return key in plant.cable_types, key in plant.cable_types_twice
-
-
-def _absent_sheets(plant: Plant) -> dict[str, tuple[str, int]]:
-    absent: dict[str, tuple[str, int]] = {}
-    for each in plant.live:
-        for title, name, sheet, _ in _named(each, plant):
-            if plant.has_sheet(sheet) or _listed(sheet, name, plant)[0]:
-                continue
-            first = absent.get(sheet)
-            absent[sheet] = (first[0], first[1] + 1) if first else (f"{title} {name}", 1)
-    return absent
-
-
-def _sheet_absent(plant: Plant) -> Verdict:
-    absent = plant.once("sheets that are named and absent", _absent_sheets)
-    if not absent:
-        return None
-    details = "; ".join(
-        f"{sheet}: {count} names such as {first}" for sheet, (first, count) in sorted(absent.items())
-    )
-    return Found(
-        values={"details": details},
-        fields=(),
-        part=", ".join(sorted(absent)),
-        message="the list names what no sheet describes: {details}",
-        found="no such sheet",
-        wanted=", ".join(sorted(absent)),
-        stops_rows=False,
-    )
-
-
-@rule(
-    "DAT10",
-    severity=Severity.FAULT,
-    on=Subject.INSTRUMENT,
-    whole=_sheet_absent,
-    message="{title} {name} is not listed on {sheet}",
-    basis="common practice",
-)
-def name_not_listed(installed: Installed, plant: Plant) -> Verdict:
-    """A device type, area, barrier, card, supply, cable or cable type that is named and not listed.
-
-    Why it matters: every check that needs the entry is left out, in silence, if nobody says so.
-
-    What to do: correct the name, or list the entry. Two different entries with one name are no
-    entry either.
-
-    >>> from validation.example import said
-    >>> types = [{"code": "DP-30", "kind": "transmitter", "maximum V": "42"}]
-    >>> said("DAT10", [{"tag": "PT-1", "device type": "DP-3O"}], types=types)
-    ['PT-1: device type DP-3O is not listed on Device types']
-    >>> said("DAT10", [{"tag": "PT-1", "device type": "DP-30"}], types=types)
-    []
-    """
-    absent = plant.once("sheets that are named and absent", _absent_sheets)
-    found: list[Found] = []
-    for title, name, sheet, field in dict.fromkeys(_named(installed, plant)):
-        listed, twice = _listed(sheet, name, plant)
-        if (listed and not twice) or sheet in absent:
-            continue
-        nearest = _nearest(sheet, name, plant) if not listed else ()
-        found.append(
-            Found(
-                values={"title": title, "name": name, "sheet": sheet},
-                fields=(field,),
-                part=title,
-                message="{title} {name} is listed twice on {sheet}, with different figures" if twice else "",
-                found=name,
-                wanted=" or ".join(nearest),
-                fixes=tuple(
-                    Fix(
-                        text=f"{title} {each}",
-                        change={title: each} if getattr(installed.record, field) == name else {},
-                    )
-                    for each in nearest
-                ),
-            )
-        )
-    return found or None
-
-
-def _nearest(sheet: str, name: str, plant: Plant) -> tuple[str, ...]:
-    from rapidfuzz import fuzz, process
-
-    entries: dict[str, Any] = {
-        "Device types": plant.types,
-        "Areas": plant.areas,
-        "Cables": plant.cables,
-        "Cable types": plant.cable_types,
-    }[sheet]
-    codes = [getattr(entry, "code", None) or getattr(entry, "number", "") for entry in entries.values()]
-    likely = process.extract(name, codes, scorer=fuzz.ratio, limit=2, score_cutoff=70)
-    return tuple(code for code, _, _ in likely)
-
-
-_STATED_TWICE = ("ex_marking", "certificate", "signal", "wires")
-_LIMITS = tuple(
-    each
-    for each in DeviceType.__dataclass_fields__
-    if each not in Record.__dataclass_fields__
-    and each not in (*_STATED_TWICE, "code", "kind", "description", "maker", "model", "ip_code", "limit_unit")
-)
-
-
-@rule(
-    "DAT11",
-    severity=Severity.FAULT,
-    on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: installed.listed_type is not None,
-    message="{title}: the row says {row}, its device type {code} says {type}",
-    basis="common practice",
-)
-def row_against_type(installed: Installed, plant: Plant) -> Verdict:
-    """The row and its device type state different values for the same thing.
-
-    Why it matters: one of the two papers is out of date, or the wrong device was fitted. The row's
-    value is used.
-
-    What to do: correct whichever is wrong; name another device type if the row is right.
-
-    >>> from validation.example import said
-    >>> types = [{"code": "P1", "kind": "transmitter", "wires": "2", "LRL": "0 barg", "URL": "10 barg"}]
-    >>> said("DAT11", [{"tag": "PT-1", "device type": "P1", "wires": "4"}], types=types)
-    ['PT-1: wires: the row says 4, its device type P1 says 2']
-    >>> said("DAT11", [{"tag": "PT-1", "device type": "P1", "wires": "2"}], types=types)
-    []
-    """
-    listed = installed.listed_type
-    if listed is None:
-        return NotApplicable()
-    found: list[Found] = []
-    pairs: list[tuple[str, Any, Any]] = [
-        (field, getattr(installed.record, field), getattr(listed, field)) for field in _STATED_TWICE
-    ]
-    own = installed.record.own
-    if own is not None:
-        pairs.extend((field, getattr(own, field), getattr(listed, field)) for field in _LIMITS)
-    for field, row, entry in pairs:
-        if row is None or entry is None or _says_the_same(field, row, entry):
-            continue
-        name = field if field in _STATED_TWICE else f"type.{field}"
-        title = title_of(name)
-        found.append(
-            Found(
-                values={"title": title, "row": row, "type": entry, "code": listed.code},
-                fields=(field if field in _STATED_TWICE else field,),
-                part=title,
-                found=f"{row} on the row",
-                wanted=f"{entry} by the type, or the type's entry corrected",
-                fixes=(
-                    Fix(text=f"{title} {entry} on the row", change={title: _as_written(entry)}),
-                    Fix(text=f"{title} {row} on the device type"),
-                ),
-                cells=(*installed.record.cells(field), *listed.cells(field)),
-            )
-        )
-    return found or None
-
-
-def _as_written(value: Any) -> str:
-    if isinstance(value, bool):
-        return "yes" if value else "no"
-    return f"{value:g}" if isinstance(value, float) else str(value)
-
-
-def _says_the_same(field: str, row: Any, entry: Any) -> bool:
-    if same_value(row, entry):
-        return True
-    if field == "certificate":
-        return _letters_and_digits(row) == _letters_and_digits(entry)
-    if field == "signal":
-        one, other = signal_class(row), signal_class(entry)
-        return one is None or other is None or one == other
-    if field == "ex_marking":
-        return _marking_without_category(row) == _marking_without_category(entry)
-    return (
-        isinstance(row, float)
-        and isinstance(entry, float)
-        and abs(row - entry) <= 1e-9 * max(abs(row), abs(entry))
-    )
-
-
-def _letters_and_digits(text: str) -> str:
-    return "".join(letter for letter in text.casefold() if letter.isalnum())
-
-
-def _marking_without_category(text: str) -> Any:
-    marking = read_marking(text)
-    if not marking.readable:
-        return _letters_and_digits(text)
-    # The category says again what the EPL says; it may stand in one paper and not in the other.
-    return {name: value for name, value in marking.as_vector().items() if name != "atex"}
+    return [_unread(problem, installed.record) for problem in problems]

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import fields, replace
 
 from instruments.installed import Installed
 from instruments.kind import can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
 from instruments.letters import read_letters
+from instruments.record import Instrument, Record
 from instruments.tag import (
     TagReading,
     assembly_key,
@@ -20,6 +22,7 @@ from instruments.tag import (
     natural_key,
     nearest_fitting_tag,
     nearest_legal_letters,
+    normalise_tag,
     read_tag,
 )
 from instruments.unit import Unit
@@ -29,14 +32,31 @@ from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unch
 from validation.rule import Subject, rule, title_of
 
 TAG08_DISAGREEMENT_PERCENT = 20.0
+# Two or three rows are no column: there a share says nothing of how the list numbers its loops.
+TAG08_LEAST_ROWS = 10
 ISA = "ISA-5.1-2009, succession of letters (from memory)"
 FREE_TEXT = "free-text"
+
+
+def _no_equipment(installed: Installed, plant: Plant) -> bool:
+    return not installed.equipment_tag
+
+
+def _with_tag(installed: Installed, plant: Plant) -> bool:
+    return installed.tag is not None and not installed.equipment_tag
+
+
+# What a note or a section can hold too: no instrument's data.
+_WORDS_ONLY = frozenset({"service", "place", "remarks", "revision"})
+_NO_DATA = frozenset(each.name for each in fields(Record)) | {"tag_number", "tag_written", "tag_cell"}
+_DATA = tuple(each.name for each in fields(Instrument) if each.name not in _NO_DATA and each.name not in _WORDS_ONLY)
 
 
 @rule(
     "TAG01",
     severity=Severity.GAP,
     on=Subject.INSTRUMENT,
+    applies=_no_equipment,
     message="the row has instrument data and no tag",
     basis="common practice",
 )
@@ -51,30 +71,24 @@ def no_tag(installed: Installed, plant: Plant) -> Verdict:
     >>> said("TAG01", [{"tag": "", "service": "Feed flow", "LRV": "0 m3/h"}, {"tag": "FT-2", "service": "Feed"}])
     ['Instruments: Feed flow: the row has instrument data and no tag']
     """
-    if installed.record.tag:
+    record = installed.record
+    if record.tag:
         return None
-    return Found(fields=("tag",), found="no tag", wanted="a tag")
-
-
-def _with_tag(installed: Installed, plant: Plant) -> bool:
-    return installed.tag is not None and not installed.equipment_tag
-
-
-def _sharing(plant: Plant) -> Iterator[tuple[Installed, ...]]:
-    shared: dict[object, list[Installed]] = defaultdict(list)
-    for each in plant.live:
-        if each.tag is not None:
-            shared[match_key(each.tag)].append(each)
-    return (tuple(group) for group in shared.values() if len(group) > 1)
+    if "tag" in record.unread:
+        return Unchecked("tag")
+    if not record.unitless and not record.unread and all(getattr(record, name) is None for name in _DATA):
+        return NotApplicable("words alone: a section or a note")
+    reason = record.blanks.get("tag")
+    return Found(fields=("tag",), found=f"blank ({reason})" if reason else "blank", wanted="a tag")
 
 
 @rule(
     "TAG02",
     severity=Severity.FAULT,
     on=Subject.GROUP,
-    applies=lambda installed, plant: installed.tag is not None,
-    groups=_sharing,
-    message="{count} rows have the tag {tag} and disagree in {fields}: {details}",
+    applies=_with_tag,
+    groups=lambda plant: plant.sharing_a_tag(),
+    message="{count} rows have the tag {tag} and disagree in {details}",
     basis="ISA-5.1-2009: a tag is of one instrument (from memory)",
 )
 def one_tag_twice(group: tuple[Installed, ...], plant: Plant) -> Verdict:
@@ -99,13 +113,13 @@ def one_tag_twice(group: tuple[Installed, ...], plant: Plant) -> Verdict:
             names.update(dict.fromkeys(disagreements(one.record, other.record)))
     fields = tuple(names)
     details = "; ".join(
-        " / ".join(dict.fromkeys(_shown(each, name) for each in group if _shown(each, name)))
+        f"{title_of(name)}: {' / '.join(dict.fromkeys(filter(None, (_shown(each, name) for each in group))))}"
         for name in fields
     )
     cells = tuple(cell for each in group for name in ("tag", *fields) for cell in each.cells(name))
     return Found(
         values={
-            "count": len(group),
+            "count": sum(each.merged_rows for each in group),
             "tag": group[0].record.tag,
             "fields": ", ".join(title_of(name) for name in fields),
             "details": details,
@@ -120,26 +134,60 @@ def one_tag_twice(group: tuple[Installed, ...], plant: Plant) -> Verdict:
 def _shown(installed: Installed, name: str) -> str:
     owner, _, field = name.rpartition(".")
     value = getattr(installed.record.own if owner else installed.record, field, None)
-    return "" if value is None else str(value)
+    if value is None:
+        return ""
+    if isinstance(value, bool):
+        return "yes" if value else "no"
+    text = f"{value:g}" if isinstance(value, float) else str(value)
+    return text if len(text) <= 60 else f"{text[:59]}…"
 
 
 def _look_alikes(plant: Plant) -> Iterator[tuple[Installed, ...]]:
     alike: dict[object, list[Installed]] = defaultdict(list)
+    profile = plant.profile
     for each in plant.live:
-        if each.tag is not None:
-            alike[look_alike_key(each.tag, profile=plant.profile)].append(each)
+        reading = each.tag
+        if reading is None or each.equipment_tag:
+            continue
+        if reading.parsed and not reading.suffix and reading.legal != "illegal":
+            prefix = reading.prefix and (reading.prefix.lstrip("0") or "0")
+            key = (prefix, reading.letters, reading.number.lstrip("0") or "0", "")
+        else:
+            key = look_alike_key(reading, profile=profile)
+            if key[3].isdigit():
+                key = (*key[:3], key[3].lstrip("0") or "0")
+        alike[key].append(each)
     for group in alike.values():
-        if len(group) > 1 and len({match_key(each.tag) for each in group if each.tag is not None}) > 1:
-            yield tuple(group)
+        if len(group) < 2:
+            continue
+        kept = tuple(each for each in group if not _in_a_lettered_set(each.tag, plant))
+        if len({match_key(each.tag) for each in kept if each.tag is not None}) > 1:
+            yield kept
+
+
+_NEIGHBOURS = {"I": "HJ", "O": "NP"}
+
+
+def _in_a_lettered_set(reading: TagReading | None, plant: Plant) -> bool:
+    """Whether a suffix I or O is the ninth or fifteenth of a set, so that it is no digit."""
+    if reading is None or reading.suffix not in _NEIGHBOURS:
+        return False
+    tags: frozenset[object] = plant.once("tags", _live_tags)
+    prefix, letters, number, suffix = match_key(reading)
+    return any((prefix, letters, number, other) in tags for other in _NEIGHBOURS[suffix])
+
+
+def _live_tags(plant: Plant) -> frozenset[object]:
+    return frozenset(match_key(each.tag) for each in plant.live if each.tag is not None)
 
 
 @rule(
     "TAG03",
     severity=Severity.GAP,
     on=Subject.GROUP,
-    applies=lambda installed, plant: installed.tag is not None,
+    applies=_with_tag,
     groups=_look_alikes,
-    message="{tags} differ only by leading zeros or by characters that look alike",
+    message="{tags} differ only by {by}",
     basis="common practice",
 )
 def tags_that_look_alike(group: tuple[Installed, ...], plant: Plant) -> Verdict:
@@ -151,25 +199,36 @@ def tags_that_look_alike(group: tuple[Installed, ...], plant: Plant) -> Verdict:
 
     >>> from validation.example import said
     >>> said("TAG03", [{"tag": "FT-101", "service": "a"}, {"tag": "FT-0101", "service": "b"}])
-    ['FT-0101, FT-101: FT-0101, FT-101 differ only by leading zeros or by characters that look alike']
+    ['FT-0101, FT-101: FT-0101 and FT-101 differ only by leading zeros']
     >>> said("TAG03", [{"tag": "FT-101", "service": "a"}, {"tag": "FT-102", "service": "b"}])
     []
     """
     tags = sorted({each.record.tag or "" for each in group}, key=natural_key)
     canonical = _canonical_of(group, plant)
+    without_zeros = {_without_zeros(each.tag) for each in group if each.tag is not None}
     fixes = tuple(
-        Fix(text=f"{each.record.tag}: {canonical}", change={"tag": canonical}, subject=each.name)
+        Fix(text=f"tag {canonical} for {each.record.tag}", change={"tag": canonical}, subject=each.name)
         for each in group
         if canonical and each.record.tag != canonical
     )
     return Found(
-        values={"tags": ", ".join(tags)},
+        values={
+            "tags": f"{', '.join(tags[:-1])} and {tags[-1]}",
+            "by": "leading zeros" if len(without_zeros) == 1 else "characters that look alike",
+        },
         fields=("tag",),
         found=", ".join(tags),
         wanted=canonical,
         fixes=fixes,
         cells=tuple(cell for each in group for cell in each.cells("tag")),
     )
+
+
+def _without_zeros(reading: TagReading) -> tuple[str, ...]:
+    if not reading.parsed:
+        return (reading.normalised,)
+    prefix, letters, number, suffix = match_key(reading)
+    return (prefix.lstrip("0"), letters, number.lstrip("0"), suffix.lstrip("0") if suffix.isdigit() else suffix)
 
 
 def _canonical_of(group: Iterable[Installed], plant: Plant) -> str:
@@ -181,9 +240,7 @@ def _canonical_of(group: Iterable[Installed], plant: Plant) -> str:
         if reading is None or not reading.parsed or reading.look_alikes:
             continue
         mended = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes)
-        doubtful = mended is not None and match_key(read_tag(mended, profile=plant.profile)) != match_key(
-            reading
-        )
+        doubtful = mended is not None and match_key(read_tag(mended, profile=plant.profile)) != match_key(reading)
         here = (0 if doubtful else 1, widths.get(len(reading.number), 0))
         if here > rank:
             best, rank = canonical_tag(reading, profile=plant.profile), here
@@ -203,7 +260,7 @@ def _number_widths(plant: Plant) -> dict[int, int]:
     severity=Severity.GAP,
     on=Subject.INSTRUMENT,
     applies=lambda installed, plant: (
-        _with_tag(installed, plant) and plant.profile.name != FREE_TEXT and installed.record.tag_cell is None
+        installed.tag is not None and not installed.equipment_tag and installed.record.tag_cell is None
     ),
     message="{tag} does not fit the plant's pattern ({profile}): {reason}",
     basis="the plant's tag pattern; where it states none, the one that most of its tags fit",
@@ -224,32 +281,53 @@ def tag_off_pattern(installed: Installed, plant: Plant) -> Verdict:
     """
     reading = installed.tag
     assert reading is not None
-    if reading.means:
-        return NotApplicable()
-    nearest = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes)
-    slipped = False
-    if reading.parsed and reading.verdict == "warn" and nearest is not None:
-        slipped = match_key(read_tag(nearest, profile=plant.profile, codes=plant.codes)) != match_key(reading)
-    if reading.parsed and not reading.look_alikes and not slipped:
-        return None
-    if reading.look_alikes:
-        nearest = canonical_tag(reading, profile=plant.profile)
-        reason = f"{', '.join(reading.look_alikes)} only looks Latin"
-    elif nearest:
-        reason = f"{nearest} would"
+    if not reading.look_alikes:
+        if plant.profile.name == FREE_TEXT:
+            return NotApplicable("the tags follow no pattern")
+        if reading.parsed and not (reading.suffix and reading.verdict == "warn"):
+            return None
+    written = installed.record.tag_written or installed.record.tag or ""
+    message = ""
+    # Of a word in Cyrillic or Greek letters only some look Latin: it is read as what it is.
+    if reading.look_alikes and reading.normalised.isascii():
+        odd = "".join(dict.fromkeys(reading.look_alikes))
+        message = "{tag} has a character that only looks Latin: {reason}"
+        if len(odd) > 1:
+            message = "{tag} has characters that only look Latin: {reason}"
+        nearest, reason = _in_latin(reading, plant), odd
+    elif plant.profile.name == FREE_TEXT:
+        return NotApplicable("the tags follow no pattern")
     else:
-        reason = reading.reason or "it cannot be parted into letters and number"
+        nearest = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes) or ""
+        if reading.parsed and (not nearest or _in_a_lettered_set(reading, plant)):
+            return None
+        if reading.parsed:
+            mended = read_tag(nearest, profile=plant.profile, codes=plant.codes)
+            if match_key(mended) == match_key(reading):
+                return None
+        reason = f"{nearest} would" if nearest else _why_not(reading)
     return Found(
-        values={
-            "tag": installed.record.tag_written or installed.record.tag,
-            "profile": plant.profile.name,
-            "reason": reason,
-        },
+        values={"tag": written, "profile": plant.profile.name, "reason": reason},
         fields=("tag",),
-        found=installed.record.tag or "",
-        wanted=nearest or "",
+        found=written,
+        wanted=nearest,
         fixes=(Fix(text=f"tag {nearest}", change={"tag": nearest}),) if nearest else (),
+        message=message,
     )
+
+
+def _in_latin(reading: TagReading, plant: Plant) -> str:
+    if reading.parsed:
+        return canonical_tag(reading, profile=plant.profile)
+    if plant.profile.name == FREE_TEXT:
+        return reading.normalised
+    return nearest_fitting_tag(reading.normalised, profile=plant.profile, codes=plant.codes) or ""
+
+
+def _why_not(reading: TagReading) -> str:
+    if not reading.reason or reading.reason.startswith("does not fit"):
+        return "it cannot be parted into letters and number"
+    return reading.reason
 
 
 def _letters_asked(installed: Installed, plant: Plant) -> bool:
@@ -290,11 +368,11 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
     if reading.legal == "legal":
         return None
     nearest = nearest_legal_letters(reading.letters, codes=frozenset(plant.codes))
-    fixes = tuple(
-        Fix(text=f"tag {tag}", change={"tag": tag})
-        for tag in (_with_letters(reading, letters, plant) for letters in nearest)
-        if tag
-    )
+    tags = [_with_letters(reading, letters, plant) for letters in nearest]
+    if reading.legal == "illegal":
+        # P1-10 is PI-10 with a digit for a letter.
+        tags.insert(0, nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes) or "")
+    fixes = tuple(Fix(text=f"tag {tag}", change={"tag": tag}) for tag in dict.fromkeys(tags) if tag)
     problem = read_letters(reading.letters, users_letters=frozenset(plant.data.users_letters)).problem
     kind, message = Found, ""
     if reading.legal == "ambiguous":
@@ -310,16 +388,17 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
 
 
 def _with_letters(reading: TagReading, letters: str, plant: Plant) -> str:
-    from dataclasses import replace
-
-    return canonical_tag(replace(reading, letters=letters), profile=plant.profile)
+    """Return the tag with other letters; empty where the plant's pattern does not hold it."""
+    tag = canonical_tag(replace(reading, letters=letters), profile=plant.profile)
+    parts = plant.profile.parts(tag)
+    return tag if parts is not None and parts[1] == letters else ""
 
 
 @rule(
     "TAG06",
     severity=Severity.GAP,
     on=Subject.WHOLE,
-    message="the first letter {letter} is a user's choice and the plant has not defined it; {count} tags use it",
+    message="the first letter {letter} is a user's choice and the plant has not defined it; {count} it",
     basis=ISA,
 )
 def letter_not_defined(plant: Plant) -> Verdict:
@@ -332,7 +411,7 @@ def letter_not_defined(plant: Plant) -> Verdict:
 
     >>> from validation.example import said
     >>> said("TAG06", [{"tag": "MT-31"}])
-    ["list.xlsx: the first letter M is a user's choice and the plant has not defined it; 1 tags use it"]
+    ["list.xlsx: the first letter M is a user's choice and the plant has not defined it; 1 tag uses it"]
     >>> said("TAG06", [{"tag": "MT-31"}], plant={"users' first letters": "M = moisture"})
     []
     """
@@ -342,7 +421,10 @@ def letter_not_defined(plant: Plant) -> Verdict:
             used[each.tag.undefined].append(each)
     return [
         Found(
-            values={"letter": letter, "count": len(members)},
+            values={
+                "letter": letter,
+                "count": "1 tag uses" if len(members) == 1 else f"{len(members)} tags use",
+            },
             fields=("tag",),
             part=letter,
             found=", ".join(each.name for each in members[:3]),
@@ -354,42 +436,86 @@ def letter_not_defined(plant: Plant) -> Verdict:
     ]
 
 
-def _valve_loops(plant: Plant) -> dict[object, set[str]]:
-    loops: dict[object, set[str]] = defaultdict(set)
-    for each in plant.live:
-        if each.tag is not None and each.record.loop and is_valve(each.tag):
-            key = assembly_key(each.tag)
-            if key is not None:
-                loops[key].add(each.record.loop)
-    return loops
-
-
-def _agrees(installed: Installed, plant: Plant) -> bool | None:
-    reading = installed.tag
-    assert reading is not None and installed.record.loop is not None
-    loops: dict[object, set[str]] = plant.once("loops of valves", _valve_loops)
-    key = assembly_key(reading)
-    return loop_agrees(
-        installed.record.loop,
-        reading,
-        profile=plant.profile,
-        numbering=plant.data.numbering,
-        valve_loops=loops.get(key, ()) if key is not None else (),
-    )
-
-
 def _loop_asked(installed: Installed, plant: Plant) -> bool:
     return installed.tag is not None and installed.tag.parsed and not installed.equipment_tag
 
 
+def _valves(plant: Plant) -> dict[object, list[Installed]]:
+    """Return the valves by what the devices of an assembly share with theirs."""
+    valves: dict[object, list[Installed]] = defaultdict(list)
+    for each in plant.live:
+        if each.tag is not None and is_valve(each.tag):
+            valves[assembly_key(each.tag)].append(each)
+    return valves
+
+
+def _valves_of(installed: Installed, plant: Plant) -> list[Installed]:
+    """Return the valves that an instrument may belong to: X, Z, H or Y with a valve's number."""
+    reading = installed.tag
+    if reading is None or is_valve(reading):
+        return []
+    key = assembly_key(reading)
+    if key is None:
+        return []
+    valves: dict[object, list[Installed]] = plant.once("valves by assembly", _valves)
+    return valves.get(key, [])
+
+
+def _compared(stated: str, reading: TagReading, plant: Plant) -> bool | None:
+    """Whether a loop is the one that a tag names by itself; None where that cannot be told."""
+    if reading.scheme == "kks":
+        return _compared_by_kks(stated, reading, plant)
+    agrees = loop_agrees(stated, reading, profile=plant.profile, numbering=plant.data.numbering)
+    if agrees and len(reading.suffix) == 1 and reading.suffix.isalpha():
+        # Loop F-101A is not the loop of FT-101B, whether the letter is the train's or the device's.
+        parts = plant.profile.parts(normalise_tag(stated))
+        if parts is not None and len(parts[3]) == 1 and parts[3].isalpha() and parts[3] != reading.suffix:
+            return False
+    return agrees
+
+
+def _compared_by_kks(stated: str, reading: TagReading, plant: Plant) -> bool | None:
+    parts = plant.profile.parts(normalise_tag(stated))
+    if parts is None:
+        return None
+    return parts[:3] == (reading.prefix, reading.letters, reading.number)
+
+
+def _agrees(installed: Installed, plant: Plant) -> bool | None:
+    """Whether the loop column names the loop that the tag, or the valve of its assembly, gives."""
+    reading, stated = installed.tag, installed.record.loop
+    assert reading is not None
+    assert stated is not None
+    agrees = _compared(stated, reading, plant)
+    valves = _valves_of(installed, plant)
+    if agrees or not valves:
+        return agrees
+    key = normalise_tag(stated)
+    for valve in valves:
+        assert valve.tag is not None
+        # Where the valve's own loop is wrong, that is found on the valve.
+        if (valve.record.loop and normalise_tag(valve.record.loop) == key) or _compared(stated, valve.tag, plant):
+            return True
+    loop = plant.loop_of(installed)
+    others = [each for each in loop.members if each is not installed] if loop is not None else []
+    if any(
+        each.tag is not None and not _valves_of(each, plant) and _compared(stated, each.tag, plant) for each in others
+    ):
+        # The loop is another one's by right: its valve may stand in a list that is not here.
+        return agrees
+    return False
+
+
+def _answers(plant: Plant) -> dict[int, bool | None]:
+    return {id(each): _agrees(each, plant) for each in plant.live if each.record.loop and _loop_asked(each, plant)}
+
+
 def _another_numbering(plant: Plant) -> Verdict:
-    asked = [each for each in plant.live if each.record.loop and _loop_asked(each, plant)]
-    answers = [(each, _agrees(each, plant)) for each in asked]
-    differing = [each for each, agrees in answers if agrees is False]
-    told = sum(1 for _, agrees in answers if agrees is not None)
+    answers: dict[int, bool | None] = plant.once("loop column against tag", _answers)
+    told = sum(1 for agrees in answers.values() if agrees is not None)
+    differing = [each for each in plant.live if answers.get(id(each)) is False]
     limit = plant.threshold("TAG08 disagreement %", TAG08_DISAGREEMENT_PERCENT)
-    # Two or three rows are no column: there a share says nothing of how the list numbers its loops.
-    if told < 10 or len(differing) * 100 <= limit * told:
+    if told < TAG08_LEAST_ROWS or len(differing) * 100 <= limit * told:
         return None
     return Found(
         values={"count": len(differing), "of": told},
@@ -418,7 +544,8 @@ def loop_against_tag(installed: Installed, plant: Plant) -> Verdict:
     Why it matters: the instrument is drawn and checked on another loop's sheet. The column decides
     until it is corrected.
 
-    What to do: correct the loop, or the tag.
+    What to do: correct the loop, or the tag. What carries a valve's number (its switches, its
+    solenoid) belongs to the valve's loop.
 
     >>> from validation.example import said
     >>> said("TAG08", [{"tag": "FT-101", "loop": "F-102"}])
@@ -428,26 +555,47 @@ def loop_against_tag(installed: Installed, plant: Plant) -> Verdict:
     """
     reading = installed.tag
     assert reading is not None
-    if reading.code is not None and reading.code.first is None and not reading.code.letters:
-        agrees = _agrees(installed, plant)
-        if agrees is None:
-            return Unchecked(f"first letter of the plant code {reading.letters}")
-    else:
-        agrees = _agrees(installed, plant)
+    answers: dict[int, bool | None] = plant.once("loop column against tag", _answers)
+    agrees = answers[id(installed)] if id(installed) in answers else _agrees(installed, plant)
+    if agrees:
+        return None
     if agrees is None:
         if reading.code is not None and reading.code.first is None:
             return Unchecked(f"first letter of the plant code {reading.letters}")
+        if reading.legal == "illegal":
+            return Unchecked("tag")
         return Unchecked("loop in a form that can be compared")
-    if agrees:
-        return None
-    derived = loop_of(reading, numbering=plant.data.numbering)
+    stated = installed.record.loop or ""
+    by_valve, derived = _loop_by_right(installed, plant)
+    message = "the loop column says {loop}, the tag's number is {derived}" if not derived else ""
+    if by_valve:
+        message = "the loop column says {loop}, its valve {valve} gives {derived}"
     return Found(
-        values={"loop": installed.record.loop, "derived": derived or "another"},
+        values={"loop": stated, "derived": derived or reading.number, "valve": by_valve},
         fields=("loop",),
-        found=installed.record.loop or "",
-        wanted=derived,
+        found=stated,
+        wanted=derived or f"a loop with the number {reading.number}",
         fixes=(Fix(text=f"loop {derived}", change={"loop": derived}),) if derived else (),
+        message=message,
     )
+
+
+def _loop_by_right(installed: Installed, plant: Plant) -> tuple[str, str]:
+    """Return the valve that decides, if one does, and the loop that valve or tag gives."""
+    reading = installed.tag
+    assert reading is not None
+    # A column of bare numbers is answered with a number.
+    bare = not any(sign.isalpha() for sign in installed.record.loop or "")
+    numbering = "serial" if bare and reading.scheme != "kks" else plant.data.numbering
+    for valve in _valves_of(installed, plant):
+        assert valve.tag is not None
+        stated = valve.record.loop
+        if stated and _agrees(valve, plant):
+            return valve.name, stated
+        by_tag = loop_of(valve.tag, numbering=numbering)
+        if by_tag:
+            return valve.name, by_tag
+    return "", loop_of(reading, numbering=numbering)
 
 
 @rule(
@@ -460,7 +608,7 @@ def loop_against_tag(installed: Installed, plant: Plant) -> Verdict:
         and bool(installed.letters)
         and not installed.equipment_tag
     ),
-    message="a {kind} cannot bear the letters {letters}",
+    message="{kind} cannot bear the letters {letters}",
     basis=ISA,
 )
 def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
@@ -491,12 +639,19 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
         return NotApplicable("practice differs on these letters")
     if bears:
         return None
-    derived = derive_kind(installed.letters, has_signal=True, codes=plant.codes, scheme=reading.scheme)
+    signal = any(row.signal or row.io_type or row.io_address or row.card for row in installed.signals)
+    derived = derive_kind(
+        installed.letters,
+        has_signal=signal,
+        location=installed.record.location,
+        codes=plant.codes,
+        scheme=reading.scheme,
+    )
     letters = letters_for_kind(kind, installed.letters, codes=plant.codes)
     tags = [_with_letters(reading, each, plant) for each in letters]
     written = installed.record.kind_written or str(kind)
     return Found(
-        values={"kind": str(kind), "letters": installed.letters, "written": written},
+        values={"kind": kind.with_article, "letters": installed.letters, "written": written},
         fields=("kind", "tag") if installed.kind_from == "row" else ("device_type", "tag"),
         found=written,
         wanted="" if derived is None else derived.value,
@@ -507,28 +662,42 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
     )
 
 
-def _range_unit(installed: Installed) -> Unit | None:
-    record = installed.record
-    for quantity in (record.lrv, record.urv):
+_RANGE = ("lrv", "urv")
+_SYSTEM_RANGE = ("system_lrv", "system_urv")
+
+
+def _unit_of(record: Instrument, ends: tuple[str, str], column: Unit | None) -> Unit | None:
+    for name in ends:
+        quantity = getattr(record, name)
         if quantity is not None and quantity.unit is not None:
-            return quantity.unit
-    return record.range_unit
+            return quantity.unit  # type: ignore[no-any-return]
+    return column
+
+
+def _states_a_range(record: Instrument) -> bool:
+    if (
+        record.lrv is not None
+        or record.urv is not None
+        or record.system_lrv is not None
+        or record.system_urv is not None
+    ):
+        return True
+    lost = record.unread | record.unitless.keys() if record.unread or record.unitless else ()
+    return any(name in lost for name in (*_RANGE, "range_unit"))
+
+
+def _unit_asked(installed: Installed, plant: Plant) -> bool:
+    if not installed.letters or installed.equipment_tag:
+        return False
+    kind = installed.kind
+    return kind is None or kind.measures in ("yes", "system") or _states_a_range(installed.record)
 
 
 @rule(
     "TAG10",
     severity=Severity.FAULT,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: (
-        bool(installed.letters)
-        and not installed.equipment_tag
-        and (
-            installed.record.lrv is not None
-            or installed.record.urv is not None
-            or installed.kind is None
-            or installed.kind.measures != "no"
-        )
-    ),
+    applies=_unit_asked,
     message="{letters} with a range in {unit}: {unit} is no unit of {variable}",
     basis=ISA,
 )
@@ -546,31 +715,63 @@ def unit_against_letters(installed: Installed, plant: Plant) -> Verdict:
     >>> said("TAG10", [{"tag": "PIT-6004", "LRV": "0", "URV": "50", "range unit": "bar"}])
     []
     """
-    unit = _range_unit(installed)
+    record = installed.record
+    unit = _unit_of(record, _RANGE, record.range_unit)
+    system_unit = _unit_of(record, _SYSTEM_RANGE, record.system_unit)
+    field = _answer_for(unit, installed, plant)
+    if isinstance(field, Found):
+        return field
+    if system_unit is not None and (unit is None or system_unit.kind != unit.kind):
+        system = _answer_for(system_unit, installed, plant)
+        if isinstance(system, Found):
+            # One range that was copied with its unit is one mistake: only the system's differs here.
+            return replace(
+                system,
+                fields=("tag", "system_unit"),
+                part="system range",
+                cells=tuple(cell for name in _SYSTEM_RANGE for cell in record.cells(name)),
+                message="{letters} with a range in the system in {unit}: {unit} is no unit of {variable}",
+            )
+        if unit is None and installed.kind is not None and installed.kind.measures == "system":
+            return system
+    return field
+
+
+def _answer_for(unit: Unit | None, installed: Installed, plant: Plant) -> Found | Unchecked | NotApplicable | None:
+    """Return what is to be said of one unit under the instrument's letters."""
     if unit is None:
         return Unchecked("range unit")
-    record = installed.record
+    record, reading = installed.record, installed.tag
+    assert reading is not None
+    scheme = reading.scheme
+    square_root_known = record.square_root_device is not None or record.square_root_system is not None
     allowed = dimension_allowed(
         installed.letters,
         unit.kind,
         dp_body=None if installed.body is None else installed.body == "differential",
-        square_root_known=record.square_root_device is not None or record.square_root_system is not None,
+        square_root_known=square_root_known,
         codes=plant.codes,
-        scheme=installed.tag.scheme if installed.tag else "isa",
+        scheme=scheme,
     )
-    if allowed is None:
-        return Unchecked("square root")
     if allowed:
         return None
+    if allowed is None:
+        if reading.legal == "illegal":
+            return Unchecked("tag")
+        if unit.kind == "pressure" and not square_root_known:
+            return Unchecked("square root in device or square root in system")
+        return NotApplicable("practice differs on this unit")
     label = unit_label(unit)
-    variable = measured_variable(installed.letters, codes=plant.codes)
-    field = "lrv" if record.lrv is not None else "range_unit"
+    variable = (
+        measured_variable(installed.letters, codes=plant.codes, scheme=scheme, users_letters=plant.data.users_letters)
+        or "the measured variable"
+    )
     return Found(
-        values={"letters": installed.letters, "unit": label, "variable": variable or "the measured variable"},
-        fields=("tag", "range_unit" if record.range_unit is not None else field),
+        values={"letters": installed.letters, "unit": label, "variable": variable},
+        fields=("tag", "range_unit"),
         found=label,
-        wanted=f"a unit of {variable or 'the measured variable'}",
-        cells=(*record.cells("lrv"), *record.cells("urv")),
+        wanted=f"a unit of {variable}",
+        cells=tuple(cell for name in _RANGE for cell in record.cells(name)),
     )
 
 
@@ -578,7 +779,7 @@ def unit_against_letters(installed: Installed, plant: Plant) -> Verdict:
     "TAG13",
     severity=Severity.GAP,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: installed.tag is not None,
+    applies=_with_tag,
     message="one cell holds {count} tags: {tags}",
     basis="common practice",
 )
@@ -599,9 +800,13 @@ def several_tags_in_a_cell(installed: Installed, plant: Plant) -> Verdict:
     record = installed.record
     if record.tag_cell is None:
         return None
-    if record.tag_number > 0:
+    cells: Mapping[object, tuple[Installed, ...]] = plant.once("cells that hold several tags", _shared_cells)
+    sharing = cells.get(_cell_key(record), (installed,))
+    if all(each.record is not record for each in sharing[:1]):
         return NotApplicable("found on the cell's first tag")
-    means = read_tag(record.tag_cell, profile=plant.profile, codes=plant.codes).means
+    means = read_tag(record.tag_cell, profile=plant.profile, codes=plant.codes).means or tuple(
+        each.record.tag or "" for each in sharing
+    )
     return Found(
         values={"count": len(means), "tags": ", ".join(means)},
         fields=("tag",),
@@ -610,3 +815,18 @@ def several_tags_in_a_cell(installed: Installed, plant: Plant) -> Verdict:
         wanted="; ".join(means),
         fixes=(Fix(text=f"a row each: {', '.join(means)}"),),
     )
+
+
+def _cell_key(record: Instrument) -> object:
+    origin = record.origin
+    where = (origin.place.file, origin.place.sheet, origin.row) if origin is not None else ()
+    return (record.tag_cell, *where)
+
+
+def _shared_cells(plant: Plant) -> Mapping[object, tuple[Installed, ...]]:
+    """Return the instruments that one cell names, by the cell, the cell's first tag first."""
+    cells: dict[object, list[Installed]] = defaultdict(list)
+    for each in plant.live:
+        if each.record.tag_cell is not None:
+            cells[_cell_key(each.record)].append(each)
+    return {key: tuple(sorted(found, key=lambda each: each.record.tag_number)) for key, found in cells.items()}
