@@ -783,8 +783,8 @@ _DIGIT: Final = re.compile(r"\d")
 
 
 def _is_unit_heading(heading: Levels) -> bool:
-    words = heading_words(heading.joined)
-    return words in GENERIC_UNITS or heading_words(heading.texts[-1]) in GENERIC_UNITS
+    texts = (heading.joined, heading.texts[-1], *re.split(r"[/|\n]", heading.joined))
+    return any(heading_words(text) in GENERIC_UNITS for text in texts)
 
 
 def _neighbours(index: int, step: int, by_index: Mapping[int, ColumnMatch]) -> list[ColumnMatch]:
@@ -987,6 +987,10 @@ def _choose(sheet: Sheet, found: Sequence[SheetMatch], top: int) -> SheetMatch:
     return replace(best, named=by_name >= 1.0)
 
 
+# A plant's threshold is named by the code of its rule.
+_THRESHOLD: Final = re.compile(r"\s*(?:[A-Z]{3}[0-9]{2}|ELC)\s")
+
+
 def _field_and_value(sheet: Sheet, kinds: Sequence[SheetKind]) -> SheetMatch | None:
     """Return a match for a sheet that has a field and its value on each row."""
     for kind in kinds:
@@ -994,11 +998,22 @@ def _field_and_value(sheet: Sheet, kinds: Sequence[SheetKind]) -> SheetMatch | N
             continue
         names = names_of(kind)
         known: set[str] = set()
+        across = 0
         for row in sheet.rows[:LOOKED_AT_ROWS]:
             filled = [cell for cell in row if cell is not None]
             if filled and isinstance(filled[0], str) and len(filled) <= 4:
                 for _, _, column in names.find(heading_words(filled[0].strip(" :="))):
                     known.add(column.field)
+            named_here = sum(
+                1
+                for cell in filled
+                if isinstance(cell, str)
+                and (_THRESHOLD.match(cell) or any(True for _ in names.find(heading_words(cell.strip(" :=")))))
+            )
+            across = max(across, named_here)
+        if across > max(len(known), 1):
+            # More names stand beside each other than below each other: they are headings.
+            continue
         named = max(
             _name_points(kind, sheet.name), _name_points(kind, re.split(r"[\\/]", sheet.file)[-1].rpartition(".")[0])
         )
