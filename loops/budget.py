@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, replace
+from collections.abc import Iterator
+from dataclasses import dataclass, field, replace
 from functools import lru_cache
+from typing import Final
 
-from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.origin import Cell
 from instruments.plant_data import PlantData
+from instruments.record import DeviceType
+from instruments.signal_words import signal_classes
+from instruments.span import below
 from loops.cable import (
     Conductor,
     ResistancePer,
@@ -16,28 +20,40 @@ from loops.cable import (
     loop_resistance_ohm,
     read_conductor_size,
 )
-from loops.circuit import ANALOGUE_INPUT, Circuit
+from loops.circuit import ANALOGUE_INPUT, Circuit, Given, Segment
 from loops.power import (
     HIGH_ALARM_MA,
     LOW_FAILURE_MA,
+    LOWEST_MA,
     NOMINAL_MA,
     OverVoltage,
     VoltageBudget,
     check_current_ma,
     over_voltage,
+    stated_volts,
     voltage_budget,
+    volts_at_transmitter,
 )
+from loops.record import CableType
 
-SUPPLY_TOLERANCE_PERCENT = 5.0
-RECEIVER_OHM = 250.0
-HOT_C = 70.0
-COLD_C = -20.0
-DIODE_V = 0.7  # a bypass diode that conducts; common practice
+SUPPLY_TOLERANCE_PERCENT: Final = 5.0
+RECEIVER_OHM: Final = 250.0
+LARGEST_RECEIVER_OHM: Final = 500.0  # 2 to 10 V; common practice
+LONG_CABLE_OHM: Final = 182.0  # 3 km of 0.5 mm2 out and back at -20 degC: longer than circuits are
+HOT_C: Final = 70.0
+COLD_C: Final = -20.0
+DIODE_V: Final = 0.7  # a bypass diode that conducts; common practice
+
+Parts = tuple[tuple[str, float], ...]
+"""Names with ohms or volts."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class CablePath:
-    """The cable of a circuit, out and back: length, resistance at 20 degC and what it is per."""
+    """The cable of a circuit, out and back: length, resistance at 20 degC and what it is per.
+
+    `conductor` is None where the cables of the run differ: the resistance is then their mean.
+    """
 
     length_m: float
     ohm_per_km_20c: float
@@ -51,75 +67,171 @@ class CablePath:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Budget:
-    """The voltage budget of a circuit at its check current, worked with what is stated and with defaults.
+    """The voltage budget of a circuit at its check current, with what is stated and with defaults.
 
     Attributes
     ----------
     missing
-        What it cannot be worked without, as titles; the budgets are then None unless the kindest
-        values that could be true already fail.
-    kindest
-        With the kindest value that could be true for each blank: the supply's nominal, a cable of
-        nothing, no receiver.
-    worst
-        With the defaults for the blanks; None where a blank has no default.
-    at_20_ma
-        As `worst`, at 20 mA.
+        What it cannot be worked without, as titles; `worst` is then None.
     assumed
         The defaults that were used, in words.
-    resistances, fixed_drops
-        Of `worst`, without the cable, in series.
-    source_v
-        The volts that `worst` starts from.
+    kindest_resistances, resistances, fixed_drops
+        What lies in series beside the cable: with the kindest value that could be true for a blank,
+        and with the default.
+    source_name, kindest_v, source_v, source_20_ma_v
+        What the budget starts from: supply, isolator or card; its volts with the kindest value, with
+        the default, and with the default at 20 mA.
+    supply_is_free
+        Whether the volts are a supply's, which could be raised.
     cable
         The cable's path; None where it is not known.
-    cells
-        Where the figures came from.
     """
 
     current_ma: float
     lift_off_v: float | None = None
     lift_off_field: str = ""
     missing: tuple[str, ...] = ()
-    kindest: VoltageBudget | None = None
-    worst: VoltageBudget | None = None
-    at_20_ma: VoltageBudget | None = None
     assumed: tuple[str, ...] = ()
-    resistances: tuple[tuple[str, float], ...] = ()
-    fixed_drops: tuple[tuple[str, float], ...] = ()
-    source_v: float | None = None
+    kindest_resistances: Parts = ()
+    resistances: Parts = ()
+    fixed_drops: Parts = ()
     source_name: str = "supply"
+    kindest_v: float | None = None
+    source_v: float | None = None
+    source_20_ma_v: float | None = None
     supply_is_free: bool = False
     hot_c: float = HOT_C
     cable: CablePath | None = None
-    cells: tuple[Cell, ...] = ()
+
+    @property
+    def kindest(self) -> VoltageBudget | None:
+        """With the kindest value that could be true for each blank: the supply's nominal, no receiver, no cable."""
+        return self._at(self.kindest_v, self.current_ma, self.kindest_resistances)
+
+    @property
+    def worst(self) -> VoltageBudget | None:
+        """With the defaults for the blanks; None where a blank has no default."""
+        return None if self.missing else self._at(self.source_v, self.current_ma, self.resistances)
+
+    @property
+    def at_20_ma(self) -> VoltageBudget | None:
+        """As `worst`, at 20 mA."""
+        return None if self.missing else self._at(self.source_20_ma_v, NOMINAL_MA, self.resistances)
+
+    @property
+    def passes_at_worst(self) -> bool | None:
+        """Whether `worst` passes, without its terms; None where a blank has no default."""
+        if self.missing or self.source_v is None or self.lift_off_v is None:
+            return None
+        volts = volts_at_transmitter(
+            self.source_v, self.current_ma, (*self.resistances, *self._cable()), self.fixed_drops
+        )
+        return not below(volts, self.lift_off_v, scale=self.source_v)
+
+    def _cable(self) -> Parts:
+        return (("cable", self.cable.ohm(self.hot_c)),) if self.cable is not None else ()
+
+    def _at(self, source_v: float | None, current_ma: float, series: Parts) -> VoltageBudget | None:
+        if source_v is None or self.lift_off_v is None:
+            return None
+        return voltage_budget(
+            source_v,
+            current_ma,
+            needed_v=self.lift_off_v,
+            resistances=(*series, *self._cable()),
+            fixed_drops=self.fixed_drops,
+        )
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class HighestVolts:
-    """The highest voltage at a circuit's transmitter, worked with what is stated and with defaults."""
+    """The highest voltage at a circuit's transmitter, with what is stated and with defaults.
+
+    A load is kind here, for it takes volts from the transmitter.
+
+    Attributes
+    ----------
+    missing
+        What it cannot be worked without, as titles.
+    assumed
+        The defaults that were used, in words.
+    kindest_v, highest_v
+        The highest supply with the kindest value that could be true, and with the default.
+    kindest_resistances, resistances, fixed_drops
+        What lies in series, cable included: with a large receiver and a long cable where they are
+        blank, and with the default receiver and no cable.
+    current_ma
+        3.6 mA, or nothing where the volts are the most that a source ever gives.
+    """
 
     allowed_v: float | None = None
     missing: tuple[str, ...] = ()
-    kindest: OverVoltage | None = None
-    worst: OverVoltage | None = None
     assumed: tuple[str, ...] = ()
-    resistances: tuple[tuple[str, float], ...] = ()
-    fixed_drops: tuple[tuple[str, float], ...] = ()
-    cells: tuple[Cell, ...] = ()
+    kindest_v: float | None = None
+    highest_v: float | None = None
+    kindest_resistances: Parts = ()
+    resistances: Parts = ()
+    fixed_drops: Parts = ()
+    current_ma: float = LOWEST_MA
+
+    @property
+    def kindest(self) -> OverVoltage | None:
+        """With the kindest value that could be true for each blank."""
+        return self._at(self.kindest_v, self.kindest_resistances)
+
+    @property
+    def nominal(self) -> OverVoltage | None:
+        """With the kindest supply and the defaults for the rest: what is shown where even the kindest fails."""
+        return self._at(self.kindest_v, self.resistances)
+
+    @property
+    def worst(self) -> OverVoltage | None:
+        """With the defaults; what is blank without one takes no volts."""
+        return self._at(self.highest_v, self.resistances)
+
+    @property
+    def passes_at_worst(self) -> bool | None:
+        """Whether `worst` passes, without its terms; None where the supply is not known."""
+        if self.highest_v is None or self.allowed_v is None:
+            return None
+        volts = volts_at_transmitter(self.highest_v, self.current_ma, self.resistances, self.fixed_drops)
+        return not below(self.allowed_v, volts, scale=self.highest_v)
+
+    def _at(self, supply_v: float | None, series: Parts) -> OverVoltage | None:
+        if supply_v is None or self.allowed_v is None:
+            return None
+        return over_voltage(
+            supply_v,
+            allowed_v=self.allowed_v,
+            current_ma=self.current_ma,
+            resistances=series,
+            fixed_drops=self.fixed_drops,
+        )
+
+
+_SENDS: Final = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR})
+_OUTPUTS: Final = frozenset(
+    {Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID, Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.MANUAL_VALVE}
+)
 
 
 def feeds_a_transmitter(circuit: Circuit) -> bool | None:
     """Whether the circuit feeds a two-wire 4-20 mA transmitter; None where its wires are not stated."""
     device = circuit.device
-    if circuit.kind not in (None, ANALOGUE_INPUT):
+    if circuit.kind not in (None, ANALOGUE_INPUT) or device.kind in _OUTPUTS:
         return False
-    if device.kind not in (Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR):
+    classes = signal_classes(circuit.signal_row.signal)
+    if not classes and device.type is not None:
+        classes = signal_classes(device.type.signal)
+    # What sends a current is a transmitter, whatever its row calls it: the head of an element, for one.
+    if classes and "current" not in classes:
         return False
-    text = f"{circuit.signal_row.signal or ''} {(device.type.signal if device.type else '') or ''}".casefold()
-    if text.strip() and "ma" not in text and "hart" not in text:
+    if not classes and device.kind not in _SENDS:
         return False
     return circuit.powered_by_loop
+
+
+# --------------------------------------------------------------------------------------------------------- cable
 
 
 def cable_path(circuit: Circuit) -> CablePath | None:
@@ -134,26 +246,171 @@ def cable_path(circuit: Circuit) -> CablePath | None:
 
 def ohm_per_km(circuit: Circuit) -> tuple[float, ResistancePer, Conductor | None] | None:
     """Return the resistance of the circuit's cable at 20 degC: the cable type's own, else the standard's maximum."""
-    kind = circuit.cable_type
-    conductor = _conductor(circuit.conductor) if circuit.conductor else None
-    if conductor is not None and kind is not None:
-        stranding = (kind.class_ or "").strip()
-        digits = [int(letter) for letter in stranding if letter.isdigit()]
-        conductor = replace(
-            conductor,
-            conductor_class=digits[0] if digits else conductor.conductor_class,
-            tinned=bool(kind.tinned),
-        )
+    if circuit.segments:
+        return _mean_ohm_per_km(circuit.segments)
+    return _resistance(circuit.cable_type, circuit.conductor)
+
+
+def _mean_ohm_per_km(segments: tuple[Segment, ...]) -> tuple[float, ResistancePer, None] | None:
+    ohm = length_m = 0.0
+    for segment in segments:
+        size = segment.conductor or (segment.type.conductor if segment.type else None)
+        found = _resistance(segment.type, size)
+        if found is None:
+            return None
+        ohm += loop_resistance_ohm(segment.length_m, found[0], conductor_c=20.0, per=found[1])
+        length_m += segment.length_m
+    return (ohm / length_m * 1000.0, "loop", None) if length_m else None
+
+
+def _resistance(kind: CableType | None, size: str | None) -> tuple[float, ResistancePer, Conductor | None] | None:
+    stranding = kind.class_ if kind is not None else None
+    tinned = kind.tinned if kind is not None else None
+    known = _conductor(size, stranding, tinned) if size else None
     if kind is not None and kind.ohm_per_km is not None:
         per: ResistancePer = "loop" if kind.resistance_per == "loop" else "conductor"
-        return kind.ohm_per_km, per, conductor
+        return kind.ohm_per_km, per, known[0] if known else None
+    if known is None or known[1] is None:
+        return None
+    return known[1], "conductor", known[0]
+
+
+@lru_cache(maxsize=4096)
+def _conductor(size: str, stranding: str | None, tinned: bool | None) -> tuple[Conductor, float | None] | None:
+    """Return a conductor by its size, class and plating, with its resistance in ohm/km at 20 degC."""
+    conductor = read_conductor_size(size)
     if conductor is None:
         return None
-    try:
-        ohm = conductor_ohm_per_km_20c(conductor)
-    except ValueError:
-        return None
-    return None if ohm is None else (ohm, "conductor", conductor)
+    digits = [int(letter) for letter in stranding or "" if letter.isdigit()]
+    conductor = replace(
+        conductor,
+        conductor_class=digits[0] if digits else conductor.conductor_class,
+        tinned=bool(tinned),
+    )
+    return conductor, conductor_ohm_per_km_20c(conductor)
+
+
+# --------------------------------------------------------------------------------------- what lies in the circuit
+
+
+@dataclass(slots=True)
+class _InSeries:
+    """What lies in series beside the cable, what is not stated of it, and what is assumed."""
+
+    ohm: list[tuple[str, float]] = field(default_factory=list)
+    drops: list[tuple[str, float]] = field(default_factory=list)
+    missing: list[str] = field(default_factory=list)
+    assumed: list[str] = field(default_factory=list)
+
+    def take(self, name: str, entry: DeviceType) -> None:
+        """Take what a catalogue entry states."""
+        if entry.resistance_ohm is not None:
+            self.ohm.append((name, entry.resistance_ohm))
+        if entry.fixed_drop_v is not None:
+            self.drops.append((name, entry.fixed_drop_v))
+
+
+def is_isolator(barrier: DeviceType) -> bool:
+    """Whether a barrier isolates: as its entry states, else by its kind, else because it states what it supplies."""
+    if barrier.isolation is not None:
+        return barrier.isolation == "isolator"
+    if barrier.kind is Kind.ISOLATOR:
+        return True
+    return barrier.available_20ma_v is not None or barrier.available_alarm_v is not None
+
+
+def _stating(circuit: Circuit) -> tuple[str, DeviceType] | None:
+    """Return the entry that states what it makes available at its terminals: an isolator, or the card itself."""
+    barrier = circuit.barrier
+    if barrier is not None and is_isolator(barrier):
+        return "isolator", barrier
+    card = circuit.card
+    if card is not None and (card.available_20ma_v is not None or card.available_alarm_v is not None):
+        return "card", card
+    return None
+
+
+# An element stands before its transmitter, and a barrier that is named by its tag is counted as the barrier.
+_NOT_IN_SERIES: Final = frozenset({Kind.ELEMENT, Kind.BARRIER, Kind.ISOLATOR, Kind.CARD, Kind.POWER_SUPPLY})
+
+
+def _in_series(circuit: Circuit, current_ma: float) -> _InSeries:
+    """Gather what lies in the circuit beside receiver and cable."""
+    found = _InSeries()
+    barrier = circuit.barrier
+    if barrier is not None and not is_isolator(barrier):
+        if barrier.resistance_ohm is None and barrier.fixed_drop_v is None:
+            found.missing.append("resistance ohm of the barrier")
+        found.take("barrier", barrier)
+    if len(circuit.members) == 1:
+        return found
+    for member in circuit.members:
+        if member is circuit.device or member.kind in _NOT_IN_SERIES:
+            continue
+        kind = member.type
+        if kind is None or (kind.resistance_ohm is None and kind.fixed_drop_v is None):
+            if member.kind is Kind.INDICATOR:
+                found.missing.append(f"resistance ohm or fixed drop V of {member.name}")
+        elif (
+            kind.bypass_diode
+            and kind.resistance_ohm is not None
+            and kind.resistance_ohm * current_ma / 1000.0 < DIODE_V
+        ):
+            # With the indicator taken out the diode carries the loop, and drops its own volts.
+            found.drops.append((f"diode of {member.name}", max(DIODE_V, kind.fixed_drop_v or 0.0)))
+        else:
+            found.take(member.name, kind)
+    return found
+
+
+def _with_receiver(circuit: Circuit, data: PlantData, found: _InSeries, *, kindest_ohm: float) -> tuple[Parts, Parts]:
+    """Return all in series with the receiver: the kindest that could be true where it is blank, and the default."""
+    before = len(found.ohm)
+    if circuit.card is not None:
+        found.take("card", circuit.card)
+    if circuit.receiver_ohm is not None:
+        found.ohm.append(("receiver", circuit.receiver_ohm.number))
+    elif len(found.ohm) == before:
+        ohm = data.threshold("ELC receiver ohm", RECEIVER_OHM)
+        found.assumed.append(f"receiver {ohm:g} ohm")
+        kindest = (*found.ohm, ("receiver", kindest_ohm)) if kindest_ohm else tuple(found.ohm)
+        return kindest, (*found.ohm, ("receiver", ohm))
+    # A card that states what it puts in series has said what it puts into the loop.
+    return tuple(found.ohm), tuple(found.ohm)
+
+
+def figure_cells(circuit: Circuit) -> tuple[Cell, ...]:
+    """Return the cells from which the figures of a circuit's voltages came, but those of its device."""
+    return tuple(dict.fromkeys(_figure_cells(circuit)))
+
+
+def _figure_cells(circuit: Circuit) -> Iterator[Cell]:
+    stating = _stating(circuit)
+    given: list[Given | None] = [circuit.cable_length_m]
+    if stating is not None:
+        yield from stating[1].cells("available_20ma_v")
+        yield from stating[1].cells("available_alarm_v")
+    else:
+        given = [
+            circuit.supply_min_v,
+            circuit.supply_nominal_v,
+            circuit.supply_max_v,
+            circuit.receiver_ohm,
+            circuit.cable_length_m,
+        ]
+    for each in given:
+        if each is not None:
+            yield from each.cells
+    barrier = circuit.barrier
+    if barrier is not None and not is_isolator(barrier):
+        yield from barrier.cells("resistance_ohm")
+    for member in circuit.members:
+        if member is not circuit.device and member.kind is Kind.INDICATOR:
+            yield from member.cells("type.resistance_ohm")
+            yield from member.cells("type.fixed_drop_v")
+
+
+# --------------------------------------------------------------------------------------------------- the least volts
 
 
 def lift_off(circuit: Circuit, data: PlantData) -> Budget:
@@ -171,93 +428,95 @@ def lift_off(circuit: Circuit, data: PlantData) -> Budget:
     The current: a signal that fails low needs no more than the highest measurement current of NAMUR
     NE 43 (20.5 mA); one that fails high, or does not say, the type's declared high-alarm current,
     else 22 mA. An isolator is a source: what lies on its other side is another circuit, so neither
-    its supply nor the receiver counts here.
+    its supply nor the receiver counts here. Its volts count at the current they are stated for.
     """
     device = circuit.device
     kind = device.type
+    fails_low = (circuit.signal_row.failure_direction or device.record.failure_direction) == "low"
     current_ma = check_current_ma(
-        circuit.signal_row.failure_direction or device.record.failure_direction,
+        "low" if fails_low else None,
         kind.high_alarm_ma if kind else None,
         default_high_ma=data.threshold("ELC high alarm mA", HIGH_ALARM_MA),
         low_ma=data.threshold("ELC low failure mA", LOW_FAILURE_MA),
     )
-    hot_c = data.threshold("ELC hot degC", HOT_C)
-    missing: list[str] = []
-    assumed: list[str] = []
-    cells: list[Cell] = []
-    lift_off_v, lift_off_field = _lift_off_v(circuit, current_ma)
-    if lift_off_v is None:
-        missing.append("lift-off V")
-    else:
-        cells.extend(device.cells(lift_off_field))
-    source = _source(circuit, current_ma, data, assumed, missing, cells)
-    series, drops = _in_series(circuit, current_ma, missing, cells)
-    kind_series = list(series)
-    worst_series = list(series)
+    lift_off_v, lift_off_field = None, "type.lift_off_v"
+    if kind is not None:
+        lift_off_v = kind.lift_off_v
+        if not fails_low and kind.lift_off_alarm_v is not None:
+            lift_off_v, lift_off_field = kind.lift_off_alarm_v, "type.lift_off_alarm_v"
+    found = _in_series(circuit, current_ma)
+    source = _source(circuit, current_ma, data, found, fails_low=fails_low)
     if source.receiver_counts:
-        if circuit.receiver_ohm is not None:
-            kind_series.append(("receiver", circuit.receiver_ohm.number))
-            worst_series.append(("receiver", circuit.receiver_ohm.number))
-            cells.extend(circuit.receiver_ohm.cells)
-        else:
-            ohm = data.threshold("ELC receiver ohm", RECEIVER_OHM)
-            worst_series.append(("receiver", ohm))
-            assumed.append(f"receiver {ohm:g} ohm")
-    path = cable_path(circuit)
-    cable: list[tuple[str, float]] = []
-    if path is not None:
-        cable.append(("cable", path.ohm(hot_c)))
-        if circuit.cable_length_m is not None:
-            cells.extend(circuit.cable_length_m.cells)
+        kindest, series = _with_receiver(circuit, data, found, kindest_ohm=0.0)
     else:
+        kindest = series = tuple(found.ohm)
+    missing = ["lift-off V"] if lift_off_v is None else []
+    missing.extend(found.missing)
+    path = cable_path(circuit)
+    if path is None:
         if circuit.cable_length_m is None:
             missing.append("cable length")
         if ohm_per_km(circuit) is None:
             missing.append("conductor size")
-    kindest = worst = at_20 = None
-    if lift_off_v is not None and source.kindest_v is not None:
-        kindest = voltage_budget(
-            source.kindest_v,
-            current_ma,
-            needed_v=lift_off_v,
-            resistances=(*kind_series, *cable),
-            fixed_drops=drops,
-        )
-    if lift_off_v is not None and source.worst_v is not None and not missing:
-        worst = voltage_budget(
-            source.worst_v,
-            current_ma,
-            needed_v=lift_off_v,
-            resistances=(*worst_series, *cable),
-            fixed_drops=drops,
-        )
-        at_20 = None
-        if source.same_at_20_ma:
-            at_20 = voltage_budget(
-                source.worst_v,
-                NOMINAL_MA,
-                needed_v=lift_off_v,
-                resistances=(*worst_series, *cable),
-                fixed_drops=drops,
-            )
     return Budget(
         current_ma=current_ma,
         lift_off_v=lift_off_v,
         lift_off_field=lift_off_field,
-        missing=tuple(dict.fromkeys(missing)),
-        kindest=kindest,
-        worst=worst,
-        at_20_ma=at_20,
-        assumed=tuple(assumed),
-        resistances=tuple(worst_series),
-        fixed_drops=tuple(drops),
-        source_v=source.worst_v,
+        missing=tuple(missing),
+        assumed=tuple(found.assumed),
+        kindest_resistances=kindest,
+        resistances=series,
+        fixed_drops=tuple(found.drops),
         source_name=source.name,
-        supply_is_free=source.same_at_20_ma,
-        hot_c=hot_c,
+        kindest_v=source.kindest_v,
+        source_v=source.worst_v,
+        source_20_ma_v=source.at_20_ma_v,
+        supply_is_free=source.receiver_counts,
+        hot_c=data.threshold("ELC hot degC", HOT_C),
         cable=path,
-        cells=tuple(dict.fromkeys(cells)),
     )
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Source:
+    name: str = "supply"
+    kindest_v: float | None = None
+    worst_v: float | None = None
+    at_20_ma_v: float | None = None
+    receiver_counts: bool = True
+
+
+def _source(circuit: Circuit, current_ma: float, data: PlantData, found: _InSeries, *, fails_low: bool) -> _Source:
+    if circuit.barrier_named and circuit.barrier is None:
+        # It may be an isolator, and then the supply is none of this circuit's.
+        found.missing.append("barrier")
+        return _Source(name="barrier")
+    stating = _stating(circuit)
+    if stating is not None:
+        name, entry = stating
+        # Where it states no current of its own, its high alarm is the transmitter's.
+        alarm_ma = entry.high_alarm_ma or (0.0 if fails_low else current_ma)
+        volts = stated_volts(((NOMINAL_MA, entry.available_20ma_v), (alarm_ma, entry.available_alarm_v)), current_ma)
+        if volts is None:
+            at_alarm = not fails_low and entry.available_alarm_v is None
+            found.missing.append(f"volts available at {'high alarm' if at_alarm else f'{current_ma:g} mA'}")
+        return _Source(
+            name=name, kindest_v=volts, worst_v=volts, at_20_ma_v=entry.available_20ma_v, receiver_counts=False
+        )
+    if circuit.supply_min_v is not None:
+        volts = circuit.supply_min_v.number
+        return _Source(kindest_v=volts, worst_v=volts, at_20_ma_v=volts)
+    if circuit.supply_nominal_v is not None:
+        percent = data.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
+        nominal_v = circuit.supply_nominal_v.number
+        found.assumed.append(f"supply {nominal_v:g} V may be {percent:g} % low")
+        volts = nominal_v * (1 - percent / 100)
+        return _Source(kindest_v=nominal_v, worst_v=volts, at_20_ma_v=volts)
+    found.missing.append("supply V min")
+    return _Source(kindest_v=circuit.supply_max_v.number if circuit.supply_max_v is not None else None)
+
+
+# -------------------------------------------------------------------------------------------------- the highest volts
 
 
 def highest_volts(circuit: Circuit, data: PlantData) -> HighestVolts:
@@ -270,201 +529,79 @@ def highest_volts(circuit: Circuit, data: PlantData) -> HighestVolts:
     data
         The plant's data: supply tolerance, receiver, cold conductor.
     """
-    device = circuit.device
-    missing: list[str] = []
-    assumed: list[str] = []
-    cells: list[Cell] = []
-    allowed_v = device.type.maximum_v if device.type else None
+    allowed_v = circuit.device.type.maximum_v if circuit.device.type else None
     if allowed_v is None:
-        missing.append("maximum V")
-    else:
-        cells.extend(device.cells("type.maximum_v"))
-    barrier = circuit.barrier
-    if circuit.barrier_named and barrier is None:
-        missing.append("barrier")
-    isolated = barrier is not None and _is_isolator(barrier)
-    source = circuit.card if barrier is None and circuit.card and circuit.card.available_20ma_v else None
-    if isolated or source is not None:
-        # The volts that an isolator states are those at 20 mA; its Uo is more than it ever gives.
-        limit_v = (barrier if isolated else source).uo_v  # type: ignore[union-attr]
-        if limit_v is not None and allowed_v is not None and limit_v <= allowed_v:
-            bound = over_voltage(limit_v, allowed_v=allowed_v, current_ma=0.0)
-            return HighestVolts(allowed_v=allowed_v, kindest=bound, worst=bound, cells=tuple(cells))
-        return HighestVolts(allowed_v=allowed_v, missing=(*missing, "the isolator's highest volts"))
-    kindest_v = worst_v = None
-    if circuit.supply_max_v is not None:
-        kindest_v = worst_v = circuit.supply_max_v.number
-        cells.extend(circuit.supply_max_v.cells)
-    elif circuit.supply_nominal_v is not None:
-        percent = data.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
-        kindest_v = circuit.supply_nominal_v.number
-        worst_v = kindest_v * (1 + percent / 100)
-        cells.extend(circuit.supply_nominal_v.cells)
-        assumed.append(f"supply {kindest_v:g} V may be {percent:g} % high")
-    else:
-        missing.append("supply V max")
-    series, drops = _in_series(circuit, 3.6, missing, cells)
-    receiver = circuit.receiver_ohm
-    default_ohm = data.threshold("ELC receiver ohm", RECEIVER_OHM)
-    # Here a load is kind: it takes volts from the transmitter. The default is the kindest that is common,
-    # no receiver the other end.
-    kind_series = [*series, ("receiver", receiver.number if receiver else default_ohm)]
-    worst_series = [*series, *([("receiver", receiver.number)] if receiver else [])]
-    if receiver is not None:
-        cells.extend(receiver.cells)
-    else:
-        worst_series.append(("receiver", default_ohm))
-        assumed.append(f"receiver {default_ohm:g} ohm")
-    area = device.area
-    cold_c = area.ambient_min_c if area is not None and area.ambient_min_c is not None else None
-    if cold_c is None:
-        cold_c = data.threshold("ELC cold degC", COLD_C)
-    path = cable_path(circuit)
-    if path is not None:
-        kind_series.append(("cable", path.ohm(cold_c)))
-        worst_series.append(("cable", path.ohm(cold_c)))
-    kindest = worst = None
-    if allowed_v is not None and not missing and kindest_v is not None and worst_v is not None:
-        kindest = over_voltage(kindest_v, allowed_v=allowed_v, resistances=kind_series, fixed_drops=drops)
-        worst = over_voltage(worst_v, allowed_v=allowed_v, resistances=worst_series, fixed_drops=drops)
+        return HighestVolts(missing=("maximum V",))
+    if circuit.barrier_named and circuit.barrier is None:
+        return HighestVolts(allowed_v=allowed_v, missing=("barrier",))
+    stating = _stating(circuit)
+    if stating is not None:
+        return _from_a_source(*stating, circuit=circuit, allowed_v=allowed_v, data=data)
+    found = _in_series(circuit, LOWEST_MA)
+    kindest_v, highest_v = _highest_supply(circuit, data, found)
+    kindest, series = _with_receiver(circuit, data, found, kindest_ohm=LARGEST_RECEIVER_OHM)
+    cable = _cold_cable(circuit, data)
+    if found.missing:
+        # What a device in series takes nobody says: nothing is certain to fail.
+        kindest_v = None
+    if highest_v is None:
+        found.missing.append("supply V max")
     return HighestVolts(
         allowed_v=allowed_v,
-        missing=tuple(dict.fromkeys(missing)),
-        kindest=kindest,
-        worst=worst,
-        assumed=tuple(assumed),
-        resistances=tuple(worst_series),
-        fixed_drops=tuple(drops),
-        cells=tuple(dict.fromkeys(cells)),
+        missing=tuple(found.missing),
+        assumed=tuple(found.assumed),
+        kindest_v=kindest_v,
+        highest_v=highest_v,
+        kindest_resistances=(*kindest, cable or ("cable", LONG_CABLE_OHM)),
+        resistances=(*series, cable) if cable is not None else series,
+        fixed_drops=tuple(found.drops),
     )
 
 
-@lru_cache(maxsize=4096)
-def _conductor(text: str) -> Conductor | None:
-    return read_conductor_size(text)
+def _cold_cable(circuit: Circuit, data: PlantData) -> tuple[str, float] | None:
+    path = cable_path(circuit)
+    if path is None:
+        return None
+    area = circuit.device.area
+    cold_c = area.ambient_min_c if area is not None else None
+    return "cable", path.ohm(data.threshold("ELC cold degC", COLD_C) if cold_c is None else cold_c)
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class _Source:
-    name: str
-    kindest_v: float | None
-    worst_v: float | None
-    receiver_counts: bool
-    same_at_20_ma: bool
-
-
-def _source(
-    circuit: Circuit,
-    current_ma: float,
-    data: PlantData,
-    assumed: list[str],
-    missing: list[str],
-    cells: list[Cell],
-) -> _Source:
-    barrier = circuit.barrier
-    if circuit.barrier_named and barrier is None:
-        missing.append("barrier")
-        return _Source(name="barrier", kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=False)
-    entry = None
-    name = "supply"
-    if barrier is not None and _is_isolator(barrier):
-        entry, name = barrier, "isolator"
-    elif barrier is None and circuit.card is not None and circuit.card.available_20ma_v is not None:
-        entry, name = circuit.card, "card"
-    if entry is not None:
-        volts, title = _available_v(entry.available_20ma_v, entry.available_alarm_v, entry.high_alarm_ma, current_ma)
-        if volts is None:
-            missing.append(title)
-        cells.extend(entry.cells("available_alarm_v" if current_ma > NOMINAL_MA else "available_20ma_v"))
-        return _Source(name=name, kindest_v=volts, worst_v=volts, receiver_counts=False, same_at_20_ma=False)
-    if circuit.supply_min_v is not None:
-        cells.extend(circuit.supply_min_v.cells)
-        volts = circuit.supply_min_v.number
-        return _Source(name=name, kindest_v=volts, worst_v=volts, receiver_counts=True, same_at_20_ma=True)
+def _highest_supply(circuit: Circuit, data: PlantData, found: _InSeries) -> tuple[float | None, float | None]:
+    """Return the highest supply with the kindest value that could be true, and with the default."""
+    if circuit.supply_max_v is not None:
+        return circuit.supply_max_v.number, circuit.supply_max_v.number
     if circuit.supply_nominal_v is not None:
         percent = data.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
         nominal_v = circuit.supply_nominal_v.number
-        cells.extend(circuit.supply_nominal_v.cells)
-        assumed.append(f"supply {nominal_v:g} V may be {percent:g} % low")
-        return _Source(
-            name=name,
-            kindest_v=nominal_v,
-            worst_v=nominal_v * (1 - percent / 100),
-            receiver_counts=True,
-            same_at_20_ma=True,
+        found.assumed.append(f"supply {nominal_v:g} V may be {percent:g} % high")
+        return nominal_v, nominal_v * (1 + percent / 100)
+    return (circuit.supply_min_v.number if circuit.supply_min_v is not None else None), None
+
+
+def _from_a_source(
+    name: str, entry: DeviceType, *, circuit: Circuit, allowed_v: float, data: PlantData
+) -> HighestVolts:
+    """Bound the volts of a source that states them at 20 mA: at 3.6 mA it gives no less, and never more than its Uo."""
+    found = _in_series(circuit, LOWEST_MA)
+    ceilings = [] if entry.uo_v is None else [entry.uo_v]
+    if name == "card":
+        _, highest_v = _highest_supply(circuit, data, found)
+        if highest_v is not None:
+            ceilings.append(highest_v)
+    highest_v = min(ceilings, default=None)
+    if highest_v is not None and not below(allowed_v, highest_v):
+        return HighestVolts(
+            allowed_v=allowed_v, assumed=tuple(found.assumed), kindest_v=highest_v, highest_v=highest_v, current_ma=0.0
         )
-    missing.append("supply V min")
-    return _Source(name=name, kindest_v=None, worst_v=None, receiver_counts=True, same_at_20_ma=True)
-
-
-def _available_v(
-    at_20_ma_v: float | None, at_alarm_v: float | None, alarm_ma: float | None, current_ma: float
-) -> tuple[float | None, str]:
-    """Return the volts of a source at the current they are stated for, and the title that is missing if not."""
-    if current_ma <= NOMINAL_MA:
-        return at_20_ma_v, "volts available at 20 mA"
-    if at_alarm_v is not None and (alarm_ma is None or current_ma <= alarm_ma):
-        return at_alarm_v, ""
-    return None, "volts available at high alarm"
-
-
-def _is_isolator(barrier: object) -> bool:
-    stated = getattr(barrier, "isolation", None)
-    if stated is not None:
-        return bool(stated == "isolator")
-    return getattr(barrier, "available_20ma_v", None) is not None
-
-
-def _lift_off_v(circuit: Circuit, current_ma: float) -> tuple[float | None, str]:
-    kind = circuit.device.type
-    if kind is None:
-        return None, "type.lift_off_v"
-    if current_ma > LOW_FAILURE_MA and kind.lift_off_alarm_v is not None:
-        return kind.lift_off_alarm_v, "type.lift_off_alarm_v"
-    return kind.lift_off_v, "type.lift_off_v"
-
-
-def _in_series(
-    circuit: Circuit, current_ma: float, missing: list[str], cells: list[Cell]
-) -> tuple[list[tuple[str, float]], list[tuple[str, float]]]:
-    """Return what lies in series beside receiver and cable: resistances in ohm and fixed drops in volts."""
-    series: list[tuple[str, float]] = []
-    drops: list[tuple[str, float]] = []
-    barrier = circuit.barrier
-    if barrier is not None and not _is_isolator(barrier):
-        if barrier.resistance_ohm is None and barrier.fixed_drop_v is None:
-            missing.append("resistance ohm of the barrier")
-        if barrier.resistance_ohm is not None:
-            series.append(("barrier", barrier.resistance_ohm))
-            cells.extend(barrier.cells("resistance_ohm"))
-        if barrier.fixed_drop_v is not None:
-            drops.append(("barrier", barrier.fixed_drop_v))
-    for member in circuit.members:
-        if member is circuit.device or member.kind is not Kind.INDICATOR:
-            continue
-        _indicator(member, current_ma, series, drops, missing, cells)
-    return series, drops
-
-
-def _indicator(
-    member: Installed,
-    current_ma: float,
-    series: list[tuple[str, float]],
-    drops: list[tuple[str, float]],
-    missing: list[str],
-    cells: list[Cell],
-) -> None:
-    kind = member.type
-    if kind is None or (kind.resistance_ohm is None and kind.fixed_drop_v is None):
-        missing.append(f"resistance ohm or fixed drop V of {member.name}")
-        return
-    if kind.fixed_drop_v is not None:
-        drops.append((member.name, kind.fixed_drop_v))
-        cells.extend(member.cells("type.fixed_drop_v"))
-    if kind.resistance_ohm is not None:
-        # With the indicator taken out the diode carries the loop, and drops its own volts.
-        if kind.bypass_diode and kind.resistance_ohm * current_ma / 1000 < DIODE_V:
-            drops.append((f"diode of {member.name}", DIODE_V))
-        else:
-            series.append((member.name, kind.resistance_ohm))
-        cells.extend(member.cells("type.resistance_ohm"))
+    cable = _cold_cable(circuit, data)
+    kindest_v = None if found.missing else entry.available_20ma_v
+    found.missing.append("Uo V" if highest_v is None and name == "isolator" else "volts available at 3.6 mA")
+    return HighestVolts(
+        allowed_v=allowed_v,
+        missing=tuple(found.missing),
+        kindest_v=kindest_v,
+        kindest_resistances=(*found.ohm, cable or ("cable", LONG_CABLE_OHM)),
+        resistances=(*found.ohm, cable) if cable is not None else tuple(found.ohm),
+        fixed_drops=tuple(found.drops),
+    )

@@ -20,7 +20,10 @@ THERMOCOUPLE = "TC"
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Given:
-    """A number of a circuit with where it came from: ``loop row``, ``row``, ``type``, ``card``, ``cables``."""
+    """A number of a circuit with where it came from.
+
+    `source` is ``loop row``, ``row`` (of the device), ``power supply``, ``card`` or ``cables``.
+    """
 
     number: float
     source: str
@@ -28,8 +31,20 @@ class Given:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Segment:
+    """One cable of a run whose cables are not of one type."""
+
+    name: str
+    length_m: float
+    type: CableType | None = None
+    conductor: str | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
 class Circuit:
     """One signal with its devices in order from the field to the system.
+
+    Compared by identity: two signals that are alike are still two.
 
     Attributes
     ----------
@@ -52,6 +67,12 @@ class Circuit:
         Catalogue entries, where they are named and listed; the `_named` texts as written.
     supply_min_v, supply_nominal_v, supply_max_v
         What is stated of the supply.
+    receiver_ohm
+        What the signal's receiver comes to: the range resistor with the inputs across it.
+    receivers
+        All that are stated: of the loop list, the row, the card.
+    cable_length_m, cable_type, conductor
+        The whole run. Where its cables differ in type, `segments` are those cables.
     powered_by_loop
         True where the device takes its supply from the signal pair, False where it has one of its
         own, None where nothing says.
@@ -75,10 +96,12 @@ class Circuit:
     supply_max_v: Given | None = None
     supply_named: str | None = None
     receiver_ohm: Given | None = None
+    receivers: tuple[Given, ...] = ()
     cable_length_m: Given | None = None
     cable_type: CableType | None = None
     cable_type_named: str | None = None
     conductor: str | None = None
+    segments: tuple[Segment, ...] = ()
     hart: bool | None = None
     intrinsically_safe: bool | None = None
     wires: int | None = None

@@ -36,7 +36,7 @@ from instruments.workbook.lists import Lists
 from instruments.workbook.problem import CellProblem
 from loops.circuit import Circuit, Loop
 from loops.record import Cable, CableType, LoopRow, Termination
-from loops.wiring import wire
+from loops.wiring import loop_key, wire
 
 _RECORD_OWN = frozenset(each.name for each in dataclasses.fields(Record))
 _FIELDS = tuple(each.name for each in dataclasses.fields(Instrument) if each.name not in _RECORD_OWN)
@@ -185,7 +185,7 @@ class Plant:
 
     def loop_of(self, installed: Installed) -> Loop | None:
         """Return the loop an instrument belongs to."""
-        return self._by_loop.get(_key(installed.loop)) if installed.loop else None
+        return self._by_loop.get(loop_key(installed.loop)) if installed.loop else None
 
     def circuits_of(self, installed: Installed) -> tuple[Circuit, ...]:
         """Return the circuits that an instrument stands on."""
@@ -312,7 +312,7 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         _columns=lists.index_columns,
     )
     plant.circuits, plant.loops = wire(plant)
-    plant._by_loop = {_key(loop.name): loop for loop in plant.loops}
+    plant._by_loop = {loop_key(loop.name): loop for loop in plant.loops}
     on: dict[int, list[Circuit]] = defaultdict(list)
     for circuit in plant.circuits:
         for member in circuit.members:
@@ -740,13 +740,13 @@ def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[
         if each.live and each.loop:
             functions = each.letters[1:]
             if "T" in functions or "E" in functions:
-                bears.add(_key(each.loop))
+                bears.add(loop_key(each.loop))
             if "T" in functions:
-                transmits.add(_key(each.loop))
+                transmits.add(loop_key(each.loop))
     result: list[Installed] = []
     for each in found:
         record = each.record
-        loop = _key(each.loop)
+        loop = loop_key(each.loop)
         signal = any(row.signal or row.io_type or row.io_address or row.card for row in each.signals)
         point = bool(
             loop

@@ -4,12 +4,17 @@ from __future__ import annotations
 
 import re
 from collections import defaultdict
-from collections.abc import Sequence
-from typing import TYPE_CHECKING, Any
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import replace
+from functools import lru_cache
+from itertools import zip_longest
+from typing import TYPE_CHECKING, Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
-from instruments.record import DeviceType, Instrument
+from instruments.measurement import variable_of
+from instruments.record import Instrument
+from instruments.signal_words import io_types, signal_classes
 from instruments.tag import natural_key
 from loops.circuit import (
     ANALOGUE_INPUT,
@@ -19,39 +24,40 @@ from loops.circuit import (
     RESISTANCE_THERMOMETER,
     THERMOCOUPLE,
     Circuit,
-    Given,
     Loop,
 )
+from loops.given import cable_run, in_parallel, receivers_of, supply_of, supply_words, volts_in
 from loops.record import LoopRow
 
 if TYPE_CHECKING:
     from loops.plant import Plant
 
+__all__ = ["circuit_kind", "has_io", "loop_key", "transmitter_of", "volts_in", "wire"]
+
 # What stands in an I/O column where there is no I/O.
-_NO_IO = frozenset(
+_NO_IO: Final = frozenset(
     {"", "none", "soft", "-", "local", "no", "n/a", "na", "0", "nil", "not applicable", "pneumatic", "mechanical",
-     "software", "calc", "calculated", "internal", "lokal", "keine", "ohne"}
+     "software", "virtual", "calc", "calculated", "internal", "lokal", "keine", "ohne"}
 )  # fmt: skip
-_VOLTS = re.compile(
-    r"(?<![\d.,])(\d{1,3}(?:[.,]\d{1,2})?)\s*v(?![a-z]*a\b)\s*(ac|dc|d\.c\.|a\.c\.|=|~)?", re.IGNORECASE
-)
-_LOOP_POWERED = re.compile(r"\b(loop|2[\s-]?wire|two[\s-]?wire|2l)\b", re.IGNORECASE)
-_KIND_WORDS = (
-    (re.compile(r"^(?:is[\s-]?|sis[\s-]?|h)?ai\b|analog\w* in", re.IGNORECASE), ANALOGUE_INPUT),
-    (re.compile(r"^(?:is[\s-]?)?ao\b|analog\w* out", re.IGNORECASE), ANALOGUE_OUTPUT),
-    (re.compile(r"^(?:is[\s-]?)?d[io]\s*/\s*d[io]\b", re.IGNORECASE), DIGITAL_INPUT),
-    (re.compile(r"^(?:is[\s-]?)?di\b|digital in|binary in|discrete in", re.IGNORECASE), DIGITAL_INPUT),
-    (re.compile(r"^(?:is[\s-]?)?do\b|digital out|binary out|discrete out", re.IGNORECASE), DIGITAL_OUTPUT),
-    (re.compile(r"^rtd\b|^pt\s?100\b|resistance", re.IGNORECASE), RESISTANCE_THERMOMETER),
-    (re.compile(r"^t/?c\b|thermoc", re.IGNORECASE), THERMOCOUPLE),
+# What a loop list calls the kinds of circuit.
+_CIRCUIT_KINDS: Final = frozenset(
+    {ANALOGUE_INPUT, ANALOGUE_OUTPUT, DIGITAL_INPUT, DIGITAL_OUTPUT, RESISTANCE_THERMOMETER, THERMOCOUPLE}
 )
 # Devices whose signal makes a circuit though no I/O is given for it.
-_SIGNAL_KINDS = frozenset(kind for kind in Kind if kind.wired in ("yes", "element"))
-_TRANSMITTERS = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR})
-_VALVE_DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
-_DRIVEN_VALVES = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
+_SIGNAL_KINDS: Final = frozenset(kind for kind in Kind if kind.wired in ("yes", "element"))
+_TRANSMITTERS: Final = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR})
+_POSITIONERS: Final = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER})
+_VALVE_DRIVES: Final = _POSITIONERS | {Kind.SOLENOID}
+_DRIVEN_VALVES: Final = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
+# Through whose signal a device lies that has none of its own.
+_LIES_IN: Final[Mapping[Kind, frozenset[Kind]]] = {
+    Kind.ELEMENT: _TRANSMITTERS,
+    Kind.INDICATOR: _TRANSMITTERS,
+    Kind.CONTROL_VALVE: _VALVE_DRIVES,
+    Kind.ON_OFF_VALVE: _VALVE_DRIVES,
+}
 # From the field to the system; what is not named stands with the device.
-_FIELD_ORDER = {
+_FIELD_ORDER: Final = {
     Kind.ELEMENT: 0,
     Kind.CONTROL_VALVE: 0,
     Kind.ON_OFF_VALVE: 0,
@@ -61,7 +67,18 @@ _FIELD_ORDER = {
     Kind.ISOLATOR: 4,
     Kind.CARD: 5,
 }
-_WITH_DEVICE = 1
+_WITH_DEVICE: Final = 1
+_WIRES: Final = re.compile(r"\b([234])[ -]?(?:wire|leiter|fils|draht)|\b(two|three|four)[ -]wire", re.IGNORECASE)
+_WIRE_WORDS: Final = {"two": 2, "three": 3, "four": 4}
+_LOOP_POWERED: Final = re.compile(r"\b(?:loop|2[ -]?wire|two[ -]?wire|2l)\b", re.IGNORECASE)
+
+
+class _Signal(NamedTuple):
+    """A signal that makes a circuit: whose, the row that gives it, and its row of the loop list."""
+
+    device: Installed
+    given: Instrument
+    row: LoopRow | None
 
 
 def wire(plant: Plant) -> tuple[tuple[Circuit, ...], tuple[Loop, ...]]:
@@ -69,73 +86,121 @@ def wire(plant: Plant) -> tuple[tuple[Circuit, ...], tuple[Loop, ...]]:
 
     A circuit is one I/O address, one row of the loop list, or one wired instrument; a loop has one
     or more. Devices without a signal of their own (an element beside its transmitter, an indicator
-    in series, the valve of a positioner) stand on the circuit of the device that has it.
+    in series, the valve of a positioner) stand on the circuit of the device that has it, and so do
+    those whose row only repeats that device's address.
     """
+    live = [each for each in plant.instruments if each.live]
     by_loop: dict[str, list[Installed]] = defaultdict(list)
-    names: dict[str, str] = {}
-    for each in plant.instruments:
-        if each.live and each.loop:
-            key = _key(each.loop)
-            by_loop[key].append(each)
-            names.setdefault(key, each.loop)
-    rows = _LoopRows(plant)
-    made: list[tuple[Installed, Instrument, LoopRow | None]] = []
-    for each in plant.instruments:
-        if not each.live:
-            continue
-        made.extend(
-            (each, signal, rows.row_for(each, signal)) for signal in _signals(each, by_loop, plant, rows)
-        )
-    circuits = _circuits(made, by_loop, plant, rows)
+    for each in live:
+        if each.loop:
+            by_loop[loop_key(each.loop)].append(each)
+    rows = _LoopRows(plant, by_loop)
+    own: dict[int, tuple[Instrument, ...]] = {}
+    hosts: dict[int, Installed] = {}
+    for members in by_loop.values():
+        signals = {id(each): _signals(each, members, rows) for each in members}
+        if len(members) > 1:
+            hosts.update(_share(members, signals, rows))
+        own.update(signals)
+    made: list[_Signal] = []
+    for each in live:
+        signals_of = own[id(each)] if each.loop else _signals(each, (), rows)
+        made.extend(rows.assigned(each, signals_of))
+    circuits = _circuits(made, hosts, live, plant, rows)
     on_loop: dict[str, list[Circuit]] = defaultdict(list)
     for circuit in circuits:
         if circuit.loop:
-            on_loop[_key(circuit.loop)].append(circuit)
+            on_loop[loop_key(circuit.loop)].append(circuit)
+    named = [(members[0].loop or "", key, members) for key, members in by_loop.items()]
+    named.sort(key=lambda item: natural_key(item[0]))
     loops = tuple(
-        Loop(name=names[key], members=tuple(members), circuits=tuple(on_loop.get(key, ())))
-        for key, members in sorted(by_loop.items(), key=lambda item: natural_key(names[item[0]]))
+        Loop(name=name, members=tuple(members), circuits=tuple(on_loop.get(key, ()))) for name, key, members in named
     )
     return circuits, loops
+
+
+@lru_cache(maxsize=200_000)
+def loop_key(text: str | None) -> str:
+    """Return a loop number's key: P-101, P 101 and p101 are one loop, P-101-1 and P-1011 are two.
+
+    >>> loop_key("P 101"), loop_key("p101") == loop_key("P-101"), loop_key("P-101-1") == loop_key("P-1011")
+    ('p-101', True, False)
+    """
+    if not text:
+        return ""
+    parts: list[str] = re.findall(r"[^\W\d_]+|\d+", text.casefold())
+    return "-".join(parts) or "".join(text.split()).casefold()
 
 
 class _LoopRows:
     """The rows of the loop list, found by tag or by loop number."""
 
-    def __init__(self, plant: Plant) -> None:
+    def __init__(self, plant: Plant, loops: Mapping[str, object]) -> None:
         self.by_device: dict[int, list[LoopRow]] = defaultdict(list)
         self.by_number: dict[str, list[LoopRow]] = defaultdict(list)
         self.count: dict[str, int] = defaultdict(int)
+        self._used: set[int] = set()
         for row in plant.loop_rows:
             if row.number:
-                self.count[_key(row.number)] += 1
-            devices = plant.by_tag(row.circuit) if row.circuit else ()
-            for device in devices:
+                self.count[loop_key(row.number)] += 1
+            named = plant.by_tag(row.circuit) if row.circuit else ()
+            if not named and row.number:
+                # Pump P-101 has the number of the pressure loop P-101.
+                a_loop = loop_key(row.number) in loops
+                named = tuple(each for each in plant.by_tag(row.number) if not (a_loop and each.equipment_tag))
+            wired = [device for device in named if not _is_soft(device)]
+            for device in wired:
                 self.by_device[id(device)].append(row)
-            if not devices and row.number:
-                named = plant.by_tag(row.number)
-                for device in named:
-                    self.by_device[id(device)].append(row)
-                if not named:
-                    self.by_number[_key(row.number)].append(row)
+            if wired:
+                continue
+            # A controller's or an indication's row in the loop list is its loop's.
+            for text in (row.number, row.circuit, *(device.loop for device in named)):
+                if text and loop_key(text) in loops:
+                    self.by_number[loop_key(text)].append(row)
+                    break
 
-    def row_for(self, each: Installed, signal: Instrument) -> LoopRow | None:
-        """Return the row that describes the circuit of a device's signal."""
-        own = self.by_device.get(id(each), [])
-        if own:
-            kind = circuit_kind(signal.io_type) or circuit_kind(signal.signal)
-            for row in own:
-                if len(own) == 1 or kind is None or circuit_kind(row.kind) == kind:
-                    return row
-            return own[0]
-        if not each.loop:
+    def assigned(self, each: Installed, signals: Iterable[Instrument]) -> list[_Signal]:
+        """Return a device's signals with their rows, and its rows that no signal of the index answers to."""
+        named = self.by_device.get(id(each))
+        if named is None:
+            return [_Signal(each, given, self._of_loop(each, given)) for given in signals]
+        made: list[_Signal] = []
+        left = list(named)
+        for given in signals:
+            kind = circuit_kind(given.io_type) or circuit_kind(given.signal)
+            row = next((row for row in left if kind is not None and circuit_kind(row.kind) == kind), None)
+            if row is None:
+                row = next((row for row in left if kind is None or circuit_kind(row.kind) is None), None)
+            if row is not None:
+                left.remove(row)
+            made.append(_Signal(each, given, row))
+        if not made or not left:
+            return made
+        if len(made) == 1 and made[0].row is None:
+            # One signal and rows of other kinds: the two papers disagree in the kind, not in the signal.
+            made[0] = made[0]._replace(row=left.pop(0))
+        made.extend(_Signal(each, made[0].given, row) for row in left)
+        return made
+
+    def _of_loop(self, each: Installed, given: Instrument) -> LoopRow | None:
+        of_loop = self.by_number.get(loop_key(each.loop)) if each.loop else None
+        if not of_loop:
             return None
-        kind = _signal_kind(each, signal)
-        of_loop = self.by_number.get(_key(each.loop), [])
-        for row in of_loop:
-            stated = circuit_kind(row.kind)
-            if stated is None or kind is None or stated == kind:
-                return row
-        return None
+        kind = _signal_kind(each, given)
+        fitting = [
+            row for row in of_loop if kind is None or (stated := circuit_kind(row.kind)) is None or stated == kind
+        ]
+        if not fitting:
+            return None
+        # Rows that give only a number are its circuits in the order of their tags; one alone is for all.
+        row = next((row for row in fitting if id(row) not in self._used), fitting[0])
+        self._used.add(id(row))
+        return row
+
+
+def _is_soft(device: Installed) -> bool:
+    soft = device.kind is Kind.SOFT_FUNCTION or device.record.location == "system"
+    return soft and not any(map(has_io, device.signals))
 
 
 def circuit_kind(text: str | None) -> str | None:
@@ -146,51 +211,54 @@ def circuit_kind(text: str | None) -> str | None:
     """
     if not text:
         return None
-    for pattern, kind in _KIND_WORDS:
-        if pattern.search(text.strip()):
-            return kind
-    return None
+    return next((kind for kind in io_types(text) if kind in _CIRCUIT_KINDS), None)
 
 
-def _signal_kind(each: Installed, signal: Instrument) -> str | None:
-    stated = circuit_kind(signal.io_type)
+def _signal_kind(each: Installed, given: Instrument) -> str | None:
+    """Return the kind of circuit that a signal makes: as its I/O type says, else as its device's kind tells."""
+    stated = circuit_kind(given.io_type)
     if stated:
         return stated
-    text = (signal.signal or (each.type.signal if each.type else None) or "").casefold()
-    if each.kind is Kind.ELEMENT:
-        if "pt" in text or "rtd" in text:
+    kind = each.kind
+    classes = signal_classes(given.signal) or (signal_classes(each.type.signal) if each.type else frozenset())
+    if kind is Kind.ELEMENT:
+        if "RTD" in classes:
             return RESISTANCE_THERMOMETER
-        if "tc" in text or "thermo" in text or "type" in text:
+        if "thermocouple" in classes:
             return THERMOCOUPLE
-    if each.kind in _TRANSMITTERS or each.measuring_point:
-        return ANALOGUE_INPUT if "ma" in text or "hart" in text or not text else None
-    if each.kind in (Kind.SWITCH, Kind.HAND_SWITCH):
+    if kind in _TRANSMITTERS or kind is Kind.ELEMENT or each.measuring_point:
+        wanted = classes & {"current", "voltage"}
+        return ANALOGUE_INPUT if wanted or (not classes and kind is not Kind.ELEMENT) else None
+    if kind in (Kind.SWITCH, Kind.HAND_SWITCH):
         return DIGITAL_INPUT
-    if each.kind in (Kind.POSITIONER, Kind.IP_CONVERTER):
+    if kind in _POSITIONERS:
         return ANALOGUE_OUTPUT
-    if each.kind in (Kind.SOLENOID, Kind.LAMP, Kind.SOUNDER):
+    if kind in (Kind.SOLENOID, Kind.LAMP, Kind.SOUNDER):
         return DIGITAL_OUTPUT
-    if each.kind in _DRIVEN_VALVES:
-        return ANALOGUE_OUTPUT if "ma" in text else None
+    if kind in _DRIVEN_VALVES:
+        return ANALOGUE_OUTPUT if "current" in classes else None
     return None
 
 
-def _signals(
-    each: Installed, by_loop: dict[str, list[Installed]], plant: Plant, rows: _LoopRows
-) -> list[Instrument]:
+# --------------------------------------------------------------------------------------- the signals of a device
+
+
+def _signals(each: Installed, loop: Sequence[Installed], rows: _LoopRows) -> tuple[Instrument, ...]:
     """Return the rows of an instrument that make a circuit each."""
-    if each.record.location == "system" and not any(has_io(row) for row in each.signals):
-        return []
     with_io = [row for row in each.signals if has_io(row)]
     if with_io:
-        return with_io
+        if all("," not in row.io_address and "/" not in row.io_address for row in with_io if row.io_address):
+            return tuple(with_io)
+        return tuple(part for row in with_io for part in _one_an_address(row))
+    if each.record.location == "system":
+        return ()
     if id(each) in rows.by_device:
-        return [each.signals[0] if each.signals else each.record]
-    if each.kind not in _SIGNAL_KINDS or each.kind is None or each.equipment_tag:
-        return []
-    if each.kind is Kind.ELEMENT and transmitter_of(each, by_loop.get(_key(each.loop), ())) is not None:
-        return []
-    return [each.record]
+        return (each.signals[0] if each.signals else each.record,)
+    if each.kind not in _SIGNAL_KINDS or each.equipment_tag:
+        return ()
+    if each.kind is Kind.ELEMENT and len(loop) > 1 and transmitter_of(each, loop) is not None:
+        return ()
+    return (each.record,)
 
 
 def has_io(row: Instrument) -> bool:
@@ -198,134 +266,267 @@ def has_io(row: Instrument) -> bool:
     return bool(row.io_address or (row.io_type and row.io_type.strip().casefold() not in _NO_IO))
 
 
+_ADDRESSES: Final = re.compile(r" ?[,;\n] ?| / | & | \+ ")
+
+
+def _one_an_address(row: Instrument) -> tuple[Instrument, ...]:
+    """Part a row whose cell holds several addresses: each is a signal, with its part of the I/O type."""
+    addresses = [part for part in _ADDRESSES.split(row.io_address or "") if part.strip()]
+    if len(addresses) < 2:
+        return (row,)
+    kinds = io_types(row.io_type)
+    if len(kinds) != len(addresses):
+        return tuple(replace(row, io_address=address) for address in addresses)
+    return tuple(replace(row, io_address=address, io_type=kind) for address, kind in zip_longest(addresses, kinds))
+
+
 def transmitter_of(element: Installed, loop: Sequence[Installed]) -> Installed | None:
     """Return the transmitter that an element of the loop is wired to; None where there is none.
 
-    Where the loop has several, the one with the element's suffix.
+    It measures what the element measures: where all letters share one series of numbers, a flow
+    transmitter of the same number is another loop's. Where the loop has several, the one with the
+    element's suffix.
     """
-    transmitters = [each for each in loop if each is not element and each.kind in _TRANSMITTERS]
-    if not transmitters:
+    return _nearest(element, [each for each in loop if each.kind in _TRANSMITTERS and each is not element])
+
+
+def _nearest(other: Installed, candidates: Sequence[Installed], *, any_variable: bool = False) -> Installed | None:
+    """Return the device that another belongs to: of the same variable, and of the same suffix if there is one."""
+    if not candidates:
         return None
-    suffix = element.tag.suffix if element.tag else None
-    for each in transmitters:
-        if each.tag is not None and each.tag.suffix == suffix:
-            return each
-    return transmitters[0]
+    variable = variable_of(other)[:1]
+    alike = [each for each in candidates if not variable or variable_of(each)[:1] in ("", variable)]
+    if not alike:
+        if not any_variable:
+            return None
+        alike = list(candidates)
+    suffix = other.tag.suffix if other.tag else None
+    return next((each for each in alike if each.tag is not None and each.tag.suffix == suffix), alike[0])
+
+
+def _share(
+    members: Sequence[Installed], signals: dict[int, tuple[Instrument, ...]], rows: _LoopRows
+) -> dict[int, Installed]:
+    """Find the devices of a loop that lie in another's signal; those lose what their rows only repeat."""
+    hosts: dict[int, Installed] = {}
+
+    def carry(kinds: frozenset[Kind], *, besides: Installed) -> list[Installed]:
+        return [
+            each
+            for each in members
+            if signals[id(each)]
+            and each is not besides
+            and (each.kind in kinds or (each.measuring_point and kinds is _TRANSMITTERS))
+        ]
+
+    for each in members:
+        mine = signals[id(each)]
+        if each.kind in _TRANSMITTERS and mine and not any(map(has_io, mine)):
+            _take_from_element(each, members, signals, hosts, rows)
+    for each in members:
+        wanted = _LIES_IN.get(each.kind) if each.kind is not None else None
+        if wanted is None or each.measuring_point or id(each) in hosts:
+            continue
+        carriers = carry(wanted, besides=each)
+        alone = each.kind is Kind.INDICATOR and len(carriers) == 1
+        host = _nearest(each, carriers, any_variable=alone or each.kind in _DRIVEN_VALVES)
+        mine = signals[id(each)]
+        if host is None or (mine and not _repeats(mine, signals[id(host)])):
+            continue
+        if each.kind is Kind.INDICATOR and not (
+            each.record.signal or each.listed_type or each.record.ex_marking or mine
+        ):
+            continue
+        hosts[id(each)] = host
+        signals[id(each)] = ()
+    for each in members:
+        mine = signals[id(each)]
+        if each.kind in _VALVE_DRIVES and mine and not any(map(has_io, mine)) and id(each) not in rows.by_device:
+            valves = [valve for valve in carry(_DRIVEN_VALVES, besides=each) if _drives(each, signals[id(valve)])]
+            host = _nearest(each, valves, any_variable=True)
+            if host is not None:
+                hosts[id(each)] = host
+                signals[id(each)] = ()
+        elif each.kind is Kind.SOFT_FUNCTION and mine:
+            shown = [one for one in members if one is not each and one.kind is not Kind.SOFT_FUNCTION]
+            if any(_repeats(mine, signals[id(one)]) for one in shown):
+                signals[id(each)] = ()
+    return hosts
+
+
+def _take_from_element(
+    each: Installed,
+    members: Sequence[Installed],
+    signals: dict[int, tuple[Instrument, ...]],
+    hosts: dict[int, Installed],
+    rows: _LoopRows,
+) -> None:
+    """Give a transmitter without I/O the channel that its element's row states."""
+    elements = [
+        one
+        for one in members
+        if one.kind is Kind.ELEMENT and any(map(has_io, signals[id(one)])) and id(one) not in rows.by_device
+    ]
+    element = _nearest(each, elements)
+    if element is None:
+        return
+    given = signals[id(element)]
+    if all(set(io_types(row.io_type)) <= {ANALOGUE_INPUT} for row in given):
+        signals[id(each)], signals[id(element)] = given, ()
+        hosts[id(element)] = each
+
+
+def _drives(drive: Installed, of_valve: Iterable[Instrument]) -> bool:
+    """Whether a valve's channel can be its drive's: an analogue output moves no solenoid."""
+    unfit = {DIGITAL_OUTPUT, DIGITAL_INPUT} if drive.kind in _POSITIONERS else {ANALOGUE_OUTPUT, ANALOGUE_INPUT}
+    return any(has_io(row) and not unfit & set(io_types(row.io_type)) for row in of_valve)
+
+
+_CHANNEL: Final = re.compile(r"(?:ch(?:annel)?[\s.:-]*)?\d{1,3}", re.IGNORECASE)
+
+
+def _repeats(mine: Iterable[Instrument], others: Iterable[Instrument]) -> bool:
+    """Whether rows have addresses, and only such as stand on another device's rows too."""
+    addresses = {_address(row) for row in mine}
+    return None not in addresses and bool(addresses) and addresses <= {_address(row) for row in others}
+
+
+def _address(row: Instrument) -> str | None:
+    if not row.io_address:
+        return None
+    text = "".join(row.io_address.split()).casefold()
+    return f"{row.card}:{text}" if _CHANNEL.fullmatch(row.io_address.strip()) else text
+
+
+# ------------------------------------------------------------------------------------------------- the circuits
 
 
 def _circuits(
-    made: list[tuple[Installed, Instrument, LoopRow | None]],
-    by_loop: dict[str, list[Installed]],
+    made: Sequence[_Signal],
+    hosts: Mapping[int, Installed],
+    live: Iterable[Installed],
     plant: Plant,
     rows: _LoopRows,
 ) -> tuple[Circuit, ...]:
     per_loop: dict[str, int] = defaultdict(int)
-    for each, _, row in made:
-        per_loop[_key((row.number if row else None) or each.loop)] += 1
-    carriers: dict[str, list[Installed]] = defaultdict(list)
-    for each, _, _ in made:
-        if each.loop:
-            carriers[_key(each.loop)].append(each)
-    carrying = {id(each) for each, _, _ in made}
+    for device, _, row in made:
+        per_loop[loop_key((row.number if row else None) or device.loop)] += 1
+    riders: dict[int, list[Installed]] = defaultdict(list)
+    for each in live:
+        host = hosts.get(id(each))
+        if host is not None:
+            riders[id(host)].append(each)
+    cables = _cables_of_terminations(plant)
+    barriers: dict[str, tuple[Installed, ...]] = {}
     taken: set[str] = set()
     circuits: list[Circuit] = []
-    for each, signal, row in made:
-        number = (row.number if row is not None else None) or each.loop
-        several = per_loop[_key(number)] > 1 or (number is not None and rows.count.get(_key(number), 0) > 1)
-        name = number or each.name
+    for signal in made:
+        device, _, row = signal
+        number = (row.number if row is not None else None) or device.loop
+        key = loop_key(number)
+        several = per_loop[key] > 1 or rows.count.get(key, 0) > 1
+        name = number or device.name
         if several and number:
-            name = f"{number} {each.name}"
+            name = f"{number} {device.name}"
         called, count = name, 1
         while called in taken:
             count += 1
             called = f"{name} ({count})"
         taken.add(called)
-        kind = circuit_kind(row.kind if row else None) or _signal_kind(each, signal)
-        riders = [
-            other
-            for other in by_loop.get(_key(each.loop), ())
-            if id(other) not in carrying and _rides_on(other, carriers[_key(each.loop)]) is each
-        ]
-        members = sorted(
-            [each, *riders],
-            key=lambda one: _FIELD_ORDER.get(one.kind, _WITH_DEVICE) if one.kind else _WITH_DEVICE,
-        )
-        circuits.append(_circuit(called, each, signal, row, kind, tuple(members), plant))
+        circuits.append(_circuit(called, signal, riders.get(id(device), ()), cables, barriers, plant))
     return tuple(circuits)
 
 
-def _rides_on(other: Installed, carriers: Sequence[Installed]) -> Installed | None:
-    """Return the device whose signal passes through a device that has none of its own."""
-    wanted: frozenset[Kind]
-    if other.kind is Kind.ELEMENT:
-        wanted = _TRANSMITTERS
-    elif other.kind is Kind.INDICATOR:
-        if not (other.record.signal or other.listed_type or other.record.ex_marking):
-            return None
-        wanted = _TRANSMITTERS
-    elif other.kind in _DRIVEN_VALVES:
-        wanted = _VALVE_DRIVES
-    else:
-        return None
-    suitable = [
-        each for each in carriers if each.kind in wanted or (each.measuring_point and wanted is _TRANSMITTERS)
-    ]
-    suffix = other.tag.suffix if other.tag else None
-    for each in suitable:
-        if each.tag is not None and each.tag.suffix == suffix:
-            return each
-    return suitable[0] if suitable else None
+def _cables_of_terminations(plant: Plant) -> dict[str, list[str]]:
+    found: dict[str, list[str]] = defaultdict(list)
+    for row in plant.terminations:
+        if row.circuit and row.cable:
+            found[loop_key(row.circuit)].append(row.cable)
+    return {key: list(dict.fromkeys(names)) for key, names in found.items()}
 
 
 def _circuit(
     name: str,
-    each: Installed,
-    signal: Instrument,
-    row: LoopRow | None,
-    kind: str | None,
-    members: tuple[Installed, ...],
+    signal: _Signal,
+    riders: Sequence[Installed],
+    cables: Mapping[str, Sequence[str]],
+    barriers: dict[str, tuple[Installed, ...]],
     plant: Plant,
 ) -> Circuit:
-    record = each.record
-    card_named = (row.card if row else None) or signal.card or record.card
-    barrier_named = (row.barrier if row else None) or signal.barrier or record.barrier
+    device, given, row = signal
+    record = device.record
+    card_named = (row.card if row else None) or given.card or record.card
+    barrier_named = (row.barrier if row else None) or given.barrier or record.barrier
     card = plant.named_type(card_named)
-    barrier = plant.named_type(barrier_named)
-    supply_named = signal.power_supply or record.power_supply
-    type_named = (row.cable_type if row else None) or signal.cable_type or record.cable_type
-    cable_type, cable_type_named = _cable_type(type_named, signal, plant)
-    wires = signal.wires or record.wires or (each.type.wires if each.type else None)
-    low, nominal, high = _supply(row, signal, supply_named, card, plant)
+    supply_named = given.power_supply or record.power_supply
+    supply = supply_of(row, given, supply_named, card=card, plant=plant)
+    receivers = receivers_of(row, given, record, card)
+    run = cable_run(
+        row,
+        given,
+        record,
+        named=(cables.get(loop_key(record.tag)) or cables.get(loop_key(name)) or ()) if cables else (),
+        plant=plant,
+    )
+    wires = given.wires or record.wires or (device.type.wires if device.type else None)
+    if wires is None:
+        wires = _wires_in(given.signal) or _wires_in(supply_named)
     hart = row.hart if row is not None and row.hart is not None else None
     if hart is None:
-        text = f"{signal.signal or ''} {(each.type.signal if each.type else '') or ''}".casefold()
-        hart = True if "hart" in text else (each.type.hart if each.type else None)
+        text = f"{given.signal or ''} {(device.type.signal if device.type else '') or ''}".casefold()
+        hart = True if "hart" in text else (device.type.hart if device.type else None)
+    members: tuple[Installed, ...] = (device,)
+    named_barriers = _by_tag(barrier_named, barriers, plant) if barrier_named else ()
+    if riders or named_barriers:
+        others = [each for each in named_barriers if each is not device and each not in riders]
+        members = tuple(sorted((device, *riders, *others), key=_in_field_order))
     return Circuit(
         name=name,
-        loop=(row.number if row else None) or each.loop,
-        kind=kind,
-        device=each,
-        signal_row=signal,
+        loop=(row.number if row else None) or device.loop,
+        kind=circuit_kind(row.kind if row else None) or _signal_kind(device, given),
+        device=device,
+        signal_row=given,
         members=members,
         row=row,
         card=card,
         card_named=card_named,
-        barrier=barrier,
+        barrier=plant.named_type(barrier_named),
         barrier_named=barrier_named,
-        supply_min_v=low,
-        supply_nominal_v=nominal,
-        supply_max_v=high,
+        supply_min_v=supply.min_v,
+        supply_nominal_v=supply.nominal_v,
+        supply_max_v=supply.max_v,
         supply_named=supply_named,
-        receiver_ohm=_receiver(row, signal, record, card),
-        cable_length_m=_length(row, signal, record, plant),
-        cable_type=cable_type,
-        cable_type_named=cable_type_named,
-        conductor=signal.conductor or record.conductor or (cable_type.conductor if cable_type else None),
+        receiver_ohm=in_parallel(receivers),
+        receivers=receivers,
+        cable_length_m=run.length_m,
+        cable_type=run.type,
+        cable_type_named=run.type_named,
+        conductor=run.conductor,
+        segments=run.segments,
         hart=hart,
         intrinsically_safe=row.intrinsically_safe if row else None,
         wires=wires,
         powered_by_loop=_powered_by_loop(wires, supply_named),
     )
+
+
+def _in_field_order(each: Installed) -> int:
+    return _FIELD_ORDER.get(each.kind, _WITH_DEVICE) if each.kind else _WITH_DEVICE
+
+
+def _by_tag(text: str, known: dict[str, tuple[Installed, ...]], plant: Plant) -> tuple[Installed, ...]:
+    """Return the instruments that a circuit's barrier names by their tag."""
+    found = known.get(text)
+    if found is None:
+        found = known[text] = plant.by_tag(text)
+    return found
+
+
+def _wires_in(text: str | None) -> int | None:
+    found = _WIRES.search(text) if text else None
+    if found is None:
+        return None
+    return int(found[1]) if found[1] else _WIRE_WORDS[found[2].casefold()]
 
 
 def _powered_by_loop(wires: int | None, supply_named: str | None) -> bool | None:
@@ -335,95 +536,6 @@ def _powered_by_loop(wires: int | None, supply_named: str | None) -> bool | None
         return False
     if supply_named and _LOOP_POWERED.search(supply_named):
         return True
-    return None
-
-
-def volts_in(text: str | None) -> tuple[float, bool | None] | None:
-    """Return the volts that a supply's text states, and whether they are dc; None where it states none.
-
-    >>> volts_in("24VDC"), volts_in("230 V AC"), volts_in("loop")
-    ((24.0, True), (230.0, False), None)
-    """
-    if not text:
-        return None
-    match = _VOLTS.search(text)
-    if match is None:
-        return None
-    volts = float(match[1].replace(",", "."))
-    current = (match[2] or "").casefold().replace(".", "")
-    return volts, {"": None, "dc": True, "=": True, "ac": False, "~": False}[current]
-
-
-def _supply(
-    row: LoopRow | None, signal: Instrument, supply_named: str | None, card: DeviceType | None, plant: Plant
-) -> tuple[Given | None, Given | None, Given | None]:
-    if row is not None and (row.supply_min_v or row.supply_nominal_v or row.supply_max_v):
-        return (
-            _given(row.supply_min_v, "loop row", row, "supply_min_v"),
-            _given(row.supply_nominal_v, "loop row", row, "supply_nominal_v"),
-            _given(row.supply_max_v, "loop row", row, "supply_max_v"),
-        )
-    volts = volts_in(supply_named)
-    if volts is not None and volts[1] is not False and volts[0] < 100:
-        return None, _given(volts[0], "row", signal, "power_supply"), None
-    entry = plant.named_type(supply_named)
-    if entry is not None and entry.nominal_v:
-        return None, _given(entry.nominal_v, "power supply", entry, "nominal_v"), None
-    if card is not None and card.nominal_v and card.source_or_sink != "sink":
-        return None, _given(card.nominal_v, "card", card, "nominal_v"), None
-    return None, None, None
-
-
-def _receiver(
-    row: LoopRow | None, signal: Instrument, record: Instrument, card: DeviceType | None
-) -> Given | None:
-    if row is not None and row.range_resistor_ohm is not None:
-        return _given(row.range_resistor_ohm, "loop row", row, "range_resistor_ohm")
-    for owner in (signal, record):
-        if owner.receiver_ohm is not None:
-            return _given(owner.receiver_ohm, "row", owner, "receiver_ohm")
-    if card is not None and card.input_ohm is not None:
-        return _given(card.input_ohm, "card", card, "input_ohm")
-    return None
-
-
-def _length(row: LoopRow | None, signal: Instrument, record: Instrument, plant: Plant) -> Given | None:
-    """The loop's length; if blank the row's; if blank the sum of its cables: never added across sheets."""
-    if row is not None and row.cable_length_m is not None:
-        return _given(row.cable_length_m, "loop row", row, "cable_length_m")
-    for owner in (signal, record):
-        if owner.cable_length_m is not None:
-            return _given(owner.cable_length_m, "row", owner, "cable_length_m")
-    cables = [
-        plant.cables.get(_key(name))
-        for name in re.split(r"[,;\n]", signal.cable or record.cable or "")
-        if name.strip()
-    ]
-    found = [cable for cable in cables if cable is not None]
-    if found and len(found) == len(cables) and all(cable.length_m is not None for cable in found):
-        return Given(
-            number=sum(cable.length_m or 0.0 for cable in found),
-            source="cables",
-            cells=tuple(cell for cable in found for cell in cable.cells("length_m")),
-        )
-    return None
-
-
-def _cable_type(text: str | None, signal: Instrument, plant: Plant) -> tuple[Any, str | None]:
-    if text is None and signal.cable:
-        for name in re.split(r"[,;\n]", signal.cable):
-            cable = plant.cables.get(_key(name))
-            if cable is not None and cable.type:
-                text = cable.type
-                break
-    return (plant.cable_types.get(_key(text)) if text else None), text
-
-
-def _given(number: float | None, source: str, owner: Any, name: str) -> Given | None:
-    if number is None:
-        return None
-    return Given(number=number, source=source, cells=owner.cells(name))
-
-
-def _key(text: str | None) -> str:
-    return "".join(text.split()).casefold() if text else ""
+    words = supply_words(supply_named)
+    # No two-wire transmitter lives on alternating current.
+    return False if words is not None and words.dc is False else None

@@ -5,9 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from instruments.workbook.lists import Lists, records_of_sheets
-
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.workbook.lists import Lists, records_of_sheets
 from instruments.workbook.sheet import Sheet
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import Plant, assemble
@@ -28,16 +27,14 @@ def example_lists(instruments: Rows, **sheets: Rows | Mapping[str, Any]) -> List
         Rows of the index: title to cell, as in a workbook.
     sheets
         Rows of other sheets by a short name: types, areas, loops, io_list, alarms, cables, cable_types,
-        terminations; and `plant`, one row.
+        terminations; and `plant`, its fields and their values.
     """
     tables: list[Sheet] = []
     for short, name in _SHEETS.items():
         rows = instruments if short == "instruments" else sheets.get(short)
         if not rows:
             continue
-        if isinstance(rows, Mapping):
-            rows = [{"name": "Example", "numbering": "parallel", **rows}]
-        tables.append(_sheet(name, rows))
+        tables.append(_fields(name, rows) if isinstance(rows, Mapping) else _sheet(name, rows))
     return records_of_sheets(tables, KINDS)
 
 
@@ -85,10 +82,18 @@ _SHEETS = {
 }
 
 
+def _fields(name: str, values: Mapping[str, Any]) -> Sheet:
+    """Return a sheet with a field and its value on each row, as a plant's data stand."""
+    cells: list[list[Any]] = [[title, str(value)] for title, value in {**_PLANT, **values}.items()]
+    return Sheet(file=FILE, name=name, rows=cells, cells_filled=2 * len(cells))
+
+
+_PLANT = {"name": "Example", "numbering": "parallel"}
+
+
 def _sheet(name: str, rows: Rows) -> Sheet:
     titles = list(dict.fromkeys(title for row in rows for title in row))
     cells: list[list[Any]] = [list(titles)]
-    for row in rows:
-        cells.append([None if row.get(title) in ("", None) else row[title] for title in titles])
+    cells.extend([None if row.get(title) in ("", None) else row[title] for title in titles] for row in rows)
     filled = sum(1 for row in cells for cell in row if cell is not None)
     return Sheet(file=FILE, name=name, rows=cells, cells_filled=filled)

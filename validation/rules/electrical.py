@@ -2,18 +2,34 @@
 
 from __future__ import annotations
 
-import re
+import math
+from collections.abc import Iterator, Mapping
+from dataclasses import replace
+from functools import lru_cache
+from typing import Any, Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.quantity import format_number
-from loops.budget import Budget, feeds_a_transmitter, highest_volts, lift_off
+from instruments.record import DeviceType, Instrument
+from instruments.signal_words import io_types, signal_class, signal_classes
+from loops.budget import (
+    SUPPLY_TOLERANCE_PERCENT,
+    Budget,
+    HighestVolts,
+    feeds_a_transmitter,
+    figure_cells,
+    highest_volts,
+    lift_off,
+)
 from loops.circuit import Circuit
 from loops.plant import Plant
 from loops.power import highest_supply_v, least_supply_v, longest_cable_m, smallest_conductor
-from loops.wiring import circuit_kind
+from loops.wiring import has_io
 from validation.finding import Clear, Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule
+
+__all__ = ["signal_against_input", "signal_class", "starved_transmitter", "too_many_volts"]
 
 
 def _is_transmitter_circuit(circuit: Circuit, plant: Plant) -> bool:
@@ -52,100 +68,155 @@ def starved_transmitter(circuit: Circuit, plant: Plant) -> Verdict:
     if feeds_a_transmitter(circuit) is None:
         return Unchecked("wires")
     budget = lift_off(circuit, plant.data)
-    short_at_best = budget.kindest is not None and not budget.kindest.passes
-    if budget.worst is None and not short_at_best:
-        return Unchecked(*budget.missing)
-    if budget.worst is not None and budget.worst.passes:
+    passes = budget.passes_at_worst
+    if passes:
         return Clear(budget.assumed) if budget.assumed else None
-    shown = budget.kindest if short_at_best else budget.worst
+    kindest = budget.kindest
+    short_at_best = kindest is not None and not kindest.passes
+    if passes is None and not short_at_best:
+        return Unchecked(*budget.missing)
+    shown = kindest if short_at_best else budget.worst
     assert shown is not None
-    at_20 = f"; at 20 mA {_volts(budget.at_20_ma.at_terminals_v)}" if budget.at_20_ma is not None else ""
+    at_20_ma = _volts_at_20_ma(budget, short_at_best=short_at_best)
     kind = Found if short_at_best else Review
+    volts = _volts(shown.at_terminals_v, shown.margin_v)
+    needed = _volts(shown.needed_v, shown.margin_v)
+    short = _volts(-shown.margin_v, shown.margin_v)
+    current = f"{format_number(shown.current_ma)} mA"
     return kind(
         values={
             "device": circuit.device.name,
-            "volts": _volts(shown.at_terminals_v),
-            "current": f"{format_number(shown.current_ma)} mA",
-            "needed": _volts(shown.needed_v),
-            "short": _volts(-shown.margin_v),
+            "volts": volts,
+            "current": current,
+            "needed": needed,
+            "short": short,
+            "at 20 mA": at_20_ma,
         },
         fields=(budget.lift_off_field,),
-        found=_volts(shown.at_terminals_v),
-        wanted=f"at least {_volts(shown.needed_v)}",
-        off_by=_volts(-shown.margin_v),
-        working=shown.working + at_20,
+        found=f"{volts} at {current}" + (f", {at_20_ma} at 20 mA" if at_20_ma else ""),
+        wanted=f"at least {needed}",
+        off_by=short,
+        working=shown.working,
         assumed=() if short_at_best else budget.assumed,
-        fixes=_lift_off_fixes(circuit, budget),
-        cells=budget.cells,
+        fixes=_lift_off_fixes(circuit, budget, plant),
+        cells=figure_cells(circuit),
     )
 
 
-def _lift_off_fixes(circuit: Circuit, budget: Budget) -> tuple[Fix, ...]:
+def _volts_at_20_ma(budget: Budget, *, short_at_best: bool) -> str:
+    """Return what is shown beside the check current: the same figures at 20 mA."""
+    if short_at_best and budget.supply_is_free:
+        budget = replace(budget, source_20_ma_v=budget.kindest_v, resistances=budget.kindest_resistances, missing=())
+    at_20_ma = budget.at_20_ma
+    return "" if at_20_ma is None else _volts(at_20_ma.at_terminals_v, 0.0)
+
+
+def _lift_off_fixes(circuit: Circuit, budget: Budget, plant: Plant) -> tuple[Fix, ...]:
     """Longest cable, smallest conductor, least supply: each alone."""
-    if budget.worst is None or budget.source_v is None or budget.lift_off_v is None or budget.cable is None:
+    cable, needed_v = budget.cable, budget.lift_off_v
+    if budget.missing or budget.source_v is None or needed_v is None or cable is None:
         return ()
     fixes: list[Fix] = []
-    cable = budget.cable
-    common = {"needed_v": budget.lift_off_v, "fixed_drops": budget.fixed_drops}
     length_m = longest_cable_m(
         budget.source_v,
         budget.current_ma,
+        needed_v=needed_v,
         ohm_per_km_20c=cable.ohm_per_km_20c,
         conductor_c=budget.hot_c,
         per=cable.per,
         resistances=budget.resistances,
-        **common,
+        fixed_drops=budget.fixed_drops,
     )
     if length_m:
-        fixes.append(Fix(text=f"cable no longer than {length_m} m", **_length_change(circuit, length_m)))
+        fixes.append(Fix(text=f"cable no longer than {length_m} m", **_length_change(circuit, length_m, plant)))
     if cable.conductor is not None:
         size_mm2 = smallest_conductor(
             budget.source_v,
             budget.current_ma,
+            needed_v=needed_v,
             length_m=cable.length_m,
             conductor_c=budget.hot_c,
             conductor_class=cable.conductor.conductor_class,
             tinned=cable.conductor.tinned,
             resistances=budget.resistances,
-            **common,
+            fixed_drops=budget.fixed_drops,
         )
         if size_mm2 is not None:
-            fixes.append(
-                Fix(text=f"conductor of at least {size_mm2:g} mm2", **_conductor_change(circuit, size_mm2))
-            )
+            fixes.append(Fix(text=f"conductor of at least {size_mm2:g} mm2", **_conductor_change(circuit, size_mm2)))
     if budget.supply_is_free:
-        resistances = (*budget.resistances, ("cable", cable.ohm(budget.hot_c)))
-        volts = least_supply_v(budget.current_ma, resistances=resistances, **common)
-        change: dict[str, object] = {}
-        if circuit.row is not None and circuit.row.supply_min_v is not None:
-            change = {
-                "change": {"supply V min": f"{volts:g}"},
-                "subject": _row_subject(circuit),
-                "sheet": "Loops",
-            }
-        fixes.append(Fix(text=f"supply of at least {volts:g} V at its lowest", **change))  # type: ignore[arg-type]
+        volts = least_supply_v(
+            budget.current_ma,
+            needed_v=needed_v,
+            resistances=(*budget.resistances, ("cable", cable.ohm(budget.hot_c))),
+            fixed_drops=budget.fixed_drops,
+        )
+        fixes.append(Fix(text=f"supply of at least {volts:g} V at its lowest", **_supply_change(circuit, volts, plant)))
     return tuple(fixes)
 
 
-def _length_change(circuit: Circuit, length_m: int) -> dict[str, object]:
+class _Row(NamedTuple):
+    """The row that a fix changes, as `Fix` names it."""
+
+    subject: str
+    sheet: str
+
+
+def _loop_row(circuit: Circuit, plant: Plant) -> _Row | None:
+    """Return the row of the loop list; None where its name is that of other circuits too."""
+    row = circuit.row
+    if row is None:
+        return None
+    for field, text in (("circuit", row.circuit), ("number", row.number)):
+        if text:
+            alone = sum(1 for other in plant.loop_rows if getattr(other, field) == text) == 1
+            return _Row(text, "Loops") if alone else None
+    return None
+
+
+def _own_row(circuit: Circuit) -> _Row | None:
+    """Return the device's row; None where it has several signals, whose rows would all be changed."""
+    return _Row(circuit.device.name, "Instruments") if len(circuit.device.signals) <= 1 else None
+
+
+def _changing(row: _Row | None, change: Mapping[str, str]) -> dict[str, Any]:
+    return {} if row is None else {"change": change, "subject": row.subject, "sheet": row.sheet}
+
+
+def _length_change(circuit: Circuit, length_m: int, plant: Plant) -> dict[str, Any]:
     source = circuit.cable_length_m.source if circuit.cable_length_m else ""
-    if source == "row":
-        return {"change": {"cable length": str(length_m)}, "subject": circuit.device.name}
-    if source == "loop row":
-        return {"change": {"cable length": str(length_m)}, "subject": _row_subject(circuit), "sheet": "Loops"}
-    return {}
+    row = {"loop row": _loop_row(circuit, plant), "row": _own_row(circuit)}.get(source)
+    return _changing(row, {"cable length": str(length_m)})
 
 
-def _conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, object]:
+def _conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, Any]:
     # A cable type is shared by other circuits: changing it is for a person to say.
     if circuit.signal_row.conductor and (circuit.cable_type is None or circuit.cable_type.ohm_per_km is None):
-        return {"change": {"conductor size": f"{size_mm2:g} mm2"}, "subject": circuit.device.name}
+        return _changing(_own_row(circuit), {"conductor size": f"{size_mm2:g} mm2"})
     return {}
 
 
-def _row_subject(circuit: Circuit) -> str:
-    row = circuit.row
-    return (row.circuit or row.number or "") if row is not None else ""
+def _supply_change(circuit: Circuit, least_v: float, plant: Plant) -> dict[str, Any]:
+    lowest, nominal = circuit.supply_min_v, circuit.supply_nominal_v
+    if lowest is not None:
+        if lowest.source == "loop row":
+            return _changing(_loop_row(circuit, plant), {"supply V min": f"{least_v:g}"})
+        return {}
+    if nominal is None:
+        return {}
+    percent = plant.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
+    if percent >= 100.0:
+        return {}
+    nominal_v = math.ceil(round(least_v / (1 - percent / 100) * 10, 6)) / 10
+    return _nominal_change(circuit, nominal_v, plant)
+
+
+def _nominal_change(circuit: Circuit, nominal_v: float, plant: Plant) -> dict[str, Any]:
+    source = circuit.supply_nominal_v.source if circuit.supply_nominal_v else ""
+    if source == "loop row":
+        return _changing(_loop_row(circuit, plant), {"supply V nominal": f"{nominal_v:g}"})
+    if source == "row":
+        return _changing(_own_row(circuit), {"power supply": f"{nominal_v:g} V DC"})
+    return {}
 
 
 @rule(
@@ -177,104 +248,76 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
     if feeds_a_transmitter(circuit) is None:
         return Unchecked("wires")
     volts = highest_volts(circuit, plant.data)
-    if volts.missing or volts.kindest is None or volts.worst is None:
-        return Unchecked(*volts.missing)
-    if volts.worst.passes:
+    passes = volts.passes_at_worst
+    if passes:
         return Clear(volts.assumed) if volts.assumed else None
-    over_at_best = not volts.kindest.passes
-    shown = volts.kindest if over_at_best else volts.worst
-    assert volts.allowed_v is not None
+    kindest = volts.kindest
+    over_at_best = kindest is not None and not kindest.passes
+    if not over_at_best and (passes is None or volts.missing):
+        return Unchecked(*volts.missing)
+    shown = volts.nominal if over_at_best else volts.worst
+    assert shown is not None
+    kind = Found if over_at_best else Review
+    can_see = _volts(shown.at_terminals_v, shown.margin_v)
+    allowed = _volts(shown.allowed_v, shown.margin_v)
+    over = _volts(-shown.margin_v, shown.margin_v)
+    return kind(
+        values={"device": circuit.device.name, "volts": can_see, "allowed": allowed, "over": over},
+        fields=("type.maximum_v",),
+        found=can_see,
+        wanted=f"at most {allowed}",
+        off_by=over,
+        working=shown.working,
+        assumed=() if over_at_best else volts.assumed,
+        fixes=_over_voltage_fixes(circuit, volts, plant),
+        cells=figure_cells(circuit),
+    )
+
+
+def _over_voltage_fixes(circuit: Circuit, volts: HighestVolts, plant: Plant) -> tuple[Fix, ...]:
+    if volts.allowed_v is None or volts.highest_v is None:
+        return ()
     highest_v = highest_supply_v(
         allowed_v=volts.allowed_v, resistances=volts.resistances, fixed_drops=volts.fixed_drops
     )
-    change: dict[str, object] = {}
-    if circuit.row is not None and circuit.row.supply_max_v is not None:
-        change = {
-            "change": {"supply V max": f"{highest_v:g}"},
-            "subject": _row_subject(circuit),
-            "sheet": "Loops",
-        }
-    kind = Found if over_at_best else Review
-    return kind(
-        values={
-            "device": circuit.device.name,
-            "volts": _volts(shown.at_terminals_v),
-            "allowed": _volts(shown.allowed_v),
-            "over": _volts(-shown.margin_v),
-        },
-        fields=("type.maximum_v",),
-        found=_volts(shown.at_terminals_v),
-        wanted=f"at most {_volts(shown.allowed_v)}",
-        off_by=_volts(-shown.margin_v),
-        working=shown.working,
-        assumed=() if over_at_best else volts.assumed,
-        fixes=(Fix(text=f"supply of at most {highest_v:g} V at its highest", **change),),  # type: ignore[arg-type]
-        cells=volts.cells,
-    )
+    change: dict[str, Any] = {}
+    if circuit.supply_max_v is not None:
+        if circuit.supply_max_v.source == "loop row":
+            change = _changing(_loop_row(circuit, plant), {"supply V max": f"{highest_v:g}"})
+    elif circuit.supply_nominal_v is not None:
+        percent = plant.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
+        nominal_v = math.floor(round(highest_v / (1 + percent / 100) * 10, 6)) / 10
+        change = _nominal_change(circuit, nominal_v, plant)
+    return (Fix(text=f"supply of at most {highest_v:g} V at its highest", **change),)
 
 
-_CURRENT = re.compile(r"(?<![\d.])(?:4|0)\s*(?:-|\u2013|to|\.\.\.?)\s*20\s*ma|\bhart\b", re.IGNORECASE)
-_RTD = re.compile(r"\bpt\s?-?\s?\d{2,4}\b|\brtd\b|\bni\s?100\b", re.IGNORECASE)
-_THERMOCOUPLE = re.compile(r"\bt/?c\b|thermocouple|\btype\s?[kjtenrsb]\b|\btc\s?[kjtenrsb]\b", re.IGNORECASE)
-_CONTACT = re.compile(
-    r"\bvfc\b|volt[\s-]?free|dry\s?contact|\bcontact\b|namur|proximity|potential[\s-]?free|\bspdt\b|\bspst\b|\bdpdt\b",
-    re.IGNORECASE,
-)
-_BUS = re.compile(
-    r"fieldbus|profibus|modbus|profinet|ethernet|\bff\b|\bpa\b|\bdp\b|serial|rs-?485|\bbus\b|foundation|wireless|"
-    r"\bnet\b|ip\b",
-    re.IGNORECASE,
-)
-_VOLTS_DC = re.compile(r"\b(?:12|24|48|110|120|230|240)\s*v\s*(?:ac|dc)?\b", re.IGNORECASE)
+# ------------------------------------------------------------------------------------------ signal and I/O type
 
 # What may be wired to what. A sensor's own signal may go to an analogue input only through a card that
-# takes it, which the I/O type then says; a contact never goes to an analogue input.
-_FITS: dict[str, frozenset[str]] = {
+# takes it, which the card then says; a contact never goes to an analogue input.
+_FITS: Final[Mapping[str, frozenset[str]]] = {
     "current": frozenset({"AI", "AO"}),
+    "voltage": frozenset({"AI", "AO"}),
     "RTD": frozenset({"RTD", "AI"}),
     "thermocouple": frozenset({"TC", "AI"}),
-    "contact": frozenset({"DI", "DO"}),
+    "contact": frozenset({"DI", "DO", "PI"}),
     "volts": frozenset({"DO", "DI"}),
+    "pulse": frozenset({"DI", "PI"}),
+    "digital": frozenset({"DI", "DO", "PI"}),
 }
-_IO_FOR = {"RTD": "RTD", "thermocouple": "TC"}
-
-
-def signal_class(text: str | None) -> str | None:
-    """Return current, RTD, thermocouple, contact, volts or bus for a signal as written; None for no such word.
-
-    >>> [signal_class(text) for text in ("4-20mA HART", "Pt100", "VFC", "24VDC", "Profibus PA", "pneumatic")]
-    ['current', 'RTD', 'contact', 'volts', 'bus', None]
-    """
-    if not text:
-        return None
-    if _CURRENT.search(text):
-        return "current"
-    if _BUS.search(text):
-        return "bus"
-    if _RTD.search(text):
-        return "RTD"
-    if _THERMOCOUPLE.search(text):
-        return "thermocouple"
-    if _CONTACT.search(text):
-        return "contact"
-    if _VOLTS_DC.search(text):
-        return "volts"
-    return None
-
-
-def _is_output(installed: Installed) -> bool:
-    return installed.kind in (Kind.POSITIONER, Kind.IP_CONVERTER, Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE)
-
-
-def _measures(installed: Installed) -> bool:
-    return installed.kind in (
-        Kind.TRANSMITTER,
-        Kind.ANALYSER,
-        Kind.GAS_DETECTOR,
-        Kind.FIRE_DETECTOR,
-        Kind.ELEMENT,
-        Kind.SWITCH,
-    )
+# A card for contacts says NAMUR, 24 VDC or contact, and takes each.
+_SWITCHED: Final = frozenset({"contact", "volts", "digital", "pulse"})
+_IO_FOR: Final = {
+    "RTD": "RTD",
+    "thermocouple": "TC",
+    "contact": "DI",
+    "digital": "DI",
+    "pulse": "DI",
+    "volts": "DO",
+}
+_OUTPUTS: Final = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.CONTROL_VALVE})
+_SENDS: Final = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR, Kind.ELEMENT})
+_MAKES_CONTACT: Final = _SENDS | {Kind.SWITCH, Kind.HAND_SWITCH}
 
 
 @rule(
@@ -299,99 +342,132 @@ def signal_against_input(installed: Installed, plant: Plant) -> Verdict:
     []
     """
     found: list[Found] = []
-    asked = missing_io = missing_signal = False
-    for row in installed.signals:
-        signal_text = row.signal or (installed.type.signal if installed.type else None)
-        for text, field, name in _takers(row, plant):
+    unknown: dict[str, None] = {}
+    asked = False
+    several = len(installed.signals) > 1
+    for row in installed.signals or (installed.record,):
+        signal = row.signal
+        if signal is None and not several and installed.type is not None:
+            signal = installed.type.signal
+        for field, text, card in _takers(row, plant):
             asked = True
-            kinds = _io_kinds(text)
-            sort = signal_class(signal_text)
-            if sort == "bus" or not kinds:
-                continue
-            if sort is None:
-                missing_signal = missing_signal or signal_text is None
-                continue
-            if kinds & _FITS[sort] and not _wrong_way(installed, sort, kinds):
-                continue
-            wanted = _io_wanted(installed, sort)
-            fixes = ()
-            if wanted and field == "io_type":
-                fixes = (Fix(text=f"I/O type {wanted}", change={"I/O type": wanted}),)
-            found.append(
-                Found(
-                    values={"signal": signal_text, "io": text, "name": name},
-                    fields=("signal", field),
-                    part=row.io_address or "",
-                    found=text,
-                    wanted=wanted,
-                    fixes=fixes,
-                    cells=(*row.cells("signal"), *row.cells(field)),
-                    message="" if field == "io_type" else "{signal} does not fit the card {io}",
-                )
-            )
-        if not row.io_type and not row.card:
-            missing_io = True
+            fits = _io_type_fits(text, signal, installed.kind) if card is None else _card_fits(card, signal, installed)
+            if isinstance(fits, str):
+                unknown.setdefault(fits)
+            elif not fits:
+                found.append(_misfit(installed, row, signal or "", field, text))
     if found:
-        return found if len(installed.signals) > 1 else [_without_part(found[0])]
+        return found
     if not asked:
-        has_signal = any(row.signal for row in installed.signals) or bool(
-            installed.type and installed.type.signal
-        )
-        return Unchecked("I/O type") if has_signal and missing_io and _wired(installed) else NotApplicable()
-    return Unchecked("signal") if missing_signal else None
+        return _nothing_to_compare(installed)
+    return Unchecked(*unknown) if unknown else None
 
 
-def _without_part(found: Found) -> Found:
-    from dataclasses import replace
-
-    return replace(found, part="")
-
-
-def _wired(installed: Installed) -> bool:
-    return installed.kind is not None and installed.kind.wired == "yes"
-
-
-def _takers(row: object, plant: Plant) -> list[tuple[str, str, str]]:
-    takers: list[tuple[str, str, str]] = []
-    io_type = getattr(row, "io_type", None)
-    if io_type:
-        takers.append((io_type, "io_type", "I/O type"))
-    card = plant.named_type(getattr(row, "card", None))
+def _takers(row: Instrument, plant: Plant) -> Iterator[tuple[str, str, DeviceType | None]]:
+    """Give what may take the signal: the field, its text, and the card's entry."""
+    if row.io_type and not _is_no_channel(row.io_type):
+        yield "io_type", row.io_type, None
+    card = plant.named_type(row.card) if row.card else None
     if card is not None and card.signal:
-        takers.append((card.signal, "card", "card"))
-    return takers
+        yield "card", card.signal, card
 
 
-def _io_kinds(text: str) -> frozenset[str]:
-    kinds = {circuit_kind(part) for part in re.split(r"[/,+&;]", text)}
-    return frozenset(kind for kind in kinds if kind)
+@lru_cache(maxsize=4096)
+def _is_no_channel(io_type: str) -> bool:
+    """Whether an I/O type says that the signal ends elsewhere: a soft point, a link."""
+    if io_types(io_type):
+        return False
+    return "bus" in signal_classes(io_type) or not has_io(Instrument(io_type=io_type))
 
 
-def _wrong_way(installed: Installed, sort: str, kinds: frozenset[str]) -> bool:
-    """Whether a measurement stands on an output or an output device on an input alone."""
-    if sort == "current":
-        if _measures(installed) and installed.kind is not Kind.SWITCH:
-            return "AI" not in kinds
-        if _is_output(installed):
-            return (
-                "AO" not in kinds
-                and kinds <= {"AI"}
-                and installed.kind in (Kind.POSITIONER, Kind.IP_CONVERTER)
-            )
-    if sort == "contact" and _measures(installed):
-        return "DI" not in kinds
-    return False
+@lru_cache(maxsize=16384)
+def _io_type_fits(io_type: str, signal: str | None, kind: Kind | None) -> bool | str:
+    """Whether a signal fits an I/O type; the title of what cannot be told."""
+    if signal is None:
+        return "signal"
+    classes = signal_classes(signal)
+    if "bus" in classes:
+        return True
+    if not classes:
+        return "signal"
+    taken = frozenset(io_types(io_type))
+    if not taken:
+        return "I/O type"
+    return any(taken & _FITS[each] and not _wrong_way(kind, each, taken) for each in classes)
 
 
-def _io_wanted(installed: Installed, sort: str) -> str:
-    if sort == "current":
-        return "AO" if _is_output(installed) else "AI"
-    if sort == "contact":
-        return "DI"
-    if sort == "volts":
-        return "DO"
-    return _IO_FOR.get(sort, "")
+def _card_fits(card: DeviceType, signal: str | None, installed: Installed) -> bool | str:
+    if signal is None:
+        return "signal"
+    classes = signal_classes(signal)
+    if "bus" in classes:
+        return True
+    if not classes:
+        return "signal"
+    takes, kinds = signal_classes(card.signal), frozenset(io_types(card.signal))
+    if "bus" in takes:
+        return True
+    if takes:
+        right = bool(classes & takes) or bool(classes & _SWITCHED and takes & _SWITCHED)
+        return right and (not kinds or any(not _wrong_way(installed.kind, each, kinds) for each in classes))
+    if not kinds:
+        return "signal of the card"
+    return any(kinds & _FITS[each] and not _wrong_way(installed.kind, each, kinds) for each in classes)
 
 
-def _volts(volts: float) -> str:
-    return f"{format_number(round(volts, 3))} V"
+def _wrong_way(kind: Kind | None, sort: str, taken: frozenset[str]) -> bool:
+    """Whether what sends stands on an output alone, or what is driven on an input alone."""
+    if sort in ("current", "voltage"):
+        if kind in _SENDS:
+            return "AI" not in taken
+        return kind in (Kind.POSITIONER, Kind.IP_CONVERTER) and "AO" not in taken
+    if sort in ("contact", "digital") and kind in _MAKES_CONTACT:
+        return not taken & {"DI", "PI"}
+    return sort == "volts" and kind is Kind.SOLENOID and "DO" not in taken
+
+
+def _misfit(installed: Installed, row: Instrument, signal: str, field: str, text: str) -> Found:
+    several = len(installed.signals) > 1
+    wanted = _io_wanted(installed, signal)
+    fixes: tuple[Fix, ...] = ()
+    if wanted and field == "io_type":
+        # A change of the tag's I/O type would change the rows of its other signals too.
+        fixes = (Fix(text=f"I/O type {wanted}", change={} if several else {"I/O type": wanted}),)
+    return Found(
+        values={"signal": signal, "io": text, "card": row.card or ""},
+        fields=("signal", field),
+        part=(row.io_address or row.io_type or "") if several else "",
+        found=text,
+        wanted=wanted,
+        fixes=fixes,
+        cells=(*row.cells("signal"), *row.cells(field)),
+        message="" if field == "io_type" else "{signal} does not fit the card {card} ({io})",
+    )
+
+
+def _io_wanted(installed: Installed, signal: str) -> str:
+    classes = signal_classes(signal)
+    if classes & {"current", "voltage"}:
+        return "AO" if installed.kind in _OUTPUTS else "AI"
+    return next((_IO_FOR[each] for each in _IO_FOR if each in classes), "")
+
+
+def _nothing_to_compare(installed: Installed) -> Verdict:
+    """What is wired to the system and says of no channel what it is."""
+    kind = installed.kind
+    rows = installed.signals or (installed.record,)
+    if any(row.io_type for row in rows) or kind is None or kind.wired != "yes":
+        return NotApplicable()
+    if installed.record.location == "system":
+        return NotApplicable()
+    has_signal = any(row.signal for row in rows) or bool(installed.type and installed.type.signal)
+    return Unchecked("I/O type") if has_signal else Unchecked("signal", "I/O type")
+
+
+def _volts(volts: float, margin_v: float) -> str:
+    """Write volts to as many decimals as it takes to see the margin."""
+    decimals = 3
+    while decimals < 9 and margin_v and not round(margin_v, decimals):
+        decimals += 1
+    shown = f"{volts:.{decimals}f}".rstrip("0").rstrip(".")
+    return f"{shown} V"
