@@ -370,9 +370,7 @@ def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], fr
     return found, frozenset(twice)
 
 
-def _unlike_left_out(
-    found: dict[str, Any], twice: frozenset[str]
-) -> tuple[dict[str, Any], frozenset[str]]:
+def _unlike_left_out(found: dict[str, Any], twice: frozenset[str]) -> tuple[dict[str, Any], frozenset[str]]:
     """Leave out what two different entries are called: to take the first would let the order of rows decide."""
     return {key: entry for key, entry in found.items() if key not in twice} if twice else found, twice
 
@@ -709,27 +707,45 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
 
 
 def _with_loops(found: list[Installed], data: PlantData) -> list[Installed]:
-    """Give each instrument its loop: the column's, else the one its tag gives."""
-    valves: dict[tuple[str, str], str] = {}
-    derived: list[str | None] = []
+    """Give each instrument its loop: the column's, else the one its tag gives, or the valve it belongs to."""
+    valves: dict[tuple[str, str], list[tuple[TagReading, str]]] = defaultdict(list)
+    derived: list[tuple[str | None, tuple[str, str] | None]] = []
     for each in found:
-        loop = None
+        loop, key = None, None
         if each.tag is not None and each.tag.parsed:
-            loop = loop_of(each.tag, numbering=data.numbering)
+            loop = loop_of(each.tag, numbering=data.numbering) or None
             key = assembly_key(each.tag)
-            if key is not None and is_valve(each.tag) and each.live and (each.record.loop or loop):
-                valves.setdefault(key, each.record.loop or loop)
-        derived.append(loop)
+            if key is not None and is_valve(each.tag):
+                stated = each.record.loop or loop
+                if each.live and stated:
+                    valves[key].append((each.tag, stated))
+                key = None
+        derived.append((loop, key))
     result: list[Installed] = []
-    for each, loop in zip(found, derived, strict=True):
+    for each, (loop, key) in zip(found, derived, strict=True):
         if each.record.loop:
             result.append(replace(each, loop=each.record.loop, loop_from="column"))
             continue
-        key = assembly_key(each.tag) if each.tag is not None else None
-        if key is not None:
-            loop = valves.get(key, loop)
+        if key is not None and key in valves:
+            loop = loop_of_assembly(valves[key]) or loop
         result.append(replace(each, loop=loop, loop_from="tag" if loop else ""))
     return result
+
+
+def loop_of_assembly(valves: Sequence[tuple[TagReading, str]]) -> str | None:
+    """Return the loop that what carries a valve's number belongs to; None where several are as likely.
+
+    Parameters
+    ----------
+    valves
+        The valves of that number, each with its loop. FV-101 and PV-101 are of two loops; where XV-101 is among
+        them, the switches are its.
+    """
+    for chosen in (valves, [(tag, loop) for tag, loop in valves if tag.letters[0] in "XZHY" or tag.code is not None]):
+        loops = {_key(loop): loop for _, loop in sorted(chosen, key=lambda each: (each[0].normalised, each[1]))}
+        if len(loops) == 1:
+            return next(iter(loops.values()))
+    return None
 
 
 def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[Installed]:

@@ -161,25 +161,27 @@ def _has_unit(record: Instrument) -> bool:
     return any(end is not None and end.unit is not None for end in (record.lrv, record.urv))
 
 
-def _blank(required: _Required, installed: Installed) -> tuple[str, ...]:
-    """Return the fields that are blank, but for those that another rule speaks of."""
+def _blank(required: _Required, installed: Installed) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """Return the fields that are blank, and those that another rule speaks of: unread, or without their unit."""
     record = installed.record
     if required.title == "kind":
-        # The kind is the device type's, where one is named; if it is not listed, that is the cause.
-        return () if record.kind_written or record.device_type else ("kind",)
+        # The kind may be the tag's, or the device type's: where there is none, or it is not listed, that is the cause.
+        return () if record.kind_written or record.device_type or not record.tag else ("kind",), ()
+    lost = record.unitless.keys() | record.unread if record.unitless or record.unread else ()
     if required.title == "range unit":
-        lost = record.unitless.keys() | record.unread
-        return () if _has_unit(record) or {"lrv", "urv", "range_unit"} & lost else ("range_unit",)
-    return tuple(
+        if _has_unit(record):
+            return (), ()
+        # Without a unit stands the range, or what was to be its unit cannot be read.
+        return ((), ("range_unit",)) if any(name in lost for name in _UNIT_OF_RANGE) else (("range_unit",), ())
+    blank = tuple(
         field
         for field in required.fields
-        if getattr(record, field) is None
-        and field not in record.unread
-        and field not in record.unitless
-        and record.blanks.get(field) != SHARED_CELL
+        if getattr(record, field) is None and field not in lost and record.blanks.get(field) != SHARED_CELL
     )
+    return blank, tuple(field for field in required.fields if field in lost)
 
 
+_UNIT_OF_RANGE: Final = ("lrv", "urv", "range_unit")
 # The reader's reason for what one device of a cell with several tags cannot have.
 SHARED_CELL: Final = "shared cell"
 
@@ -203,7 +205,9 @@ def _required_column_absent(plant: Plant) -> Verdict:
     for each in plant.live:
         if not each.equipment_tag:
             counts.update(
-                required.title for required in absent if _is_asked(required.title, each.kind) and _blank(required, each)
+                required.title
+                for required in absent
+                if _is_asked(required.title, each.kind) and _blank(required, each)[0]
             )
     lacking = [each for each in absent if counts[each.title]]
     if not lacking:
@@ -253,10 +257,11 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
         return None
     blank: list[str] = []
     shown: list[str] = []
-    absent: list[str] = []
+    untold: list[str] = []
     leaves = None
     for required in asked.required:
-        missing = _blank(required, installed)
+        missing, lost = _blank(required, installed)
+        untold.extend(title_of(field) for field in lost)
         if not missing:
             continue
         if kind is Kind.ELEMENT and required.title in _TRANSMITTERS_OWN:
@@ -265,7 +270,7 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
             if leaves:
                 continue
         if not required.column:
-            absent.append(required.title)
+            untold.append(required.title)
             continue
         whole = len(missing) == len(required.fields)
         reason = next((record.blanks[field] for field in missing if field in record.blanks), "")
@@ -273,7 +278,7 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
         blank.extend(missing)
         shown.append(f"{title} ({reason})" if reason else title)
     if not blank:
-        return Unchecked(*absent) if absent else None
+        return Unchecked(*dict.fromkeys(untold)) if untold else None
     return Found(values={"fields": ", ".join(shown)}, fields=tuple(blank), found="blank", wanted=", ".join(shown))
 
 
@@ -647,5 +652,7 @@ def unread_cell(installed: Installed, plant: Plant) -> Verdict:
     unread: _Unread = plant.once("unread cells", _unread_cells)
     problems = unread.by_instrument.get(id(installed))
     if problems is None:
-        return None
+        # Found on the column, or on the first tag of the cell.
+        unread_here = installed.record.unread
+        return Unchecked(*(title_of(field) for field in _in_order(unread_here))) if unread_here else None
     return [_unread(problem, installed.record) for problem in problems]

@@ -27,7 +27,7 @@ from instruments.tag import (
 )
 from instruments.unit import Unit
 from instruments.unit_table import unit_label
-from loops.plant import Plant, disagreements
+from loops.plant import Plant, disagreements, loop_of_assembly
 from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule, title_of
 
@@ -241,6 +241,7 @@ def _canonical_of(group: Iterable[Installed], plant: Plant) -> str:
             continue
         mended = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes)
         doubtful = mended is not None and match_key(read_tag(mended, profile=plant.profile)) != match_key(reading)
+        doubtful = doubtful or reading.suffix in _NEIGHBOURS
         here = (0 if doubtful else 1, widths.get(len(reading.number), 0))
         if here > rank:
             best, rank = canonical_tag(reading, profile=plant.profile), here
@@ -369,9 +370,10 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
         return None
     nearest = nearest_legal_letters(reading.letters, codes=frozenset(plant.codes))
     tags = [_with_letters(reading, letters, plant) for letters in nearest]
-    if reading.legal == "illegal":
-        # P1-10 is PI-10 with a digit for a letter.
-        tags.insert(0, nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes) or "")
+    # P1-10 is PI-10 with a digit for a letter.
+    slip = nearest_fitting_tag(reading.text, profile=plant.profile, codes=plant.codes)
+    if reading.legal == "illegal" and slip:
+        tags = [slip]
     fixes = tuple(Fix(text=f"tag {tag}", change={"tag": tag}) for tag in dict.fromkeys(tags) if tag)
     problem = read_letters(reading.letters, users_letters=frozenset(plant.data.users_letters)).problem
     kind, message = Found, ""
@@ -381,7 +383,7 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
         values={"letters": reading.letters, "reason": problem or reading.reason},
         fields=("tag",),
         found=reading.letters,
-        wanted=" or ".join(nearest),
+        wanted=" or ".join([slip] if slip and reading.legal == "illegal" else nearest),
         fixes=fixes,
         message=message,
     )
@@ -587,15 +589,17 @@ def _loop_by_right(installed: Installed, plant: Plant) -> tuple[str, str]:
     # A column of bare numbers is answered with a number.
     bare = not any(sign.isalpha() for sign in installed.record.loop or "")
     numbering = "serial" if bare and reading.scheme != "kks" else plant.data.numbering
+    by_valve: list[tuple[TagReading, str]] = []
     for valve in _valves_of(installed, plant):
         assert valve.tag is not None
         stated = valve.record.loop
-        if stated and _agrees(valve, plant):
-            return valve.name, stated
-        by_tag = loop_of(valve.tag, numbering=numbering)
-        if by_tag:
-            return valve.name, by_tag
-    return "", loop_of(reading, numbering=numbering)
+        loop = stated if stated and _agrees(valve, plant) else loop_of(valve.tag, numbering=numbering)
+        if loop:
+            by_valve.append((valve.tag, loop))
+    by_right = loop_of_assembly(by_valve)
+    if by_right is None:
+        return "", loop_of(reading, numbering=numbering)
+    return next(valve.normalised for valve, loop in by_valve if loop == by_right), by_right
 
 
 @rule(
@@ -635,6 +639,10 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
         scheme=reading.scheme,
         measuring_point=installed.measuring_point,
     )
+    if bears is False and not installed.measuring_point and _may_be_a_point(installed, plant):
+        unsaid = can_bear(kind, installed.letters, codes=plant.codes, scheme=reading.scheme, measuring_point=None)
+        if unsaid is None:
+            return Unchecked("signal")
     if bears is None:
         return NotApplicable("practice differs on these letters")
     if bears:
@@ -660,6 +668,14 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
             *((Fix(text=f"kind {derived.value}", change={"kind": derived.value}),) if derived else ()),
         ),
     )
+
+
+def _may_be_a_point(installed: Installed, plant: Plant) -> bool:
+    """Whether the list leaves open if a tag names a measuring point: it has no column for what would tell."""
+    if plant.has_column("signal", "io_type", "io_address", "card", "device_type"):
+        return False
+    loop = plant.loop_of(installed)
+    return loop is not None and not any(set("TE") & set(each.letters[1:]) for each in loop.members)
 
 
 _RANGE = ("lrv", "urv")
@@ -721,7 +737,8 @@ def unit_against_letters(installed: Installed, plant: Plant) -> Verdict:
     field = _answer_for(unit, installed, plant)
     if isinstance(field, Found):
         return field
-    if system_unit is not None and (unit is None or system_unit.kind != unit.kind):
+    # A system may show anything in per cent of its range.
+    if system_unit is not None and system_unit.kind != "ratio" and (unit is None or system_unit.kind != unit.kind):
         system = _answer_for(system_unit, installed, plant)
         if isinstance(system, Found):
             # One range that was copied with its unit is one mistake: only the system's differs here.
@@ -810,7 +827,8 @@ def several_tags_in_a_cell(installed: Installed, plant: Plant) -> Verdict:
     return Found(
         values={"count": len(means), "tags": ", ".join(means)},
         fields=("tag",),
-        subject=record.tag_cell,
+        # Rows that share a tag are numbered; so are their cells.
+        subject=record.tag_cell + installed.name.removeprefix(record.tag or ""),
         found=record.tag_cell,
         wanted="; ".join(means),
         fixes=(Fix(text=f"a row each: {', '.join(means)}"),),

@@ -14,8 +14,8 @@ from instruments.columns import DEVICE_TYPES, INSTRUMENTS
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.marking import Marking, read_marking
-from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
+from instruments.sensor import read_sensor_type
 from instruments.written import CannotStand, value_of
 from loops.cable import read_conductor_size
 from loops.circuit import Circuit
@@ -255,13 +255,11 @@ def _names(plant: Plant) -> _Names:
             continue
         absent.add(field)
         fields.append(field)
-        example = f"{_TITLE_OF[field]} {found[0].name}"
-        of = "" if there else f", such as {example}"
-        details.setdefault(sheet, []).append(
-            f"none of the {len(found)} names under {_TITLE_OF[field]} is on it, such as {found[0].name}"
-            if there
-            else f"{len(found)} {'name' if len(found) == 1 else 'names'} under {_TITLE_OF[field]}{of}"
-        )
+        title, count = _TITLE_OF[field], len(found)
+        which = f"{count} {'name' if count == 1 else 'names'} under {title}"
+        if there:
+            which = f"none of the {count} names under {title} is on it"
+        details.setdefault(sheet, []).append(f"{which}, such as {found[0].name}")
     names.absent = frozenset(absent)
     names.fields = tuple(fields)
     names.details = "; ".join(f"{sheet}: {', '.join(texts)}" for sheet, texts in sorted(details.items()))
@@ -389,7 +387,8 @@ def _nearest(named: _Named, names: _Names) -> tuple[str, ...]:
     else:
         codes = [entry.code for entry in plant.cable_types.values()]
     # Sorted, so that of equals the order of rows decides nothing.
-    choices = sorted({code for code in codes if code})
+    others = {name_key(piece) for piece in _APART.split(named.text)}
+    choices = sorted({code for code in codes if code and name_key(code) not in others})
     likely = process.extract(named.name, choices, scorer=fuzz.ratio, limit=2, score_cutoff=LIKENESS)
     return tuple(code for code, _, _ in likely)
 
@@ -435,7 +434,11 @@ def row_against_type(installed: Installed, plant: Plant) -> Verdict:
     untold: list[str] = []
     for field in _STATED_TWICE:
         row, entry = getattr(record, field), getattr(listed, field)
-        if row is None or entry is None:
+        if entry is None:
+            continue
+        if row is None:
+            if field in record.unread:
+                untold.append(title_of(field))
             continue
         same = _SAME[field](row, entry) if field in _SAME else same_value(row, entry)
         if same is None:
@@ -448,7 +451,11 @@ def row_against_type(installed: Installed, plant: Plant) -> Verdict:
     if own is not None:
         for field in _LIMITS:
             row, entry = getattr(own, field), getattr(listed, field)
-            if row is None or entry is None:
+            if entry is None:
+                continue
+            if row is None:
+                if field in record.unread or field in record.unitless:
+                    untold.append(title_of(field))
                 continue
             if _same_limit(row, entry):
                 compared += 1
@@ -508,8 +515,11 @@ def _shown(value: Any) -> str:
 def _same_limit(row: Any, entry: Any) -> bool:
     if isinstance(row, float) and isinstance(entry, float):
         return abs(row - entry) <= 1e-9 * max(abs(row), abs(entry))
-    if isinstance(row, Quantity) and isinstance(entry, Quantity) and row.base == entry.base == 0.0:
-        return same_value(row, entry) or row.unit is None or entry.unit is None
+    if isinstance(row, str) and isinstance(entry, str):
+        one, other = read_sensor_type(row), read_sensor_type(entry)
+        if one is not None and other is not None:
+            return one == other
+        return _letters_and_digits(row) == _letters_and_digits(entry)
     return same_value(row, entry)
 
 
@@ -533,14 +543,14 @@ def _letters_and_digits(text: str) -> str:
     return "".join(letter for letter in text.casefold() if letter.isalnum())
 
 
-def _same_marking(row: str, entry: str) -> bool:
-    """Whether two markings say the same; what only one of them says is no disagreement.
+def _same_marking(row: str, entry: str) -> bool | None:
+    """Whether two markings say the same, None where one cannot be read; what only one says is no disagreement.
 
     The category repeats what the EPL says, and an EPL or an ambient is often left out on a row.
     """
     one, other = read_marking(row), read_marking(entry)
     if not one.readable or not other.readable:
-        return _letters_and_digits(row) == _letters_and_digits(entry)
+        return True if _letters_and_digits(row) == _letters_and_digits(entry) else None
     if bool(one.entries) != bool(other.entries):
         return False
     said, also = _said(one), _said(other)

@@ -168,7 +168,9 @@ def _measures(installed: Installed) -> bool:
 
 
 def _acts(installed: Installed, plant: Plant) -> bool:
-    if installed.kind in _FINAL:
+    kind = installed.kind
+    # HV is a hand valve by its letters alone; in a controller's loop it is the one that is driven.
+    if kind in _FINAL or (kind is Kind.MANUAL_VALVE and installed.kind_from == "letters"):
         return True
     outputs = {circuit_kind(io) for io in channels(installed, plant)} & _OUTPUTS
     # A drive that is started and stopped is a final element too; a lamp is none.
@@ -239,12 +241,48 @@ def _has_controller(loop: Loop, plant: Plant) -> bool:
     return any("C" in each.letters[1:] and _is_controller(each) for each in loop.members)
 
 
+# Fewer loops are no list: there each is a slip of its own.
+_LEAST_LOOPS: Final = 5
+_NONE_OF: Final = (("measurement", "no measurement"), ("final element", "no final element"))
+
+
+def _none_in_the_list(plant: Plant) -> frozenset[str]:
+    """Return what no loop with a controller has, because the list holds none: valves are often listed elsewhere."""
+    loops = [loop for loop in plant.loops if _has_controller(loop, plant)]
+    if len(loops) < _LEAST_LOOPS:
+        return frozenset()
+    members = [each for each in plant.live if not _is_controller(each)]
+    lacking: set[str] = set()
+    if not any(_measures(each) for each in members):
+        lacking.add("no measurement")
+    if not any(_acts(each, plant) for each in members):
+        lacking.add("no final element")
+    return frozenset(lacking)
+
+
+def _holds_none(plant: Plant) -> Verdict:
+    lacking: frozenset[str] = plant.once("what no loop has", _none_in_the_list)
+    if not lacking:
+        return None
+    count = sum(1 for loop in plant.loops if _has_controller(loop, plant))
+    named = [name for name, lack in _NONE_OF if lack in lacking]
+    return Found(
+        values={"what": " and no ".join(named), "count": count},
+        fields=("tag",),
+        message="the list has no {what}; {count} loops have a controller",
+        found=" and ".join(lack for _, lack in _NONE_OF if lack in lacking),
+        wanted="the final elements and measurements of the loops, or the list that holds them",
+        stops_rows=False,
+    )
+
+
 @rule(
     "DAT07",
     severity=Severity.FAULT,
     on=Subject.LOOP,
     applies=_has_controller,
-    message="{controller} has {lacks} in its loop",
+    whole=_holds_none,
+    message="{controller} {has} {lacks} in its loop",
     basis="common practice",
 )
 def loop_not_whole(loop: Loop, plant: Plant) -> Verdict:
@@ -275,11 +313,20 @@ def loop_not_whole(loop: Loop, plant: Plant) -> Verdict:
         lacks.append("no final element")
     if not lacks:
         return None
-    if any(each.kind is None for each in loop.members):
+    if any(each.kind is None and not each.equipment_tag for each in loop.members):
         # What it is might be what is missing.
         return Unchecked("kind")
+    anywhere: frozenset[str] = plant.once("what no loop has", _none_in_the_list)
+    untold = [lack.removeprefix("no ") for lack in lacks if lack in anywhere]
+    lacks = [lack for lack in lacks if lack not in anywhere]
+    if not lacks:
+        return Unchecked(*untold)
     return Found(
-        values={"controller": ", ".join(each.name for each in controllers), "lacks": " and ".join(lacks)},
+        values={
+            "controller": ", ".join(each.name for each in controllers),
+            "has": "has" if len(controllers) == 1 else "have",
+            "lacks": " and ".join(lacks),
+        },
         fields=("tag",),
         found=" and ".join(lacks),
         wanted="measurement, controller and final element",

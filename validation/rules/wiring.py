@@ -10,7 +10,7 @@ from typing import Final
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.record import Instrument
-from instruments.tag import natural_key
+from instruments.tag import assembly_key, natural_key
 from loops.circuit import ANALOGUE_OUTPUT
 from loops.plant import Plant, name_key
 from loops.wiring import circuit_kind, has_io, transmitter_of
@@ -28,7 +28,7 @@ _LINK: Final = re.compile(
     r"bus|modbus|profinet|\bnet\b|^net[-_.]|ethernet|serial|segment|\bseg\b|\bff\b|\bpa\b|rs-?485|tcp",
     re.IGNORECASE,
 )
-_CHANNEL: Final = re.compile(r"(?:ch(?:annel)?[\s.:-]*)?[0-9]{1,3}", re.IGNORECASE)
+_CHANNEL: Final = re.compile(r"(?:ch(?:annel)?[\s.:-]*)?([0-9]{1,3})", re.IGNORECASE)
 # Columns that people keep beside a channel and that no field holds.
 _PART_OF_ADDRESS: Final = re.compile(
     r"rack|slot|node|chassis|drop|station|module|plc|controller|\brio\b|cabinet|panel|head|base|branch|cpu|baugruppe",
@@ -54,7 +54,8 @@ class _Shared:
         for each in plant.live:
             for row in each.signals:
                 if row.io_address is not None:
-                    at[name_key(row.io_address)].append((each, row))
+                    channel = _CHANNEL.fullmatch(row.io_address)
+                    at[channel[1] if channel else name_key(row.io_address)].append((each, row))
         self.rows: dict[tuple[int, ...], list[Instrument]] = defaultdict(list)
         self.groups: dict[tuple[int, ...], tuple[Installed, ...]] = {}
         for signals in at.values():
@@ -235,7 +236,20 @@ def _leaves_it_to_another(installed: Installed, plant: Plant) -> bool:
     members = loop.members if loop is not None else ()
     if kind is Kind.ELEMENT:
         return transmitter_of(installed, members) is not None
-    return any(each.kind in _VALVES and channels(each, plant) for each in members)
+    if any(each.kind in _VALVES and channels(each, plant) for each in members):
+        return True
+    # SDV-1201 and SOV-1201 are one assembly though no letter gives them a loop.
+    key = assembly_key(installed.tag) if installed.tag is not None else None
+    valves: dict[object, list[Installed]] = plant.once("driven valves by assembly", _driven_valves)
+    return key is not None and any(channels(each, plant) for each in valves.get(key, ()))
+
+
+def _driven_valves(plant: Plant) -> dict[object, list[Installed]]:
+    valves: dict[object, list[Installed]] = defaultdict(list)
+    for each in plant.live:
+        if each.kind in _VALVES and each.tag is not None:
+            valves[assembly_key(each.tag)].append(each)
+    return valves
 
 
 def _wired_or_local(installed: Installed, plant: Plant) -> bool:
