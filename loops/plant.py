@@ -277,10 +277,11 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         name = _called(record, profile) or _untagged_name(record)
         names[name] += 1
         placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
-    first = [fitter.install(*each) for each in placed]
-    first = _with_loops(first, data)
-    first = _with_kinds(first, codes)
-    first.sort(key=lambda each: (natural_key(each.name), each.name))
+    drafts = [fitter.install(*each) for each in placed]
+    _give_loops(drafts, data)
+    _give_kinds(drafts, codes)
+    first = [draft.installed() for draft in drafts]
+    first.sort(key=lambda each: natural_key(each.name))
     by_tag: dict[Any, list[Installed]] = defaultdict(list)
     for each in first:
         if each.live and each.tag is not None:
@@ -557,6 +558,58 @@ def _untagged_name(record: Instrument) -> str:
     return f"{sheet}: row {record.origin.row if record.origin else ''}".rstrip()
 
 
+@dataclass(slots=True, kw_only=True, eq=False)
+class _Draft:
+    """An instrument on its way into the plant: its loop and its kind are told by the others beside it."""
+
+    record: Instrument
+    name: str
+    tag: TagReading | None
+    live: bool
+    equipment_tag: bool
+    listed_type: DeviceType | None
+    type: DeviceType | None
+    area: Area | None
+    unclassified: bool
+    marking: Marking | None
+    signals: tuple[Instrument, ...]
+    body: str | None
+    merged_rows: int
+    loop: str | None = None
+    loop_from: str = ""
+    kind: Kind | None = None
+    kind_from: str = ""
+    measuring_point: bool = False
+
+    @property
+    def letters(self) -> str:
+        """The tag's letters; empty without a parsed tag."""
+        return self.tag.letters if self.tag and self.tag.letters else ""
+
+    def installed(self) -> Installed:
+        """Return the instrument as the rules and the sheets see it."""
+        return Installed(
+            record=self.record,
+            name=self.name,
+            tag=self.tag,
+            kind=self.kind,
+            kind_from=self.kind_from,
+            live=self.live,
+            equipment_tag=self.equipment_tag,
+            listed_type=self.listed_type,
+            type=self.type,
+            area=self.area,
+            unclassified=self.unclassified,
+            marking=self.marking,
+            loop=self.loop,
+            loop_from=self.loop_from,
+            signals=self.signals,
+            measuring_point=self.measuring_point,
+            body=self.body,
+            merged_rows=self.merged_rows,
+        )
+
+
 class _Fitter:
     """Joins a record with its device type, its area and its marking."""
 
@@ -580,7 +633,7 @@ class _Fitter:
 
     def install(
         self, record: Instrument, reading: TagReading | None, rows: tuple[Instrument, ...], name: str
-    ) -> Installed:
+    ) -> _Draft:
         listed = self._types.get(_key(record.device_type)) if record.device_type else None
         device = self._effective(record, listed)
         area, unclassified = self._area(record)
@@ -597,7 +650,7 @@ class _Fitter:
         ):
             body = device.url.reference
         signals = _signals(rows)
-        return Installed(
+        return _Draft(
             record=record,
             name=name,
             tag=reading,
@@ -619,12 +672,9 @@ class _Fitter:
 
     def _effective(self, record: Instrument, listed: DeviceType | None) -> DeviceType | None:
         own = record.own
-        stated = {name: getattr(record, name) for name in ROW_AND_TYPE if getattr(record, name) is not None}
-        if own is None and listed is None:
-            return None
         if own is None:
-            assert listed is not None
             return listed
+        stated = {name: getattr(record, name) for name in ROW_AND_TYPE if getattr(record, name) is not None}
         base = listed if listed is not None else DeviceType(origin=record.origin)
         values = {name: getattr(own, name) for name in _TYPE_FIELDS if getattr(own, name) is not None}
         elsewhere = dict(base.elsewhere)
@@ -706,7 +756,7 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
     return tuple(kept)
 
 
-def _with_loops(found: list[Installed], data: PlantData) -> list[Installed]:
+def _give_loops(found: Sequence[_Draft], data: PlantData) -> None:
     """Give each instrument its loop: the column's, else the one its tag gives, or the valve it belongs to."""
     valves: dict[tuple[str, str], list[tuple[TagReading, str]]] = defaultdict(list)
     derived: list[tuple[str | None, tuple[str, str] | None]] = []
@@ -721,15 +771,13 @@ def _with_loops(found: list[Installed], data: PlantData) -> list[Installed]:
                     valves[key].append((each.tag, stated))
                 key = None
         derived.append((loop, key))
-    result: list[Installed] = []
     for each, (loop, key) in zip(found, derived, strict=True):
         if each.record.loop:
-            result.append(replace(each, loop=each.record.loop, loop_from="column"))
+            each.loop, each.loop_from = each.record.loop, "column"
             continue
         if key is not None and key in valves:
             loop = loop_of_assembly(valves[key]) or loop
-        result.append(replace(each, loop=loop, loop_from="tag" if loop else ""))
-    return result
+        each.loop, each.loop_from = loop, "tag" if loop else ""
 
 
 def loop_of_assembly(valves: Sequence[tuple[TagReading, str]]) -> str | None:
@@ -748,7 +796,7 @@ def loop_of_assembly(valves: Sequence[tuple[TagReading, str]]) -> str | None:
     return None
 
 
-def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[Installed]:
+def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None:
     """Give each instrument its kind, and tell the measuring points of older lists."""
     bears: set[str] = set()
     transmits: set[str] = set()
@@ -759,7 +807,6 @@ def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[
                 bears.add(loop_key(each.loop))
             if "T" in functions:
                 transmits.add(loop_key(each.loop))
-    result: list[Installed] = []
     for each in found:
         record = each.record
         loop = loop_key(each.loop)
@@ -795,8 +842,8 @@ def _with_kinds(found: list[Installed], codes: Mapping[str, PlantCode]) -> list[
             kind, kind_from = derive_kind(letters, **asked), "letters"
             if point and kind not in _MEASURING:
                 kind = _point_kind(record) or kind
-        result.append(replace(each, kind=kind, kind_from=kind_from if kind is not None else "", measuring_point=point))
-    return result
+        each.kind, each.kind_from = kind, kind_from if kind is not None else ""
+        each.measuring_point = point
 
 
 _MEASURING = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH})

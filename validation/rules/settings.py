@@ -2,138 +2,84 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Iterator, Sequence
-from dataclasses import dataclass
+import re
+from collections.abc import Callable, Iterable, Sequence
+from functools import partial
+from itertools import pairwise
+from typing import Final, NamedTuple
 
 from instruments.columns import INSTRUMENTS
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.letters import read_letters
-from instruments.pressure import referred, stated_reference, ways_to_read
+from instruments.measurement import Measurement, Scale, amount, at, difference_in, same_dimension
+from instruments.pressure import referred
 from instruments.quantity import Quantity, format_number
-from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_value
-from instruments.span import above, below
+from instruments.record import Instrument
+from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_value, ma_from_percent
+from instruments.signal_words import carries_live_zero, io_types, signal_classes
+from instruments.span import above, below, percent_of_span
 from loops.plant import Plant
-from loops.redundancy import how_redundant, in_redundant_group, redundant_groups
+from loops.redundancy import how_redundant, redundant_groups
+from validation.bodies import measured
 from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
+from validation.mending import each_found, read_both_ways, rounded_down, rounded_up, written
 from validation.rule import Subject, rule, title_of
-from validation.rules.electrical import signal_class
 
-SETTINGS = ("setting_ll", "setting_l", "setting_h", "setting_hh")
-WITH_TRIP = (*SETTINGS, "trip")
-SET13_PERCENT = 5.0
-NE43 = "NAMUR NE 43:2021 (3.8 to 20.5 mA is measurement)"
-PRACTICE = "common practice"
-_SWITCHES = frozenset({Kind.SWITCH})
+SETTINGS: Final = ("setting_ll", "setting_l", "setting_h", "setting_hh")
+WITH_TRIP: Final = (*SETTINGS, "trip")
+SET13_PERCENT: Final = 5.0
+NE43: Final = "NAMUR NE 43:2021 (3.8 to 20.5 mA is measurement)"
+PRACTICE: Final = "common practice"
+_HIGH_ALARMS: Final = frozenset({"setting_h", "setting_hh"})
 
-
-# ----------------------------------------------------------------------------------------- comparing quantities
+Numbers = tuple[float, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class _Way:
-    """Quantities as comparable numbers, under one reading of pressures whose reference is not stated."""
-
-    numbers: tuple[float, ...]
-    assumed: str = ""
+# ----------------------------------------------------------------------------------------------- what is given
 
 
-def _ways(values: Sequence[Quantity], installed: Installed, plant: Plant) -> tuple[_Way, ...] | None:
-    """Return the ways in which quantities can be compared, the plant's default first; None where there is none."""
-    units = [each.unit for each in values]
-    first = units[0]
-    if any(unit is None or first is None or unit.dimension != first.dimension for unit in units):
-        return None
-    bases = [each.base for each in values]
-    if any(base is None for base in bases):
-        return None
-    numbers = tuple(base for base in bases if base is not None)
-    if first is None or first.kind != "pressure":
-        return (_Way(numbers),)
-    body = installed.body
-    references = [stated_reference(each, body=body) or body for each in values]
-    ways: list[_Way] = []
-    pairs = list(zip(numbers, references, strict=True))
-    for way in ways_to_read(pairs, default=plant.data.default_reference):
-        in_gauge = [
-            referred(pa, reference or way, "gauge", atmospheric_pa=plant.data.atmospheric_pa) for pa, reference in pairs
-        ]
-        # An absolute pressure beside a difference has no figure that leads from one to the other.
-        if "differential" in references and ("absolute" in references or (None in references and way == "absolute")):
-            continue
-        if any(pa is None for pa in in_gauge):
-            return None
-        unstated = None in references and any(reference is not None for reference in references)
-        ways.append(
-            _Way(
-                tuple(pa for pa in in_gauge if pa is not None),
-                f"a pressure without stated reference is {way}" if unstated else "",
-            )
-        )
-    return tuple(ways) or None
-
-
-def _judge(ways: Sequence[_Way], fails: Callable[[tuple[float, ...]], bool]) -> tuple[bool, bool, tuple[str, ...]]:
-    """Return whether the default reading fails, whether another reading would change that, and the assumption."""
-    results = [fails(way.numbers) for way in ways]
-    changed = any(result != results[0] for result in results)
-    return results[0], changed, (ways[0].assumed,) if changed and ways[0].assumed else ()
-
-
-def _say(make: Callable[[], Found], ways: Sequence[_Way], fails: Callable[[tuple[float, ...]], bool]) -> Found | None:
-    """Return the finding, the same as a review where an unstated reference decides it, or nothing.
-
-    The finding is made only where there is one: most settings are right, and texts cost time.
-    """
-    failed, changed, assumed = _judge(ways, fails)
-    if not failed and not changed:
-        return None
-    found = make()
-    if changed:
-        values = {name: getattr(found, name) for name in found.__dataclass_fields__}
-        values["assumed"] = (*found.assumed, *assumed)
-        return Review(**values)
-    return found
-
-
-def _given(installed: Installed, names: Iterable[str]) -> list[tuple[str, Quantity]]:
-    record = installed.record
+def _given(record: Instrument, names: Iterable[str]) -> list[tuple[str, Quantity]]:
     pairs = ((name, getattr(record, name)) for name in names)
     return [(name, value) for name, value in pairs if value is not None]
 
 
-def _unread(installed: Installed, names: Iterable[str]) -> tuple[str, ...]:
+def _unread(record: Instrument, names: Iterable[str]) -> list[str]:
+    """Return the titles of those fields that have something in their cell which is no value."""
+    if not record.unread and not record.unitless:
+        return []
+    return [title_of(name) for name in names if name in record.unread or name in record.unitless]
+
+
+def trip_of(installed: Installed) -> tuple[str, Quantity] | None:
+    """Return the field trip and its field: of a switch its set pressure, where the trip is blank."""
     record = installed.record
-    return tuple(title_of(name) for name in names if name in record.unread or name in record.unitless)
-
-
-def _ranges(installed: Installed) -> Iterator[tuple[Quantity, Quantity, str]]:
-    record = installed.record
-    if record.lrv is not None and record.urv is not None:
-        yield record.lrv, record.urv, "field"
-    if record.system_lrv is not None and record.system_urv is not None:
-        yield record.system_lrv, record.system_urv, "system"
-
-
-def _same_dimension(one: Quantity, other: Quantity) -> bool:
-    return one.unit is not None and other.unit is not None and one.unit.dimension == other.unit.dimension
-
-
-def _range_for(value: Quantity, installed: Installed) -> tuple[Quantity, Quantity, str] | None:
-    """Return the range, field before system, that has the setting's dimension."""
-    for lrv, urv, which in _ranges(installed):
-        if _same_dimension(value, lrv) and _same_dimension(value, urv):
-            return lrv, urv, which
+    if record.trip is not None:
+        return "trip", record.trip
+    if installed.kind is Kind.SWITCH and record.set_pressure is not None:
+        return "set_pressure", record.set_pressure
     return None
 
 
+def _has_trip(installed: Installed, plant: Plant) -> bool:
+    record = installed.record
+    return bool(
+        record.trip is not None
+        or (record.set_pressure is not None and installed.kind is Kind.SWITCH)
+        or record.trip_direction
+        or "trip" in record.unread
+        or "trip" in record.unitless
+    )
+
+
 def trip_direction(installed: Installed) -> str | None:
-    """Return high or low: as stated, else as the letters of a switch or alarm say; None where neither does."""
+    """Return high or low: as stated, else as the trip itself or the letters of a switch or alarm say."""
     record = installed.record
     if record.trip_direction is not None:
         return record.trip_direction
-    functions = read_letters(installed.letters).functions if installed.letters else ()
-    for function in functions:
+    if record.trip is not None and record.trip.qualifier in ("rising", "falling"):
+        return "high" if record.trip.qualifier == "rising" else "low"
+    for function in _functions(installed):
         if function[:1] in ("S", "A") and len(function) > 1:
             if set(function[1:]) == {"H"}:
                 return "high"
@@ -142,23 +88,105 @@ def trip_direction(installed: Installed) -> str | None:
     return None
 
 
-def _amount(difference_base: float, like: Quantity) -> str:
-    """Return a difference of base values in the unit of `like`, for people."""
-    factor = like.unit.factor if like.unit is not None and like.unit.factor else 1.0
-    unit = str(like).partition(" ")[2].removesuffix("g").removesuffix("a") if like.unit else ""
-    if like.unit is not None and like.unit.kind != "pressure":
-        unit = str(like).partition(" ")[2]
-    return f"{format_number(abs(difference_base / factor))} {unit}".strip()
+def _functions(installed: Installed) -> tuple[str, ...]:
+    reading = installed.tag
+    if reading is None or not reading.letters:
+        return ()
+    letters = reading.code.letters if reading.code is not None else reading.letters
+    return read_letters(letters).functions if letters else ()
 
 
-# ---------------------------------------------------------------------------------------------------- the rules
+# ----------------------------------------------------------------------------------------- comparing quantities
+
+
+def _compared(
+    values: Sequence[Quantity], measurements: Sequence[Measurement], plant: Plant, check: Callable[[Numbers], Verdict]
+) -> Verdict:
+    """Compare quantities as numbers in one base unit and of one reference.
+
+    Where a pressure states no reference and no body tells it, the check is worked with the plant's
+    default and with the other reading.
+
+    Parameters
+    ----------
+    values
+        What is compared.
+    measurements
+        Of the instrument that each value is of; one for all of them.
+    plant
+        The plant.
+    check
+        Takes the numbers, in the order of the values.
+
+    Returns
+    -------
+    Verdict
+        `_CANNOT` where the values have no dimension or reference in common.
+    """
+    first = values[0].unit
+    if first is None:
+        return _CANNOT
+    for value in values:
+        unit = value.unit
+        if unit is not first and (unit is None or not same_dimension(unit, first)):
+            return _CANNOT
+        if value.base is None and unit is not first:
+            return _CANNOT
+    numbers = tuple(map(at, values))
+    if first.kind != "pressure":
+        return check(numbers)
+    if len(measurements) == 1:
+        references = tuple(map(measurements[0].reference, values))
+    else:
+        references = tuple(each.reference(value) for each, value in zip(measurements, values, strict=True))
+    if len(set(references)) == 1:
+        return check(numbers)
+
+    def read_as(open_as: str) -> Verdict:
+        in_gauge = [
+            referred(pa, reference or open_as, "gauge", atmospheric_pa=plant.data.atmospheric_pa)
+            for pa, reference in zip(numbers, references, strict=True)
+        ]
+        known = {reference or open_as for reference in references}
+        # An absolute pressure beside a difference has no figure that leads from one to the other.
+        if known >= {"absolute", "differential"} or None in in_gauge:
+            return _CANNOT
+        return check(tuple(pa for pa in in_gauge if pa is not None))
+
+    return read_both_ways(read_as, zip(numbers, references, strict=True), plant)
+
+
+_CANNOT: Final = Unchecked("one dimension and reference")
+
+
+def _is_plain(value: Quantity, other: Quantity) -> bool:
+    """Whether two quantities can be compared as they are written."""
+    return value.unit is other.unit and value.reference == other.reference and value.unit is not None
+
+
+def _one(verdict: Verdict) -> Found | None:
+    return next(each_found(verdict), None)
+
+
+# ------------------------------------------------------------------------------------------------- the order
+
+
+def _two_settings(installed: Installed, plant: Plant) -> bool:
+    record = installed.record
+    given = (
+        (record.setting_ll is not None)
+        + (record.setting_l is not None)
+        + (record.setting_h is not None)
+        + (record.setting_hh is not None)
+    )
+    return given > 1 or bool((record.unread or record.unitless) and given + len(_unread(record, SETTINGS)) > 1)
 
 
 @rule(
     "SET01",
     severity=Severity.DANGER,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: len(_given(installed, SETTINGS)) > 1,
+    applies=_two_settings,
     message="not in the order LL < L < H < HH: {settings}",
     basis="IEC 62682:2014 (from memory); common practice",
 )
@@ -177,27 +205,52 @@ def settings_out_of_order(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET01", [{**row, "H": "1.0"}])
     []
     """
-    given = _given(installed, SETTINGS)
-    ways = _ways([value for _, value in given], installed, plant)
-    if ways is None:
-        return Unchecked("settings in one dimension and reference")
+    record = installed.record
+    given = _given(record, SETTINGS)
+    unread = _unread(record, SETTINGS)
+    groups = _of_one_dimension(given)
+    for group in groups:
+        values = [value for _, value in group]
+        if len(values) < 2:
+            continue
+        verdict = _compared(values, (measured(installed, plant),), plant, partial(_order, group))
+        if verdict is _CANNOT:
+            return Unchecked("settings of one reference")
+        if verdict is not None:
+            return verdict
+    if unread:
+        return Unchecked(*unread)
+    return None if len(groups) == 1 else Unchecked("settings in one unit")
 
-    def out_of_order(numbers: tuple[float, ...]) -> bool:
-        return any(lower >= upper for lower, upper in zip(numbers, numbers[1:], strict=False))
 
-    failed, changed, _ = _judge(ways, out_of_order)
-    if not failed and not changed:
+def _of_one_dimension(given: list[tuple[str, Quantity]]) -> list[list[tuple[str, Quantity]]]:
+    """Part settings by what they measure: a percentage of the span says nothing beside a pressure."""
+    groups: list[list[tuple[str, Quantity]]] = []
+    for name, value in given:
+        for group in groups:
+            other = group[0][1].unit
+            if other is value.unit or (
+                other is not None and value.unit is not None and same_dimension(other, value.unit)
+            ):
+                group.append((name, value))
+                break
+        else:
+            groups.append([(name, value)])
+    return groups
+
+
+def _order(given: Sequence[tuple[str, Quantity]], numbers: Numbers) -> Verdict:
+    steps = [above(upper, lower) for lower, upper in pairwise(numbers)]
+    if all(steps):
         return None
-    numbers = ways[0].numbers
     wrong = tuple(
         name
         for place, (name, _) in enumerate(given)
-        if (place and numbers[place - 1] >= numbers[place])
-        or (place + 1 < len(given) and numbers[place] >= numbers[place + 1])
+        if (place and not steps[place - 1]) or (place < len(steps) and not steps[place])
     )
     order = sorted(range(len(given)), key=numbers.__getitem__)
     fixes: tuple[Fix, ...] = ()
-    if len(set(numbers)) == len(numbers) and failed:
+    if all(above(numbers[higher], numbers[lower]) for lower, higher in pairwise(order)):
         change = {
             title_of(name): str(given[source][1])
             for (name, _), source in zip(given, order, strict=True)
@@ -205,91 +258,149 @@ def settings_out_of_order(installed: Installed, plant: Plant) -> Verdict:
         }
         fixes = (Fix(text="; ".join(f"{title} {value}" for title, value in change.items()), change=change),)
     shown = ", ".join(f"{title_of(name)} {value}" for name, value in given)
-    return _say(
-        lambda: Found(
-            values={"settings": shown},
-            fields=wrong or tuple(name for name, _ in given),
-            found=shown,
-            wanted="LL < L < H < HH",
-            fixes=fixes,
-        ),
-        ways,
-        out_of_order,
+    return Found(
+        values={"settings": shown},
+        fields=wrong,
+        found=shown,
+        wanted="LL < L < H < HH",
+        fixes=fixes,
     )
+
+
+# --------------------------------------------------------------------------------------- settings on their range
 
 
 def _carries_4_20(installed: Installed) -> bool | None:
     """Whether the signal is 4-20 mA; None where nothing says."""
     texts = [row.signal for row in installed.signals if row.signal]
-    if installed.type is not None and installed.type.signal:
-        texts.append(installed.type.signal)
-    for text in texts:
-        if signal_class(text) == "current":
-            return True
-    if texts:
-        return False
-    return None
+    if not texts and installed.type is not None and installed.type.signal:
+        texts = [installed.type.signal]
+    if not texts:
+        # Nothing but a current, or volts, comes over an analogue input; a contact's needs no more words.
+        kinds = {kind for row in installed.signals for kind in io_types(row.io_type)}
+        return False if installed.kind is Kind.SWITCH or (kinds and "AI" not in kinds) else None
+    said = [carries_live_zero(text) for text in texts]
+    if True not in said and None in said and installed.type is not None:
+        said.append(carries_live_zero(installed.type.signal))
+    if True in said:
+        return True
+    return None if None in said else False
 
 
-def _setting_ma(value: float, lrv: float, urv: float, installed: Installed, which: str) -> float:
-    """Return the mA at a setting; with the root taken in the system the signal goes with the square of the flow."""
-    record = installed.record
-    if which == "system" and record.square_root_system and not record.square_root_device and record.lrv is not None:
-        record_kind = record.lrv.unit.kind if record.lrv.unit is not None else ""
-        if record_kind == "pressure":
-            fraction = (value - lrv) / (urv - lrv)
-            return 4.0 + 16.0 * fraction * abs(fraction)
-    if which == "field" and record.square_root_device and record.lrv is not None and record.lrv.unit is not None:
-        if record.lrv.unit.kind == "pressure":
-            return ma_for_value(value, lrv, urv, square_root=True)
-    return ma_for_value(value, lrv, urv)
-
-
-def _has_setting_to_place(installed: Installed, plant: Plant) -> bool:
-    if not _given(installed, WITH_TRIP) and not _unread(installed, WITH_TRIP):
-        return False
-    # A switch has its own scale, which lists do not give.
-    return installed.kind not in _SWITCHES or any(True for _ in _ranges(installed))
-
-
-@dataclass(frozen=True, slots=True)
-class _Placed:
-    """A setting on its range: the numbers are setting, LRV, URV."""
+class _Placed(NamedTuple):
+    """A setting, and the range of its dimension; None where there is none."""
 
     name: str
     value: Quantity
-    lrv: Quantity
-    urv: Quantity
-    which: str
-    ways: tuple[_Way, ...]
+    scale: Scale | None
 
 
-def _placed(installed: Installed, plant: Plant) -> tuple[list[_Placed], list[str]]:
-    """Return the settings on their ranges, and what could not be placed."""
+def _has_setting_to_place(installed: Installed, plant: Plant) -> bool:
+    record = installed.record
+    if (
+        record.setting_hh is None
+        and record.setting_h is None
+        and record.setting_l is None
+        and record.setting_ll is None
+        and record.trip is None
+        and (record.set_pressure is None or installed.kind is not Kind.SWITCH)
+        and not ((record.unread or record.unitless) and _unread(record, WITH_TRIP))
+    ):
+        return False
+    # A switch has a scale of its own, which lists seldom give.
+    return installed.kind is not Kind.SWITCH or measured(installed, plant).ranged
+
+
+def _outside(installed: Installed, plant: Plant) -> tuple[list[_Placed], list[str]]:
+    """Return the settings that are not seen to lie within their range at a glance, and what was not to be read."""
+    record = installed.record
+    measurement = measured(installed, plant)
     placed: list[_Placed] = []
-    unplaced: list[str] = list(_unread(installed, WITH_TRIP))
-    for name, value in _given(installed, WITH_TRIP):
-        found = _range_for(value, installed)
-        if found is None:
-            unplaced.append(f"range that {title_of(name)} can be compared with")
+    field = measurement.field
+    for name in WITH_TRIP:
+        value: Quantity | None = getattr(record, name)
+        if value is None:
+            if name != "trip" or record.set_pressure is None or installed.kind is not Kind.SWITCH:
+                continue
+            name, value = "set_pressure", record.set_pressure
+        if (
+            field is not None
+            and value.base is not None
+            and _is_plain(value, field.urv)
+            and _is_plain(value, field.lrv)
+            and field.low <= value.base <= field.high
+            and not field.flat
+        ):
             continue
-        lrv, urv, which = found
-        ways = _ways((value, lrv, urv), installed, plant)
-        if ways is None or any(way.numbers[1] == way.numbers[2] for way in ways):
-            unplaced.append(f"range that {title_of(name)} can be compared with")
-            continue
-        placed.append(_Placed(name, value, lrv, urv, which, ways))
-    return placed, unplaced
+        placed.append(_Placed(name, value, measurement.scale_of(value)))
+    return placed, _unread(record, WITH_TRIP)
 
 
-def _outside(numbers: tuple[float, ...]) -> bool:
+def _no_range_for(measurement: Measurement, name: str) -> tuple[str, ...]:
+    """Return what is blank where a setting has no range to be compared with."""
+    if not measurement.ranged:
+        return "LRV or system LRV", "URV or system URV"
+    if measurement.flat:
+        return ("a range with a span",)
+    if measurement.system is None:
+        return "system LRV", "system URV"
+    if measurement.field is None:
+        return "LRV", "URV"
+    return (f"a range in the dimension of {title_of(name)}",)
+
+
+def _ma(numbers: Numbers, scale: Scale, measurement: Measurement) -> float:
+    """Return the mA at a setting.
+
+    Of a differential pressure whose root is taken in the device the signal follows the root; of a flow
+    whose root is taken in the system, its square.
+    """
+    record = measurement.installed.record
     value, lrv, urv = numbers
-    scale = abs(urv - lrv)
-    return above(value, max(lrv, urv), scale=scale) or below(value, min(lrv, urv), scale=scale)
+    if scale.is_pressure:
+        root = bool(record.square_root_device) and scale is measurement.field
+        return ma_for_value(value, lrv, urv, square_root=root)
+    if record.square_root_system and not record.square_root_device:
+        percent = percent_of_span(value, lrv, urv)
+        return ma_from_percent(percent * abs(percent) / 100.0)
+    return ma_for_value(value, lrv, urv)
+
+
+def _is_beyond(numbers: Numbers) -> bool:
+    value, lrv, urv = numbers
+    size = abs(urv - lrv)
+    return above(value, max(lrv, urv), scale=size) or below(value, min(lrv, urv), scale=size)
 
 
 def _is_reached(ma: float) -> bool:
     return not (below(ma, MEASUREMENT_MIN_MA) or above(ma, MEASUREMENT_MAX_MA))
+
+
+def _each_on_range(
+    installed: Installed, plant: Plant, check: Callable[[_Placed, Scale, Measurement, Numbers], Verdict]
+) -> Verdict:
+    """Check each setting that may lie outside its range; unchecked where one cannot be placed."""
+    placed, unread = _outside(installed, plant)
+    if not placed:
+        return Unchecked(*unread) if unread else None
+    measurement = measured(installed, plant)
+    found: list[Found] = []
+    unchecked = dict.fromkeys(unread)
+    for each in placed:
+        scale = each.scale
+        if scale is None:
+            unchecked.update(dict.fromkeys(_no_range_for(measurement, each.name)))
+            continue
+        verdict = _compared(
+            (each.value, scale.lrv, scale.urv), (measurement,), plant, partial(check, each, scale, measurement)
+        )
+        if verdict is _CANNOT:
+            unchecked.setdefault(f"{title_of(each.name)} and range of one reference")
+        else:
+            found.extend(each_found(verdict))
+    if found:
+        return found
+    return Unchecked(*unchecked) if unchecked else None
 
 
 @rule(
@@ -315,55 +426,45 @@ def setting_outside_range(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET02", [{**row, "HH": "6"}])
     []
     """
-    placed, unplaced = _placed(installed, plant)
-    analogue = _carries_4_20(installed)
-    found: list[Found] = []
-    for each in placed:
-
-        def speaks(numbers: tuple[float, ...], each: _Placed = each) -> bool:
-            if not _outside(numbers):
-                return False
-            if analogue is not True:
-                return True
-            return _is_reached(_setting_ma(*numbers, installed, each.which))
-
-        shown = _say(lambda each=each: _outside_range(each), each.ways, speaks)  # type: ignore[misc]
-        if shown is not None:
-            found.append(shown)
-    if found:
-        return found
-    return Unchecked(*dict.fromkeys(unplaced)) if unplaced else None
+    return _each_on_range(installed, plant, _outside_range)
 
 
-def _outside_range(each: _Placed) -> Found:
+def _outside_range(each: _Placed, scale: Scale, measurement: Measurement, numbers: Numbers) -> Verdict:
+    if not _is_beyond(numbers):
+        return None
+    if _carries_4_20(measurement.installed) and not _is_reached(_ma(numbers, scale, measurement)):
+        return None
     title = title_of(each.name)
     return Found(
-        values={"title": title, "setting": str(each.value), "range": _range_text(each)},
-        fields=(each.name, *_range_fields(each)),
+        values={"title": title, "setting": str(each.value), "range": str(scale)},
+        fields=(each.name, *_range_fields(scale, measurement)),
         part=title,
         found=str(each.value),
-        wanted=f"within {_range_text(each)}",
-        fixes=_to_the_end(each),
+        wanted=f"within {scale}",
+        off_by=_off_range(numbers, each.value),
+        fixes=_to_the_end(each, scale, numbers),
     )
 
 
-def _range_fields(each: _Placed) -> tuple[str, str]:
-    return ("lrv", "urv") if each.which == "field" else ("system_lrv", "system_urv")
+def _range_fields(scale: Scale, measurement: Measurement) -> tuple[str, str]:
+    return ("lrv", "urv") if scale is measurement.field else ("system_lrv", "system_urv")
 
 
-def _range_text(each: _Placed) -> str:
-    low = str(each.lrv)
-    if each.lrv.unit is each.urv.unit:
-        low = format_number(each.lrv.number)
-    return f"{low} to {each.urv}"
+def _off_range(numbers: Numbers, value: Quantity) -> str:
+    high = max(numbers[1:])
+    beyond = numbers[0] - high if numbers[0] > high else min(numbers[1:]) - numbers[0]
+    return amount(beyond, value.unit) if value.unit is not None else ""
 
 
-def _to_the_end(each: _Placed) -> tuple[Fix, ...]:
+def _to_the_end(each: _Placed, scale: Scale, numbers: Numbers) -> tuple[Fix, ...]:
     """Return the nearest end of the range as a setting."""
-    numbers = each.ways[0].numbers
-    end = each.lrv if abs(numbers[0] - numbers[1]) < abs(numbers[0] - numbers[2]) else each.urv
+    is_above = numbers[0] > max(numbers[1:])
+    end = scale.lrv if (numbers[1] > numbers[2]) == is_above else scale.urv
+    if end.unit is None:
+        return ()
+    text = written(rounded_down(end.number) if is_above else rounded_up(end.number), end.unit)
     title = title_of(each.name)
-    return (Fix(text=f"{title} {end} at the most", change={title: str(end)}),)
+    return (Fix(text=f"{title} {text} at the {'most' if is_above else 'least'}", change={title: text}),)
 
 
 @rule(
@@ -391,64 +492,79 @@ def setting_never_reached(installed: Installed, plant: Plant) -> Verdict:
     """
     if _carries_4_20(installed) is None:
         return Unchecked("signal")
-    placed, unplaced = _placed(installed, plant)
-    found: list[Found] = []
-    for each in placed:
-
-        def unreached(numbers: tuple[float, ...], each: _Placed = each) -> bool:
-            return not _is_reached(_setting_ma(*numbers, installed, each.which))
-
-        shown = _say(lambda each=each: _never_reached(each, installed), each.ways, unreached)  # type: ignore[misc]
-        if shown is not None:
-            found.append(shown)
-    if found:
-        return found
-    return Unchecked(*dict.fromkeys(unplaced)) if unplaced else None
+    return _each_on_range(installed, plant, _never_reached)
 
 
-def _never_reached(each: _Placed, installed: Installed) -> Found:
-    ma = _setting_ma(*each.ways[0].numbers, installed, each.which)
-    end_ma = MEASUREMENT_MAX_MA if ma > 12 else MEASUREMENT_MIN_MA
+def _never_reached(each: _Placed, scale: Scale, measurement: Measurement, numbers: Numbers) -> Verdict:
+    ma = _ma(numbers, scale, measurement)
+    if _is_reached(ma):
+        return None
+    end_ma = MEASUREMENT_MAX_MA if ma > MEASUREMENT_MAX_MA else MEASUREMENT_MIN_MA
     title = title_of(each.name)
     needs = f"{format_number(round(ma, 3))} mA"
-    working = ""
-    if _is_linear(each, installed):
-        lrv, urv = format_number(each.lrv.number), format_number(each.urv.number)
-        working = f"4 mA + 16 mA x ({each.value} - {lrv}) / ({urv} - {lrv}) = {needs}"
     return Found(
         values={
             "title": title,
             "setting": str(each.value),
-            "range": _range_text(each),
+            "range": str(scale),
             "ma": needs,
             "end": f"{format_number(end_ma)} mA",
         },
-        fields=(each.name, *_range_fields(each)),
+        fields=(each.name, *_range_fields(scale, measurement)),
         part=title,
         found=f"{each.value} at {needs}",
-        wanted=f"within {_range_text(each)}",
+        wanted=f"within {scale}",
         off_by=f"{format_number(round(abs(ma - end_ma), 3))} mA",
-        working=working,
-        fixes=_to_the_end(each),
+        working=_ma_working(each, scale, measurement, needs),
+        fixes=_to_the_end(each, scale, numbers),
     )
 
 
-def _is_linear(each: _Placed, installed: Installed) -> bool:
-    record = installed.record
-    same = each.value.unit is each.lrv.unit is each.urv.unit
-    return same and not record.square_root_device and not record.square_root_system
+def _ma_working(each: _Placed, scale: Scale, measurement: Measurement, needs: str) -> str:
+    """Return the formula with its figures, where one unit and one law make it."""
+    record = measurement.installed.record
+    if record.square_root_device or record.square_root_system:
+        return ""
+    if not (_is_plain(each.value, scale.lrv) and _is_plain(each.value, scale.urv)):
+        return ""
+    value, lrv, urv = (_in_brackets(one.number) for one in (each.value, scale.lrv, scale.urv))
+    return f"4 mA + 16 mA x ({value} - {lrv}) / ({urv} - {lrv}) = {needs}"
 
 
-def _has_trip(installed: Installed, plant: Plant) -> bool:
-    return installed.record.trip is not None
+def _in_brackets(number: float) -> str:
+    shown = format_number(number)
+    return f"({shown})" if shown.startswith("-") else shown
 
 
-def _pre_alarm(installed: Installed) -> tuple[str, str] | None:
-    """Return the trip's direction and the field of the pre-alarm on its side; None where nothing says."""
+# ---------------------------------------------------------------------------------------- pre-alarm and trip
+
+
+class _Pair(NamedTuple):
+    """A trip with the pre-alarm on its side."""
+
+    direction: str
+    alarm_name: str
+    alarm: Quantity
+    trip_name: str
+    trip: Quantity
+
+    @property
+    def sign(self) -> float:
+        """1 where the trip is high, -1 where it is low."""
+        return 1.0 if self.direction == "high" else -1.0
+
+
+def _prealarm_and_trip(installed: Installed) -> _Pair | Unchecked:
+    """Return a trip and its pre-alarm, H or L on the trip's side; what is blank where one is."""
     direction = trip_direction(installed)
     if direction is None:
-        return None
-    return direction, "setting_h" if direction == "high" else "setting_l"
+        return Unchecked("trip direction")
+    name = "setting_h" if direction == "high" else "setting_l"
+    alarm: Quantity | None = getattr(installed.record, name)
+    trip = trip_of(installed)
+    if alarm is None or trip is None:
+        return Unchecked(*([title_of(name)] if alarm is None else []), *(["trip"] if trip is None else []))
+    return _Pair(direction, name, alarm, *trip)
 
 
 @rule(
@@ -473,97 +589,33 @@ def prealarm_beyond_trip(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET03", [{**row, "H": "7.5"}])
     []
     """
-    return _against_trip(installed, plant, at_or_beyond=True)
+    pair = _prealarm_and_trip(installed)
+    if isinstance(pair, Unchecked):
+        return pair
 
-
-def _against_trip(installed: Installed, plant: Plant, *, at_or_beyond: bool) -> Verdict:
-    record = installed.record
-    sides = _pre_alarm(installed)
-    if sides is None:
-        return Unchecked("trip direction")
-    direction, name = sides
-    alarm: Quantity | None = getattr(record, name)
-    trip = record.trip
-    title = title_of(name)
-    if alarm is None or trip is None:
-        return Unchecked(title if alarm is None else "trip")
-    ways = _ways((alarm, trip), installed, plant)
-    if ways is None:
-        return Unchecked(f"{title} and trip in one dimension and reference")
-    sign = 1.0 if direction == "high" else -1.0
-
-    def beyond(numbers: tuple[float, ...]) -> bool:
-        return sign * (numbers[0] - numbers[1]) >= 0
-
-    if at_or_beyond:
-        numbers = ways[0].numbers
-        return _say(
-            lambda: Found(
-                values={
-                    "title": title,
-                    "alarm": str(alarm),
-                    "trip": str(trip),
-                    "direction": direction,
-                    "where": "at" if numbers[0] == numbers[1] else "beyond",
-                },
-                fields=(name, "trip"),
-                part=title,
-                found=str(alarm),
-                wanted=f"{'below' if direction == 'high' else 'above'} {trip}",
-                off_by=_amount(numbers[0] - numbers[1], alarm),
-            ),
-            ways,
-            beyond,
-        )
-    return _too_near(installed, plant, name, alarm, trip, sign)
-
-
-def _too_near(installed: Installed, plant: Plant, name: str, alarm: Quantity, trip: Quantity, sign: float) -> Verdict:
-    found = _range_for(trip, installed)
-    if found is None:
-        return Unchecked("range")
-    lrv, urv, which = found
-    ways = _ways((alarm, trip, lrv, urv), installed, plant)
-    if ways is None:
-        return Unchecked("range")
-    percent = plant.threshold("SET13 %", SET13_PERCENT)
-    title = title_of(name)
-    numbers = ways[0].numbers
-    span = abs(numbers[3] - numbers[2])
-    if not span:
-        return Unchecked("range")
-    distance = sign * (numbers[1] - numbers[0])
-    if distance <= 0:
-        return NotApplicable("the pre-alarm is beyond its trip")
-
-    def near(given: tuple[float, ...]) -> bool:
-        here = abs(given[3] - given[2])
-        apart = sign * (given[1] - given[0])
-        return apart > 0 and below(apart, here * percent / 100, scale=here)
-
-    of_span = f"{format_number(round(distance / span * 100, 2))} %"
-    factor = trip.unit.factor if trip.unit is not None and trip.unit.factor else 1.0
-    farthest = trip.number - sign * span * percent / 100 / factor
-    wanted = Quantity.made(farthest, trip.unit, trip.reference)
-    return _say(
-        lambda: Found(
+    def check(numbers: Numbers) -> Verdict:
+        alarm, trip = (pair.sign * number for number in numbers)
+        if below(alarm, trip):
+            return None
+        title = title_of(pair.alarm_name)
+        beyond = above(alarm, trip)
+        return Found(
             values={
                 "title": title,
-                "alarm": str(alarm),
-                "trip": str(trip),
-                "of_span": of_span,
-                "limit": f"{format_number(percent)} %",
+                "alarm": str(pair.alarm),
+                "trip": str(pair.trip),
+                "direction": pair.direction,
+                "where": "beyond" if beyond else "at",
             },
-            fields=(name, "trip"),
+            fields=(pair.alarm_name, pair.trip_name),
             part=title,
-            found=of_span,
-            wanted=f"at least {format_number(percent)} % of span",
-            working=f"|{alarm} - {trip}| is {of_span} of the span",
-            fixes=(Fix(text=f"{title} {wanted}", change={title: str(wanted)}),),
-        ),
-        ways,
-        near,
-    )
+            found=str(pair.alarm),
+            wanted=f"{'below' if pair.direction == 'high' else 'above'} {pair.trip}",
+            off_by=amount(alarm - trip, pair.alarm.unit) if beyond and pair.alarm.unit is not None else "",
+        )
+
+    verdict = _compared((pair.alarm, pair.trip), (measured(installed, plant),), plant, check)
+    return Unchecked(f"{title_of(pair.alarm_name)} and trip of one dimension") if verdict is _CANNOT else verdict
 
 
 @rule(
@@ -588,24 +640,73 @@ def prealarm_near_trip(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET13", [{**row, "H": "7.5"}])
     []
     """
-    return _against_trip(installed, plant, at_or_beyond=False)
+    pair = _prealarm_and_trip(installed)
+    if isinstance(pair, Unchecked):
+        return pair
+    measurement = measured(installed, plant)
+    scale = measurement.scale_of(pair.trip)
+    if scale is None:
+        return Unchecked(*_no_range_for(measurement, pair.trip_name))
+    percent = plant.threshold("SET13 %", SET13_PERCENT)
+    least = scale.span * percent / 100.0
+
+    def check(numbers: Numbers) -> Verdict:
+        apart = pair.sign * (numbers[1] - numbers[0])
+        if not apart > 0.0 or not above(pair.sign * numbers[1], pair.sign * numbers[0]):
+            return NotApplicable("the pre-alarm is beyond its trip")
+        if not below(apart, least, scale=scale.span):
+            return None
+        return _near(pair, apart, scale=scale, percent=percent)
+
+    verdict = _compared((pair.alarm, pair.trip), (measurement,), plant, check)
+    return Unchecked(f"{title_of(pair.alarm_name)} and trip of one dimension") if verdict is _CANNOT else verdict
 
 
-_DESIGN = {"P": "design_pressure", "T": "design_temperature"}
+def _near(pair: _Pair, apart: float, *, scale: Scale, percent: float) -> Found:
+    title, unit = title_of(pair.alarm_name), pair.trip.unit
+    of_span = f"{format_number(round(apart / scale.span * 100.0, 2))} %"
+    fixes: tuple[Fix, ...] = ()
+    if unit is not None and unit.factor is not None:
+        step = difference_in(scale.span * percent / 100.0, unit)
+        farthest = pair.trip.number - pair.sign * step
+        text = written(rounded_down(farthest) if pair.direction == "high" else rounded_up(farthest), unit)
+        fixes = (Fix(text=f"{title} {text}", change={title: text}),)
+    return Found(
+        values={
+            "title": title,
+            "alarm": str(pair.alarm),
+            "trip": str(pair.trip),
+            "of_span": of_span,
+            "limit": f"{format_number(percent)} %",
+        },
+        fields=(pair.alarm_name, pair.trip_name),
+        part=title,
+        found=of_span,
+        wanted=f"at least {format_number(percent)} % of span",
+        working=f"|{pair.alarm} - {pair.trip}| is {of_span} of the span of {scale}",
+        fixes=fixes,
+    )
 
 
-def _design_field(installed: Installed) -> str | None:
-    letters = installed.letters
-    if not letters or installed.body == "differential" or letters.startswith(("PD", "TD", "DP")):
+# ------------------------------------------------------------------------------------- design and normal values
+
+
+def _design_field(installed: Installed, plant: Plant) -> str | None:
+    """Return the design limit of the quantity that the tag measures: of a differential pressure there is none."""
+    # P and T, CP and CT in KKS, and plant codes such as DPT.
+    if installed.letters[:1] not in ("P", "T", "C") and (installed.tag is None or installed.tag.code is None):
         return None
-    return _DESIGN.get(letters[0])
+    measurement = measured(installed, plant)
+    if measurement.variable == "P" and measurement.body != "differential":
+        return "design_pressure"
+    return "design_temperature" if measurement.variable == "T" else None
 
 
 @rule(
     "SET04",
     severity=Severity.DANGER,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: _has_trip(installed, plant) and _design_field(installed) is not None,
+    applies=lambda installed, plant: _has_trip(installed, plant) and _design_field(installed, plant) is not None,
     message="the high trip {trip} is above the design limit {design}",
     basis="IEC 61511-1:2016 (from memory); common practice",
 )
@@ -624,55 +725,66 @@ def trip_above_design(installed: Installed, plant: Plant) -> Verdict:
     []
     """
     direction = trip_direction(installed)
-    if direction is None:
-        return Unchecked("trip direction")
-    if direction != "high":
+    if direction == "low":
         return NotApplicable()
-    name = _design_field(installed)
+    name = _design_field(installed, plant)
     assert name is not None
-    trip = installed.record.trip
+    pair = trip_of(installed)
     design: Quantity | None = getattr(installed.record, name)
-    if design is None or trip is None:
-        return Unchecked(title_of(name))
-    ways = _ways((trip, design), installed, plant)
-    if ways is None:
-        return Unchecked(f"trip and {title_of(name)} in one dimension and reference")
-    return _say(
-        lambda: Found(
+    blank = [title_of(name)] if design is None else []
+    if pair is None:
+        blank.append("trip")
+    if direction is None:
+        blank.append("trip direction")
+    if pair is None or design is None or blank:
+        return Unchecked(*blank)
+    trip_name, trip = pair
+
+    def check(numbers: Numbers) -> Verdict:
+        if not above(numbers[0], numbers[1]):
+            return None
+        title = title_of(trip_name)
+        fixes: tuple[Fix, ...] = ()
+        if design.unit is not None:
+            text = written(rounded_down(design.number), design.unit)
+            fixes = (Fix(text=f"{title} {text} at the most", change={title: text}),)
+        return Found(
             values={"trip": str(trip), "design": str(design)},
-            fields=("trip", name),
+            fields=(trip_name, name),
             part="trip",
             found=str(trip),
             wanted=f"at most {design}",
-            off_by=_amount(ways[0].numbers[0] - ways[0].numbers[1], trip),
-            fixes=(Fix(text=f"trip {design} at the most", change={"trip": str(design)}),),
-        ),
-        ways,
-        lambda numbers: above(numbers[0], numbers[1]),
+            off_by=amount(numbers[0] - numbers[1], trip.unit) if trip.unit is not None else "",
+            fixes=fixes,
+        )
+
+    verdict = _compared((trip, design), (measured(installed, plant),), plant, check)
+    return Unchecked(f"trip and {title_of(name)} of one dimension") if verdict is _CANNOT else verdict
+
+
+def _any_alarm(installed: Installed, plant: Plant) -> bool:
+    record = installed.record
+    return (
+        record.setting_h is not None
+        or record.setting_l is not None
+        or record.setting_hh is not None
+        or record.setting_ll is not None
+        or bool((record.unread or record.unitless) and _unread(record, SETTINGS))
     )
 
 
-def measured_normal(installed: Installed) -> tuple[str, Quantity] | None:
-    """Return the normal value of the measured quantity and its field; None where it is blank.
-
-    The operating value; where that is blank, the operating pressure of a pressure tag (never of a
-    differential one) and the operating temperature of a temperature tag.
-    """
-    record = installed.record
-    if record.operating_value_normal is not None:
-        return "operating_value_normal", record.operating_value_normal
-    if _design_field(installed) == "design_pressure" and record.operating_pressure_normal is not None:
-        return "operating_pressure_normal", record.operating_pressure_normal
-    if _design_field(installed) == "design_temperature" and record.operating_temperature_normal is not None:
-        return "operating_temperature_normal", record.operating_temperature_normal
-    return None
+_OPERATING_VALUE: Final = "operating value normal"
+_BLANK_NORMAL: Final = {
+    "P": "operating value normal or operating pressure normal",
+    "T": "operating value normal or operating temperature normal",
+}
 
 
 @rule(
     "SET05",
     severity=Severity.FAULT,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: bool(_given(installed, SETTINGS)),
+    applies=_any_alarm,
     message="the normal value {normal} stands beyond {settings}",
     basis="IEC 62682:2014 (from memory); common practice",
 )
@@ -690,74 +802,93 @@ def normal_in_alarm(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET05", [{**row, "H": "65"}])
     []
     """
-    normal = measured_normal(installed)
+    record = installed.record
+    measurement = measured(installed, plant)
+    field, normal = measurement.names[1], measurement.values[1]
+    unread = _unread(record, ("operating_value_normal", field))
+    if unread:
+        return Unchecked(*dict.fromkeys(unread))
     if normal is None:
-        return Unchecked("operating value normal")
-    field, value = normal
-    beyond: list[tuple[str, Quantity]] = []
-    assumed: list[str] = []
-    review = False
-    compared = False
-    for name, setting in _given(installed, SETTINGS):
-        ways = _ways((value, setting), installed, plant)
-        if ways is None:
+        fallback = measurement.variable if measurement.body != "differential" else ""
+        blank = record.operating_value_min is None and record.operating_value_max is None
+        return Unchecked(_BLANK_NORMAL.get(fallback, _OPERATING_VALUE) if blank else _OPERATING_VALUE)
+    beyond: list[tuple[str, Quantity, float]] = []
+    doubtful: list[Found] = []
+    unchecked = dict.fromkeys(_unread(record, SETTINGS))
+    for name in SETTINGS:
+        setting: Quantity | None = getattr(record, name)
+        if setting is None:
             continue
-        compared = True
-        high = name in ("setting_h", "setting_hh")
-        failed, changed, why = _judge(
-            ways,
-            lambda numbers, high=high: (  # type: ignore[misc]
-                above(numbers[0], numbers[1]) if high else below(numbers[0], numbers[1])
-            ),
-        )
-        if failed or changed:
-            beyond.append((name, setting))
-            assumed.extend(why)
-            review = review or changed
-    if not compared:
-        return Unchecked("operating value and settings in one dimension and reference")
-    if not beyond:
-        return None
-    shown = ", ".join(f"{title_of(name)} {setting}" for name, setting in beyond)
-    kind = Review if review else Found
-    return kind(
-        values={"normal": str(value), "settings": shown},
-        fields=(field, *(name for name, _ in beyond)),
-        found=str(value),
-        wanted=f"on the other side of {shown}",
-        assumed=tuple(dict.fromkeys(assumed)),
+        sign = 1.0 if name in _HIGH_ALARMS else -1.0
+        if normal.base is not None and setting.base is not None and _is_plain(normal, setting):
+            if above(sign * normal.base, sign * setting.base):
+                beyond.append((name, setting, normal.base - setting.base))
+            continue
+
+        off: list[float] = []
+
+        def check(
+            numbers: Numbers, name: str = name, setting: Quantity = setting, sign: float = sign, off: list[float] = off
+        ) -> Verdict:
+            if not above(sign * numbers[0], sign * numbers[1]):
+                return None
+            off.append(numbers[0] - numbers[1])
+            return _in_alarm(field, normal, [(name, setting, off[-1])])
+
+        verdict = _compared((normal, setting), (measurement,), plant, check)
+        if verdict is _CANNOT:
+            unchecked.setdefault(f"{title_of(field)} and {title_of(name)} of one dimension")
+        for each in each_found(verdict):
+            if isinstance(each, Review):
+                doubtful.append(each)
+            else:
+                beyond.append((name, setting, off[0]))
+    if beyond:
+        return _in_alarm(field, normal, beyond)
+    if doubtful:
+        return doubtful
+    return Unchecked(*unchecked) if unchecked else None
+
+
+def _in_alarm(field: str, normal: Quantity, beyond: Sequence[tuple[str, Quantity, float]]) -> Found:
+    shown = ", ".join(f"{title_of(name)} {setting}" for name, setting, _ in beyond)
+    off = max((each[2] for each in beyond), key=abs)
+    sides = ", ".join(f"{'at most' if name in _HIGH_ALARMS else 'at least'} {setting}" for name, setting, _ in beyond)
+    return Found(
+        values={"normal": str(normal), "settings": shown},
+        fields=(field, *(name for name, _, _ in beyond)),
+        found=str(normal),
+        wanted=sides,
+        off_by=amount(off, normal.unit) if normal.unit is not None else "",
     )
 
 
 # -------------------------------------------------------------------------------------------- what letters promise
 
-_NO_SETTINGS = frozenset("BHKJUXYZ")
-_FIELD_OF = {"H": "setting_h", "HH": "setting_hh", "L": "setting_l", "LL": "setting_ll"}
+# What these letters measure is there or not, and has no setting: a flame, a hand, a state, a position.
+_NO_SETTINGS: Final = frozenset("BHYZ")
+_FIELD_OF: Final = {"H": "setting_h", "HH": "setting_hh", "L": "setting_l", "LL": "setting_ll"}
+_LEVELS: Final = re.compile(r"H+|L+")
 
 
 def _promised(installed: Installed) -> list[tuple[str, str]]:
     """Return the function (S, A) and level (H, HH, L, LL) for each setting that the letters promise."""
-    reading = installed.tag
-    if reading is None or not reading.parsed or installed.letters[:1] in _NO_SETTINGS:
-        return []
-    letters = reading.code.letters if reading.code is not None else reading.letters
-    if not letters:
-        return []
     promised: list[tuple[str, str]] = []
-    for function in read_letters(letters).functions:
-        level = function[1:]
-        if function[:1] in ("S", "A") and level:
-            if set(level) == {"H"}:
-                promised.append((function[0], "H" if level == "H" else "HH"))
-            elif set(level) == {"L"}:
-                promised.append((function[0], "L" if level == "L" else "LL"))
-            elif level in ("HL", "LH"):
-                promised.extend(((function[0], "H"), (function[0], "L")))
+    for function in _functions(installed):
+        levels = function[1:]
+        if function[:1] in ("S", "A") and levels and set(levels) <= {"H", "L"}:
+            promised.extend((function[0], level[:2]) for level in _LEVELS.findall(levels))
     return promised
 
 
 def _has_level(installed: Installed, plant: Plant) -> bool:
-    return not installed.equipment_tag and bool(_promised(installed))
+    letters = installed.letters
+    if installed.equipment_tag or not letters:
+        return False
+    # A level follows a function, which follows the variable.
+    if "H" not in letters[2:] and "L" not in letters[2:] and (installed.tag is None or installed.tag.code is None):
+        return False
+    return measured(installed, plant).variable[:1] not in _NO_SETTINGS and bool(_promised(installed))
 
 
 def _any_setting(plant: Plant) -> bool:
@@ -766,8 +897,8 @@ def _any_setting(plant: Plant) -> bool:
             "has settings",
             lambda plant: (
                 any(
-                    _given(each, (*WITH_TRIP, "set_pressure"))
-                    or {*WITH_TRIP, "set_pressure"} & (each.record.unread | each.record.unitless.keys())
+                    _given(each.record, (*WITH_TRIP, "set_pressure"))
+                    or _unread(each.record, (*WITH_TRIP, "set_pressure"))
                     for each in plant.instruments
                 )
                 or any(getattr(row, name) is not None for row in plant.alarm_list for name in WITH_TRIP)
@@ -791,23 +922,22 @@ def _no_settings_anywhere(plant: Plant) -> Verdict:
     )
 
 
-def _on_alarm_list(installed: Installed, names: Iterable[str], plant: Plant) -> bool:
-    listed: dict[str, set[str]] = plant.once("settings on the alarm list", _alarm_list_settings)
-    key = installed.record.tag or ""
-    return bool(listed.get(key, set()) & set(names))
-
-
-def _alarm_list_settings(plant: Plant) -> dict[str, set[str]]:
-    listed: dict[str, set[str]] = {}
+def _alarm_list_settings(plant: Plant) -> dict[int, set[str]]:
+    """Return which settings the alarm and trip list gives each instrument, read or not."""
+    listed: dict[int, set[str]] = {}
     for row in plant.alarm_list:
-        if not row.tag:
-            continue
-        filled = {name for name in WITH_TRIP if getattr(row, name) is not None}
-        for each in plant.by_tag(row.tag):
-            if each.record.tag:
-                listed.setdefault(each.record.tag, set()).update(filled)
-        listed.setdefault(row.tag, set()).update(filled)
+        filled = {name for name in WITH_TRIP if getattr(row, name) is not None} | (
+            {*WITH_TRIP} & (row.unread | row.unitless.keys())
+        )
+        if row.tag and filled:
+            for each in plant.by_tag(row.tag):
+                listed.setdefault(id(each), set()).update(filled)
     return listed
+
+
+def _gives(each: Installed, names: Iterable[str], listed: dict[int, set[str]]) -> bool:
+    on_list = listed.get(id(each), ())
+    return any(getattr(each.record, name) is not None or name in on_list for name in names)
 
 
 @rule(
@@ -825,7 +955,7 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
     Why it matters: somebody will set it by guess, or leave it as it came.
 
     What to do: give the setting, or correct the letters. A switch's trip or set pressure counts, and
-    so does the alarm and trip list.
+    so does the alarm and trip list; an alarm's setting may stand on its transmitter's row.
 
     >>> from validation.example import said
     >>> rows = [{"tag": "LSHH-1", "HH": ""}, {"tag": "LSHH-2", "HH": "4.8 m"}]
@@ -833,20 +963,21 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
     ['LSHH-1: the letters LSHH promise a switch at HH, and there is none']
     """
     record = installed.record
+    listed: dict[int, set[str]] = plant.once("settings on the alarm list", _alarm_list_settings)
+    promised = _promised(installed)
     missing: list[tuple[str, str]] = []
     unread: list[str] = []
-    for function, level in _promised(installed):
+    for function, level in promised:
         names = [_FIELD_OF[level]]
-        if function == "S" or installed.kind in _SWITCHES:
-            names += ["trip", "set_pressure"]
-        if any(getattr(record, name) is not None for name in names) or _on_alarm_list(installed, names, plant):
+        if function == "S" or installed.kind is Kind.SWITCH:
+            names += ["trip", "set_pressure"] if _trip_may_be(level, promised, record) else ["set_pressure"]
+        if _gives(installed, names, listed):
             continue
-        if any(name in record.unread or name in record.unitless for name in names):
-            unread.append(title_of(names[0]))
-            continue
-        if function == "A" and _set_in_loop(installed, _FIELD_OF[level], plant):
-            continue
-        missing.append((function, level))
+        unread_here = _unread(record, names)
+        if unread_here:
+            unread.extend(unread_here)
+        elif function == "S" or not _set_in_loop(installed, _FIELD_OF[level], listed, plant):
+            missing.append((function, level))
     if missing:
         what = " and ".join(
             f"{'a switch' if function == 'S' else 'an alarm'} at {level}" for function, level in missing
@@ -857,30 +988,51 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
             found="blank",
             wanted=what,
         )
-    return Unchecked(*unread) if unread else None
+    return Unchecked(*dict.fromkeys(unread)) if unread else None
 
 
-def _set_in_loop(installed: Installed, name: str, plant: Plant) -> bool:
+def _trip_may_be(level: str, promised: Sequence[tuple[str, str]], record: Instrument) -> bool:
+    """Whether the one trip of a switch with two levels is that of this level: of the side that is stated."""
+    if len(promised) < 2 or record.trip_direction is None:
+        return True
+    return (level[0] == "H") == (record.trip_direction == "high")
+
+
+def _set_in_loop(installed: Installed, name: str, listed: dict[int, set[str]], plant: Plant) -> bool:
     """Whether another row of the loop, the transmitter's for one, holds the setting of an alarm."""
     loop = plant.loop_of(installed)
     if loop is None:
         return False
+    variable = measured(installed, plant).variable
     return any(
-        getattr(each.record, name) is not None or _on_alarm_list(each, (name,), plant)
+        _gives(each, (name,), listed)
         for each in loop.members
-        if each is not installed and each.letters[:1] == installed.letters[:1]
+        if each is not installed and measured(each, plant).variable == variable
     )
 
 
 # -------------------------------------------------------------------------------------------------- trips together
 
 
+def _tripping(plant: Plant) -> frozenset[Installed]:
+    """Return the redundant instruments whose trips are to be compared.
+
+    Those that only their suffixes make redundant may have none; then there is nothing to compare.
+    """
+    return frozenset(
+        each
+        for group in redundant_groups(plant)
+        if group.by == "declared" or any(_has_trip(each, plant) for each in group.members)
+        for each in group.members
+    )
+
+
 @rule(
     "SET08",
     severity=Severity.DANGER,
     on=Subject.GROUP,
-    applies=lambda installed, plant: in_redundant_group(installed, plant) and _trips(installed),
-    needs=("trip",),
+    applies=lambda installed, plant: installed in plant.once("redundant and tripping", _tripping),
+    needs=("trip|set_pressure",),
     groups=lambda plant: (group.members for group in redundant_groups(plant)),
     alone_is_clear=False,
     message="redundant devices with different trip settings: {settings}",
@@ -903,44 +1055,52 @@ def redundant_trips_differ(group: tuple[Installed, ...], plant: Plant) -> Verdic
     >>> said("SET08", rows)
     []
     """
-    trips = [each.record.trip for each in group]
-    values = [trip for trip in trips if trip is not None]
-    directions = {direction for direction in map(trip_direction, group) if direction}
-    ways = _ways(values, group[0], plant)
-    if ways is None:
-        return Unchecked("trips in one dimension and reference")
+    pairs = [pair for pair in map(trip_of, group) if pair is not None]
+    if len(pairs) < len(group):
+        return Unchecked("trip")
+    trips = [trip for _, trip in pairs]
+    directions = [trip_direction(each) for each in group]
+    opposed = len({direction for direction in directions if direction}) > 1
 
-    def differ(numbers: tuple[float, ...]) -> bool:
-        largest = max(map(abs, numbers)) or 1.0
-        return max(numbers) - min(numbers) > 1e-9 * largest
-
-    settings = ", ".join(
-        f"{each.record.trip} {trip_direction(each)}" if len(directions) > 1 else str(each.record.trip) for each in group
-    )
-    cells = tuple(cell for each in group for cell in each.cells("trip"))
-    found = Found(values={"settings": settings}, fields=("trip",), found=settings, wanted="one setting", cells=cells)
-    shown: Found | None = found if len(directions) > 1 else _say(lambda: found, ways, differ)
-    if shown is not None and not isinstance(shown, Review) and how_redundant(group, plant) == "suffix":
-        values_of = {name: getattr(shown, name) for name in shown.__dataclass_fields__}
-        values_of["message"] = (
-            "devices that may be redundant (by suffix alone) have different trip settings: {settings}"
+    def check(numbers: Numbers) -> Verdict:
+        if not opposed and not above(max(numbers), min(numbers), scale=max(map(abs, numbers))):
+            return None
+        settings = ", ".join(
+            f"{trip} {direction}" if opposed and direction else str(trip)
+            for trip, direction in zip(trips, directions, strict=True)
         )
-        return Review(**values_of)
-    return shown
+        by_suffix = how_redundant(group, plant) == "suffix"
+        kind = Review if by_suffix else Found
+        return kind(
+            values={"settings": settings},
+            fields=tuple(dict.fromkeys(name for name, _ in pairs)),
+            found=settings,
+            wanted="one setting",
+            cells=tuple(cell for each, (name, _) in zip(group, pairs, strict=True) for cell in each.cells(name)),
+            message=_BY_SUFFIX if by_suffix else "",
+        )
+
+    verdict = _compared(trips, [measured(each, plant) for each in group], plant, check)
+    return Unchecked("trips of one dimension") if verdict is _CANNOT else verdict
 
 
-def _trips(installed: Installed) -> bool:
-    record = installed.record
-    return bool(record.trip is not None or record.trip_direction or record.safety_function or record.voting)
+_BY_SUFFIX: Final = "devices that may be redundant (by suffix alone) have different trip settings: {settings}"
+_SWITCHED: Final = frozenset({"contact", "volts", "digital"})
+
+
+def _sends_and_trips(installed: Installed, plant: Plant) -> bool:
+    """Whether it trips on a signal that can fail to one side: a contact has no such side."""
+    if installed.kind is Kind.SWITCH or not _has_trip(installed, plant):
+        return False
+    classes = [signal_classes(row.signal) for row in installed.signals if row.signal]
+    return not (classes and all(each and each <= _SWITCHED for each in classes))
 
 
 @rule(
     "SET10",
     severity=Severity.DANGER,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: (
-        _has_trip(installed, plant) and installed.kind not in _SWITCHES and _carries_4_20(installed) is not False
-    ),
+    applies=_sends_and_trips,
     needs=("failure_direction", "bad_signal_detection"),
     message="the signal fails {failure}, the trip is {trip}, and bad signals are not detected",
     basis="NAMUR NE 43:2021; IEC 61511-1:2016 (from memory)",
