@@ -179,6 +179,10 @@ class Contents:
     def _text_fit(self, name: str, codes: frozenset[str]) -> float:
         if name == "io_type":
             return self.part(IO_WORD)
+        if name == "code":
+            # Each entry of a register has a code of its own; AI and DI are none.
+            different = len(set(self.texts)) / self.count
+            return 0.0 if self.part(IO_WORD) > 0.5 else 0.6 if different > 0.7 else 0.2
         if name == "signal":
             return max(self.holds(_SIGNAL), 0.4 * (1 - self.part(IO_WORD)))
         if name in ("area_classification", "process_zone"):

@@ -205,6 +205,11 @@ GENERIC_UNITS: Final = frozenset(
 )  # fmt: skip
 
 
+# Set point high, high alarm setting, limit value HH: what stands beside the level says no more than it.
+_ABOUT_SETTINGS: Final = frozenset({"setpoint", "setting", "alarm", "limit", "value", "point", "set", "annunciation"})
+_SETTING_LEVELS: Final = frozenset({"ll", "l", "h", "hh", "low", "high"})
+
+
 class _Names:
     """The headings of one kind of sheet, by their words."""
 
@@ -222,6 +227,7 @@ class _Names:
                 strength = 1.0 - own - min(0.001 * rank, 0.04)
                 self.exact.setdefault(words, []).append((strength, column))
                 self.loose.setdefault(tuple(sorted(words)), []).append((strength - 0.03, column))
+        self.words = frozenset(word for words in self.exact for word in words)
         self.texts = {words: " ".join(words) for words in self.exact if len(" ".join(words)) > 4}
         self._likes: dict[tuple[str, ...], list[tuple[float, str, Column]]] = {}
 
@@ -238,6 +244,9 @@ class _Names:
             found = self.exact.get(rest) or self.loose.get(tuple(sorted(rest)))
             if found:
                 return [(strength - 0.08, "synonym", column) for strength, column in found]
+        levels = tuple(word for word in words if word not in _ABOUT_SETTINGS)
+        if len(levels) == 1 < len(words) and levels[0] in _SETTING_LEVELS:
+            return [(strength - 0.1, "synonym", column) for strength, column in self.exact.get(levels, ())]
         return []
 
     def knows(self, words: tuple[str, ...]) -> bool:
@@ -373,6 +382,14 @@ def _without_unit(text: str) -> Iterator[tuple[str, str]]:
                 yield " ".join(words[:-count]).rstrip(" ,;:-"), tail
 
 
+# Headings that a heading in a language not known here does not change: Schaltpunkt over Set point.
+_ALONE_UNDER_A_STRANGER: Final = frozenset({("setpoint",), ("tag",), ("description",), ("service",), ("model",)})
+_OVER_SETTINGS: Final = frozenset(
+    ("alarm", "setting", "setpoint", "limit", "trip", "set", "grenzwert", "grenzwerte", "alarme", "schaltpunkt",
+     "schaltpunkte", "meldung", "meldungen", "seuil", "seuils", "interlock", "shutdown")
+)  # fmt: skip
+
+
 class Finder:
     """Finds what the headings of a sheet can be, for one kind of sheet."""
 
@@ -466,8 +483,10 @@ class Finder:
         if all(word in NEUTRAL for word in over):
             return True
         if words in (("ll",), ("hh",), ("l",), ("h",)):
-            return bool({"alarm", "setting", "setpoint", "limit", "trip", "set"} & set(over))
+            return bool(_OVER_SETTINGS & set(over))
         if words and all(word in DEPENDENT for word in words):
+            if words in _ALONE_UNDER_A_STRANGER and not self.names.words & set(over):
+                return True
             fields = {column.field for _, _, column in self.names.find(words)}
             return any(column.field in fields for _, _, column in self.names.find(over))
         return True

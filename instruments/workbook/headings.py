@@ -216,6 +216,11 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
                 continue
             if any(not any(cell is not None for cell in sheet.rows[each]) for each in range(top, bottom + 1)):
                 continue
+            # A lone cell below the headings is the name of a section, a row of figures is data.
+            if bottom > top and sum(cell is not None for cell in sheet.rows[bottom]) < 2:
+                continue
+            if any(sum(isinstance(cell, float) for cell in sheet.rows[each]) > 2 for each in range(top, bottom + 1)):
+                continue
             scored[top, bottom] = _name_score(sheet, finders, top, bottom)
     # Of equals the shorter, then the higher: a repeated heading further down is no better.
     order = sorted(scored, key=lambda block: (-scored[block], block[1] - block[0], block[0]))
@@ -324,6 +329,9 @@ def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, Levels]) -> None:
     above = [as_text(cell).strip() or None if cell is not None else None for cell in sheet.rows[top - 1]]
     if sum(text is not None for text in above) < 2 or _is_title_row(above):
         return
+    # A title in pieces (plant, list, issue) stands over nothing: headings have no figures.
+    if any(text and any(sign.isdigit() for sign in text) for text in above):
+        return
     over: str | None = None
     for column, text in enumerate(above):
         if text:
@@ -337,7 +345,7 @@ def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, Levels]) -> None:
                 and all(word in DEPENDENT for word in words)
                 and not all(word in NEUTRAL for word in heading_words(over))
             ):
-                found[column] = Levels((f"{over} {found[column].joined}",))
+                found[column] = Levels((over, found[column].joined), spread=True)
 
 
 # --- which heading is which field -----------------------------------------------------------------------------------
@@ -590,9 +598,15 @@ def _add_tag_without_heading(
     column = kind.column("tag")
     if _join_tag(column, levels, content, columns, used, width, notes) or len(columns) < 2:
         return
+    # A heading such as Signal may have been believed for want of better; cells that are tags say more.
+    doubtful = {
+        match.index: name
+        for name, match in columns.items()
+        if match.how != "likeness" and not match.parts and content(match.index).fit(match.column, frozenset()) < 0.5
+    }
     best: tuple[float, int] | None = None
     for index in range(width):
-        if index in used:
+        if index in used and index not in doubtful:
             continue
         cells = content(index)
         if cells.count < 2:
@@ -603,6 +617,7 @@ def _add_tag_without_heading(
         if fit >= 0.8 and digits >= 0.7 and different >= 0.8 and (best is None or fit > best[0]):
             best = (fit, index)
     if best is not None:
+        columns.pop(doubtful.get(best[1], ""), None)
         heading = levels[best[1]].joined if best[1] in levels else ""
         columns["tag"] = ColumnMatch(column=column, index=best[1], heading=heading, how="contents", likelihood=0.6)
         used.add(best[1])

@@ -124,6 +124,14 @@ HEADER_ROWS = [
     ("Tag|Service|Fluid\n(a)|(b)|(c)\nPT-1|Feed|gas\nPT-2|Feed|gas", (0, 1), 2),
     # two languages
     ("Tag|Service|Maker\nMessstelle|Benennung|Hersteller\nPT-1|Feed|X\nPT-2|Feed|X", (0, 1), 2),
+    # a title in pieces, and the name of a section below the headings
+    ("WORKS|||Instrument list, issue 11/87\nTag|Service|Unit|Alarm L\nBoilers|||\nPT-1|Feed|bar|1\nPT-2|Feed|bar|2", (1,), 2),
+    # two languages, one of them not known
+    (
+        "Mesto|Nazev|Spin\nTag No.|Description|Set point\nPlyn / Gas||\nPSL-1|Feed|4 bar\nPSL-2|Feed|5 bar",
+        (1,),
+        2,
+    ),
     # a legend before the list
     (
         "PT|Pressure transmitter\nTT|Temperature transmitter\n|\nTag|Service|Type\nPT-1|Feed|Gauge\nPT-2|a|Gauge",
@@ -158,6 +166,10 @@ TWO_ROWS = [
     (
         "Tag|Design||Operating|\n|Press|Temp|Press|Temp\nPT-1|10|90|5|40",
         {"tag": 0, "design_pressure": 1, "design_temperature": 2, "operating_pressure": 3, "operating_temperature": 4},
+    ),
+    (
+        "Messstelle|Grenzwerte||Schaltpunkt\nTag|L|H|Set point\nPSL-1|1|5|4 bar",
+        {"tag": 0, "setting_l": 1, "setting_h": 2, "set_pressure": 3},
     ),
     # bounds that nothing above them explains are nobody's
     ("Tag|Vibration limit||Range|\n|Min|Max|Min|Max\nPT-1|3|4|0|10", {"tag": 0, "lrv": 3, "urv": 4}),
@@ -262,6 +274,12 @@ def test_a_column_of_tags_under_a_heading_nobody_knows_is_the_tag_and_named() ->
     found = matched("Bezug XY|Service|Hersteller\nPT-101|Feed|X\nTT-102|Feed|X")
     assert columns_of(found)["tag"] == 0
     assert found.notes == ("column 'Bezug XY' is taken for the tag: its cells look like tags",)
+
+
+def test_tags_tell_more_than_a_heading_that_is_usually_another() -> None:
+    found = matched("Signal|Description|Type|Wire\nCIP1_TT01|Feed|AI|W1\nCIP1_PU01_RUN|Pump|DI|W2\nXV7_OPN|Valve|DI|W3")
+    assert {"tag": 0, "service": 1, "io_type": 2}.items() <= columns_of(found).items()
+    assert found.notes == ("column 'Signal' is taken for the tag: its cells look like tags",)
 
 
 def test_a_tag_in_columns_of_its_own_is_joined() -> None:
