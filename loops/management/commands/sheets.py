@@ -1,0 +1,103 @@
+"""manage.py sheets: the loop sheets alone, without an audit."""
+
+from __future__ import annotations
+
+import os
+import sys
+import tempfile
+import time
+from argparse import ArgumentParser
+from collections.abc import Callable
+from pathlib import Path
+from typing import Any
+
+from django.core.management.base import BaseCommand
+
+from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.workbook.lists import NoTags, read_lists
+from instruments.workbook.reader import UnreadableFile
+from loops.columns import SHEETS as LOOP_SHEETS
+from loops.plant import assemble
+
+NAME = "loop-sheets.pdf"
+FINISHED, UNREADABLE = 0, 2
+
+
+class Command(BaseCommand):
+    """Read the lists and draw a sheet for every loop with an electrical signal."""
+
+    help = (
+        "Reads a plant's instrument list (.xlsx, .xlsm or .csv; several files are one plant) and writes "
+        f"{NAME}: a sheet for every loop with an electrical signal. No rule is run: the sheets show no findings "
+        "and say so. Exit status: 0 finished; 2 something cannot be read or written."
+    )
+    requires_system_checks = ()
+
+    def add_arguments(self, parser: ArgumentParser) -> None:
+        """Declare the options."""
+        parser.add_argument("lists", nargs="+", metavar="LIST", help="the list, or all lists of one plant")
+        parser.add_argument("--to", required=True, metavar="DIR", help="the folder for the sheets")
+        parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
+
+    def handle(self, *args: Any, **options: Any) -> None:
+        """Run and leave with the exit status."""
+        sys.exit(self.run(options))
+
+    def run(self, options: dict[str, Any]) -> int:
+        """Return the exit status."""
+        from loops.sheet.pdf import write_sheets
+
+        try:
+            lists = read_lists(
+                [Path(name) for name in options["lists"]],
+                (*INSTRUMENT_SHEETS, *LOOP_SHEETS),
+                plant_toml=Path(options["plant"]) if options["plant"] else None,
+            )
+            plant = assemble(lists)
+            path = Path(options["to"]) / NAME
+            count = _whole(path, lambda part: write_sheets(plant, part, on_sheet=self._progress()))
+        except (UnreadableFile, NoTags) as error:
+            return self._cannot(str(error))
+        except OSError as error:
+            return self._cannot(f"{error.filename or options['to']}: {(error.strerror or str(error)).lower()}")
+        self.stdout.write(f"{count} loop{'' if count == 1 else 's'} drawn, without an audit; written to {path}")
+        return FINISHED
+
+    def _progress(self) -> Callable[[int, int], None] | None:
+        """Return what rewrites one line on a terminal; nothing where the output is no terminal."""
+        stream = self.stderr
+        if not getattr(stream, "isatty", lambda: False)():
+            return None
+        since = last = time.monotonic()
+
+        def show(number: int, of: int) -> None:
+            nonlocal last
+            now = time.monotonic()
+            if now - last < 0.1 and number != of:
+                return
+            last = now
+            left = (now - since) / number * (of - number)
+            text = f"sheet {number} of {of}, {left:.0f} s left" if number != of else ""
+            stream.write(f"\r\x1b[2K{text}", ending="")
+            stream.flush()
+
+        return show
+
+    def _cannot(self, text: str) -> int:
+        self.stderr.write(f"sheets: {text}")
+        return UNREADABLE
+
+
+def _whole(path: Path, write: Callable[[Path], int]) -> int:
+    """Let `write` make a file under a passing name and give it its own when it is whole."""
+    path.parent.mkdir(parents=True, exist_ok=True)
+    handle, text = tempfile.mkstemp(prefix=".ferrule-", suffix=".part", dir=path.parent)
+    os.close(handle)
+    part = Path(text)
+    try:
+        count = write(part)
+        part.chmod(0o644)
+        os.replace(part, path)
+    finally:
+        part.unlink(missing_ok=True)
+    return count
