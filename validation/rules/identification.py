@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import fields, replace
+from dataclasses import dataclass, fields, replace
 
 from instruments.installed import Installed
 from instruments.kind import can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
@@ -290,7 +290,7 @@ def tag_off_pattern(installed: Installed, plant: Plant) -> Verdict:
     written = installed.record.tag_written or installed.record.tag or ""
     message = ""
     # Of a word in Cyrillic or Greek letters only some look Latin: it is read as what it is.
-    if reading.look_alikes and reading.normalised.isascii():
+    if reading.look_alikes and reading.normalised.isascii() and not _writes_other_letters(plant):
         odd = "".join(dict.fromkeys(reading.look_alikes))
         message = "{tag} has a character that only looks Latin: {reason}"
         if len(odd) > 1:
@@ -314,6 +314,20 @@ def tag_off_pattern(installed: Installed, plant: Plant) -> Verdict:
         wanted=nearest,
         fixes=(Fix(text=f"tag {nearest}", change={"tag": nearest}),) if nearest else (),
         message=message,
+    )
+
+
+def _writes_other_letters(plant: Plant) -> bool:
+    """Whether the plant's tags are free text in which other letters than Latin ones stand for themselves."""
+    return plant.profile.name == FREE_TEXT and bool(plant.once("other letters in tags", _has_other_letters))
+
+
+def _has_other_letters(plant: Plant) -> bool:
+    return any(
+        sign.isalpha() and not sign.isascii()
+        for each in plant.live
+        if each.tag is not None and not each.tag.normalised.isascii()
+        for sign in each.tag.normalised
     )
 
 
@@ -817,34 +831,47 @@ def several_tags_in_a_cell(installed: Installed, plant: Plant) -> Verdict:
     record = installed.record
     if record.tag_cell is None:
         return None
-    cells: Mapping[object, tuple[Installed, ...]] = plant.once("cells that hold several tags", _shared_cells)
-    sharing = cells.get(_cell_key(record), (installed,))
-    if all(each.record is not record for each in sharing[:1]):
+    cells: Mapping[int, _TagCell] = plant.once("cells that hold several tags", _tag_cells)
+    cell = cells.get(id(record)) or _TagCell(name=record.tag_cell, tags=())
+    if id(record) in cells and not cell.tags:
         return NotApplicable("found on the cell's first tag")
-    means = read_tag(record.tag_cell, profile=plant.profile, codes=plant.codes).means or tuple(
-        each.record.tag or "" for each in sharing
-    )
+    means = read_tag(record.tag_cell, profile=plant.profile, codes=plant.codes).means or cell.tags
     return Found(
         values={"count": len(means), "tags": ", ".join(means)},
         fields=("tag",),
-        # Rows that share a tag are numbered; so are their cells.
-        subject=record.tag_cell + installed.name.removeprefix(record.tag or ""),
+        subject=cell.name,
         found=record.tag_cell,
         wanted="; ".join(means),
         fixes=(Fix(text=f"a row each: {', '.join(means)}"),),
     )
 
 
-def _cell_key(record: Instrument) -> object:
-    origin = record.origin
-    where = (origin.place.file, origin.place.sheet, origin.row) if origin is not None else ()
-    return (record.tag_cell, *where)
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _TagCell:
+    """A cell with several tags: what it is called, and its tags; none for all of its records but the first."""
+
+    name: str
+    tags: tuple[str, ...]
 
 
-def _shared_cells(plant: Plant) -> Mapping[object, tuple[Installed, ...]]:
-    """Return the instruments that one cell names, by the cell, the cell's first tag first."""
-    cells: dict[object, list[Installed]] = defaultdict(list)
+def _tag_cells(plant: Plant) -> Mapping[int, _TagCell]:
+    """Return the cells by record; cells that hold the same text are numbered, as rows that share a tag are."""
+    rows: dict[object, list[Instrument]] = defaultdict(list)
     for each in plant.live:
-        if each.record.tag_cell is not None:
-            cells[_cell_key(each.record)].append(each)
-    return {key: tuple(sorted(found, key=lambda each: each.record.tag_number)) for key, found in cells.items()}
+        record = each.record
+        if record.tag_cell is not None and not each.equipment_tag:
+            origin = record.origin
+            where = (origin.place.file, origin.place.sheet, origin.row) if origin is not None else id(record)
+            rows[(record.tag_cell, where)].append(record)
+    cells: dict[int, _TagCell] = {}
+    counts: dict[str, int] = defaultdict(int)
+    # The instruments stand in the order of their names, which no order of rows changes.
+    for records in rows.values():
+        first, *others = sorted(records, key=lambda record: record.tag_number)
+        text = first.tag_cell or ""
+        counts[text] += 1
+        name = text if counts[text] == 1 else f"{text} ({counts[text]})"
+        cells[id(first)] = _TagCell(name=name, tags=tuple(record.tag or "" for record in (first, *others)))
+        for record in others:
+            cells[id(record)] = _TagCell(name=name, tags=())
+    return cells
