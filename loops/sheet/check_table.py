@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from dataclasses import dataclass
 from functools import lru_cache
 from typing import Final
@@ -13,6 +12,7 @@ from instruments.quantity import Quantity
 from instruments.record import Instrument
 from instruments.sensor import SensorType, pt100_ohm, read_sensor_type, thermocouple_mv
 from instruments.signal import TABLE_PERCENT, flow_percent_from_dp_percent, signal_table
+from instruments.signal_words import carries_live_zero
 from instruments.unit import Unit, UnitMismatch, convert, unit_label
 from instruments.unit import unit as unit_of
 from loops.budget import RECEIVER_OHM
@@ -76,20 +76,15 @@ class CheckTable:
 
 
 LIVE_ZERO: Final = "4-20 mA"
-_LIVE_ZERO: Final = re.compile(
-    r"(?<![\d.,])4 ?(?:ma)? ?(?:-|\u2013|to|bis|/|\.{2,3}|\u2026) ?20(?![\d.,]*\d)|\bhart\b", re.IGNORECASE
-)
-
-
-@lru_cache(maxsize=4096)
-def _signal(text: str) -> str:
-    return LIVE_ZERO if _LIVE_ZERO.search(text) else text
 
 
 def signal_of(row: Instrument, each: Installed) -> str | None:
-    """Return `LIVE_ZERO` for a 4-20 mA signal, another as it is written, None where none is given."""
+    """Return `LIVE_ZERO` for a 4-20 mA signal, another as it is written, None where nothing says which it is."""
     text = row.signal or each.record.signal or (each.type.signal if each.type else None)
-    return _signal(text) if text else None
+    live_zero = carries_live_zero(text)
+    if live_zero is None:
+        return None
+    return LIVE_ZERO if live_zero else text
 
 
 def pressure_ranged(each: Installed) -> bool:

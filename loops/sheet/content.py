@@ -4,13 +4,13 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Final
 
 from instruments.area import Area
 from instruments.installed import Installed
 from instruments.kind import Kind
-from instruments.pressure import referred, stated_reference
+from instruments.measurement import measurement_of
 from instruments.quantity import Quantity, format_number
 from instruments.signal import ma_for_value, ma_from_percent
 from instruments.span import percent_of_span
@@ -28,7 +28,7 @@ from loops.circuit import (
 from loops.plant import Plant, name_key
 from loops.power import VoltageBudget
 from loops.record import Termination
-from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, pressure_ranged, signal_of
+from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, signal_of
 from loops.sheet.pack import LoopOnPaper, area_title, filed_under
 
 NOT_APPLICABLE: Final = "\u2013"
@@ -65,6 +65,7 @@ class SettingValue:
     text: str
     percent: float | None = None
     ma: float | None = None
+    assumed: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -196,6 +197,11 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
             texts = (*texts, *circuit.check.assumed)
         for text in texts:
             assumed.setdefault(f"{circuit.device}: {text}" if len(circuits) > 1 else text)
+    settings = tuple(_setting_lines(loop, plant))
+    for line in settings:
+        for value in line.values:
+            if isinstance(value, SettingValue) and value.assumed:
+                assumed.setdefault(f"{line.tag}: {value.assumed}")
     derived = [each.name for each in members if each.kind_from == "letters"]
     if derived:
         assumed.setdefault(f"kind by the letters of the tag: {', '.join(derived)}")
@@ -212,7 +218,7 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
         equipment=_listed(each.record.equipment for each in members),
         drawing=_listed(circuit.row.drawing if circuit.row else None for circuit in loop.circuits),
         devices=tuple(_device(each, service, several_areas) for each in members),
-        settings=tuple(_setting_lines(loop, plant)),
+        settings=settings,
         circuits=circuits,
         remarks=tuple(_remarks(members)),
         notes=None if notes is None else tuple(notes),
@@ -390,11 +396,19 @@ def _setting_lines(loop: LoopOnPaper, plant: Plant) -> Iterable[SettingLine]:
         values: list[SettingValue | str | None] = [
             blank if value is None else setting_value(value, each, plant) for value in given
         ]
-        if record.set_pressure is not None and record.trip is None:
-            values[-1] = SettingValue(text=f"set {record.set_pressure}")
-        elif record.trip is None and each.kind is Kind.SWITCH:
-            values[-1] = None
-        yield SettingLine(tag=each.name, values=tuple(values), direction=record.trip_direction or blank)
+        if record.trip is None:
+            if record.set_pressure is not None:
+                set_value = setting_value(record.set_pressure, each, plant)
+                values[-1] = replace(set_value, text=f"set {set_value.text}")
+            elif each.kind is Kind.SWITCH:
+                values[-1] = None
+        direction = record.trip_direction
+        if direction is None and record.trip is not None:
+            direction = _DIRECTIONS.get(record.trip.qualifier or "")
+        yield SettingLine(tag=each.name, values=tuple(values), direction=direction or blank)
+
+
+_DIRECTIONS: Final = {"rising": "high", "falling": "low"}
 
 
 def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValue:
@@ -402,49 +416,35 @@ def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValu
 
     The range is the field's, where it has the setting's dimension, else the control system's. Of a
     differential pressure whose root is taken in the device the current follows the root, of a flow
-    whose root is taken in the system its square.
+    whose root is taken in the system its square. A pressure that is referred to nothing is read as
+    the plant's default.
     """
     record = each.record
-    for lrv, urv, in_field in ((record.lrv, record.urv, True), (record.system_lrv, record.system_urv, False)):
-        if lrv is None or urv is None:
-            continue
-        numbers = _comparable((value, lrv, urv), each, plant)
-        if numbers is None or numbers[1] == numbers[2]:
-            continue
-        percent = percent_of_span(*numbers)
-        ma = None
-        if any(signal_of(row, each) == LIVE_ZERO for row in each.signals or (record,)):
-            from_pressure = pressure_ranged(each)
-            if in_field:
-                ma = ma_for_value(*numbers, square_root=bool(record.square_root_device and from_pressure))
-            elif record.square_root_system and not record.square_root_device and from_pressure:
-                ma = ma_from_percent(percent * abs(percent) / 100.0)
-            else:
-                ma = ma_for_value(*numbers)
-        return SettingValue(text=str(value), percent=percent, ma=ma)
-    return SettingValue(text=str(value))
-
-
-def _comparable(
-    values: tuple[Quantity, Quantity, Quantity], each: Installed, plant: Plant
-) -> tuple[float, float, float] | None:
-    """Return three quantities as numbers in one unit and of one reference; None where there is none."""
-    first = values[0].unit
-    if first is None or any(value.unit is None or value.unit.dimension != first.dimension for value in values):
-        return None
-    numbers: list[float] = []
-    references = {stated_reference(value, body=each.body) or each.body for value in values}
-    if first.kind == "pressure" and "absolute" in references and "differential" in references:
-        return None
-    for value in values:
-        base = value.base
-        if base is not None and first.kind == "pressure":
-            reference = stated_reference(value, body=each.body) or each.body or plant.data.default_reference
-            base = referred(base, reference, "gauge", atmospheric_pa=plant.data.atmospheric_pa)
-        if base is None:
-            return None
-        numbers.append(base)
-    return numbers[0], numbers[1], numbers[2]
+    measurement = measurement_of(each)
+    scale = measurement.scale_of(value)
+    if scale is None:
+        return SettingValue(text=str(value))
+    quantities = (value, scale.lrv, scale.urv)
+    references = {measurement.reference(quantity) if scale.is_pressure else None for quantity in quantities}
+    default = plant.data.default_reference
+    numbers = tuple(
+        measurement.at(quantity, to="gauge", open_as=default, atmospheric_pa=plant.data.atmospheric_pa)
+        for quantity in quantities
+    )
+    # No figure leads from an absolute pressure to a difference.
+    if {reference or default for reference in references} >= {"absolute", "differential"} or None in numbers:
+        return SettingValue(text=str(value))
+    setting, lrv, urv = (number for number in numbers if number is not None)
+    percent = percent_of_span(setting, lrv, urv)
+    ma = None
+    if any(signal_of(row, each) == LIVE_ZERO for row in each.signals or (record,)):
+        if not scale.is_pressure and record.square_root_system and not record.square_root_device:
+            ma = ma_from_percent(percent * abs(percent) / 100.0)
+        else:
+            root = scale.is_pressure and scale is measurement.field and bool(record.square_root_device)
+            ma = ma_for_value(setting, lrv, urv, square_root=root)
+    assumed = f"a pressure without stated reference is {default}" if None in references and len(references) > 1 else ""
+    return SettingValue(text=str(value), percent=percent, ma=ma, assumed=assumed)
 
 
 # --------------------------------------------------------------------------------------------------------
@@ -491,15 +491,19 @@ def _fields(circuit: Circuit) -> Iterable[Field]:
     if kind != ANALOGUE_OUTPUT:
         yield Field(label="Supply V", value=_supply_text(circuit))
     if kind in (ANALOGUE_INPUT, None):
-        yield Field(label="Receiver ohm", value=_number_text(circuit.receiver_ohm))
+        across = len(circuit.receivers) > 1 and circuit.receiver_ohm != circuit.receivers[0]
+        receiver = _number_text(circuit.receiver_ohm)
+        yield Field(label="Receiver ohm", value=f"{receiver} with the inputs across it" if across else receiver)
     if analogue:
         yield Field(label="HART", value=_YES_NO[circuit.hart])
     yield Field(label="Junction box", value=given("junction_box"))
     yield Field(label="Terminals", value=given("terminals"))
     yield Field(label="Cable", value=given("cable"))
-    yield Field(label="Cable type", value=circuit.cable_type_named)
+    kinds = [f"{each.name}: {each.type.code}" if each.type else None for each in circuit.segments]
+    yield Field(label="Cable type", value=_listed(kinds) or circuit.cable_type_named)
     yield Field(label="Cable length m", value=_number_text(circuit.cable_length_m))
-    yield Field(label="Conductor", value=_conductor_text(circuit.conductor))
+    sizes = [f"{each.name}: {_conductor_text(each.conductor) or '?'}" for each in circuit.segments]
+    yield Field(label="Conductor", value=_listed(sizes) or _conductor_text(circuit.conductor))
     yield Field(label="Pair", value=given("pair"))
     if kind in (DIGITAL_INPUT, None):
         yield Field(label="Contact", value=given("contact"))

@@ -148,6 +148,24 @@ def test_the_sheet_and_the_rule_give_one_current(row: dict[str, Any]) -> None:
     assert f"needs {round(value.ma, 3):g} mA" in message
 
 
+def test_a_pressure_referred_to_nothing_is_read_as_the_plant_s_default() -> None:
+    row = {
+        "tag": "PT-5",
+        "LRV": "0",
+        "URV": "5",
+        "range unit": "bar",
+        "H": "2",
+        "settings unit": "bara",
+        "I/O type": "AI",
+    }
+    content = sheet(example_plant([row]))
+    (line,) = content.settings
+    high = line.values[2]
+    assert isinstance(high, SettingValue)
+    assert high.percent == pytest.approx(19.735)
+    assert "PT-5: a pressure without stated reference is gauge" in content.assumed
+
+
 def test_which_devices_have_a_line_for_settings() -> None:
     assert [line.tag for line in sheet(works(), "X-106").settings] == []
     (line,) = sheet(works(), "T-103").settings
