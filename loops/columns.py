@@ -235,8 +235,10 @@ CABLES = SheetKind(
             "no",
             "kabel nr",
             "cable id",
+            "kabel",
+            "kabelnummer",
         ),
-        _text("type", "type", "type", "cable type", "cable code", "spec", "typ", "cable spec"),
+        _text("type", "type", "type", "cable type", "cable code", "spec", "typ", "cable spec", "kabeltyp"),
         _text(
             "from_item",
             "from",

@@ -33,6 +33,9 @@ __all__ = ["ColumnMatch", "SheetMatch", "match_sheet"]
 LOOKED_AT_ROWS: Final = 400
 """Rows in which a heading is looked for; title pages and notes come before it."""
 
+LOOKED_AT_COLUMNS: Final = 600
+"""Columns whose headings are matched; those beyond are kept as unknown."""
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class ColumnMatch:
@@ -183,7 +186,11 @@ def match_sheet(
 
 def _rows_to_look_at(sheet: Sheet) -> Iterator[tuple[int, dict[int, str]]]:
     for number, row in enumerate(islice(sheet.rows, LOOKED_AT_ROWS)):
-        texts = {index: cell for index, cell in enumerate(row) if isinstance(cell, str) and len(cell) <= 120}
+        texts = {
+            index: cell
+            for index, cell in enumerate(row[:LOOKED_AT_COLUMNS])
+            if isinstance(cell, str) and len(cell) <= 120
+        }
         if texts:
             yield number, texts
 
@@ -229,7 +236,9 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
 
 def _is_heading_text(text: str, finders: Sequence[Finder]) -> bool:
     """Whether a text, with or without what is in its brackets or behind its comma, is a heading of any kind."""
-    for each in dict.fromkeys((text, BRACKET.sub(" ", text), text.partition(",")[0])):
+    # Two languages in one cell: either will do.
+    pieces = [piece for piece in re.split(r"\s/\s|\n", text) if len(piece) > 2]
+    for each in dict.fromkeys((text, BRACKET.sub(" ", text), text.partition(",")[0], *pieces[:3])):
         words = heading_words(each)
         if words and (words in GENERIC_UNITS or any(finder.names.knows(words) for finder in finders)):
             return True
@@ -258,8 +267,8 @@ def _name_score(sheet: Sheet, finders: Sequence[Finder], top: int, bottom: int) 
 def _levels(sheet: Sheet, top: int, bottom: int) -> dict[int, Levels]:
     """Return the heading of each column in the rows from `top` to `bottom`."""
     rows = range(top, bottom + 1)
-    width = sheet.width
-    texts = [[as_text(cell).strip() or None for cell in sheet.rows[row]] for row in rows]
+    width = min(sheet.width, LOOKED_AT_COLUMNS)
+    texts = [[as_text(cell).strip() or None for cell in sheet.rows[row][:width]] for row in rows]
     spread: list[list[bool]] = [[False] * width for _ in rows]
     across: set[tuple[int, int]] = set()
     for first_row, first_column, last_row, last_column in sheet.merged:
@@ -326,7 +335,7 @@ def _is_title_row(texts: Sequence[str | None]) -> bool:
 
 def _leave_to_parents(sheet: Sheet, top: int, found: dict[int, Levels]) -> None:
     """Take out headings that mean nothing without the row above, where that row is a heading too."""
-    above = [as_text(cell).strip() or None if cell is not None else None for cell in sheet.rows[top - 1]]
+    above = [as_text(cell).strip() or None for cell in sheet.rows[top - 1][:LOOKED_AT_COLUMNS]]
     if sum(text is not None for text in above) < 2 or _is_title_row(above):
         return
     # A title in pieces (plant, list, issue) stands over nothing: headings have no figures.
@@ -418,7 +427,9 @@ def _assign(
         used.add(index)
         if candidate.how == "likeness":
             notes.append(f"heading '{levels[index].joined}' is taken for {column.title} by likeness")
-    _add_tag_without_heading(kind, levels, content, columns, used, sheet.width, notes)
+    _add_tag_without_heading(kind, levels, content, columns, used, min(sheet.width, LOOKED_AT_COLUMNS), notes)
+    _take_beside_normal(kind, levels, content, columns, used)
+    _take_low_and_high(kind, levels, columns)
     unit_columns = _place_units(kind, levels, content, columns, used, taken)
     _join_parts(kind, levels, content, columns, used)
     _join_address(kind, levels, content, columns, used)
@@ -447,6 +458,46 @@ def _assign(
         notes=tuple(notes),
         score=score - 2.0 * guessed,
     )
+
+
+def _take_beside_normal(
+    kind: SheetKind,
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+) -> None:
+    """Take a Min or Max that stands beside Normal for the operating value's, where it is nothing else."""
+    normal = columns.get("operating_value_normal")
+    if normal is None:
+        return
+    for name, word in (("operating_value_min", "min"), ("operating_value_max", "max")):
+        if name in columns:
+            continue
+        for index in (normal.index + 1, normal.index - 1, normal.index + 2, normal.index - 2):
+            if index in used or index not in levels or heading_words(levels[index].joined) != (word,):
+                continue
+            if content(index).fit(kind.column(name), frozenset()) < 0.5:
+                continue
+            columns[name] = ColumnMatch(
+                column=kind.column(name), index=index, heading=levels[index].joined, how="contents", likelihood=0.7
+            )
+            used.add(index)
+            break
+
+
+def _take_low_and_high(kind: SheetKind, levels: Mapping[int, Levels], columns: dict[str, ColumnMatch]) -> None:
+    """Take a bare Low and High for the range where the list has no other range: I/O maps head the scale so."""
+    low, high = columns.get("setting_l"), columns.get("setting_h")
+    names = {column.field for column in kind.columns}
+    if low is None or high is None or not {"lrv", "urv"} <= names:
+        return
+    if any(name in columns for name in ("lrv", "urv", "range", "setting_ll", "setting_hh", "settings", "trip")):
+        return
+    if (heading_words(low.heading), heading_words(high.heading)) != (("low",), ("high",)):
+        return
+    for old, new in (("setting_l", "lrv"), ("setting_h", "urv")):
+        columns[new] = replace(columns.pop(old), column=kind.column(new), how="contents")
 
 
 _SPEAKS_OF: Final = {"flow": "F", "flowrate": "F", "durchfluss": "F", "level": "L", "fuellstand": "L"}
@@ -567,6 +618,8 @@ def _believed(candidate: Candidate, cells: Contents, fit: float, several: bool) 
     if candidate.column.reads is Reads.TAG and cells.sequence:
         return False
     if candidate.weak or several or (candidate.column.into and candidate.column.reads is Reads.TEXT):
+        return fit >= 0.25
+    if candidate.column.reads is Reads.COUNT:
         return fit >= 0.25
     if candidate.column.reads in NUMERIC and candidate.column.reads is not Reads.RANGE:
         return fit > 0 or any(any(sign.isdigit() for sign in text) for text in cells.texts) or cells.count < 4

@@ -149,6 +149,7 @@ class _SheetReader:
         self.letters: list[str] = []
         self.unit_cells: dict[str, list[UnitCell]] = {}
         self._columns: dict[int, list[Value]] = {}
+        self._filled: dict[int, int] = {}
 
     def read(self) -> SheetRecords:
         matches = self.match.columns
@@ -186,6 +187,7 @@ class _SheetReader:
                 self._read_quantities(name, match, self._units_for(match))
         for low, high in (("lrv", "urv"), ("system_lrv", "system_urv"), ("lrl", "url")):
             self._share_units(low, high)
+        self._scale_in_units_of_range()
         base = self._units_of_measurement()
         for name, match in measured:
             if name in _SET_POINTS and self.letters:
@@ -582,6 +584,36 @@ class _SheetReader:
                         self.values[one][position] = again
                         del self.unitless[position][one]
 
+    def _scale_in_units_of_range(self) -> None:
+        """Let a system range for which the sheet has no unit at all be in its row's range unit, where nothing else fits.
+
+        Not where the system may well show another quantity: flow or level behind a pressure, a percentage behind
+        whatever is not 0 to 100 itself.
+        """
+        ends = ("system_lrv", "system_urv")
+        if "system_unit" in self.unit_cells or not any(set(ends) & fields.keys() for fields in self.unitless.values()):
+            return
+        units = self._settled_units("range_unit", "lrv", "urv")
+        for position, fields in list(self.unitless.items()):
+            unit = units[position]
+            if not isinstance(unit, Unit) or not all(name in fields for name in ends):
+                continue
+            values = [read_quantity(fields[name], unit=unit, decimal=self._sheet_convention or ".") for name in ends]
+            shown = [value.number for value in values if isinstance(value, Quantity)]
+            own = [
+                each[position].number
+                for each in (self.values.get("lrv"), self.values.get("urv"))
+                if each is not None and each[position] is not None
+            ]
+            letters = self.letters[position] if self.letters else ""
+            elsewhere = shown == [0, 100] or (unit.kind == "pressure" and letters[:1] != "P")
+            if len(shown) != 2 or (shown != own and elsewhere):
+                continue
+            for name, value in zip(ends, values, strict=True):
+                self.values[name][position] = value
+                del self.unitless[position][name]
+            self.assumptions.setdefault("system range without unit read in the unit of the range")
+
     def _units_of_measurement(self) -> list[UnitCell]:
         """Return the unit that each row measures in: the system's where it is of another dimension than the range's."""
         ranges = self._settled_units("range_unit", "lrv", "urv")
@@ -917,11 +949,15 @@ class _SheetReader:
 
     def _filled_in(self, index: int) -> int:
         """Return how many cells of a column hold a value, unread ones among them and placeholders not."""
+        known = self._filled.get(index)
+        if known is not None:
+            return known
         failed = sum(column == index and row in self.at for row, column in self.sheet.errors)
         failed += sum(column == index and row in self.at for row, column in self.sheet.no_value)
-        return failed + sum(
+        self._filled[index] = failed + sum(
             cell is not None and not (isinstance(cell, str) and placeholder(cell.strip())) for cell in self.cells(index)
         )
+        return self._filled[index]
 
     def _subject(self, position: int) -> str:
         """Return what a row is called: its tag or code, else the sheet and its first filled cell."""

@@ -61,6 +61,16 @@ ONE_COLUMN = [
     ("HART", "Y;N", "hart"),
     ("Wires", "2-wire;4-wire", "wires"),
     ("Fail Pos.", "FC;FO", "failure_position"),
+    ("Air fail", "shut;stays", "failure_position"),
+    ("Sich.-Stellung", "auf;zu", "failure_position"),
+    ("Device Type", "Pressure transmitter;Temperature transmitter", "kind"),
+    ("Device Type", "P-30;TT-4", "device_type"),
+    ("Schaltpunkt", "4 bar;60 °C", "trip"),
+    ("Electrical", "4-20 mA;Pt100", "signal"),
+    ("R+I Blatt", "RI-1;RI-2", "pid"),
+    ("Service Fluid", "Steam;Water", "fluid"),
+    ("Process Min. temp. °C", "5;10", "operating_temperature_min"),
+    ("Des. press. barg", "16;10", "design_pressure"),
 ]
 
 
@@ -125,7 +135,11 @@ HEADER_ROWS = [
     # two languages
     ("Tag|Service|Maker\nMessstelle|Benennung|Hersteller\nPT-1|Feed|X\nPT-2|Feed|X", (0, 1), 2),
     # a title in pieces, and the name of a section below the headings
-    ("WORKS|||Instrument list, issue 11/87\nTag|Service|Unit|Alarm L\nBoilers|||\nPT-1|Feed|bar|1\nPT-2|Feed|bar|2", (1,), 2),
+    (
+        "WORKS|||Instrument list, issue 11/87\nTag|Service|Unit|Alarm L\nBoilers|||\nPT-1|Feed|bar|1\nPT-2|Feed|bar|2",
+        (1,),
+        2,
+    ),
     # two languages, one of them not known
     (
         "Mesto|Nazev|Spin\nTag No.|Description|Set point\nPlyn / Gas||\nPSL-1|Feed|4 bar\nPSL-2|Feed|5 bar",
@@ -280,6 +294,42 @@ def test_tags_tell_more_than_a_heading_that_is_usually_another() -> None:
     found = matched("Signal|Description|Type|Wire\nCIP1_TT01|Feed|AI|W1\nCIP1_PU01_RUN|Pump|DI|W2\nXV7_OPN|Valve|DI|W3")
     assert {"tag": 0, "service": 1, "io_type": 2}.items() <= columns_of(found).items()
     assert found.notes == ("column 'Signal' is taken for the tag: its cells look like tags",)
+
+
+@pytest.mark.parametrize(
+    ("text", "columns"),
+    [
+        # an I/O map's scale
+        ("Tag|Type|Low|High|EU\nTT-1|AI|0|50|°C", {"tag": 0, "io_type": 1, "lrv": 2, "urv": 3, "range_unit": 4}),
+        # beside a range they are alarms, and so they are with another alarm
+        ("Tag|Range|Low|High\nTT-1|0-50 °C|5|40", {"tag": 0, "range": 1, "setting_l": 2, "setting_h": 3}),
+        ("Tag|Low|High|High High\nTT-1|5|40|45", {"tag": 0, "setting_l": 1, "setting_h": 2, "setting_hh": 3}),
+        ("Tag|L|H\nTT-1|5|40", {"tag": 0, "setting_l": 1, "setting_h": 2}),
+        # beside Normal, the bounds are the operating value's
+        (
+            "Tag|Range Lo|Range Hi|Normal|Max\nTT-1|0|50|20|30",
+            {"tag": 0, "lrv": 1, "urv": 2, "operating_value_normal": 3, "operating_value_max": 4},
+        ),
+        ("Tag|Min|Max|Normal\nTT-1|0|50|20", {"tag": 0, "lrv": 1, "urv": 2, "operating_value_normal": 3}),
+        # numbers of wires are no count of wires
+        ("Tag|Service|Wire no.\nTT-1|Feed|W1", {"tag": 0, "service": 1}),
+    ],
+)
+def test_neighbours_tell_what_an_everyday_word_means(text: str, columns: dict[str, int]) -> None:
+    last = text.rsplit("\n", 1)[1]
+    assert columns_of(matched(f"{text}\n{last.replace('-1', '-2', 1)}")) == columns
+
+
+def test_a_catalogue_and_a_cable_list_in_two_languages() -> None:
+    kinds = [
+        matched(text).kind.name
+        for text in (
+            "Device|Description|LRL|URL|Unit\nP-1|Transmitter|0|10|bar\nP-2|Transmitter|0|40|bar",
+            "Kabel Nr. / Cable no.|Typ / Type|Von / From|Nach / To|Länge / Length [m]\nW1|2x1|JB1|PT-1|8\n"
+            "W2|2x1|JB1|PT-2|9",
+        )
+    ]
+    assert kinds == ["Device types", "Cables"]
 
 
 def test_a_tag_in_columns_of_its_own_is_joined() -> None:

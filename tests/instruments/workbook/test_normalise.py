@@ -46,6 +46,29 @@ def test_a_range_takes_its_unit(
     assert record.unread == frozenset()
 
 
+@pytest.mark.parametrize(
+    ("row", "wanted"),
+    [
+        ("PT-1|0|60|psig|0|600", ("0 psig", "600 psig")),
+        ("TT-1|0|600|degF|0|100", None),  # may be a percentage
+        ("TT-1|0|100|degF|0|100", ("0 °F", "100 °F")),
+        ("FT-1|0|100|inH2O|0|5000", None),  # may be a flow
+        ("LT-1|-15|15|inH2O|-15|15", ("-15 inH2O", "15 inH2O")),
+        ("FT-1|0|40|t/h|0|50", ("0 t/h", "50 t/h")),
+    ],
+)
+def test_a_system_range_without_any_unit_is_in_the_ranges(row: str, wanted: tuple[str, str] | None) -> None:
+    found = read(f"Tag|LRV|URV|Unit|DCS Min|DCS Max\n{row}")
+    (record,) = found.records
+    if wanted is None:
+        assert (record.system_lrv, record.system_urv) == (None, None)
+        assert set(record.unitless) == {"system_lrv", "system_urv"}
+        assert found.assumptions == ()
+    else:
+        assert (str(record.system_lrv), str(record.system_urv), dict(record.unitless)) == (*wanted, {})
+        assert found.assumptions == ("system range without unit read in the unit of the range",)
+
+
 SETTINGS = [
     # settings take their own unit column, else the range's, else the system's where that is of another dimension
     ("Tag|LRV|URV|Unit|H", "PT-1|0|10|barg|8", {"setting_h": "8 barg"}),
