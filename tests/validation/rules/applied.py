@@ -1,4 +1,4 @@
-"""A rule on a small list, asked three ways: what it says, that no order of rows changes it, and that its fixes mend it."""
+"""One rule on a small list: what it says, that no order of rows changes it, and that its fixes clear it."""
 
 import random
 from collections.abc import Sequence
@@ -61,9 +61,7 @@ def fixes(code: str, *rows: str | Row, **sheets: Any) -> list[tuple[str, str, di
 
 def untold(code: str, *rows: str | Row, **sheets: Any) -> dict[str, int]:
     """Return the blanks that leave the rule unchecked."""
-    return dict(
-        audit(example_plant(rows_of(*rows), **sheets), codes=[code], raise_errors=True).coverage[code].because
-    )
+    return dict(audit(example_plant(rows_of(*rows), **sheets), codes=[code], raise_errors=True).coverage[code].because)
 
 
 def counts(code: str, *rows: str | Row, **sheets: Any) -> dict[str, int]:

@@ -453,7 +453,6 @@ def test_another_numbering_is_one_finding_on_the_list(differing: int, percent: s
             f"list.xlsx: the loop column differs from the tags in {differing} of {len(rows)} rows: "
             "the list numbers its loops in another way"
         ]
-        assert counts("TAG08", *rows, plant=plant) == {"finding": 1, "unchecked": len(rows)}
         assert untold("TAG08", *rows, plant=plant) == {"loop": len(rows)}
     else:
         assert [line.partition(":")[0] for line in lines] == [f"FT-{n}" for n in range(200, 200 + differing)]
