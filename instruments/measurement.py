@@ -148,7 +148,8 @@ def measurement_of(installed: Installed, *, asked: bool = False) -> Measurement:
         Whether it must have a range.
     """
     record = installed.record
-    field, system = scale(record.lrv, record.urv), scale(record.system_lrv, record.system_urv)
+    field = scale(record.lrv, record.urv)
+    system = scale(record.system_lrv, record.system_urv, kept=_SYSTEM_SCALES)
     variable = variable_of(installed)
     body = installed.body or _body_told(installed, variable, field, system)
     low, normal, high = record.operating_value_min, record.operating_value_normal, record.operating_value_max
@@ -186,11 +187,16 @@ _OPERATING_TEMPERATURE: Final = (
 
 
 _MOST_KEPT: Final = 50_000
-_SCALES: dict[tuple[int, int], Scale] = {}
+_Scales = dict[tuple[int, int], "Scale"]
+_SCALES: _Scales = {}
+# A field range and a system range stay two where both are written alike: rules tell them apart by identity.
+_SYSTEM_SCALES: _Scales = {}
 
 
-def scale(lrv: Quantity | None, urv: Quantity | None) -> Scale | None:
+def scale(lrv: Quantity | None, urv: Quantity | None, *, kept: _Scales = _SCALES) -> Scale | None:
     """Return a range with its ends in base units; None where an end is blank.
+
+    `kept` are those made before: lists repeat their ranges.
 
     >>> from instruments.quantity import read_quantity
     >>> upside_down = scale(read_quantity("10 barg"), read_quantity("0 barg"))
@@ -201,13 +207,13 @@ def scale(lrv: Quantity | None, urv: Quantity | None) -> Scale | None:
     """
     if lrv is None or urv is None:
         return None
-    # Lists repeat their ranges, and their reader keeps one object for each value that it has seen.
+    # The reader of cells keeps one object for each value that it has seen.
     key = (id(lrv), id(urv))
-    known = _SCALES.get(key)
+    known = kept.get(key)
     if known is None:
         known = _scale(lrv, urv)
-        if len(_SCALES) < _MOST_KEPT:
-            _SCALES[key] = known  # holds both ends, so that no other object can get their ids
+        if len(kept) < _MOST_KEPT:
+            kept[key] = known  # holds both ends, so that no other object can get their ids
     return known
 
 

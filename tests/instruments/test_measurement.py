@@ -150,6 +150,15 @@ def test_the_body_that_a_row_tells(row: dict[str, str], expected: str | None) ->
     assert measurement(**row).body == expected
 
 
+def test_two_ranges_that_are_written_alike_stay_two() -> None:
+    found = measurement(
+        tag="PT-1", **{"LRV": "0 barg", "URV": "16 barg", "system LRV": "0 barg", "system URV": "16 barg"}
+    )
+    assert found.field == found.system
+    assert found.field is not found.system
+    assert found.scale_of(quantity("4 barg")) is found.field
+
+
 def test_a_value_is_compared_with_the_range_of_its_dimension() -> None:
     found = measurement(tag="FT-1", LRV="0 mbar", URV="250 mbar", **{"system LRV": "0 m3/h", "system URV": "100 m3/h"})
     assert found.scale_of(quantity("50 m3/h")) is found.system
