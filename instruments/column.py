@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass
+from dataclasses import field as dataclass_field
 from enum import StrEnum
 from types import MappingProxyType
 from typing import Any
@@ -63,7 +64,7 @@ class Column:
     unit: str | None = None
     unit_from: tuple[str, ...] = ()
     into: tuple[str, ...] = ()
-    words: Mapping[str, tuple[str, ...]] = field(default_factory=lambda: NO_WORDS)
+    words: Mapping[str, tuple[str, ...]] = dataclass_field(default_factory=lambda: NO_WORDS)
     owner: str = ""
 
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 from instruments.area import Area
 from instruments.column import Column, Reads, SheetKind
 from instruments.plant_data import PlantRow
@@ -274,7 +276,7 @@ def _text(field: str, title: str, *headings: str) -> Column:
     return Column(field=field, title=title, headings=headings)
 
 
-def _word(field: str, title: str, words: dict[str, tuple[str, ...]], *headings: str, owner: str = "") -> Column:
+def _word(field: str, title: str, words: Mapping[str, tuple[str, ...]], *headings: str, owner: str = "") -> Column:
     return Column(field=field, title=title, reads=Reads.WORD, headings=headings, words=words, owner=owner)
 
 

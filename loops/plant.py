@@ -161,7 +161,7 @@ class Plant:
         live = self._notes.get("live")
         if live is None:
             live = self._notes["live"] = tuple(each for each in self.instruments if each.live)
-        return live  # type: ignore[no-any-return]
+        return live
 
     def threshold(self, name: str, default: float) -> float:
         """Return the plant's threshold of that name, or the catalogue's default."""

@@ -6,13 +6,13 @@ import hashlib
 import sys
 from argparse import ArgumentParser
 from pathlib import Path
-from typing import Any
+from typing import Any, ClassVar
 
 from django.core.management.base import BaseCommand
-from instruments.workbook.lists import NoTags, SheetReport, read_lists
 
 from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.workbook.lists import NoTags, SheetReport, read_lists
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
@@ -34,7 +34,7 @@ class Command(BaseCommand):
         "the whole of it and writes exceptions.xlsx, loop-sheets.pdf and findings.json. Exit status: 0 finished; "
         "1 findings at or above --fail-on; 2 something cannot be read or written; 3 a rule broke."
     )
-    requires_system_checks: list[str] = []
+    requires_system_checks: ClassVar[list[str]] = []
 
     def add_arguments(self, parser: ArgumentParser) -> None:
         """Declare the options."""
@@ -65,15 +65,11 @@ class Command(BaseCommand):
         with Progress(self.stderr) as progress:
             try:
                 progress.stage("reading")
-                inputs = {
-                    str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]
-                }
+                inputs = {str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]}
                 lists = read_lists(paths, (*INSTRUMENT_SHEETS, *LOOP_SHEETS), plant_toml=plant_toml)
                 progress.stage("putting the plant together")
                 plant = assemble(lists)
-                result = audit(
-                    plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code)
-                )
+                result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
                 with_consequences(result, on_fix=lambda number, of: progress.step("fixes", number, of))
                 folder = Path(options["to"])
                 with Outputs(folder) as outputs:
@@ -104,23 +100,14 @@ class Command(BaseCommand):
         progress.stage("writing exceptions.xlsx")
         outputs.add("exceptions.xlsx", lambda path: write_exceptions(result, path))
         if not options["no_sheets"]:
-            from loops.sheet.pdf import write_sheets
-
-            from validation.report.sheet_notes import notes_by_loop
-
             progress.stage("drawing loop-sheets.pdf")
             outputs.add(
                 "loop-sheets.pdf",
-                lambda path: write_sheets(
-                    result.plant,
-                    path,
-                    notes=notes_by_loop(result),
-                    on_sheet=lambda number, of: progress.step("sheets", number, of),
-                ),
+                lambda path: _draw(result, path, progress),
             )
         digests = dict(outputs.digests)
         text = as_text(result, digests=digests, version=VERSION, inputs=inputs)
-        outputs.add("findings.json", lambda path: path.write_text(text, encoding="utf-8") and None)
+        outputs.add("findings.json", lambda path: _write_text(path, text))
 
     def _cannot(self, text: str) -> int:
         self.stderr.write(f"audit: {text}")
@@ -165,3 +152,19 @@ def _guesses(sheet: SheetReport) -> list[str]:
         for each in sheet.match.columns.values()
         if each.how == "likeness"
     ]
+
+
+def _draw(result: Audit, path: Path, progress: Progress) -> None:
+    from loops.sheet.pdf import write_sheets
+    from validation.report.sheet_notes import notes_by_loop
+
+    write_sheets(
+        result.plant,
+        path,
+        notes=notes_by_loop(result),
+        on_sheet=lambda number, of: progress.step("sheets", number, of),
+    )
+
+
+def _write_text(path: Path, text: str) -> None:
+    path.write_text(text, encoding="utf-8")
