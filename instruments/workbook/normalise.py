@@ -177,16 +177,23 @@ class _SheetReader:
         self._take_set_cells()
         # Words first: whether 0 and 1 are a range, a digital signal tells.
         measured: list[tuple[str, ColumnMatch]] = []
+        limits: list[tuple[str, ColumnMatch]] = []
         for name, match in later:
             reads = match.column.reads
             if name in _SETTINGS or name in _OPERATING or reads is Reads.TRIPLET or match.piece is not None:
                 measured.append((name, match))
             elif reads is Reads.NUMBER:
                 self._read_numbers(name, match)
+            elif "limit_unit" in match.column.unit_from and "limit_unit" not in matches and "range_unit" in self.known:
+                limits.append((name, match))
             else:
                 self._read_quantities(name, match, self._units_for(match))
-        for low, high in (("lrv", "urv"), ("system_lrv", "system_urv"), ("lrl", "url")):
+        for low, high in (("lrv", "urv"), ("system_lrv", "system_urv")):
             self._share_units(low, high)
+        for name, match in limits:
+            # Limits on a row that has one unit column are in it, as its range is.
+            self._read_quantities(name, match, self._units_for(match, self._settled_units("range_unit", "lrv", "urv")))
+        self._share_units("lrl", "url")
         self._scale_in_units_of_range()
         base = self._units_of_measurement()
         for name, match in measured:
@@ -585,7 +592,7 @@ class _SheetReader:
                         del self.unitless[position][one]
 
     def _scale_in_units_of_range(self) -> None:
-        """Let a system range for which the sheet has no unit at all be in its row's range unit, where nothing else fits.
+        """Let a system range for which the sheet has no unit at all be in its row's range unit, where that is plain.
 
         Not where the system may well show another quantity: flow or level behind a pressure, a percentage behind
         whatever is not 0 to 100 itself.

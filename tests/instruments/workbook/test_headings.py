@@ -40,6 +40,12 @@ ONE_COLUMN = [
     ("Signal", "4-20mA HART;dry contact", "signal"),
     ("Signal", "AI;DO", "io_type"),
     ("Signal Type", "AI;DO", "io_type"),
+    ("Set Point High", "8;9", "setting_h"),
+    ("Low Alarm Setting", "8;9", "setting_l"),
+    ("Limit value HH", "8;9", "setting_hh"),
+    ("Manufacturer Name", "Kestrix;Ardwell", "maker"),
+    ("Désignation / Service", "Pression;Niveau", "service"),
+    ("Position de sécurité / Fail position", "Ouverte;Fermée", "failure_position"),
     ("Haz. Cert.", "Ex ia IIC T4 Ga;Ex d IIB T6", "ex_marking"),
     ("Haz. Cert.", "BVX 15 ATEX 1012X;IECEx BVX 16.0001", "certificate"),
     ("Certificate No.", "BVX 15 ATEX 1012X;BVX 15 ATEX 1013X", "certificate"),
@@ -234,6 +240,7 @@ UNIT_COLUMNS = [
         {"range_unit": 7},
         {"operating_pressure": 2, "operating_temperature": 4},
     ),
+    ("Tag|Range|Unité / Unit\nPT-1|0-10|bar\nPT-2|0-9|bar", {"range_unit": 2}, {}),
     ("Tag|LRV|URV|H|Unit\nPT-1|0|10|8|bar\nPT-2|0|9|8|bar", {"range_unit": 4}, {}),
     (
         ("Tag|LRV|URV|DCS Min|DCS Max|Unit\nPT-1|0|9|0|9|bar\nPT-2|0|9|0|9|bar"),
@@ -432,6 +439,12 @@ def test_an_address_may_stand_in_columns_of_its_own(
 ) -> None:
     found = matched(text).columns["io_address"]
     assert (found.index, found.prefix, found.parts) == (index, prefix, parts)
+
+
+def test_sixteen_thousand_columns_are_not_all_matched() -> None:
+    made = sheet("|".join(["Tag", "Service", *(f"Heading {number}" for number in range(16_000))]) + "\nPT-1|Feed")
+    found = matched(made)
+    assert columns_of(found) == {"tag": 0, "service": 1}
 
 
 def test_a_kind_may_be_forced() -> None:

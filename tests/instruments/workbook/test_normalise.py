@@ -130,6 +130,27 @@ def test_a_unit_column_beside_a_number_of_its_own() -> None:
     assert [each.reason for each in found.problems] == ["unit 'kg' is not a unit of this column (m)"]
 
 
+LIMITS = [
+    ("Tag|Sensor Range|Cal Range|Unit", "PT-1|0-40|0-25|barg", {"lrl": "0 barg", "url": "40 barg"}),
+    ("Tag|LRL|URL|LRV|URV|Range Unit", "PT-1|-1|40|0|25|barg", {"lrl": "-1 barg", "url": "40 barg"}),
+    (
+        ("Tag|LRL|URL|Limit Unit|LRV|URV|Range Unit"),
+        "PT-1|-1|40|bara|0|25|barg",
+        {"lrl": "-1 bara", "url": "40 bara", "limit_unit": "bara"},
+    ),
+    ("Tag|LRL|URL|Cal Range", "PT-1|-1|40|0-25 barg", {"lrl": "-1 barg", "url": "40 barg"}),
+    ("Tag|Range|Sensor Range", "PT-1|0-25 barg|-1 to 40 bara", {"lrl": "-1 bara", "url": "40 bara"}),
+]
+
+
+@pytest.mark.parametrize(("heading", "row", "own"), LIMITS)
+def test_limits_on_a_row_without_a_unit_of_their_own_are_in_the_ranges(
+    heading: str, row: str, own: dict[str, str]
+) -> None:
+    (record,) = all_said(read(f"{heading}\n{row}"))
+    assert record["own"] == own
+
+
 def test_device_limits_on_a_row_make_a_type_for_that_row() -> None:
     found = read("Tag|LRL|URL|Limit Unit|Min. span|HART\nPT-1|-1|10|barg|0.2|Y\nPT-2||||| ")
     assert all_said(found) == [
@@ -804,6 +825,13 @@ def test_other_sheets(kind: str, text: str, records: list[dict[str, Any]]) -> No
     made = sheet(text, name=kind)
     assert matched(made).kind.name == kind
     assert all_said(read(made)) == records
+
+
+def test_a_column_of_which_every_cell_is_odd_costs_no_more_than_its_cells() -> None:
+    odd = "\n".join(f"PT-{number}|x{number}y|{number}~{number + 1}(" for number in range(3000))
+    found = read(f"Tag|H (bar)|Range\n{odd}")
+    assert len(found.records) == 3000
+    assert found.cells_unread == 3000
 
 
 # --- anything ---
