@@ -10,7 +10,7 @@ import tempfile
 import time
 from argparse import ArgumentParser
 from pathlib import Path
-from typing import Any, ClassVar
+from typing import Any
 
 from django.core.management.base import BaseCommand
 
@@ -25,7 +25,7 @@ class Command(BaseCommand):
         "Makes a list of 50,000 tags and 45 columns, audits it stage by stage and prints what openpyxl's read-only "
         "mode needs merely to read that file. --and N measures a second length; the ratio of both is printed."
     )
-    requires_system_checks: ClassVar[list[str]] = []
+    requires_system_checks = ()
 
     def add_arguments(self, parser: ArgumentParser) -> None:
         """Declare the options."""

@@ -6,7 +6,7 @@ import json
 import sys
 from argparse import ArgumentParser
 from collections.abc import Mapping
-from typing import Any, ClassVar
+from typing import Any
 
 from django.core.management.base import BaseCommand
 
@@ -24,7 +24,7 @@ class Command(BaseCommand):
         "Shows how a tag, a unit or an Ex marking is understood: "
         "read tag|unit|marking [--json] -- TEXT [TEXT ...]. Exit status 2 where a text cannot be read."
     )
-    requires_system_checks: ClassVar[list[str]] = []
+    requires_system_checks = ()
 
     def add_arguments(self, parser: ArgumentParser) -> None:
         """Declare the options."""

@@ -6,7 +6,7 @@ import hashlib
 import sys
 from argparse import ArgumentParser
 from pathlib import Path
-from typing import Any, ClassVar
+from typing import Any
 
 from django.core.management.base import BaseCommand
 
@@ -34,7 +34,7 @@ class Command(BaseCommand):
         "the whole of it and writes exceptions.xlsx, loop-sheets.pdf and findings.json. Exit status: 0 finished; "
         "1 findings at or above --fail-on; 2 something cannot be read or written; 3 a rule broke."
     )
-    requires_system_checks: ClassVar[list[str]] = []
+    requires_system_checks = ()
 
     def add_arguments(self, parser: ArgumentParser) -> None:
         """Declare the options."""

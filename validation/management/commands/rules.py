@@ -5,7 +5,7 @@ from __future__ import annotations
 import json
 import sys
 from argparse import ArgumentParser
-from typing import Any, ClassVar
+from typing import Any
 
 from django.core.management.base import BaseCommand
 
@@ -16,7 +16,7 @@ class Command(BaseCommand):
     """Print the rules: all of them a line each, or some in full."""
 
     help = "Lists the rules, or shows those named in full: rules [--json] [CODE ...]"
-    requires_system_checks: ClassVar[list[str]] = []
+    requires_system_checks = ()
 
     def add_arguments(self, parser: ArgumentParser) -> None:
         """Declare the options."""
