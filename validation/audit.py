@@ -6,6 +6,7 @@ import gc
 from collections import Counter
 from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
+from functools import partial
 from typing import Any
 
 from instruments.installed import Installed
@@ -141,26 +142,27 @@ def check_one(rule: Rule, subject: Any, plant: Plant) -> Verdict:
 
 def reaudit(installed: Installed, plant: Plant, *, rules: Registry | None = None) -> list[Finding]:
     """Return the findings on one instrument and its circuits, by the rules about single subjects."""
-    registry = rules if rules is not None else load_rules()
-    result = Audit(plant=plant)
     circuits = plant.circuits_of(installed)
-    for each in registry:
+    findings: list[Finding] = []
+    for each in rules if rules is not None else load_rules():
+        if each.on is Subject.INSTRUMENT:
+            subjects: Sequence[Any] = (installed,)
+        elif each.on is Subject.CIRCUIT:
+            subjects = circuits
+        else:
+            continue
+        if not installed.live and not each.not_live_too:
+            continue
         if each.whole is not None and any(
             found.stops_rows for found in _each(plant.whole_finding(each.code, each.whole))
         ):
             continue
-        subjects: Sequence[Any] = ()
-        if each.on is Subject.INSTRUMENT:
-            subjects = (installed,)
-        elif each.on is Subject.CIRCUIT:
-            subjects = circuits
-        coverage = Coverage(rule=each.code)
         for subject in subjects:
-            if not installed.live and not each.not_live_too:
-                continue
-            _take(check_one(each, subject, plant), each, subject, coverage, result)
-    result.findings.sort(key=finding_order)
-    return result.findings
+            verdict = check_one(each, subject, plant)
+            if verdict is not None:
+                findings.extend(_finding(found, each, _name(subject), subject) for found in _each(verdict))
+    findings.sort(key=finding_order)
+    return findings
 
 
 def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverage:
@@ -176,20 +178,23 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
             result.broken.append(Broken(rule.code, plant.file_name, f"{type(error).__name__}: {error}"))
             verdict = None
         if verdict:
-            _take(verdict, rule, plant, coverage, result)
+            # Of the list, which is none of this rule's subjects: counted with them it would be one too many.
+            _report(verdict, rule, plant.name, plant, coverage, result)
             stopping = [each for each in _each(verdict) if each.stops_rows]
             if stopping:
-                blocked = tuple(
-                    dict.fromkeys(title_of(name) for each in stopping for name in each.fields)
-                ) or ("column",)
+                blocked = tuple(dict.fromkeys(title_of(name) for each in stopping for name in each.fields)) or (
+                    "column",
+                )
     if rule.on is Subject.WHOLE:
-        _guard(
+        done = _guard(
             lambda: _take(rule.check(plant), rule, plant, coverage, result),
             rule,
             plant.file_name,
             result,
             raise_errors,
         )
+        if not done:
+            _unchecked(_BROKEN, plant.file_name, coverage)
         return coverage
     if rule.on is Subject.GROUP:
         _run_groups(rule, plant, coverage, result, raise_errors, blocked)
@@ -220,8 +225,7 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
             if raise_errors:
                 raise
             result.broken.append(Broken(rule.code, subject.name, f"{type(error).__name__}: {error}"))
-            outcomes[Outcome.UNCHECKED] += 1
-            coverage.because["the rule is broken"] += 1
+            _unchecked(_BROKEN, subject.name, coverage)
     outcomes[Outcome.NOT_APPLICABLE] += not_applicable
     outcomes[Outcome.CLEAR] += unsaid
     return coverage
@@ -236,38 +240,56 @@ def _run_groups(
     blocked: tuple[str, ...] | None,
 ) -> None:
     members: dict[int, Installed] = {}
-    for installed in plant.instruments:
-        if (not installed.live and not rule.not_live_too) or (
-            rule.applies is not None and not rule.applies(installed, plant)
-        ):
+
+    def sort(installed: Installed) -> None:
+        if rule.applies is not None and not rule.applies(installed, plant):
             coverage.outcomes[Outcome.NOT_APPLICABLE] += 1
-            continue
+            return
         missing = blocked or tuple(title for title, get in rule.needs if get(installed) is None)
         if missing:
             _unchecked(missing, installed.name, coverage)
-            continue
-        members[id(installed)] = installed
+        else:
+            members[id(installed)] = installed
+
+    for installed in plant.instruments:
+        if not installed.live and not rule.not_live_too:
+            coverage.outcomes[Outcome.NOT_APPLICABLE] += 1
+        elif not _guard(partial(sort, installed), rule, installed.name, result, raise_errors):
+            _unchecked(_BROKEN, installed.name, coverage)
+    groups: list[tuple[Any, ...]] = []
+    if members and rule.groups is not None:
+        find = rule.groups
+        if not _guard(lambda: groups.extend(find(plant)), rule, plant.file_name, result, raise_errors):
+            for installed in members.values():
+                _unchecked(_BROKEN, installed.name, coverage)
+            return
     said: dict[int, Outcome] = {}
-    if rule.groups is not None and members:
-        for group in rule.groups(plant):
-            kept = tuple(installed for installed in group if id(installed) in members)
-            if len(kept) < 2:
-                continue
-            named = group_name(kept)
 
-            def run(kept: tuple[Installed, ...] = kept, named: str = named) -> None:
-                outcome = _report(rule.check(kept, plant), rule, named, kept[0], coverage, result)
-                for installed in kept:
-                    before = said.get(id(installed))
-                    if before is None or _WORSE.index(outcome) < _WORSE.index(before):
-                        said[id(installed)] = outcome
+    def say(kept: tuple[Installed, ...], outcome: Outcome) -> None:
+        for installed in kept:
+            before = said.get(id(installed))
+            if before is None or _WORSE.index(outcome) < _WORSE.index(before):
+                said[id(installed)] = outcome
 
-            _guard(run, rule, named, result, raise_errors)
+    for group in groups:
+        kept = tuple(installed for installed in group if id(installed) in members)
+        if len(kept) < 2:
+            continue
+        named = group_name(kept)
+
+        def run(kept: tuple[Installed, ...] = kept, named: str = named) -> None:
+            say(kept, _report(rule.check(kept, plant), rule, named, kept[0], coverage, result))
+
+        if not _guard(run, rule, named, result, raise_errors):
+            coverage.because.update(_BROKEN)
+            coverage.unchecked.setdefault(_BROKEN, []).append(named)
+            say(kept, Outcome.UNCHECKED)
     alone = Outcome.CLEAR if rule.alone_is_clear else Outcome.NOT_APPLICABLE
     for key in members:
         coverage.outcomes[said.get(key, alone)] += 1
 
 
+_BROKEN = ("the rule is broken",)
 _WORSE = [Outcome.FINDING, Outcome.REVIEW, Outcome.UNCHECKED, Outcome.CLEAR, Outcome.NOT_APPLICABLE]
 
 
@@ -282,13 +304,16 @@ def _bare(name: str) -> str:
     return head if bracket and tail.endswith(")") and tail[:-1].isdigit() else name
 
 
-def _guard(action: Callable[[], Any], rule: Rule, subject: str, result: Audit, raise_errors: bool) -> None:
+def _guard(action: Callable[[], Any], rule: Rule, subject: str, result: Audit, raise_errors: bool) -> bool:
+    """Do something, and report what it raises; return whether it raised nothing."""
     try:
         action()
     except Exception as error:
         if raise_errors:
             raise
         result.broken.append(Broken(rule.code, subject, f"{type(error).__name__}: {error}"))
+        return False
+    return True
 
 
 def _subjects(rule: Rule, plant: Plant) -> Iterable[Any]:
@@ -311,9 +336,7 @@ def _name(subject: Any) -> str:
     return subject.file_name if isinstance(subject, Plant) else subject.name
 
 
-def _report(
-    verdict: Verdict, rule: Rule, name: str, subject: Any, coverage: Coverage, result: Audit
-) -> Outcome:
+def _report(verdict: Verdict, rule: Rule, name: str, subject: Any, coverage: Coverage, result: Audit) -> Outcome:
     if verdict is None:
         return Outcome.CLEAR
     if isinstance(verdict, Clear):

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import importlib
 import inspect
+import os
 import pkgutil
 from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass
@@ -86,6 +87,7 @@ class Registry:
 
     def __init__(self) -> None:
         self._rules: dict[str, Rule] = {}
+        self._in_order: tuple[Rule, ...] | None = None
 
     def add(self, rule: Rule) -> None:
         """Add a rule; ValueError where its code is taken."""
@@ -95,9 +97,12 @@ class Registry:
                 f"{rule.code} is the code of {_where(other.check)} already; {_where(rule.check)} needs one of its own"
             )
         self._rules[rule.code] = rule
+        self._in_order = None
 
     def __iter__(self) -> Iterator[Rule]:
-        return iter(sorted(self._rules.values(), key=lambda rule: rule.code))
+        if self._in_order is None:
+            self._in_order = tuple(sorted(self._rules.values(), key=lambda rule: rule.code))
+        return iter(self._in_order)
 
     def __len__(self) -> int:
         return len(self._rules)
@@ -165,11 +170,24 @@ def rule(
 
 
 def load_rules(package: str = "validation.rules") -> Registry:
-    """Import every module of the rules' package, so that a new rule needs no list to be added to."""
+    """Import every module of the rules' package, so that a new rule needs no list to be added to.
+
+    The package is walked again only when one of its folders has changed.
+    """
     root = importlib.import_module(package)
-    for module in pkgutil.walk_packages(root.__path__, prefix=f"{package}."):
-        importlib.import_module(module.name)
+    if _WALKED.get(package) != _folders(root.__path__):
+        for module in pkgutil.walk_packages(root.__path__, prefix=f"{package}."):
+            importlib.import_module(module.name)
+        # Afterwards, because importing may write the folder of compiled modules.
+        _WALKED[package] = _folders(root.__path__)
     return RULES
+
+
+def _folders(paths: Iterable[str]) -> tuple[tuple[str, int], ...]:
+    return tuple((path, os.stat(path).st_mtime_ns if os.path.isdir(path) else 0) for path in paths)
+
+
+_WALKED: dict[str, tuple[tuple[str, int], ...]] = {}
 
 
 def title_of(name: str) -> str:
