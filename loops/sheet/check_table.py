@@ -140,7 +140,7 @@ def _input_table(circuit: Circuit, plant: Plant, signal: str | None, assumed: li
     if not current:
         remarks.append(f"the signal is {signal}: no currents")
     elif circuit.receiver_ohm is None:
-        assumed.append(f"range resistor {resistor_ohm:g} ohm")
+        assumed.append(f"receiver {resistor_ohm:g} ohm")  # in the words of the voltage budget
     system = _ends(record.system_lrv, record.system_urv, remarks, "system range") if record.system_urv else None
     root_in_system = bool(record.square_root_system and from_pressure)
     lrv, urv = ends if ends is not None else (0.0, 1.0)

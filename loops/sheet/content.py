@@ -190,21 +190,7 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
     service = loop_service(loop)
     circuits = tuple(_circuit(circuit, plant, service) for circuit in loop.circuits)
     several_areas = len({filed_under(each) for each in members if _in_field(each)}) > 1
-    assumed: dict[str, None] = {}
-    for circuit in circuits:
-        texts = circuit.power.assumed if circuit.power else ()
-        if circuit.check is not None:
-            texts = (*texts, *circuit.check.assumed)
-        for text in texts:
-            assumed.setdefault(f"{circuit.device}: {text}" if len(circuits) > 1 else text)
     settings = tuple(_setting_lines(loop, plant))
-    for line in settings:
-        for value in line.values:
-            if isinstance(value, SettingValue) and value.assumed:
-                assumed.setdefault(f"{line.tag}: {value.assumed}")
-    derived = [each.name for each in members if each.kind_from == "letters"]
-    if derived:
-        assumed.setdefault(f"kind by the letters of the tag: {', '.join(derived)}")
     return SheetContent(
         loop=loop.name,
         plant=plant.data.name,
@@ -222,8 +208,29 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
         circuits=circuits,
         remarks=tuple(_remarks(members)),
         notes=None if notes is None else tuple(notes),
-        assumed=tuple(assumed),
+        assumed=tuple(_assumed(circuits, settings, members)),
     )
+
+
+def _assumed(
+    circuits: Sequence[CircuitContent], settings: Sequence[SettingLine], members: Sequence[Installed]
+) -> Iterable[str]:
+    """Yield each assumption once, with the devices that it is made for."""
+    made: dict[str, dict[str, None]] = defaultdict(dict)
+    for circuit in circuits:
+        for text in circuit.power.assumed if circuit.power else ():
+            made[text][circuit.device] = None
+        for text in circuit.check.assumed if circuit.check else ():
+            made[text][circuit.device] = None
+    for line in settings:
+        for value in line.values:
+            if isinstance(value, SettingValue) and value.assumed:
+                made[value.assumed][line.tag] = None
+    for each in members:
+        if each.kind_from == "letters":
+            made["kind, by the letters of the tag"][each.name] = None
+    for text, devices in made.items():
+        yield f"{text}: {', '.join(devices)}"
 
 
 def source_of(plant: Plant) -> str:
@@ -502,8 +509,7 @@ def _fields(circuit: Circuit) -> Iterable[Field]:
     kinds = [f"{each.name}: {each.type.code}" if each.type else None for each in circuit.segments]
     yield Field(label="Cable type", value=_listed(kinds) or circuit.cable_type_named)
     yield Field(label="Cable length m", value=_number_text(circuit.cable_length_m))
-    sizes = [f"{each.name}: {_conductor_text(each.conductor) or '?'}" for each in circuit.segments]
-    yield Field(label="Conductor", value=_listed(sizes) or _conductor_text(circuit.conductor))
+    yield Field(label="Conductor", value=_conductors_text(circuit))
     yield Field(label="Pair", value=given("pair"))
     if kind in (DIGITAL_INPUT, None):
         yield Field(label="Contact", value=given("contact"))
@@ -527,6 +533,14 @@ _SOURCES: Final = {"card": " (of the card)", "cables": " (sum of its cables)"}
 
 def _number_text(given: Given | None) -> str | None:
     return f"{format_number(given.number)}{_SOURCES.get(given.source, '')}" if given is not None else None
+
+
+def _conductors_text(circuit: Circuit) -> str | None:
+    """Return the conductor's size; of a run whose cables differ, with the cable that has it."""
+    sizes = {each.name: each.conductor or (each.type.conductor if each.type else None) for each in circuit.segments}
+    if len(set(sizes.values())) > 1:
+        return _listed(f"{name}: {_conductor_text(size) or '?'}" for name, size in sizes.items())
+    return _conductor_text(circuit.conductor or next(iter(sizes.values()), None))
 
 
 def _conductor_text(text: str | None) -> str | None:

@@ -44,6 +44,8 @@ TITLE_MM: Final = 5.2
 GAP_MM: Final = 1.8
 WRITE: Final = style(7.6)._replace(pitch_mm=2.8)
 """Of a paragraph that is no text but a dotted line to write on."""
+PART_MM: Final = 25.0
+"""The least part of a high row that is worth beginning at the foot of a page."""
 DOTS_UP_MM: Final = 0.2
 """How far that line stands above the foot of its paragraph."""
 
@@ -476,9 +478,8 @@ class Flow:
         if made.height <= together_mm:
             self.need(made.height)
         else:
-            head = head_mm(made.table.columns)
             first = made.rows[0].height if made.rows else 0.0
-            self.need(head + min(first, self.whole - head))
+            self.need(head_mm(made.table.columns) + (PART_MM if self._is_tall(first) else first))
         self._draw(made)
         self.skip(GAP_MM)
 
@@ -498,6 +499,10 @@ class Flow:
         self.left = left
         self.y = max(ends, self.y)
         self.skip(GAP_MM)
+
+    def _is_tall(self, height: float) -> bool:
+        """Whether a row is too high to be kept in one piece at the cost of half an empty page."""
+        return height > self.whole / 2.0
 
     def _draw(self, made: SetTable) -> None:
         table = made.table
@@ -528,7 +533,7 @@ class Flow:
             row, columns = waiting[-1]
             rest = None
             if row.height > self.room:
-                if self.y > body:
+                if self.y > body and not (self._is_tall(row.height) and self.room >= PART_MM):
                     break
                 row, rest = _split(row, self.room, table.row_mm)
             waiting.pop()

@@ -436,6 +436,8 @@ def _power(power: Power, tight: bool) -> SetTable:
         Column(f"V at\n{current} mA", 14.0, "right"),
         *((Column("V at\n20 mA", 11.0, "right"),) if both else ()),
     )
+    if power.current_ma is None:
+        columns = (Column("", 80.0),)
     rows: list[tuple[Cell, ...]] = []
 
     def add(name: str, ohm: Cell, volts: Cell, volts_20: Cell, look: Style = BODY) -> None:
@@ -609,7 +611,7 @@ def _circuit(circuit: CircuitContent, flow: Flow, tight: bool) -> None:
 def _notes(content: SheetContent) -> tuple[str, ...]:
     if content.notes is None:
         return ("Drawn without an audit: whether there are any is not known.",)
-    return content.notes or ("None.",)
+    return content.notes or ("None found.",)
 
 
 def _title_block(content: SheetContent, out: list[Shape]) -> list[tuple[str, str]]:

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from itertools import combinations
-
 from loops.sheet.font import MM_PER_POINT, bold, regular
 from loops.sheet.layout import FOOT_BOTTOM, LEFT, PAGE_HEIGHT, PAGE_WIDTH, RIGHT, TOP
 from loops.sheet.shapes import Bounds, Box, Line, Link, Page, Text, expanded, extent
@@ -28,9 +26,8 @@ def troubles(page: Page) -> list[str]:
         face = bold() if text.style.bold else regular()
         found.extend(f"{sign!r} of {text.text!r} has no glyph" for sign in text.text if sign not in face.advances)
     found.extend(
-        f"{one.text!r} lies over {other.text!r}: {a} {b}"
-        for (one, a), (other, b) in combinations(zip(texts, extents, strict=True), 2)
-        if overlap(a, b)
+        f"{texts[one].text!r} lies over {texts[other].text!r}: {extents[one]} {extents[other]}"
+        for one, other in overlapping(extents)
     )
     for line in (shape for shape in shapes if isinstance(shape, Line)):
         found.extend(
@@ -49,6 +46,19 @@ def troubles(page: Page) -> list[str]:
             continue
         if not inside(ends, Bounds(0.0, 0.0, PAGE_WIDTH, PAGE_HEIGHT)):
             found.append(f"off the page: {shape}")
+    return found
+
+
+def overlapping(extents: list[Bounds]) -> list[tuple[int, int]]:
+    """Return the pairs of rectangles that share more than an edge."""
+    found: list[tuple[int, int]] = []
+    order = sorted(range(len(extents)), key=lambda number: extents[number].top)
+    for place, one in enumerate(order):
+        for other in order[place + 1 :]:
+            if extents[other].top >= extents[one].bottom:
+                break
+            if overlap(extents[one], extents[other]):
+                found.append((one, other))
     return found
 
 

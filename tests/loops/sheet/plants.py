@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import cache
 from typing import Any
 
 from loops.plant import Plant
@@ -124,6 +125,7 @@ TERMINATIONS: list[Row] = [
 ]  # fmt: skip
 
 
+@cache
 def works() -> Plant:
     """Return a plant with a circuit of every kind, and with loops that have no signal."""
     rows = [TRANSMITTER, ORIFICE, RESISTANCE, THERMOCOUPLE, *VALVE, *LOCAL]
@@ -136,6 +138,7 @@ LONG = "Наружная температура обратной воды " * 9 
 HOSTILE = "A\u202eB <b>&amp; %n $(x) \\ ) ( \U0001f512 \x07 \ufeff\u0e01\u05d0 𝛺 \ud83d Ω→µ"
 
 
+@cache
 def crowded() -> Plant:
     """Return a plant of loops that would break a careless page."""
     rows: list[Row] = [
@@ -156,7 +159,7 @@ def crowded() -> Plant:
         {"tag": "PT-205", "loop": "P-205 " * 12, "I/O type": "AO", "signal": "0-20 mA"},
         {"tag": "XYZ not a tag at all", "service": "free text", "I/O type": "DI", "I/O address": "7"},
     ]  # fmt: skip
-    loops = [{"number": "P-201", "circuit or tag": "PT-201", "service": LONG, "drawing": LONG}]
+    loops = [{"number": "P-201", "circuit or tag": "PT-201", "kind": "AI", "service": LONG, "drawing": LONG}]
     terminations = [
         {"circuit or tag": "PT-202", "from item": f"JB-{number}", "from terminal": f"TB{number}:{number}/out",
          "to item": f"MARSHALLING-CABINET-{number}", "to terminal": f"MX{number}:{number}",

@@ -37,7 +37,7 @@ def test_a_linear_transmitter() -> None:
 
 def test_a_receiver_that_is_not_given_is_assumed_and_one_of_100_ohm_is_not() -> None:
     made = table(TRANSMITTER)
-    assert (made.resistor_ohm, made.resistor_assumed, made.assumed) == (250.0, True, ("range resistor 250 ohm",))
+    assert (made.resistor_ohm, made.resistor_assumed, made.assumed) == (250.0, True, ("receiver 250 ohm",))
     made = table({**TRANSMITTER, "receiver ohm": "100"})
     assert made.resistor_assumed is False
     assert column(made, "range_v") == pytest.approx([0.4, 0.8, 1.2, 1.6, 2.0])

@@ -77,7 +77,7 @@ def test_the_devices() -> None:
 def test_a_derived_kind_is_marked_and_listed() -> None:
     content = sheet(works(), "X-106")
     assert {line.kind for line in content.devices} == {"on/off valve *", "solenoid *", "switch *"}
-    assert content.assumed == ("kind by the letters of the tag: XV-106, XY-106, ZSO-106",)
+    assert content.assumed == ("kind, by the letters of the tag: XV-106, XY-106, ZSO-106",)
 
 
 def test_the_service_is_what_is_measured_else_what_is_driven() -> None:
@@ -163,7 +163,7 @@ def test_a_pressure_referred_to_nothing_is_read_as_the_plant_s_default() -> None
     high = line.values[2]
     assert isinstance(high, SettingValue)
     assert high.percent == pytest.approx(19.735)
-    assert "PT-5: a pressure without stated reference is gauge" in content.assumed
+    assert "a pressure without stated reference is gauge: PT-5" in content.assumed
 
 
 def test_which_devices_have_a_line_for_settings() -> None:
@@ -229,8 +229,8 @@ def test_an_assumed_supply_and_receiver_are_marked() -> None:
     assert power.source_assumed
     assert power.source_v == pytest.approx(22.8)
     assert [line.assumed for line in power.lines if line.name == "receiver"] == [True]
-    assert "receiver 250 ohm" in content.assumed
-    assert "supply 24 V may be 5 % low" in content.assumed
+    assert "receiver 250 ohm: PT-101" in content.assumed
+    assert "supply 24 V may be 5 % low: PT-101" in content.assumed
 
 
 def test_no_budget_where_none_is_asked_for() -> None:
@@ -268,6 +268,23 @@ def test_no_budget_where_none_is_asked_for() -> None:
 )
 def test_the_wiring_as_given(label: str, value: str | None) -> None:
     assert field_of(one_circuit(works(), "P-101"), label) == value
+
+
+def test_a_run_of_several_cables() -> None:
+    row = {**TRANSMITTER, "cable": "C-1, MC-1", "conductor size": "", "cable type": ""}
+    sheets: dict[str, Any] = {
+        "cables": [
+            {"number": "C-1", "type": "A", "length": "40", "pairs": "1"},
+            {"number": "MC-1", "type": "B", "length": "100", "pairs": "8"},
+        ],
+        "cable_types": [{"code": "A", "conductor size": "1.5"}, {"code": "B", "conductor size": "0.75"}],
+    }
+    circuit = one_circuit(example_plant([row], **sheets))
+    assert field_of(circuit, "Cable length m") == "140 (sum of its cables)"
+    assert field_of(circuit, "Cable type") == "C-1: A, MC-1: B"
+    assert field_of(circuit, "Conductor") == "C-1: 1.5 mm\u00b2, MC-1: 0.75 mm\u00b2"
+    sheets["cable_types"][1]["conductor size"] = "1.5"
+    assert field_of(one_circuit(example_plant([row], **sheets)), "Conductor") == "1.5 mm\u00b2"
 
 
 def test_contacts_and_valves_show_their_own() -> None:

@@ -109,6 +109,18 @@ def test_a_row_higher_than_a_page_goes_on() -> None:
     assert max(shape.box.bottom for page in pages for shape in page if isinstance(shape, Text)) <= 60.0
 
 
+def test_a_row_of_more_than_half_a_page_begins_where_it_stands() -> None:
+    tall = " ".join(f"word{number}" for number in range(160))
+    flow = Flow(left=0.0, width=100.0, bottom=100.0, first_top=0.0, next_top=0.0)
+    columns = (Column("", 60.0),)
+    flow.add(set_table(Table(title="before", columns=columns, rows=[(cell("x"),)] * 8)))
+    flow.add(set_table(Table(title="tall", columns=columns, rows=[(cell(tall),)])))
+    first = [shape.text for shape in expanded(flow.pages[0]) if isinstance(shape, Text)]
+    assert "tall" in first
+    assert any("word0" in text for text in first)
+    assert len(flow.pages) == 2
+
+
 def test_tables_beside_each_other_begin_at_one_height_and_the_flow_goes_on_below_both() -> None:
     flow = Flow(left=0.0, width=100.0, bottom=200.0, first_top=0.0, next_top=0.0)
     short = set_table(Table(title="short", columns=(Column("a", 40.0),), rows=[(cell("x"),)]))
