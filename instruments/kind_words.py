@@ -82,6 +82,11 @@ _ONE_WORD_TABLE: Final = (
         "startstop",
     ),
     (
+        # The abbreviation of inductive is no indicator.
+        r"magn(?:et(?:isch)?)?\.? ?-? ?ind(?:u[kc]ti[vf]\w*|\.)?",
+        "mid",
+    ),
+    (
         r"c ?/ ?v",
         "control valve",
     ),
@@ -650,6 +655,8 @@ _SELF_WORDS: Final = _words(
     \w*minder\w* | eigenmedium | autoregul\w* | blanket\w*
     """
 )
+# Control valve, self operated: wherever it stands, it says that no signal drives the valve.
+_WITHOUT_POWER: Final = _words(r"self ?-? ?(?:act|operat|regulat|contain|actuat)\w* | selfacting")
 _MANUAL_WORDS: Final = _words(
     r"""
     manual(?:ly)? | hand | handwheel | check | non ?-? ?return | needle | root | locked | lockable
@@ -792,6 +799,8 @@ def _head(phrase: str, whole: str) -> tuple[Kind, ...] | None:
 
 def _valve(phrase: str, whole: str) -> tuple[Kind, ...]:
     """Which valve: the words before it say so, else those of the whole text."""
+    if _WITHOUT_POWER.search(whole) and not _RELIEF_WORDS.search(whole):
+        return (_K.REGULATOR,)
     for words in (phrase, whole):
         if re.search("sicherheits(?:absperr|schnell)", words):
             return (_K.ON_OFF_VALVE,)

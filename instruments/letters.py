@@ -104,6 +104,8 @@ _READOUTS = frozenset(m.letter for m in LETTERS if m.role == "readout")
 _OUTPUTS = frozenset(m.letter for m in LETTERS if m.role == "output")
 _FUNCTIONS = _READOUTS | _OUTPUTS
 _USERS_FUNCTIONS = frozenset("BN")
+# Nothing flows through a position or a state.
+_HAS_NO_ORIFICE = frozenset("ZXYHSVKEIJ")
 # High, low, middle, deviation follow a switch, alarm, light, indication or transmission;
 # closed, open, run, stop follow a switch or a light directly (after I or T the same letters are functions).
 _LEVELS = frozenset("HLMD")
@@ -266,6 +268,9 @@ def _functions(first: str, letters: str, *, modifiers: str, doubts: list[str]) -
             return parse
         if letter in seen:
             parse.error = f"function {letter} is repeated"
+            return parse
+        if letter == "O" and first in _HAS_NO_ORIFICE and at + 1 < len(letters):
+            parse.error = "O for open stands behind the switch or light that it speaks of"
             return parse
         readout = letter in _READOUTS and not (output_seen and letter in _OUTPUTS)
         if readout and output_seen:

@@ -19,6 +19,7 @@ from instruments.plant_codes import PlantCode, codes_with
 from instruments.plant_data import PlantData
 from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
+from instruments.signal_words import io_types
 from instruments.tag import (
     TagProfile,
     TagReading,
@@ -819,6 +820,7 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
             and each.letters[-1] in "IRCA"
             and each.letters not in codes
             and record.location != "system"
+            and _may_bring_a_measurement(each.signals)
         )
         letters = "" if each.equipment_tag else each.letters
         asked: dict[str, Any] = {
@@ -844,6 +846,15 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
                 kind = _point_kind(record) or kind
         each.kind, each.kind_from = kind, kind_from if kind is not None else ""
         each.measuring_point = point
+
+
+_FOR_SENSORS = frozenset({"AI", "RTD", "TC"})
+
+
+def _may_bring_a_measurement(signals: Iterable[Instrument]) -> bool:
+    """Whether one of the I/O types may be a sensor's: XA on an output sounds, XA on a digital input reports."""
+    kinds = {kind for row in signals for kind in io_types(row.io_type)}
+    return not kinds or not kinds.isdisjoint(_FOR_SENSORS)
 
 
 _MEASURING = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH})

@@ -42,6 +42,7 @@ WORDS = {
         ELECTRONIC DP TRANSMITTER | Level transmitter (dp type) | flow transmitter orifice type
         Submersible level transmitter | Differenzdruckmessumformer | Wirkdruckmessumformer
         Level gauge with transmitter | Ultrasonic open channel flow meter | sonde de niveau
+        Durchflussmessumformer magn.-ind.
     """,
     "analyser": """
         Turbidity analyser | pH analyser | Chlorine analyser | Aluminium monitor | Colour analyser
@@ -150,6 +151,7 @@ WORDS = {
     """,
     "self-acting regulator": """
         Pressure regulator | Self-acting regulator | Pressure reducing valve | Druckminderer | détendeur
+        CONTROL VALVE, SELF OPERATED
         Back pressure regulator | self-operated pressure control valve | Air filter regulator
         self acting temperature control valve | válvula reductora | Tank blanketing valve
         Instrument air regulator

@@ -83,6 +83,9 @@ def test_legal(letters: str, meaning: str) -> None:
         ("LTVH", "modifier H has no function letter before it"),
         ("LSHHHH", "modifier H has no function letter before it"),
         ("TVO", "readout O after output letter"),
+        ("ZOS", "O for open stands behind the switch or light that it speaks of"),
+        ("ZO", ""),
+        ("FO", ""),
     ],
 )
 def test_illegal_and_why(letters: str, problem: str) -> None:

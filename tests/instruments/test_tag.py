@@ -416,6 +416,8 @@ def test_every_profile_reads_its_examples(name: str) -> None:
         (["10LBA10CP001", "1 LBA10 CP002 XQ01", "PT-1"], "kks", ""),
         (["PIC 4712.02", "TIR 4713.01", "Boiler 1"], "isa-area-number", " "),
         (["Boiler 7 inlet", "4th pump", "PT-1"], "free-text", "-"),
+        (["PAS1_TT11", "PAS1_FT11", "PAS1_PU11_RUN", "PAS1_PU11_FLT"], "free-text", "-"),
+        (["PAS1_TT11", "PAS1_FT11", "PAS1_PU11_RUN"], "isa-unit-prefix", ""),
         (["Inlet pressure", "SPARE"], "isa-hyphen", "-"),
         ([], "isa-hyphen", "-"),
     ],
