@@ -114,7 +114,7 @@ class Measurement:
     def scale_of(self, quantity: Quantity) -> Scale | None:
         """Return the range, of field or system, that has the dimension of a value."""
         for scale in (self.field, self.system):
-            if scale is not None and not scale.flat and scale.measures(quantity):
+            if scale is not None and scale.high > scale.low and scale.measures(quantity):
                 return scale
         return None
 

@@ -46,12 +46,14 @@ def rounded_down(value: float) -> float:
 
 
 def written(value: float, unit: Unit) -> str:
-    """Write a value as a list would hold it.
+    """Write a value as a list would hold it; a vacuum below zero is a gauge pressure above it.
 
     >>> from instruments.unit import read_unit
-    >>> written(12.5, read_unit("barg"))
-    '12.5 barg'
+    >>> written(12.5, read_unit("barg")), written(-3.0, read_unit("inHg vac"))
+    ('12.5 barg', '3 inHg(g)')
     """
+    if value < 0.0 and unit.reference == "vacuum":
+        return written(-value, unit.referred_to("gauge"))
     return f"{format_number(value)} {unit_label(unit)}"
 
 

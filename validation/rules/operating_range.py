@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from typing import Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import Measurement, Scale, amount, at, in_unit, same_dimension
+from instruments.pressure import can_be
 from instruments.quantity import Quantity, format_number
 from instruments.span import (
     UnitSlip,
@@ -81,6 +82,8 @@ def _placed(measurement: Measurement, plant: Plant, open_as: str) -> list[_Stand
         if scale is None:
             return _no_scale(measurement)
         to = measurement.reference(scale.urv) or open_as
+        if scale.is_pressure and to != (measurement.reference(scale.lrv) or open_as):
+            return Unchecked(BY_RNG06)
         base = measurement.at(value, to=to, open_as=open_as, atmospheric_pa=plant.data.atmospheric_pa)
         if base is None:
             return Unchecked(BY_RNG06)
@@ -250,8 +253,8 @@ def _wider(measurement: Measurement, found: Found, plant: Plant) -> tuple[Fix, .
     chosen = max(stands, key=_base) if upper else min(stands, key=_base)
     scale = chosen.scale
     unit = scale.unit
-    if unit is None or unit.kind == "ratio":
-        return ()
+    if unit is None or unit.kind == "ratio" or (unit.factor or 0.0) < 0.0:
+        return ()  # nobody lays a percentage wider, and a vacuum is counted the other way
     value = in_unit(chosen.base, unit)
     if upper:
         _, high = _body_limits(measurement, scale)
@@ -334,6 +337,8 @@ def _with_lower_end(measurement: Measurement, scale: Scale, end: float) -> tuple
     assert unit is not None
     low, high = _body_limits(measurement, scale)
     if scale is not measurement.field or beyond_limit(end, low, high):
+        return ()
+    if scale.is_pressure and not can_be(end * (unit.factor or 1.0), measurement.reference(scale.lrv) or "gauge"):
         return ()
     lrv, urv = in_unit(at(scale.lrv), unit), in_unit(at(scale.urv), unit)
     lrv, urv = (lrv, end) if scale.reversed else (end, urv)
@@ -562,6 +567,8 @@ def _explained_by_a_slip(measurement: Measurement, normal: Quantity, plant: Plan
     fixes: list[Fix] = []
     for slip in slips:
         other = unit_meant(unit, slip)
+        if other is not None and not _inside(numbers.values(), ends, unit, other):
+            other = None  # the slip is rounded, and what it rounds off is the difference here
         ranged = None if slip.offset else unit_meant(scale.unit, _turned_round(slip))
         if other is not None:
             change = {title_of(name): written(number, other) for name, number in given}
@@ -587,6 +594,12 @@ def _explained_by_a_slip(measurement: Measurement, normal: Quantity, plant: Plan
         ),
         fixes=tuple(fixes),
     )
+
+
+def _inside(numbers: Iterable[float], ends: tuple[float, float], unit: Unit, other: Unit) -> bool:
+    """Whether figures read in another unit stand inside a range given in the unit that they are written in."""
+    bases = (number * (other.factor or 1.0) + other.offset for number in numbers)
+    return not any(beyond_limit(in_unit(base, unit), *ends) for base in bases)
 
 
 def _turned_round(slip: UnitSlip) -> UnitSlip:

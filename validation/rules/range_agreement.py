@@ -113,7 +113,9 @@ def ranges_differ(installed: Installed, plant: Plant) -> Verdict:
 
 def _exactly(value: float, unit: Unit) -> str:
     """Write a value with the digits that it takes to be the same range again."""
-    return f"{value:.10g} {unit_label(unit)}" if 1e-4 <= abs(value) < 1e10 else written(value, unit)
+    if not 1e-4 <= abs(value) < 1e10 or unit.reference == "vacuum":
+        return written(value, unit)
+    return f"{value:.10g} {unit_label(unit)}"
 
 
 def _system_in_field(measurement: Measurement) -> tuple[float, float] | None:

@@ -125,8 +125,11 @@ def outside_body(measurement: Measurement, plant: Plant) -> Verdict:
         return trouble
     low = None if device.lrl is None else at(device.lrl)
     high = None if device.url is None else at(device.url)
-    if low is not None and high is not None and low <= field.low and field.high <= high:
-        return None
+    if low is not None and high is not None:
+        if low > high:
+            return Unchecked("LRL below URL")
+        if low <= field.low and field.high <= high:
+            return None
     found: list[Found] = []
     for end, name, value in (("LRV", "lrv", field.lrv), ("URV", "urv", field.urv)):
         off = beyond_limit(at(value), low, high)
@@ -202,6 +205,8 @@ def _nearest_inside(measurement: Measurement) -> tuple[Fix, ...]:
     assert field is not None
     assert field.unit is not None
     unit = field.unit
+    if (unit.factor or 0.0) < 0.0:
+        return ()  # a vacuum is counted the other way
     limits = _limits_in(measurement, unit)
     if limits is None:
         return _cut_at_the_limit(measurement)
@@ -509,7 +514,7 @@ def zero_beyond_shift(measurement: Measurement, plant: Plant) -> Verdict:
     url = in_unit(at(device.url), unit)
     shift = in_unit(field.low, unit)
     limit = abs(url) * device.zero_shift_percent / 100.0
-    if not above(abs(shift), limit, scale=url):
+    if not above(abs(shift), limit, scale=max(abs(url), difference_in(field.span, unit))):
         return None
     over = f"{format_number(abs(shift) - limit)} {_span_label(unit)}"
     return Found(
@@ -534,9 +539,12 @@ def _nearest_zero(measurement: Measurement) -> tuple[Fix, ...]:
     assert field.unit is not None
     assert device is not None
     assert device.url is not None
-    unit = field.unit
-    url, percent = in_unit(at(device.url), unit), device.zero_shift_percent or 0.0
-    low, high = nearest_zero_shift(in_unit(field.low, unit), in_unit(field.high, unit), url, percent)
+    unit, url_unit = field.unit, device.url.unit
+    assert url_unit is not None
+    # A percentage of the URL means something in the URL's own unit: 15 % of 212 °F is no 15 % of 100 °C.
+    ends = (in_unit(field.low, url_unit), in_unit(field.high, url_unit))
+    shifted = nearest_zero_shift(*ends, in_unit(at(device.url), url_unit), device.zero_shift_percent or 0.0)
+    low, high = (in_unit(end * (url_unit.factor or 1.0) + url_unit.offset, unit) for end in shifted)
     span = high - low
     low = rounded_down(low) if low > 0.0 else rounded_up(low)
     high = rounded_down(low + span) if abs(low) != 0.0 else high

@@ -119,6 +119,11 @@ def test_both_ends_of_a_range_must_lie_in_the_body(lrv: str, urv: str, expected:
         ({"LRV": "0 barg", "URV": "50 barg"}, [{**GAUGE, "LRL": ""}], "finding"),  # wrong whatever the LRL is
         ({"LRV": "0 barg", "URV": "5 barg"}, [{**GAUGE, "LRL": "", "URL": ""}], "unchecked: LRL or URL"),
         ({"LRV": "0 barg", "URV": "5 barg", "device type": ""}, TYPES, "unchecked: LRL or URL"),
+        (
+            {"LRV": "0 barg", "URV": "5 barg"},
+            [{**GAUGE, "LRL": "10 barg", "URL": "0 barg"}],
+            "unchecked: LRL below URL",
+        ),
         ({"LRV": "0 bara", "URV": "50 bara"}, TYPES, "unchecked: reference (RNG06)"),
         ({"LRV": "0 mm", "URV": "500 mm"}, TYPES, "unchecked: range in the unit of the body's limits"),
         ({"LRV": "0", "URV": "5"}, TYPES, "unchecked: LRV, URV"),
