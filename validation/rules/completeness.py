@@ -6,6 +6,7 @@ import re
 from collections import Counter, defaultdict
 from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass, replace
+from functools import lru_cache
 from operator import attrgetter
 from typing import Any, Final
 
@@ -13,10 +14,12 @@ from instruments.column import Reads
 from instruments.columns import DEVICE_TYPES, INSTRUMENTS
 from instruments.installed import Installed
 from instruments.kind import Kind, touches_process
+from instruments.letters import read_letters
 from instruments.origin import Cell
 from instruments.plant_data import DEFAULT_REQUIRED
 from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
+from instruments.signal_words import io_types, signal_classes
 from instruments.unit_table import unit_label
 from instruments.workbook.problem import CellProblem
 from instruments.written import CannotStand, value_of
@@ -169,7 +172,7 @@ def _blank(required: _Required, installed: Installed) -> tuple[tuple[str, ...], 
         return () if record.kind_written or record.device_type or not record.tag else ("kind",), ()
     lost = record.unitless.keys() | record.unread if record.unitless or record.unread else ()
     if required.title == "range unit":
-        if _has_unit(record):
+        if _has_unit(record) or _is_ratio(installed.letters):
             return (), ()
         # Without a unit stands the range, or what was to be its unit cannot be read.
         return ((), ("range_unit",)) if any(name in lost for name in _UNIT_OF_RANGE) else (("range_unit",), ())
@@ -182,8 +185,34 @@ def _blank(required: _Required, installed: Installed) -> tuple[tuple[str, ...], 
 
 
 _UNIT_OF_RANGE: Final = ("lrv", "urv", "range_unit")
+# What is in the unit of the measured variable.
+_MEASURED: Final = frozenset({
+    "lrv", "urv", "system_lrv", "system_urv", "setting_ll", "setting_l", "setting_h", "setting_hh", "trip",
+    "operating_value_min", "operating_value_normal", "operating_value_max",
+})  # fmt: skip
 # The reader's reason for what one device of a cell with several tags cannot have.
 SHARED_CELL: Final = "shared cell"
+
+
+@lru_cache(maxsize=4096)
+def _is_ratio(letters: str) -> bool:
+    """Whether the letters measure a ratio, which is a number without unit: FFIC."""
+    return "F" in letters[1:] and "F" in read_letters(letters).modifier
+
+
+# An analyser or a detector may have an alarm contact for its only signal, a flame scanner has little else.
+_MAY_TELL_A_STATE: Final = frozenset({Kind.ELEMENT, Kind.ANALYSER, Kind.GAS_DETECTOR})
+
+
+def _tells_a_state(installed: Installed) -> bool:
+    """Whether a contact is all that it gives: a state has no range."""
+    if installed.kind not in _MAY_TELL_A_STATE:
+        return False
+    kinds = {kind for row in installed.signals for kind in io_types(row.io_type)}
+    classes = {each for row in installed.signals for each in signal_classes(row.signal)}
+    if kinds - {"DI"} or classes - {"contact", "digital", "volts"}:
+        return False
+    return bool(kinds or classes)
 
 
 def _leaves_to_transmitter(installed: Installed, plant: Plant) -> bool:
@@ -269,6 +298,8 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
                 leaves = _leaves_to_transmitter(installed, plant)
             if leaves:
                 continue
+        if required.title in _RANGE_TITLES and _tells_a_state(installed):
+            continue
         if not required.column:
             untold.append(required.title)
             continue
@@ -484,7 +515,7 @@ def number_without_unit(installed: Installed, plant: Plant) -> Verdict:
     ['PT-1: LRV 0, URV 10 without a unit in cell, heading or unit column']
     """
     record = installed.record
-    if not record.unitless:
+    if not record.unitless or (_is_ratio(installed.letters) and record.unitless.keys() <= _MEASURED):
         return None
     unitless: _Unitless = plant.once("columns without unit", _unitless)
     fields: list[str] = []

@@ -36,6 +36,12 @@ NO_RANGE = {"LRV": "", "URV": "", "range unit": ""}
         ({"tag": "HS-1", **NO_RANGE, "P&ID": ""}, ""),
         ({"tag": "JB-1", **NO_RANGE, "P&ID": ""}, ""),
         ({"tag": "AIT-1", **NO_RANGE}, "range, range unit"),
+        # A contact tells a state, which has no range; a ratio has no unit.
+        ({"tag": "BE-1", **NO_RANGE, "I/O type": "DI", "signal": "dry contact"}, ""),
+        ({"tag": "AIT-1", **NO_RANGE, "I/O type": "DI"}, ""),
+        ({"tag": "BE-1", **NO_RANGE, "I/O type": "AI", "signal": "dry contact"}, "range, range unit"),
+        ({"tag": "LT-1", **NO_RANGE, "I/O type": "DI"}, "range, range unit"),
+        ({"tag": "FFT-1", "range unit": ""}, ""),
         # A kind that the letters give counts as filled, and so does a word that is not understood.
         ({"tag": "PUMP 7", **NO_RANGE, "P&ID": ""}, "kind"),
         ({"tag": "PUMP 7", **NO_RANGE, "P&ID": "", "kind": "gizmo"}, ""),
@@ -237,6 +243,12 @@ def test_a_number_that_needs_a_unit_has_one(row: Row, expected: str) -> None:
 
 def test_equipment_is_not_asked_for_units() -> None:
     assert tell("DAT05", {"tag": "P-1", "URV": "10", "I/O type": "DI"}, GOOD) == []
+
+
+def test_a_ratio_needs_no_unit() -> None:
+    ratio = {"tag": "FFIC-1", "LRV": "0", "URV": "3", "H": "2.5", "range unit": "-"}
+    assert tell("DAT05", ratio, GOOD) == []
+    assert tell("DAT05", {**ratio, "design pressure": "10"}, GOOD) != []
 
 
 def test_a_number_of_a_row_that_agrees_with_another() -> None:
