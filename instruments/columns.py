@@ -950,6 +950,10 @@ MARKING = _text(
     "ex type",
     "ex i / ex d",
     "ex ia / ex d",
+    "ex marking certificate",
+    "ex marking and certificate",
+    "marking / certificate",
+    "marking certificate",
 )
 CERTIFICATE = _text(
     "certificate",
@@ -2670,6 +2674,7 @@ INSTRUMENTS = SheetKind(
             "commentaire",
             "additional information",
             "general remarks",
+            "comment remark",
         ),
         *device_columns("own"),
     ),

@@ -28,6 +28,7 @@ __all__ = [
     "labelled_settings",
     "number_cell",
     "one_of_several",
+    "part_marking",
     "quantity_cell",
     "text_cell",
     "trouble",
@@ -347,6 +348,28 @@ def joined_cell(cells: Sequence[Value], joints: Sequence[str]) -> str | None:
     return (
         "".join(f"{joint}{_plain(cell)}" for joint, cell in zip(joints, cells, strict=True) if cell is not None) or None
     )
+
+
+_CERTIFICATE_NUMBER: Final = re.compile(
+    r"(?:^|(?<=[\s,;/(]))"
+    r"(?:[A-Z][A-Za-z]{1,9} ?[0-9]{2} ?\.?(?:ATEX|UKEX)[ -]?[A-Z]{0,2} ?[0-9.]{3,10}(?: ?[XU](?![A-Za-z]))?"
+    r"|IECEx [A-Z]{2,6} ?[0-9]{2}\.[0-9]{3,5}(?: ?[XU](?![A-Za-z]))?)"
+)
+
+
+def part_marking(text: str) -> tuple[str, str | None]:
+    """Part a marking from the certificate's number that stands with it; no number where there is none.
+
+    >>> part_marking("Ex ia IIC T4 Ga / BVX 15 ATEX 1012X")
+    ('Ex ia IIC T4 Ga', 'BVX 15 ATEX 1012X')
+    >>> part_marking("BVX 15 ATEX 1012X")
+    ('BVX 15 ATEX 1012X', None)
+    """
+    found = _CERTIFICATE_NUMBER.search(text)
+    if found is None:
+        return text, None
+    rest = f"{text[: found.start()].rstrip(' ,;/(-')} {text[found.end() :].lstrip(' ,;/)-')}".strip()
+    return (rest, found[0]) if rest else (text, None)
 
 
 # --- units ------------------------------------------------------------------------------------------------------------

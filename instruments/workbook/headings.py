@@ -971,6 +971,16 @@ def _join_address(
         return
     parts: dict[str, int] = {}
     for index, heading in levels.items():
+        pieces = [_ADDRESS_WORDS.get(heading_words(piece)) for piece in re.split(r"[/.\-,]", heading.joined)]
+        if match is None and len(pieces) > 1 and pieces[-1] == "Ch":
+            # Rack / Slot / Ch over cells that hold all of it.
+            for other in [field for field, each in columns.items() if each.index == index]:
+                del columns[other]
+            columns["io_address"] = ColumnMatch(
+                column=known["io_address"], index=index, heading=heading.joined, likelihood=0.9
+            )
+            used.add(index)
+            return
         name = _ADDRESS_WORDS.get(heading_words(heading.joined)) or _ADDRESS_WORDS.get(heading_words(heading.texts[-1]))
         if name is not None and name not in parts and content(index).count:
             parts[name] = index

@@ -31,6 +31,7 @@ from instruments.workbook.cell import (
     labelled_settings,
     number_cell,
     one_of_several,
+    part_marking,
     quantity_cell,
     text_cell,
     trouble,
@@ -205,6 +206,7 @@ class _SheetReader:
                     self._read_quantities(name, match, self._units_for(match, base if of_range else None))
         for _, match in labelled:
             self._read_labelled(match, base)
+        self._part_markings()
         self._take_status()
         self._keep_unknown()
         self._add_notes_and_places()
@@ -821,6 +823,21 @@ class _SheetReader:
                 column = self.known.get(name)
                 self.unread[position].update((*column.into, name) if column is not None else (name,))
             self.troubles.append((position, index, names[0], text, trouble(reason)))
+
+    def _part_markings(self) -> None:
+        """Take a certificate's number that stands behind the marking for the certificate, where there is no other."""
+        markings = self.values.get("ex_marking")
+        if markings is None or "certificate" not in self.record_fields:
+            return
+        certificates = self.values.get("certificate") or [None] * self.count
+        known = {text: part_marking(text) for text in set(markings) if text}
+        if not any(number for _, number in known.values()):
+            return
+        for position, text in enumerate(markings):
+            if text and certificates[position] is None and known[text][1]:
+                markings[position], certificates[position] = known[text]
+        self.values["certificate"] = certificates
+        self.places.setdefault("certificate", self.places.get("ex_marking", ()))
 
     def _take_status(self) -> None:
         """Find the rows that are no longer, or not yet, live."""

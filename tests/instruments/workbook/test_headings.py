@@ -429,6 +429,7 @@ ADDRESSES = [
     ("Tag|Rack|Slot|Ch|I/O\nPT-1|1|1|0|AI\nPT-2|1|1|1|AI", 1, "Rack", ((2, "Slot"), (3, "Ch"))),
     ("Tag|Card|Channel|Service\nPT-1|C1|0|Feed\nPT-2|C2|0|Feed", 1, "Slot", ((2, "Ch"),)),
     ("Tag|Address|Channel|Service\nPT-1|1.0|0|Feed\nPT-2|2.0|0|Feed", 1, "", ()),
+    ("Tag|Rack/Slot/Ch|Service\nPT-1|1/1/0|Feed\nPT-2|1/1/1|Feed", 1, "", ()),
     ("Tag|Channel|Service\nPT-1|1.01|Feed\nPT-2|1.02|Feed", 1, "", ()),
 ]
 

@@ -468,6 +468,21 @@ def test_a_set_point_in_a_column_of_ranges_is_a_set_point() -> None:
     assert found.problems == ()
 
 
+def test_a_certificate_behind_the_marking_is_parted_from_it() -> None:
+    found = read(
+
+            "Tag|Ex marking / certificate\nPT-1|Ex ia IIC T4 Ga, BVX 15 ATEX 1012X\nPT-2|"
+            "Ex d IIB T6 (IECEx BVX 16.0007)\nPT-3|Ex d IIB T6"
+
+    )
+    assert all_said(found, "ex_marking", "certificate") == [
+        {"ex_marking": "Ex ia IIC T4 Ga", "certificate": "BVX 15 ATEX 1012X"},
+        {"ex_marking": "Ex d IIB T6", "certificate": "IECEx BVX 16.0007"},
+        {"ex_marking": "Ex d IIB T6"},
+    ]
+    assert [each.address for each in found.records[0].cells("certificate")] == ["B2"]
+
+
 def test_a_card_without_a_channel_is_no_address() -> None:
     found = read("Tag|Card|Channel|Service\nPT-1|C1|1|Feed\nPT-2|C1||Feed")
     assert all_said(found, "card", "io_address") == [{"card": "C1", "io_address": "Slot C1 Ch 1"}, {"card": "C1"}]
