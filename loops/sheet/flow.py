@@ -164,37 +164,43 @@ def wrapped(text: str, style: Style, room_mm: float) -> list[str]:
         if line:
             lines.append(line)
         while width > room_mm:
-            piece = _fitting(word, style, room_mm)
+            piece, taken_mm = _fitting(word, style, room_mm)
             lines.append(piece)
             word = word[len(piece) :]
-            width = width_mm(word, style)
+            width -= taken_mm
         line, used = word, width
     if line:
         lines.append(line)
     return lines or [""]
 
 
-def _fitting(word: str, style: Style, room_mm: float) -> str:
-    """Return the beginning of a word that fits, at least one character."""
+def _fitting(word: str, style: Style, room_mm: float) -> tuple[str, float]:
+    """Return the beginning of a word that fits, at least one character, and its width."""
     advances = style.face.advances
-    room = room_mm / (style.size_pt * MM_PER_POINT / 1000.0)
-    used = 0.0
+    scale = style.size_pt * MM_PER_POINT / 1000.0
+    used = used_after = 0.0
     fits = after = 0
-    for number, sign in enumerate(word, start=1):
-        used += advances[sign]
-        if used > room:
+    for sign in word:
+        width = advances[sign] * scale
+        if fits and used + width > room_mm:
             break
-        fits = number
+        used += width
+        fits += 1
         if sign in _BREAK_AFTER:
-            after = number
-    return word[: after if after * 2 > fits else max(fits, 1)]
+            after, used_after = fits, used
+    return (word[:after], used_after) if after * 2 > fits else (word[:fits], used)
+
+
+_LONGEST_SHORTENED: Final = 2000
+"""Characters of a text that so few lines could hold; the rest need not be measured."""
 
 
 def shortened(text: str, style: Style, room_mm: float, most_lines: int = 1) -> tuple[list[str], bool]:
     """Return a text in at most so many lines, and whether it was cut short; a cut ends in an ellipsis."""
-    lines = wrapped(text, style, room_mm)
-    if len(lines) <= most_lines:
+    lines = wrapped(text[:_LONGEST_SHORTENED], style, room_mm)
+    if len(lines) <= most_lines and len(text) <= _LONGEST_SHORTENED:
         return lines, False
+    lines += [""] * (most_lines - len(lines))
     last = lines[most_lines - 1]
     while last and width_mm(f"{last} \u2026", style) > room_mm:
         last = last[:-1].rstrip()
