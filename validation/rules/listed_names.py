@@ -320,11 +320,13 @@ def name_not_listed(installed: Installed, plant: Plant) -> Verdict:
     names: _Names = plant.once("names and sheets", _names)
     if _all_good(installed, plant, names):
         return None
-    found: dict[tuple[str, str], Found] = {}
+    found: dict[tuple[str, ...], Found] = {}
     absent: dict[str, None] = {}
     for named in _named(installed, plant):
-        field, key = named.field, (named.field, name_key(named.name))
+        field = named.field
         twice = names.twice(field, named.name)
+        # Each cell that has a wrong name is mended by itself; of two entries with one name the sheet is wrong.
+        key = (field, name_key(named.name), *(() if twice else (named.sheet, named.subject)))
         if key in found or (names.listed(field, named.name) and not twice):
             continue
         if field in names.absent and not twice:
@@ -342,7 +344,7 @@ def _not_listed(named: _Named, twice: bool, names: _Names) -> Found:
     return Found(
         values={"title": title, "name": named.name, "sheet": _SHEET_OF[field]},
         fields=(field,),
-        part=title if named.text == "" else f"{title} {named.name}",
+        part=_part(named),
         message="{title} {name} is listed twice on {sheet}, with different figures" if twice else "",
         found=named.name,
         wanted=" or ".join(nearest),
@@ -357,6 +359,15 @@ def _not_listed(named: _Named, twice: bool, names: _Names) -> Found:
         ),
         cells=named.row.cells(named.row_field) if named.row is not None else (),
     )
+
+
+def _part(named: _Named) -> str:
+    title = _TITLE_OF[named.field]
+    if named.sheet == "Cables":
+        return f"{title} of {named.subject}"
+    if named.sheet == "Loops":
+        return f"{title} in the loop list"
+    return f"{title} {named.name}" if named.text else title
 
 
 _KINDS_OF: Final[Mapping[str, frozenset[Kind]]] = {
