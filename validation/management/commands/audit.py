@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import hashlib
 import sys
 from argparse import ArgumentParser
@@ -52,6 +53,9 @@ class Command(BaseCommand):
 
     def handle(self, *args: Any, **options: Any) -> None:
         """Run and leave with the exit status."""
+        # One run, then the process ends: nothing it makes is garbage, and walking millions of records
+        # for cycles costs a fifth of the time.
+        gc.disable()
         sys.exit(self.run_audit(options))
 
     def run_audit(self, options: dict[str, Any]) -> int:
