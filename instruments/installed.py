@@ -51,6 +51,9 @@ class Installed:
         The loop's number, and whether the loop ``column`` or the ``tag`` gave it.
     signals
         The rows that give its signals, one a circuit; `record` itself where there is one.
+    listed
+        The I/O list's rows of its tag, where the index gives it no channel. They are not merged into
+        the record: what the I/O list alone says is seen by the rules about channels, and no other.
     measuring_point
         True where the tag names a measuring point in the older manner: it may carry the
         transmitter's or the element's kind, and is its loop's measurement.
@@ -75,6 +78,7 @@ class Installed:
     loop: str | None = None
     loop_from: str = ""
     signals: tuple[Instrument, ...] = ()
+    listed: tuple[Instrument, ...] = ()
     measuring_point: bool = False
     body: str | None = None
     notes: tuple[str, ...] = ()
@@ -84,6 +88,17 @@ class Installed:
     def letters(self) -> str:
         """The tag's letters; empty without a parsed tag."""
         return self.tag.letters if self.tag and self.tag.letters else ""
+
+    @property
+    def channels(self) -> tuple[Instrument, ...]:
+        """The rows that say on which channels it is: the I/O list's where the index says nothing of them."""
+        return self.listed or self.signals
+
+    @property
+    def io_address(self) -> str | None:
+        """Its first I/O address; None where no row gives one."""
+        own = self.record.io_address
+        return own if own is not None else next((row.io_address for row in self.channels if row.io_address), None)
 
     def reference(self, quantity: Quantity) -> str | None:
         """Return the reference of a pressure: its own, else its body's; None where neither says."""

@@ -37,7 +37,7 @@ from instruments.workbook.lists import Lists
 from instruments.workbook.problem import CellProblem
 from loops.circuit import Circuit, Loop
 from loops.record import Cable, CableType, LoopRow, Termination
-from loops.wiring import loop_key, wire
+from loops.wiring import has_io, loop_key, wire
 
 _RECORD_OWN = frozenset(each.name for each in dataclasses.fields(Record))
 _FIELDS = tuple(each.name for each in dataclasses.fields(Instrument) if each.name not in _RECORD_OWN)
@@ -135,6 +135,7 @@ class Plant:
     assumptions: tuple[str, ...] = ()
     more_problems: tuple[CellProblem, ...] = ()
     _by_tag: dict[Any, tuple[Installed, ...]] = field(default_factory=dict)
+    _asked: dict[str, tuple[Installed, ...]] = field(default_factory=dict)
     _by_loop: dict[str, Loop] = field(default_factory=dict)
     _circuits_of: dict[int, tuple[Circuit, ...]] = field(default_factory=dict)
     _whole: dict[str, Any] = field(default_factory=dict)
@@ -178,7 +179,11 @@ class Plant:
 
     def by_tag(self, text: str) -> tuple[Installed, ...]:
         """Return the live instruments with that tag, however it is written."""
-        return self._by_tag.get(_lookup_key(read_tag(text, profile=self.profile, codes=self.codes)), ())
+        found = self._asked.get(text)
+        if found is None:
+            key = _lookup_key(read_tag(text, profile=self.profile, codes=self.codes))
+            found = self._asked[text] = self._by_tag.get(key, ())
+        return found
 
     def sharing_a_tag(self) -> tuple[tuple[Installed, ...], ...]:
         """Return the groups of live instruments that have one tag though their rows disagree."""
@@ -279,6 +284,7 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         names[name] += 1
         placed.append((record, reading, (record,), name if names[name] == 1 else f"{name} ({names[name]})"))
     drafts = [fitter.install(*each) for each in placed]
+    _give_listed_channels(drafts, io_list, reading_of)
     _give_loops(drafts, data)
     _give_kinds(drafts, codes)
     first = [draft.installed() for draft in drafts]
@@ -576,6 +582,7 @@ class _Draft:
     signals: tuple[Instrument, ...]
     body: str | None
     merged_rows: int
+    listed: tuple[Instrument, ...] = ()
     loop: str | None = None
     loop_from: str = ""
     kind: Kind | None = None
@@ -605,6 +612,7 @@ class _Draft:
             loop=self.loop,
             loop_from=self.loop_from,
             signals=self.signals,
+            listed=self.listed,
             measuring_point=self.measuring_point,
             body=self.body,
             merged_rows=self.merged_rows,
@@ -757,6 +765,21 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
     return tuple(kept)
 
 
+def _give_listed_channels(
+    found: Sequence[_Draft], io_list: Sequence[Instrument], reading_of: Callable[[str], TagReading]
+) -> None:
+    """Give each instrument that has no channel in the index the rows that the I/O list has of it."""
+    rows: dict[Any, list[Instrument]] = defaultdict(list)
+    for row in io_list:
+        if row.tag and has_io(row) and row.status not in NOT_LIVE:
+            rows[_lookup_key(reading_of(row.tag))].append(row)
+    if not rows:
+        return
+    for each in found:
+        if each.live and each.tag is not None and not any(map(has_io, each.signals)):
+            each.listed = tuple(rows.get(_lookup_key(each.tag), ()))
+
+
 def _give_loops(found: Sequence[_Draft], data: PlantData) -> None:
     """Give each instrument its loop: the column's, else the one its tag gives, or the valve it belongs to."""
     valves: dict[tuple[str, str], list[tuple[TagReading, str]]] = defaultdict(list)
@@ -811,7 +834,9 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
     for each in found:
         record = each.record
         loop = loop_key(each.loop)
-        signal = any(row.signal or row.io_type or row.io_address or row.card for row in each.signals)
+        signal = any(
+            row.signal or row.io_type or row.io_address or row.card for row in (*each.signals, *each.listed)
+        )
         point = bool(
             loop
             and loop not in bears
@@ -820,7 +845,7 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
             and each.letters[-1] in "IRCA"
             and each.letters not in codes
             and record.location != "system"
-            and _may_bring_a_measurement(each.signals)
+            and _may_bring_a_measurement((*each.signals, *each.listed))
         )
         letters = "" if each.equipment_tag else each.letters
         asked: dict[str, Any] = {

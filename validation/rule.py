@@ -256,7 +256,7 @@ def _getter(name: str, on: Subject) -> Callable[[Any], Any]:
     return get
 
 
-_INSTALLED_FIELDS = frozenset({"kind", "loop", "marking", "area", "body"})
+_INSTALLED_FIELDS = frozenset({"kind", "loop", "marking", "area", "body", "io_address"})
 _CIRCUIT_FIELDS = frozenset(
     {
         "kind",

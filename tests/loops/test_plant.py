@@ -2,7 +2,7 @@ from __future__ import annotations
 
 import pytest
 
-from validation.example import example_plant
+from validation.example import example_plant, outcomes, said
 
 
 @pytest.mark.parametrize(
@@ -29,3 +29,33 @@ def test_a_tag_names_the_measuring_point_where_no_transmitter_does(row: dict[str
 def test_a_loop_with_a_transmitter_has_no_measuring_point() -> None:
     found = example_plant([{"tag": "FIC-1", "I/O type": "AI"}, {"tag": "FT-1", "I/O type": "AI"}]).instruments
     assert [each.measuring_point for each in found] == [False, False]
+
+
+def listed(index: list[dict[str, str]], io_list: list[dict[str, str]]) -> dict[str, list[str | None]]:
+    plant = example_plant(index, io_list=io_list)
+    return {each.name: [row.io_address for row in each.listed] for each in plant.instruments}
+
+
+def test_an_instrument_without_channel_in_the_index_has_the_io_lists() -> None:
+    index = [
+        {"tag": tag, "service": "Feed", "I/O address": io} for tag, io in (("PT-1", ""), ("FT 2", "A1"), ("LT-3", ""))
+    ]
+    io_list = [
+        {"tag": tag, "I/O type": "AI", "I/O address": io}
+        for tag, io in (("PT 1", "B1"), ("PT-1", "B2"), ("FT-2", "B3"), ("TT-4", "B4"))
+    ]
+    assert listed(index, io_list) == {"PT-1": ["B1", "B2"], "FT 2": [], "LT-3": []}
+
+
+def test_what_the_io_list_alone_says_is_checked() -> None:
+    index = [{"tag": tag, "service": "Feed", "P&ID": "D-1"} for tag in ("PT-1", "FT-2", "LT-3")]
+    io_list = [
+        {"tag": "PT-1", "I/O type": "DI", "I/O address": "B1", "signal": "4-20 mA"},
+        {"tag": "FT-2", "I/O type": "AI", "I/O address": "B1", "signal": "4-20 mA"},
+    ]
+    assert said("ELC16", index, io_list=io_list) == ["PT-1: 4-20 mA does not fit the I/O type DI"]
+    assert said("WIR01", index, io_list=io_list) == ["FT-2, PT-1: FT-2, PT-1 are on one I/O address, B1"]
+    assert outcomes("WIR01", index, io_list=io_list) == {"finding": 2, "unchecked": 1}
+    assert said("ELC16", [{**index[0], "signal": "4-20 mA"}], io_list=[{**io_list[0], "signal": ""}]) == [
+        "PT-1: 4-20 mA does not fit the I/O type DI"
+    ]

@@ -344,9 +344,11 @@ def signal_against_input(installed: Installed, plant: Plant) -> Verdict:
     found: list[Found] = []
     unknown: dict[str, None] = {}
     asked = False
-    several = len(installed.signals) > 1
-    for row in installed.signals or (installed.record,):
+    several = len(installed.channels) > 1
+    for row in installed.channels or (installed.record,):
         signal = row.signal
+        if signal is None and installed.listed and not several:
+            signal = installed.record.signal
         if signal is None and not several and installed.type is not None:
             signal = installed.type.signal
         for field, text, card in _takers(row, plant):
@@ -427,12 +429,13 @@ def _wrong_way(kind: Kind | None, sort: str, taken: frozenset[str]) -> bool:
 
 
 def _misfit(installed: Installed, row: Instrument, signal: str, field: str, text: str) -> Found:
-    several = len(installed.signals) > 1
+    several = len(installed.channels) > 1
     wanted = _io_wanted(installed, signal)
     fixes: tuple[Fix, ...] = ()
     if wanted and field == "io_type":
         # A change of the tag's I/O type would change the rows of its other signals too.
-        fixes = (Fix(text=f"I/O type {wanted}", change={} if several else {"I/O type": wanted}),)
+        change = {} if several or installed.listed else {"I/O type": wanted}
+        fixes = (Fix(text=f"I/O type {wanted}", change=change),)
     return Found(
         values={"signal": signal, "io": text, "card": row.card or ""},
         fields=("signal", field),

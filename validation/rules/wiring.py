@@ -52,7 +52,7 @@ class _Shared:
     def __init__(self, plant: Plant) -> None:
         at: dict[str, list[_Signal]] = defaultdict(list)
         for each in plant.live:
-            for row in each.signals:
+            for row in each.channels:
                 if row.io_address is not None:
                     channel = _CHANNEL.fullmatch(row.io_address)
                     at[channel[1] if channel else name_key(row.io_address)].append((each, row))
@@ -133,7 +133,7 @@ def _is_split_range(carriers: list[Installed], signals: list[_Signal]) -> bool:
 
 def _has_channel(installed: Installed, plant: Plant) -> bool:
     kind = installed.kind
-    if kind is None or installed.record.io_address is not None or kind.wired == "yes":
+    if kind is None or installed.io_address is not None or kind.wired == "yes":
         return True
     if kind.wired == "own":
         return any(row.signal is not None or has_io(row) for row in installed.signals)
