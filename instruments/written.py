@@ -5,10 +5,11 @@ from __future__ import annotations
 from typing import Any
 
 from instruments.column import Column, Reads
-from instruments.kind import kind_from_words
+from instruments.kind import Kind, kind_from_words
 from instruments.number import Number, read_number
 from instruments.quantity import Quantity, read_quantity
-from instruments.unit import read_unit
+from instruments.unit import Unit, UnitMismatch, convert, read_unit
+from instruments.workbook.words import folded, yes_or_no
 
 
 class CannotStand(ValueError):
@@ -21,7 +22,7 @@ def value_of(column: Column, text: str) -> Any:
     Parameters
     ----------
     column
-        The column that the text would stand in.
+        The column that the text would stand in; one that fills several fields has no single value.
     text
         The text, with its unit where the field needs one.
 
@@ -38,28 +39,81 @@ def value_of(column: Column, text: str) -> Any:
     if reads in (Reads.TEXT, Reads.TAG):
         return text
     if reads is Reads.KIND:
-        return kind_from_words(text)
+        return _kind(column, text)
     if reads is Reads.UNIT:
-        return _need(read_unit(text), column, text)
+        return _unit(column, text)
     if reads is Reads.QUANTITY:
-        quantity = read_quantity(text, unit=read_unit(column.unit) if column.unit else None)
-        if not isinstance(quantity, Quantity):
-            raise CannotStand(f"{column.title} cannot be {text!r}")
-        return quantity
+        return _quantity(column, text)
     if reads is Reads.YES_NO:
-        return {"yes": True, "no": False}.get(text)
+        return _yes_or_no(column, text)
     if reads is Reads.WORD:
-        for word, spellings in column.words.items():
-            if text.casefold() in (word.casefold(), *spellings):
-                return word
-        raise CannotStand(f"{column.title} cannot be {text!r}")
-    number = read_number(text.split()[0]) if text.split() else None
+        return _word(column, text)
+    if reads in (Reads.NUMBER, Reads.COUNT):
+        return _number(column, text)
+    raise CannotStand(f"{column.title} fills {' and '.join(column.into)}: give each its own value")
+
+
+def _refused(column: Column, text: str, why: str = "") -> CannotStand:
+    return CannotStand(f"{column.title} cannot be {text!r}{f': {why}' if why else ''}")
+
+
+def _kind(column: Column, text: str) -> Kind:
+    kind = kind_from_words(text)
+    if kind is None:
+        raise _refused(column, text)
+    return kind
+
+
+def _unit(column: Column, text: str) -> Unit:
+    unit = read_unit(text)
+    if unit is None:
+        raise _refused(column, text)
+    return unit
+
+
+def _quantity(column: Column, text: str) -> Quantity:
+    own = read_unit(column.unit) if column.unit else None
+    quantity = read_quantity(text, unit=own)
+    if not isinstance(quantity, Quantity):
+        raise _refused(column, text, quantity.reason)
+    if quantity.unit is None:
+        raise _refused(column, text, "it has no unit")
+    if column.kinds and quantity.unit.kind not in column.kinds:
+        raise _refused(column, text, f"it is no {' or '.join(column.kinds)}")
+    return quantity
+
+
+def _yes_or_no(column: Column, text: str) -> bool:
+    answer = yes_or_no(text)
+    if answer is None:
+        raise _refused(column, text)
+    return answer
+
+
+def _word(column: Column, text: str) -> str:
+    for word, spellings in column.words.items():
+        if text.strip().casefold() in (word.casefold(), *spellings):
+            return word
+    raise _refused(column, text)
+
+
+def _number(column: Column, text: str) -> float | int:
+    """Read a bare number in the column's own unit; another unit behind it is converted."""
+    written, _, behind = text.strip().partition(" ")
+    number = read_number(written)
     if not isinstance(number, Number):
-        raise CannotStand(f"{column.title} cannot be {text!r}")
-    return int(number.value) if reads is Reads.COUNT else float(number.value)
-
-
-def _need(value: Any, column: Column, text: str) -> Any:
-    if value is None:
-        raise CannotStand(f"{column.title} cannot be {text!r}")
-    return value
+        raise _refused(column, text)
+    value = number.value
+    if behind and folded(behind) != folded(column.unit or ""):
+        unit, own = read_unit(behind), read_unit(column.unit) if column.unit else None
+        if unit is None or own is None:
+            raise _refused(column, text, f"{behind} is no unit of it")
+        try:
+            value = convert(value, unit, own)
+        except UnitMismatch as mismatch:
+            raise _refused(column, text, str(mismatch)) from mismatch
+    if column.reads is not Reads.COUNT:
+        return float(value)
+    if value != int(value):
+        raise _refused(column, text, "it counts")
+    return int(value)

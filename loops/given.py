@@ -324,7 +324,7 @@ def _to_the_end(cables: tuple[Cable, ...], box: str | None, plant: Plant) -> tup
             item
             for each in run
             for item in (each.from_item, each.to_item)
-            if item and ends[_key(item)] == 1 and _is_box(item, box, plant)
+            if item and ends[_key(item)] == 1 and is_box(item, box, plant)
         ]
         if not open_ends:
             return tuple(run)
@@ -349,7 +349,8 @@ def _by_end(plant: Plant) -> dict[str, list[Cable]]:
     return found
 
 
-def _is_box(item: str, box: str | None, plant: Plant) -> bool:
+def is_box(item: str, box: str | None, plant: Plant) -> bool:
+    """Whether an item at a cable's end is a junction box: the row's, one of the index, or one by its name."""
     if box and _key(item) == _key(box):
         return True
     known = plant.by_tag(item)

@@ -216,6 +216,10 @@ class Plant:
             self._whole[code] = ask(self)
         return self._whole[code]
 
+    def stand_in(self, whole: Plant) -> None:
+        """Take what is wrong with whole columns from the whole plant that this one is a part of."""
+        self._whole = dict(whole._whole)
+
     def once(self, name: str, make: Callable[[Plant], Any]) -> Any:
         """Return what `make` gives for this plant, made once: lookups that only some rules need."""
         if name not in self._notes:

@@ -295,11 +295,16 @@ _WORSE = [Outcome.FINDING, Outcome.REVIEW, Outcome.UNCHECKED, Outcome.CLEAR, Out
 
 def group_name(group: Sequence[Installed]) -> str:
     """Return a group's name: its tags in natural order, equal tags once."""
-    tags = {_bare(installed.name) for installed in group}
+    tags = {bare_name(installed.name) for installed in group}
     return ", ".join(sorted(tags, key=natural_key))
 
 
-def _bare(name: str) -> str:
+def bare_name(name: str) -> str:
+    """Return a subject's name without the number by which rows of one tag are told apart.
+
+    >>> bare_name("PT-101 (2)"), bare_name("PT-101")
+    ('PT-101', 'PT-101')
+    """
     head, bracket, tail = name.rpartition(" (")
     return head if bracket and tail.endswith(")") and tail[:-1].isdigit() else name
 
