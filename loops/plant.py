@@ -838,9 +838,7 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
     for each in found:
         record = each.record
         loop = loop_key(each.loop)
-        signal = any(
-            row.signal or row.io_type or row.io_address or row.card for row in (*each.signals, *each.listed)
-        )
+        signal = any(row.signal or row.io_type or row.io_address or row.card for row in (*each.signals, *each.listed))
         point = bool(
             loop
             and loop not in bears

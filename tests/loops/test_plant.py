@@ -37,9 +37,7 @@ def listed(index: list[dict[str, str]], io_list: list[dict[str, str]]) -> dict[s
 
 
 def test_an_instrument_without_channel_in_the_index_has_the_io_lists() -> None:
-    index = [
-        {"tag": tag, "service": "Feed", "I/O address": io} for tag, io in (("PT-1", ""), ("FT 2", "A1"), ("LT-3", ""))
-    ]
+    index = [{"tag": tag, "P&ID": "D-1", "I/O address": io} for tag, io in (("PT-1", ""), ("FT 2", "A1"), ("LT-3", ""))]
     io_list = [
         {"tag": tag, "I/O type": "AI", "I/O address": io}
         for tag, io in (("PT 1", "B1"), ("PT-1", "B2"), ("FT-2", "B3"), ("TT-4", "B4"))
