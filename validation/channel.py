@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from instruments.installed import Installed
-from instruments.record import Instrument
 from loops.circuit import ANALOGUE_OUTPUT, DIGITAL_INPUT, DIGITAL_OUTPUT
 from loops.plant import Plant
 from loops.wiring import circuit_kind, has_io
@@ -28,19 +27,9 @@ def channels(installed: Installed, plant: Plant) -> tuple[str, ...]:
             for circuit in plant.circuits_of(installed)
             if circuit.device is installed and circuit.row is not None and circuit.row.kind
         ]
-    if not found and plant.io_list:
-        listed: dict[int, list[Instrument]] = plant.once("rows of the I/O list by instrument", _listed)
-        found = [row.io_type or row.io_address or "" for row in listed.get(id(installed), ())]
+    if not found:
+        found = [row.io_type or row.io_address or "" for row in installed.listed]
     return tuple(found)
-
-
-def _listed(plant: Plant) -> dict[int, list[Instrument]]:
-    listed: dict[int, list[Instrument]] = {}
-    for row in plant.io_list:
-        if row.tag and has_io(row):
-            for each in plant.by_tag(row.tag):
-                listed.setdefault(id(each), []).append(row)
-    return listed
 
 
 def takes_a_sensor(installed: Installed, plant: Plant) -> bool:

@@ -136,9 +136,9 @@ def _has_channel(installed: Installed, plant: Plant) -> bool:
     if kind is None or installed.io_address is not None or kind.wired == "yes":
         return True
     if kind.wired == "own":
-        return any(row.signal is not None or has_io(row) for row in installed.signals)
+        return any(row.signal is not None or has_io(row) for row in installed.channels)
     if kind.wired != "element":
-        return any(row.io_address is not None for row in installed.signals)
+        return False
     loop = plant.loop_of(installed)
     return loop is None or transmitter_of(installed, loop.members) is None
 
@@ -291,12 +291,14 @@ def channel_missing(installed: Installed, plant: Plant) -> Verdict:
         return Unchecked("kind")
     record = installed.record
     if kind.wired == "no":
-        io = next((row.io_type or row.io_address or "" for row in installed.signals if has_io(row)), None)
-        if io is None:
+        row = next((row for row in installed.channels if has_io(row)), None)
+        if row is None:
             lost = [title for field, title in _IO if field in record.unread]
             return Unchecked(*lost) if lost else None
+        io = row.io_type or row.io_address or ""
         return Found(
             values={"kind": kind.with_article, "io": io},
+            cells=tuple(cell for field, _ in _IO for cell in row.cells(field)),
             fields=("io_type", "io_address", "kind"),
             message="{kind}, which is local, has I/O: {io}",
             found=io,

@@ -88,7 +88,7 @@ def test_two_rows_without_a_tag_are_two_subjects() -> None:
         ([{"tag": "PT-1", "service": "a"}, {"tag": "PT-1", "service": "b", "status": "deleted"}], []),
         ([{"tag": "P-1", "service": "a", "I/O type": "DI"}, {"tag": "P-1", "service": "b", "I/O type": "DO"}], []),
         ([{"tag": "Fan A1 on", "service": "a"}, {"tag": "Fan A-1 on", "service": "b"}, "Boiler 1 on", "Boiler 2 on"],
-         ["FAN A-1 ON: 2 rows have the tag FAN A-1 ON and disagree in service: b / a"]),
+         ["Fan A-1 on: 2 rows have the tag FAN A-1 ON and disagree in service: b / a"]),
         ([{"tag": "Bay 1-12 on", "service": "a"}, {"tag": "Bay 11-2 on", "service": "b"}, "Boiler 1 on", "Boiler 2 on"],
          []),
     ],
@@ -635,7 +635,7 @@ def test_who_is_asked_for_a_unit() -> None:
     ],
 )  # fmt: skip
 def test_a_cell_holds_one_tag(rows: list[str | Row], expected: list[str]) -> None:
-    assert tell("TAG13", *rows, "LT-9") == expected
+    assert tell("TAG13", *rows, "LT-7", "LT-8", "LT-9") == expected
 
 
 def test_the_tags_of_a_cell_are_audited_as_they_are_meant() -> None:

@@ -205,6 +205,14 @@ def test_a_blank_in_the_index_is_found_though_another_list_fills_it() -> None:
     ]
 
 
+def test_what_the_other_list_says_of_a_channel() -> None:
+    rows = [{"tag": tag, "line": "L-1", "LRV": "0 bar"} for tag in ("PT-1", "PT-2", "PG-3")]
+    io_list = [{"tag": tag, "I/O type": "AI", "I/O address": "R1.1"} for tag in ("PT-1", "PT-2", "PG-3")]
+    assert tell("WIR01", *rows[:2], io_list=io_list) == [one("PT-1, PT-2", "R1.1")]
+    assert tell("WIR06", *rows, io_list=io_list) == ["PG-3: a gauge, which is local, has I/O: AI"]
+    assert cells("WIR06", *rows, io_list=io_list) == [["IO list B4", "IO list C4"]]
+
+
 def test_a_blank_channel_tells_its_reason() -> None:
     blank = {"I/O type": "", "I/O address": "by vendor", "line": "L-1"}
     each = found("WIR06", {"tag": "PT-1", **blank}, {"tag": "PT-9", "I/O type": "AI", "line": "L-1"})
