@@ -5,12 +5,13 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from typing import Final, NamedTuple
 
+from instruments.area import Area
 from instruments.installed import Installed
 from instruments.kind import Kind, touches_process
 from instruments.measurement import Measurement, amount, at, in_unit
 from instruments.pressure import stated_reference
 from instruments.quantity import Quantity, format_number
-from instruments.record import Instrument
+from instruments.record import DeviceType, Instrument
 from instruments.span import above, below
 from instruments.unit import Unit
 from loops.plant import Plant
@@ -594,11 +595,23 @@ def ambient_outside_type(installed: Installed, plant: Plant) -> Verdict:
 _KELVIN: Final = 273.15
 
 
+def _bears(device: DeviceType, area: Area) -> bool:
+    """Whether all four limits are given, and the area's lie within the type's."""
+    low, high = device.ambient_min, device.ambient_max
+    if low is None or high is None or low.base is None or high.base is None:
+        return False
+    if area.ambient_min_c is None or area.ambient_max_c is None:
+        return False
+    return low.base <= area.ambient_min_c + _KELVIN and area.ambient_max_c + _KELVIN <= high.base
+
+
 @body_check("PRO06")
 def outside_ambient(measurement: Measurement, plant: Plant) -> Verdict:
     """PRO06 without its fixes."""
     installed = measurement.installed
     area, device = installed.area, installed.type
+    if area is not None and device is not None and _bears(device, area):
+        return None
     found: list[Found] = []
     blank: list[str] = []
     for name, end, upper in (("ambient_min", "ambient_min_c", False), ("ambient_max", "ambient_max_c", True)):
