@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Iterable, Sequence
+from dataclasses import replace
 from functools import partial
 from itertools import pairwise
 from typing import Final, NamedTuple
@@ -20,7 +21,7 @@ from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_va
 from instruments.signal_words import carries_live_zero, io_types, signal_classes
 from instruments.span import above, below, percent_of_span
 from loops.plant import Plant
-from loops.redundancy import how_redundant, redundant_groups
+from loops.redundancy import how_redundant, read_voting, redundant_groups
 from validation.bodies import measured
 from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.mending import each_found, read_both_ways, rounded_down, rounded_up, written
@@ -70,6 +71,36 @@ def _has_trip(installed: Installed, plant: Plant) -> bool:
         or "trip" in record.unread
         or "trip" in record.unitless
     )
+
+
+def _trips_at_outer_alarms(installed: Installed, plant: Plant) -> bool:
+    """Whether its HH and LL are what trips: of a safety device, on a list that has no column for trips.
+
+    HH and LL are alarms elsewhere; but a list without such a column has nowhere else to write a trip.
+    """
+    record = installed.record
+    if record.setting_hh is None and record.setting_ll is None:
+        return False
+    if plant.has_column("trip") or _has_trip(installed, plant):
+        return False
+    return bool(
+        record.system == "safety"
+        or record.safety_function
+        or read_voting(record.voting)
+        or (record.sil and any(level in record.sil for level in "1234"))
+    )
+
+
+def _trips(installed: Installed, plant: Plant) -> list[tuple[str | None, str, Quantity]]:
+    """Return the trips: direction, field and value of each."""
+    pair = trip_of(installed)
+    if pair is not None:
+        return [(trip_direction(installed), *pair)]
+    if not _trips_at_outer_alarms(installed, plant):
+        return []
+    record = installed.record
+    outer = (("high", "setting_hh", record.setting_hh), ("low", "setting_ll", record.setting_ll))
+    return [(direction, name, value) for direction, name, value in outer if value is not None]
 
 
 def trip_direction(installed: Installed) -> str | None:
@@ -706,7 +737,10 @@ def _design_field(installed: Installed, plant: Plant) -> str | None:
     "SET04",
     severity=Severity.DANGER,
     on=Subject.INSTRUMENT,
-    applies=lambda installed, plant: _has_trip(installed, plant) and _design_field(installed, plant) is not None,
+    applies=lambda installed, plant: (
+        (_has_trip(installed, plant) or _trips_at_outer_alarms(installed, plant))
+        and _design_field(installed, plant) is not None
+    ),
     message="the high trip {trip} is above the design limit {design}",
     basis="IEC 61511-1:2016 (from memory); common practice",
 )
@@ -724,12 +758,13 @@ def trip_above_design(installed: Installed, plant: Plant) -> Verdict:
     >>> said("SET04", [{**row, "design pressure": "12 barg"}])
     []
     """
-    direction = trip_direction(installed)
-    if direction == "low":
+    trips = [trip for trip in _trips(installed, plant) if trip[0] != "low"]
+    direction = trips[0][0] if trips else trip_direction(installed)
+    if direction == "low" or (not trips and not _has_trip(installed, plant)):
         return NotApplicable()
     name = _design_field(installed, plant)
     assert name is not None
-    pair = trip_of(installed)
+    pair = trips[0][1:] if trips else None
     design: Quantity | None = getattr(installed.record, name)
     blank = [title_of(name)] if design is None else []
     if pair is None:
@@ -751,7 +786,7 @@ def trip_above_design(installed: Installed, plant: Plant) -> Verdict:
         return Found(
             values={"trip": str(trip), "design": str(design)},
             fields=(trip_name, name),
-            part="trip",
+            part=title if trip_name in _OUTER else "trip",
             found=str(trip),
             wanted=f"at most {design}",
             off_by=amount(numbers[0] - numbers[1], trip.unit) if trip.unit is not None else "",
@@ -1022,7 +1057,8 @@ def _tripping(plant: Plant) -> frozenset[Installed]:
     return frozenset(
         each
         for group in redundant_groups(plant)
-        if group.by == "declared" or any(_has_trip(each, plant) for each in group.members)
+        if group.by == "declared"
+        or any(_has_trip(each, plant) or _trips_at_outer_alarms(each, plant) for each in group.members)
         for each in group.members
     )
 
@@ -1032,7 +1068,7 @@ def _tripping(plant: Plant) -> frozenset[Installed]:
     severity=Severity.DANGER,
     on=Subject.GROUP,
     applies=lambda installed, plant: installed in plant.once("redundant and tripping", _tripping),
-    needs=("trip|set_pressure",),
+    needs=("trip|set_pressure|setting_hh|setting_ll",),
     groups=lambda plant: (group.members for group in redundant_groups(plant)),
     alone_is_clear=False,
     message="redundant devices with different trip settings: {settings}",
@@ -1055,11 +1091,42 @@ def redundant_trips_differ(group: tuple[Installed, ...], plant: Plant) -> Verdic
     >>> said("SET08", rows)
     []
     """
-    pairs = [pair for pair in map(trip_of, group) if pair is not None]
-    if len(pairs) < len(group):
+    trips = [_trips(each, plant) for each in group]
+    if any(len(each) > 1 or (each and each[0][1] in _OUTER) for each in trips):
+        return _outer_trips_differ(group, trips, plant)
+    if not all(trips):
         return Unchecked("trip")
+    return _trips_differ(group, [each[0] for each in trips], plant)
+
+
+_OUTER: Final = ("setting_hh", "setting_ll")
+
+
+def _outer_trips_differ(
+    group: tuple[Installed, ...], trips: Sequence[Sequence[tuple[str | None, str, Quantity]]], plant: Plant
+) -> Verdict:
+    """Compare the HH of all, and the LL of all."""
+    found: list[Found] = []
+    unchecked: dict[str, None] = {}
+    for name in _OUTER:
+        given = [next((trip for trip in each if trip[1] == name), None) for each in trips]
+        of_each = [trip for trip in given if trip is not None]
+        if not of_each:
+            continue
+        verdict = Unchecked("trip") if len(of_each) < len(group) else _trips_differ(group, of_each, plant)
+        if isinstance(verdict, Unchecked):
+            unchecked.update(dict.fromkeys(verdict.fields))
+        elif isinstance(verdict, Found):
+            found.append(replace(verdict, part=title_of(name)))
+    return found or (Unchecked(*unchecked) if unchecked else None)
+
+
+def _trips_differ(
+    group: tuple[Installed, ...], given: Sequence[tuple[str | None, str, Quantity]], plant: Plant
+) -> Verdict:
+    pairs = [(name, trip) for _, name, trip in given]
     trips = [trip for _, trip in pairs]
-    directions = [trip_direction(each) for each in group]
+    directions = [direction for direction, _, _ in given]
     opposed = len({direction for direction in directions if direction}) > 1
 
     def check(numbers: Numbers) -> Verdict:
@@ -1090,7 +1157,9 @@ _SWITCHED: Final = frozenset({"contact", "volts", "digital"})
 
 def _sends_and_trips(installed: Installed, plant: Plant) -> bool:
     """Whether it trips on a signal that can fail to one side: a contact has no such side."""
-    if installed.kind is Kind.SWITCH or not _has_trip(installed, plant):
+    if installed.kind is Kind.SWITCH:
+        return False
+    if not _has_trip(installed, plant) and not _trips_at_outer_alarms(installed, plant):
         return False
     classes = [signal_classes(row.signal) for row in installed.signals if row.signal]
     return not (classes and all(each and each <= _SWITCHED for each in classes))
@@ -1121,7 +1190,12 @@ def failure_hides_trip(installed: Installed, plant: Plant) -> Verdict:
     []
     """
     record = installed.record
-    direction = trip_direction(installed)
+    directions = {direction for direction, _, _ in _trips(installed, plant)} or {trip_direction(installed)}
+    both_ends = len(directions) > 1
+    if both_ends:
+        # A trip at either end: no failure direction serves both.
+        directions.discard(record.failure_direction)
+    direction = directions.pop()
     if direction is None:
         return Unchecked("trip direction")
     if record.bad_signal_detection or record.failure_direction == direction:
@@ -1133,7 +1207,7 @@ def failure_hides_trip(installed: Installed, plant: Plant) -> Verdict:
         found=f"fails {record.failure_direction}",
         wanted=f"fails {direction}, or bad-signal detection",
         fixes=(
-            Fix(text=f"failure direction {direction}", change={column: direction}),
+            *(() if both_ends else (Fix(text=f"failure direction {direction}", change={column: direction}),)),
             Fix(text="bad-signal detection yes", change={"bad-signal detection": "yes"}),
         ),
     )
