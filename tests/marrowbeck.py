@@ -13,9 +13,11 @@ import tomllib
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cache
+from io import BytesIO
 from pathlib import Path
 from types import MappingProxyType
 from typing import Any
+from zipfile import ZipFile
 
 from openpyxl import Workbook
 from openpyxl.cell.cell import Cell
@@ -28,6 +30,7 @@ from instruments.workbook.lists import read_lists
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import Audit, audit
+from validation.finding import Finding, Outcome
 
 FOLDER = Path(__file__).parent.parent / "fixtures" / "marrowbeck"
 DEMO = FOLDER / "instrument-list.xlsx"
@@ -41,6 +44,7 @@ Rows = list[list[str]]
 Sheets = dict[str, Rows]
 
 _NUMBER = re.compile(r"-?(?:0|[1-9]\d*)(?:\.\d+)?")
+_ALSO = re.compile(r"(?P<review>review )?(?P<rule>[A-Z]{3}\d\d)(?: (?P<subject>[^(]+?))?(?: \((?P<part>.+)\))?")
 _BOLD = Font(bold=True)
 _TITLE = Font(bold=True, size=14)
 _GREY = PatternFill("solid", start_color="D9D9D9")
@@ -71,12 +75,23 @@ class Look:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Edit:
+    """Cells of one row with their old and new text; `row` is what the sheet's key column says."""
+
+    sheet: str
+    row: str
+    cells: Mapping[str, tuple[str, str]]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Change:
     """One mistake: the row it is made in, the cells with their old and new text, and what must be found.
 
     `row` is what the sheet's key column says. A `copied` change leaves the row alone and makes its
-    edits in a copy beneath it. `also` are the companions: other rules that the same mistake breaks.
-    Both name the rule, or the rule and the subject (``SET07 PT-1001``) where that is not the row.
+    edits in a copy beneath it, an `inserted` one in a blank row beneath it. `more` are edits of other
+    rows that the same mistake takes. `also` are the companions: what the same mistake breaks besides.
+    Each names the rule, the subject where that is not the row, and the part if there is one:
+    ``SET07 PT-1001 (H)``; before it stands ``review`` where it is one.
     """
 
     number: int
@@ -89,7 +104,32 @@ class Change:
     part: str = ""
     review: bool = False
     copied: bool = False
+    inserted: bool = False
+    more: tuple[Edit, ...] = ()
     also: tuple[str, ...] = ()
+
+    @property
+    def about(self) -> str:
+        """The subject of what must be found."""
+        return self.subject or self.row
+
+    @property
+    def places(self) -> frozenset[tuple[str, str]]:
+        """The rows that it touches."""
+        return frozenset(((self.sheet, self.row), *((each.sheet, each.row) for each in self.more)))
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Near:
+    """A change that stays just inside a rule: nothing is found, and the rule says `says` of the subject.
+
+    `beyond` is the same change one step further, where something is found.
+    """
+
+    change: Change
+    says: str = "clear"
+    because: tuple[str, ...] = ()
+    beyond: Change | None = None
 
 
 @cache
@@ -115,16 +155,67 @@ def twin_rows() -> Sheets:
 @cache
 def changes() -> tuple[Change, ...]:
     """Return the mistakes that make the demo of the clean twin."""
-    told = tomllib.loads((FOLDER / "changes.toml").read_text(encoding="utf-8"))["change"]
+    return _changes_in("changes.toml")
+
+
+@cache
+def branches() -> tuple[Change, ...]:
+    """Return mistakes beside those of the demo: the other branches and ends of each rule."""
+    return _changes_in("branches.toml")
+
+
+@cache
+def nears() -> tuple[Near, ...]:
+    """Return the changes that stay just inside a rule."""
+    told = tomllib.loads((FOLDER / "near.toml").read_text(encoding="utf-8"))["near"]
+    return tuple(_near_from(number, **each) for number, each in enumerate(told, start=1))
+
+
+def change_from(number: int, *, cells: Mapping[str, Sequence[str]], sheet: str = INDEX, **told: Any) -> Change:
+    """Return a change as changes.toml tells it: cells by heading, each with its old and its new text."""
+    more = tuple(_edit_from(**each) for each in told.pop("more", ()))
+    edit = _edit_from(cells=cells, sheet=sheet, row=told["row"])
+    return Change(number=number, sheet=sheet, cells=edit.cells, more=more, **_with_tuples(told))
+
+
+def _changes_in(name: str) -> tuple[Change, ...]:
+    told = tomllib.loads((FOLDER / name).read_text(encoding="utf-8"))["change"]
     return tuple(change_from(number, **each) for number, each in enumerate(told, start=1))
 
 
-def change_from(number: int, cells: Mapping[str, Sequence[str]], **told: Any) -> Change:
-    """Return a change as changes.toml tells it: cells by heading, each with its old and its new text."""
-    return Change(
-        number=number,
-        cells=MappingProxyType({heading: (old, new) for heading, (old, new) in cells.items()}),
-        **_with_tuples(told),
+def _near_from(
+    number: int,
+    *,
+    says: str = "clear",
+    because: Sequence[str] = (),
+    beyond: Mapping[str, str] | None = None,
+    **told: Any,
+) -> Near:
+    only_beyond = {name: told.pop(name) for name in ("part", "also", "review") if name in told}
+    if "beyond_subject" in told:
+        only_beyond["subject"] = told.pop("beyond_subject")
+    change = change_from(number, **told)
+    further = None
+    if beyond is not None:
+        made = dict(told)
+        made["cells"] = {**told["cells"]}
+        for heading, text in beyond.items():
+            old = told["cells"][heading][0] if heading in told["cells"] else _cell_of_twin(change, heading)
+            made["cells"][heading] = [old, text]
+        further = change_from(number, **{**made, **only_beyond})
+    elif only_beyond:
+        raise ValueError(f"near miss {number}: {', '.join(only_beyond)} and nothing beyond")
+    return Near(change=change, says=says, because=tuple(because), beyond=further)
+
+
+def _cell_of_twin(change: Change, heading: str) -> str:
+    rows = twin_rows()[change.sheet]
+    return rows[row_number(change.sheet, rows, change.row)][headings(change.sheet, rows).index(heading)]
+
+
+def _edit_from(*, cells: Mapping[str, Sequence[str]], row: str, sheet: str = INDEX) -> Edit:
+    return Edit(
+        sheet=sheet, row=row, cells=MappingProxyType({heading: (old, new) for heading, (old, new) in cells.items()})
     )
 
 
@@ -163,24 +254,39 @@ def with_changes(sheets: Sheets, made: Iterable[Change]) -> Sheets:
     A row is looked for by the name it has in `sheets`, so that a change of tags hides no other change.
     """
     result = {title: [list(row) for row in rows] for title, rows in sheets.items()}
-    copies: list[tuple[str, int, list[str]]] = []
+    new_rows: list[tuple[str, int, list[str]]] = []
     for change in made:
-        rows = sheets[change.sheet]
-        at = row_number(change.sheet, rows, change.row)
-        names = headings(change.sheet, rows)
-        target = list(rows[at]) if change.copied else result[change.sheet][at]
-        for heading, (old, new) in change.cells.items():
-            column = names.index(heading)
-            if rows[at][column] != old:
-                raise ValueError(
-                    f"change {change.number}: {change.row}, {heading} holds {rows[at][column]!r}, not {old!r}"
-                )
-            target[column] = new
-        if change.copied:
-            copies.append((change.sheet, at, target))
-    for title, at, row in sorted(copies, key=lambda copy: copy[1], reverse=True):
+        at = row_number(change.sheet, sheets[change.sheet], change.row)
+        before = sheets[change.sheet][at]
+        target = result[change.sheet][at]
+        if change.copied or change.inserted:
+            before = target = list(before) if change.copied else [""] * len(before)
+            new_rows.append((change.sheet, at, target))
+        _make(change.number, change.sheet, change.row, change.cells, sheets, list(before), target)
+        for edit in change.more:
+            at = row_number(edit.sheet, sheets[edit.sheet], edit.row)
+            before, target = sheets[edit.sheet][at], result[edit.sheet][at]
+            _make(change.number, edit.sheet, edit.row, edit.cells, sheets, before, target)
+    for title, at, row in sorted(new_rows, key=lambda new: new[1], reverse=True):
         result[title].insert(at + 1, row)
     return result
+
+
+def _make(
+    number: int,
+    sheet: str,
+    name: str,
+    cells: Mapping[str, tuple[str, str]],
+    sheets: Sheets,
+    before: Sequence[str],
+    target: list[str],
+) -> None:
+    names = headings(sheet, sheets[sheet])
+    for heading, (old, new) in cells.items():
+        column = names.index(heading)
+        if before[column] != old:
+            raise ValueError(f"change {number}: {name}, {heading} holds {before[column]!r}, not {old!r}")
+        target[column] = new
 
 
 def demo_rows() -> Sheets:
@@ -216,38 +322,42 @@ def audit_of(*paths: Path) -> Audit:
 
 
 def found(result: Audit) -> list[str]:
-    """Return what an audit found and asks, in the words of `expected`: rule and subject."""
-    return sorted(
-        _line(each.rule, *((THE_LIST, each.part) if each.subject == result.plant.file_name else (each.subject, "")))
-        for each in result.findings
-    )
+    """Return what an audit found and asks, in the words of `expected`."""
+    return sorted(_found_line(each, result) for each in result.findings)
+
+
+def _found_line(each: Finding, result: Audit) -> str:
+    subject = THE_LIST if each.subject == result.plant.file_name else each.subject
+    return _line(each.rule, subject, each.part, review=each.outcome is Outcome.REVIEW)
+
+
+def expected(made: Iterable[Change]) -> list[str]:
+    """Return what must be found besides the twin's reviews: rule, subject and in brackets the part."""
+    lines = []
+    for change in made:
+        lines.append(_line(change.rule, change.about, change.part, review=change.review))
+        for also in change.also:
+            told = _ALSO.fullmatch(also)
+            assert told is not None
+            lines.append(
+                _line(told["rule"], told["subject"] or change.about, told["part"] or "", review=bool(told["review"]))
+            )
+    return sorted(lines)
+
+
+def reviews() -> list[str]:
+    """Return the reviews of the clean twin, as reviews.txt lists them with their reasons."""
+    lines = (FOLDER / "reviews.txt").read_text(encoding="utf-8").splitlines()
+    return sorted(f"review {line.split(':')[0]}" for line in lines if line and not line.startswith("#"))
 
 
 def findings_text(result: Audit) -> str:
     """Return the findings and reviews of an audit as text, a line each, in the order of the report."""
     lines = []
     for each in result.findings:
-        subject = THE_LIST if each.subject == result.plant.file_name else each.subject
-        word = each.outcome.value if each.outcome.value == "review" else each.severity.value
-        lines.append(f"{word} {_line(each.rule, subject, each.part)}")
+        line = _found_line(each, result)
+        lines.append(line if each.outcome is Outcome.REVIEW else f"{each.severity.value} {line}")
     return "".join(f"{line}\n" for line in lines)
-
-
-def expected(made: Iterable[Change]) -> list[str]:
-    """Return what must be found besides the twin's reviews: rule and subject, in brackets the part."""
-    lines = []
-    for change in made:
-        lines.append(_line(change.rule, change.subject or change.row, change.part))
-        for also in change.also:
-            rule, _, subject = also.partition(" ")
-            lines.append(_line(rule, subject or change.subject or change.row, ""))
-    return sorted(lines)
-
-
-def reviews() -> list[str]:
-    """Return the reviews of the clean twin: rule and subject, as reviews.txt lists them with their reasons."""
-    lines = (FOLDER / "reviews.txt").read_text(encoding="utf-8").splitlines()
-    return sorted(line.split(":")[0] for line in lines if line and not line.startswith("#"))
 
 
 def shuffled(sheets: Sheets, seed: int) -> Sheets:
@@ -319,8 +429,9 @@ def typed(text: str, *, as_text: bool = False) -> str | int | float | None:
     return int(number) if number.is_integer() else number
 
 
-def _line(rule: str, subject: str, part: str) -> str:
-    return f"{rule} {subject} ({part})" if part else f"{rule} {subject}"
+def _line(rule: str, subject: str, part: str, *, review: bool = False) -> str:
+    line = f"{rule} {subject} ({part})" if part else f"{rule} {subject}"
+    return f"review {line}" if review else line
 
 
 def _with_tuples(told: Mapping[str, Any]) -> Any:
@@ -382,7 +493,8 @@ def _write_sheet(sheet: Worksheet, look: Look, rows: Rows) -> None:
             _dress(cell, look, number, first, data=data)
             if number >= first and name in look.decimals:
                 cell.number_format = look.decimals[name]
-    _merge_headings(sheet, look, rows)
+    for top, left, bottom, right in merged_headings(look, rows):
+        sheet.merge_cells(start_row=top, end_row=bottom, start_column=left, end_column=right)
     _set_widths(sheet, look, names)
     if look.heading:
         sheet.freeze_panes = sheet.cell(first, 1 + names.index(look.key) + 1)
@@ -401,21 +513,24 @@ def _dress(cell: Cell, look: Look, number: int, first: int, *, data: bool) -> No
         cell.font, cell.fill = _BOLD, _SECTION
 
 
-def _merge_headings(sheet: Worksheet, look: Look, rows: Rows) -> None:
+def merged_headings(look: Look, rows: Rows) -> list[tuple[int, int, int, int]]:
+    """Return the merged ranges of a heading of two rows: first row, first column, last row, last column, from 1."""
     if look.heading_rows < 2:
-        return
+        return []
     top, bottom = look.heading, look.heading + 1
     above, below = rows[top - 1], rows[bottom - 1]
+    merged = []
     column = 0
     while column < len(above):
         end = column
         while end + 1 < len(above) and below[end + 1] and not above[end + 1]:
             end += 1
         if end > column:
-            sheet.merge_cells(start_row=top, end_row=top, start_column=column + 1, end_column=end + 1)
+            merged.append((top, column + 1, top, end + 1))
         elif not below[column]:
-            sheet.merge_cells(start_row=top, end_row=bottom, start_column=column + 1, end_column=column + 1)
+            merged.append((top, column + 1, bottom, column + 1))
         column = end + 1
+    return merged
 
 
 def _set_widths(sheet: Worksheet, look: Look, names: Sequence[str]) -> None:
@@ -426,5 +541,15 @@ def _set_widths(sheet: Worksheet, look: Look, names: Sequence[str]) -> None:
             sheet.column_dimensions[letter].hidden = True
 
 
+def _parts(workbook: bytes) -> dict[str, bytes]:
+    """Return what a workbook holds but for the hour at which it was saved."""
+    with ZipFile(BytesIO(workbook)) as package:
+        return {name: package.read(name) for name in package.namelist() if name != "docProps/core.xml"}
+
+
 if __name__ == "__main__":
-    FINDINGS.write_text(findings_text(audit_of(write_demo(DEMO))), encoding="utf-8")
+    before = DEMO.read_bytes()
+    write_demo(DEMO)
+    if _parts(before) == _parts(DEMO.read_bytes()):
+        DEMO.write_bytes(before)
+    FINDINGS.write_text(findings_text(audit_of(DEMO)), encoding="utf-8")

@@ -1,25 +1,17 @@
 """The demo plant: its lists, the workbook made of them, and what the audit says of both."""
 
 from collections import Counter
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable
 from pathlib import Path
-from typing import Any
 
 import openpyxl
 import pytest
 from python_calamine import CalamineWorkbook
 
-from instruments.column import SheetKind
-from instruments.workbook import lists
-from instruments.workbook.headings import SheetMatch
-from instruments.workbook.reader import read_file
-from instruments.workbook.sheet import Sheet
-from loops.plant import assemble
 from tests.marrowbeck import (
     DEMO,
     FINDINGS,
     INDEX,
-    KINDS,
     PACKAGE,
     Change,
     Sheets,
@@ -44,8 +36,7 @@ from tests.marrowbeck import (
     write_twin,
     write_workbook,
 )
-from validation.audit import Audit, audit
-from validation.finding import Outcome
+from tests.twin import twin
 from validation.rule import load_rules
 
 
@@ -258,46 +249,8 @@ def test_the_findings_of_the_demo_are_those_of_the_text() -> None:
     assert findings_text(audit_of(DEMO)).splitlines() == FINDINGS.read_text(encoding="utf-8").splitlines()
 
 
-@pytest.fixture(scope="module")
-def audit_with(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Callable[[Change], Audit]]:
-    """Audit the twin with one change; what the change does not touch is read once, and headings are matched once."""
-    matched: dict[str, SheetMatch | None] = {}
-    match = lists.match_sheet
-
-    def match_once(sheet: Sheet, kinds: Sequence[SheetKind], **told: Any) -> SheetMatch | None:
-        key = f"{Path(sheet.file).name} {sorted(told)}"
-        if key not in matched:
-            matched[key] = match(sheet, kinds, **told)
-        return matched[key]
-
-    folder = tmp_path_factory.mktemp("change")
-    twin = twin_rows()
-    unchanged = {path.name: read_file(path) for path in write_files(folder / "twin", twin)}
-
-    def run(change: Change) -> Audit:
-        title = change.sheet
-        (changed,) = write_files(folder, {title: with_changes(twin, [change])[title]})
-        sheets = [
-            sheet
-            for name, each in unchanged.items()
-            for sheet in (read_file(changed) if name == changed.name else each)
-        ]
-        return audit(assemble(lists.records_of_sheets(sheets, KINDS)), raise_errors=True)
-
-    with pytest.MonkeyPatch.context() as patch:
-        patch.setattr(lists, "match_sheet", match_once)
-        yield run
-
-
 @pytest.mark.parametrize("change", changes(), ids=lambda each: f"{each.number}-{each.rule}-{each.row}")
-def test_a_change_alone_gives_its_rule_and_its_companions(
-    change: Change, audit_with: Callable[[Change], Audit]
-) -> None:
-    result = audit_with(change)
-    lines = Counter(line.replace("instrument-index:", f"{INDEX}:") for line in found(result))
+def test_a_change_alone_gives_its_rule_and_its_companions(change: Change) -> None:
+    lines = Counter(found(twin().audit(with_changes(twin().rows, [change]))))
     lines.subtract(expected([change]) + reviews())
     assert {line: count for line, count in lines.items() if count} == {}
-    own = [
-        each for each in result.findings if each.rule == change.rule and f"{each.rule} {each.subject}" not in reviews()
-    ]
-    assert {each.outcome is Outcome.REVIEW for each in own} == {change.review}
