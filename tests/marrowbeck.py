@@ -26,7 +26,7 @@ from openpyxl.utils import get_column_letter
 from openpyxl.worksheet.worksheet import Worksheet
 
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
-from instruments.workbook.lists import read_lists
+from instruments.workbook.files import read_lists
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import Audit, audit

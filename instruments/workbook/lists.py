@@ -1,8 +1,7 @@
-"""Files in, all the records of all their sheets out: the one entrance to reading a plant's lists."""
+"""Sheets in, all their records out: which kind each is, the plant's data, then the rows."""
 
 from __future__ import annotations
 
-import os
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import PurePath
@@ -14,13 +13,12 @@ from instruments.plant_data import PlantData
 from instruments.workbook.headings import SheetMatch, match_sheet
 from instruments.workbook.normalise import SheetRecords, read_records
 from instruments.workbook.number_format import as_text
-from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet, read_plant_toml
+from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet
 from instruments.workbook.problem import CellProblem
-from instruments.workbook.reader import read_file
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.words import folded
 
-__all__ = ["Lists", "NoTags", "SheetReport", "read_lists", "records_of_sheets"]
+__all__ = ["Lists", "NoTags", "SheetReport", "records_of_sheets"]
 
 
 class NoTags(Exception):
@@ -118,44 +116,6 @@ _LEFT_OUT = (
     "lists",
     "validation",
 )
-
-
-def read_lists(
-    paths: Sequence[str | os.PathLike[str]],
-    kinds: Sequence[SheetKind],
-    *,
-    plant_toml: str | os.PathLike[str] | None = None,
-    on_progress: Callable[[str], None] | None = None,
-) -> Lists:
-    """Read a plant's lists.
-
-    Parameters
-    ----------
-    paths
-        Workbooks and delimited texts, in any mixture; all of them are one plant.
-    kinds
-        The kinds of sheet that are known.
-    plant_toml
-        A file with the plant's data; what it states goes before a Plant sheet.
-    on_progress
-        Called with a line for each file and sheet.
-
-    Raises
-    ------
-    UnreadableFile
-        A file cannot be read; says where and why.
-    NoTags
-        No sheet holds tags.
-    """
-    tell = on_progress or (lambda line: None)
-    entries = list(read_plant_toml(plant_toml)) if plant_toml is not None else []
-    sheets: list[Sheet] = []
-    for path in paths:
-        tell(f"reading {os.fspath(path)}")
-        sheets.extend(read_file(path))
-    return records_of_sheets(
-        sheets, kinds, stated=entries, files=tuple(os.fspath(path) for path in paths), on_progress=tell
-    )
 
 
 def records_of_sheets(

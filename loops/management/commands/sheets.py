@@ -14,7 +14,8 @@ from typing import Any
 from django.core.management.base import BaseCommand
 
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
-from instruments.workbook.lists import NoTags, read_lists
+from instruments.workbook.files import read_lists
+from instruments.workbook.lists import NoTags
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble

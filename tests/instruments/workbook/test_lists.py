@@ -6,7 +6,8 @@ from pathlib import Path
 import openpyxl
 import pytest
 
-from instruments.workbook.lists import Lists, NoTags, read_lists, records_of_sheets
+from instruments.workbook.files import read_lists
+from instruments.workbook.lists import Lists, NoTags, records_of_sheets
 from instruments.workbook.sheet import Sheet, UnreadableFile
 from tests.instruments.workbook.sheets import KINDS, said, sheet
 

@@ -8,7 +8,7 @@ import pypdf
 import pytest
 
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
-from instruments.workbook.lists import read_lists
+from instruments.workbook.files import read_lists
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import Plant, assemble
 from loops.sheet.content import sheet_content

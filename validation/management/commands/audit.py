@@ -13,7 +13,8 @@ from django.core.management.base import BaseCommand
 
 from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
-from instruments.workbook.lists import NoTags, SheetReport, read_lists
+from instruments.workbook.files import read_lists
+from instruments.workbook.lists import NoTags, SheetReport
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
