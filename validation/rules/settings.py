@@ -11,11 +11,11 @@ from typing import Final, NamedTuple
 
 from instruments.columns import INSTRUMENTS
 from instruments.installed import Installed
-from instruments.kind import Kind
+from instruments.kind import Kind, dimension_allowed
 from instruments.letters import read_letters
 from instruments.measurement import Measurement, Scale, amount, at, difference_in, same_dimension
 from instruments.pressure import referred
-from instruments.quantity import Quantity, format_number
+from instruments.quantity import Quantity, format_number, read_quantity
 from instruments.record import Instrument
 from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_value, ma_from_percent
 from instruments.signal_words import carries_live_zero, io_types, signal_classes
@@ -990,7 +990,8 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
     Why it matters: somebody will set it by guess, or leave it as it came.
 
     What to do: give the setting, or correct the letters. A switch's trip or set pressure counts, and
-    so does the alarm and trip list; an alarm's setting may stand on its transmitter's row.
+    so does the alarm and trip list; an alarm's setting may stand on its transmitter's row. One that
+    stands in the remarks is left unchecked: give it a column.
 
     >>> from validation.example import said
     >>> rows = [{"tag": "LSHH-1", "HH": ""}, {"tag": "LSHH-2", "HH": "4.8 m"}]
@@ -1004,6 +1005,9 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
     unread: list[str] = []
     for function, level in promised:
         names = [_FIELD_OF[level]]
+        if len(level) > 1 and not plant.has_column(*_OUTER):
+            # A list that has but one column for high writes there how high LSHH is.
+            names.append(_FIELD_OF[level[0]])
         if function == "S" or installed.kind is Kind.SWITCH:
             names += ["trip", "set_pressure"] if _trip_may_be(level, promised, record) else ["set_pressure"]
         if _gives(installed, names, listed):
@@ -1013,6 +1017,8 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
             unread.extend(unread_here)
         elif function == "S" or not _set_in_loop(installed, _FIELD_OF[level], listed, plant):
             missing.append((function, level))
+    if missing and _stands_in_remarks(installed):
+        return Unchecked(*dict.fromkeys(f"{level} in a column" for _, level in missing))
     if missing:
         what = " and ".join(
             f"{'a switch' if function == 'S' else 'an alarm'} at {level}" for function, level in missing
@@ -1024,6 +1030,23 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
             wanted=what,
         )
     return Unchecked(*dict.fromkeys(unread)) if unread else None
+
+
+_NUMBER_WITH_UNIT: Final = re.compile(r"(?<![\w.,/-])[-+]?\d[\d.,]{0,10}\s?[^\s\d.,;:()]{1,10}")
+
+
+def _stands_in_remarks(installed: Installed) -> bool:
+    """Whether the remarks hold a value of what it measures: read by people, and by no rule here."""
+    text = (installed.record.remarks or "")[:300]
+    for found in _NUMBER_WITH_UNIT.findall(text):
+        value = read_quantity(found)
+        kind = value.unit.kind if isinstance(value, Quantity) and value.unit is not None else None
+        if kind is not None and kind not in _OF_SIGNALS and dimension_allowed(installed.letters, kind):
+            return True
+    return False
+
+
+_OF_SIGNALS: Final = frozenset({"curr", "volt", "res", "ratio"})
 
 
 def _trip_may_be(level: str, promised: Sequence[tuple[str, str]], record: Instrument) -> bool:
