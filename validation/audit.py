@@ -348,6 +348,7 @@ def _report(verdict: Verdict, rule: Rule, name: str, subject: Any, coverage: Cov
         coverage.assumed.update(verdict.assumed)
         return Outcome.CLEAR
     if isinstance(verdict, NotApplicable):
+        coverage.assumed.update(verdict.assumed)
         return Outcome.NOT_APPLICABLE
     if isinstance(verdict, Unchecked):
         coverage.because.update(verdict.fields)

@@ -124,9 +124,10 @@ class Unchecked:
 
 @dataclass(frozen=True, slots=True)
 class NotApplicable:
-    """The rule is not about this subject, for a reason worth listing."""
+    """The rule is not about this subject, for a reason worth telling; `assumed` is listed as an assumption."""
 
     because: str = ""
+    assumed: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

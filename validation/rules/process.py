@@ -375,8 +375,8 @@ def above_static_limit(measurement: Measurement, plant: Plant) -> Verdict:
 _OFF_THE_PROCESS: Final = frozenset({"panel", "cabinet", "control room", "system"})
 _WETTED: Final = frozenset({None, Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH, Kind.GAUGE, Kind.GLASS})
 _KEPT_AWAY: Final = {
-    "impulse line": NotApplicable("impulse line: the process temperature is taken not to reach the body"),
-    "thermowell": NotApplicable("thermowell: the process temperature is taken not to reach the head"),
+    "impulse line": NotApplicable(assumed=("impulse line: the process temperature is taken not to reach the body",)),
+    "thermowell": NotApplicable(assumed=("thermowell: the process temperature is taken not to reach the head",)),
 }
 
 
