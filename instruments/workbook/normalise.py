@@ -735,17 +735,21 @@ class _SheetReader:
         return bool(_ZERO_OR_ONE.fullmatch(as_text(cell).strip()) and _DIGITAL.match(types[position]))
 
     def _read_set_points(self, name: str, match: ColumnMatch, base: Sequence[UnitCell]) -> None:
-        """Read a column of set points: of a relief valve the set pressure, of a switch or alarm the trip."""
+        """Read a column of set points: of a relief valve the set pressure, of a switch or alarm the trip.
+
+        Under a heading that speaks of pressures, a switch has its set pressure there.
+        """
         self._place(name, match)
         kinds = self.values.get("kind") or [None] * self.count
         # A heading that names the relief valve speaks of nothing else.
-        general = name == "trip" or not re.search(r"(?i)relief|psv|ansprech|\brv\b|press", match.heading)
+        of_relief = name != "trip" and re.search(r"(?i)relief|psv|ansprech|\brv\b", match.heading) is not None
+        of_pressure = name != "trip" and re.search(r"(?i)press", match.heading) is not None
         relief, tripping = [], []
         for kind, letters in zip(kinds, self.letters, strict=True):
             relieves = kind in _RELIEF if kind is not None else letters in _RELIEF_LETTERS
             trips = kind in _TRIPPING or _TRIPPING_LETTERS.fullmatch(letters) is not None
-            relief.append(relieves)
-            tripping.append(not relieves and (name == "trip" or (general and trips)))
+            relief.append(relieves or (trips and of_pressure and not of_relief))
+            tripping.append(not relieves and (name == "trip" or (trips and not of_pressure and not of_relief)))
         cells = self.cells(match.index)
         taken = [one or two for one, two in zip(relief, tripping, strict=True)]
         for target, wanted in (("set_pressure", relief), ("trip", tripping)):
