@@ -9,6 +9,7 @@ from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import Measurement, Scale, amount, at, in_unit, same_dimension
 from instruments.quantity import Quantity, format_number
+from instruments.record import Instrument
 from instruments.span import SLACK
 from instruments.unit import Unit, unit_label
 from loops.plant import Plant
@@ -16,7 +17,7 @@ from loops.redundancy import how_redundant, in_redundant_group, redundant_groups
 from validation.bodies import measured
 from validation.finding import Fix, Found, Review, Severity, Unchecked, Verdict
 from validation.mending import SAME_RANGE, read_both_ways, written
-from validation.rule import Subject, rule
+from validation.rule import Subject, rule, title_of
 from validation.rules.pressure_references import BY_RNG06
 
 _WIRED: Final = frozenset({"yes", "element"})
@@ -325,9 +326,12 @@ def root_taken_twice_or_never(installed: Installed, plant: Plant) -> Verdict:
 
 def _takes_a_root(installed: Installed, plant: Plant) -> bool:
     record = installed.record
-    if not (record.square_root_device or record.square_root_system):
+    if measured(installed, plant).flat:
         return False
-    return not measured(installed, plant).flat
+    if record.square_root_device or record.square_root_system:
+        return True
+    # Where one of the two is not stated the root may be taken there.
+    return None in (record.square_root_device, record.square_root_system) and _is_dp_flow(installed, plant)
 
 
 @rule(
@@ -364,6 +368,8 @@ def root_without_zero(installed: Installed, plant: Plant) -> Verdict:
             continue
         if lrv.number == 0.0:
             continue
+        if not (record.square_root_device or record.square_root_system):
+            return Unchecked(*_roots_not_stated(record))
         found.append(
             Found(
                 values={"end": end, "value": str(lrv)},
@@ -375,7 +381,17 @@ def root_without_zero(installed: Installed, plant: Plant) -> Verdict:
                 fixes=_from_zero(end, lrv, urv),
             )
         )
-    return found or None
+    if found:
+        return found
+    if record.lrv is None and (record.square_root_device or measured(installed, plant).asked):
+        return Unchecked("LRV")  # the system's zero says nothing of the device's
+    return None
+
+
+def _roots_not_stated(record: Instrument) -> tuple[str, ...]:
+    return tuple(
+        title_of(name) for name in ("square_root_device", "square_root_system") if getattr(record, name) is None
+    )
 
 
 def _from_zero(end: str, lrv: Quantity, urv: Quantity | None) -> tuple[Fix, ...]:

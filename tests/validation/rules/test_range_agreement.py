@@ -230,4 +230,19 @@ def test_a_root_begins_at_zero(row: dict[str, str], expected: list[str]) -> None
 
 def test_a_root_on_a_blank_range_is_unchecked() -> None:
     assert outcome("RNG12", [{"tag": "FT-1", "square root in device": "yes"}]) == "unchecked: LRV or system LRV"
-    assert outcome("RNG12", [{"tag": "FT-1", "LRV": "5 mbar", "URV": "9 mbar"}]) == "not applicable"
+    in_system = {"system LRV": "0 m3/h", "system URV": "100 m3/h"}
+    assert outcome("RNG12", [{"tag": "FT-1", "square root in device": "yes", **in_system}]) == "unchecked: LRV"
+
+
+@pytest.mark.parametrize(
+    ("row", "expected"),
+    [
+        ({"LRV": "5 mbar"}, "unchecked: square root in device, square root in system"),
+        ({"LRV": "5 mbar", "square root in system": "no"}, "unchecked: square root in device"),
+        ({"LRV": "5 mbar", "square root in device": "no", "square root in system": "no"}, "not applicable"),
+        ({"LRV": "0 mbar"}, "clear"),
+        ({"tag": "LT-1", "LRV": "5 mbar"}, "not applicable"),
+    ],
+)
+def test_a_root_that_is_not_stated_is_asked_only_where_it_would_matter(row: dict[str, str], expected: str) -> None:
+    assert outcome("RNG12", [{"tag": "FT-1", "URV": "9 mbar", **row}]) == expected
