@@ -13,7 +13,7 @@ from typing import Any, Final
 from instruments.column import Reads
 from instruments.columns import DEVICE_TYPES, INSTRUMENTS
 from instruments.installed import Installed
-from instruments.kind import Kind, touches_process
+from instruments.kind import Kind, kinds_from_words, touches_process
 from instruments.letters import read_letters
 from instruments.origin import Cell
 from instruments.plant_data import DEFAULT_REQUIRED
@@ -225,6 +225,12 @@ def _leaves_to_transmitter(installed: Installed, plant: Plant) -> bool:
     return isinstance(alone(installed, plant), Found)
 
 
+def _is_glass(installed: Installed) -> bool:
+    """Whether words call a glass what the letters (LI, as older lists write it) call a gauge."""
+    words = installed.record.kind_written
+    return installed.kind is Kind.GAUGE and words is not None and Kind.GLASS in kinds_from_words(words)[:1]
+
+
 def _required_column_absent(plant: Plant) -> Verdict:
     every: tuple[_Required, ...] = plant.once("required fields", _required)
     absent = [each for each in every if not each.column]
@@ -236,7 +242,9 @@ def _required_column_absent(plant: Plant) -> Verdict:
             counts.update(
                 required.title
                 for required in absent
-                if _is_asked(required.title, each.kind) and _blank(required, each)[0]
+                if _is_asked(required.title, each.kind)
+                and _blank(required, each)[0]
+                and not (required.title in _RANGE_TITLES and _is_glass(each))
             )
     lacking = [each for each in absent if counts[each.title]]
     if not lacking:
@@ -293,6 +301,8 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
         untold.extend(title_of(field) for field in lost)
         if not missing:
             continue
+        if required.title in _RANGE_TITLES and _is_glass(installed):
+            continue
         if kind is Kind.ELEMENT and required.title in _TRANSMITTERS_OWN:
             if leaves is None:
                 leaves = _leaves_to_transmitter(installed, plant)
@@ -334,7 +344,17 @@ def _on_the_process(installed: Installed, plant: Plant) -> bool:
         return not installed.equipment_tag
     if not kind.process or installed.equipment_tag:
         return False
+    words = installed.record.kind_written
+    if kind is Kind.SWITCH and words is not None and _OF_A_POSITION.search(words):
+        # GO 11: other traditions write a position with other letters.
+        return False
     return touches_process(kind, installed.letters)
+
+
+_OF_A_POSITION: Final = re.compile(
+    r"\blimit|position|proximity|\bend ?(?:switch|schalter|lage)|stellung|fin de course|endschalter|endlage",
+    re.IGNORECASE,
+)
 
 
 @rule(

@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, fields, replace
+from typing import Final
 
 from instruments.installed import Installed
-from instruments.kind import can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
+from instruments.kind import Kind, can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
 from instruments.letters import read_letters
 from instruments.record import Instrument, Record
 from instruments.tag import (
@@ -345,8 +346,14 @@ def _why_not(reading: TagReading) -> str:
     return reading.reason
 
 
+# Whose letters are a name (LCP, MCC, UPS) and no functions, where the list says that they are one of these.
+_NAMED: Final = frozenset({Kind.PANEL, Kind.JUNCTION_BOX, Kind.CARD, Kind.BARRIER, Kind.ISOLATOR, Kind.POWER_SUPPLY})
+
+
 def _letters_asked(installed: Installed, plant: Plant) -> bool:
     reading = installed.tag
+    if installed.kind in _NAMED and installed.kind_from != "letters":
+        return False
     return (
         reading is not None
         and reading.parsed

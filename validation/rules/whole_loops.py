@@ -140,21 +140,31 @@ _FINAL: Final = frozenset(
     {Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID, Kind.REGULATOR}
 )
 _OUTPUTS: Final = frozenset({ANALOGUE_OUTPUT, DIGITAL_OUTPUT})
-_TAG_IN_TEXT: Final = re.compile(r"[A-Za-z]{2,6}[ ][0-9]{1,6}[A-Za-z]?|[A-Za-z0-9][A-Za-z0-9\-./]{2,20}")
+_TAGS_IN_TEXT: Final = (
+    re.compile(r"[A-Za-z0-9][A-Za-z0-9\-./]{2,20}"),
+    # FIC 301, as older lists write tags.
+    re.compile(r"\b[A-Za-z]{2,6} [0-9]{1,6}[A-Za-z]?\b"),
+)
+_NO_CONTROLLERS: Final = frozenset(
+    {Kind.SWITCH, Kind.PANEL, Kind.JUNCTION_BOX, Kind.CARD, Kind.BARRIER, Kind.ISOLATOR, Kind.POWER_SUPPLY}
+)
 
 
 @lru_cache(maxsize=4096)
 def _control(letters: str) -> bool:
     """Whether letters are a controller's: C among the functions, and none that acts, senses or transmits."""
-    functions = read_letters(letters).functions
-    heads = {function[0] for function in functions}
+    reading = read_letters(letters)
+    if reading.legal == "illegal":
+        # LCP is a panel as often as letters out of order.
+        return False
+    heads = {function[0] for function in reading.functions}
     # ZIC is a position that is closed as often as one that is controlled.
     return "C" in heads and not heads & set("VETGYZSW") and letters not in ("ZIC", "XIC")
 
 
 def _is_controller(installed: Installed) -> bool:
     letters = installed.letters
-    if "C" not in letters[1:] or installed.kind in _FINAL or installed.kind is Kind.SWITCH:
+    if "C" not in letters[1:] or installed.kind in _FINAL or installed.kind in _NO_CONTROLLERS:
         return False
     if installed.tag is None or installed.tag.code is not None or installed.tag.scheme in ("kks", ""):
         return False
@@ -177,17 +187,25 @@ def _acts(installed: Installed, plant: Plant) -> bool:
     return ANALOGUE_OUTPUT in outputs or (DIGITAL_OUTPUT in outputs and installed.equipment_tag)
 
 
-def _measured_otherwise(controller: Installed) -> bool:
-    """Whether a controller needs no measurement in its loop: by hand, by time, or with its own in the field."""
-    return controller.letters[:1] in "HK" or controller.record.location == "field"
+def _measured_otherwise(controller: Installed, loop: Loop, plant: Plant) -> bool:
+    """Whether a controller needs no measurement in its loop.
+
+    By hand and by time there is nothing to measure; one in the field measures itself; and the speed of a drive
+    that takes an analogue output is measured by the drive.
+    """
+    first = controller.letters[:1]
+    if first == "S":
+        return any(circuit_kind(io) == ANALOGUE_OUTPUT for each in loop.members for io in channels(each, plant))
+    return first in ("H", "K") or controller.record.location == "field"
 
 
 def _named_in(text: str | None, loop: Loop, plant: Plant) -> Iterator[Installed]:
     """Give the instruments of other loops that a text names."""
-    for word in _TAG_IN_TEXT.findall(text or ""):
-        for named in plant.by_tag(word.strip("-./")):
-            if named not in loop.members:
-                yield named
+    for pattern in _TAGS_IN_TEXT:
+        for word in pattern.findall(text or ""):
+            for named in plant.by_tag(word.strip("-./")):
+                if named not in loop.members:
+                    yield named
 
 
 def _parents(plant: Plant) -> dict[str, set[str]]:
@@ -304,7 +322,7 @@ def loop_not_whole(loop: Loop, plant: Plant) -> Verdict:
     lacks: list[str] = []
     if (
         not any(_measures(each) for each in loop.members)
-        and not all(_measured_otherwise(each) for each in controllers)
+        and not all(_measured_otherwise(each, loop, plant) for each in controllers)
         and not _measures_by_switch(loop, controllers)
         and not _measured_elsewhere(loop, controllers, plant)
     ):

@@ -28,6 +28,7 @@ NO_RANGE = {"LRV": "", "URV": "", "range unit": ""}
         ({"tag": "FD-1", **NO_RANGE, "P&ID": ""}, ""),
         ({"tag": "GD-1", **NO_RANGE, "P&ID": ""}, "range, range unit"),
         ({"tag": "LG-1", **NO_RANGE}, ""),
+        ({"tag": "LI-1", **NO_RANGE, "kind": "Standglas"}, ""),
         ({"tag": "PG-1", **NO_RANGE}, "range, range unit"),
         ({"tag": "TIC-1", **NO_RANGE, "P&ID": "", "I/O type": ""}, ""),
         ({"tag": "FV-1", **NO_RANGE}, ""),
@@ -176,6 +177,8 @@ def test_the_cells_of_what_is_blank() -> None:
         ({"tag": "PT-1", "equipment": "V-1"}, ""),
         # A valve's switches and its solenoid have the valve's line.
         ({"tag": "ZSO-1"}, ""),
+        ({"tag": "GO-1", "kind": "Endschalter"}, ""),
+        ({"tag": "GS-1", "kind": "level switch"}, "a switch that is on neither a line nor equipment"),
         ({"tag": "ZT-1"}, ""),
         ({"tag": "XY-1"}, ""),
         ({"tag": "GD-1"}, ""),

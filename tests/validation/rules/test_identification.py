@@ -288,6 +288,9 @@ def test_letters_follow_each_other(tag: str, expected: str, offered: list[str]) 
     [
         (["LCP-1"], {}, {"finding": 1}),
         (["LCP-1"], {"plant codes": "LCP = panel"}, {"not applicable": 1}),
+        # What the list calls a panel has a name, no functions.
+        ([{"tag": "LCP-1", "kind": "control panel"}], {}, {"not applicable": 1}),
+        ([{"tag": "LCP-1", "kind": "control valve"}], {}, {"finding": 1}),
         ([{"tag": "T-101", "I/O type": "DI"}], {}, {"not applicable": 1}),
         (["10LBA10CP001", "10LBA10CP002"], {}, {"not applicable": 2}),
         (["4th pump", "TCI 1"], {"tag pattern": "free-text"}, {"not applicable": 2}),

@@ -144,7 +144,15 @@ CASCADE = ["TT-300", "FIC-301", "FT-301", "FV-301"]
         ([{"tag": "TIC-300", "remarks": "see FT-301"}, *CASCADE], [NO_FINAL.format("T-300", "TIC-300")]),
         ([{"tag": "TIC-300", "remarks": "cascade to FIC-302"}, *CASCADE], [NO_FINAL.format("T-300", "TIC-300")]),
         (["TIC-300", "TT-300", {"tag": "FIC-301", "remarks": "set point from TIC-300"}, "FT-301", "FV-301"], []),
+        ([{"tag": "10-TIC-300", "remarks": "Cascade to 10-FIC-301"}, "10-TT-300", "10-FIC-301", "10-FT-301",
+          "10-FV-301"], []),
+        # The speed of a drive is measured by the drive.
+        ([{"tag": "SIC-1", "I/O type": "AO"}], []),
+        (["SIC-1", {"tag": "P-1", "loop": "S-1", "I/O type": "AO"}], []),
+        (["SIC-1"], ["S-1: SIC-1 has no measurement and no final element in its loop"]),
         # Not controllers.
+        ([{"tag": "LCP-1", "kind": "Local control panel"}], []),
+        (["LCP-1"], []),
         (["ZIC-1"], []),
         (["PCV-1"], []),
         (["TCV-1", "TT-1"], []),
