@@ -867,6 +867,9 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
             kind, kind_from = record.kind, "row"
         if kind is None and each.listed_type is not None and each.listed_type.kind is not None:
             kind, kind_from = each.listed_type.kind, "type"
+            # A valve's row may name its positioner's or solenoid's type: it is the valve's all the same.
+            if kind in _DRIVES and letters and (valve := derive_kind(letters, **asked)) in _VALVES:
+                kind, kind_from = valve, "letters"
         if kind is None and letters:
             kind, kind_from = derive_kind(letters, **asked), "letters"
             if point and kind not in _MEASURING:
@@ -875,6 +878,8 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
         each.measuring_point = point
 
 
+_DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
+_VALVES = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
 _FOR_SENSORS = frozenset({"AI", "RTD", "TC"})
 
 

@@ -2,6 +2,7 @@ from __future__ import annotations
 
 import pytest
 
+from instruments.kind import Kind
 from validation.example import example_plant, outcomes, said
 
 
@@ -24,6 +25,27 @@ from validation.example import example_plant, outcomes, said
 def test_a_tag_names_the_measuring_point_where_no_transmitter_does(row: dict[str, str], point: bool) -> None:
     (installed,) = example_plant([row]).instruments
     assert installed.measuring_point is point
+
+
+@pytest.mark.parametrize(
+    ("row", "kind", "kind_from"),
+    [
+        ({"tag": "PV-1", "device type": "EP"}, Kind.CONTROL_VALVE, "letters"),
+        ({"tag": "XV-1", "device type": "SV"}, Kind.ON_OFF_VALVE, "letters"),
+        ({"tag": "PY-1", "device type": "EP"}, Kind.POSITIONER, "type"),
+        ({"tag": "XY-1", "device type": "SV"}, Kind.SOLENOID, "type"),
+        ({"tag": "PV-1", "kind": "positioner", "device type": "EP"}, Kind.POSITIONER, "row"),
+        ({"tag": "PT-1", "device type": "G"}, Kind.ANALYSER, "type"),
+    ],
+)
+def test_a_blank_kind_is_the_type_s_but_a_valve_stays_one(row: dict[str, str], kind: Kind, kind_from: str) -> None:
+    types = [
+        {"code": "EP", "kind": "positioner"},
+        {"code": "SV", "kind": "solenoid"},
+        {"code": "G", "kind": "analyser"},
+    ]
+    (found,) = example_plant([row], types=types).instruments
+    assert (found.kind, found.kind_from) == (kind, kind_from)
 
 
 def test_a_loop_with_a_transmitter_has_no_measuring_point() -> None:
