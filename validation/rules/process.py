@@ -8,7 +8,7 @@ from typing import Final, NamedTuple
 from instruments.area import Area
 from instruments.installed import Installed
 from instruments.kind import Kind, touches_process
-from instruments.measurement import Measurement, amount, at, in_unit
+from instruments.measurement import Measurement, amount, at, in_unit, variable_of
 from instruments.pressure import stated_reference
 from instruments.quantity import Quantity, format_number
 from instruments.record import DeviceType, Instrument
@@ -127,7 +127,8 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
     >>> said("PRO01", [{**row, "design pressure": "12 barg"}])
     []
     """
-    if _is_well_above(installed.record):
+    measures = _measures_of_the_process(installed)
+    if not measures and _is_well_above(installed.record):
         return None
     measurement = measured(installed, plant)
     found: list[Found] = []
@@ -136,8 +137,14 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
         ("pressure", installed.record.design_pressure, _OPERATING_PRESSURE),
         ("temperature", installed.record.design_temperature, _OPERATING_TEMPERATURE),
     ):
-        operating = _extreme(_given(installed, names), highest=True)
+        given = _given(installed, names)
         maximum = getattr(installed.record, names[0])
+        if measures == part:
+            # What a PT or TT measures is the pressure or temperature of its line.
+            own = [each for each in _given(installed, _OPERATING_VALUE) if _is_of(part, each.value)]
+            given += own
+            maximum = maximum or next((each.value for each in own if each.name == _OPERATING_VALUE[0]), None)
+        operating = _extreme(given, highest=True)
         if design is None or design.unit is None:
             blank.append(f"design {part}")
         if maximum is None or maximum.unit is None:
@@ -148,6 +155,24 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
     if found:
         return found
     return Unchecked(*blank) if blank else None
+
+
+_OPERATING_VALUE: Final = ("operating_value_max", "operating_value_normal", "operating_value_min")
+
+
+def _is_of(part: str, value: Quantity) -> bool:
+    return value.unit is not None and value.unit.kind == part
+
+
+def _measures_of_the_process(installed: Installed) -> str:
+    """Return pressure or temperature, where the operating value is given and is that of the line; else nothing."""
+    record = installed.record
+    letters = installed.letters
+    if letters[:1] not in ("P", "T") or (record.operating_value_max is None and record.operating_value_normal is None):
+        return ""
+    if installed.body == "differential" or variable_of(installed) not in ("P", "T"):
+        return ""
+    return "pressure" if letters[0] == "P" else "temperature"
 
 
 def _is_well_above(record: Instrument) -> bool:

@@ -39,6 +39,19 @@ WELL = {
         # A normal value above the design value tells the same of a maximum that is blank.
         ({"operating pressure max": "", "operating pressure normal": "17 barg"},
          ["the design pressure 16 barg is below the operating pressure normal 17 barg by 1 bar"]),
+        # What a PT or TT measures is the pressure or temperature of its line.
+        ({"operating pressure max": "", "operating value max": "17 barg"},
+         ["the design pressure 16 barg is below the operating value max 17 barg by 1 bar"]),
+        ({"operating value max": "17 barg"},
+         ["the design pressure 16 barg is below the operating value max 17 barg by 1 bar"]),
+        ({"operating value max": "16 barg"}, []),
+        ({"operating value normal": "17 barg"},
+         ["the design pressure 16 barg is below the operating value normal 17 barg by 1 bar"]),
+        ({"tag": "TT-1", "operating value max": "120 °C"},
+         ["the design temperature 100 °C is below the operating value max 120 °C by 20 °C"]),
+        ({"tag": "PDT-1", "operating value max": "17 barg"}, []),
+        ({"tag": "LT-1", "operating value max": "17 barg"}, []),
+        ({"tag": "PT-1", "operating value max": "17 barg", "body": "dp"}, []),
         # Both without a reference: they are of one line.
         ({"design pressure": "12 bar", "operating pressure max": "12 bar"}, []),
         ({"design pressure": "11 bar", "operating pressure max": "12 bar"},
@@ -60,6 +73,7 @@ def test_nothing_is_run_beyond_its_design(row: dict[str, str], expected: list[st
     [
         ({"design pressure": ""}, "unchecked: design pressure"),
         ({"operating pressure max": ""}, "unchecked: operating pressure max"),
+        ({"operating pressure max": "", "operating value max": "12 barg"}, "clear"),
         ({"design temperature": ""}, "unchecked: design temperature"),
         ({"operating temperature max": ""}, "unchecked: operating temperature max"),
         ({"design pressure": "", "design temperature": "50 °C"}, "finding"),
