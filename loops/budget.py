@@ -38,8 +38,6 @@ from loops.record import CableType
 
 SUPPLY_TOLERANCE_PERCENT: Final = 5.0
 RECEIVER_OHM: Final = 250.0
-LARGEST_RECEIVER_OHM: Final = 500.0  # 2 to 10 V; common practice
-LONG_CABLE_OHM: Final = 182.0  # 3 km of 0.5 mm2 out and back at -20 degC: longer than circuits are
 HOT_C: Final = 70.0
 COLD_C: Final = -20.0
 DIODE_V: Final = 0.7  # a bypass diode that conducts; common practice
@@ -147,19 +145,20 @@ class Budget:
 class HighestVolts:
     """The highest voltage at a circuit's transmitter, with what is stated and with defaults.
 
-    A load is kind here, for it takes volts from the transmitter.
+    A load is kind here, for it takes volts from the transmitter. A blank receiver is the default in
+    both workings, and a blank cable nothing: what passes so passes with any, and what fails so fails
+    with all that is common.
 
     Attributes
     ----------
     missing
         What it cannot be worked without, as titles.
-    assumed
-        The defaults that were used, in words.
+    assumed, assumed_in_series
+        The defaults that were used, in words: all of them, and those of what lies in series.
     kindest_v, highest_v
         The highest supply with the kindest value that could be true, and with the default.
-    kindest_resistances, resistances, fixed_drops
-        What lies in series, cable included: with a large receiver and a long cable where they are
-        blank, and with the default receiver and no cable.
+    resistances, fixed_drops
+        What lies in series, cable included.
     current_ma
         3.6 mA, or nothing where the volts are the most that a source ever gives.
     """
@@ -167,27 +166,22 @@ class HighestVolts:
     allowed_v: float | None = None
     missing: tuple[str, ...] = ()
     assumed: tuple[str, ...] = ()
+    assumed_in_series: tuple[str, ...] = ()
     kindest_v: float | None = None
     highest_v: float | None = None
-    kindest_resistances: Parts = ()
     resistances: Parts = ()
     fixed_drops: Parts = ()
     current_ma: float = LOWEST_MA
 
     @property
     def kindest(self) -> OverVoltage | None:
-        """With the kindest value that could be true for each blank."""
-        return self._at(self.kindest_v, self.kindest_resistances)
-
-    @property
-    def nominal(self) -> OverVoltage | None:
-        """With the kindest supply and the defaults for the rest: what is shown where even the kindest fails."""
-        return self._at(self.kindest_v, self.resistances)
+        """With the kindest value that could be true for the supply."""
+        return self._at(self.kindest_v)
 
     @property
     def worst(self) -> OverVoltage | None:
         """With the defaults; what is blank without one takes no volts."""
-        return self._at(self.highest_v, self.resistances)
+        return self._at(self.highest_v)
 
     @property
     def passes_at_worst(self) -> bool | None:
@@ -197,14 +191,14 @@ class HighestVolts:
         volts = volts_at_transmitter(self.highest_v, self.current_ma, self.resistances, self.fixed_drops)
         return not below(self.allowed_v, volts, scale=self.highest_v)
 
-    def _at(self, supply_v: float | None, series: Parts) -> OverVoltage | None:
+    def _at(self, supply_v: float | None) -> OverVoltage | None:
         if supply_v is None or self.allowed_v is None:
             return None
         return over_voltage(
             supply_v,
             allowed_v=self.allowed_v,
             current_ma=self.current_ma,
-            resistances=series,
+            resistances=self.resistances,
             fixed_drops=self.fixed_drops,
         )
 
@@ -363,8 +357,8 @@ def _in_series(circuit: Circuit, current_ma: float) -> _InSeries:
     return found
 
 
-def _with_receiver(circuit: Circuit, data: PlantData, found: _InSeries, *, kindest_ohm: float) -> tuple[Parts, Parts]:
-    """Return all in series with the receiver: the kindest that could be true where it is blank, and the default."""
+def _with_receiver(circuit: Circuit, data: PlantData, found: _InSeries) -> tuple[Parts, Parts]:
+    """Return all in series: without the receiver where it is blank, and with the default."""
     before = len(found.ohm)
     if circuit.card is not None:
         found.take("card", circuit.card)
@@ -373,8 +367,7 @@ def _with_receiver(circuit: Circuit, data: PlantData, found: _InSeries, *, kinde
     elif len(found.ohm) == before:
         ohm = data.threshold("ELC receiver ohm", RECEIVER_OHM)
         found.assumed.append(f"receiver {ohm:g} ohm")
-        kindest = (*found.ohm, ("receiver", kindest_ohm)) if kindest_ohm else tuple(found.ohm)
-        return kindest, (*found.ohm, ("receiver", ohm))
+        return tuple(found.ohm), (*found.ohm, ("receiver", ohm))
     # A card that states what it puts in series has said what it puts into the loop.
     return tuple(found.ohm), tuple(found.ohm)
 
@@ -447,7 +440,7 @@ def lift_off(circuit: Circuit, data: PlantData) -> Budget:
     found = _in_series(circuit, current_ma)
     source = _source(circuit, current_ma, data, found, fails_low=fails_low)
     if source.receiver_counts:
-        kindest, series = _with_receiver(circuit, data, found, kindest_ohm=0.0)
+        kindest, series = _with_receiver(circuit, data, found)
     else:
         kindest = series = tuple(found.ohm)
     missing = ["lift-off V"] if lift_off_v is None else []
@@ -538,21 +531,21 @@ def highest_volts(circuit: Circuit, data: PlantData) -> HighestVolts:
     if stating is not None:
         return _from_a_source(*stating, circuit=circuit, allowed_v=allowed_v, data=data)
     found = _in_series(circuit, LOWEST_MA)
+    unknown = bool(found.missing)
+    _, series = _with_receiver(circuit, data, found)
+    in_series = tuple(found.assumed)
     kindest_v, highest_v = _highest_supply(circuit, data, found)
-    kindest, series = _with_receiver(circuit, data, found, kindest_ohm=LARGEST_RECEIVER_OHM)
-    cable = _cold_cable(circuit, data)
-    if found.missing:
-        # What a device in series takes nobody says: nothing is certain to fail.
-        kindest_v = None
     if highest_v is None:
         found.missing.append("supply V max")
+    cable = _cold_cable(circuit, data)
     return HighestVolts(
         allowed_v=allowed_v,
         missing=tuple(found.missing),
         assumed=tuple(found.assumed),
-        kindest_v=kindest_v,
+        assumed_in_series=in_series,
+        # What a device in series takes nobody says: then nothing is certain to fail.
+        kindest_v=None if unknown else kindest_v,
         highest_v=highest_v,
-        kindest_resistances=(*kindest, cable or ("cable", LONG_CABLE_OHM)),
         resistances=(*series, cable) if cable is not None else series,
         fixed_drops=tuple(found.drops),
     )
@@ -601,7 +594,6 @@ def _from_a_source(
         allowed_v=allowed_v,
         missing=tuple(found.missing),
         kindest_v=kindest_v,
-        kindest_resistances=(*found.ohm, cable or ("cable", LONG_CABLE_OHM)),
         resistances=(*found.ohm, cable) if cable is not None else tuple(found.ohm),
         fixed_drops=tuple(found.drops),
     )

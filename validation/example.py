@@ -94,6 +94,13 @@ _PLANT = {"name": "Example", "numbering": "parallel"}
 def _sheet(name: str, rows: Rows) -> Sheet:
     titles = list(dict.fromkeys(title for row in rows for title in row))
     cells: list[list[Any]] = [list(titles)]
-    cells.extend([None if row.get(title) in ("", None) else row[title] for title in titles] for row in rows)
+    cells.extend([_cell(row.get(title)) for title in titles] for row in rows)
     filled = sum(1 for row in cells for cell in row if cell is not None)
     return Sheet(file=FILE, name=name, rows=cells, cells_filled=filled)
+
+
+def _cell(value: Any) -> Any:
+    """Return a cell as the reader gives it: a blank is None, and every number a float."""
+    if value is None or value == "":
+        return None
+    return float(value) if isinstance(value, int) and not isinstance(value, bool) else value

@@ -255,7 +255,7 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
     over_at_best = kindest is not None and not kindest.passes
     if not over_at_best and (passes is None or volts.missing):
         return Unchecked(*volts.missing)
-    shown = volts.nominal if over_at_best else volts.worst
+    shown = volts.kindest if over_at_best else volts.worst
     assert shown is not None
     kind = Found if over_at_best else Review
     can_see = _volts(shown.at_terminals_v, shown.margin_v)
@@ -268,7 +268,7 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
         wanted=f"at most {allowed}",
         off_by=over,
         working=shown.working,
-        assumed=() if over_at_best else volts.assumed,
+        assumed=volts.assumed_in_series if over_at_best else volts.assumed,
         fixes=_over_voltage_fixes(circuit, volts, plant),
         cells=figure_cells(circuit),
     )
@@ -459,7 +459,10 @@ def _nothing_to_compare(installed: Installed) -> Verdict:
     """What is wired to the system and says of no channel what it is."""
     kind = installed.kind
     rows = installed.signals or (installed.record,)
-    if any(row.io_type for row in rows) or kind is None or kind.wired != "yes":
+    if any(row.io_type for row in rows) or kind is None:
+        return NotApplicable()
+    # An element may be wired to its transmitter; one that has an address is not.
+    if kind.wired != "yes" and not (kind.wired == "element" and any(row.io_address for row in rows)):
         return NotApplicable()
     if installed.record.location == "system":
         return NotApplicable()
