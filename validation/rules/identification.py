@@ -486,6 +486,8 @@ def _valves_of(installed: Installed, plant: Plant) -> list[Installed]:
 
 def _compared(stated: str, reading: TagReading, plant: Plant) -> bool | None:
     """Whether a loop is the one that a tag names by itself; None where that cannot be told."""
+    if stated == reading.loop:
+        return True
     if reading.scheme == "kks":
         return _compared_by_kks(stated, reading, plant)
     agrees = loop_agrees(stated, reading, profile=plant.profile, numbering=plant.data.numbering)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from collections import Counter
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass
 from operator import attrgetter
@@ -80,23 +81,43 @@ class _Named:
     row_field: str = ""
 
 
+# What a cell comes to: all its names are listed, one is not, two different entries have one.
+_GOOD, _UNKNOWN, _TWICE = 0, 1, 2
+
+
 class _Names:
-    """Which names are listed, each looked up once."""
+    """Which names are listed, each cell's text looked up once."""
 
     def __init__(self, plant: Plant) -> None:
         self.plant = plant
-        self.known: dict[str, dict[str, bool]] = {field: {} for field in _SHEET_OF}
+        self.known: dict[str, dict[str, int]] = {field: {} for field in _SHEET_OF}
+        self.of_cables: dict[str, int] = {}
+        self.bad: dict[int, dict[str, int]] = {}
         self.absent: frozenset[str] = frozenset()
         self.details: str = ""
         self.fields: tuple[str, ...] = ()
 
-    def good(self, field: str, name: str) -> bool:
-        """Whether a cell of a field names nothing that is not listed, or nothing at all."""
-        known = self.known[field]
-        found = known.get(name)
+    def state(self, field: str, text: str) -> int:
+        """Return what a cell of a field comes to."""
+        found = self.known[field].get(text)
         if found is None:
-            pieces = _pieces(field, name)
-            found = known[name] = all(self.listed(field, piece) and not self.twice(field, piece) for piece in pieces)
+            found = self.known[field][text] = max(
+                (self._of_one(field, name) for name in _pieces(field, text)), default=_GOOD
+            )
+        return found
+
+    def _of_one(self, field: str, name: str) -> int:
+        if self.twice(field, name):
+            return _TWICE
+        return _GOOD if self.listed(field, name) else _UNKNOWN
+
+    def state_of_cables(self, text: str) -> int:
+        """Return what the types of the cables in a cell come to."""
+        found = self.of_cables.get(text)
+        if found is None:
+            cables = [self.plant.cables.get(name_key(number)) for number in _APART.split(text)]
+            types = [cable.type for cable in cables if cable is not None and cable.type]
+            found = self.of_cables[text] = max((self.state("cable_type", each) for each in types), default=_GOOD)
         return found
 
     def listed(self, field: str, name: str) -> bool:
@@ -156,24 +177,46 @@ def _area_named(installed: Installed, plant: Plant) -> str | None:
     return name
 
 
-def _all_good(installed: Installed, plant: Plant, names: _Names) -> bool:
-    """Whether all names that a row and its circuits use are listed; in most lists all are."""
-    good, known = names.good, names.known
-    for row in (installed.record,) if len(installed.signals) < 2 else (installed.record, *installed.signals):
+_NOTHING_BAD: Final[dict[str, int]] = {}
+
+
+def _bad(installed: Installed, plant: Plant, names: _Names) -> dict[str, int]:
+    """Return the fields in which a row or its circuits name what is not listed; in most lists there are none."""
+    bad: dict[str, int] = {}
+    known = names.known
+    record = installed.record
+    for row in (record,) if len(installed.signals) < 2 else (record, *installed.signals):
         for field, text in zip(_FIELDS, _VALUES(row), strict=True):
-            if text is not None and not (known[field].get(text) or good(field, text)):
-                return False
-    if installed.record.area is not None:
+            if text is not None and known[field].get(text) != _GOOD:
+                state = names.state(field, text)
+                if state:
+                    bad[field] = max(state, bad.get(field, _GOOD))
+    if record.area is not None:
         area = _area_named(installed, plant)
-        if area is not None and not good("area", area):
-            return False
+        if area is not None:
+            state = names.state("area", area)
+            if state:
+                bad["area"] = state
     if plant.loop_rows or plant.cables:
         for circuit in plant.circuits_of(installed):
             if circuit.device is installed:
-                for named in _of_circuit(circuit, plant):
-                    if not good(named.field, named.name):
-                        return False
-    return True
+                for field, state in _bad_of_circuit(circuit, names):
+                    bad[field] = max(state, bad.get(field, _GOOD))
+    return bad or _NOTHING_BAD
+
+
+def _bad_of_circuit(circuit: Circuit, names: _Names) -> Iterator[tuple[str, int]]:
+    row = circuit.row
+    if row is not None:
+        for field, text in (("card", row.card), ("barrier", row.barrier), ("cable_type", row.cable_type)):
+            if text is not None:
+                state = names.state(field, text)
+                if state:
+                    yield field, state
+    if circuit.signal_row.cable is not None:
+        state = names.state_of_cables(circuit.signal_row.cable)
+        if state:
+            yield "cable_type", state
 
 
 def _of_circuit(circuit: Circuit, plant: Plant) -> Iterator[_Named]:
@@ -228,53 +271,52 @@ def _named(installed: Installed, plant: Plant) -> Iterator[_Named]:
 def _names(plant: Plant) -> _Names:
     """Look at all names once: which sheets are absent, which columns name nothing that is listed."""
     names = _Names(plant)
-    used: dict[tuple[str, str], list[_Named]] = {}
-    heard: dict[str, list[bool]] = {}
+    counts: Counter[str] = Counter()
+    first: dict[str, Installed] = {}
     for each in plant.live:
-        if each.equipment_tag or _all_good(each, plant, names):
-            continue
-        seen: set[tuple[str, str]] = set()
-        for named in _named(each, plant):
-            key = (named.field, name_key(named.name))
-            if key in seen:
-                continue
-            seen.add(key)
-            known = names.listed(named.field, named.name) or names.twice(named.field, named.name)
-            heard.setdefault(named.field, []).append(known)
-            if not known:
-                used.setdefault((_SHEET_OF[named.field], named.field), []).append(named)
-    if not used:
+        if not each.equipment_tag:
+            bad = names.bad[id(each)] = _bad(each, plant, names)
+            for field, state in bad.items():
+                if state == _UNKNOWN:
+                    counts[field] += 1
+                    first.setdefault(field, each)
+    if not counts:
         return names
-    good = _fields_with_a_listed_name(plant, names)
+    there = {field: plant.has_sheet(_SHEET_OF[field]) for field in counts}
+    doubtful = {field for field, count in counts.items() if there[field] and count >= LEAST_ROWS_OF_A_COLUMN}
+    good = _fields_with_a_listed_name(doubtful, plant, names)
     details: dict[str, list[str]] = {}
-    absent: set[str] = set()
     fields: list[str] = []
-    for (sheet, field), found in sorted(used.items()):
-        there = plant.has_sheet(sheet)
-        if there and (field in good or any(heard[field]) or len(found) < LEAST_ROWS_OF_A_COLUMN):
+    for sheet, field in sorted((_SHEET_OF[field], field) for field in counts):
+        if there[field] and (field not in doubtful or field in good):
             continue
-        absent.add(field)
         fields.append(field)
-        title, count = _TITLE_OF[field], len(found)
+        title, count = _TITLE_OF[field], counts[field]
         which = f"{count} {'name' if count == 1 else 'names'} under {title}"
-        if there:
+        if there[field]:
             which = f"none of the {count} names under {title} is on it"
-        details.setdefault(sheet, []).append(f"{which}, such as {found[0].name}")
-    names.absent = frozenset(absent)
+        example = next(
+            named.name
+            for named in _named(first[field], plant)
+            if named.field == field and not names.listed(field, named.name)
+        )
+        details.setdefault(sheet, []).append(f"{which}, such as {example}")
+    names.absent = frozenset(fields)
     names.fields = tuple(fields)
     names.details = "; ".join(f"{sheet}: {', '.join(texts)}" for sheet, texts in sorted(details.items()))
     return names
 
 
-def _fields_with_a_listed_name(plant: Plant, names: _Names) -> frozenset[str]:
-    """Return the fields of which some row names what is listed."""
+def _fields_with_a_listed_name(asked: set[str], plant: Plant, names: _Names) -> frozenset[str]:
+    """Return those of the fields in which some row, or its circuit, names what is listed."""
     found: set[str] = set()
-    for each in plant.live:
-        for field, text in zip(_FIELDS, _VALUES(each.record), strict=True):
-            if text is not None and field not in found and any(names.listed(field, p) for p in _pieces(field, text)):
-                found.add(field)
-        if "area" not in found and each.record.area and names.listed("area", each.record.area):
-            found.add("area")
+    for each in plant.live if asked else ():
+        if not each.equipment_tag:
+            for named in _named(each, plant):
+                if named.field in asked and named.field not in found and names.listed(named.field, named.name):
+                    found.add(named.field)
+            if found == asked:
+                break
     return frozenset(found)
 
 
@@ -318,8 +360,14 @@ def name_not_listed(installed: Installed, plant: Plant) -> Verdict:
     []
     """
     names: _Names = plant.once("names and sheets", _names)
-    if _all_good(installed, plant, names):
+    bad = names.bad.get(id(installed))
+    if bad is None:
+        # An instrument that is only tried, and stands in no list.
+        bad = _bad(installed, plant, names)
+    if not bad:
         return None
+    if all(state == _UNKNOWN and field in names.absent for field, state in bad.items()):
+        return Unchecked(*(_TITLE_OF[field] for field in bad))
     found: dict[tuple[str, ...], Found] = {}
     absent: dict[str, None] = {}
     for named in _named(installed, plant):
