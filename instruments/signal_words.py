@@ -115,8 +115,8 @@ def _live_zero(text: str) -> bool | None:
 
 # ------------------------------------------------------------------------------------------------ inputs, outputs
 
-_PREFIX: Final = r"(?<![a-z])(?:is|sis|esd|fg|f&g|[hsnxf])?[ -]?"
-_SUFFIX: Final = r"(?:is|[hsnxipc])?(?![a-z])"
+_PREFIX: Final = r"(?<![^\W\d_])(?:is|sis|esd|fg|f&g|[hsnxf])?[ -]?"
+_SUFFIX: Final = r"(?:is|[hsnxipc])?(?![^\W\d_])"
 _IN: Final = r"[ -]?(?:in\b|inputs?\b|eing(?:ang|\u00e4nge)?\b)"
 _OUT: Final = r"[ -]?(?:out\b|outputs?\b|ausg(?:ang|\u00e4nge)?\b)"
 _ANALOGUE: Final = r"analog(?:ue|e|er)?"

@@ -790,7 +790,8 @@ def _give_loops(found: Sequence[_Draft], data: PlantData) -> None:
     derived: list[tuple[str | None, tuple[str, str] | None]] = []
     for each in found:
         loop, key = None, None
-        if each.tag is not None and each.tag.parsed:
+        # Pump P-101 is not of the pressure loop P-101.
+        if each.tag is not None and each.tag.parsed and not each.equipment_tag:
             loop = loop_of(each.tag, numbering=data.numbering) or None
             key = assembly_key(each.tag)
             if key is not None and is_valve(each.tag):

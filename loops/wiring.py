@@ -419,22 +419,30 @@ def _circuits(
     cables = _cables_of_terminations(plant)
     barriers: dict[str, tuple[Installed, ...]] = {}
     taken: set[str] = set()
-    circuits: list[Circuit] = []
-    for signal in made:
-        device, _, row = signal
-        number = (row.number if row is not None else None) or device.loop
-        key = loop_key(number)
-        several = per_loop[key] > 1 or rows.count.get(key, 0) > 1
-        name = number or device.name
-        if several and number:
-            name = f"{number} {device.name}"
-        called, count = name, 1
-        while called in taken:
-            count += 1
-            called = f"{name} ({count})"
-        taken.add(called)
-        circuits.append(_circuit(called, signal, riders.get(id(device), ()), cables, barriers, plant))
-    return tuple(circuits)
+    called: list[str] = [""] * len(made)
+    # A loop's number before the tag of a pump that is called alike.
+    for with_number in (True, False):
+        for place, (device, _, row) in enumerate(made):
+            number = (row.number if row is not None else None) or device.loop
+            if bool(number) is not with_number:
+                continue
+            key = loop_key(number)
+            several = per_loop[key] > 1 or rows.count.get(key, 0) > 1
+            called[place] = _free(f"{number} {device.name}" if number and several else number or device.name, taken)
+    return tuple(
+        _circuit(name, signal, riders.get(id(signal.device), ()), cables, barriers, plant)
+        for name, signal in zip(called, made, strict=True)
+    )
+
+
+def _free(name: str, taken: set[str]) -> str:
+    """Return a name that no circuit has yet, and take it."""
+    free, count = name, 1
+    while free in taken:
+        count += 1
+        free = f"{name} ({count})"
+    taken.add(free)
+    return free
 
 
 def _cables_of_terminations(plant: Plant) -> dict[str, list[str]]:
