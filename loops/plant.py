@@ -363,7 +363,11 @@ def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, 
 
 
 def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], frozenset[str]]:
-    """Return the entries by name, and the names that two different entries have."""
+    """Return the entries by name, and the names that two different entries have.
+
+    What two sheets say of one entry, limits on one and entity parameters on the other, is one entry where
+    they do not disagree; on one sheet two entries are two.
+    """
     found: dict[str, Any] = {}
     twice: set[str] = set()
     for record in records:
@@ -373,6 +377,8 @@ def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], fr
         other = found.get(key)
         if other is None:
             found[key] = record
+        elif _on_two_sheets(other, record) and (whole := _completed(other, record)) is not None:
+            found[key] = whole
         elif any(
             getattr(other, each.name) != getattr(record, each.name)
             for each in dataclasses.fields(record)
@@ -380,6 +386,46 @@ def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], fr
         ):
             twice.add(key)
     return found, frozenset(twice)
+
+
+def _on_two_sheets(one: Record, other: Record) -> bool:
+    if one.origin is None or other.origin is None:
+        return False
+    places = {id(one.origin.place), *(id(origin.place) for origin in one.elsewhere.values())}
+    return id(other.origin.place) not in places
+
+
+def _completed(one: Any, other: Any) -> Any:
+    """Return an entry with what another says beyond it; None where they disagree."""
+    values: dict[str, Any] = {}
+    elsewhere: dict[str, Origin] = dict(one.elsewhere)
+    for each in dataclasses.fields(one):
+        name = each.name
+        if name in _RECORD_OWN:
+            continue
+        here, there = getattr(one, name), getattr(other, name)
+        if there is None or there == each.default:
+            continue
+        if here is None or here == each.default:
+            values[name] = there
+            origin = other.elsewhere.get(name) or other.origin
+            if origin is not None:
+                elsewhere[name] = origin
+        elif name != "description" and not same_value(here, there):
+            return None
+    blank = {name for name in one.unread | other.unread if values.get(name, getattr(one, name, None)) is None}
+    return replace(
+        one,
+        **values,
+        elsewhere=MappingProxyType(elsewhere),
+        unread=frozenset(blank),
+        unitless=MappingProxyType({
+            name: text
+            for name, text in {**other.unitless, **one.unitless}.items()
+            if values.get(name, getattr(one, name, None)) is None
+        }),
+        blanks=MappingProxyType({**other.blanks, **one.blanks}),
+    )  # fmt: skip
 
 
 def _unlike_left_out(found: dict[str, Any], twice: frozenset[str]) -> tuple[dict[str, Any], frozenset[str]]:

@@ -226,12 +226,21 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
             # A lone cell below the headings is the name of a section, a row of figures is data.
             if bottom > top and sum(cell is not None for cell in sheet.rows[bottom]) < 2:
                 continue
-            if any(sum(isinstance(cell, float) for cell in sheet.rows[each]) > 2 for each in range(top, bottom + 1)):
+            if any(sum(map(_is_figure, sheet.rows[each])) > 2 for each in range(top, bottom + 1)):
+                continue
+            if bottom > top and any(map(_is_figure, sheet.rows[bottom])):
                 continue
             scored[top, bottom] = _name_score(sheet, finders, top, bottom)
     # Of equals the shorter, then the higher: a repeated heading further down is no better.
     order = sorted(scored, key=lambda block: (-scored[block], block[1] - block[0], block[0]))
     return [block for block in order if scored[block] > 0]
+
+
+_FIGURE: Final = re.compile(r"[-+]?\d{1,12}(?:[.,]\d{1,12})?")
+
+
+def _is_figure(cell: object) -> bool:
+    return isinstance(cell, float) or (isinstance(cell, str) and _FIGURE.fullmatch(cell.strip()) is not None)
 
 
 def _is_heading_text(text: str, finders: Sequence[Finder]) -> bool:

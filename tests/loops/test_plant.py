@@ -3,6 +3,9 @@ from __future__ import annotations
 import pytest
 
 from instruments.kind import Kind
+from instruments.workbook.lists import records_of_sheets
+from loops.plant import Plant, assemble
+from tests.instruments.workbook.sheets import KINDS, sheet
 from validation.example import example_plant, outcomes, said
 
 
@@ -79,3 +82,48 @@ def test_what_the_io_list_alone_says_is_checked() -> None:
     assert said("ELC16", [{**index[0], "signal": "4-20 mA"}], io_list=[{**io_list[0], "signal": ""}]) == [
         "PT-1: 4-20 mA does not fit the I/O type DI"
     ]
+
+
+LIMITS = """
+Code|Description|LRL|URL|Unit
+P1|Pressure transmitter|0|10|barg
+P2|Level switch|||
+P3|Level transmitter|0|4|m
+"""
+ENTITY = """
+Code|Description|Ex marking|Ui V|URL
+P1|PT, gauge|Ex ia IIC T4 Ga|30|
+P2|Level switch|Ex ia IIC T6 Ga|15|
+P3|Level transmitter|Ex ia IIC T4 Ga|30|5 m
+"""
+INDEX = "Tag|Service\nPT-1|Feed\nLSH-2|Feed"
+
+
+def catalogue(*texts: str, names: tuple[str, ...] = ("Device types", "Entity parameters")) -> Plant:
+    sheets = [sheet(text, name=name) for text, name in zip(texts, names, strict=False)]
+    return assemble(records_of_sheets([sheet(INDEX, name="Index"), *sheets], KINDS))
+
+
+@pytest.mark.parametrize("texts", [(LIMITS, ENTITY), (ENTITY, LIMITS)])
+def test_two_sheets_complete_an_entry_where_they_do_not_disagree(texts: tuple[str, str]) -> None:
+    plant = catalogue(*texts)
+    shown = {
+        entry.code: (str(entry.lrl), str(entry.url), entry.ex_marking, entry.ui_v) for entry in plant.types.values()
+    }
+    assert shown == {
+        "P1": ("0 barg", "10 barg", "Ex ia IIC T4 Ga", 30.0),
+        "P2": ("None", "None", "Ex ia IIC T6 Ga", 15.0),
+    }
+    assert plant.types_twice == {"p3"}
+    cells = [
+        (cell.sheet, cell.address)
+        for text in texts
+        for name in ("url" if text is LIMITS else "ui_v",)
+        for cell in plant.types["p1"].cells(name)
+    ]
+    assert cells == [("Device types", "D2"), ("Entity parameters", "D2")]
+
+
+def test_two_entries_of_one_sheet_are_two() -> None:
+    plant = catalogue("Code|LRL|URL|Unit|Ui V\nP1|0|10|bar|\nP1||||30\nP2||||30\nP3||||30")
+    assert (sorted(plant.types), plant.types_twice) == (["p2", "p3"], {"p1"})

@@ -157,6 +157,8 @@ HEADER_ROWS = [
         (1,),
         2,
     ),
+    # the first row is data, though it holds a unit
+    ("Code|LRL|URL|Unit|Ui V\nP1|0|10|bar|\nP1||||30", (0,), 1),
     # two languages, one of them not known
     (
         "Mesto|Nazev|Spin\nTag No.|Description|Set point\nPlyn / Gas||\nPSL-1|Feed|4 bar\nPSL-2|Feed|5 bar",
