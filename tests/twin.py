@@ -59,7 +59,7 @@ def cells_of(title: str, rows: Rows) -> Sheet:
 
 
 class Twin:
-    """The clean twin, read once; its variants are read where they differ from it.
+    """The clean twin, read once; its variants are read where they differ from it, or from a variant that is kept.
 
     A heading is matched once for each way in which it stands: the cells beneath it decide how it is
     understood too, but no variant here changes so many of them.
@@ -67,17 +67,22 @@ class Twin:
 
     def __init__(self) -> None:
         self.rows = twin_rows()
-        self._sheets = {title: cells_of(title, rows) for title, rows in self.rows.items()}
+        self._kept: dict[str, list[tuple[Rows, Sheet]]] = {title: [] for title in self.rows}
         self._matches: dict[object, SheetMatch | None] = {}
         self._records: dict[int, tuple[Sheet, SheetMatch, PlantData, SheetRecords]] = {}
         self._match, self._read = lists.match_sheet, lists.read_records
+        self.keep(self.rows)
+
+    def keep(self, rows: Sheets) -> Sheets:
+        """Keep what is read of lists of which variants will follow, and return them."""
+        for title, each in rows.items():
+            if self._kept_sheet(title, each) is None:
+                self._kept[title].append((each, cells_of(title, each)))
+        return rows
 
     def plant(self, rows: Sheets) -> Plant:
         """Return the plant that lists make."""
-        sheets = [
-            self._sheets[title] if each == self.rows.get(title) else cells_of(title, each)
-            for title, each in rows.items()
-        ]
+        sheets = [self._kept_sheet(title, each) or cells_of(title, each) for title, each in rows.items()]
         with (
             patch.object(lists, "match_sheet", self._match_once),
             patch.object(lists, "read_records", self._read_once),
@@ -87,6 +92,9 @@ class Twin:
     def audit(self, rows: Sheets, *, codes: Iterable[str] | None = None) -> Audit:
         """Audit lists; a rule that raises fails the test."""
         return audit(self.plant(rows), codes=codes, raise_errors=True)
+
+    def _kept_sheet(self, title: str, rows: Rows) -> Sheet | None:
+        return next((sheet for kept, sheet in self._kept[title] if kept == rows), None)
 
     def _match_once(self, sheet: Sheet, kinds: Sequence[SheetKind], **told: Any) -> SheetMatch | None:
         look = look_of(sheet.name)
@@ -98,11 +106,11 @@ class Twin:
         return self._matches[key]
 
     def _read_once(self, sheet: Sheet, match: SheetMatch, *, plant: PlantData) -> SheetRecords:
-        kept = self._records.get(id(sheet))
-        if kept is not None and kept[0] is sheet and kept[1] is match and kept[2] == plant:
-            return kept[3]
+        known = self._records.get(id(sheet))
+        if known is not None and known[0] is sheet and known[1] is match and known[2] == plant:
+            return known[3]
         found = self._read(sheet, match, plant=plant)
-        if any(sheet is each for each in self._sheets.values()):
+        if any(sheet is kept for _, kept in self._kept[sheet.name]):
             self._records[id(sheet)] = (sheet, match, plant, found)
         return found
 
