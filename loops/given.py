@@ -22,7 +22,7 @@ if TYPE_CHECKING:
 
 _FIGURE: Final = r"(\d{1,3}(?:[.,]\d{1,2})?)"
 _CURRENT: Final = r"(ac|dc|d\.c\.|a\.c\.|=|~)"
-_VOLTS: Final = re.compile(rf"(?<![\d.,]){_FIGURE} ?v(?![a-z]*a\b)(?:olts?)? ?{_CURRENT}?", re.IGNORECASE)
+_VOLTS: Final = re.compile(rf"(?<!\d)(?<!\d[.,]){_FIGURE} ?v(?![a-z]*a\b)(?:olts?)? ?{_CURRENT}?", re.IGNORECASE)
 _BETWEEN: Final = re.compile(
     rf"(?<![\d.,]){_FIGURE} ?(?:v ?(?:dc|ac)?)? ?(?:-|\u2013|to|bis|\.{{2,3}}|\u2026) ?{_FIGURE} ?v", re.IGNORECASE
 )
