@@ -334,8 +334,8 @@ def test_the_readings_that_were_considered_are_offered_with_their_unit() -> None
 @pytest.mark.parametrize(
     ("rows", "expected"),
     [
-        ([{"range unit": "Hazen"}, {"range unit": "Foo"}, {"range unit": "Foo"}],
-         "list.xlsx: range unit: none of its 3 cells can be read, such as 'Hazen': unit 'Hazen' is not known"),
+        ([{"H": "4.0.5"}, {"H": "1.2.3"}, {"H": "1.2.4"}],
+         "list.xlsx: H: none of its 3 cells can be read, such as '4.0.5': '4.0.5' is not a number"),
         ([{"area classification": "Zone X"}, {"area classification": "Foo"}],
          "list.xlsx: area classification: none of its 2 cells can be read, such as 'Zone X': no zone or division, "
          "and no word for an unclassified place, is read in it"),
