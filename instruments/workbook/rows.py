@@ -249,9 +249,11 @@ class _Sorter:
             return "data"
         named = key is not None and not isinstance(key, str)
         if not named and len(texts) <= 3 and not failed:
+            # The line itself may stand in a column of numbers, which comes first in some lists.
+            beside = {index: cell for index, cell in filled.items() if comparable[index] != first}
             if _END.fullmatch(first):
-                return "end" if not self._values(filled) else "data"
-            if _NOTE.fullmatch(first) and not self._values(filled):
+                return "end" if not self._values(beside) else "data"
+            if _NOTE.fullmatch(first) and not self._values(beside):
                 return "note"
         if self._is_section(filled, texts, key):
             return "section"

@@ -653,6 +653,17 @@ def test_rows_are_told_apart() -> None:
     )
 
 
+def test_a_line_at_the_foot_may_stand_under_numbers() -> None:
+    found = read("H (bar)|Tag|Service\n8|PT-1|Feed\nPage 1 of 3||\n8|PT-2|Feed\n8||Note this\nEND OF LIST||\nNOTES||")
+    assert all_said(found, "tag", "service") == [
+        {"tag": "PT-1", "service": "Feed"},
+        {"tag": "PT-2", "service": "Feed"},
+        {"service": "Note this"},
+    ]
+    assert found.notes == ((3, "Page 1 of 3"), (6, "END OF LIST"), (7, "NOTES"))
+    assert found.problems == ()
+
+
 def test_both_rows_of_a_repeated_heading_are_dropped() -> None:
     found = read("Tag|Range||\n|Min|Max|Units\nPT-1|0|9|bar\nTag|Range||\n|Min|Max|Units\nPT-2|0|9|bar")
     assert [record.tag for record in found.records] == ["PT-1", "PT-2"]
