@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+import re
 from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, fields, replace
+from functools import lru_cache
 from typing import Final
 
 from instruments.installed import Installed
 from instruments.kind import Kind, can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
 from instruments.letters import read_letters
 from instruments.record import Instrument, Record
+from instruments.signal_words import io_types
 from instruments.tag import (
     TagReading,
     assembly_key,
@@ -29,7 +32,7 @@ from instruments.tag import (
 from instruments.unit import Unit
 from instruments.unit_table import unit_label
 from loops.plant import Plant, disagreements, loop_of_assembly
-from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
+from validation.finding import Clear, Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule, title_of
 
 TAG08_DISAGREEMENT_PERCENT = 20.0
@@ -389,6 +392,10 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
     assert reading is not None
     if reading.legal == "legal":
         return None
+    if _alarm_is_last(reading.letters) and plant.once("writes alarms last", _writes_alarms_last):
+        return Clear(assumed=("an alarm behind the controller is the older European order: LICA",))
+    if _reports_closed(installed):
+        return None
     nearest = nearest_legal_letters(reading.letters, codes=frozenset(plant.codes))
     tags = [_with_letters(reading, letters, plant) for letters in nearest]
     # P1-10 is PI-10 with a digit for a letter.
@@ -408,6 +415,37 @@ def letters_out_of_order(installed: Installed, plant: Plant) -> Verdict:
         fixes=fixes,
         message=message,
     )
+
+
+def _reports_closed(installed: Installed) -> bool:
+    """Whether ZIC or XIC is closed indication beyond doubt: a contact on a digital input controls nothing."""
+    if installed.letters not in ("ZIC", "XIC"):
+        return False
+    kinds = {kind for row in installed.channels for kind in io_types(row.io_type)}
+    return kinds == {"DI"} or (installed.kind_from == "row" and installed.kind in (Kind.SWITCH, Kind.LAMP))
+
+
+@lru_cache(maxsize=4096)
+def _alarm_is_last(letters: str) -> bool:
+    reading = read_letters(letters)
+    return reading.legal == "ambiguous" and reading.problem.startswith("alarm after output")
+
+
+_ALARM_BEFORE: Final = re.compile(r"[A-Z]{1,3}A[HL]{0,2}C")
+
+
+def _writes_alarms_last(plant: Plant) -> bool:
+    """Whether the list is of the older tradition beyond doubt: one such tag may be a slip, a manner is none.
+
+    It has several such tags, or records and names its measuring points as older lists do; and no tag has
+    the alarm before the controller.
+    """
+    tags = {each.tag.normalised: each for each in plant.live if each.tag is not None and each.letters}
+    if any(_ALARM_BEFORE.fullmatch(each.letters) for each in tags.values()):
+        return False
+    last = sum(_alarm_is_last(each.letters) for each in tags.values())
+    older = sum(each.measuring_point or "R" in each.letters[1:] for each in tags.values())
+    return last >= 2 or older >= 3
 
 
 def _with_letters(reading: TagReading, letters: str, plant: Plant) -> str:

@@ -284,6 +284,36 @@ def test_letters_follow_each_other(tag: str, expected: str, offered: list[str]) 
 
 
 @pytest.mark.parametrize(
+    ("tags", "reviewed"),
+    [
+        ("LICA-5", "LICA-5"),
+        # Several are a manner, and so is one among recorders; a list that has both orders has slips.
+        ("LICA-5 TRCA-6", ""),
+        ("LICA-5 FRC-1 TIR-2 PR-4", ""),
+        ("LICA-5 FRC-1 TIR-2", "LICA-5"),
+        ("LICA-5 TRCA-6 PIAC-7", "LICA-5 TRCA-6"),
+    ],
+)
+def test_the_older_order_is_a_manner(tags: str, reviewed: str) -> None:
+    lines = tell("TAG05", *tags.split())
+    assert " ".join(line.split()[1].rstrip(":") for line in lines) == reviewed
+
+
+@pytest.mark.parametrize(
+    ("row", "reviewed"),
+    [
+        ({"I/O type": "DI"}, False),
+        ({"I/O type": "AO"}, True),
+        ({"I/O type": "DI/DO"}, True),
+        ({"kind": "Limit switch"}, False),
+        ({"kind": "Controller"}, True),
+    ],
+)
+def test_a_contact_reports_and_controls_nothing(row: Row, reviewed: bool) -> None:
+    assert bool(tell("TAG05", {"tag": "ZIC-1", **row})) is reviewed
+
+
+@pytest.mark.parametrize(
     ("rows", "plant", "expected"),
     [
         (["LCP-1"], {}, {"finding": 1}),
