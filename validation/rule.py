@@ -99,6 +99,11 @@ class Registry:
         self._rules[rule.code] = rule
         self._in_order = None
 
+    def remove(self, code: str) -> None:
+        """Take a rule out; KeyError where there is none."""
+        del self._rules[code]
+        self._in_order = None
+
     def __iter__(self) -> Iterator[Rule]:
         if self._in_order is None:
             self._in_order = tuple(sorted(self._rules.values(), key=lambda rule: rule.code))
