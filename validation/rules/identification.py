@@ -10,7 +10,15 @@ from functools import lru_cache
 from typing import Final
 
 from instruments.installed import Installed
-from instruments.kind import Kind, can_bear, derive_kind, dimension_allowed, letters_for_kind, measured_variable
+from instruments.kind import (
+    Kind,
+    can_bear,
+    derive_kind,
+    dimension_allowed,
+    kinds_from_words,
+    letters_for_kind,
+    measured_variable,
+)
 from instruments.letters import read_letters
 from instruments.record import Instrument, Record
 from instruments.signal_words import io_types
@@ -704,9 +712,12 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
         unsaid = can_bear(kind, installed.letters, codes=plant.codes, scheme=reading.scheme, measuring_point=None)
         if unsaid is None:
             return Unchecked("signal")
-    if bears is None:
+    of_another = ""
+    if bears is not False and installed.kind_from == "row" and reading.scheme == "isa" and reading.code is None:
+        of_another = _other_variable(installed.record.kind_written or "", installed.letters)
+    if bears is None and not of_another:
         return NotApplicable("practice differs on these letters")
-    if bears:
+    if bears and not of_another:
         return None
     signal = any(row.signal or row.io_type or row.io_address or row.card for row in installed.signals)
     derived = derive_kind(
@@ -716,11 +727,17 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
         codes=plant.codes,
         scheme=reading.scheme,
     )
-    letters = letters_for_kind(kind, installed.letters, codes=plant.codes)
+    letters: Iterable[str] = letters_for_kind(kind, installed.letters, codes=plant.codes)
+    if of_another:
+        letters = (of_another + installed.letters[1:],)
     tags = [_with_letters(reading, each, plant) for each in letters]
     written = installed.record.kind_written or str(kind)
     return Found(
-        values={"kind": kind.with_article, "letters": installed.letters, "written": written},
+        values={
+            "kind": f"a kind written '{written}'" if of_another else kind.with_article,
+            "letters": installed.letters,
+            "written": written,
+        },
         fields=("kind", "tag") if installed.kind_from == "row" else ("device_type", "tag"),
         found=written,
         wanted="" if derived is None else derived.value,
@@ -729,6 +746,39 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
             *((Fix(text=f"kind {derived.value}", change={"kind": derived.value}),) if derived else ()),
         ),
     )
+
+
+# The variable that a kind's words name, where they name one; thermal and float are principles.
+_VARIABLE_WORDS: Final = tuple(
+    (letter, re.compile(pattern))
+    for letter, pattern in (
+        ("T", r"\btemp(?:eratur\w*|\.|\b)|\bthermo(?:met|coup|well|elem)|\brtd\b|\bpt ?-?100|\w+thermometer"),
+        ("P", r"\bpress(?:ure|\.|\b)|\bdruck|\bmanomet|\bvacuum|\bdp\b|\bdiff"),
+        ("F", r"\bflow|\bdurchflu|\brotamet|\bschwebek"),
+        ("L", r"\blevel|\bf(?:ü|ue)llstand|\bniveau|\bstandgla|\bstandanz"),
+    )
+)
+# First letters that cannot be measured so: a pressure may stand for flow and level, and for no temperature.
+_NOT_MEASURED_BY: Final = {"T": "PFL", "P": "T", "F": "PTL", "L": "PTF"}
+# The flow of a flume or a weir is measured by its level.
+_OF_A_CHANNEL: Final = re.compile(r"ultraso|radar|channel|flume|weir|hydrosta|submers|bubbler")
+_SENSES: Final = frozenset(
+    {Kind.TRANSMITTER, Kind.ELEMENT, Kind.SWITCH, Kind.GAUGE, Kind.GLASS, Kind.INDICATOR, Kind.PRIMARY_ELEMENT}
+)
+
+
+@lru_cache(maxsize=4096)
+def _other_variable(written: str, letters: str) -> str:
+    """The variable that a kind's words name where it is not that of the letters: temperature transmitter, PIT."""
+    text = written[:100].casefold()
+    named = [letter for letter, pattern in _VARIABLE_WORDS if pattern.search(text)]
+    if len(named) != 1 or letters[1:2] in ("D", "F", "Q"):
+        return ""
+    if letters[0] == "F" and named[0] == "L" and _OF_A_CHANNEL.search(text):
+        return ""
+    kinds = kinds_from_words(written)
+    agrees = not kinds or kinds[0] not in _SENSES or letters[0] not in _NOT_MEASURED_BY[named[0]]
+    return "" if agrees else named[0]
 
 
 def _may_be_a_point(installed: Installed, plant: Plant) -> bool:

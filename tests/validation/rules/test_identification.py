@@ -544,6 +544,37 @@ def test_a_stated_kind_bears_its_letters(row: Row, expected: list[str], offered:
 
 
 @pytest.mark.parametrize(
+    ("tag", "kind", "meant"),
+    [
+        ("PIT-1", "Temperature transmitter", "TIT-1"),
+        ("TT-1", "Pressure transmitter", "PT-1"),
+        ("TI-1", "Manometer", "PI-1"),
+        ("PI-1", "Bimetallthermometer", "TI-1"),
+        ("LSH-1", "Flow switch", "FSH-1"),
+        ("PT-1", "Füllstandmessumformer", "LT-1"),
+        ("FT-1", "Level transmitter", "LT-1"),
+        # A pressure stands for level and flow, a level for the flow of a channel.
+        ("LT-1", "Pressure transmitter", ""),
+        ("FT-1", "DP transmitter", ""),
+        ("FT-1", "Ultrasonic level transmitter", ""),
+        # Two variables, a principle, another variable altogether, a valve.
+        ("FT-1", "Flow transmitter with temperature compensation", ""),
+        ("FT-1", "Thermal mass flowmeter", ""),
+        ("AT-1", "Temperature transmitter", ""),
+        ("PDT-1", "Flow transmitter", ""),
+        ("LV-1", "Flow control valve", ""),
+        ("TE-1", "RTD Pt100", ""),
+    ],
+)
+def test_the_words_of_a_kind_name_the_variable_of_its_letters(tag: str, kind: str, meant: str) -> None:
+    row = {"tag": tag, "kind": kind, "I/O type": "AI"}
+    letters = tag.partition("-")[0]
+    expected = [f"{tag}: a kind written '{kind}' cannot bear the letters {letters}"] if meant else []
+    assert tell("TAG09", row) == expected
+    assert [change["tag"] for _, _, change in fixes("TAG09", row) if "tag" in change] == ([meant] if meant else [])
+
+
+@pytest.mark.parametrize(
     ("rows", "expected"),
     [
         ([{"tag": "PT-1", "kind": ""}], {"not applicable": 1}),
