@@ -192,7 +192,8 @@ class Contents:
             return max(listed, 0.6 * (1 - self.holds(_AREA_CLASS)))
         if name == "device_type":
             listed = sum(folded(text) in codes for text in self.texts) / self.count
-            return listed if codes else 0.3 * self.part(_CODE_LIKE)
+            # Codes of which none is listed are codes still: that they are not listed is for a rule to find.
+            return max(listed, 0.3 * self.part(_CODE_LIKE))
         if name == "model":
             return 0.3 + 0.3 * self.part(_CODE_LIKE)
         if name in ("equipment", "line"):
