@@ -232,9 +232,11 @@ def _named_by(plant: Plant) -> dict[int, list[Installed]]:
 
 
 def _acts_through_another(loop: Loop, controllers: list[Installed], plant: Plant) -> bool:
-    """Whether a controller, or the loop list, names another controller: a cascade, an override."""
+    """Whether a controller, or the loop list, names another controller, or another loop's final element: a cascade."""
     for controller in controllers:
-        if any(_is_controller(each) for each in _named_in(controller.record.remarks, loop, plant)):
+        if any(
+            _is_controller(each) or _acts(each, plant) for each in _named_in(controller.record.remarks, loop, plant)
+        ):
             return True
     named_by: dict[int, list[Installed]] = plant.once("controllers by whom they name", _named_by)
     if any(named_by.get(id(controller)) for controller in controllers):

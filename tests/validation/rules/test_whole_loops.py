@@ -142,6 +142,8 @@ CASCADE = ["TT-300", "FIC-301", "FT-301", "FV-301"]
         ([{"tag": "TIC-300", "remarks": "cascade to FIC-301"}, *CASCADE], []),
         ([{"tag": "TIC-300", "remarks": "cascade to FIC 301"}, *CASCADE], []),
         ([{"tag": "TIC-300", "remarks": "see FT-301"}, *CASCADE], [NO_FINAL.format("T-300", "TIC-300")]),
+        # The other loop's valve, named itself.
+        ([{"tag": "TIC-300", "remarks": "override, output to FV-301"}, *CASCADE], []),
         ([{"tag": "TIC-300", "remarks": "cascade to FIC-302"}, *CASCADE], [NO_FINAL.format("T-300", "TIC-300")]),
         (["TIC-300", "TT-300", {"tag": "FIC-301", "remarks": "set point from TIC-300"}, "FT-301", "FV-301"], []),
         ([{"tag": "10-TIC-300", "remarks": "Cascade to 10-FIC-301"}, "10-TT-300", "10-FIC-301", "10-FT-301",
