@@ -182,7 +182,7 @@ class Contents:
         if name == "code":
             # Each entry of a register has a code of its own; AI and DI are none.
             different = len(set(self.texts)) / self.count
-            return 0.0 if self.part(IO_WORD) > 0.5 else 0.6 if different > 0.7 else 0.2
+            return 0.0 if self.part(IO_WORD) > 0.5 else 0.6 if different > 0.7 or self.count < 8 else 0.2
         if name == "signal":
             return max(self.holds(_SIGNAL), 0.4 * (1 - self.part(IO_WORD)))
         if name in ("area_classification", "process_zone"):

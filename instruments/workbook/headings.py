@@ -405,12 +405,17 @@ def _assign(
         if not candidates:
             continue
         several = sum(candidate.how == "synonym" for candidate in candidates) > 1
-        for candidate in candidates:
-            cells = content(index)
-            fit = cells.fit(candidate.column, codes)
-            if not _believed(candidate, cells, fit, several):
-                continue
-            offers.append((candidate.strength * (0.5 + 0.5 * fit), index, candidate, fit, several))
+        cells = content(index)
+        fits = [(candidate, cells.fit(candidate.column, codes)) for candidate in candidates]
+        believed = [(candidate, fit) for candidate, fit in fits if _believed(candidate, cells, fit, several)]
+        if not believed and several:
+            # The contents fit nothing that the heading may mean; where it is the field's own name it means that,
+            # and what cannot be read in it is told. A column left out would be silent.
+            own = heading_words(heading.joined)
+            believed = [(candidate, fit) for candidate, fit in fits if heading_words(candidate.column.title) == own]
+        offers.extend(
+            (candidate.strength * (0.5 + 0.5 * fit), index, candidate, fit, several) for candidate, fit in believed
+        )
     offers.sort(key=lambda offer: (-offer[0], offer[1]))
     columns: dict[str, ColumnMatch] = {}
     taken: set[str] = set()
