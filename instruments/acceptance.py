@@ -132,9 +132,7 @@ def epl_in_zone(
     if process_zone:
         inside = read_classification(process_zone)
         if inside is None or not (inside.unclassified or inside.zone in EPLS_IN_ZONE):
-            return _worst(
-                [*outcomes, _unknown(f"cannot read the zone {process_zone!r}", "process-side zone")]
-            )
+            return _worst([*outcomes, _unknown(f"cannot read the zone {process_zone!r}", "process-side zone")])
         if inside.zone is not None:
             needed = EPLS_IN_ZONE[inside.zone]
             outcomes.append(_epl_outcome(process, f"Zone {inside.zone} on the process side", needed, ""))
@@ -159,9 +157,7 @@ def _epl_outcome(epl: str, place: str, accepts: frozenset[str], remark: str) -> 
     return _refused(f"EPL {epl}{remark} in {place}, which accepts {', '.join(sorted(accepts))}")
 
 
-def entry_in_zone(
-    entry: MarkingEntry, area: Area, *, side: AreaSide, process_zone: str | None = None
-) -> Acceptance:
+def entry_in_zone(entry: MarkingEntry, area: Area, *, side: AreaSide, process_zone: str | None = None) -> Acceptance:
     """Say whether an area accepts the EPL of one marking, with what the marking itself leaves in doubt.
 
     An EPL stronger than each of its protections allows is never accepted without a person, nor is flameproof
@@ -189,9 +185,7 @@ def entry_in_zone(
         return found
     if entry.epl_beyond_protections:
         protections = " ".join(entry.protections)
-        return _review(
-            f"EPL {entry.epl_text} is more than {protections} allows; only the certificate can tell"
-        )
+        return _review(f"EPL {entry.epl_text} is more than {protections} allows; only the certificate can tell")
     if "da" in entry.protections and "Ga" in (entry.epl, entry.epl_process) and "0" in (zone, process_zone):
         return _review("type da is for the sensors of portable gas detectors")
     if entry.epl_source == "derived":
@@ -255,9 +249,7 @@ def gas_group(entry: MarkingEntry, area_group: str | None, *, gas: str | None = 
     ['accepted', 'refused', 'review']
     """
     if entry.group_contradicts_epl:
-        return _unknown(
-            f"group {entry.group_text} contradicts EPL {entry.epl_text}", "gas group of the marking"
-        )
+        return _unknown(f"group {entry.group_text} contradicts EPL {entry.epl_text}", "gas group of the marking")
     if entry.group is None and not entry.gas_only:
         return _unknown("the marking has no gas group", "gas group of the marking")
     if entry.group == "I" or (entry.group or "").startswith("III"):
@@ -314,9 +306,7 @@ def dust_group(entry: MarkingEntry, area_group: str | None) -> Acceptance:
     ('refused', 'accepted')
     """
     if entry.group_contradicts_epl:
-        return _unknown(
-            f"group {entry.group_text} contradicts EPL {entry.epl_text}", "dust group of the marking"
-        )
+        return _unknown(f"group {entry.group_text} contradicts EPL {entry.epl_text}", "dust group of the marking")
     if entry.group is None:
         return _unknown("the marking has no dust group", "dust group of the marking")
     if not entry.group.startswith("III"):
@@ -413,9 +403,7 @@ def temperature(
     limits = [T_CODE_C[area_class]] if area_class else []
     counts = entry.temperature_at(ambient_max_c, ambient_min_c=ambient_min_c)
     if counts is None:
-        return _refused(
-            f"{entry.temperature_text}: no class is marked for an ambient of {ambient_max_c:g} degC"
-        )
+        return _refused(f"{entry.temperature_text}: no class is marked for an ambient of {ambient_max_c:g} degC")
     cool = min(entry.temperatures, key=lambda each: each.max_c)
     if ambient_max_c is None and entry.is_paired and not _cool_enough(counts.max_c, limits, ignition_c):
         if _cool_enough(cool.max_c, limits, ignition_c):
@@ -468,9 +456,7 @@ def dust_surface(entry: MarkingEntry, area: Area, *, ambient_max_c: float | None
     if bound is not None and marked > bound:
         return _refused(f"{marked:g} degC marked, at most {bound:.4g} permitted: {permitted.working}")
     if permitted.limit_c is None:
-        return (
-            _unknown(permitted.reason, *permitted.missing) if permitted.missing else _review(permitted.reason)
-        )
+        return _unknown(permitted.reason, *permitted.missing) if permitted.missing else _review(permitted.reason)
     return _accepted(
         f"{marked:g} degC marked, {permitted.limit_c:.4g} permitted: {permitted.working}",
         *permitted.assumptions,
@@ -505,9 +491,7 @@ def ambient(entry: MarkingEntry, *, area_min_c: float | None, area_max_c: float 
         return _refused(f"ambient up to {area_max_c:g} degC, the marking covers {covers}")
     if area_min_c is not None and low is not None and area_min_c < low:
         return _refused(f"ambient down to {area_min_c:g} degC, the marking covers {covers}")
-    blank = [
-        name for name, value in (("ambient min", area_min_c), ("ambient max", area_max_c)) if value is None
-    ]
+    blank = [name for name, value in (("ambient min", area_min_c), ("ambient max", area_max_c)) if value is None]
     if blank:
         return _unknown(f"the area has no {' and no '.join(blank)}", *blank)
     if low is None:
@@ -743,9 +727,7 @@ def _no_letter() -> Acceptance:
     return _unknown("the area has no group letter", "group")
 
 
-def _letters_for_gas(
-    entry: MarkingEntry, area_group: str | None, nec_group: str | None, gas: str
-) -> Acceptance:
+def _letters_for_gas(entry: MarkingEntry, area_group: str | None, nec_group: str | None, gas: str) -> Acceptance:
     marked = set(entry.groups)
     if not marked:
         return _unknown("the marking has no group letter", "group of the marking")
@@ -876,9 +858,7 @@ def best_entry(
             if crosses_systems(entry, area):
                 found.append(translated_group(entry, area, side=side))
             else:
-                found.append(
-                    division_group(entry.groups, area.dust_group if side == "dust" else area.gas_group)
-                )
+                found.append(division_group(entry.groups, area.dust_group if side == "dust" else area.gas_group))
         elif side == "gas":
             found += [
                 entry_in_zone(entry, area, side=side, process_zone=process_zone),

@@ -182,9 +182,7 @@ def _letters_text(entries: list[MarkingEntry]) -> str:
         return f"NEC {','.join(letters)}" if letters else "none"
     if not any(letters for _, letters in said):
         return "none"
-    return "NEC " + "; ".join(
-        f"{class_}:{','.join(letters)}" if letters else f"{class_}" for class_, letters in said
-    )
+    return "NEC " + "; ".join(f"{class_}:{','.join(letters)}" if letters else f"{class_}" for class_, letters in said)
 
 
 @lru_cache(maxsize=4096)

@@ -333,9 +333,7 @@ class MarkingEntry:
     @property
     def t_class_on_dust(self) -> bool:
         """True where dust is marked with a T class instead of degrees (IEC 60079-0 5.3.2.3, from memory)."""
-        return (
-            self.side == "dust" and self.class_ is None and any(t.celsius is None for t in self.temperatures)
-        )
+        return self.side == "dust" and self.class_ is None and any(t.celsius is None for t in self.temperatures)
 
     @property
     def epl_beyond_protections(self) -> bool:
@@ -406,9 +404,7 @@ class MarkingEntry:
         return f"min {marked.min_c:g}, upper default {self.ambient_max_c:g}"
 
 
-def side_of_group(
-    group: str | None, protections: tuple[str, ...], categories: tuple[Category, ...]
-) -> Side | None:
+def side_of_group(group: str | None, protections: tuple[str, ...], categories: tuple[Category, ...]) -> Side | None:
     """Return the atmosphere that a group is for; without a group, that of the symbols or categories."""
     if group:
         return "mines" if group == "I" else "dust" if group.startswith("III") else "gas"
@@ -439,9 +435,7 @@ def _contradictions(entry: MarkingEntry) -> Iterable[Contradiction]:
         fitting = CLASS_LETTERS[entry.class_]
         strange = [letter for letter in entry.groups if letter not in fitting]
         if strange:
-            yield Contradiction(
-                kind="group and class", text=f"Class {entry.class_} has no group {', '.join(strange)}"
-            )
+            yield Contradiction(kind="group and class", text=f"Class {entry.class_} has no group {', '.join(strange)}")
         return
     yield from _category_contradictions(entry)
     if entry.group_contradicts_epl:
@@ -452,13 +446,9 @@ def _contradictions(entry: MarkingEntry) -> Iterable[Contradiction]:
             text=f"EPL {entry.epl_text} is more than {' '.join(entry.protections)} allows",
         )
     if entry.t_class_on_dust:
-        yield Contradiction(
-            kind="T class on dust", text=f"{entry.temperature_text} on dust, where degrees are needed"
-        )
+        yield Contradiction(kind="T class on dust", text=f"{entry.temperature_text} on dust, where degrees are needed")
     if entry.zone and entry.epl and entry.epl not in EPLS_IN_ZONE[entry.zone]:
-        yield Contradiction(
-            kind="zone and EPL", text=f"marked for Zone {entry.zone} with EPL {entry.epl_text}"
-        )
+        yield Contradiction(kind="zone and EPL", text=f"marked for Zone {entry.zone} with EPL {entry.epl_text}")
 
 
 def _category_contradictions(entry: MarkingEntry) -> Iterable[Contradiction]:
@@ -480,9 +470,7 @@ def _category_contradictions(entry: MarkingEntry) -> Iterable[Contradiction]:
     if entry.epl_source == "explicit":
         process = category.epl(category.process) or category.epl(category.body)
         if (category.epl(category.body), process) != (entry.epl, entry.epl_process or entry.epl):
-            yield Contradiction(
-                kind="category and EPL", text=f"category {category.text} with EPL {entry.epl_text}"
-            )
+            yield Contradiction(kind="category and EPL", text=f"category {category.text} with EPL {entry.epl_text}")
     elif entry.epl and (body := category.epl(category.body)) and stronger(body, entry.epl):
         yield Contradiction(
             kind="category and EPL",
@@ -491,9 +479,7 @@ def _category_contradictions(entry: MarkingEntry) -> Iterable[Contradiction]:
     fed = [output.epl for output in entry.outputs if output.epl_marked and output.epl]
     fed = [epl for epl in fed if epl[0] == letter]
     if category.output and fed and category.epl(category.output) != strongest(fed):
-        yield Contradiction(
-            kind="category and EPL", text=f"category {category.text} with outputs for {strongest(fed)}"
-        )
+        yield Contradiction(kind="category and EPL", text=f"category {category.text} with outputs for {strongest(fed)}")
 
 
 def division_text(entry: MarkingEntry) -> str:

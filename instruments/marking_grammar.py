@@ -76,9 +76,7 @@ GAS_EXTRA: Final = Token(
 GAS_ONLY: Final = Token(r"\(\s*([^()°≤<≥>=]{1,40})\s*\)")
 T_CLASS: Final = Token(r"T([1-6])(?!\d|[A-D](?![a-z]))")
 T_CODE: Final = Token(r"T\s?([1-6])([A-D])?(?![A-Za-z0-9])", any_case=True)
-T_CODE_WORD: Final = Token(
-    r"(?:T(?:emp(?:erature)?)?\.?[-\s]?(?:code|class)|TC)(?![A-Za-z])\s*[:=]?", any_case=True
-)
+T_CODE_WORD: Final = Token(r"(?:T(?:emp(?:erature)?)?\.?[-\s]?(?:code|class)|TC)(?![A-Za-z])\s*[:=]?", any_case=True)
 T_LAYER: Final = Token(r"T\s*(\d{2,4})(?:\s*mm)?\s+T?\s*(\d{2,3})" + _DEGREE_RUN)
 T_CELSIUS: Final = Token(r"(?:T\s*[=:]?\s*)?(\d{2,3})" + _DEGREE_RUN)
 T_NO_UNIT: Final = Token(r"T\s?(\d{2,3})(?![\d°]|\s*\d)(?=[\s,;/)A-Z]|$)")
@@ -90,9 +88,7 @@ T_LIST: Final = Token(
     r"(\.{2,3}|-|~|/|,|&|\+|to(?![A-Za-z])|bis(?![A-Za-z])|and(?![A-Za-z]))(?=\s*T\s*\d)", any_case=True
 )
 T_LIST_PAIRED: Final = Token(r";(?=\s*T\s*\d)")
-C_LIST: Final = Token(
-    r"(?:\.{2,3}|to(?![A-Za-z])|bis(?![A-Za-z])|-)\s*(?:T\s*)?(\d{2,3})" + _DEGREE, any_case=True
-)
+C_LIST: Final = Token(r"(?:\.{2,3}|to(?![A-Za-z])|bis(?![A-Za-z])|-)\s*(?:T\s*)?(\d{2,3})" + _DEGREE, any_case=True)
 AT: Final = Token(r"(?:@|at(?![A-Za-z])|for(?![A-Za-z])|bei(?![A-Za-z])|:)", any_case=True)
 EPL: Final = Token(r"([GD][abc]|M[ab])(?![A-Za-z0-9])(?:\s*/\s*([GD][abc]|M[ab])(?![A-Za-z0-9]))?")
 SUFFIX: Final = Token(r"([XU])(?![A-Za-z0-9])")
@@ -298,9 +294,7 @@ def _categories(group: str, match: re.Match[str]) -> tuple[Category, ...]:
     process = min(numbers) if len(numbers) == 2 and numbers[0] != numbers[1] else None
     if match["outside"] and match["outside"].upper() != "".join(letters):
         return ()
-    made = [
-        Category(group=group, letter=letter, body=body, process=process, output=output) for letter in letters
-    ]
+    made = [Category(group=group, letter=letter, body=body, process=process, output=output) for letter in letters]
     if match["behind"]:
         fed = [letter for letter in "GD" if letter in match["behindside"].upper()]
         made = [replace(c, output=match["behind"]) if c.letter in fed else c for c in made]
@@ -426,9 +420,7 @@ def take_class(scanner: Scanner) -> ClassPart | None:
         if part.division is None and (match := scanner.take(DIVISION)):
             part.division = min(match[1], match[2] or match[1])  # Div 1 & 2: what Div 1 accepts, both accept
             continue
-        if not part.letters and (
-            scanner.take(GROUPS) or part.division
-        ):  # Class I Div 2 BCD, without the word
+        if not part.letters and (scanner.take(GROUPS) or part.division):  # Class I Div 2 BCD, without the word
             part.letters = take_letters(scanner)
             if part.letters:
                 continue
@@ -445,8 +437,7 @@ def class_letters(part: ClassPart) -> list[tuple[str, tuple[str, ...]]]:
     if len(part.classes) == 1:
         return [(part.classes[0], part.letters)]
     return [
-        (class_, tuple(letter for letter in part.letters if letter in CLASS_LETTERS[class_]))
-        for class_ in part.classes
+        (class_, tuple(letter for letter in part.letters if letter in CLASS_LETTERS[class_])) for class_ in part.classes
     ]
 
 
@@ -684,13 +675,9 @@ class RecordReader:
             break
         series = any(protection.partition(" ")[0] in DUST_SERIES for protection in protections)
         if not groups and not series:
-            raise UnreadableMarking(
-                f"no gas or dust group in {scanner.text[start : scanner.position].strip()!r}"
-            )
+            raise UnreadableMarking(f"no gas or dust group in {scanner.text[start : scanner.position].strip()!r}")
         if not protections and (epl or temperatures):
-            raise UnreadableMarking(
-                "an EPL or a temperature, but no type of protection of the equipment itself"
-            )
+            raise UnreadableMarking("an EPL or a temperature, but no type of protection of the equipment itself")
         group = _weakest_group(groups) or "III"
         body_side = SIDE_OF_LETTER[epl[1][0]] if epl else side_of_group(group, protections, ())
         classes, degrees = _apart(temperatures)
@@ -736,9 +723,7 @@ class RecordReader:
             and self.scanner.peek(T_CELSIUS) is not None
         )
 
-    def _dust_of_old_mark(
-        self, categories: tuple[Category, ...], temperatures: tuple[MarkedTemperature, ...]
-    ) -> None:
+    def _dust_of_old_mark(self, categories: tuple[Category, ...], temperatures: tuple[MarkedTemperature, ...]) -> None:
         scanner = self.scanner
         here = scanner.position
         scanner.take(SOFT_SEPARATOR)
@@ -875,9 +860,7 @@ def _with_epl(entry: MarkingEntry) -> MarkingEntry:
     if derived is None:
         if entry.protections and all(protection_epl(p, side=side) == "" for p in entry.protections):
             return entry  # a protection that is not for this atmosphere: the category alone is no evidence
-        return replace(
-            entry, epl=body, epl_process=process if process != body else None, epl_source="category"
-        )
+        return replace(entry, epl=body, epl_process=process if process != body else None, epl_source="category")
     if not stronger(derived, body):
         return replace(entry, epl=derived, epl_source="derived")
     process = weakest([derived, process])

@@ -25,9 +25,7 @@ _SIGNS: Final = str.maketrans(
     }
 )
 _SUBSCRIPT_BEFORE_DIGIT: Final = re.compile("([₀-₉])(?=[0-9])")
-_DEGREES_BEFORE_FOLDING: Final = str.maketrans(
-    {"º": "°", "˚": "°", "∘": "°"}
-)  # NFKC would make letters of them
+_DEGREES_BEFORE_FOLDING: Final = str.maketrans({"º": "°", "˚": "°", "∘": "°"})  # NFKC would make letters of them
 
 
 def normalised(text: str) -> tuple[str, bool]:

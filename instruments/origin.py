@@ -34,8 +34,7 @@ class Origin:
         found = columns.get(name) or ()
         if self.place.turned:
             return tuple(
-                Cell(file=self.place.file, sheet=self.place.sheet, row=line + 1, column=self.row - 1)
-                for line in found
+                Cell(file=self.place.file, sheet=self.place.sheet, row=line + 1, column=self.row - 1) for line in found
             )
         return tuple(
             Cell(file=self.place.file, sheet=self.place.sheet, row=self.row, column=column) for column in found

@@ -198,9 +198,7 @@ def smallest_span(
     return max(stated, default=None)
 
 
-def range_with_span(
-    lrv: float, urv: float, *, at_least: float, lrl: float, url: float
-) -> tuple[float, float] | None:
+def range_with_span(lrv: float, urv: float, *, at_least: float, lrl: float, url: float) -> tuple[float, float] | None:
     """Range widened to a span, LRV kept where the body allows it; None where the body is too small.
 
     Parameters

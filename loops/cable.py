@@ -178,9 +178,7 @@ _AWG_BEFORE: Final = re.compile(r"(?<![0-9.,])(?<![0-9]/)([0-9]{1,2}) ?-?(?:awg|
 _AWG_BEHIND: Final = re.compile(r"(?<![a-z])awg ?[#:.\-]? ?([0-9]{1,2})(?![0-9.,]|/0)")
 _AWG_SIGN: Final = re.compile(r"# ?([0-9]{1,2})(?![0-9.,]|/0)")
 # "7/0.67mm": seven strands of 0.67 mm diameter, beside the size that they make up.
-_STRANDS: Final = re.compile(
-    r"(?<![0-9.,])[0-9]{1,3} ?/ ?0?[.,][0-9]{1,3}(?: ?mm(?! ?(?:2|\^|sq)))?(?![0-9])"
-)
+_STRANDS: Final = re.compile(r"(?<![0-9.,])[0-9]{1,3} ?/ ?0?[.,][0-9]{1,3}(?: ?mm(?! ?(?:2|\^|sq)))?(?![0-9])")
 _TWO_SIZES: Final = re.compile(
     r"[0-9] ?(?:/|&|\+|-|to|or|and|bis|oder|und) ?(?:[0-9]{0,3}[.,])?[0-9]{1,4} ?(?:mm|sq|qmm|awg)"
 )

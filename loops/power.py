@@ -224,9 +224,7 @@ def over_voltage(
     )
 
 
-def max_loop_ohm(
-    supply_v: float, current_ma: float, *, needed_v: float, fixed_v: float = 0.0
-) -> float | None:
+def max_loop_ohm(supply_v: float, current_ma: float, *, needed_v: float, fixed_v: float = 0.0) -> float | None:
     """Largest resistance in ohm that a loop may have at a current; None where the supply alone falls short.
 
     Parameters
@@ -279,9 +277,7 @@ def longest_cable_m(
 
     def passes(length_m: int) -> bool:
         ohm = loop_resistance_ohm(length_m, ohm_per_km_20c, conductor_c=conductor_c, per=per)
-        at_terminals_v = volts_at_transmitter(
-            supply_v, current_ma, (*resistances, ("cable", ohm)), fixed_drops
-        )
+        at_terminals_v = volts_at_transmitter(supply_v, current_ma, (*resistances, ("cable", ohm)), fixed_drops)
         return _margin(at_terminals_v, needed_v, scale=supply_v) >= 0.0
 
     return _largest(LONGEST_CABLE_M, passes)
@@ -330,9 +326,7 @@ def smallest_conductor(
         if ohm_per_km is None:
             continue
         ohm = loop_resistance_ohm(length_m, ohm_per_km, conductor_c=conductor_c)
-        at_terminals_v = volts_at_transmitter(
-            supply_v, current_ma, (*resistances, ("cable", ohm)), fixed_drops
-        )
+        at_terminals_v = volts_at_transmitter(supply_v, current_ma, (*resistances, ("cable", ohm)), fixed_drops)
         if _margin(at_terminals_v, needed_v, scale=supply_v) >= 0.0:
             return size_mm2
     return None

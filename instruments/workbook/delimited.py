@@ -82,9 +82,7 @@ class _Text:
                 for _ in _decoded(data, "utf-16", "strict"):
                     pass
             except UnicodeError:
-                raise UnreadableFile(
-                    self.file, "", "says that it is in UTF-16, and is not all of it"
-                ) from None
+                raise UnreadableFile(self.file, "", "says that it is in UTF-16, and is not all of it") from None
             return "utf-16", "strict"
         damaged = beyond_ascii = 0
         for piece in _decoded(data, "utf-8-sig", "replace"):
@@ -279,7 +277,5 @@ def _ragged(records: list[list[str]]) -> dict[int, int]:
         return {}
     usual = max(widths.items(), key=lambda found: (found[1], found[0]))[0]
     return {
-        row: len(record)
-        for row, record in enumerate(records)
-        if len(record) != usual and sum(map(bool, record)) > 1
+        row: len(record) for row, record in enumerate(records) if len(record) != usual and sum(map(bool, record)) > 1
     }

@@ -201,9 +201,7 @@ class Package:
                 if record[:4] == b"PK\6\6" and len(record) == 56:
                     sizes = [struct.unpack_from("<Q", record, 40)[0]]
         if max(sizes) > self.limits.parts * 1_000:
-            raise self._unreadable(
-                "", f"has more parts than a workbook: at most {self.limits.parts:,} are read"
-            )
+            raise self._unreadable("", f"has more parts than a workbook: at most {self.limits.parts:,} are read")
 
     def _checked(self) -> dict[str, zipfile.ZipInfo]:
         parts: dict[str, zipfile.ZipInfo] = {}
@@ -229,9 +227,7 @@ class Package:
                 )
             parts[name] = info
         if unpacked > limits.unpacked_bytes:
-            raise self._unreadable(
-                "", f"unpacks to {unpacked:,} bytes; at most {limits.unpacked_bytes:,} are read"
-            )
+            raise self._unreadable("", f"unpacks to {unpacked:,} bytes; at most {limits.unpacked_bytes:,} are read")
         if WORKBOOK not in parts:
             raise self._unreadable("", _what_it_is(self._zip, parts))
         return parts
@@ -245,9 +241,7 @@ class Package:
         if info is None:
             raise self._unreadable(f"part {name}", "is missing")
         if at_most is not None and info.file_size > at_most:
-            raise self._unreadable(
-                f"part {name}", f"is {info.file_size:,} bytes long; at most {at_most:,} are read"
-            )
+            raise self._unreadable(f"part {name}", f"is {info.file_size:,} bytes long; at most {at_most:,} are read")
         # zipfile stops at the length that the file says, the value reader does not: one byte more tells.
         asked = copy.copy(info)
         asked.file_size = info.file_size + 1
@@ -357,9 +351,7 @@ def look_at(package: Package) -> Seen:
     return seen
 
 
-def _spelt(
-    package: Package, part: str, place: str, work: Callable[[Iterable[bytes]], Found]
-) -> tuple[Found, bool]:
+def _spelt(package: Package, part: str, place: str, work: Callable[[Iterable[bytes]], Found]) -> tuple[Found, bool]:
     """Do a work over a part in the usual spelling, rewritten where it must be, and say whether it was."""
     try:
         try:
@@ -408,9 +400,7 @@ def read_contents(package: Package) -> Contents:
         if relation is None or relation.target not in package:
             raise UnreadableFile(package.file, f"sheet {name!r}", "its part is missing")
         if relation.kind == "worksheet":
-            sheets.append(
-                SheetEntry(name, attributes.get("state", "visible") == "visible", relation.target, index)
-            )
+            sheets.append(SheetEntry(name, attributes.get("state", "visible") == "visible", relation.target, index))
             usual = usual and relation.usual
     styles = _standing(package, relations, "styles", STYLES)
     texts = _standing(package, relations, "sharedStrings", TEXTS)
@@ -527,9 +517,7 @@ def _beside(package: Package, seen: SeenSheet) -> None:
         except UnreadableFile as error:
             seen.notes.append(f"drawing not read: {error.place} {error.reason}")
     if seen.look.elsewhere:
-        seen.notes.append(
-            f"formulas that refer to another workbook, read by their saved values: {seen.look.elsewhere}"
-        )
+        seen.notes.append(f"formulas that refer to another workbook, read by their saved values: {seen.look.elsewhere}")
 
 
 def _read_comments(package: Package, part: str, comments: dict[tuple[int, int], str]) -> None:
@@ -644,10 +632,7 @@ def _write_copy(package: Package, contents: Contents, seen: Seen, *, texts_rewri
             if far:
                 seen.far.append((number, [position for position, _ in far]))
                 names.append(f"worksheets/far{number}.xml")
-                rows = (
-                    b'<row r="%d"><c r="A%d"%s</row>' % (row, row, cell)
-                    for row, (_, cell) in enumerate(far, 1)
-                )
+                rows = (b'<row r="%d"><c r="A%d"%s</row>' % (row, row, cell) for row, (_, cell) in enumerate(far, 1))
                 write(
                     f"xl/{names[-1]}",
                     (f'<worksheet xmlns="{_MAIN}"><sheetData>'.encode(), *rows, b"</sheetData></worksheet>"),
@@ -660,8 +645,7 @@ def _write_copy(package: Package, contents: Contents, seen: Seen, *, texts_rewri
                 pieces = package.pieces(source)
                 write(name, pieces if package.in_utf8(source) and not again else rewritten(pieces))
         listed = "".join(
-            f'<sheet name="{number}" sheetId="{number}" r:id="r{number}"/>'
-            for number in range(1, len(names) + 1)
+            f'<sheet name="{number}" sheetId="{number}" r:id="r{number}"/>' for number in range(1, len(names) + 1)
         )
         related = "".join(
             f'<Relationship Id="r{number}" Type="{_KINDS}/worksheet" Target="{name}"/>'
@@ -678,9 +662,7 @@ def _write_copy(package: Package, contents: Contents, seen: Seen, *, texts_rewri
             f'<workbook xmlns="{_MAIN}" xmlns:r="{_KINDS}"><workbookPr date1904="{int(contents.from_1904)}"/>'
             f"<sheets>{listed}</sheets></workbook>",
         )
-        out.writestr(
-            "xl/_rels/workbook.xml.rels", f'<Relationships xmlns="{_RELATIONS}">{related}</Relationships>'
-        )
+        out.writestr("xl/_rels/workbook.xml.rels", f'<Relationships xmlns="{_RELATIONS}">{related}</Relationships>')
     seen.copy.seek(0)
 
 

@@ -30,9 +30,7 @@ _MAIN: Final = frozenset(
 _XML_SPACE: Final = "http://www.w3.org/XML/1998/namespace space"
 _IN_TEXT: Final = str.maketrans({"&": "&amp;", "<": "&lt;", ">": "&gt;", "\r": "&#13;"})
 _IN_ATTRIBUTE: Final = _IN_TEXT | str.maketrans({'"': "&quot;", "\n": "&#10;", "\t": "&#9;"})
-_ENCODING: Final = re.compile(
-    rb"""\A(?:\xef\xbb\xbf)?<\?xml[^>]{0,200}?encoding\s*=\s*["']([A-Za-z0-9._-]+)["']"""
-)
+_ENCODING: Final = re.compile(rb"""\A(?:\xef\xbb\xbf)?<\?xml[^>]{0,200}?encoding\s*=\s*["']([A-Za-z0-9._-]+)["']""")
 _CODED: Final = re.compile("_x([0-9A-Fa-f]{4})_")
 
 Start = Callable[[str, Mapping[str, str]], None]
@@ -143,9 +141,7 @@ class XmlReader:
         return self._names[name]
 
     def _refused(self, *_: object) -> None:
-        raise BrokenXml(
-            "has a DOCTYPE, which no workbook needs and which can make a small file fill the memory"
-        )
+        raise BrokenXml("has a DOCTYPE, which no workbook needs and which can make a small file fill the memory")
 
 
 def read_xml(
@@ -195,9 +191,7 @@ def rewritten(pieces: Iterable[bytes]) -> Iterator[bytes]:
         else:
             out.append(f"</{name.replace('~', 'other-')}>")
 
-    reader = XmlReader(
-        start=start, end=end, text=lambda found: out.append(found.translate(_IN_TEXT)), keep_space=True
-    )
+    reader = XmlReader(start=start, end=end, text=lambda found: out.append(found.translate(_IN_TEXT)), keep_space=True)
     for piece in pieces:
         reader.feed(piece)
         if len(out) > 1:

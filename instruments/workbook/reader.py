@@ -87,9 +87,7 @@ def read_file(path: str | os.PathLike[str], *, limits: Limits = LIMITS) -> list[
         if status.st_size == 0:
             raise UnreadableFile(file, "", "is empty")
         if status.st_size > limits.file_bytes:
-            raise UnreadableFile(
-                file, "", f"has {status.st_size:,} bytes; at most {limits.file_bytes:,} are read"
-            )
+            raise UnreadableFile(file, "", f"has {status.st_size:,} bytes; at most {limits.file_bytes:,} are read")
         with open(path, "rb") as stream:
             head = stream.read(4096)
             if head.startswith(_COMPOUND):
@@ -172,9 +170,7 @@ def _read_values(package: Package, seen: Seen) -> list[Sheet]:
     texts = _Texts()
     with _failing(package, ""):
         workbook = (
-            CalamineWorkbook.from_path(package.path)
-            if seen.copy is None
-            else CalamineWorkbook.from_filelike(seen.copy)
+            CalamineWorkbook.from_path(package.path) if seen.copy is None else CalamineWorkbook.from_filelike(seen.copy)
         )
     with workbook:
         rows_of = functools.partial(_rows, package, workbook, texts)
@@ -182,9 +178,7 @@ def _read_values(package: Package, seen: Seen) -> list[Sheet]:
         for index, (number, positions) in enumerate(seen.far, len(seen.sheets)):
             cells = rows_of(index, seen.sheets[number])
             stray[number] = {
-                position: row[0]
-                for position, row in zip(positions, cells, strict=False)
-                if row and row[0] is not None
+                position: row[0] for position, row in zip(positions, cells, strict=False) if row and row[0] is not None
             }
         return [
             _joined(package.file, sheet, rows_of(seen.index(number), sheet), texts, stray.get(number, {}))
@@ -282,8 +276,7 @@ def _joined(
     if far:
         shown = ", ".join(cell_address(*position) for position in sorted(far)[:5])
         notes.append(
-            f"filled cells far from the list, left out of it: {len(far)}, at {shown}"
-            + (" ..." if len(far) > 5 else "")
+            f"filled cells far from the list, left out of it: {len(far)}, at {shown}" + (" ..." if len(far) > 5 else "")
         )
     merged, overlapping = _merged(look.merged, height, width)
     if overlapping:

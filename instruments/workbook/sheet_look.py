@@ -56,9 +56,7 @@ _ENTITY: Final = re.compile("&(?:#([0-9]{1,7})|#x([0-9A-Fa-f]{1,6})|(amp|lt|gt|q
 _NAMED: Final = {"amp": "&", "lt": "<", "gt": ">", "quot": '"', "apos": "'"}
 
 # What the value reader takes for an error value; it gives up the whole sheet at any other.
-_KNOWN_ERRORS: Final = frozenset(
-    {b"#DIV/0!", b"#N/A", b"#NAME?", b"#NULL!", b"#NUM!", b"#REF!", b"#VALUE!", b""}
-)
+_KNOWN_ERRORS: Final = frozenset({b"#DIV/0!", b"#N/A", b"#NAME?", b"#NULL!", b"#NUM!", b"#REF!", b"#VALUE!", b""})
 
 Run = tuple[str, bool | None]
 """A run of a rich text and whether it is struck out; None where it looks as its cell does."""
@@ -258,8 +256,7 @@ def one_of(numbers: Collection[bytes]) -> bytes:
     for number in sorted(numbers):
         by_first.setdefault(number[:1], []).append(number[1:])
     branches = [
-        first + (b"" if rests == [b""] else one_of(rests)) if first else b""
-        for first, rests in by_first.items()
+        first + (b"" if rests == [b""] else one_of(rests)) if first else b"" for first, rests in by_first.items()
     ]
     return b"(?:" + b"|".join(branches) + b")"
 
@@ -314,9 +311,7 @@ class _Look:
                     self._styled(cell, hit[1])
         if self._texts is not None:
             for hit in self._texts.finditer(text):
-                if hit[1] in self._looks.texts and (
-                    cell := _cell_around(text, _tag_of(text, hit.start()), at)
-                ):
+                if hit[1] in self._looks.texts and (cell := _cell_around(text, _tag_of(text, hit.start()), at)):
                     self._rich(cell, struck=self._style_of(cell) in self._looks.struck)
         if b"<strike" in text:
             for hit in _STRIKE.finditer(text):
@@ -361,9 +356,7 @@ class _Look:
                 raise BrokenXml(f"has a cell of another row, {cell[:20].decode()}, in row {row}")
             column = column_number(letters.decode()) if len(letters) < 4 else MAX_COLUMNS
             if column >= MAX_COLUMNS:
-                raise BrokenXml(
-                    f"has a cell in column {letters[:20].decode()}, and a sheet ends at column XFD"
-                )
+                raise BrokenXml(f"has a cell in column {letters[:20].decode()}, and a sheet ends at column XFD")
             columns.append(column)
         if len(set(columns)) != len(columns):
             twice = next(column for column in columns if columns.count(column) > 1)
@@ -460,9 +453,7 @@ class _Look:
             if struck:
                 self.seen.struck.add(cell.position)
             return
-        shown = "".join(
-            text for text, of_its_own in runs if not (struck if of_its_own is None else of_its_own)
-        )
+        shown = "".join(text for text, of_its_own in runs if not (struck if of_its_own is None else of_its_own))
         whole = "".join(text for text, _ in runs)
         if not whole.strip() or shown == whole:
             return
@@ -544,9 +535,7 @@ def _cell_around(text: bytes, at: int, base: int) -> _Cell | None:
     letters, digits, attributes, body = cell.groups()
     kind = _TYPE.search(attributes)
     position = int(digits) - 1, _column(letters)
-    return _Cell(
-        position, attributes, base + cell.start(3), kind[1] if kind else b"", body, base + cell.start(4)
-    )
+    return _Cell(position, attributes, base + cell.start(3), kind[1] if kind else b"", body, base + cell.start(4))
 
 
 @functools.cache
@@ -555,9 +544,7 @@ def _column(letters: bytes) -> int:
     return column_number(letters.decode())
 
 
-def altered(
-    pieces: Iterable[bytes], seen: SheetLook, *, far: list[tuple[tuple[int, int], bytes]]
-) -> Iterator[bytes]:
+def altered(pieces: Iterable[bytes], seen: SheetLook, *, far: list[tuple[tuple[int, int], bytes]]) -> Iterator[bytes]:
     """Return the part as the value reader gets it: edited, and without the far cells, which go to `far`."""
     edits = sorted(seen.edits)
     at = done = 0
@@ -607,11 +594,7 @@ def _misfit(kind: bytes, value: bytes, text_count: int) -> str | None:
     shown = repr(text_of(value[:60]))
     if kind == b"s":
         number = int(value) if value.strip().isdigit() and len(value) < 12 else -1
-        return (
-            None
-            if not value or 0 <= number < text_count
-            else f"refers to a text {shown} that the file has not"
-        )
+        return None if not value or 0 <= number < text_count else f"refers to a text {shown} that the file has not"
     if kind == b"n" and value:
         try:
             float(value)

@@ -41,9 +41,7 @@ def test_turndown_of_a_body_of_6_bar(maximum: float, smallest_bar: float) -> Non
     assert beyond_limit(turndown(0.0, 6.0, smallest_bar * 0.999), None, maximum)
 
 
-@pytest.mark.parametrize(
-    ("lrv_bar", "within"), [(0.9, True), (0.91, False), (-0.9, True), (-0.91, False), (0.0, True)]
-)
+@pytest.mark.parametrize(("lrv_bar", "within"), [(0.9, True), (0.91, False), (-0.9, True), (-0.91, False), (0.0, True)])
 def test_zero_shift_of_a_body_of_6_bar_is_15_percent_of_its_upper_limit(lrv_bar: float, within: bool) -> None:
     assert within_zero_shift(lrv_bar, 6.0, 15.0) is within
 

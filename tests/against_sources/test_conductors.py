@@ -27,9 +27,7 @@ IEC_60228 = [
 
 
 @pytest.mark.parametrize(("size_mm2", "plain", "tinned", "flexible", "flexible_tinned"), IEC_60228)
-def test_iec_60228(
-    size_mm2: float, plain: float, tinned: float, flexible: float, flexible_tinned: float
-) -> None:
+def test_iec_60228(size_mm2: float, plain: float, tinned: float, flexible: float, flexible_tinned: float) -> None:
     for classes, (expected, expected_tinned) in {
         (1, 2): (plain, tinned),
         (5, 6): (flexible, flexible_tinned),

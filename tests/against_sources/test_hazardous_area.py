@@ -149,19 +149,13 @@ def test_order_of_the_gas_groups() -> None:
     assert lettered["IIA"] == {"IIA", "IIB", "IIC"}
     assert lettered["IIB"] == {"IIB", "IIC"}
     assert lettered["IIC"] == lettered["IIB+H2"] == {"IIC"}
-    assert all("II" in accepted for accepted in GAS_GROUPS_ACCEPTED.values()), (
-        "II without letter (from memory)"
-    )
-    assert not any(
-        group.startswith("III") or group == "I" for g in GAS_GROUPS_ACCEPTED.values() for group in g
-    )
+    assert all("II" in accepted for accepted in GAS_GROUPS_ACCEPTED.values()), "II without letter (from memory)"
+    assert not any(group.startswith("III") or group == "I" for g in GAS_GROUPS_ACCEPTED.values() for group in g)
 
 
 def test_order_of_the_dust_groups() -> None:
     """IEC 60079-0 4.4 (from memory): flyings IIIA, non-conductive IIIB, conductive IIIC, the last for all."""
-    lettered = {
-        area: set(accepted) & {"IIIA", "IIIB", "IIIC"} for area, accepted in DUST_GROUPS_ACCEPTED.items()
-    }
+    lettered = {area: set(accepted) & {"IIIA", "IIIB", "IIIC"} for area, accepted in DUST_GROUPS_ACCEPTED.items()}
     assert lettered == {"IIIA": {"IIIA", "IIIB", "IIIC"}, "IIIB": {"IIIB", "IIIC"}, "IIIC": {"IIIC"}}
 
 

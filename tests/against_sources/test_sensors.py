@@ -27,9 +27,7 @@ def test_pt100_is_that_of_the_package_rtd_sensor() -> None:
         assert pt100_ohm(t_c) == pytest.approx(ohm, rel=1e-12)
         assert pt100_c(ohm) == pytest.approx(t_c, abs=1e-9)
         assert pt100_c(ohm) == pytest.approx(pt100.resistance_to_celsius(ohm), abs=1e-6)
-        assert pt100_ohm_per_k(t_c) == pytest.approx(
-            pt100.resistance_sensitivity_ohms_per_celsius(t_c), rel=1e-12
-        )
+        assert pt100_ohm_per_k(t_c) == pytest.approx(pt100.resistance_sensitivity_ohms_per_celsius(t_c), rel=1e-12)
 
 
 @pytest.mark.parametrize("tolerance_class", CLASSES)

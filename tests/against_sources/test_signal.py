@@ -60,9 +60,7 @@ def test_square_root_table(dp_percent: float, flow_percent: float, linear_ma: fl
 
 
 # Measured in an automation forum's thread on faultfinding by voltage: 26 V supply, 250 ohm in the loop.
-@pytest.mark.parametrize(
-    ("ma", "at_transmitter_v", "across_resistor_v"), [(4.0, 25.0, 1.0), (20.0, 21.0, 5.0)]
-)
+@pytest.mark.parametrize(("ma", "at_transmitter_v", "across_resistor_v"), [(4.0, 25.0, 1.0), (20.0, 21.0, 5.0)])
 def test_published_loop_voltages(ma: float, at_transmitter_v: float, across_resistor_v: float) -> None:
     found = volts_at_transmitter(26.0, ma, [("receiver", 250.0)])
     assert found == pytest.approx(at_transmitter_v, abs=1e-9)

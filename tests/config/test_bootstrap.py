@@ -163,9 +163,7 @@ def test_the_first_start_with_real_pip(project: Project) -> None:
     project.environment.update(PIP_NO_INDEX="1", PIP_CONFIG_FILE=os.devnull)
     out, err = project.start("audit", "a list.xlsx", "--to", "out", STATUS="1", status=1)
     assert out == printed(project, "audit", "a list.xlsx", "--to", "out")
-    assert err == (
-        f"Ferrule: installing the packages it needs into {project.venv}, once; this takes about a minute.\n"
-    )
+    assert err == (f"Ferrule: installing the packages it needs into {project.venv}, once; this takes about a minute.\n")
     assert not list(project.venv.rglob("gauge.py"))
     assert project.start("audit") == (printed(project, "audit"), "")
     out, err = project.start("test", "-k", "span")
@@ -187,10 +185,7 @@ def test_the_test_tools_are_installed_for_test_alone(project: Project) -> None:
     project.start("test")
     project.start("audit")
     project.start("test")
-    asked = [
-        [need for need in call if need.startswith(("Django", "probe", "gauge"))]
-        for call in project.installations
-    ]
+    asked = [[need for need in call if need.startswith(("Django", "probe", "gauge"))] for call in project.installations]
     assert asked == [["Django>=5.2,<5.3", "probe>=1"], ["Django>=5.2,<5.3", "probe>=1", "gauge>=1"]]
 
 
@@ -346,9 +341,7 @@ def test_what_cannot_be_made_is_said_plainly(project: Project) -> None:
 
 @pytest.mark.parametrize("version", [(2, 7, 18), (3, 10, 99)])
 def test_an_old_python_is_told_plainly(version: tuple[int, int, int]) -> None:
-    code = (
-        f"import runpy, sys; sys.version_info = {version}; runpy.run_path('manage.py', run_name='__main__')"
-    )
+    code = f"import runpy, sys; sys.version_info = {version}; runpy.run_path('manage.py', run_name='__main__')"
     done = subprocess.run([sys.executable, "-c", code], cwd=CODE, capture_output=True, text=True, check=False)
     assert (done.returncode, done.stdout) == (2, "")
     assert done.stderr == (

@@ -52,9 +52,7 @@ def place(text: str) -> Area:
 
 
 def test_every_epl_in_every_zone() -> None:
-    accepted = {
-        (zone, epl) for zone, epl in itertools.product(EPLS_IN_ZONE, EPLS) if epl_in_zone(epl, zone).accepted
-    }
+    accepted = {(zone, epl) for zone, epl in itertools.product(EPLS_IN_ZONE, EPLS) if epl_in_zone(epl, zone).accepted}
     assert accepted == {
         ("0", "Ga"),
         ("1", "Ga"),
@@ -112,17 +110,13 @@ def test_epl_assigned_partitioned_or_blank(
 
 
 def test_a_refused_epl_says_what_the_zone_accepts() -> None:
-    assert epl_in_zone("Gc", "1") == Acceptance(
-        outcome="refused", reason="EPL Gc in Zone 1, which accepts Ga, Gb"
-    )
+    assert epl_in_zone("Gc", "1") == Acceptance(outcome="refused", reason="EPL Gc in Zone 1, which accepts Ga, Gb")
     assert epl_in_zone("Ga/Gb", "0").reason == "EPL Gb (the body of Ga/Gb) in Zone 0, which accepts Ga"
 
 
 def test_an_assigned_epl_accepts_itself_and_stronger_ones_of_its_letter() -> None:
     assert set(EPLS_FOR_REQUIRED) == {"Ga", "Gb", "Gc", "Da", "Db", "Dc"}
-    for required, zone in zip(
-        ("Ga", "Gb", "Gc", "Da", "Db", "Dc"), ("0", "1", "2", "20", "21", "22"), strict=True
-    ):
+    for required, zone in zip(("Ga", "Gb", "Gc", "Da", "Db", "Dc"), ("0", "1", "2", "20", "21", "22"), strict=True):
         assert EPLS_FOR_REQUIRED[required] == EPLS_IN_ZONE[zone]
 
 
@@ -162,9 +156,7 @@ def test_every_gas_group_in_every_gas_area() -> None:
     accepted = {
         (area, group)
         for area, group in itertools.product(GAS_GROUPS_ACCEPTED, groups)
-        if gas_group(
-            mark(f"Ex mb {group} {'' if group == 'I' else 'T85°C'} {epl.get(group, 'Gb')}"), area
-        ).accepted
+        if gas_group(mark(f"Ex mb {group} {'' if group == 'I' else 'T85°C'} {epl.get(group, 'Gb')}"), area).accepted
     }
     assert accepted == {
         ("IIA", "IIA"),
@@ -280,9 +272,7 @@ def test_division_groups_are_no_ladder(marked: str, needed: str | None, outcome:
 
 
 @given(st.sets(st.sampled_from("ABCDEFG"), min_size=1), st.sets(st.sampled_from("ABCDEFG"), min_size=1))
-def test_a_division_group_is_accepted_where_all_letters_needed_are_marked(
-    marked: set[str], needed: set[str]
-) -> None:
+def test_a_division_group_is_accepted_where_all_letters_needed_are_marked(marked: set[str], needed: set[str]) -> None:
     assert division_group(marked, ",".join(sorted(needed))).accepted is (needed <= marked)
 
 
@@ -522,9 +512,7 @@ def test_every_mark_in_every_division_and_zone(where: str, accepts: set[str]) ->
         ("Class I Div 1 Gr BCD T4", "Class I Div 1, Class II Div 1", None, "US", "accepted"),
     ],
 )
-def test_division_location(
-    text: str, where: str, safe: bool | None, jurisdiction: str | None, outcome: str
-) -> None:
+def test_division_location(text: str, where: str, safe: bool | None, jurisdiction: str | None, outcome: str) -> None:
     found = division_location(mark(text), place(where), jurisdiction=jurisdiction, intrinsically_safe=safe)
     assert found.outcome == outcome
 
@@ -603,19 +591,11 @@ def test_translated_group(text: str, where: str, gas: str | None, outcome: str) 
 def test_a_gas_between_the_systems_boundaries_is_refused_where_its_groups_are_known() -> None:
     """MESG between 0.75 and 0.90 mm: group D in the NEC, IIB in IEC 60079 (ethanol, from memory)."""
     area = place("Class I Div 2 Gr D")
-    assert (
-        translated_group(mark("AEx db IIA T2 Gb"), area, gas="ethanol", iec_group="IIB").outcome == "refused"
-    )
-    assert (
-        translated_group(mark("AEx db IIB T2 Gb"), area, gas="ethanol", iec_group="IIB").outcome == "accepted"
-    )
+    assert translated_group(mark("AEx db IIA T2 Gb"), area, gas="ethanol", iec_group="IIB").outcome == "refused"
+    assert translated_group(mark("AEx db IIB T2 Gb"), area, gas="ethanol", iec_group="IIB").outcome == "accepted"
     zone = place("Zone 1 IIB T2")
-    assert (
-        translated_group(mark("Class I Div 1 Gr C"), zone, gas="ethanol", nec_group="D").outcome == "refused"
-    )
-    assert (
-        translated_group(mark("Class I Div 1 Gr D"), zone, gas="ethanol", nec_group="D").outcome == "accepted"
-    )
+    assert translated_group(mark("Class I Div 1 Gr C"), zone, gas="ethanol", nec_group="D").outcome == "refused"
+    assert translated_group(mark("Class I Div 1 Gr D"), zone, gas="ethanol", nec_group="D").outcome == "accepted"
 
 
 # Certificates
@@ -656,9 +636,7 @@ def test_certificate_suffix(cell: str, accepted_by: str | None, outcome: str) ->
         ("[Ex ia Ga] IIC", "Zone 1 IIB T4", "gas", None, None),
     ],
 )
-def test_best_entry(
-    text: str, where: str, side: str, jurisdiction: str | None, epl_or_class: str | None
-) -> None:
+def test_best_entry(text: str, where: str, side: str, jurisdiction: str | None, epl_or_class: str | None) -> None:
     entry = best_entry(
         read_marking(text),
         place(where),
@@ -834,10 +812,7 @@ def test_t_codes_of_north_america_against_an_ignition_temperature() -> None:
 
 
 def test_a_component_is_no_evidence_by_itself() -> None:
-    assert (
-        certificate_suffix(read_certificates("ABC 20 ATEX 0001 U"), conditions_accepted=None).outcome
-        == "refused"
-    )
+    assert certificate_suffix(read_certificates("ABC 20 ATEX 0001 U"), conditions_accepted=None).outcome == "refused"
     assert read_marking("Ex ia IIC Ga U").is_component
 
 

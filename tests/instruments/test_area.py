@@ -21,9 +21,7 @@ from instruments.marking_text import MAX_LENGTH
 PARTITION = "read as a partition, Zone 0 on the process side"
 
 
-def zone(
-    zone: str | None, gas_group: str | None = None, t_class: str | None = None, **more: object
-) -> Classification:
+def zone(zone: str | None, gas_group: str | None = None, t_class: str | None = None, **more: object) -> Classification:
     fields: dict[str, object] = {"zone": zone, "gas_group": gas_group, "temperature_class": t_class, **more}
     return Classification(system="zone", **fields)  # type: ignore[arg-type]
 
@@ -215,9 +213,7 @@ def test_what_cannot_be_read_as_a_whole_is_not_read(text: str) -> None:
     assert area_from_classification(text) is None
 
 
-@pytest.mark.parametrize(
-    "text", ["1", "21", "2.0", "1/21", "Z2", "Z-1", "C1D2", "SA", "NH", "N/A", "none", "GP"]
-)
+@pytest.mark.parametrize("text", ["1", "21", "2.0", "1/21", "Z2", "Z-1", "C1D2", "SA", "NH", "N/A", "none", "GP"])
 def test_in_a_column_of_area_codes_a_short_text_is_a_code(text: str) -> None:
     assert read_classification(text) is not None
     assert read_classification(text, own_column=False) is None
@@ -303,9 +299,7 @@ def test_the_atmospheres_of_an_area(
         (Area(), False),
     ],
 )
-def test_an_area_is_classified_where_zone_class_division_group_or_epl_is_stated(
-    area: Area, classified: bool
-) -> None:
+def test_an_area_is_classified_where_zone_class_division_group_or_epl_is_stated(area: Area, classified: bool) -> None:
     assert area.classified is classified
 
 
@@ -411,9 +405,7 @@ def test_an_area_of_a_list_in_the_spelling_of_the_tables(written: Area, meant: A
         ),
     ],
 )
-def test_permitted_dust_surface(
-    area: Area, limit: float | None, bound: float | None, missing: tuple[str, ...]
-) -> None:
+def test_permitted_dust_surface(area: Area, limit: float | None, bound: float | None, missing: tuple[str, ...]) -> None:
     permitted = permitted_dust_surface_c(area)
     assert permitted.limit_c == pytest.approx(limit) if limit else permitted.limit_c is None
     assert permitted.upper_bound_c == pytest.approx(bound) if bound else permitted.upper_bound_c is None
@@ -507,9 +499,7 @@ PIECES = st.sampled_from(
 def test_no_text_breaks_it(text: str) -> None:
     read_classification(text)
     named_gases(text)
-    understood(
-        Area(zone=text, class_=text, division=text, gas_group=text, temperature_class=text, epl_required=text)
-    )
+    understood(Area(zone=text, class_=text, division=text, gas_group=text, temperature_class=text, epl_required=text))
 
 
 @settings(max_examples=300)
@@ -527,18 +517,14 @@ def test_what_is_read_is_consistent(pieces: list[str], glue: str) -> None:
         return
     assert area.classified
     assert area.sides
-    assert (said.system == "division") is bool(
-        said.division or (said.class_ and not said.zone) or lettered(said)
-    )
+    assert (said.system == "division") is bool(said.division or (said.class_ and not said.zone) or lettered(said))
 
 
 def lettered(said: Classification) -> bool:
     return any(group and not group.startswith("II") for group in (said.gas_group, said.dust_group))
 
 
-@pytest.mark.parametrize(
-    "piece", ["Zone 1 ", "1/", "(", "Class I ", "T3-", "IIC+", "safe/", "gas ", " ", "Gr A", "ﷺ"]
-)
+@pytest.mark.parametrize("piece", ["Zone 1 ", "1/", "(", "Class I ", "T3-", "IIC+", "safe/", "gas ", " ", "Gr A", "ﷺ"])
 def test_long_hostile_text_is_refused_quickly(piece: str) -> None:
     start = time.perf_counter()
     read_classification(piece * (MAX_LENGTH // len(piece)))

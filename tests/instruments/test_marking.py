@@ -92,13 +92,11 @@ def test_vector(row: dict[str, str]) -> None:
         ),
         (
             "[Ex ia Ga] IIC; [Ex ia Da] IIIC; Class I, Division 1, Groups A-D associated",
-            "- | none | ia -> Ga; ia -> Da | IIC (output); IIIC (output); NEC A,B,C,D (output) | "
-            "none | none | n/a",
+            "- | none | ia -> Ga; ia -> Da | IIC (output); IIIC (output); NEC A,B,C,D (output) | none | none | n/a",
         ),
         (
             "II (1) G [Ex ia Ga] IIC / II (1) D [Ex ia Da] IIIC",
-            "II (1) G + II (1) D | none | ia -> Ga; ia -> Da | IIC (output); IIIC (output) | none | "
-            "none | n/a",
+            "II (1) G + II (1) D | none | ia -> Ga; ia -> Da | IIC (output); IIIC (output) | none | none | n/a",
         ),
         ("I (M1) [Ex ia Ma] I", "I (M1) | none | ia -> Ma | I (output) | none | none | n/a"),
         ("II (2) G [Ex ib Gb] IIC", "II (2) G | none | ib -> Gb | IIC (output) | none | none | n/a"),
@@ -109,8 +107,7 @@ def test_vector(row: dict[str, str]) -> None:
         ),
         (
             "Class I, II, III Division 1 Groups A-G T4",
-            "- | - | - | NEC I:A,B,C,D; II:E,F,G; III | T4 | "
-            "Class I Div 1; Class II Div 1; Class III Div 1 | max 40",
+            "- | - | - | NEC I:A,B,C,D; II:E,F,G; III | T4 | Class I Div 1; Class II Div 1; Class III Div 1 | max 40",
         ),
         (
             "Class I, Div. 1, Groups B, C, D; Class II, Div. 1, Groups E, F, G; Class III; T5 Ta = 70 °C",
@@ -118,8 +115,7 @@ def test_vector(row: dict[str, str]) -> None:
         ),
         (
             "XP Class I Div 1 Gr BCD; DIP Class II, III Div 1 Gr EFG T6",
-            "- | - | - | NEC I:B,C,D; II:E,F,G; III | T6 | "
-            "Class I Div 1; Class II Div 1; Class III Div 1 | max 40",
+            "- | - | - | NEC I:B,C,D; II:E,F,G; III | T6 | Class I Div 1; Class II Div 1; Class III Div 1 | max 40",
         ),
         (
             "IS Class I Div 1 Groups A,B,C,D T4 Type 4X",
@@ -220,8 +216,7 @@ def test_vector(row: dict[str, str]) -> None:
         ),
         (
             "Class I, Division 2, Groups A, B, C, D, T4A; Class II, Division 2, Groups F and G, T3C",
-            "- | - | - | NEC A,B,C,D; NEC F,G | T4A = 120 °C; T3C = 160 °C | "
-            "Class I Div 2; Class II Div 2 | max 40",
+            "- | - | - | NEC A,B,C,D; NEC F,G | T4A = 120 °C; T3C = 160 °C | Class I Div 2; Class II Div 2 | max 40",
         ),
         (
             "Class I Division 1 Groups C & D associated apparatus",
@@ -349,9 +344,7 @@ def test_a_case_that_matters_is_not_repaired_where_the_text_reads_as_written() -
     assert (gas.protections, gas.epl) == (("db",), "Gb")
 
 
-@pytest.mark.parametrize(
-    "text", ["none", "Non-Ex", "not Ex", "nicht Ex", "General purpose", "kein Ex-Schutz", "nil"]
-)
+@pytest.mark.parametrize("text", ["none", "Non-Ex", "not Ex", "nicht Ex", "General purpose", "kein Ex-Schutz", "nil"])
 def test_a_text_that_says_there_is_no_protection(text: str) -> None:
     assert read_marking(text) == Marking(text=text, none_stated=True)
 
@@ -812,9 +805,7 @@ def test_no_heap_of_tokens_breaks_it(pieces: list[str], glue: str) -> None:
         unique=True,
     ),
     group=st.sampled_from(("IIA", "IIB", "IIC", "II", "IIB+H2", "II C")),
-    t_class=st.sampled_from(
-        ("T1", "T4", "T6", "T6...T3", "T6 (Ta ≤ 40 °C) / T4 (Ta ≤ 70 °C)", "350 °C (T1)")
-    ),
+    t_class=st.sampled_from(("T1", "T4", "T6", "T6...T3", "T6 (Ta ≤ 40 °C) / T4 (Ta ≤ 70 °C)", "350 °C (T1)")),
     epl=st.sampled_from(("Ga", "Gb", "Gc", "Ga/Gb")),
     swapped=st.booleans(),
     ambient=st.sampled_from(("", "-40 °C ≤ Ta ≤ +60 °C", "Tamb -40...+60 °C")),
@@ -830,9 +821,7 @@ def test_what_is_composed_is_read(
     assert entry.group == group.replace(" ", "")[:3]
     assert entry.gas_extra == ("H2" if "+" in group else None)
     assert entry.epl_text == epl
-    hottest = {"T6...T3": "T3", "T6 (Ta ≤ 40 °C) / T4 (Ta ≤ 70 °C)": "T4", "350 °C (T1)": "T1"}.get(
-        t_class, t_class
-    )
+    hottest = {"T6...T3": "T3", "T6 (Ta ≤ 40 °C) / T4 (Ta ≤ 70 °C)": "T4", "350 °C (T1)": "T1"}.get(t_class, t_class)
     assert entry.worst_t_class_at(None) == hottest
     if ambient and not entry.is_paired:
         longer = read_marking(f"{marking.text} {ambient}").entries[0]

@@ -38,8 +38,8 @@ def test_the_mark_of_the_sheet_decides_only_what_has_two_readings(text, decimal,
 
 
 @pytest.mark.parametrize(
-    ("text", "readings"), [("2,500", ("2.5", "2500")), ("-2.500", ("-2.5", "-2500")), ("999,999",
-    ("999.999", "999999"))]
+    ("text", "readings"),
+    [("2,500", ("2.5", "2500")), ("-2.500", ("-2.5", "-2500")), ("999,999", ("999.999", "999999"))],
 )
 def test_two_readings_are_trouble(text, readings):
     trouble = read_number(text, decimal=None)
@@ -86,8 +86,7 @@ def test_no_number(text):
 
 
 @pytest.mark.parametrize(
-    ("text", "reading"), [("1O0", "100"), ("l0", "10"), ("-1O", "-10"), ("1o,5", "10,5"), ("I2", "12"),
-    ("1О", "10")]
+    ("text", "reading"), [("1O0", "100"), ("l0", "10"), ("-1O", "-10"), ("1o,5", "10,5"), ("I2", "12"), ("1О", "10")]
 )
 def test_a_damaged_number_shows_what_it_was(text, reading):
     trouble = read_number(text)

@@ -61,9 +61,7 @@ def test_codes_of_one_cell(text: str, codes: dict[str, tuple[str, str]]) -> None
 
 
 def test_a_plants_own_codes_lie_over_the_known() -> None:
-    codes = codes_with(
-        {"SDV": ("on/off valve", "X"), "KHV": ("Kugelhahn", ""), "GD": ("governor drive", "S")}
-    )
+    codes = codes_with({"SDV": ("on/off valve", "X"), "KHV": ("Kugelhahn", ""), "GD": ("governor drive", "S")})
     assert (codes["SDV"].first, codes["SDV"].meaning, codes["SDV"].letters) == ("X", "shutdown valve", "XV")
     assert code_kind(codes["KHV"]) is Kind.ON_OFF_VALVE
     assert (codes["GD"].meaning, codes["GD"].letters) == ("governor drive", None)

@@ -273,9 +273,7 @@ NAMES = {
 }
 
 
-@pytest.mark.parametrize(
-    ("text", "name"), [(text, name) for name, texts in NAMES.items() for text in texts], ids=str
-)
+@pytest.mark.parametrize(("text", "name"), [(text, name) for name, texts in NAMES.items() for text in texts], ids=str)
 def test_names_of_sensors(text: str, name: str) -> None:
     sensor = read_sensor_type(text)
     assert sensor is not None

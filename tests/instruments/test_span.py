@@ -181,9 +181,7 @@ def test_a_widened_range_has_its_span(lrv: float, urv: float, at_least: float) -
     assert not below(span(*widened), at_least)
 
 
-@pytest.mark.parametrize(
-    ("lrv", "within"), [(0.0, True), (0.9, True), (0.901, False), (-0.9, True), (-0.901, False)]
-)
+@pytest.mark.parametrize(("lrv", "within"), [(0.0, True), (0.9, True), (0.901, False), (-0.9, True), (-0.901, False)])
 def test_zero_shift_reaches_as_far_down_as_up(lrv: float, within: bool) -> None:
     assert zero_shift_limit(6.0, 15.0) == 0.9
     assert within_zero_shift(lrv, 6.0, 15.0) is within
@@ -260,9 +258,7 @@ def test_the_preferred_urv_is_the_next_one(at_least: float) -> None:
         (3.0, 0.0, {"low_percent": 0.0, "at_least": 100.0}, 100.0),
     ],
 )
-def test_preferred_urv_for_normal(
-    normal: float, lrv: float, limits: dict[str, float], expected: float | None
-) -> None:
+def test_preferred_urv_for_normal(normal: float, lrv: float, limits: dict[str, float], expected: float | None) -> None:
     assert preferred_urv_for_normal(normal, lrv, **limits) == expected
 
 

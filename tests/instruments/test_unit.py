@@ -26,9 +26,7 @@ from instruments.unit import (
     unit_label,
 )
 
-VECTORS = list(
-    csv.DictReader((Path(__file__).parents[1] / "vectors" / "units.csv").open(encoding="utf-8", newline=""))
-)
+VECTORS = list(csv.DictReader((Path(__file__).parents[1] / "vectors" / "units.csv").open(encoding="utf-8", newline="")))
 PRESSURES = [name for name in CANONICAL if unit(name).kind == "pressure"]
 
 

@@ -83,9 +83,7 @@ def test_temperature_factor(conductor_c: float, factor: float) -> None:
         (0.0, 12.1, 70.0, "conductor", 0.0),
     ],
 )
-def test_loop_resistance(
-    length_m: float, ohm_per_km: float, conductor_c: float, per: str, expected: float
-) -> None:
+def test_loop_resistance(length_m: float, ohm_per_km: float, conductor_c: float, per: str, expected: float) -> None:
     found = loop_resistance_ohm(length_m, ohm_per_km, conductor_c=conductor_c, per=per)  # type: ignore[arg-type]
     assert found == pytest.approx(expected, abs=5e-4)
 
@@ -166,9 +164,7 @@ SIZES: dict[tuple[float | None, int | None], list[str]] = {
 }
 
 
-@pytest.mark.parametrize(
-    ("text", "size"), [(text, size) for size, texts in SIZES.items() for text in texts], ids=str
-)
+@pytest.mark.parametrize(("text", "size"), [(text, size) for size, texts in SIZES.items() for text in texts], ids=str)
 def test_sizes_as_lists_write_them(text: str, size: tuple[float | None, int | None]) -> None:
     size_mm2, awg = size
     assert read_conductor_size(text) == Conductor(size_mm2=size_mm2, awg=awg)

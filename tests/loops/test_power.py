@@ -49,9 +49,7 @@ def test_the_current_and_the_supply_decide(
 
 
 def test_a_budget_shows_its_terms() -> None:
-    budget = voltage_budget(
-        24.0, 20.0, needed_v=12.0, resistances=[("receiver", 250.0)], fixed_drops=[("diode", 0.5)]
-    )
+    budget = voltage_budget(24.0, 20.0, needed_v=12.0, resistances=[("receiver", 250.0)], fixed_drops=[("diode", 0.5)])
     assert budget == VoltageBudget(
         supply_v=24.0,
         current_ma=20.0,
@@ -78,8 +76,7 @@ def test_a_budget_shows_its_terms() -> None:
         ),
         (
             *(22.8, 22.0, 12.0, [("cable", 86.3636)], [("diode", 0.7), ("meter", 2.0)]),
-            "22.8 V - 22 mA x 86.364 ohm - 0.7 V - 2.0 V = 18.2 V at the terminals, 12.0 V needed,"
-            " margin 6.2 V",
+            "22.8 V - 22 mA x 86.364 ohm - 0.7 V - 2.0 V = 18.2 V at the terminals, 12.0 V needed, margin 6.2 V",
         ),
         (
             15.0,
@@ -104,9 +101,7 @@ def test_working(
     fixed_drops: list[tuple[str, float]],
     working: str,
 ) -> None:
-    budget = voltage_budget(
-        supply_v, current_ma, needed_v=needed_v, resistances=resistances, fixed_drops=fixed_drops
-    )
+    budget = voltage_budget(supply_v, current_ma, needed_v=needed_v, resistances=resistances, fixed_drops=fixed_drops)
     assert budget.working == working
 
 
@@ -177,9 +172,7 @@ def test_the_highest_voltage_stands_at_the_lowest_current(
     ],
 )
 def test_over_voltage(supply_v: float, margin_v: float, working: str) -> None:
-    found = over_voltage(
-        supply_v, allowed_v=31.3, resistances=[("receiver", 250.0)], fixed_drops=[("diode", 0.7)]
-    )
+    found = over_voltage(supply_v, allowed_v=31.3, resistances=[("receiver", 250.0)], fixed_drops=[("diode", 0.7)])
     assert found.margin_v == pytest.approx(margin_v, abs=1e-9)
     assert found.passes is (margin_v >= 0.0)
     assert found.working == working
@@ -205,9 +198,7 @@ def test_load_line(current_ma: float, at_10_5_v: float, at_12_v: float) -> None:
     ("supply_v", "fixed_v", "ohm"),
     [(12.0, 0.0, 0.0), (11.9, 0.0, None), (24.0, 2.0, 500.0), (13.0, 1.5, None)],
 )
-def test_load_line_ends_where_the_supply_alone_falls_short(
-    supply_v: float, fixed_v: float, ohm: float | None
-) -> None:
+def test_load_line_ends_where_the_supply_alone_falls_short(supply_v: float, fixed_v: float, ohm: float | None) -> None:
     found = max_loop_ohm(supply_v, 20.0, needed_v=12.0, fixed_v=fixed_v)
     assert found is None if ohm is None else found == pytest.approx(ohm, abs=1e-9)
 
@@ -253,9 +244,7 @@ def test_a_length_that_exactly_fits_counts() -> None:
     )
 
 
-@given(
-    SUPPLY_V, CURRENT_MA, NEEDED_V, st.floats(1.0, 100.0), st.floats(-40.0, 90.0), OHM, st.floats(0.0, 3.0)
-)
+@given(SUPPLY_V, CURRENT_MA, NEEDED_V, st.floats(1.0, 100.0), st.floats(-40.0, 90.0), OHM, st.floats(0.0, 3.0))
 def test_one_metre_more_than_the_longest_cable_falls_short(
     supply_v: float,
     current_ma: float,
@@ -379,9 +368,7 @@ def test_highest_supply(allowed_v: float, resistances: list[tuple[str, float]], 
 
 
 @given(st.floats(10.0, 60.0), OHM, st.floats(0.0, 3.0))
-def test_a_tenth_more_than_the_highest_supply_is_too_much(
-    allowed_v: float, ohm: float, fixed_v: float
-) -> None:
+def test_a_tenth_more_than_the_highest_supply_is_too_much(allowed_v: float, ohm: float, fixed_v: float) -> None:
     resistances, fixed_drops = [("all", ohm)], [("diode", fixed_v)]
     highest_v = highest_supply_v(allowed_v=allowed_v, resistances=resistances, fixed_drops=fixed_drops)
     for supply_v, passes in ((highest_v, True), (round(highest_v + 0.1, 1), False)):
@@ -399,24 +386,16 @@ def test_without_resistance_the_supply_reaches_the_terminals(supply_v: float, cu
 def test_double_length_doubles_the_drop(supply_v: float, current_ma: float, length_m: float) -> None:
     drops = [
         supply_v
-        - volts_at_transmitter(
-            supply_v, current_ma, [("cable", loop_resistance_ohm(metres, 12.1, conductor_c=70.0))]
-        )
+        - volts_at_transmitter(supply_v, current_ma, [("cable", loop_resistance_ohm(metres, 12.1, conductor_c=70.0))])
         for metres in (length_m, 2.0 * length_m)
     ]
     assert drops[1] == pytest.approx(2.0 * drops[0], rel=1e-9, abs=1e-12)
 
 
 @given(SUPPLY_V, CURRENT_MA, NEEDED_V, OHM, OHM)
-def test_the_terms_add_up(
-    supply_v: float, current_ma: float, needed_v: float, one: float, other: float
-) -> None:
-    budget = voltage_budget(
-        supply_v, current_ma, needed_v=needed_v, resistances=[("one", one), ("other", other)]
-    )
-    assert budget.at_terminals_v == pytest.approx(
-        supply_v - sum(term.drop_v for term in budget.terms), abs=1e-9
-    )
+def test_the_terms_add_up(supply_v: float, current_ma: float, needed_v: float, one: float, other: float) -> None:
+    budget = voltage_budget(supply_v, current_ma, needed_v=needed_v, resistances=[("one", one), ("other", other)])
+    assert budget.at_terminals_v == pytest.approx(supply_v - sum(term.drop_v for term in budget.terms), abs=1e-9)
 
 
 @given(SUPPLY_V, NEEDED_V, OHM)

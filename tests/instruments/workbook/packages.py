@@ -27,13 +27,9 @@ def texts(*items: str) -> str:
     return f'<sst xmlns="{MAIN}">' + "".join(f"<si>{item}</si>" for item in items) + "</sst>"
 
 
-def styles(
-    *, formats: Mapping[int, str] | None = None, fonts: str = "<font/>", cells: str = '<xf fontId="0"/>'
-) -> str:
+def styles(*, formats: Mapping[int, str] | None = None, fonts: str = "<font/>", cells: str = '<xf fontId="0"/>') -> str:
     """The part of the styles."""
-    codes = "".join(
-        f'<numFmt numFmtId="{number}" formatCode="{code}"/>' for number, code in (formats or {}).items()
-    )
+    codes = "".join(f'<numFmt numFmtId="{number}" formatCode="{code}"/>' for number, code in (formats or {}).items())
     return (
         f'<styleSheet xmlns="{MAIN}"><numFmts>{codes}</numFmts><fonts>{fonts}</fonts>'
         f"<cellXfs>{cells}</cellXfs>"
@@ -46,8 +42,7 @@ def relations(*found: tuple[str, str, str]) -> str:
     return (
         f'<Relationships xmlns="{RELATIONS}">'
         + "".join(
-            f'<Relationship Id="{name}" Type="{KINDS}/{kind}" Target="{target}"/>'
-            for name, kind, target in found
+            f'<Relationship Id="{name}" Type="{KINDS}/{kind}" Target="{target}"/>' for name, kind, target in found
         )
         + "</Relationships>"
     )
@@ -61,18 +56,14 @@ def parts(
 ) -> dict[str, str | bytes]:
     """The parts of a workbook of these sheets; a part in `more` that is None is left out."""
     listed = "".join(
-        f'<sheet name="Sheet{number}" sheetId="{number}" r:id="rId{number}"/>'
-        for number in range(1, len(sheets) + 1)
+        f'<sheet name="Sheet{number}" sheetId="{number}" r:id="rId{number}"/>' for number in range(1, len(sheets) + 1)
     )
     made: dict[str, str | bytes | None] = {
         "[Content_Types].xml": '<Types xmlns="http://schemas.openxmlformats.org/package/2006/content-types"/>',
         "_rels/.rels": relations(("rId1", "officeDocument", "xl/workbook.xml")),
         "xl/workbook.xml": f'<workbook xmlns="{MAIN}" xmlns:r="{KINDS}"><sheets>{listed}</sheets></workbook>',
         "xl/_rels/workbook.xml.rels": relations(
-            *(
-                (f"rId{number}", "worksheet", f"worksheets/sheet{number}.xml")
-                for number in range(1, len(sheets) + 1)
-            ),
+            *((f"rId{number}", "worksheet", f"worksheets/sheet{number}.xml") for number in range(1, len(sheets) + 1)),
             ("rId90", "sharedStrings", "sharedStrings.xml"),
             ("rId91", "styles", "styles.xml"),
         ),

@@ -84,8 +84,7 @@ def test_encodings(data: bytes, rows: list[list[str]], notes: tuple[str, ...]) -
         ('tag,service\nPT-1,"feed; hot; wet"\nPT-2,"a; b; c"\n', ","),
         # Title rows and notes round about.
         (
-            "Project: Works, Unit 10\n\ntag;service;unit\nPT-1;feed;bar\nPT-2;feed;bar\nEnd of"
-            " list, rev. 2\n",
+            "Project: Works, Unit 10\n\ntag;service;unit\nPT-1;feed;bar\nPT-2;feed;bar\nEnd of list, rev. 2\n",
             ";",
         ),
         ("PT-1|4,20|mA;HART\nPT-2|4,20|mA;HART\n", "|"),
@@ -216,9 +215,7 @@ def test_how_large(text: str, cells: int, fits: bool) -> None:
 
 
 def test_a_file_of_separators_does_not_fill_the_memory() -> None:
-    with pytest.raises(
-        UnreadableFile, match=r"a.csv, line 2: is longer than 8,000,000 characters, as no row is\."
-    ):
+    with pytest.raises(UnreadableFile, match=r"a.csv, line 2: is longer than 8,000,000 characters, as no row is\."):
         read_delimited(b"\n" + b"," * 30_000_000, file="a.csv")
     with pytest.raises(UnreadableFile, match=r"has more than 1,000,000 cells, and no more are read"):
         read_delimited(b",\n" * 600_000, file="a.csv", max_cells=1_000_000)
@@ -228,9 +225,7 @@ def test_a_file_of_separators_does_not_fill_the_memory() -> None:
 
 def test_one_long_row_among_many_is_not_spread_out() -> None:
     text = "a\n" * 100_000 + "," * 5_000 + "x\n"
-    with pytest.raises(
-        UnreadableFile, match=r"has 100,001 rows and 5,001 columns; at most 20,000,000 cells are read"
-    ):
+    with pytest.raises(UnreadableFile, match=r"has 100,001 rows and 5,001 columns; at most 20,000,000 cells are read"):
         read(text)
 
 

@@ -470,10 +470,8 @@ def test_a_set_point_in_a_column_of_ranges_is_a_set_point() -> None:
 
 def test_a_certificate_behind_the_marking_is_parted_from_it() -> None:
     found = read(
-
-            "Tag|Ex marking / certificate\nPT-1|Ex ia IIC T4 Ga, BVX 15 ATEX 1012X\nPT-2|"
-            "Ex d IIB T6 (IECEx BVX 16.0007)\nPT-3|Ex d IIB T6"
-
+        "Tag|Ex marking / certificate\nPT-1|Ex ia IIC T4 Ga, BVX 15 ATEX 1012X\nPT-2|"
+        "Ex d IIB T6 (IECEx BVX 16.0007)\nPT-3|Ex d IIB T6"
     )
     assert all_said(found, "ex_marking", "certificate") == [
         {"ex_marking": "Ex ia IIC T4 Ga", "certificate": "BVX 15 ATEX 1012X"},

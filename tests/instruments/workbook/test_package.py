@@ -115,8 +115,7 @@ def without(name: str) -> dict[str, str | bytes]:
             " fill the memory.",
         ),
         (
-            ONE
-            | {FIRST_SHEET: '<!DOCTYPE a [<!ENTITY b "b">]>' + worksheet(ROWS).partition("?>")[2].strip()},
+            ONE | {FIRST_SHEET: '<!DOCTYPE a [<!ENTITY b "b">]>' + worksheet(ROWS).partition("?>")[2].strip()},
             LIMITS,
             "list.xlsx, sheet 'Sheet1': has a DOCTYPE, which no workbook needs and which can"
             " make a small file fill"
@@ -147,8 +146,7 @@ def without(name: str) -> dict[str, str | bytes]:
         (
             parts(worksheet(ROWS), worksheet('<row r="3"><c r="B3"><v>1</v></c></row>')),
             Limits(cells=6),
-            "list.xlsx, sheet 'Sheet2': reaches to B3, which is 6 cells, 1 of them filled; at"
-            " most 5 are read.",
+            "list.xlsx, sheet 'Sheet2': reaches to B3, which is 6 cells, 1 of them filled; at most 5 are read.",
         ),
         (
             ONE | {"xl/styles.xml": styles()},
@@ -157,9 +155,7 @@ def without(name: str) -> dict[str, str | bytes]:
         ),
     ],
 )
-def test_what_is_refused(
-    tmp_path: Path, made: Mapping[str, str | bytes], limits: Limits, message: str
-) -> None:
+def test_what_is_refused(tmp_path: Path, made: Mapping[str, str | bytes], limits: Limits, message: str) -> None:
     before, _, after = message.partition("{}")
     said = refusal(tmp_path, zipped(made), limits)
     assert said.startswith(before)
@@ -208,9 +204,7 @@ def test_a_length_that_lies_is_noticed(tmp_path: Path) -> None:
 def test_a_list_of_parts_that_would_fill_the_memory(tmp_path: Path) -> None:
     data = bytearray(zipped(ONE))
     struct.pack_into("<I", data, len(data) - 10, 3_000_000)
-    assert (
-        refusal(tmp_path, bytes(data)) == "list.xlsx: has more parts than a workbook: at most 2,000 are read."
-    )
+    assert refusal(tmp_path, bytes(data)) == "list.xlsx: has more parts than a workbook: at most 2,000 are read."
 
 
 def test_the_same_part_twice(tmp_path: Path) -> None:
@@ -286,8 +280,7 @@ def test_styles_that_show_cells_otherwise(tmp_path: Path) -> None:
     made = ONE | {
         "xl/styles.xml": styles(
             formats={164: "0000", 165: "0.00", 14: "dd&quot;.&quot;mm"},
-            fonts='<font><b/></font><font><strike/></font><font><strike val="0"/></font><font>'
-            '<strike val="1"/></font>',
+            fonts='<font><b/></font><font><strike/></font><font><strike val="0"/></font><font><strike val="1"/></font>',
             cells='<xf fontId="0"/><xf fontId="1" numFmtId="0"/><xf fontId="2"/><xf fontId="3"'
             ' numFmtId="164"/>'
             '<xf fontId="9" numFmtId="165"/><xf numFmtId="14" fontId="x"/><xf numFmtId="9"/><xf'
@@ -314,9 +307,7 @@ PLAIN_RICH = "<r><rPr><b/></rPr><t>bold</t></r><r><t>!</t></r>"
     ],
 )
 def test_texts_with_runs(every: bool, found: Mapping[bytes, object], size: int) -> None:
-    part = (
-        texts("<t>a</t>", PLAIN_RICH, "", RICH, "<t>&lt;strike/></t>").replace("<si></si>", "<si/>").encode()
-    )
+    part = texts("<t>a</t>", PLAIN_RICH, "", RICH, "<t>&lt;strike/></t>").replace("<si></si>", "<si/>").encode()
     pieces = [part[:70], *(part[at : at + size] for at in range(70, len(part), size))]
     assert rich_texts(pieces, every=every) == (found, 5)
 
@@ -334,17 +325,12 @@ def test_a_text_that_does_not_end() -> None:
 
 def commented(*found: str, authors: str = "<author>R. Quill</author><author/>") -> str:
     return (
-        f'<comments xmlns="{MAIN}"><authors>{authors}</authors>'
-        f"<commentList>{''.join(found)}</commentList></comments>"
+        f'<comments xmlns="{MAIN}"><authors>{authors}</authors><commentList>{"".join(found)}</commentList></comments>'
     )
 
 
-def beside(
-    folder: Path, kinds: tuple[tuple[str, str, str], ...], more: Mapping[str, str], **frame: str
-) -> object:
-    made = parts(
-        worksheet(ROWS, **frame), more={"xl/worksheets/_rels/sheet1.xml.rels": relations(*kinds), **more}
-    )
+def beside(folder: Path, kinds: tuple[tuple[str, str, str], ...], more: Mapping[str, str], **frame: str) -> object:
+    made = parts(worksheet(ROWS, **frame), more={"xl/worksheets/_rels/sheet1.xml.rels": relations(*kinds), **more})
     with Package(saved(folder, zipped(made)), file="list.xlsx") as package:
         sheet = look_at(package).sheets[0]
         return sheet.comments, sheet.shapes, sheet.notes
@@ -384,8 +370,7 @@ def test_threads_take_the_place_of_their_stand_in(tmp_path: Path) -> None:
         f' personId="p1"><text>Is it 4 bar?'
         '</text></threadedComment><threadedComment ref="B2" personId="p2"><text>Yes.</text></threadedComment>'
         "</ThreadedComments>",
-        "xl/persons/person.xml": f'<personList xmlns="{space}"><person displayName="A. Reed"'
-        f' id="p1"/></personList>',
+        "xl/persons/person.xml": f'<personList xmlns="{space}"><person displayName="A. Reed" id="p1"/></personList>',
         "xl/_rels/workbook.xml.rels": relations(
             ("rId1", "worksheet", "worksheets/sheet1.xml"), ("p", "person", "persons/person.xml")
         ),
@@ -415,8 +400,7 @@ def test_what_stands_beside_a_sheet_and_is_damaged_is_noted(tmp_path: Path) -> N
         {},
         0,
         [
-            "comments not read: part xl/comments1.xml is not well-formed XML: no element found,"
-            " line 1, column 11",
+            "comments not read: part xl/comments1.xml is not well-formed XML: no element found, line 1, column 11",
             "drawing not read: part xl/drawings/drawing1.xml is missing",
         ],
     )

@@ -172,9 +172,7 @@ def test_zeros_that_a_format_shows_are_part_of_the_text(tmp_path: Path) -> None:
         sheet["A1"].number_format, sheet["C1"].number_format = "0000", '"PT-"0000'
 
     sheet = written(tmp_path, fill)
-    assert [
-        as_text(cell, sheet.number_formats.get((0, column))) for column, cell in enumerate(sheet.rows[0])
-    ] == [
+    assert [as_text(cell, sheet.number_formats.get((0, column))) for column, cell in enumerate(sheet.rows[0])] == [
         "0034",
         "1001",
         "PT-0034",
@@ -228,9 +226,7 @@ def test_filtered_and_grouped_rows_are_read_and_known_as_hidden(tmp_path: Path) 
 def test_a_million_formatted_blank_rows_do_not_count(tmp_path: Path) -> None:
     rows = (
         ROW
-        + "".join(
-            f'<row r="{row}" s="1" customFormat="1"><c r="A{row}" s="1"/></row>' for row in range(2, 200_000)
-        )
+        + "".join(f'<row r="{row}" s="1" customFormat="1"><c r="A{row}" s="1"/></row>' for row in range(2, 200_000))
         + '<row r="1048576"><c r="A1048576" s="1"/></row>'
     )
     path = saved(tmp_path, zipped(parts(worksheet(rows)), method=zipfile.ZIP_STORED))
@@ -255,9 +251,7 @@ def test_errors_of_every_kind(tmp_path: Path) -> None:
         "#GETTING_DATA",
         "#BUSY!",
     )
-    cells = "".join(
-        f'<c r="{cell_address(0, column)}" t="e"><v>{error}</v></c>' for column, error in enumerate(known)
-    )
+    cells = "".join(f'<c r="{cell_address(0, column)}" t="e"><v>{error}</v></c>' for column, error in enumerate(known))
     pasted = "".join(
         f'<c r="{cell_address(1, column)}" t="str"><v>{error}</v></c>'
         for column, error in enumerate(("#REF!", "#BEZUG!", "#####", "Err:508", "#1", "Error"))
@@ -296,8 +290,7 @@ def test_formulas_without_a_result_are_no_blanks(tmp_path: Path) -> None:
     sheet = one(
         tmp_path,
         worksheet(
-            '<row r="2"><c r="A2"><v>1</v></c><c r="B2"><f>A2</f></c></row><row r="4"><c'
-            ' r="C4"><f>A2</f><v/></c></row>'
+            '<row r="2"><c r="A2"><v>1</v></c><c r="B2"><f>A2</f></c></row><row r="4"><c r="C4"><f>A2</f><v/></c></row>'
         ),
     )
     assert sheet == Sheet(
@@ -335,12 +328,9 @@ def test_multi_line_cells_and_odd_characters_stay_as_they_are(tmp_path: Path) ->
     sheet = one(
         tmp_path,
         worksheet(
-            '<row r="1"><c r="A1" t="s"><v>0</v></c><c r="B1" t="s"><v>1</v></c><c r="C1"'
-            ' t="s"><v>2</v></c></row>'
+            '<row r="1"><c r="A1" t="s"><v>0</v></c><c r="B1" t="s"><v>1</v></c><c r="C1" t="s"><v>2</v></c></row>'
         ),
-        shared=texts(
-            "<t>PSHH\n12 barg\nPSH</t>", "<t xml:space='preserve'> PT-1\u200b </t>", "<t>a_x0007_\u202e</t>"
-        ),
+        shared=texts("<t>PSHH\n12 barg\nPSH</t>", "<t xml:space='preserve'> PT-1\u200b </t>", "<t>a_x0007_\u202e</t>"),
     )
     assert sheet.rows == [["PSHH\n12 barg\nPSH", " PT-1\u200b ", "a\x07\u202e"]]
 
@@ -417,8 +407,7 @@ def test_cells_far_from_the_list_are_told_of_and_left_out(tmp_path: Path) -> Non
     sheet = one(
         tmp_path,
         worksheet(
-            list_
-            + '<row r="900000"><c r="C900000" t="e"><v>#SPILL!</v></c><c r="D900000"><f>A1</f></c></row>'
+            list_ + '<row r="900000"><c r="C900000" t="e"><v>#SPILL!</v></c><c r="D900000"><f>A1</f></c></row>'
             '<row r="1048576"><c r="XFD1048576" t="inlineStr"><is><t>end</t></is></c></row>',
             after='<mergeCells><mergeCell ref="A2:XFD1048576"/></mergeCells>',
         ),
@@ -468,9 +457,7 @@ def test_one_cell_in_the_last_corner_is_refused_at_once(tmp_path: Path) -> None:
 
 def test_sixteen_thousand_columns_are_read(tmp_path: Path) -> None:
     cells = "".join(f'<c r="{cell_address(0, column)}"><v>{column}</v></c>' for column in range(16_384))
-    assert one(tmp_path, worksheet(f'<row r="1">{cells}</row>')).rows == [
-        [float(column) for column in range(16_384)]
-    ]
+    assert one(tmp_path, worksheet(f'<row r="1">{cells}</row>')).rows == [[float(column) for column in range(16_384)]]
 
 
 def test_merged_ranges_that_overlap_are_passed_over(tmp_path: Path) -> None:
@@ -645,12 +632,8 @@ def test_any_sheet_reads_as_its_tree_does(tmp_path: Path, seed: int) -> None:
         zipped(
             parts(
                 part,
-                shared=texts(
-                    *(f"<t>{text.replace('&', '&amp;').replace('<', '&lt;')}</t>" for text in shared)
-                ),
-                style=styles(
-                    fonts="<font/><font><strike/></font>", cells='<xf/><xf numFmtId="0"/><xf fontId="1"/>'
-                ),
+                shared=texts(*(f"<t>{text.replace('&', '&amp;').replace('<', '&lt;')}</t>" for text in shared)),
+                style=styles(fonts="<font/><font><strike/></font>", cells='<xf/><xf numFmtId="0"/><xf fontId="1"/>'),
             )
         ),
     )
@@ -823,15 +806,11 @@ def test_a_large_sheet_takes_little_memory(tmp_path: Path) -> None:
     """A sheet of 400,000 cells is read in a process of its own: 60 bytes of it for each cell, and no more."""
     rows = "".join(
         f'<row r="{row}">'
-        + "".join(
-            f'<c r="{letter}{row}" t="s"><v>{ord(letter) - 65}</v></c>' for letter in "ABCDEFGHIJKLMNOPQRST"
-        )
+        + "".join(f'<c r="{letter}{row}" t="s"><v>{ord(letter) - 65}</v></c>' for letter in "ABCDEFGHIJKLMNOPQRST")
         + "</row>"
         for row in range(1, 20_001)
     )
-    path = saved(
-        tmp_path, zipped(parts(worksheet(rows), shared=texts(*(f"<t>text {n}</t>" for n in range(20)))))
-    )
+    path = saved(tmp_path, zipped(parts(worksheet(rows), shared=texts(*(f"<t>text {n}</t>" for n in range(20))))))
     code = (
         "import resource, sys\nfrom instruments.workbook.reader import read_file\n"
         "before = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss\nsheets = read_file(sys.argv[1])\n"
@@ -871,9 +850,7 @@ def test_addresses(position: tuple[int, int], address: str) -> None:
     assert column_number(re.sub("[0-9]", "", address)) == position[1]
 
 
-@pytest.mark.parametrize(
-    "address", ["", "A", "1", "A0", "XFE1", "A1048577", "AAAA1", "A1:B2", "Á1", "A1\n", "A١"]
-)
+@pytest.mark.parametrize("address", ["", "A", "1", "A0", "XFE1", "A1048577", "AAAA1", "A1:B2", "Á1", "A1\n", "A١"])
 def test_what_is_no_address(address: str) -> None:
     assert cell_position(address) is None
 

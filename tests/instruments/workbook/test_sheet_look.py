@@ -32,9 +32,7 @@ def cut(part: str | bytes, size: int = 1 << 20) -> Iterator[bytes]:
     return (data[at : at + size] for at in range(0, len(data), size))
 
 
-def seen(
-    rows: str, looks: Looks | None = None, *, before: str = "", after: str = "", size: int = 1 << 20
-) -> SheetLook:
+def seen(rows: str, looks: Looks | None = None, *, before: str = "", after: str = "", size: int = 1 << 20) -> SheetLook:
     return look(cut(worksheet(rows, before=before, after=after), size), looks or Looks(), **TINY)
 
 
@@ -73,9 +71,7 @@ def test_a_sheet_without_rows(data: str) -> None:
         pytest.param(worksheet('<row r="1"><c r="A1" t="str"><v><![CDATA[a]]></v></c></row>'), id="CDATA"),
         pytest.param(worksheet('<row r="1"><?x y?></row>'), id="instruction"),
         pytest.param(worksheet("<row r='1'/>"), id="single quotes in a row"),
-        pytest.param(
-            worksheet('<row r="1"><c r="A1" t=\'e\'><v>#REF!</v></c></row>'), id="single quotes in a cell"
-        ),
+        pytest.param(worksheet('<row r="1"><c r="A1" t=\'e\'><v>#REF!</v></c></row>'), id="single quotes in a cell"),
         pytest.param(worksheet('<row r="1"><c r="A1" t = "e"><v>#REF!</v></c></row>'), id="blanks round ="),
         pytest.param(worksheet('<row r="1"><c t="e" r="A1"><v>#REF!</v></c></row>'), id="address last"),
         pytest.param(worksheet('<row r="1"><c><v>1</v></c></row>'), id="cell without address"),
@@ -83,9 +79,7 @@ def test_a_sheet_without_rows(data: str) -> None:
         pytest.param(worksheet('<row r="1"><c r="a1"><v>1</v></c></row>'), id="small letters"),
         pytest.param(worksheet('<row r="01"><c r="A1"><v>1</v></c></row>'), id="leading zero"),
         pytest.param(worksheet('<row\nr="1"/>'), id="line end in a tag"),
-        pytest.param(
-            worksheet('<row r="1"><c r="A1" x="a>b" t="e"><v>#REF!</v></c></row>'), id="> in an attribute"
-        ),
+        pytest.param(worksheet('<row r="1"><c r="A1" x="a>b" t="e"><v>#REF!</v></c></row>'), id="> in an attribute"),
         pytest.param(worksheet("").replace("</sheetData>", "</sheetData >"), id="blank in an end tag"),
         pytest.param(worksheet("").replace("worksheet", "x:worksheet"), id="prefix"),
         pytest.param(worksheet("").replace("xmlns:r=", f'xmlns:x="{MAIN}" xmlns:r='), id="prefix for later"),
@@ -108,8 +102,7 @@ def test_what_is_spelt_otherwise_is_noticed(part: str | bytes) -> None:
             (2, 2, False),
         ),
         (
-            '<row r="2"><c r="F2"><v>1</v></c><c r="A2"><v>1</v></c></row><row r="1"><c r="B1">'
-            "<v>1</v></c></row>",
+            '<row r="2"><c r="F2"><v>1</v></c><c r="A2"><v>1</v></c></row><row r="1"><c r="B1"><v>1</v></c></row>',
             (2, 6, False),
         ),
         # 1,000 rows by 100 columns is the room there is.
@@ -141,8 +134,7 @@ def test_how_far_filled_cells_reach(rows: str, extent: tuple[int, int, bool]) ->
     [
         (
             '<row r="1048576"><c r="XFD1048576"><v>1</v></c></row>',
-            "reaches to XFD1048576, which is 17,179,869,184 cells, 1 of them filled; at most"
-            " 100,000 are read",
+            "reaches to XFD1048576, which is 17,179,869,184 cells, 1 of them filled; at most 100,000 are read",
         ),
         (
             '<row r="1000"><c r="CW1000"><v>1</v></c></row>',
@@ -187,11 +179,7 @@ def test_rows_of_many_shapes_are_counted_as_others() -> None:
     # More shapes of rows than are kept at a time; a far column among them is still found.
     rows = "".join(
         f'<row r="{row}">'
-        + "".join(
-            f'<c r="{letter}{row}"><v>1</v></c>'
-            for bit, letter in enumerate("ABCDEFGHIJKLM")
-            if row >> bit & 1
-        )
+        + "".join(f'<c r="{letter}{row}"><v>1</v></c>' for bit, letter in enumerate("ABCDEFGHIJKLM") if row >> bit & 1)
         + ('<c r="ZZZ1"><v>1</v></c>'.replace("ZZZ1", f"WWW{row}") if row == 17 else "")
         + "</row>"
         for row in range(1, 5000)
@@ -254,8 +242,7 @@ STRUCK = Looks(
         ),
         ('<c r="A1" t="inlineStr"><is><r><rPr><b/><strike val="1"/></rPr><t>a</t></r></is></c>', True, None),
         (
-            '<c r="A1" t="inlineStr"><is><r><rPr><strike val="0"/></rPr><t>a</t></r><r><t> b'
-            "</t></r></is></c>",
+            '<c r="A1" t="inlineStr"><is><r><rPr><strike val="0"/></rPr><t>a</t></r><r><t> b</t></r></is></c>',
             False,
             None,
         ),
@@ -291,9 +278,9 @@ def test_what_the_value_reader_cannot_take_is_edited_out() -> None:
     )
     for size in (17, 1 << 20):
         found = look(cut(part, size), STRUCK, **TINY)
-        assert b"".join(altered(cut(part, size), found, far=[])).decode() == part.replace(
-            'A1" s="4"', 'A1"'
-        ).replace('C1" s="4"', 'C1"').replace("#SPILL!", "")
+        assert b"".join(altered(cut(part, size), found, far=[])).decode() == part.replace('A1" s="4"', 'A1"').replace(
+            'C1" s="4"', 'C1"'
+        ).replace("#SPILL!", "")
 
 
 def test_far_cells_are_taken_out_and_kept() -> None:
@@ -304,9 +291,7 @@ def test_far_cells_are_taken_out_and_kept() -> None:
     )
     found = look(cut(part), Looks(), **TINY)
     far: list[tuple[tuple[int, int], bytes]] = []
-    assert b"".join(altered(cut(part), found, far=far)).decode() == worksheet(
-        near + '</row><row r="99999"></row>'
-    )
+    assert b"".join(altered(cut(part), found, far=far)).decode() == worksheet(near + '</row><row r="99999"></row>')
     assert far == [
         ((0, 730), b' t="e"><v></v></c>'),
         ((99998, 0), b' t="inlineStr"><is><t>x</t></is></c>'),
@@ -322,8 +307,7 @@ def test_edits_outside_of_blocks_are_not_lost() -> None:
 
 def test_hidden_rows_and_columns_and_merged_ranges() -> None:
     found = seen(
-        '<row r="1"/><row r="2" hidden="1"/><row r="3" spans="1:2" hidden="true" ht="0"/><row'
-        ' r="4" hidden="0"/>',
+        '<row r="1"/><row r="2" hidden="1"/><row r="3" spans="1:2" hidden="true" ht="0"/><row r="4" hidden="0"/>',
         before='<sheetViews><sheetView workbookViewId="0"/></sheetViews><cols><col min="1"'
         ' max="1" width="9"/>'
         '<col min="2" max="3" hidden="1"/><col min="3" max="4" hidden="true"/><col min="6"'
@@ -358,12 +342,8 @@ def test_what_stands_round_the_rows_must_be_well_formed() -> None:
 @pytest.mark.parametrize("beginning", ["", '<row r="1"><c r="A1">', "</sheetData>"])
 def test_what_does_not_end_is_given_up(beginning: str) -> None:
     head = worksheet("").partition("<sheetData>")[0] + ("<sheetData>" if beginning else "")
-    pieces = (
-        piece for _ in range(1) for piece in (head.encode(), beginning.encode(), *[b"x" * (1 << 20)] * 70)
-    )
-    with pytest.raises(
-        BrokenXml, match=f"has more than {MAX_BLOCK >> 20} MB (before its|in one|after its) row"
-    ):
+    pieces = (piece for _ in range(1) for piece in (head.encode(), beginning.encode(), *[b"x" * (1 << 20)] * 70))
+    with pytest.raises(BrokenXml, match=f"has more than {MAX_BLOCK >> 20} MB (before its|in one|after its) row"):
         look(pieces, Looks(), **TINY)
 
 
