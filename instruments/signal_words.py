@@ -144,6 +144,29 @@ def io_types(text: str | None) -> tuple[str, ...]:
     return _io_types(text) if text else ()
 
 
+_TITLE_WORDS: Final = re.compile(
+    r"(?:(?:a[io]|[db][ieao])[0-9]{0,2}|r[0-9]{1,2}|ae|aa|rtds?|tcs?|pt ?100|thermocouples?|"
+    r"analog(?:ue|e|er)?|digital(?:e|er)?|discrete|"
+    r"binary|bin\u00e4re?r?|inputs?|outputs?|eing\w{3,5}|ausg\w{3,5}|ais|aos|dis|dos|signals?|lists?|liste|cards?|"
+    r"channels?|modules?|points?|io|i/o|plc|dcs|rack|slot|node|schedule|sheet|page|of|no|and|[0-9]{1,3}[a-z]?)\.?",
+    re.IGNORECASE,
+)
+
+
+@lru_cache(maxsize=1024)
+def io_type_of_title(text: str) -> str | None:
+    """Return the one input or output that a title names; None where it names none, several, or something else.
+
+    >>> [io_type_of_title(text) for text in ("AI", "DIGITAL INPUTS - rack 2", "DO List", "Digital scales", "AI-AO")]
+    ['AI', 'DI', 'DO', None, None]
+    """
+    words = re.split(r"[\s,;:()/_-]+", text[:LONGEST_WORDS].strip(" .:-"))
+    if not all(_TITLE_WORDS.fullmatch(word) for word in words if word):
+        return None
+    found = {each for part in (text, *words) for each in io_types(part)}
+    return found.pop() if len(found) == 1 else None
+
+
 @lru_cache(maxsize=4096)
 def _io_types(text: str) -> tuple[str, ...]:
     words = " ".join(text[:LONGEST_WORDS].split()).replace("T/C", "TC").replace("t/c", "tc").replace("F&G", "FG")

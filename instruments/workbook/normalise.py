@@ -19,6 +19,7 @@ from instruments.origin import Origin, Place, column_letters
 from instruments.plant_data import PlantData
 from instruments.quantity import Quantity, read_quantity, read_range, read_triplet
 from instruments.record import DeviceType
+from instruments.signal_words import io_type_of_title
 from instruments.unit import Unit, commensurable, read_unit
 from instruments.workbook.cell import (
     BAD,
@@ -207,6 +208,7 @@ class _SheetReader:
         for _, match in labelled:
             self._read_labelled(match, base)
         self._part_markings()
+        self._take_io_type_of_titles()
         self._take_status()
         self._keep_unknown()
         self._add_notes_and_places()
@@ -862,6 +864,16 @@ class _SheetReader:
         if any(found):
             self.values["status"] = found
             self.places.setdefault("status", self.places.get("service") or self.places.get("tag") or ())
+
+    def _take_io_type_of_titles(self) -> None:
+        """Where no column says it, take the I/O type that a section or the sheet is headed with: DIGITAL INPUTS."""
+        if "io_type" not in self.record_fields or "io_type" in self.values:
+            return
+        of_sheet = io_type_of_title(self.sheet.name)
+        found = [(io_type_of_title(place) if place else None) or of_sheet for place in self.rows.places]
+        if any(found):
+            self.values["io_type"] = found
+            self.assumptions.setdefault("I/O type read from the name of the sheet or section")
 
     def _keep_unknown(self) -> None:
         """Keep the cells of columns that were not understood, under their headings."""

@@ -911,3 +911,24 @@ def test_no_cell_is_lost_and_none_is_too_much(data: st.DataObject) -> None:
         assert found.cells_read + found.cells_unread == filled
         assert len(found.records) >= found.rows
         assert all(isinstance(said(record), dict) for record in found.records)
+
+
+@pytest.mark.parametrize(
+    ("name", "text", "wanted"),
+    [
+        ("DI", "Tag|Service|Ch\nLSH-1|Feed|1\nLSH-2|Feed|2", ["DI", "DI"]),
+        ("Analogue inputs", "Tag|Service|Ch\nPT-1|Feed|1\nPT-2|Feed|2", ["AI", "AI"]),
+        # A section says it nearer; one that names something else leaves it to the sheet.
+        ("Sheet1", "Tag|Service|Ch\nDIGITAL INPUTS||\nLSH-1|Feed|1\nDIGITAL OUTPUTS||\nXY-2|Feed|2", ["DI", "DO"]),
+        ("DI", "Tag|Service|Ch\nBOILER HOUSE||\nLSH-1|Feed|1\nLSH-2|Feed|2", ["DI", "DI"]),
+        # A column goes before any title, and a title of several says nothing.
+        ("DI", "Tag|Service|I/O Type\nPT-1|Feed|AI\nPT-2|Feed|AI", ["AI", "AI"]),
+        ("AI-AO", "Tag|Service|Ch\nPT-1|Feed|1\nPT-2|Feed|2", [None, None]),
+        ("Unit 1", "Tag|Service|Ch\nPT-1|Feed|1\nPT-2|Feed|2", [None, None]),
+    ],
+)
+def test_a_title_says_the_io_type_where_no_column_does(name: str, text: str, wanted: list[str | None]) -> None:
+    found = read(text, name=name)
+    assert [record.io_type for record in found.records] == wanted
+    said_so = "I/O type read from the name of the sheet or section" in found.assumptions
+    assert said_so is (any(wanted) and "I/O Type" not in text)
