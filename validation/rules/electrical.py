@@ -65,7 +65,7 @@ def starved_transmitter(circuit: Circuit, plant: Plant) -> Verdict:
     >>> said("ELC01", [tag], types=types, loops=[{**loop, "cable length": "970"}], plant={"ELC hot degC": "20"})
     []
     """
-    if feeds_a_transmitter(circuit) is None:
+    if circuit.powered_by_loop is None:
         return Unchecked("wires")
     budget = lift_off(circuit, plant.data)
     passes = budget.passes_at_worst
@@ -245,7 +245,7 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
     >>> said("ELC02", [tag], types=types, loops=[{**loop, "supply V max": "32.9"}])
     []
     """
-    if feeds_a_transmitter(circuit) is None:
+    if circuit.powered_by_loop is None:
         return Unchecked("wires")
     volts = highest_volts(circuit, plant.data)
     passes = volts.passes_at_worst
