@@ -173,6 +173,18 @@ class Plant:
         """Whether any sheet of the index has a column that is read into one of the fields."""
         return any(name in self._columns for name in names)
 
+    def sheet_has_column(self, installed: Installed, *names: str) -> bool:
+        """Whether a sheet on which the instrument stands has a column for one of the fields.
+
+        Where all stand on one sheet, what it lacks the whole list lacks, and this says yes.
+        """
+        if not self.once("index on several sheets", _on_several_sheets):
+            return True
+        for row in (installed.record, *installed.signals):
+            if row.origin is None or any(name in row.origin.place.columns for name in names):
+                return True
+        return False
+
     def has_sheet(self, kind: str) -> bool:
         """Whether a sheet of that kind was read."""
         return bool(self.lists.records.get(kind))
@@ -360,6 +372,12 @@ def _profile(data: PlantData, index: Sequence[Instrument]) -> tuple[TagProfile, 
         return stated, ()
     chosen = best_profile([record.tag for record in index if record.tag])
     return chosen, (f"tag pattern not stated: most tags fit {chosen.name}",)
+
+
+def _on_several_sheets(plant: Plant) -> bool:
+    """Whether the index has several sheets; of a part of a plant, whether the plant's has."""
+    kind = "Instruments" if any(sheet.kind == "Instruments" for sheet in plant.lists.sheets) else "IO list"
+    return sum(sheet.kind == kind for sheet in plant.lists.sheets) > 1
 
 
 def _by_name(records: Iterable[Any], attribute: str) -> tuple[dict[str, Any], frozenset[str]]:

@@ -159,6 +159,8 @@ def reaudit(installed: Installed, plant: Plant, *, rules: Registry | None = None
             continue
         for subject in subjects:
             verdict = check_one(each, subject, plant)
+            if verdict is not None and each.whole is not None and each.on is Subject.INSTRUMENT:
+                verdict = _without_lacking_columns(verdict, subject, plant, {})
             if verdict is not None:
                 findings.extend(_finding(found, each, _name(subject), subject) for found in _each(verdict))
     findings.sort(key=finding_order)
@@ -201,6 +203,7 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
         return coverage
     applies, needs, check = rule.applies, rule.needs, rule.check
     not_applicable = unsaid = 0
+    lacking: dict[tuple[str, tuple[str, ...]], int] = {}
     for subject in _subjects(rule, plant):
         if not rule.not_live_too and not subject.live:
             not_applicable += 1
@@ -217,6 +220,8 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
                 _unchecked(tuple(missing), subject.name, coverage)
                 continue
             verdict = check(subject, plant)
+            if verdict is not None and rule.whole is not None and rule.on is Subject.INSTRUMENT:
+                verdict = _without_lacking_columns(verdict, subject, plant, lacking)
             if verdict is None:
                 unsaid += 1
             else:
@@ -228,7 +233,58 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
             _unchecked(_BROKEN, subject.name, coverage)
     outcomes[Outcome.NOT_APPLICABLE] += not_applicable
     outcomes[Outcome.CLEAR] += unsaid
+    for (sheet, names), count in sorted(lacking.items()):
+        _report(_sheet_lacks(sheet, names, count), rule, plant.name, plant, coverage, result)
     return coverage
+
+
+def _without_lacking_columns(
+    verdict: Verdict, subject: Installed, plant: Plant, lacking: dict[tuple[str, tuple[str, ...]], int]
+) -> Verdict:
+    """Leave out of a verdict the blanks for which the instrument's sheet has no column, and count them by sheet.
+
+    Other sheets have it; so it is not the whole list that lacks it, and it is no slip of this row either.
+    """
+    if isinstance(verdict, Clear | NotApplicable | Unchecked):
+        return verdict
+    kept: list[Found] = []
+    titles: dict[str, None] = {}
+    for found in _each(verdict):
+        names = found.fields
+        if not names or not all(_is_blank(name, subject) for name in names) or plant.sheet_has_column(subject, *names):
+            kept.append(found)
+            continue
+        origin = subject.record.origin
+        key = (origin.place.sheet if origin is not None else "", names)
+        lacking[key] = lacking.get(key, 0) + 1
+        titles.update(dict.fromkeys(title_of(name) for name in names))
+    if not titles:
+        return verdict
+    return kept or Unchecked(*titles)
+
+
+def _is_blank(name: str, subject: Installed) -> bool:
+    record = subject.record
+    if "." in name or name in record.unread or name in record.unitless or name in record.blanks:
+        return False
+    return getattr(record, name, "") is None
+
+
+def _sheet_lacks(sheet: str, names: tuple[str, ...], count: int) -> Found:
+    titles = [title_of(name) for name in names]
+    columns = " or ".join([", ".join(titles[:-1]), titles[-1]]) if len(titles) > 1 else titles[0]
+    return Found(
+        values={
+            "sheet": sheet,
+            "columns": columns,
+            "count": f"{count} instrument{'s need' if count > 1 else ' needs'}",
+        },
+        fields=names,
+        part=sheet,
+        message="sheet {sheet} has no column for {columns}; {count} one",
+        found="no such column",
+        wanted=columns,
+    )
 
 
 def _run_groups(

@@ -295,6 +295,7 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
     blank: list[str] = []
     shown: list[str] = []
     untold: list[str] = []
+    of_sheet: list[Found] = []
     leaves = None
     for required in asked.required:
         missing, lost = _blank(required, installed)
@@ -313,14 +314,18 @@ def required_field_blank(installed: Installed, plant: Plant) -> Verdict:
         if not required.column:
             untold.append(required.title)
             continue
+        if not plant.sheet_has_column(installed, *missing):
+            of_sheet.append(Found(values={"fields": required.title}, fields=missing, found="blank"))
+            continue
         whole = len(missing) == len(required.fields)
         reason = next((record.blanks[field] for field in missing if field in record.blanks), "")
         title = required.title if whole else ", ".join(title_of(field) for field in missing)
         blank.extend(missing)
         shown.append(f"{title} ({reason})" if reason else title)
     if not blank:
-        return Unchecked(*dict.fromkeys(untold)) if untold else None
-    return Found(values={"fields": ", ".join(shown)}, fields=tuple(blank), found="blank", wanted=", ".join(shown))
+        return of_sheet or (Unchecked(*dict.fromkeys(untold)) if untold else None)
+    filled = ", ".join(shown)
+    return [Found(values={"fields": filled}, fields=tuple(blank), found="blank", wanted=filled), *of_sheet]
 
 
 def _no_line_or_equipment_column(plant: Plant) -> Verdict:
@@ -437,7 +442,7 @@ def _unitless(plant: Plant) -> _Unitless:
     asked: dict[int, list[str]] = defaultdict(list)
     for place, field in lacking:
         asked[place].append(field)
-    filled: set[tuple[int, str]] = set()
+    filled: Counter[tuple[int, str]] = Counter()
     for record in (*_index_rows(plant), *types):
         if record.origin is None:
             continue
@@ -445,22 +450,34 @@ def _unitless(plant: Plant) -> _Unitless:
         for field in asked.get(place, ()):
             owner = record.own if field in _OWN_FIELDS and isinstance(record, Instrument) else record
             if getattr(owner, field, None) is not None:
-                filled.add((place, field))
+                filled[place, field] += 1
     whole = {key: rows for key, rows in lacking.items() if key not in filled and len(rows) > 1}
+    # Where a unit column is lacking, a few values with a unit of their own do not make the others slips.
+    sources = {(place, _unit_source(place, field, whole)) for place, field in whole if field in _UNIT_FROM}
+    whole |= {
+        key: rows
+        for key, rows in lacking.items()
+        if len(rows) > filled[key] and (key[0], _unit_source(*key, whole)) in sources
+    }
     return _Unitless(
         columns=frozenset(whole),
         found=(*_whole_columns(whole), *_catalogue_entries(types, whole.keys())),
     )
 
 
+def _unit_source(place: int, field: str, whole: Iterable[tuple[int, str]]) -> str:
+    """Return the field that a column takes its unit from, its own where it stands for itself."""
+    source = _UNIT_FROM.get(field, field)
+    if source == "settings_unit" and any(at == place and _UNIT_FROM.get(other) == "range_unit" for at, other in whole):
+        return "range_unit"
+    return source
+
+
 def _whole_columns(whole: Mapping[tuple[int, str], list[Record]]) -> list[Found]:
     """Report whole columns, together those that take their unit from one place: they lack it for one cause."""
-    ranges = {place for place, field in whole if _UNIT_FROM.get(field) == "range_unit"}
     groups: dict[str, list[tuple[int, str]]] = defaultdict(list)
     for place, field in whole:
-        source = _UNIT_FROM.get(field, field)
-        if source == "settings_unit" and place in ranges:
-            source = "range_unit"
+        source = _unit_source(place, field, whole)
         owner = "type." if isinstance(whole[place, field][0], DeviceType) else ""
         groups[f"{owner}{source}"].append((place, field))
     found: list[Found] = []

@@ -1023,9 +1023,12 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
         what = " and ".join(
             f"{'a switch' if function == 'S' else 'an alarm'} at {level}" for function, level in missing
         )
+        fields = tuple(_FIELD_OF[level] for _, level in missing)
+        if not plant.sheet_has_column(installed, *WITH_TRIP, "set_pressure"):
+            fields = WITH_TRIP
         return Found(
             values={"letters": installed.letters, "what": what},
-            fields=tuple(_FIELD_OF[level] for _, level in missing),
+            fields=fields,
             found="blank",
             wanted=what,
         )
