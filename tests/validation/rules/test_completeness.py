@@ -275,6 +275,11 @@ NO_VALUE = "list.xlsx: no value of {} has a unit, in its cell, its heading or a 
         ([{"trip": "10"}, {"trip": "12"}], [NO_VALUE.format("trip", 2)], {"trip": 2}),
         ([{"LRL": "0", "URL": "12"}, {"LRL": "0", "URL": "12"}], [NO_VALUE.format("LRL, URL", 4)],
          {"LRL": 2, "URL": 2}),
+        # Of a column beside it that takes its unit from there a few values have their own.
+        ([{"LRV": "0", "URV": "10", "H": "8"}, {"LRV": "0", "URV": "10", "H": "8"}, {"LRV": "0", "URV": "9",
+          "H": "7 barg"}], [NO_VALUE.format("LRV, URV, H", 8)], {"LRV": 3, "URV": 3, "H": 2}),
+        ([{"LRV": "0", "URV": "10", "H": "8"}, {"LRV": "0", "URV": "10", "H": "8 barg"}, {"H": "7 barg"}],
+         [NO_VALUE.format("LRV, URV", 4), f"PT-0: H 8 {WITHOUT}"], {"LRV": 1, "URV": 1}),
         # One row is no column, and one value with a unit makes the others slips.
         ([{"URV": "10"}], [f"PT-0: URV 10 {WITHOUT}"], {}),
         ([{"URV": "10"}, {"URV": "12"}, {"URV": "16 barg"}],
