@@ -56,6 +56,7 @@ _NO_BARRIER: Final = re.compile(
     r"integral|internal|is|ex ?i|none|ja|nein)\.?",
     re.IGNORECASE,
 )
+_SLOT: Final = re.compile(r"(?:slot|card|module|pos\.?)?\s?[0-9]{1,3}", re.IGNORECASE)
 _APART: Final = re.compile(r"[,;\n]")
 
 
@@ -154,6 +155,9 @@ def _pieces(field: str, text: str) -> tuple[str, ...]:
         return () if volts_in(text) is not None or _NO_SUPPLY.search(text) else (text,)
     if field == "barrier":
         return () if _NO_BARRIER.fullmatch(text.strip()) else (text,)
+    if field == "card":
+        # A bare number is the slot that the card sits in.
+        return () if _SLOT.fullmatch(text.strip()) else (text,)
     return (text,)
 
 

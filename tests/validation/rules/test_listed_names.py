@@ -68,6 +68,8 @@ def offered(row: Row, **sheets: Any) -> list[tuple[str, str, dict[str, str]]]:
         ({"power supply": "PS-42"}, "power supply PS-42 is not listed on Device types", [{"power supply": "PS-24"}]),
         # Blank, a placeholder, not live.
         ({"card": "TBA", "barrier": ""}, "", []),
+        ({"card": "12"}, "", []),  # the slot that it sits in
+        ({"card": "Slot 3"}, "", []),
         ({"card": "AI-61", "status": "deleted"}, "", []),
     ],
 )  # fmt: skip
