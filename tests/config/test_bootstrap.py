@@ -105,6 +105,8 @@ class Project:
             cwd=self.folder.parent,
             env=self.environment | environment,
             start_new_session=True,
+            # A shell starts what it puts in the background with interruptions ignored, and children inherit that.
+            preexec_fn=lambda: signal.signal(signal.SIGINT, signal.SIG_DFL),
         )
 
     def start(self, *argv: str, status: int = 0, **options: str) -> tuple[str, str]:
