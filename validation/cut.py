@@ -100,21 +100,25 @@ class Cuts:
     # ------------------------------------------------------------------------------------------- who is touched
 
     def _touched(self, finding: Finding, fix: Fix) -> Iterator[Installed]:
-        names = dict.fromkeys([finding.subject, *finding.subject.split(", "), fix.subject])
-        for name in names:
-            for each in self._by_name.get(bare_name(name), ()):
-                yield from self._beside(each)
-            if name in self._devices:
-                yield from self._beside(self._devices[name])
+        for each in self._meant(finding, fix):
+            yield from self._beside(each)
+            if "tag" in fix.change and each.tag is not None:
+                yield from self._by_number[_number_key(each.tag)]
+        for name in (finding.subject, fix.subject):
             yield from self._by_loop.get(loop_key(name), ())
+        if "tag" in fix.change:
+            yield from self._beside_tag(fix.change["tag"])
+        if "loop" in fix.change:
+            yield from self._by_loop.get(loop_key(fix.change["loop"]), ())
+
+    def _meant(self, finding: Finding, fix: Fix) -> Iterator[Installed]:
+        """Give the instruments that a finding and a fix name: by tag, by circuit, by an entry that they use."""
+        for name in dict.fromkeys([finding.subject, *finding.subject.split(", "), fix.subject]):
+            yield from self._by_name.get(bare_name(name), ())
+            if name in self._devices:
+                yield self._devices[name]
         if fix.sheet in _CATALOGUES or fix.sheet == "Cables":
-            for each in self._users(fix.sheet, fix.subject or finding.subject):
-                yield from self._beside(each)
-        for title, text in fix.change.items():
-            if title == "tag":
-                yield from self._beside_tag(text)
-            elif title == "loop":
-                yield from self._by_loop.get(loop_key(text), ())
+            yield from self._users(fix.sheet, fix.subject or finding.subject)
 
     def _beside(self, each: Installed) -> Iterator[Installed]:
         """Give an instrument and all that a rule may see together with it."""
@@ -122,8 +126,6 @@ class Cuts:
         yield from self._partners.get(id(each), ())
         if each.loop:
             yield from self._by_loop[loop_key(each.loop)]
-        if each.tag is not None:
-            yield from self._by_number[_number_key(each.tag)]
         for row in each.signals:
             if row.io_address:
                 yield from self._by_address[name_key(row.io_address)]

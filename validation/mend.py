@@ -165,13 +165,15 @@ def with_consequences(
                 fixes.append(fix)
                 continue
             changed.stand_in(plant)
-            if part.found is None:
-                part.found = frozenset(each.identity for each in audit(part.plant, rules=rules).findings)
-            made = {
-                each.rule
+            new = [
+                each
                 for each in audit(changed, rules=rules).findings
-                if each.outcome is Outcome.FINDING and each.identity not in part.found and each.identity not in found
-            }
+                if each.outcome is Outcome.FINDING and each.identity not in found
+            ]
+            if new and part.found is None:
+                # What is found only because the part is no whole plant is not the fix's doing.
+                part.found = frozenset(each.identity for each in audit(part.plant, rules=rules).findings)
+            made = {each.rule for each in new if part.found is not None and each.identity not in part.found}
             fixes.append(replace(fix, makes=tuple(sorted(made))))
         done.append(replace(finding, fixes=tuple(fixes)) if fixes else finding)
     result.findings = done

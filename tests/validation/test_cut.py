@@ -66,8 +66,9 @@ def names(subject: str, fix: Row) -> set[str]:
         # The loop, however its number is written.
         ("LV-2", {"change": {"kind": "on/off valve"}}, {"LT-2", "LV-2"}),
         ("L-2", {"change": {"service": "y"}, "subject": "LT-2"}, {"LT-2", "LV-2", "PT-1A"}),
-        # Near twins, now and under the tag that it would have.
-        ("FT-3", {"change": {"URV": "1 m3/h"}}, {"FT-3", "FT-03"}),
+        # Near twins, now and under the tag that it would have; only a new tag can make or part them.
+        ("FT-3", {"change": {"tag": "FT-99"}}, {"FT-3", "FT-03"}),
+        ("FT-3", {"change": {"URV": "1 m3/h"}}, {"FT-3"}),
         ("TT-9", {"change": {"tag": "LT-2"}}, {"TT-9", "LT-2", "LV-2"}),
         ("TT-9", {"change": {"tag": "FT-003"}}, {"TT-9", "FT-3", "FT-03"}),
         ("TT-9", {"change": {"loop": "L-2"}}, {"TT-9", "LT-2", "LV-2"}),
