@@ -560,11 +560,19 @@ def number_without_unit(installed: Installed, plant: Plant) -> Verdict:
     for field in _in_order(record.unitless):
         origin = record.elsewhere.get(field) or record.origin
         whole = origin is not None and (id(origin.place), field) in unitless.columns
-        (in_columns if whole else fields).append(field)
+        (in_columns if whole or _unit_is_unread(field, record) else fields).append(field)
     if not fields:
         return Unchecked(*(title_of(field) for field in in_columns))
     values = ", ".join(f"{title_of(field)} {record.unitless[field]}" for field in fields)
     return Found(values={"values": values}, fields=tuple(fields), found=values, wanted="a unit")
+
+
+def _unit_is_unread(field: str, record: Instrument) -> bool:
+    """Whether a number takes its unit from a range that cannot be read, which is found as such."""
+    return _UNIT_FROM.get(field) in ("range_unit", "settings_unit") and bool(_RANGE_CELLS & record.unread)
+
+
+_RANGE_CELLS: Final = frozenset({"lrv", "urv", "range_unit", "settings_unit"})
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -244,6 +244,20 @@ def test_a_number_that_needs_a_unit_has_one(row: Row, expected: str) -> None:
     assert tell("DAT05", {"tag": "PT-1", **row}, GOOD) == ([f"PT-1: {expected} {WITHOUT}"] if expected else [])
 
 
+@pytest.mark.parametrize(
+    ("unread", "read"),
+    [
+        ({"range": "0-50 Hazen"}, {"range": "0-50 NTU"}),
+        ({"LRV": "0", "URV": "50", "range unit": "Hazen"}, {"LRV": "0", "URV": "50", "range unit": "NTU"}),
+    ],
+)
+def test_what_takes_its_unit_from_an_unread_range_is_no_finding_of_its_own(unread: Row, read: Row) -> None:
+    values = {"H": "40", "operating value normal": "20"}
+    row, good = {"tag": "AIT-1", **values, **unread}, {"tag": "AIT-2", **values, **read}
+    assert tell("DAT05", row, good) == []
+    assert len(tell("DAT09", row, good)) == 1
+
+
 def test_equipment_is_not_asked_for_units() -> None:
     assert tell("DAT05", {"tag": "P-1", "URV": "10", "I/O type": "DI"}, GOOD) == []
 
