@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import replace
+from dataclasses import fields, replace
 from functools import lru_cache
 from itertools import zip_longest
 from typing import TYPE_CHECKING, Final, NamedTuple
@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING, Final, NamedTuple
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import variable_of
-from instruments.record import Instrument
+from instruments.record import Instrument, Record
 from instruments.signal_words import io_types, signal_classes
 from instruments.tag import natural_key
 from loops.circuit import (
@@ -140,7 +140,8 @@ class _LoopRows:
         self.by_number: dict[str, list[LoopRow]] = defaultdict(list)
         self.count: dict[str, int] = defaultdict(int)
         self._used: set[int] = set()
-        for row in plant.loop_rows:
+        # By their contents, so that the order of rows decides nothing.
+        for row in sorted(plant.loop_rows, key=_contents):
             if row.number:
                 self.count[loop_key(row.number)] += 1
             named = plant.by_tag(row.circuit) if row.circuit else ()
@@ -196,6 +197,15 @@ class _LoopRows:
         row = next((row for row in fitting if id(row) not in self._used), fitting[0])
         self._used.add(id(row))
         return row
+
+
+_ROW_FIELDS: Final = tuple(
+    each.name for each in fields(LoopRow) if each.name not in {own.name for own in fields(Record)}
+)
+
+
+def _contents(row: LoopRow) -> tuple[str, ...]:
+    return tuple(str(getattr(row, name)) for name in _ROW_FIELDS)
 
 
 def _is_soft(device: Installed) -> bool:

@@ -1,5 +1,6 @@
 """From rows to circuits: one signal is one circuit, however many rows speak of it."""
 
+from random import Random
 from typing import Any
 
 import pytest
@@ -218,6 +219,32 @@ def test_rows_with_one_number_are_taken_in_the_order_of_the_tags() -> None:
     plant = plant_of(ai("PT-1A", "A1"), ai("PT-1B", "A2"), loops=loops)
     lengths = [circuit.cable_length_m.number for circuit in plant.circuits if circuit.cable_length_m]
     assert lengths == [10.0, 20.0]
+
+
+def test_no_order_of_rows_decides_which_row_is_whose() -> None:
+    rows = [ai("PT-1A", "A1"), ai("PT-1B", "A2"), io("FV-2", "AO", "A3"), ai("FT-2", "A4"), "XV-3"]
+    loops = [
+        {"number": "P-1", "kind": "AI", "cable length": 20},
+        {"number": "P-1", "kind": "AI", "cable length": 10},
+        {"number": "F-2", "kind": "AO", "cable length": 30},
+        {"number": "F-2", "kind": "AI", "cable length": 40},
+        {"number": "X-3", "circuit or tag": "XV-3", "kind": "DO", "cable length": 50},
+        {"number": "X-3", "circuit or tag": "XV-3", "kind": "DI", "cable length": 60},
+    ]
+
+    def told(rows: list[str | Row], loops: list[Row]) -> list[tuple[str, str | None, float | None]]:
+        return [
+            (each.name, each.kind, each.cable_length_m.number if each.cable_length_m else None)
+            for each in plant_of(*rows, loops=loops).circuits
+        ]
+
+    expected = told(rows, loops)
+    assert len({length for _, _, length in expected}) == 6
+    for seed in range(6):
+        shuffled, others = rows[:], loops[:]
+        Random(seed).shuffle(shuffled)
+        Random(seed).shuffle(others)
+        assert told(shuffled, others) == expected
 
 
 def test_a_row_of_another_kind_lends_its_figures_to_no_other_signal() -> None:
