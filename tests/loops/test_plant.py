@@ -127,3 +127,102 @@ def test_two_sheets_complete_an_entry_where_they_do_not_disagree(texts: tuple[st
 def test_two_entries_of_one_sheet_are_two() -> None:
     plant = catalogue("Code|LRL|URL|Unit|Ui V\nP1|0|10|bar|\nP1||||30\nP2||||30\nP3||||30")
     assert (sorted(plant.types), plant.types_twice) == (["p2", "p3"], {"p1"})
+
+
+# ---------------------------------------------------------------------------------------- instruments and their rows
+
+
+@pytest.mark.parametrize(
+    ("rows", "names"),
+    [
+        # Rows that agree are one; blanks agree with everything.
+        ([{"service": "Feed", "URV": "10 barg"}, {"service": "Feed", "line": "L1"}], ["PT-1"]),
+        ([{"URV": "10 barg"}, {"URV": "1000 kPag"}], ["PT-1"]),
+        # Rows that differ only in signal and wiring are one instrument; the service may differ where the address does.
+        ([{"I/O address": "A1", "signal": "4-20 mA"}, {"I/O address": "D1", "signal": "pulse"}], ["PT-1"]),
+        ([{"I/O address": "A1", "service": "Flow"}, {"I/O address": "D1", "service": "Total"}], ["PT-1"]),
+        # Rows that disagree are two, told apart by number.
+        ([{"URV": "10 barg"}, {"URV": "16 barg"}], ["PT-1", "PT-1 (2)"]),
+        ([{"service": "Feed"}, {"service": "Drain"}], ["PT-1", "PT-1 (2)"]),
+        ([{"I/O address": "A1", "URV": "1 bar"}, {"I/O address": "D1", "URV": "2 bar"}], ["PT-1", "PT-1 (2)"]),
+        # One that is not live is none of them.
+        ([{"URV": "10 barg"}, {"URV": "16 barg", "status": "spare"}], ["PT-1", "PT-1 (spare)"]),
+    ],
+)
+def test_rows_of_one_tag(rows: list[dict[str, str]], names: list[str]) -> None:
+    listed_rows = [{"tag": "PT-1", "P&ID": "D-1", **row} for row in rows]
+    for ordered in (listed_rows, listed_rows[::-1]):
+        assert [each.name for each in example_plant(ordered).instruments] == names
+
+
+@pytest.mark.parametrize(
+    ("row", "loop", "loop_from"),
+    [
+        ({"tag": "PT-101"}, "P-101", "tag"),
+        ({"tag": "10-PT-101A"}, "10-P-101", "tag"),
+        ({"tag": "PT-101", "loop": "77"}, "77", "column"),
+        # A pump, a plant code without a letter, no tag at all.
+        ({"tag": "P-101", "I/O type": "DI"}, None, ""),
+        ({"tag": "P-101", "I/O type": "DI", "loop": "M-101"}, "M-101", "column"),
+        ({"tag": "MOV-101"}, None, ""),
+        ({"device type": "T1", "URV": "1 bar"}, None, ""),
+    ],
+)
+def test_the_loop_of_an_instrument(row: dict[str, str], loop: str | None, loop_from: str) -> None:
+    rows = [{"service": "x", **row}, {"tag": "TT-9", "service": "y", "loop": "T-9", "I/O type": "AI"}]
+    found = next(each for each in example_plant(rows).instruments if each.name != "TT-9")
+    assert (found.loop, found.loop_from) == (loop, loop_from)
+
+
+def test_an_instrument_is_found_however_its_tag_is_written() -> None:
+    plant = example_plant([{"tag": tag, "service": tag} for tag in ("PT-101", "PT-102", "FT-101A")])
+    assert [each.name for text in ("PT 101", "pt101", "PT-101") for each in plant.by_tag(text)] == ["PT-101"] * 3
+    assert plant.by_tag("FT-101") == plant.by_tag("PT-0101") == plant.by_tag("feed") == ()
+
+
+@pytest.mark.parametrize(
+    ("name", "found"),
+    [
+        ("AI8", "AI8"), ("ai 8", "AI8"), ("PB-1", "ISO"), ("pb1", "ISO"), ("PB-2", None), ("ZZ", None),
+        ("TWICE", None), ("", None), (None, None),
+    ],
+)  # fmt: skip
+def test_a_device_type_is_named_by_its_code_or_by_a_tag_that_has_it(name: str | None, found: str | None) -> None:
+    rows = [{"tag": "PB-1", "device type": "ISO", "kind": "isolator"}, {"tag": "PB-2", "kind": "isolator"}]
+    types = [
+        {"code": "AI8", "kind": "card"},
+        {"code": "ISO", "kind": "isolator"},
+        {"code": "TWICE", "kind": "card", "input ohm": 250},
+        {"code": "TWICE", "kind": "card", "input ohm": 100},
+    ]
+    entry = example_plant(rows, types=types).named_type(name)
+    assert (entry.code if entry else None) == found
+
+
+@pytest.mark.parametrize(
+    ("row", "limits", "body"),
+    [
+        ({"device type": "G"}, "10 barg", "gauge"),
+        # The row's own limits before the catalogue's; the rest of the entry stays.
+        ({"device type": "G", "URL": "16 barg"}, "16 barg", "gauge"),
+        ({"URL": "16 bara"}, "16 bara", "absolute"),
+        ({"body": "differential", "URL": "250 mbar"}, "250 mbar", "differential"),
+        ({"device type": "A"}, "10 bara", "absolute"),
+        ({}, None, None),
+    ],
+)
+def test_the_limits_that_hold(row: dict[str, str], limits: str | None, body: str | None) -> None:
+    types = [
+        {"code": "G", "kind": "transmitter", "body": "gauge", "URL": "10 barg"},
+        {"code": "A", "kind": "transmitter", "body": "", "URL": "10 bara"},
+    ]
+    (found,) = example_plant([{"tag": "PT-1", "service": "x", **row}], types=types).instruments
+    assert (str(found.type.url) if found.type and found.type.url else None, found.body) == (limits, body)
+
+
+def test_a_part_takes_what_is_wrong_with_whole_columns_from_the_whole() -> None:
+    whole, part = (example_plant([{"tag": "PT-1", "service": "x"}]) for _ in range(2))
+    assert whole.whole_finding("TAG90", lambda plant: "wrong") == "wrong"
+    part.stand_in(whole)
+    assert part.whole_finding("TAG90", lambda plant: "asked again") == "wrong"
+    assert part.whole_finding("TAG91", lambda plant: "asked") == "asked"
