@@ -18,7 +18,7 @@ POSITIONS = {
     "open": ("fo", "fail open", "fails open", "open", "opens", "ato fo", "auf", "öffnet", "ouvert", "ouverte", "fto"),
     "closed": (
         "fc", "fail closed", "fail close", "fails closed", "fail shut", "closed", "close", "closes", "shut", "zu",
-        "schließt", "schliesst", "ferme", "fermee", "ftc",
+        "schließt", "schliesst", "ferme", "fermee", "ftc", "shuts", "fails shut",
     ),
     "in place": (
         "fip", "fl", "flock", "fail locked", "fail last", "fail in place", "fail as is", "fai", "in place",
@@ -526,7 +526,7 @@ CERTIFICATE = _text(
 SIGNAL = _text(
     "signal", "signal", "signal", "signal type", "sig", "sig type", "output", "output signal", "signalart", "ausgang",
     "signal range", "control signal", "electrical", "electrical signal", "elec signal", "signal level",
-    "field signal",
+    "field signal", "transmission",
 )
 WIRES = Column(
     field="wires",
@@ -1126,6 +1126,7 @@ INSTRUMENTS = SheetKind(
         _text(
             "place", "place", "place", "location text", "grid", "elevation", "deck", "room", "building",
             "aufstellort", "physical location", "building / room", "location",
+            "position", "where", "site location", "whereabouts",
         ),
         _text("hold", "hold", "hold", "on hold", "hold no"),
         _text("revision", "revision", "rev", "revision", "row rev", "rev no", "index"),

@@ -19,7 +19,7 @@ from instruments.plant_codes import PlantCode, codes_with
 from instruments.plant_data import PlantData
 from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument, Record
-from instruments.signal_words import io_types
+from instruments.signal_words import io_types, signal_classes
 from instruments.tag import (
     TagProfile,
     TagReading,
@@ -946,12 +946,16 @@ def _give_kinds(found: Sequence[_Draft], codes: Mapping[str, PlantCode]) -> None
 _DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
 _VALVES = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
 _FOR_SENSORS = frozenset({"AI", "RTD", "TC"})
+_OF_STATES = frozenset({"contact", "volts", "digital"})
 
 
-def _may_bring_a_measurement(signals: Iterable[Instrument]) -> bool:
-    """Whether one of the I/O types may be a sensor's: XA on an output sounds, XA on a digital input reports."""
+def _may_bring_a_measurement(signals: Sequence[Instrument]) -> bool:
+    """Whether one of the signals may be a sensor's: XA on an output sounds, and on a digital input it reports."""
     kinds = {kind for row in signals for kind in io_types(row.io_type)}
-    return not kinds or not kinds.isdisjoint(_FOR_SENSORS)
+    if kinds:
+        return not kinds.isdisjoint(_FOR_SENSORS)
+    classes = {each for row in signals for each in signal_classes(row.signal)}
+    return not classes or not classes <= _OF_STATES
 
 
 _MEASURING = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.ELEMENT, Kind.SWITCH})

@@ -20,6 +20,8 @@ from validation.example import example_plant, outcomes, said
         ({"tag": "XA-2", "I/O type": "DI"}, False),
         ({"tag": "FIC-4", "I/O type": "AO"}, False),
         ({"tag": "FIC-5", "I/O type": "AI/AO"}, True),
+        ({"tag": "LA 34", "signal": "240 V contact"}, False),
+        ({"tag": "PI 29", "signal": "3-15 lb."}, True),
         # nothing of its own
         ({"tag": "PI 28"}, False),
         ({"tag": "FIC-6", "I/O type": "AI", "location": "DCS"}, False),
