@@ -251,7 +251,10 @@ def _without_lacking_columns(
     titles: dict[str, None] = {}
     for found in _each(verdict):
         names = found.fields
-        if not names or not all(_is_blank(name, subject) for name in names) or plant.sheet_has_column(subject, *names):
+        # What another sheet says of the instrument is found there, whatever columns its own sheet has.
+        elsewhere = any(fix.sheet != "Instruments" for fix in found.fixes)
+        blank = bool(names) and not elsewhere and all(_is_blank(name, subject) for name in names)
+        if not blank or plant.sheet_has_column(subject, *names):
             kept.append(found)
             continue
         origin = subject.record.origin
