@@ -31,6 +31,7 @@ from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import Audit, audit
 from validation.finding import Finding, Outcome
+from validation.mend import with_consequences
 
 FOLDER = Path(__file__).parent.parent / "fixtures" / "marrowbeck"
 DEMO = FOLDER / "instrument-list.xlsx"
@@ -351,13 +352,40 @@ def reviews() -> list[str]:
     return sorted(f"review {line.split(':')[0]}" for line in lines if line and not line.startswith("#"))
 
 
+def demo_audit() -> Audit:
+    """Audit the committed demo workbook; the fixes say what they would make."""
+    result = audit_of(DEMO)
+    with_consequences(result)
+    return result
+
+
 def findings_text(result: Audit) -> str:
-    """Return the findings and reviews of an audit as text, a line each, in the order of the report."""
-    lines = []
-    for each in result.findings:
-        line = _found_line(each, result)
-        lines.append(line if each.outcome is Outcome.REVIEW else f"{each.severity.value} {line}")
-    return "".join(f"{line}\n" for line in lines)
+    """Return all that is said of each finding and review, in the order of the report, with the counts above."""
+    counts = ", ".join(f"{count} {word}" for word, count in result.counts().items())
+    return "\n".join([f"# {counts}\n", *(_told(each, result) for each in result.findings)])
+
+
+def _told(each: Finding, result: Audit) -> str:
+    line = _found_line(each, result)
+    lines = [line if each.outcome is Outcome.REVIEW else f"{each.severity.value} {line}", each.message]
+    lines += [
+        f"{word}: {text}"
+        for word, text in (
+            ("found", each.found),
+            ("wanted", each.wanted),
+            ("off by", each.off_by),
+            ("working", each.working),
+            ("assumed", "; ".join(each.assumed)),
+        )
+        if text
+    ]
+    for fix in each.fixes:
+        change = ", ".join(f"{title} = {text}" for title, text in fix.change.items())
+        where = f" on {fix.sheet} {fix.subject}".rstrip() if fix.subject else ""
+        makes = f", which makes {', '.join(fix.makes)}" if fix.makes else ""
+        lines.append(f"fix: {fix.text}" + (f" ({change}{where}{makes})" if change else ""))
+    lines.append(f"cells: {', '.join(f'{cell.sheet} {cell.address}' for cell in each.cells)}")
+    return "\n    ".join(lines) + "\n"
 
 
 def shuffled(sheets: Sheets, seed: int) -> Sheets:
@@ -552,4 +580,4 @@ if __name__ == "__main__":
     write_demo(DEMO)
     if _parts(before) == _parts(DEMO.read_bytes()):
         DEMO.write_bytes(before)
-    FINDINGS.write_text(findings_text(audit_of(DEMO)), encoding="utf-8")
+    FINDINGS.write_text(findings_text(demo_audit()), encoding="utf-8")

@@ -8,6 +8,7 @@ from typing import Any, Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
+from instruments.marking import read_marking
 from instruments.measurement import Measurement, at, from_to, measurement_of
 from instruments.record import DeviceType, Record
 from instruments.tag import natural_key
@@ -108,7 +109,8 @@ def type_fixes(code: str, measurement: Measurement, plant: Plant) -> tuple[Fix, 
     """Return the device types of the catalogue that pass rule `code`, and fail no other rule about bodies.
 
     They are of the same kind, body, dimension and signal. Where some have the marking that the present
-    type has, only those; the narrowest limits come first.
+    type has, only those, else those marked by the same system for the same atmosphere; the narrowest limits
+    come first.
     """
     installed = measurement.installed
     if not installed.record.device_type or not plant.types:
@@ -190,7 +192,19 @@ def _candidates(measurement: Measurement, plant: Plant) -> Iterator[_Candidate]:
         if unknown is not None:
             passing.append(_Candidate(each, each.code, unknown))
     marked_alike = [each for each in passing if each.type.ex_marking == now.ex_marking]
-    yield from sorted(marked_alike or passing, key=lambda each: (_size(each.type), natural_key(each.code)))
+    chosen = marked_alike or [each for each in passing if _is_marked_for_the_same(each.type, now)]
+    yield from sorted(chosen, key=lambda each: (_size(each.type), natural_key(each.code)))
+
+
+def _is_marked_for_the_same(other: DeviceType, now: DeviceType) -> bool:
+    """Whether another type is marked by the system of the present one, for its atmosphere; unmarked ones are alike."""
+    marked, wanted = _marked_for(other), _marked_for(now)
+    return marked == wanted or bool(marked & wanted)
+
+
+def _marked_for(device: DeviceType) -> frozenset[tuple[str, str | None]]:
+    marking = read_marking(device.ex_marking) if device.ex_marking else None
+    return frozenset((entry.scheme, entry.side) for entry in marking.entries) if marking is not None else frozenset()
 
 
 # Kinds whose word says all that they do; of the others the dimension of their limits tells a level from a flow.
