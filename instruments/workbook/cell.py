@@ -345,9 +345,12 @@ def one_of_several(cell: Value, place: int, count: int) -> Value:
 
 def joined_cell(cells: Sequence[Value], joints: Sequence[str]) -> str | None:
     """Return the text that stands in several cells of a row, each with what stands before it: PT, -1001, A."""
-    return (
-        "".join(f"{joint}{_plain(cell)}" for joint, cell in zip(joints, cells, strict=True) if cell is not None) or None
-    )
+    # A part that is left out takes the joint behind it along.
+    found = ""
+    for joint, cell in zip(joints, cells, strict=True):
+        if cell is not None:
+            found += f"{joint if found else ''}{_plain(cell)}"
+    return found or None
 
 
 _CERTIFICATE_NUMBER: Final = re.compile(

@@ -231,6 +231,11 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
             if bottom > top and any(map(_is_figure, sheet.rows[bottom])):
                 continue
             scored[top, bottom] = _name_score(sheet, finders, top, bottom)
+            below = hits.get(bottom, 0)
+            if bottom == top + 1 and hits.get(top, 0) > 1 and below > 1:
+                # Two rows of headings are one heading: the lower one is no data, though it adds no field.
+                if below * 2 >= sum(cell is not None for cell in sheet.rows[bottom]):
+                    scored[top, bottom] += 0.1 * below
     # Of equals the shorter, then the higher: a repeated heading further down is no better.
     order = sorted(scored, key=lambda block: (-scored[block], block[1] - block[0], block[0]))
     return [block for block in order if scored[block] > 0]
@@ -422,6 +427,7 @@ def _assign(
     used: set[int] = set()
     notes: list[str] = []
     _match_pairs(kind, levels, content, columns, used)
+    _match_parted_tag(kind, levels, content, columns, used, notes)
     taken.update(columns)
     for _, index, candidate, _, several in offers:
         column = candidate.column
@@ -546,7 +552,7 @@ def _match_pairs(
     for index, heading in levels.items():
         text = BRACKET.sub(" ", heading.joined)
         words = heading_words(text)
-        if _match_ends(known, index, heading, content, columns):
+        if _match_ends(known, index, heading, content, columns) or _match_levels(known, index, heading, columns):
             used.add(index)
             continue
         if not (_PRESSURE_WORDS.intersection(words) and _TEMPERATURE_WORDS.intersection(words)):
@@ -557,7 +563,8 @@ def _match_pairs(
         if content(index).part(_TWO_VALUES) < 0.5:
             continue
         bracket = BRACKET.search(heading.joined)
-        units = [piece.strip() for piece in re.split(r"[/|,;]", bracket[1])] if bracket else []
+        tail = bracket[1] if bracket else heading.joined.split()[-1]
+        units = [piece.strip() for piece in re.split(r"[/|,;]", tail)]
         first = next(word for word in words if word in _PRESSURE_WORDS or word in _TEMPERATURE_WORDS)
         for place, name in enumerate(names if first in _PRESSURE_WORDS else names[::-1]):
             stated = unit_for(known[name], units[place]) if len(units) == 2 else None
@@ -571,6 +578,34 @@ def _match_pairs(
                 piece=(place, 2),
             )
         used.add(index)
+
+
+_LEVEL: Final = r"(?:HH|LL|HIHI|LOLO|HI-HI|LO-LO|HI|LO|H|L)"
+_LEVELS_LISTED: Final = re.compile(rf"(?<![A-Za-z]){_LEVEL}(?:\s?[/|,;]\s?{_LEVEL}){{1,3}}(?![A-Za-z])")
+
+
+def _match_levels(known: Mapping[str, Column], index: int, heading: Levels, columns: dict[str, ColumnMatch]) -> bool:
+    """Find a column whose heading says in which order its cells hold the alarms: LL / L / H / HH."""
+    listed = _LEVELS_LISTED.search(heading.joined.upper())
+    if listed is None:
+        return False
+    short = re.findall(_LEVEL, listed[0])
+    names = [f"setting_{re.sub('[^hl]', '', level.lower())}" for level in short]
+    if len(set(names)) < len(names) or any(name not in known or name in columns for name in names):
+        return False
+    bracket = next((each[1] for each in BRACKET.finditer(heading.joined) if unit_for(known[names[0]], each[1])), "")
+    stated = unit_for(known[names[0]], bracket) if bracket else None
+    for place, name in enumerate(names):
+        columns[name] = ColumnMatch(
+            column=known[name],
+            index=index,
+            heading=heading.joined,
+            likelihood=0.95,
+            unit=stated if isinstance(stated, Unit) else None,
+            unit_text=bracket,
+            piece=(place, len(names)),
+        )
+    return True
 
 
 _END_WORDS: Final = re.compile(r"\b(min|nor|max)[a-z]*\b\.?", re.IGNORECASE)
@@ -689,6 +724,79 @@ def _add_tag_without_heading(
         columns["tag"] = ColumnMatch(column=column, index=best[1], heading=heading, how="contents", likelihood=0.6)
         used.add(best[1])
         notes.append(f"column '{heading}' is taken for the tag: its cells look like tags")
+
+
+_TAGS_LETTERS: Final = frozenset(
+    (
+        "function",
+        "func",
+        "fn",
+        "letter",
+        "tag",
+        "code",
+        "instrument",
+        "isa",
+        "type",
+        "prefix",
+        "symbol",
+        "variable",
+        "kz",
+    )
+)
+_TAGS_NUMBER: Final = frozenset(("tag", "loop", "number", "no", "nr", "num", "sequence", "seq", "serial", "#", "lfd"))
+_TAGS_SUFFIX: Final = frozenset(("suffix", "sfx", "suf", "suff", "tag", "ext"))
+_AREA_ONLY: Final = re.compile(r"[0-9]{1,4}[A-Z]?")
+
+
+def _match_parted_tag(
+    kind: SheetKind,
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+    notes: list[str],
+) -> None:
+    """Join a tag that stands in several columns, where a heading calls the number alone the tag: Unit, Function, No."""
+    if ("tag",) not in kind.key or "tag" in columns:
+        return
+    column = kind.column("tag")
+    words = {index: set(heading_words(heading.joined)) for index, heading in levels.items()}
+    for index in sorted(levels):
+        number = index + 1
+        if number not in levels or not words[index] & _TAGS_LETTERS or not words[number] & _TAGS_NUMBER:
+            continue
+        letters, numbers = content(index), content(number)
+        if letters.count < 2 or letters.part(_LETTERS_ONLY) < 0.9 or letters.part(IO_WORD) > 0.5:
+            continue
+        if numbers.count < 2 or numbers.part(_NUMBER_ONLY) < 0.9:
+            continue
+        if any(
+            "tag" in each and content(at).fit(column, frozenset()) > 0.8 for at, each in words.items() if at != index
+        ):
+            return
+        parts = [index, number]
+        if number + 1 in levels and words[number + 1] & _TAGS_SUFFIX:
+            suffix = content(number + 1)
+            if not suffix.count or suffix.part(_SUFFIX_ONLY) > 0.9:
+                parts.append(number + 1)
+        # The unit is part of the tag where the heading over all of them says so.
+        if index - 1 in levels and words[index - 1] & {"tag", "prefix"}:
+            area = content(index - 1)
+            if area.count and area.part(_AREA_ONLY) > 0.9:
+                parts.insert(0, index - 1)
+        joints = ["" if at == number + 1 else "-" for at in parts]
+        heading = " ".join(levels[at].joined for at in parts)
+        columns["tag"] = ColumnMatch(
+            column=column,
+            index=parts[0],
+            heading=heading,
+            how="contents",
+            likelihood=0.95,
+            parts=tuple(zip(parts[1:], joints[1:], strict=True)),
+        )
+        used.update(parts)
+        notes.append(f"columns '{heading}' are joined to the tag")
+        return
 
 
 _LETTERS_ONLY: Final = re.compile(r"[A-Z]{1,6}")

@@ -205,7 +205,7 @@ TWO_ROWS = [
     ),
     (
         "Messstelle|Grenzwerte||Schaltpunkt\nTag|L|H|Set point\nPSL-1|1|5|4 bar",
-        {"tag": 0, "setting_l": 1, "setting_h": 2, "set_pressure": 3},
+        {"tag": 0, "setting_l": 1, "setting_h": 2, "trip": 3},
     ),
     # bounds that nothing above them explains are nobody's
     ("Tag|Vibration limit||Range|\n|Min|Max|Min|Max\nPT-1|3|4|0|10", {"tag": 0, "lrv": 3, "urv": 4}),
@@ -358,6 +358,52 @@ def test_a_catalogue_and_a_cable_list_in_two_languages() -> None:
 def test_a_tag_in_columns_of_its_own_is_joined() -> None:
     found = matched("Function|Loop No.|Suffix|Service\nPT|1001|A|Feed\nTT|1002||Feed\nFT|1003|B|Feed")
     assert (found.columns["tag"].index, found.columns["tag"].parts) == (0, ((1, "-"), (2, "")))
+
+
+@pytest.mark.parametrize(
+    ("text", "parts"),
+    [
+        # Unit, function, number and suffix under one heading
+        (
+            "Tag||||Service\nUnit|Function|No.|Sfx|\n31|PIT|1001||Feed\n31|TIT|1002|A|Feed\n32|FT|1003||Feed",
+            (0, ((1, "-"), (2, "-"), (3, ""))),
+        ),
+        # a unit that is not said to be part of the tag
+        ("Unit|Func.|Tag No.|Service\n31|PIT|1001|Feed\n31|TIT|1002|Feed\n32|FT|1003|Feed", (1, ((2, "-"),))),
+        # a whole tag beside them is the tag; I/O types are no letters of one
+        ("Tag|Function|No.|Service\nPIT-1|PIT|1|Feed\nTIT-2|TIT|2|Feed\nFT-3|FT|3|Feed", (0, ())),
+        ("Tag|Type|No.|Service\nPIT-1|AI|1|Feed\nTIT-2|AI|2|Feed\nFT-3|DO|3|Feed", (0, ())),
+    ],
+)
+def test_a_tag_may_be_parted(text: str, parts: tuple[int, tuple[tuple[int, str], ...]]) -> None:
+    found = matched(text).columns["tag"]
+    assert (found.index, found.parts) == parts
+
+
+@pytest.mark.parametrize(
+    ("heading", "names"),
+    [
+        ("Alarms (LL / L / H / HH)", ("ll", "l", "h", "hh")),
+        ("Alarm L/H (barg)", ("l", "h")),
+        ("HH/H/L/LL", ("hh", "h", "l", "ll")),
+        ("Set points Lo / Hi", ("l", "h")),
+    ],
+)
+def test_a_heading_says_in_which_order_its_cells_hold_the_alarms(heading: str, names: tuple[str, ...]) -> None:
+    cell = " / ".join("12345"[: len(names)])
+    found = matched(f"Tag|Service|{heading}\nPT-1|Feed|{cell}\nPT-2|Feed|{cell}").columns
+    pieces = {name: each.piece for name, each in found.items() if each.piece}
+    assert pieces == {f"setting_{name}": (place, len(names)) for place, name in enumerate(names)}
+    unit = "barg" if "barg" in heading else ""
+    assert {each.unit_text for each in found.values() if each.piece} == {unit}
+
+
+def test_units_of_a_pair_may_stand_at_the_end() -> None:
+    found = matched("Tag|Design P/T barg/°C\nPT-1|20 / 90\nPT-2|20/90").columns
+    assert {name: str(each.unit) for name, each in found.items() if each.piece} == {
+        "design_pressure": "barg",
+        "design_temperature": "°C",
+    }
 
 
 def test_pressure_and_temperature_in_one_column() -> None:

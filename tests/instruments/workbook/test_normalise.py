@@ -932,3 +932,20 @@ def test_a_title_says_the_io_type_where_no_column_does(name: str, text: str, wan
     assert [record.io_type for record in found.records] == wanted
     said_so = "I/O type read from the name of the sheet or section" in found.assumptions
     assert said_so is (any(wanted) and "I/O Type" not in text)
+
+
+def test_a_parted_tag_leaves_out_what_a_row_leaves_out() -> None:
+    text = "Tag|||Service\nUnit|Function|No.|\n31|PIT|1001|Feed\n|TIT|1002|Feed\n32|FT|1003|Feed"
+    assert [record.tag for record in read(text).records] == ["31-PIT-1001", "TIT-1002", "32-FT-1003"]
+
+
+def test_alarms_in_one_cell_are_read_by_their_place() -> None:
+    text = (
+        "Tag|Range|Alarms LL / L / H / HH\nPT-1|0-10 barg| / 2 / 8 / 9\nPT-2|0-10 barg|- / - / 8 / -\nPT-3|0-10 barg|"
+    )
+    shown = all_said(read(text), "setting_ll", "setting_l", "setting_h", "setting_hh")
+    assert shown == [
+        {"setting_l": "2 barg", "setting_h": "8 barg", "setting_hh": "9 barg"},
+        {"setting_h": "8 barg"},
+        {},
+    ]
