@@ -252,7 +252,7 @@ def _without_lacking_columns(
     for found in _each(verdict):
         names = found.fields
         # What another sheet says of the instrument is found there, whatever columns its own sheet has.
-        elsewhere = any(fix.sheet != "Instruments" for fix in found.fixes)
+        elsewhere = any(fix.sheet != "Instruments" for fix in found.fixes) or _stands_elsewhere(found, subject)
         blank = bool(names) and not elsewhere and all(_is_blank(name, subject) for name in names)
         if not blank or plant.sheet_has_column(subject, *names):
             kept.append(found)
@@ -264,6 +264,12 @@ def _without_lacking_columns(
     if not titles:
         return verdict
     return kept or Unchecked(*titles)
+
+
+def _stands_elsewhere(found: Found, subject: Installed) -> bool:
+    origin = subject.record.origin
+    here = (origin.place.file, origin.place.sheet) if origin is not None else None
+    return any((cell.file, cell.sheet) != here for cell in found.cells)
 
 
 def _is_blank(name: str, subject: Installed) -> bool:

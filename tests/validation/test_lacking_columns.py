@@ -6,6 +6,7 @@ from instruments.workbook.lists import records_of_sheets
 from loops.plant import assemble
 from tests.instruments.workbook.sheets import KINDS, sheet
 from validation.audit import audit, reaudit
+from validation.example import said
 
 VALVES = "Tag|Service|P&ID|Line|Fail pos.\nFV-1|Feed|D-1|L-1|FC\nFV-2|Feed|D-1|L-1|"
 MORE_VALVES = "Tag|Service|P&ID|Line|Maker\nFV-3|Feed|D-1|L-2|X\nFV-4|Feed|D-1|L-2|X"
@@ -64,6 +65,15 @@ def test_what_a_sheet_lacks_is_told_once(
 ) -> None:
     lines, counts = told(code, *texts)
     assert (sorted(lines), counts) == (sorted(found), outcomes)
+
+
+def test_what_another_sheet_says_of_an_instrument_needs_no_column_of_its_own() -> None:
+    rows = [{"tag": f"PT-{number}", "I/O type": "AI", "cable": f"C-{number}"} for number in (1, 2)]
+    cables = [{"number": f"C-{number}", "type": "K", "length": "50 m"} for number in (1, 2)]
+    twice = [{"code": "K", "conductor size": "1.5 mm2"}, {"code": "K", "conductor size": "2.5 mm2"}]
+    assert said("DAT10", rows, cables=cables, cable_types=twice) == [
+        f"PT-{number}: cable type K is listed twice on Cable types, with different figures" for number in (1, 2)
+    ]
 
 
 def test_one_record_audited_again_says_nothing_of_its_sheet() -> None:
