@@ -678,7 +678,7 @@ INSTRUMENTS = SheetKind(
             "instrument description", "function", "benennung", "bezeichnung", "beschreibung", "designation",
             "description of service", "service / description", "application", "purpose", "tag description",
             "process description", "text", "comment", "langtext", "kurztext", "klartext", "signal description",
-            "point description",
+            "point description", "signal",
         ),
         _text(
             "device_type", "device type", "device type", "type code", "catalogue code", "device code", "typecode",
@@ -995,7 +995,8 @@ INSTRUMENTS = SheetKind(
             "failure", "air fail", "air fail position", "fails to", "valve fails", "valve fails to", "cv fails",
             "cv fail", "luftausfall", "bei ausfall", "stellung bei ausfall", "stellung bei luftausfall",
             "stellung bei energieausfall", "sich stellung", "sicherheits stellung", "sicherheitslage", "fail to",
-            "on failure", "spring fails", "fail safe", "f p", "de energised", "deenergised", "fail mode",
+            "on failure", "spring fails", "spring position", "spring return",
+            "fail safe", "f p", "de energised", "deenergised", "fail mode",
             "failure mode", "failsafe", "on loss of air", "loss of air", "loss of power", "stellung stromlos",
             "ruhestellung",
         ),
@@ -1243,7 +1244,8 @@ AREAS = SheetKind(
 IO_LIST = SheetKind(
     name="IO list",
     record=Instrument,
-    names=("io list", "i/o list", "io", "i o list", "io map", "i/o", "io schedule", "ea liste", "signal list"),
+    names=("io list", "i/o list", "io", "i o list", "io map", "i/o", "io schedule", "ea liste", "signal list",
+           "signals", "io signals", "point list", "channel list"),
     key=(("tag", "io_type"), ("tag", "io_address")),
     columns=(
         INSTRUMENTS.column("tag"),

@@ -48,7 +48,8 @@ _SIGNAL: Final = re.compile(
 )
 _AREA_CLASS: Final = re.compile(
     r"(?i)(?:zone|(?<![\w-])z ?(?:2[0-2]|[0-2])(?![\w-])|\bcl(?:ass)?\.? ?i|\bdiv|safe|non[- ]?haz|"
-    r"unclass|haz|^n/?a$|^none$|\bex\b|^(?:0|1|2|20|21|22)$|^ii[abc]|general purpose|^nh$)"
+    r"unclass|haz|^n/?a$|^none$|\bex\b|^(?:0|1|2|20|21|22)$|^ii[abc]|^(?:2[0-2]|[012])\s?[/,;]\s?iii?[abc]|"
+    r"general purpose|^nh$)"
 )
 _MARKING: Final = re.compile(
     r"\bA?EE?x\b|\bEx ?[a-z]{1,2}\b|\bCl(?:ass)?\.? ?I|\bII ?[123](?:/[123])? ?[GD]\b|"
@@ -214,8 +215,11 @@ class Contents:
                 self.holds(_MARKING), 0.0 if self.numbers == self.count else 0.4 * (1 - self.holds(_CERTIFICATE))
             )
         if name == "certificate":
+            marked = self.holds(_MARKING)
+            # Where both stand in one cell it is the marking's column, which is parted.
             return max(
-                self.holds(_CERTIFICATE), 0.1 if self.numbers == self.count else 0.5 * (1 - self.holds(_MARKING))
+                self.holds(_CERTIFICATE) * (1 - 0.3 * marked),
+                0.1 if self.numbers == self.count else 0.5 * (1 - marked),
             )
         if name == "io_address":
             # A channel without its card, the same on each card, is no address.

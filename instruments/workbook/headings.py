@@ -232,10 +232,10 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[tuple[int, int]]:
                 continue
             scored[top, bottom] = _name_score(sheet, finders, top, bottom)
             below = hits.get(bottom, 0)
-            if bottom == top + 1 and hits.get(top, 0) > 1 and below > 1:
-                # Two rows of headings are one heading: the lower one is no data, though it adds no field.
-                if below * 2 >= sum(cell is not None for cell in sheet.rows[bottom]):
-                    scored[top, bottom] += 0.1 * below
+            filled = sum(cell is not None for cell in sheet.rows[bottom])
+            # Two rows of headings are one heading: the lower one is no data, though it adds no field.
+            if bottom == top + 1 and hits.get(top, 0) > 1 and below > 1 and below * 2 >= filled:
+                scored[top, bottom] += 0.1 * below
     # Of equals the shorter, then the higher: a repeated heading further down is no better.
     order = sorted(scored, key=lambda block: (-scored[block], block[1] - block[0], block[0]))
     return [block for block in order if scored[block] > 0]

@@ -19,7 +19,7 @@ from instruments.kind import (
     letters_for_kind,
     measured_variable,
 )
-from instruments.letters import read_letters
+from instruments.letters import is_usual, read_letters
 from instruments.record import Instrument, Record
 from instruments.signal_words import io_types
 from instruments.tag import (
@@ -701,6 +701,8 @@ def kind_against_letters(installed: Installed, plant: Plant) -> Verdict:
     assert kind is not None
     reading = installed.tag
     assert reading is not None
+    if kind in _NAMED and not is_usual(installed.letters):
+        return NotApplicable("letters that are a name")
     bears = can_bear(
         kind,
         installed.letters,

@@ -209,6 +209,7 @@ def _columns_absent(plant: Plant) -> Verdict:
         and not each.equipment_tag
         and each.kind.wired in ("yes", "element")
         and not _is_wireless(each)
+        and not _is_on_a_bus(each)
         and not channels(each, plant)
         and not _leaves_it_to_another(each, plant)
     )
@@ -221,6 +222,12 @@ def _columns_absent(plant: Plant) -> Verdict:
         found="no such column",
         wanted="I/O type and address",
     )
+
+
+def _is_on_a_bus(installed: Installed) -> bool:
+    """Whether its only signal is a bus or serial link, which is no channel that a list without I/O columns lacks."""
+    rows = [row for row in installed.signals if row.signal]
+    return bool(rows) and all(signal_class(row.signal) == "bus" for row in rows)
 
 
 def _is_wireless(installed: Installed) -> bool:
@@ -312,6 +319,8 @@ def channel_missing(installed: Installed, plant: Plant) -> Verdict:
         return None
     if {"io_type", "io_address"} & record.unread:
         return Unchecked("I/O type or I/O address")
+    if _is_on_a_bus(installed) and not plant.has_column("io_type", "io_address"):
+        return NotApplicable("a link has no channel of its own")
     if _is_wireless(installed):
         return NotApplicable("a wireless device is wired to nothing")
     if _leaves_it_to_another(installed, plant):

@@ -544,6 +544,19 @@ def test_a_stated_kind_bears_its_letters(row: Row, expected: list[str], offered:
 
 
 @pytest.mark.parametrize(
+    ("tag", "kind", "found"),
+    [
+        ("UPS-1", "Power supply", False),
+        ("MCC-1", "Panel", False),
+        ("PT-1", "Panel", True),
+        ("FV-1", "Power supply", True),
+    ],
+)
+def test_letters_that_are_a_name_bear_their_own_kind(tag: str, kind: str, found: bool) -> None:
+    assert bool(tell("TAG09", {"tag": tag, "kind": kind})) is found
+
+
+@pytest.mark.parametrize(
     ("tag", "kind", "meant"),
     [
         ("PIT-1", "Temperature transmitter", "TIT-1"),

@@ -195,6 +195,18 @@ def test_without_the_columns(tags: list[str], sheets: dict[str, Any], expected: 
     assert tell("WIR06", *rows, **sheets) == expected
 
 
+def test_a_link_has_no_channel_that_a_list_without_columns_lacks() -> None:
+    linked = {"tag": "AIT-1", "line": "L-1", "signal": "Modbus TCP"}
+    assert tell("WIR06", linked, {"tag": "PT-2", "line": "L-1", "signal": "4-20 mA"}) == [
+        NO_COLUMN.format("1 instrument is")
+    ]
+    assert tell("WIR06", linked) == []
+    # With the columns there is one to fill.
+    assert tell("WIR06", {**linked, "I/O type": ""}, {"tag": "PT-2", "I/O type": "AI"}) == [
+        "AIT-1: an analyser has neither I/O type nor address"
+    ]
+
+
 def test_a_blank_in_the_index_is_found_though_another_list_fills_it() -> None:
     blank = {"line": "L-1", "LRV": "0 bar"}
     rows = [{**blank, "tag": tag, "I/O type": io} for tag, io in (("PT-1", ""), ("TE-2", ""), ("PT-9", "AI"))]
