@@ -12,6 +12,7 @@ from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.letters import USERS_CHOICE
 from instruments.measurement import variable_of
+from instruments.record import Instrument
 
 if TYPE_CHECKING:
     from loops.plant import Plant
@@ -62,6 +63,17 @@ def read_voting(text: str | None) -> Voting | None:
     (Voting(needed=None, total=None), None)
     """
     return _read_voting(text) if text else None
+
+
+_IN_A_TEXT: Final = re.compile(r"(?<![a-z0-9])[1-4] ?oo ?[1-4]d?(?![a-z0-9])", re.IGNORECASE)
+
+
+def voting_of(record: Instrument) -> str | None:
+    """Return the voting that a row states: in its column, else among its remarks, where it says 2oo3."""
+    if record.voting is not None or not record.remarks or "oo" not in record.remarks.casefold():
+        return record.voting
+    found = _IN_A_TEXT.search(record.remarks[:300])
+    return found[0].replace(" ", "").lower() if found else None
 
 
 @lru_cache(maxsize=4096)
@@ -135,7 +147,7 @@ def _senses(installed: Installed) -> bool:
         return any(letter in "TES" for letter in installed.letters[1:])
     # An open and a closed contact of one valve are two statements, not one made twice.
     if installed.kind is Kind.SWITCH and installed.letters[0] == "Z":
-        return read_voting(record.voting) is not None
+        return read_voting(voting_of(record)) is not None
     return installed.kind in _SENSES
 
 
@@ -169,15 +181,16 @@ def _find(plant: Plant) -> tuple[RedundantGroup, ...]:
         if not _senses(each):
             continue
         record, tag = each.record, each.tag
-        if record.safety_function or record.voting:
+        voting = voting_of(record)
+        if record.safety_function or voting:
             variable = measured_variable_of(each)
-            votes = read_voting(record.voting)
-            single = record.voting is not None and votes is None
+            votes = read_voting(voting)
+            single = voting is not None and votes is None
             functions = safety_functions(record.safety_function) if not single else ()
             for function in functions:
                 by_function[function, variable].append(each)
             if votes is not None and not functions:
-                by_voting[_plain(record.voting), variable].append(each)
+                by_voting[_plain(voting), variable].append(each)
         if tag is not None and tag.parsed:
             by_letters[tag.prefix, tag.letters, tag.number].append(each)
     groups: dict[frozenset[int], RedundantGroup] = {}
@@ -246,7 +259,7 @@ def _of_one_function(members: Sequence[Installed], variable: str, *, merging: bo
     """
     open_ones: list[list[Installed]] = []
     for cluster in _clusters(members):
-        votes = read_voting(cluster[0].record.voting)
+        votes = read_voting(voting_of(cluster[0].record))
         if len(cluster) > 1 and (not merging or (votes is not None and votes.total == len(cluster))):
             yield cluster
         else:
@@ -268,7 +281,7 @@ def _of_one_voting(members: Sequence[Installed], variable: str) -> Iterator[Sequ
         else:
             open_ones.append(cluster)
     alone = [each for cluster in open_ones for each in cluster]
-    votes = read_voting(alone[0].record.voting) if alone else None
+    votes = read_voting(voting_of(alone[0].record)) if alone else None
     if votes is not None and votes.total == len(alone):
         yield alone
         return
@@ -303,7 +316,7 @@ def _first(texts: Iterable[str]) -> str:
 
 
 def _voting_said(installed: Installed) -> str:
-    return _plain(installed.record.voting)
+    return _plain(voting_of(installed.record))
 
 
 def _direction_said(installed: Installed) -> str:

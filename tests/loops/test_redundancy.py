@@ -151,6 +151,22 @@ def test_what_is_redundant_and_by_what(rows: Rows, expected: list[tuple[str, str
     assert groups(rows) == sorted(expected)
 
 
+@pytest.mark.parametrize(
+    ("remarks", "by"),
+    [
+        ("2oo3 with B, C", "declared"),
+        ("voted 2 oo 3", "declared"),
+        ("1oo1", "suffix"),
+        ("see 2-3 on sheet 2", "suffix"),
+        ("loop test 2003", "suffix"),
+        ("no. 2 of 3", "suffix"),
+        ("", "suffix"),
+    ],
+)
+def test_a_voting_may_stand_among_the_remarks(remarks: str, by: str) -> None:
+    assert groups(tagged("PT-1A", "PT-1B", "PT-1C", remarks=remarks)) == [("PT-1A PT-1B PT-1C", by)]
+
+
 def test_part_of_a_declared_group_is_still_declared() -> None:
     plant = example_plant([{"service": "x", **row} for row in tagged("PT-1A", "PT-1B", "PT-1C", voting="2oo3")])
     a, b, c = plant.instruments

@@ -21,7 +21,7 @@ from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_va
 from instruments.signal_words import carries_live_zero, io_types, signal_classes
 from instruments.span import above, below, percent_of_span
 from loops.plant import Plant
-from loops.redundancy import how_redundant, read_voting, redundant_groups
+from loops.redundancy import how_redundant, read_voting, redundant_groups, voting_of
 from validation.bodies import measured
 from validation.finding import Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.mending import each_found, read_both_ways, rounded_down, rounded_up, written
@@ -86,7 +86,7 @@ def _trips_at_outer_alarms(installed: Installed, plant: Plant) -> bool:
     return bool(
         record.system == "safety"
         or record.safety_function
-        or read_voting(record.voting)
+        or read_voting(voting_of(record))
         or (record.sil and any(level in record.sil for level in "1234"))
     )
 
@@ -1026,6 +1026,11 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
         fields = tuple(_FIELD_OF[level] for _, level in missing)
         if not plant.sheet_has_column(installed, *WITH_TRIP, "set_pressure"):
             fields = WITH_TRIP
+        elif not plant.sheet_has_column(installed, *fields) and (
+            installed.kind is Kind.SWITCH or any(function == "S" for function, _ in missing)
+        ):
+            # A sheet of switches gives their settings under the trip, where it has no column for LL.
+            fields = ("trip", "set_pressure")
         return Found(
             values={"letters": installed.letters, "what": what},
             fields=fields,
