@@ -48,6 +48,17 @@ def told(code: str, *texts: str) -> tuple[list[str], dict[str, int]]:
             ],
             {"clear": 1, "finding": 1, "unchecked": 3},
         ),
+        # Where the sheet has a column for a switch's trip, a blank there is the row's.
+        (
+            "SET06",
+            (ALARMS, "Tag|Service|Line|Trip\nPSLL-1|Oil|L-5|2 bar\nPSLL-2|Oil|L-5|\nPAL-3|Oil|L-5|"),
+            [
+                "LSH-9: the letters LSH promise a switch at H, and there is none",
+                "PSLL-2: the letters PSLL promise a switch at LL, and there is none",
+                "list.xlsx: sheet Part 2 has no column for L; 1 instrument needs one",
+            ],
+            {"clear": 2, "finding": 2, "unchecked": 1},
+        ),
         # A row's own blank is told beside it.
         (
             "DAT01",
