@@ -939,6 +939,11 @@ def _place_units(
                 used.add(index)
             continue
         own_group = [match for match in group if not match.unit_text and match.unit_index is None]
+        if len(generic) == 1 and all("settings_unit" in each.column.unit_from for each in own_group):
+            # The only unit column that there is belongs to the range, wherever it stands; alarms share it.
+            if "range_unit" in known and "range_unit" not in columns and _is_bare_range(columns, content):
+                left_over.append(index)
+                continue
         if not own_group:
             left_over.append(index)
             continue
@@ -966,6 +971,17 @@ def _place_units(
             )
             used.add(index)
     return [(index, heading) for index, heading in beside if index not in used]
+
+
+_ANY_UNIT: Final = re.compile(r"(?<![A-Za-z])(?!(?:to|bis|and|thru|through)\b)[A-Za-z]|[%°\"]")
+
+
+def _is_bare_range(columns: Mapping[str, ColumnMatch], content: Callable[[int], Contents]) -> bool:
+    """Whether there is a range, and neither its heading nor its cells have a unit."""
+    ranges = [columns[name] for name in ("range", "lrv", "urv") if name in columns]
+    return bool(ranges) and all(
+        not each.unit_text and each.unit_index is None and content(each.index).holds(_ANY_UNIT) < 0.3 for each in ranges
+    )
 
 
 # Process units are numbered.

@@ -263,6 +263,10 @@ UNIT_COLUMNS = [
     ),
     ("Tag|Range|Unité / Unit\nPT-1|0-10|bar\nPT-2|0-9|bar", {"range_unit": 2}, {}),
     ("Tag|LRV|URV|H|Unit\nPT-1|0|10|8|bar\nPT-2|0|9|8|bar", {"range_unit": 4}, {}),
+    # the only one belongs to the range, though alarms stand beside it, unless the range has its units in its cells
+    ("Tag|Alarm H|Unit|Maker|Range\nPT-1|8|bar|X|0 to 10\nPT-2|8|bar|X|0 to 9", {"range_unit": 2}, {}),
+    ("Tag|Alarm H|Unit|Maker|Range\nPT-1|8|bar|X|0-10 bar\nPT-2|8|bar|X|0-9 bar", {"settings_unit": 2}, {}),
+    ("Tag|Alarm H|Unit|Maker|Range (bar)\nPT-1|8|bar|X|0-10\nPT-2|8|bar|X|0-9", {"settings_unit": 2}, {}),
     (
         ("Tag|LRV|URV|DCS Min|DCS Max|Unit\nPT-1|0|9|0|9|bar\nPT-2|0|9|0|9|bar"),
         {"range_unit": 5},
