@@ -225,7 +225,11 @@ def test_blanks_that_stand_in_for_one_another_let_nothing_off(blanks: tuple[str,
     assert demo().without(INDEX, blanks) == {}
 
 
-@pytest.mark.parametrize("batch", batches(BROKEN), ids=lambda batch: f"{batch[0].rule}-{batch[-1].rule}-{len(batch)}")
+@pytest.mark.parametrize(
+    "batch",
+    [batch for batch in batches(BROKEN) if len(batch) > 1],
+    ids=lambda batch: f"{batch[0].rule}-{batch[-1].rule}-{len(batch)}",
+)
 def test_a_blank_among_the_cells_of_a_finding_lets_it_off_nowhere(batch: tuple[Change, ...]) -> None:
     rows = twin().keep(with_changes(twin().rows, batch))
     found = twin().audit(rows).findings

@@ -47,11 +47,16 @@ def test_each_fix_of_the_demo_mends_what_it_is_for_and_makes_what_it_says(part: 
     assert not_mended(demo(), values(demo())[part::PARTS]) == {}
 
 
-@pytest.mark.parametrize("batch", batches(BROKEN), ids=lambda batch: f"{batch[0].rule}-{batch[-1].rule}-{len(batch)}")
-def test_each_fix_of_another_branch_mends_it(batch: tuple[Change, ...]) -> None:
+@pytest.mark.parametrize(
+    "batch",
+    [batch for batch in batches(BROKEN) if len(batch) > 1],
+    ids=lambda batch: f"{batch[0].rule}-{batch[-1].rule}-{len(batch)}",
+)
+def test_the_first_fix_of_another_branch_mends_it(batch: tuple[Change, ...]) -> None:
     result = twin().audit(with_changes(twin().rows, batch))
     with_consequences(result)
-    assert not_mended(result, values(result)) == {}
+    first = {id(finding): (finding, fix) for finding, fix in reversed(values(result))}
+    assert not_mended(result, list(first.values())) == {}
 
 
 def test_most_rules_that_can_have_a_value_for_a_fix_give_one() -> None:

@@ -176,15 +176,23 @@ def twin() -> Twin:
 
 
 _LARGEST_BATCH = 30
+_TAG = re.compile(r"[A-Z]+[ –-][1-9]\d{2,3}[A-Z]?")
 _NUMBER = re.compile(r"[1-9]\d{3}")
 _CODES = ("Area", "Type Code", "Device Code")
 
 
 def batches(made: Iterable[Change]) -> list[tuple[Change, ...]]:
-    """Part changes into batches that can be audited at once: no two of one row, loop number, type or area."""
+    """Part changes into batches that can be audited at once: no two of one row, tag, loop number, type or area.
+
+    What changes the plant's own data bears on every rule, and stands alone.
+    """
     parted: list[tuple[list[Change], set[object]]] = []
+    alone: list[tuple[Change, ...]] = []
     for change in made:
         touched = _touched(change)
+        if "Plant" in {sheet for sheet, _ in change.places}:
+            alone.append((change,))
+            continue
         for members, taken in parted:
             if len(members) < _LARGEST_BATCH and not touched & taken:
                 break
@@ -193,11 +201,12 @@ def batches(made: Iterable[Change]) -> list[tuple[Change, ...]]:
             parted.append((members, taken))
         members.append(change)
         taken |= touched
-    return [tuple(members) for members, _ in parted]
+    return [*(tuple(members) for members, _ in parted), *alone]
 
 
 def _touched(change: Change) -> set[object]:
     edits = [(change.row, change.cells), *((each.row, each.cells) for each in change.more)]
     names = [change.about, *change.also, *(row for row, _ in edits)]
     codes = [text for _, cells in edits for heading in _CODES for text in cells.get(heading, ())]
-    return {*change.places, *names, *codes, *(number for name in names for number in _NUMBER.findall(name))} - {""}
+    parts = [part for name in names for pattern in (_TAG, _NUMBER) for part in pattern.findall(name)]
+    return {*change.places, *names, *codes, *parts} - {""}
