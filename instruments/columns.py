@@ -575,7 +575,8 @@ SYSTEM = _word(
     "system",
     "system",
     SYSTEMS,
-    "system", "control system", "system type", "dcs plc", "logic solver", "leitsystem", "connected to", "dcs sis",
+    "system", "sys", "control system", "system type", "dcs plc", "logic solver", "leitsystem", "connected to",
+    "dcs sis",
     "host system", "ctrl sys", "control/safety", "control / safety", "bpcs / sis", "system name",
 )
 UNIT_TEXT = _text(
@@ -678,7 +679,7 @@ INSTRUMENTS = SheetKind(
             "instrument description", "function", "benennung", "bezeichnung", "beschreibung", "designation",
             "description of service", "service / description", "application", "purpose", "tag description",
             "process description", "text", "comment", "langtext", "kurztext", "klartext", "signal description",
-            "point description", "signal",
+            "point description",
         ),
         _text(
             "device_type", "device type", "device type", "type code", "catalogue code", "device code", "typecode",
@@ -721,7 +722,9 @@ INSTRUMENTS = SheetKind(
         ),
         _text(
             "equipment", "equipment", "equipment", "equip", "eqpt", "equipment no", "vessel", "plant item", "item",
-            "equipment tag", "apparat", "mounted on", "equipment number", "behälter", "equip no", "apparate nr",
+            "equipment tag", "apparat", "bmk",
+            "betriebsmittel", "betriebsmittelkennzeichen", "aggregat", "drive",
+            "consumer", "mounted on", "equipment number", "behälter", "equip no", "apparate nr",
             "main equipment", "asset", "equipement",
         ),
         _word(

@@ -736,7 +736,8 @@ class _Fitter:
                 reading is not None
                 and is_equipment_shape(reading)
                 and any(row.io_type or row.io_address or row.signal for row in rows)
-            ),
+            )
+            or _is_equipments_signal(record),
             listed_type=listed,
             type=device,
             area=area,
@@ -831,6 +832,15 @@ def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:
         ):
             kept.append(row)
     return tuple(kept)
+
+
+def _is_equipments_signal(record: Instrument) -> bool:
+    """Whether a row without tag is a drive's: it names the equipment, and on or off is all that it signals."""
+    if record.tag or not record.equipment or "tag" in record.unread or record.kind_written or record.range_unit:
+        return False
+    if record.lrv is not None or record.urv is not None or record.unitless:
+        return False
+    return set(io_types(record.io_type)) in ({"DI"}, {"DO"}, {"DI", "DO"})
 
 
 def _give_listed_channels(

@@ -450,6 +450,7 @@ def _assign(
     _add_tag_without_heading(kind, levels, content, columns, used, min(sheet.width, LOOKED_AT_COLUMNS), notes)
     _take_beside_normal(kind, levels, content, columns, used)
     _take_low_and_high(kind, levels, columns)
+    _take_text_of_signals(kind, content, columns)
     unit_columns = _place_units(kind, levels, content, columns, used, taken)
     _join_parts(kind, levels, content, columns, used)
     _join_address(kind, levels, content, columns, used)
@@ -518,6 +519,19 @@ def _take_low_and_high(kind: SheetKind, levels: Mapping[int, Levels], columns: d
         return
     for old, new in (("setting_l", "lrv"), ("setting_h", "urv")):
         columns[new] = replace(columns.pop(old), column=kind.column(new), how="contents")
+
+
+_SEVERAL_WORDS: Final = re.compile(r"[^\W\d_]{2,}.*[\s,/-][^\W\d_]{2,}.*")
+
+
+def _take_text_of_signals(kind: SheetKind, content: Callable[[int], Contents], columns: dict[str, ColumnMatch]) -> None:
+    """Take a column headed Signal for the service where it says in words which signal it is, and nothing else does."""
+    signal = columns.get("signal")
+    if signal is None or "service" in columns or all(column.field != "service" for column in kind.columns):
+        return
+    cells = content(signal.index)
+    if cells.fit(signal.column, frozenset()) < 0.5 and cells.part(_SEVERAL_WORDS) > 0.6:
+        columns["service"] = replace(columns.pop("signal"), column=kind.column("service"), how="contents")
 
 
 _SPEAKS_OF: Final = {"flow": "F", "flowrate": "F", "durchfluss": "F", "level": "L", "fuellstand": "L"}
@@ -939,11 +953,16 @@ def _place_units(
                 used.add(index)
             continue
         own_group = [match for match in group if not match.unit_text and match.unit_index is None]
-        if len(generic) == 1 and all("settings_unit" in each.column.unit_from for each in own_group):
-            # The only unit column that there is belongs to the range, wherever it stands; alarms share it.
-            if "range_unit" in known and "range_unit" not in columns and _is_bare_range(columns, content):
-                left_over.append(index)
-                continue
+        # The only unit column that there is belongs to the range, wherever it stands; alarms share it.
+        if (
+            len(generic) == 1
+            and "range_unit" in known
+            and "range_unit" not in columns
+            and all("settings_unit" in each.column.unit_from for each in own_group)
+            and _is_bare_range(columns, content)
+        ):
+            left_over.append(index)
+            continue
         if not own_group:
             left_over.append(index)
             continue
@@ -1014,7 +1033,7 @@ _CLASS_PARTS: Final[tuple[tuple[str, str, tuple[str, ...]], ...]] = (
         "group",
         "Group",
         (
-            "gas group", "group", "explosion group", "explosionsgruppe", "gas gr", "gas grp", "gr", "ex group",
+            "gas group", "group", "explosion group", "explosionsgruppe", "gas gr", "gas grp", "gr", "grp", "ex group",
             "gas/dust group", "apparatus group", "equipment group", "dust group", "gasgruppe", "groupe",
         ),
     ),
@@ -1089,7 +1108,24 @@ def _join_parts(
 _ADDRESS_PARTS: Final[tuple[tuple[str, tuple[str, ...]], ...]] = (
     ("Station", ("node", "station", "controller", "drop", "plc", "plc no", "rio", "cpu", "node no")),
     ("Rack", ("rack", "chassis", "frame", "baugruppentraeger", "rack no")),
-    ("Slot", ("slot", "card", "module", "i/o card", "steckplatz", "slot no", "card no", "module no", "baugruppe")),
+    (
+        "Slot",
+        (
+            "slot",
+            "card",
+            "module",
+            "i/o card",
+            "steckplatz",
+            "slot no",
+            "card no",
+            "module no",
+            "baugruppe",
+            "karte",
+            "steckkarte",
+            "karte nr",
+            "modul",
+        ),
+    ),
     ("Ch", ("channel", "ch", "point", "kanal", "channel no", "ch no", "bit", "i/o channel", "point no")),
 )
 _ADDRESS_WORDS: Final = {heading_words(text): name for name, texts in _ADDRESS_PARTS for text in texts}

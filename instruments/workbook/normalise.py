@@ -851,15 +851,16 @@ class _SheetReader:
             return
         nothing = [None] * self.count
         found: list[str | None] = []
-        for number, said, service, tag in zip(
+        for number, said, service, equipment, tag in zip(
             self.numbers,
             self.values.get("status") or nothing,
             self.values.get("service") or nothing,
+            self.values.get("equipment") or nothing,
             self.tags or [TagCell()] * self.count,
             strict=True,
         ):
             word = (not_live(said, status_column=True) if said else None) or tag.status
-            word = word or (not_live(service) if service else None)
+            word = word or (not_live(service) if service else None) or (not_live(equipment) if equipment else None)
             found.append(word or ("deleted" if number in self.rows.struck else said))
         if any(found):
             self.values["status"] = found

@@ -58,6 +58,24 @@ def test_a_loop_with_a_transmitter_has_no_measuring_point() -> None:
     assert [each.measuring_point for each in found] == [False, False]
 
 
+@pytest.mark.parametrize(
+    ("row", "equipment"),
+    [
+        ({"equipment": "P101.M01", "I/O type": "DI"}, True),
+        ({"equipment": "P101.M01", "I/O type": "DO"}, True),
+        ({"equipment": "P101.M01", "I/O type": "AI"}, False),
+        ({"equipment": "P101.M01", "I/O type": "DI", "kind": "Limit switch"}, False),
+        ({"equipment": "V-1", "I/O type": "DI", "URV": "3 m"}, False),
+        ({"equipment": "", "I/O type": "DI"}, False),
+        ({"equipment": "P101.M01", "I/O type": ""}, False),
+    ],
+)
+def test_a_drives_signal_needs_no_tag(row: dict[str, str], equipment: bool) -> None:
+    plant = example_plant([{"tag": "", "service": "Pump 1 running", **row}, {"tag": "LSH-2", "service": "High"}])
+    (installed,) = (each for each in plant.instruments if not each.record.tag)
+    assert installed.equipment_tag is equipment
+
+
 def listed(index: list[dict[str, str]], io_list: list[dict[str, str]]) -> dict[str, list[str | None]]:
     plant = example_plant(index, io_list=io_list)
     return {each.name: [row.io_address for row in each.listed] for each in plant.instruments}

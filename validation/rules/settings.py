@@ -1031,11 +1031,6 @@ def setting_missing(installed: Installed, plant: Plant) -> Verdict:
         ):
             # A sheet of switches gives their settings under the trip, where it has no column for LL.
             fields = ("trip", "set_pressure")
-        elif not plant.sheet_has_column(installed, *fields) and (
-            installed.kind is Kind.SWITCH or any(function == "S" for function, _ in missing)
-        ):
-            # A sheet of switches gives their settings under the trip, where it has no column for LL.
-            fields = ("trip", "set_pressure")
         return Found(
             values={"letters": installed.letters, "what": what},
             fields=fields,

@@ -949,3 +949,13 @@ def test_alarms_in_one_cell_are_read_by_their_place() -> None:
         {"setting_h": "8 barg"},
         {},
     ]
+
+
+def test_a_reserve_may_stand_where_the_equipment_does() -> None:
+    text = "Karte|Kanal|BMK|Text|Messstelle\nE1|1|P1.M1|Pumpe läuft|\nE1|2|B1.L1|Niveau|LSA 1\nE1|3|Reserve||"
+    shown = [(record.io_address, record.equipment, record.status) for record in read(text).records]
+    assert shown == [
+        ("Slot E1 Ch 1", "P1.M1", None),
+        ("Slot E1 Ch 2", "B1.L1", None),
+        ("Slot E1 Ch 3", "Reserve", "spare"),
+    ]
