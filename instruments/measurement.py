@@ -11,6 +11,8 @@ from instruments.kind import Kind
 from instruments.letters import USERS_CHOICE, read_letters
 from instruments.pressure import referred, stated_reference
 from instruments.quantity import Quantity, format_number
+from instruments.signal import ma_for_value, ma_from_percent
+from instruments.span import percent_of_span
 from instruments.unit import Unit, commensurable, unit_label
 
 EQUAL_RANGES: Final = 1e-9
@@ -135,6 +137,28 @@ class Measurement:
         if quantity.unit is None or quantity.unit.kind != "pressure":
             return at(quantity)
         return referred(at(quantity), self.reference(quantity) or open_as, to, atmospheric_pa=atmospheric_pa)
+
+    def ma_at(self, value: float, scale: Scale, *, lrv: float, urv: float) -> float:
+        """Return the current of a 4-20 mA signal in mA at a value.
+
+        Of a differential pressure whose root is taken in the device the current follows the root; of a
+        flow whose root is taken in the system, its square.
+
+        Parameters
+        ----------
+        value, lrv, urv
+            The value and the ends of the range, in one unit and of one reference.
+        scale
+            The range that they belong to: the field's or the system's.
+        """
+        record = self.installed.record
+        if scale.is_pressure:
+            root = bool(record.square_root_device) and scale is self.field
+            return ma_for_value(value, lrv, urv, square_root=root)
+        if record.square_root_system and not record.square_root_device:
+            percent = percent_of_span(value, lrv, urv)
+            return ma_from_percent(percent * abs(percent) / 100.0)
+        return ma_for_value(value, lrv, urv)
 
 
 def measurement_of(installed: Installed, *, asked: bool = False) -> Measurement:

@@ -12,7 +12,6 @@ from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import measurement_of
 from instruments.quantity import Quantity, format_number
-from instruments.signal import ma_for_value, ma_from_percent
 from instruments.span import percent_of_span
 from loops.budget import feeds_a_transmitter, lift_off
 from loops.circuit import (
@@ -421,10 +420,8 @@ _DIRECTIONS: Final = {"rising": "high", "falling": "low"}
 def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValue:
     """Return a setting with its place on the span and, of a 4-20 mA signal, its current.
 
-    The range is the field's, where it has the setting's dimension, else the control system's. Of a
-    differential pressure whose root is taken in the device the current follows the root, of a flow
-    whose root is taken in the system its square. A pressure that is referred to nothing is read as
-    the plant's default.
+    The range is the field's, where it has the setting's dimension, else the control system's. A
+    pressure that is referred to nothing is read as the plant's default.
     """
     record = each.record
     measurement = measurement_of(each)
@@ -445,11 +442,7 @@ def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValu
     percent = percent_of_span(setting, lrv, urv)
     ma = None
     if any(signal_of(row, each) == LIVE_ZERO for row in each.signals or (record,)):
-        if not scale.is_pressure and record.square_root_system and not record.square_root_device:
-            ma = ma_from_percent(percent * abs(percent) / 100.0)
-        else:
-            root = scale.is_pressure and scale is measurement.field and bool(record.square_root_device)
-            ma = ma_for_value(setting, lrv, urv, square_root=root)
+        ma = measurement.ma_at(setting, scale, lrv=lrv, urv=urv)
     assumed = f"a pressure without stated reference is {default}" if None in references and len(references) > 1 else ""
     return SettingValue(text=str(value), percent=percent, ma=ma, assumed=assumed)
 

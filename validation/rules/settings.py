@@ -17,9 +17,9 @@ from instruments.measurement import Measurement, Scale, amount, at, difference_i
 from instruments.pressure import referred
 from instruments.quantity import Quantity, format_number, read_quantity
 from instruments.record import Instrument
-from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA, ma_for_value, ma_from_percent
+from instruments.signal import MEASUREMENT_MAX_MA, MEASUREMENT_MIN_MA
 from instruments.signal_words import carries_live_zero, io_types, signal_classes
-from instruments.span import above, below, percent_of_span
+from instruments.span import above, below
 from loops.plant import Plant
 from loops.redundancy import how_redundant, read_voting, redundant_groups, voting_of
 from validation.bodies import measured
@@ -381,20 +381,8 @@ def _no_range_for(measurement: Measurement, name: str) -> tuple[str, ...]:
 
 
 def _ma(numbers: Numbers, scale: Scale, measurement: Measurement) -> float:
-    """Return the mA at a setting.
-
-    Of a differential pressure whose root is taken in the device the signal follows the root; of a flow
-    whose root is taken in the system, its square.
-    """
-    record = measurement.installed.record
     value, lrv, urv = numbers
-    if scale.is_pressure:
-        root = bool(record.square_root_device) and scale is measurement.field
-        return ma_for_value(value, lrv, urv, square_root=root)
-    if record.square_root_system and not record.square_root_device:
-        percent = percent_of_span(value, lrv, urv)
-        return ma_from_percent(percent * abs(percent) / 100.0)
-    return ma_for_value(value, lrv, urv)
+    return measurement.ma_at(value, scale, lrv=lrv, urv=urv)
 
 
 def _is_beyond(numbers: Numbers) -> bool:
