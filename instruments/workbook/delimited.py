@@ -25,6 +25,9 @@ from instruments.workbook.sheet import (
 SEPARATORS: Final = (",", ";", "\t", "|")
 NAMES: Final = {",": "commas", ";": "semicolons", "\t": "tabs", "|": "bars"}
 
+ENCODINGS: Final = {"UTF-8": "utf-8-sig", "UTF-16": "utf-16", "Windows-1252": "cp1252"}
+"""What people call the encodings that are read, and what Python does."""
+
 MAX_CELLS: Final = 20_000_000
 """Rows times columns, blank ones included."""
 
@@ -42,11 +45,11 @@ _UTF_16: Final = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
 class _Text:
     """The lines of a text, decoded as they are asked for: a whole text may take four times its bytes."""
 
-    def __init__(self, data: bytes, file: str) -> None:
+    def __init__(self, data: bytes, file: str, encoding: str = "") -> None:
         self.file = file
         self.notes: list[str] = []
         self._data = data
-        self._encoding, self._errors = self._found()
+        self._encoding, self._errors = self._found(encoding)
         first = next(self._lines(), "").rstrip("\r\n")
         # A spreadsheet does not show a line that says the separator, so the addresses count from the next.
         self.said = _SAID.fullmatch(first)
@@ -74,8 +77,16 @@ class _Text:
                 )
             yield line
 
-    def _found(self) -> tuple[str, str]:
-        """Return the encoding, and what is done about bytes that are none in it."""
+    @property
+    def encoding(self) -> str:
+        """The name that people have for the encoding."""
+        return next(name for name, codec in ENCODINGS.items() if codec == self._encoding)
+
+    def _found(self, told: str) -> tuple[str, str]:
+        """Return the encoding, and what is done about bytes that are none in it.
+
+        What the bytes say goes before what was told: of all texts, hardly any but one in UTF-8 can be read so.
+        """
         data = self._data
         if data.startswith(_UTF_16):
             try:
@@ -92,10 +103,11 @@ class _Text:
         if not damaged:
             return "utf-8-sig", "strict"
         # A text with a few damaged bytes must not have every degree sign read as two other characters.
-        if beyond_ascii > 2 * damaged:
+        if told == "UTF-8" or (beyond_ascii > 2 * damaged and told != "Windows-1252"):
             self.notes.append(f"damaged characters, shown as \ufffd: {damaged}")
             return "utf-8-sig", "replace"
-        self.notes.append("not in UTF-8: read as Windows-1252")
+        if told != "Windows-1252":
+            self.notes.append("not in UTF-8: read as Windows-1252")
         if unknown := sum(piece.count("\ufffd") for piece in _decoded(data, "cp1252", "replace")):
             self.notes.append(f"characters that Windows-1252 has not, shown as \ufffd: {unknown}")
         return "cp1252", "replace"
@@ -108,7 +120,9 @@ def _decoded(data: bytes, encoding: str, errors: str) -> Iterator[str]:
     yield decoder.decode(b"", final=True)
 
 
-def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> Sheet:
+def read_delimited(
+    data: bytes, *, file: str, max_cells: int = MAX_CELLS, encoding: str = "", separator: str = ""
+) -> Sheet:
     """Read a delimited text file as one sheet; every cell is a text or None.
 
     Parameters
@@ -119,6 +133,9 @@ def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> She
         Its name; without folder and ending it is the name of the sheet.
     max_cells : int
         Rows times columns that are read at most.
+    encoding, separator : str
+        What they are, where that is known: one of `ENCODINGS`, one of `SEPARATORS`. Where the bytes say
+        otherwise, or the separator parts nothing, they are found out as ever.
 
     Raises
     ------
@@ -126,11 +143,11 @@ def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> She
         It holds NUL characters, its encoding cannot be read, a quotation mark is not closed, or it is too
         large.
     """
-    text = _Text(data, file)
+    text = _Text(data, file, encoding)
     notes = text.notes
     if text.said:
         separator = text.said[1]
-    else:
+    elif separator not in SEPARATORS or _shape("".join(itertools.islice(text.lines(), _SAMPLE)), separator)[1] < 2:
         separator, columns = find_separator(text.lines())
         if separator != "," and columns > 1:
             notes.append(f"columns taken to be separated by {NAMES[separator]}")
@@ -166,6 +183,8 @@ def read_delimited(data: bytes, *, file: str, max_cells: int = MAX_CELLS) -> She
         ragged=ragged,
         cells_filled=sum(len(row) - row.count(None) for row in rows) + len(errors),
         notes=tuple(notes),
+        encoding=text.encoding,
+        separator=separator,
     )
 
 

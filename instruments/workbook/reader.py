@@ -62,7 +62,9 @@ def read_files(paths: Iterable[str | os.PathLike[str]], *, limits: Limits = LIMI
     return [sheet for path in paths for sheet in read_file(path, limits=limits)]
 
 
-def read_file(path: str | os.PathLike[str], *, limits: Limits = LIMITS) -> list[Sheet]:
+def read_file(
+    path: str | os.PathLike[str], *, limits: Limits = LIMITS, encoding: str = "", separator: str = ""
+) -> list[Sheet]:
     """Return the sheets of a file: a workbook (.xlsx, .xlsm) by what it holds, else delimited text.
 
     Parameters
@@ -71,6 +73,8 @@ def read_file(path: str | os.PathLike[str], *, limits: Limits = LIMITS) -> list[
         The file.
     limits : Limits, optional
         How large it may be, unpacked and in cells.
+    encoding, separator : str, optional
+        Of a delimited text, where they are known; see `delimited.read_delimited`.
 
     Raises
     ------
@@ -105,7 +109,7 @@ def read_file(path: str | os.PathLike[str], *, limits: Limits = LIMITS) -> list[
         raise UnreadableFile(repr(file), "", "is no name a file can have") from None
     if data is None:
         return _read_workbook(path, file, limits)
-    return [read_delimited(data, file=file, max_cells=limits.cells)]
+    return [read_delimited(data, file=file, max_cells=limits.cells, encoding=encoding, separator=separator)]
 
 
 def _compound(descriptor: int) -> str:

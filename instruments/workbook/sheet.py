@@ -84,6 +84,10 @@ class Sheet:
     """Cells with something in them, wherever it went: `rows`, `errors`, `no_value` or `far`."""
     notes: tuple[str, ...] = ()
     """What was guessed, and what was noticed and not read."""
+    encoding: str = ""
+    """Of a delimited text: what its bytes were read as, in the words of `delimited.ENCODINGS`."""
+    separator: str = ""
+    """Of a delimited text: what stands between its cells."""
 
     @property
     def width(self) -> int:

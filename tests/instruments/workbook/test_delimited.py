@@ -28,6 +28,8 @@ def test_a_plain_list_whole() -> None:
             ["PT-3", None, None],
         ],
         errors={(4, 2): "#REF!"},
+        encoding="UTF-8",
+        separator=",",
         cells_filled=10,
     )
 
@@ -94,9 +96,42 @@ def test_the_separator(text: str, separator: str) -> None:
     assert find_separator(text.splitlines(keepends=True))[0] == separator
 
 
+DAMAGED = "Tag;C\nTT-1;20 °C\n".encode() + b"TT-2;30 \xb0C\n"
+
+
+@pytest.mark.parametrize(
+    ("data", "encoding", "separator", "read_as", "cells"),
+    [
+        (b"tag,x;y\na,b;c\n", "", ";", ("UTF-8", ";"), ["a,b", "c"]),
+        (b"tag,x;y\na,b;c\n", "", ",", ("UTF-8", ","), ["a", "b;c"]),
+        # A separator that parts nothing, and one that is none, are found out.
+        (b"tag;y\na;c\n", "", "\t", ("UTF-8", ";"), ["a", "c"]),
+        (b"tag;y\na;c\n", "", "x", ("UTF-8", ";"), ["a", "c"]),
+        # What the file says itself goes before.
+        (b"sep=;\ntag;x,y\na;b,c\n", "", ",", ("UTF-8", ";"), ["a", "b,c"]),
+        # In UTF-8 is what can be: nobody writes two such characters side by side.
+        ("tag;y\na;°C\n".encode(), "Windows-1252", ";", ("UTF-8", ";"), ["a", "°C"]),
+        ("tag;y\na;°C\n".encode("utf-16"), "Windows-1252", ";", ("UTF-16", ";"), ["a", "°C"]),
+        ("tag;y\na;°C\n".encode("cp1252"), "UTF-8", ";", ("UTF-8", ";"), ["a", "\ufffdC"]),
+        (DAMAGED, "", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
+        (DAMAGED, "UTF-8", "", ("UTF-8", ";"), ["TT-1", "20 °C"]),
+        (DAMAGED + "\u00b5".encode() * 9, "", "", ("UTF-8", ";"), ["TT-1", "20 °C"]),
+        (DAMAGED + "\u00b5".encode() * 9, "Windows-1252", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
+    ],
+)
+def test_what_is_told_of_a_text(
+    data: bytes, encoding: str, separator: str, read_as: tuple[str, str], cells: list[str]
+) -> None:
+    found = read_delimited(data, file="a.csv", encoding=encoding, separator=separator)
+    assert ((found.encoding, found.separator), found.rows[1]) == (read_as, cells)
+    # What was found out, told again, reads the same.
+    again = read_delimited(data, file="a.csv", encoding=found.encoding, separator=found.separator)
+    assert again.rows == found.rows
+
+
 def test_a_separator_that_the_file_names() -> None:
     assert read("sep=;\r\na,b;c\r\n") == Sheet(
-        file="lists/index.csv", name="index", rows=[["a,b", "c"]], cells_filled=2
+        file="lists/index.csv", name="index", rows=[["a,b", "c"]], cells_filled=2, encoding="UTF-8", separator=";"
     )
     assert read("SEP=#\na#b\n").rows == [["a", "b"]]
     assert read('sep="\na,b\n').rows == [['sep="', None], ["a", "b"]]
