@@ -279,6 +279,22 @@ def cable_run(
     return CableRun(length, found, type_named, conductor, segments)
 
 
+def listed_cables(text: str | None, *, box: str | None, plant: Plant) -> tuple[Cable, ...]:
+    """Return the cables of the schedule that a cell names, in order, on to the end of the run where that can be told.
+
+    Parameters
+    ----------
+    text
+        What the row's cell says.
+    box
+        The junction box of the row.
+    plant
+        The plant.
+    """
+    found = _cables(text, (), plant) if plant.cables else None
+    return (_to_the_end(found, box, plant) or found) if found else ()
+
+
 def _own_size(text: str | None) -> str | None:
     """Return a cable type's text where it is a conductor size itself, such as 1x2x1.5."""
     return text if text and read_conductor_size(text) is not None else None
