@@ -91,6 +91,7 @@ _KEPT: Final[Mapping[str, frozenset[str]]] = {
     "hold": frozenset({"on hold"}),
     "area_classification": frozenset({"not applicable"}),
 }
+_MINUS: Final = frozenset({"-", "\u2212", "\u2013"})
 _DASHES: Final = frozenset({"-", "--", "---", "----", ".", "..", "_", "__", "- -", "/", "//", ""})
 # DO is a digital output there.
 _NO_DITTO: Final = frozenset({"io_type", "signal", "kind"})
@@ -109,6 +110,8 @@ _BY_LINES: Final = frozenset(
         "pid",
     )
 )
+# Terminals whose name may be a sign: there a dash is the minus.
+_TERMINALS: Final = frozenset({"from_terminal", "to_terminal"})
 # Words that are matched generously: another text there says something else and is no mistake.
 _GENEROUS: Final = frozenset({"location", "mounting", "system"})
 
@@ -121,10 +124,11 @@ def _unless_blank(field: str, read: Callable[[str], Outcome]) -> Read:
     """Wrap a reader of texts: placeholders and ditto marks before the rest."""
     kept = _KEPT.get(field, frozenset())
     ditto = field not in _NO_DITTO
+    minus = field in _TERMINALS
 
     def outcome(cell: Value) -> Outcome:
         text = _plain(cell)
-        if is_plainly_a_value(text):
+        if is_plainly_a_value(text) or (minus and text in _MINUS):
             return read(text)
         if ditto and is_ditto(text):
             return DITTO
@@ -142,6 +146,8 @@ def text_cell(field: str) -> Read:
 
     >>> text_cell("service")("Feed\n pressure").value, text_cell("terminals")("TB1:1\nTB1:2").value
     ('Feed pressure', 'TB1:1, TB1:2')
+    >>> text_cell("from_terminal")("-").value, text_cell("service")("-").blank
+    ('-', 'not applicable')
     >>> text_cell("maker")("by vendor").blank, text_cell("area_classification")("N/A").value
     ('by vendor', 'N/A')
     """
