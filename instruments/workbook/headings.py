@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
+from dataclasses import field as dataclass_field
 from itertools import islice
 from typing import Final
 
@@ -28,7 +29,7 @@ from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.words import folded, placeholder
 
-__all__ = ["ColumnMatch", "SheetMatch", "match_sheet"]
+__all__ = ["ColumnMatch", "Given", "SheetMatch", "headings_in", "match_given", "match_sheet"]
 
 LOOKED_AT_ROWS: Final = 400
 """Rows in which a heading is looked for; title pages and notes come before it."""
@@ -48,7 +49,7 @@ class ColumnMatch:
     heading
         The heading as written, the rows of it joined by a blank.
     how
-        ``synonym``, ``likeness``, or ``contents`` where only the cells could tell.
+        ``synonym``, ``likeness``, ``contents`` where only the cells could tell, or ``mapping`` where it was told.
     likelihood
         0 to 1.
     unit, unit_text
@@ -65,6 +66,8 @@ class ColumnMatch:
     only
         The first letter of the tags that the column speaks of (a flow column says nothing of a pressure);
         blank: all.
+    decimal
+        The decimal mark, where it is known and not the sheet's.
     """
 
     column: Column
@@ -79,6 +82,7 @@ class ColumnMatch:
     parts: tuple[tuple[int, str], ...] = ()
     piece: tuple[int, int] | None = None
     only: str = ""
+    decimal: str = ""
 
     @property
     def field(self) -> str:
@@ -107,6 +111,12 @@ class SheetMatch:
         True where the name of the sheet or file says what it is.
     notes
         What was decided otherwise than by a synonym.
+    last_heading_row
+        The last row that holds headings; units and numbers may stand in rows of their own below.
+    headings
+        Every column that has a heading, and the heading.
+    decimal
+        The decimal mark of the sheet, where it is known; blank: its cells tell.
     """
 
     kind: SheetKind
@@ -118,11 +128,44 @@ class SheetMatch:
     named: bool = False
     notes: tuple[str, ...] = ()
     score: float = 0.0
+    last_heading_row: int = 0
+    headings: Mapping[int, str] = dataclass_field(default_factory=dict)
+    decimal: str = ""
 
     @property
     def fields(self) -> frozenset[str]:
         """All fields that the columns fill, those of ranges and triplets among them."""
         return frozenset(name for match in self.columns.values() for name in _fills(match.column))
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Given:
+    """What is known beforehand of the columns of a sheet: it is not guessed again.
+
+    Attributes
+    ----------
+    columns
+        Field to column.
+    no_field
+        Columns that are no field: they are kept under their headings.
+    unit_columns
+        Columns of units that speak for their neighbours alone.
+    units_stated
+        Fields whose unit, or that they have none, is known: a row of units does not change it.
+    """
+
+    columns: Mapping[str, ColumnMatch]
+    no_field: frozenset[int] = frozenset()
+    unit_columns: tuple[int, ...] = ()
+    units_stated: frozenset[str] = frozenset()
+
+    @property
+    def indexes(self) -> frozenset[int]:
+        """All columns of which something is known."""
+        found = {*self.no_field, *self.unit_columns}
+        for match in self.columns.values():
+            found.update((match.index, *(index for index, _ in match.parts)))
+        return frozenset(found)
 
 
 # --- the heading of one sheet ---------------------------------------------------------------------------------------
@@ -182,6 +225,36 @@ def match_sheet(
     if listed is not None and (best is None or listed.score >= best.score):
         return listed
     return best
+
+
+def headings_in(sheet: Sheet, top: int, bottom: int) -> dict[int, Levels]:
+    """Return the heading of each column in the rows from `top` to `bottom`."""
+    return _levels(sheet, top, bottom)
+
+
+def match_given(
+    sheet: Sheet, kind: SheetKind, given: Given, *, top: int, bottom: int, codes: frozenset[str] = frozenset()
+) -> SheetMatch | None:
+    """Match a sheet of which the heading's rows, and columns, are known; only what is not known is found out.
+
+    Parameters
+    ----------
+    sheet, kind
+        The sheet as read, and what it is.
+    given
+        What is known of its columns.
+    top, bottom
+        The rows of its headings.
+    codes
+        As in `match_sheet`.
+
+    Returns
+    -------
+    SheetMatch or None
+        None where the columns do not make a sheet of this kind.
+    """
+    levels = _levels(sheet, top, bottom)
+    return _assign(sheet, Finder(kind), levels, top, bottom, codes=codes, contents={}, given=given)
 
 
 def _rows_to_look_at(sheet: Sheet) -> Iterator[tuple[int, dict[int, str]]]:
@@ -392,13 +465,17 @@ def _assign(
     *,
     codes: frozenset[str],
     contents: dict[tuple[int, int, str], Contents],
+    given: Given | None = None,
 ) -> SheetMatch | None:
     """Give each heading its field, the surest first; None where the sheet is not of this kind."""
     kind = finder.kind
+    given = given or Given(columns={})
     header_rows, first_row, units = _rows_below(sheet, finder, levels, top, bottom)
+    headings, known = levels, given.indexes
+    levels = {index: heading for index, heading in headings.items() if index not in known}
 
     def content(index: int) -> Contents:
-        heading = levels[index].texts[-1] if index in levels else ""
+        heading = headings[index].texts[-1] if index in headings else ""
         found = contents.get((index, first_row, heading))
         if found is None:
             found = contents[index, first_row, heading] = Contents(sheet, index, first_row, heading)
@@ -422,9 +499,9 @@ def _assign(
             (candidate.strength * (0.5 + 0.5 * fit), index, candidate, fit, several) for candidate, fit in believed
         )
     offers.sort(key=lambda offer: (-offer[0], offer[1]))
-    columns: dict[str, ColumnMatch] = {}
-    taken: set[str] = set()
-    used: set[int] = set()
+    columns: dict[str, ColumnMatch] = dict(given.columns)
+    taken: set[str] = {name for match in columns.values() for name in _occupies(match.column)}
+    used: set[int] = set(known)
     notes: list[str] = []
     _match_pairs(kind, levels, content, columns, used)
     _match_parted_tag(kind, levels, content, columns, used, notes)
@@ -456,7 +533,7 @@ def _assign(
     _join_address(kind, levels, content, columns, used)
     for index, text in units.items():
         for name, match in columns.items():
-            if match.index == index and not match.unit_text:
+            if match.index == index and not match.unit_text and name not in given.units_stated:
                 stated = unit_for(match.column, text)
                 if stated is not None:
                     columns[name] = replace(match, unit=stated if isinstance(stated, Unit) else None, unit_text=text)
@@ -466,19 +543,36 @@ def _assign(
     if "tag" in columns and len(columns) == 1 and content(columns["tag"].index).fit(columns["tag"].column, codes) < 0.5:
         return None
     speaking = {index for index, _ in unit_columns} | {index for match in columns.values() for index, _ in match.parts}
-    unknown = [(index, levels[index].joined) for index in levels if index not in used and index not in speaking]
+    unknown = [
+        (index, heading.joined)
+        for index, heading in headings.items()
+        if (index not in used or index in given.no_field) and index not in speaking
+    ]
+    unit_columns += [
+        (index, headings[index].joined if index in headings else "")
+        for index in given.unit_columns
+        if index not in {each for each, _ in unit_columns}
+    ]
     guessed = "tag" in columns and columns["tag"].likelihood < 0.75 and columns["tag"].how == "contents"
     score = sum(match.likelihood * (1.0 if content(match.index).filled else 0.3) for match in columns.values())
     return SheetMatch(
         kind=kind,
         header_rows=header_rows,
         first_row=first_row,
-        columns=columns,
+        # In the order of the sheet; of three values in one cell only what no column of its own says is read.
+        columns=dict(sorted(columns.items(), key=_in_order)),
         unknown=tuple(_numbered(sorted(unknown), [match.heading for match in columns.values()])),
         unit_columns=tuple(sorted(unit_columns)),
         notes=tuple(notes),
         score=score - 2.0 * guessed,
+        last_heading_row=bottom,
+        headings={index: heading.joined for index, heading in sorted(headings.items())},
     )
+
+
+def _in_order(item: tuple[str, ColumnMatch]) -> tuple[bool, int, int]:
+    match = item[1]
+    return match.column.reads is Reads.TRIPLET, match.index, match.piece[0] if match.piece is not None else 0
 
 
 def _take_beside_normal(
@@ -511,7 +605,7 @@ def _take_low_and_high(kind: SheetKind, levels: Mapping[int, Levels], columns: d
     """Take a bare Low and High for the range where the list has no other range: I/O maps head the scale so."""
     low, high = columns.get("setting_l"), columns.get("setting_h")
     names = {column.field for column in kind.columns}
-    if low is None or high is None or not {"lrv", "urv"} <= names:
+    if low is None or high is None or not {"lrv", "urv"} <= names or "mapping" in (low.how, high.how):
         return
     if any(name in columns for name in ("lrv", "urv", "range", "setting_ll", "setting_hh", "settings", "trip")):
         return
@@ -527,7 +621,12 @@ _SEVERAL_WORDS: Final = re.compile(r"[^\W\d_]{2,}.*[\s,/-][^\W\d_]{2,}.*")
 def _take_text_of_signals(kind: SheetKind, content: Callable[[int], Contents], columns: dict[str, ColumnMatch]) -> None:
     """Take a column headed Signal for the service where it says in words which signal it is, and nothing else does."""
     signal = columns.get("signal")
-    if signal is None or "service" in columns or all(column.field != "service" for column in kind.columns):
+    if (
+        signal is None
+        or signal.how == "mapping"
+        or "service" in columns
+        or all(column.field != "service" for column in kind.columns)
+    ):
         return
     cells = content(signal.index)
     if cells.fit(signal.column, frozenset()) < 0.5 and cells.part(_SEVERAL_WORDS) > 0.6:
@@ -718,7 +817,9 @@ def _add_tag_without_heading(
     doubtful = {
         match.index: name
         for name, match in columns.items()
-        if match.how != "likeness" and not match.parts and content(match.index).fit(match.column, frozenset()) < 0.5
+        if match.how not in ("likeness", "mapping")
+        and not match.parts
+        and content(match.index).fit(match.column, frozenset()) < 0.5
     }
     best: tuple[float, int] | None = None
     for index in range(width):
@@ -1064,6 +1165,8 @@ def _join_parts(
         return
     for name in ("area_classification", "ex_marking", "protection"):
         match = columns.get(name)
+        if match is not None and match.how == "mapping":
+            continue
         if match is not None and "zone" in heading_words(match.heading):
             columns[name] = replace(match, prefix="Zone")
         elif match is not None and heading_words(match.heading)[-1:] == ("class",):
@@ -1141,6 +1244,8 @@ def _join_address(
     """Join rack, slot and channel to the address, where no one column holds it whole."""
     known = {column.field: column for column in kind.columns}
     match = columns.get("io_address")
+    if match is not None and match.how == "mapping":
+        return
     if "io_address" not in known or (match is not None and _ADDRESS_WORDS.get(heading_words(match.heading)) != "Ch"):
         return
     parts: dict[str, int] = {}

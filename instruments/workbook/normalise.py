@@ -92,6 +92,9 @@ class SheetRecords:
         Blank cells that a merged cell filled.
     rows
         Rows that became records; one row with several tags becomes several records.
+    decimal, decimals
+        The decimal mark that the sheet's numbers were read with, blank where nothing told; and of columns
+        that have another, by index.
     """
 
     records: tuple[Any, ...]
@@ -104,6 +107,8 @@ class SheetRecords:
     cells_unread: int = 0
     merged: int = 0
     rows: int = 0
+    decimal: str = ""
+    decimals: Mapping[int, str] = dataclasses.field(default_factory=dict)
 
 
 def read_records(
@@ -120,7 +125,7 @@ def read_records(
     plant
         The plant's data: its tag pattern says how tags are written.
     decimal
-        The decimal mark of the sheet; None to find out from its cells.
+        The decimal mark of the sheet; None for the one that the match states, else to find out from its cells.
     """
     return _SheetReader(sheet, match, plant or PlantData(), decimal).read()
 
@@ -129,7 +134,10 @@ class _SheetReader:
     """Reads a sheet column by column, each different cell once, and then puts the rows together."""
 
     def __init__(self, sheet: Sheet, match: SheetMatch, plant: PlantData, decimal: str | None) -> None:
-        self.sheet, self.match, self.plant, self.decimal = sheet, match, plant, decimal
+        self.sheet, self.match, self.plant, self.decimal = sheet, match, plant, decimal or match.decimal or None
+        # Of columns: what was told, and what their own cells tell.
+        self.told_marks = {each.index: each.decimal for each in match.columns.values() if each.decimal}
+        self.own_marks: dict[int, str] = dict(self.told_marks)
         self.rows: RowsOfSheet = sort_rows(sheet, match)
         self.numbers = self.rows.data
         self.count = len(self.numbers)
@@ -285,13 +293,19 @@ class _SheetReader:
 
     def _convention(self, index: int) -> str | None:
         """Return the decimal mark of a column, else of the sheet; None where nothing tells."""
-        if self.decimal is not None:
-            return self.decimal
+        told = self.told_marks.get(index) or self.decimal
+        if told is not None:
+            return told
         texts = {cell for cell in self.cells(index) if isinstance(cell, str)}
-        return (decimal_convention(texts) if texts else None) or self._sheet_convention
+        own = decimal_convention(texts) if texts else None
+        if own is not None:
+            self.own_marks.setdefault(index, own)
+        return own or self._sheet_convention
 
     @cached_property
     def _sheet_convention(self) -> str | None:
+        if self.decimal is not None:
+            return self.decimal
         texts: set[str] = set()
         for each in self.match.columns.values():
             if each.column.reads in (Reads.QUANTITY, Reads.NUMBER, Reads.RANGE, Reads.TRIPLET):
@@ -925,6 +939,10 @@ class _SheetReader:
             cells_unread=unread,
             merged=self.rows.merged,
             rows=self.count,
+            decimal=self._sheet_convention or "",
+            decimals=MappingProxyType(
+                {index: mark for index, mark in sorted(self.own_marks.items()) if mark != self._sheet_convention}
+            ),
         )
 
     def _records(self) -> Iterator[Any]:
