@@ -30,6 +30,12 @@ from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.marking import Marking, read_marking
 from instruments.marking_entry import T_CODE_C, MarkingEntry, division_text
+from instruments.protection import (
+    intrinsically_safe,
+    is_simple_apparatus,
+    marking_of,
+    signal_of,
+)
 from instruments.quantity import Quantity
 from instruments.record import DeviceType, Instrument
 from instruments.tag import natural_key
@@ -231,14 +237,6 @@ def place(area: Area, installed: Installed | None = None) -> str:
 # ----------------------------------------------------------------------------------------------------- the marking
 
 
-def marking_of(installed: Installed) -> Marking | None:
-    """Return the Ex marking; where that is blank, the type of protection if it holds a whole marking."""
-    if installed.marking is not None or not installed.record.protection:
-        return installed.marking
-    beside = read_marking(installed.record.protection)
-    return beside if beside.readable and beside.standing() else None
-
-
 def marking_field(installed: Installed) -> str:
     """Return the field that the marking stands in: the row's, its device type's, or the type of protection."""
     if installed.record.ex_marking is not None:
@@ -273,58 +271,6 @@ _BENT: Final = {
     "look_alike": "read in spite of letters that only look Latin",
     "temperature_unit_missing": "the surface temperature is read as degC",
 }
-_BY_ENERGY: Final = re.compile(r"(?i:intrinsic|eigensich)|\bIS\b|\b(?:E?Ex ?)?i[abc]\b|\bE?Ex ?i\b")
-_OTHERWISE: Final = re.compile(
-    r"(?i:explosion|flame|dust.?ignition|purge|pressuri[sz]|encapsul|increased|non-?incendive)"
-    r"|\bX?P\b|\bNI\b|\bDIP\b|\bE?Ex ?[demnpqot]"
-)
-
-
-def intrinsically_safe(installed: Installed) -> bool | None:
-    """Whether the type of protection says intrinsic safety; None where it says nothing, or both."""
-    text = installed.record.protection
-    if not text:
-        return None
-    by_energy, otherwise = bool(_BY_ENERGY.search(text)), bool(_OTHERWISE.search(text))
-    return None if by_energy == otherwise else by_energy
-
-
-# Kinds of which a plain one is a passive element or contact: nothing in it makes or stores energy.
-PASSIVE_KINDS: Final = frozenset({Kind.ELEMENT, Kind.SWITCH, Kind.HAND_SWITCH})
-# What can be simple apparatus (IEC 60079-11:2011 5.7, from memory), where somebody says so.
-_SIMPLE_KINDS: Final = PASSIVE_KINDS | {Kind.JUNCTION_BOX}
-_ELECTRONIC: Final = re.compile(
-    r"namur|proximity|\bprox\b|inductive|capacitive|[pn]np|hall\b|m\s?a\b|hart|bus\b", re.IGNORECASE
-)
-
-
-def _signal_of(installed: Installed) -> str:
-    device = installed.type
-    return installed.record.signal or (device.signal if device is not None else None) or ""
-
-
-def is_passive(installed: Installed) -> bool:
-    """Whether it is a passive element, as far as its row says: an RTD, a thermocouple or a contact."""
-    kind, signal = installed.kind, _signal_of(installed)
-    if kind not in PASSIVE_KINDS or _ELECTRONIC.search(signal):
-        return False
-    if kind is not Kind.ELEMENT:
-        return True
-    device = installed.type
-    return (
-        installed.letters[:1] == "T"
-        or signal_class(signal) in ("RTD", "thermocouple", "contact")
-        or (device is not None and device.sensor_type is not None)
-    )
-
-
-def is_simple_apparatus(installed: Installed) -> bool:
-    """Whether it is stated to be simple apparatus and can be: no electronics, nothing that it transmits."""
-    return (
-        installed.record.simple_apparatus is True
-        and installed.kind in _SIMPLE_KINDS
-        and not _ELECTRONIC.search(_signal_of(installed))
-    )
 
 
 # ---------------------------------------------------------------------------------------------- marking in the area
@@ -940,7 +886,7 @@ def _is_like(device: DeviceType, installed: Installed, plant: Plant) -> bool:
     body = device.body or (device.url.reference if device.url is not None else None)
     if (own is not None or installed.body is not None) and body != installed.body:
         return False
-    signals = (device.signal or "", _signal_of(installed))
+    signals = (device.signal or "", signal_of(installed))
     classes = [signal_class(text) for text in signals]
     if all(classes) and (
         classes[0] != classes[1] or ("namur" in signals[0].casefold()) != ("namur" in signals[1].casefold())

@@ -12,6 +12,7 @@ from instruments.area import Area, permitted_dust_surface_c
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.origin import Cell
+from instruments.protection import NEVER_SIMPLE, is_passive, is_simple_apparatus, marking_of
 from loops.plant import AreaInPlant, Plant, name_key
 from validation.finding import Clear, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.hazardous_place import (
@@ -20,12 +21,9 @@ from validation.hazardous_place import (
     areas_of,
     described,
     has_its_systems_group,
-    is_passive,
-    is_simple_apparatus,
     judge,
     kind_is_known,
     marking_field,
-    marking_of,
     may_be_in_area,
     own_classification,
     place,
@@ -37,10 +35,6 @@ from validation.hazardous_place import (
 from validation.rule import Subject, rule, title_of
 
 _BOXES: Final = frozenset({Kind.JUNCTION_BOX, Kind.PANEL})
-# What measures, detects or positions by electronics is no simple apparatus, whatever is said of it.
-_NEVER_SIMPLE: Final = frozenset(
-    {Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR, Kind.POSITIONER}
-)
 _IN_AREA: Final = "{reason}: {marking}, in {place}"
 
 
@@ -236,7 +230,7 @@ def _unmarked(installed: Installed, area: Area, plant: Plant) -> Verdict:
     elif is_passive(installed):
         verdict = Review
         message += ": a passive {kind} is simple apparatus only where that is stated"
-    elif stated and installed.kind not in _NEVER_SIMPLE:
+    elif stated and installed.kind not in NEVER_SIMPLE:
         verdict = Review
         message += ": stated to be simple apparatus, which not every {kind} can be"
     elif stated:
