@@ -322,6 +322,10 @@ class _SheetReader:
         if match.column.into:
             self.places.setdefault(name, indexes)
 
+    def _place_too(self, name: str, index: int) -> None:
+        """Note a further column that a field was read from."""
+        self.places[name] = tuple(dict.fromkeys((*self.places.get(name, ()), index)))
+
     def _store(self, name: str, values: list[Any]) -> None:
         """Keep a column's values; where another column filled the field already, it fills only its blanks."""
         before = self.values.get(name)
@@ -772,7 +776,8 @@ class _SheetReader:
             column = self.known.get(target)
             if column is None:
                 continue
-            self.places.setdefault(target, (match.index,))
+            if any(yes and cell is not None for cell, yes in zip(cells, wanted, strict=True)):
+                self._place_too(target, match.index)
             seen = [cell if yes else None for cell, yes in zip(cells, wanted, strict=True)]
             with self._seeing(match.index, seen):
                 units = self._units_for(dataclasses.replace(match, column=column), base)
@@ -796,7 +801,7 @@ class _SheetReader:
                 with self._seeing(match.index, seen):
                     units = self._units_for(dataclasses.replace(match, column=column), base)
                     self._store(target, self._quantities(target, match, column, units)[0])
-                self.places.setdefault(target, (match.index,))
+                self._place_too(target, match.index)
         self._set_aside(match, cells, [cell is None or known[cell] is not None for cell in cells])
 
     def _take_set_cells(self) -> None:
