@@ -235,6 +235,10 @@ class Package:
     def __contains__(self, name: str) -> bool:
         return _part_name(name) in self._parts
 
+    def entries(self) -> list[zipfile.ZipInfo]:
+        """Return the parts in the order in which they stand in the file's directory."""
+        return self._zip.infolist()
+
     def pieces(self, name: str, *, at_most: int | None = None) -> Iterator[bytes]:
         """Return a part, unpacked, piece by piece; its length and check sum are those that the file says."""
         info = self._parts.get(_part_name(name))

@@ -43,13 +43,21 @@ class Outputs:
         return self
 
     def add(self, name: str, write: Callable[[Path], None]) -> str:
-        """Let `write` make the file under a passing name; return its SHA-256 digest."""
+        """Let `write` make the file under a passing name; return its SHA-256 digest.
+
+        A file whose writing fails is left out; the others may still take their names.
+        """
         try:
             handle, text = tempfile.mkstemp(prefix=".ferrule-", suffix=".part", dir=self.folder)
             os.close(handle)
             part = Path(text)
             self._made.append((part, self.folder / name))
-            write(part)
+            try:
+                write(part)
+            except BaseException:
+                self._made.pop()
+                part.unlink(missing_ok=True)
+                raise
             digest = hashlib.sha256()
             # Open for writing too: Windows brings nothing to the disk through a file opened for reading.
             with part.open("r+b") as file:

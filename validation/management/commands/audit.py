@@ -6,6 +6,7 @@ import gc
 import hashlib
 import sys
 from argparse import ArgumentParser
+from functools import partial
 from pathlib import Path
 from typing import Any
 
@@ -21,6 +22,7 @@ from loops.plant import assemble
 from validation.audit import Audit, audit
 from validation.finding import Outcome, Severity
 from validation.mend import with_consequences
+from validation.report.annotated import Annotated, Annotations, annotated_names
 from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
@@ -61,6 +63,7 @@ class Command(BaseCommand):
 
     def run_audit(self, options: dict[str, Any]) -> int:
         """Return the exit status."""
+        self._annotated: list[str] = []
         if not options["lists"]:
             return self._cannot("name the list to audit; the plant's own index cannot be kept yet")
         if options["mapping"]:
@@ -104,6 +107,8 @@ class Command(BaseCommand):
 
         progress.stage("writing exceptions.xlsx")
         outputs.add("exceptions.xlsx", lambda path: write_exceptions(result, path))
+        if not options["no_annotated"]:
+            self._annotate(outputs, result, progress)
         if not options["no_sheets"]:
             progress.stage("drawing loop-sheets.pdf")
             outputs.add(
@@ -113,6 +118,20 @@ class Command(BaseCommand):
         digests = dict(outputs.digests)
         text = as_text(result, digests=digests, version=VERSION, inputs=inputs)
         outputs.add("findings.json", lambda path: _write_text(path, text))
+
+    def _annotate(self, outputs: Outputs, result: Audit, progress: Progress) -> None:
+        annotations = Annotations(result)
+        for file, name in annotated_names(result.plant.lists.files).items():
+            progress.stage(f"writing {name}")
+            made: list[Annotated] = []
+            write = partial(_annotate, annotations, file, made)
+            try:
+                outputs.add(name, write)
+            except UnreadableFile as error:
+                self._annotated.append(f"no annotated copy of {file}: {error.place} {error.reason}")
+            else:
+                self._annotated.append(f"{name}: {made[0].cells} cells marked on {made[0].sheets} sheets")
+                self._annotated.extend(f"{name}: {remark}" for remark in made[0].remarks)
 
     def _cannot(self, text: str) -> int:
         self.stderr.write(f"audit: {text}")
@@ -129,6 +148,8 @@ class Command(BaseCommand):
             f"findings: {figures['danger']} danger, {figures['fault']} fault, {figures['gap']} gap; "
             f"{figures['review']} to review; {figures['unchecked']} checks could not be made for want of data"
         )
+        for line in self._annotated:
+            say(line)
         guessed = [note for sheet in result.plant.lists.sheets for note in _guesses(sheet)]
         for note in guessed[:20]:
             say(f"heading guessed: {note}")
@@ -169,6 +190,10 @@ def _draw(result: Audit, path: Path, progress: Progress) -> None:
         notes=notes_by_loop(result),
         on_sheet=lambda number, of: progress.step("sheets", number, of),
     )
+
+
+def _annotate(annotations: Annotations, file: str, made: list[Annotated], path: Path) -> None:
+    made.append(annotations.write(file, path))
 
 
 def _write_text(path: Path, text: str) -> None:

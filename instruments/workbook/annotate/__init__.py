@@ -1,0 +1,1 @@
+"""A copy of a workbook with some of its cells filled and commented, and everything else as it was."""

@@ -1,0 +1,169 @@
+"""The comments part of a sheet: new comments, and ours beneath those that stand there."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from typing import Final, NamedTuple
+
+from instruments.workbook.annotate.splice import Edit, Element, elements, spliced, text_in_xml
+from instruments.workbook.plain import BrokenXml
+from instruments.workbook.sheet import cell_address, cell_position
+
+__all__ = ["MOST_CHARACTERS", "Comments", "Passage", "Text", "plain_text"]
+
+MOST_CHARACTERS: Final = 32_000
+"""Characters of a comment; a cell's text ends at 32,767, and programs differ in what they count."""
+
+_MAIN: Final = "http://schemas.openxmlformats.org/spreadsheetml/2006/main"
+_STRICT: Final = "http://purl.oclc.org/ooxml/spreadsheetml/main"
+
+
+class Passage(NamedTuple):
+    """A run of a comment's text, in bold letters or not."""
+
+    text: str
+    bold: bool = False
+
+
+Text = Sequence[Passage]
+
+Place = tuple[int, int]
+
+
+def plain_text(text: Text) -> str:
+    """Return a comment as plain text."""
+    return "".join(passage.text for passage in text)
+
+
+class Comments:
+    """The comments of one sheet.
+
+    Parameters
+    ----------
+    data : bytes or None
+        The part in UTF-8; None where the sheet has no comments yet.
+    author : str
+        Whose comments are added.
+    strict : bool
+        Whether the workbook is of the strict kind of ECMA-376-1.
+
+    Raises
+    ------
+    BrokenXml
+        The part cannot be read.
+    """
+
+    def __init__(self, data: bytes | None, *, author: str, strict: bool = False) -> None:
+        self._author = author
+        self._data = data if data is not None else _empty(_STRICT if strict else _MAIN)
+        self._root = elements(self._data)
+        listed = self._root.first("commentList")
+        if self._root.name != "comments" or listed is None:
+            raise BrokenXml("is no part of comments")
+        self._list = listed
+        self.standing: dict[Place, Element] = {}
+        """The comments that stand there, by their cell."""
+        for child in listed.children:
+            place = cell_position(child.attributes.get("ref", "")) if child.name == "comment" else None
+            if place is not None:
+                self.standing[place] = child
+
+    def length(self, place: Place) -> int:
+        """Return how many bytes the text of a comment takes that stands there; 0 where there is none."""
+        comment = self.standing.get(place)
+        text = comment.first("text") if comment else None
+        return text.close - text.inside if text else 0
+
+    def thread_of(self, place: Place) -> bool:
+        """Whether the comment of a cell stands for a thread, which newer programs show in its place."""
+        comment = self.standing.get(place)
+        authors = self._root.first("authors")
+        if comment is None or authors is None:
+            return False
+        number = comment.attributes.get("authorId", "")
+        names = authors.children
+        if not (number.isascii() and number.isdigit() and len(number) < 7) or int(number) >= len(names):
+            return False
+        author = names[int(number)]
+        return self._data[author.inside : author.close].strip().startswith(b"tc=")
+
+    def with_added(self, texts: Mapping[Place, Text]) -> bytes:
+        """Return the part with a comment added to each of these cells, beneath what stands there."""
+        prefix = self._root.prefix
+        edits: list[Edit] = []
+        number = self._author_number(edits)
+        new: list[bytes] = []
+        for place in sorted(texts):
+            comment = self.standing.get(place)
+            if comment is None:
+                new.append(
+                    b'<%bcomment ref="%b" authorId="%d"><%btext>%b</%btext></%bcomment>'
+                    % (
+                        prefix,
+                        cell_address(*place).encode(),
+                        number,
+                        prefix,
+                        _runs(texts[place], prefix),
+                        prefix,
+                        prefix,
+                    )
+                )
+            else:
+                edits += self._beneath(comment, texts[place])
+        if new:
+            edits.append(self._list.appended(self._data, b"".join(new)))
+        return b"".join(spliced([self._data], edits))
+
+    def _author_number(self, edits: list[Edit]) -> int:
+        authors = self._root.first("authors")
+        prefix = self._root.prefix
+        name = text_in_xml(self._author)
+        made = b"<%bauthor>%b</%bauthor>" % (prefix, name, prefix)
+        if authors is None:
+            at = self._list.start
+            edits.append(Edit(at, at, b"<%bauthors>%b</%bauthors>" % (prefix, made, prefix)))
+            return 0
+        for number, author in enumerate(authors.children):
+            if self._data[author.inside : author.close] == name:
+                return number
+        edits.append(authors.appended(self._data, made))
+        return len(authors.children)
+
+    def _beneath(self, comment: Element, text: Text) -> list[Edit]:
+        prefix = self._root.prefix
+        runs = _runs((Passage("\n\n"), Passage(f"{self._author}:\n", bold=True), *text), prefix)
+        holder = comment.first("text")
+        if holder is None:
+            return [comment.appended(self._data, b"<%btext>%b</%btext>" % (prefix, runs, prefix))]
+        if holder.closes_itself:
+            return [holder.appended(self._data, runs)]
+        edits: list[Edit] = []
+        at = holder.close
+        for child in holder.children:
+            if child.name == "t":
+                # A text without runs becomes the first of them.
+                edits.append(Edit(child.start, child.start, b"<%br>" % prefix))
+                edits.append(Edit(child.end, child.end, b"</%br>" % prefix))
+            elif child.name in ("rPh", "phoneticPr"):
+                at = min(at, child.start)
+        edits.append(Edit(at, at, runs))
+        return edits
+
+
+def _empty(space: str) -> bytes:
+    return (
+        '<?xml version="1.0" encoding="UTF-8" standalone="yes"?>\n'
+        f'<comments xmlns="{space}"><authors/><commentList/></comments>'
+    ).encode()
+
+
+def _runs(text: Text, prefix: bytes) -> bytes:
+    made: list[bytes] = []
+    for passage in text:
+        bold = b"<%bb/>" % prefix if passage.bold else b""
+        made.append(
+            b'<%br><%brPr>%b<%bsz val="9"/><%bcolor indexed="81"/><%brFont val="Tahoma"/><%bfamily val="2"/></%brPr>'
+            b'<%bt xml:space="preserve">%b</%bt></%br>'
+            % (*(prefix,) * 2, bold, *(prefix,) * 6, text_in_xml(passage.text), prefix, prefix)
+        )
+    return b"".join(made)
