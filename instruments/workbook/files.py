@@ -6,10 +6,10 @@ import os
 from collections.abc import Callable, Sequence
 
 from instruments.column import SheetKind
+from instruments.unit_table import unit
 from instruments.workbook.lists import Lists, records_of_sheets
 from instruments.workbook.plant_sheet import read_plant_toml
-from instruments.workbook.reader import read_file
-from instruments.workbook.sheet import Sheet
+from instruments.workbook.reading_process import read_apart
 
 
 def read_lists(
@@ -41,10 +41,14 @@ def read_lists(
     """
     tell = on_progress or (lambda line: None)
     entries = list(read_plant_toml(plant_toml)) if plant_toml is not None else []
-    sheets: list[Sheet] = []
-    for path in paths:
-        tell(f"reading {os.fspath(path)}")
-        sheets.extend(read_file(path))
+    read = read_apart(
+        [(path, {}) for path in paths],
+        on_file=lambda file: tell(f"reading {file}"),
+        # The library of units takes as long to be imported as the process to start.
+        meanwhile=lambda: unit("bar"),
+    )
+    sheets = [sheet for each in read for sheet in each]
+    del read
     return records_of_sheets(
         sheets, kinds, stated=entries, files=tuple(os.fspath(path) for path in paths), on_progress=tell
     )

@@ -55,6 +55,21 @@ class Limits:
     """Rows times columns up to which a sheet may be as empty as it likes."""
     cells: int = 20_000_000
     """Rows times columns of all sheets together, blank ones included."""
+    memory_bytes: int = 600_000_000
+    memory_per_byte: int = 25
+    """What the reading process may take, and how much more for each byte of the file: 200,000 tags by 45 columns
+    without a blank are 52 MB and take 1.1 GB."""
+    seconds: float = 20.0
+    seconds_per_mb: float = 5.0
+    """How long a reading may take, and how much longer for each million bytes of the file: ten times what it does."""
+
+    def memory_for(self, file_bytes: int) -> int:
+        """Return the bytes that the reading of a file of this size may take."""
+        return self.memory_bytes + self.memory_per_byte * file_bytes
+
+    def seconds_for(self, file_bytes: int) -> float:
+        """Return the seconds that the reading of a file of this size may take."""
+        return self.seconds + self.seconds_per_mb * file_bytes / 1e6
 
 
 LIMITS: Final = Limits()
