@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterator, Mapping
 from dataclasses import replace
 from functools import lru_cache
-from typing import Any, Final, NamedTuple
+from typing import Final
 
 from instruments.installed import Installed
 from instruments.kind import Kind
@@ -14,7 +13,6 @@ from instruments.quantity import format_number
 from instruments.record import DeviceType, Instrument
 from instruments.signal_words import io_types, signal_class, signal_classes
 from loops.budget import (
-    SUPPLY_TOLERANCE_PERCENT,
     Budget,
     HighestVolts,
     feeds_a_transmitter,
@@ -26,6 +24,13 @@ from loops.circuit import Circuit
 from loops.plant import Plant
 from loops.power import highest_supply_v, least_supply_v, longest_cable_m, smallest_conductor
 from loops.wiring import has_io
+from validation.circuit_mending import (
+    conductor_change,
+    highest_supply_fix,
+    least_supply_change,
+    length_change,
+    volts_text,
+)
 from validation.finding import Clear, Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
 from validation.rule import Subject, rule
 
@@ -79,9 +84,9 @@ def starved_transmitter(circuit: Circuit, plant: Plant) -> Verdict:
     assert shown is not None
     at_20_ma = _volts_at_20_ma(budget, short_at_best=short_at_best)
     kind = Found if short_at_best else Review
-    volts = _volts(shown.at_terminals_v, shown.margin_v)
-    needed = _volts(shown.needed_v, shown.margin_v)
-    short = _volts(-shown.margin_v, shown.margin_v)
+    volts = volts_text(shown.at_terminals_v, shown.margin_v)
+    needed = volts_text(shown.needed_v, shown.margin_v)
+    short = volts_text(-shown.margin_v, shown.margin_v)
     current = f"{format_number(shown.current_ma)} mA"
     return kind(
         values={
@@ -108,7 +113,7 @@ def _volts_at_20_ma(budget: Budget, *, short_at_best: bool) -> str:
     if short_at_best and budget.supply_is_free:
         budget = replace(budget, source_20_ma_v=budget.kindest_v, resistances=budget.kindest_resistances, missing=())
     at_20_ma = budget.at_20_ma
-    return "" if at_20_ma is None else _volts(at_20_ma.at_terminals_v, 0.0)
+    return "" if at_20_ma is None else volts_text(at_20_ma.at_terminals_v, 0.0)
 
 
 def _lift_off_fixes(circuit: Circuit, budget: Budget, plant: Plant) -> tuple[Fix, ...]:
@@ -128,7 +133,7 @@ def _lift_off_fixes(circuit: Circuit, budget: Budget, plant: Plant) -> tuple[Fix
         fixed_drops=budget.fixed_drops,
     )
     if length_m:
-        fixes.append(Fix(text=f"cable no longer than {length_m} m", **_length_change(circuit, length_m, plant)))
+        fixes.append(Fix(text=f"cable no longer than {length_m} m", **length_change(circuit, length_m, plant)))
     if cable.conductor is not None:
         size_mm2 = smallest_conductor(
             budget.source_v,
@@ -142,7 +147,7 @@ def _lift_off_fixes(circuit: Circuit, budget: Budget, plant: Plant) -> tuple[Fix
             fixed_drops=budget.fixed_drops,
         )
         if size_mm2 is not None:
-            fixes.append(Fix(text=f"conductor of at least {size_mm2:g} mm2", **_conductor_change(circuit, size_mm2)))
+            fixes.append(Fix(text=f"conductor of at least {size_mm2:g} mm2", **conductor_change(circuit, size_mm2)))
     if budget.supply_is_free:
         volts = least_supply_v(
             budget.current_ma,
@@ -150,73 +155,10 @@ def _lift_off_fixes(circuit: Circuit, budget: Budget, plant: Plant) -> tuple[Fix
             resistances=(*budget.resistances, ("cable", cable.ohm(budget.hot_c))),
             fixed_drops=budget.fixed_drops,
         )
-        fixes.append(Fix(text=f"supply of at least {volts:g} V at its lowest", **_supply_change(circuit, volts, plant)))
+        fixes.append(
+            Fix(text=f"supply of at least {volts:g} V at its lowest", **least_supply_change(circuit, volts, plant))
+        )
     return tuple(fixes)
-
-
-class _Row(NamedTuple):
-    """The row that a fix changes, as `Fix` names it."""
-
-    subject: str
-    sheet: str
-
-
-def _loop_row(circuit: Circuit, plant: Plant) -> _Row | None:
-    """Return the row of the loop list; None where its name is that of other circuits too."""
-    row = circuit.row
-    if row is None:
-        return None
-    for field, text in (("circuit", row.circuit), ("number", row.number)):
-        if text:
-            alone = sum(1 for other in plant.loop_rows if getattr(other, field) == text) == 1
-            return _Row(text, "Loops") if alone else None
-    return None
-
-
-def _own_row(circuit: Circuit) -> _Row | None:
-    """Return the device's row; None where it has several signals, whose rows would all be changed."""
-    return _Row(circuit.device.name, "Instruments") if len(circuit.device.signals) <= 1 else None
-
-
-def _changing(row: _Row | None, change: Mapping[str, str]) -> dict[str, Any]:
-    return {} if row is None else {"change": change, "subject": row.subject, "sheet": row.sheet}
-
-
-def _length_change(circuit: Circuit, length_m: int, plant: Plant) -> dict[str, Any]:
-    source = circuit.cable_length_m.source if circuit.cable_length_m else ""
-    row = {"loop row": _loop_row(circuit, plant), "row": _own_row(circuit)}.get(source)
-    return _changing(row, {"cable length": str(length_m)})
-
-
-def _conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, Any]:
-    # A cable type is shared by other circuits: changing it is for a person to say.
-    if circuit.signal_row.conductor and (circuit.cable_type is None or circuit.cable_type.ohm_per_km is None):
-        return _changing(_own_row(circuit), {"conductor size": f"{size_mm2:g} mm2"})
-    return {}
-
-
-def _supply_change(circuit: Circuit, least_v: float, plant: Plant) -> dict[str, Any]:
-    lowest, nominal = circuit.supply_min_v, circuit.supply_nominal_v
-    if lowest is not None:
-        if lowest.source == "loop row":
-            return _changing(_loop_row(circuit, plant), {"supply V min": f"{least_v:g}"})
-        return {}
-    if nominal is None:
-        return {}
-    percent = plant.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
-    if percent >= 100.0:
-        return {}
-    nominal_v = math.ceil(round(least_v / (1 - percent / 100) * 10, 6)) / 10
-    return _nominal_change(circuit, nominal_v, plant)
-
-
-def _nominal_change(circuit: Circuit, nominal_v: float, plant: Plant) -> dict[str, Any]:
-    source = circuit.supply_nominal_v.source if circuit.supply_nominal_v else ""
-    if source == "loop row":
-        return _changing(_loop_row(circuit, plant), {"supply V nominal": f"{nominal_v:g}"})
-    if source == "row":
-        return _changing(_own_row(circuit), {"power supply": f"{nominal_v:g} V DC"})
-    return {}
 
 
 @rule(
@@ -258,9 +200,9 @@ def too_many_volts(circuit: Circuit, plant: Plant) -> Verdict:
     shown = volts.kindest if over_at_best else volts.worst
     assert shown is not None
     kind = Found if over_at_best else Review
-    can_see = _volts(shown.at_terminals_v, shown.margin_v)
-    allowed = _volts(shown.allowed_v, shown.margin_v)
-    over = _volts(-shown.margin_v, shown.margin_v)
+    can_see = volts_text(shown.at_terminals_v, shown.margin_v)
+    allowed = volts_text(shown.allowed_v, shown.margin_v)
+    over = volts_text(-shown.margin_v, shown.margin_v)
     return kind(
         values={"device": circuit.device.name, "volts": can_see, "allowed": allowed, "over": over},
         fields=("type.maximum_v",),
@@ -280,15 +222,7 @@ def _over_voltage_fixes(circuit: Circuit, volts: HighestVolts, plant: Plant) -> 
     highest_v = highest_supply_v(
         allowed_v=volts.allowed_v, resistances=volts.resistances, fixed_drops=volts.fixed_drops
     )
-    change: dict[str, Any] = {}
-    if circuit.supply_max_v is not None:
-        if circuit.supply_max_v.source == "loop row":
-            change = _changing(_loop_row(circuit, plant), {"supply V max": f"{highest_v:g}"})
-    elif circuit.supply_nominal_v is not None:
-        percent = plant.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
-        nominal_v = math.floor(round(highest_v / (1 + percent / 100) * 10, 6)) / 10
-        change = _nominal_change(circuit, nominal_v, plant)
-    return (Fix(text=f"supply of at most {highest_v:g} V at its highest", **change),)
+    return (highest_supply_fix(circuit, highest_v, plant),)
 
 
 # ------------------------------------------------------------------------------------------ signal and I/O type
@@ -468,12 +402,3 @@ def _nothing_to_compare(installed: Installed) -> Verdict:
         return NotApplicable()
     has_signal = any(row.signal for row in rows) or bool(installed.type and installed.type.signal)
     return Unchecked("I/O type") if has_signal else Unchecked("signal", "I/O type")
-
-
-def _volts(volts: float, margin_v: float) -> str:
-    """Write volts to as many decimals as it takes to see the margin."""
-    decimals = 3
-    while decimals < 9 and margin_v and not round(margin_v, decimals):
-        decimals += 1
-    shown = f"{volts:.{decimals}f}".rstrip("0").rstrip(".")
-    return f"{shown} V"
