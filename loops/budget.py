@@ -20,7 +20,7 @@ from loops.cable import (
     loop_resistance_ohm,
     read_conductor_size,
 )
-from loops.circuit import ANALOGUE_INPUT, Circuit, Given, Segment
+from loops.circuit import ANALOGUE_INPUT, Circuit, Given, Segment, is_isolator
 from loops.power import (
     HIGH_ALARM_MA,
     LOW_FAILURE_MA,
@@ -302,15 +302,6 @@ class _InSeries:
             self.ohm.append((name, entry.resistance_ohm))
         if entry.fixed_drop_v is not None:
             self.drops.append((name, entry.fixed_drop_v))
-
-
-def is_isolator(barrier: DeviceType) -> bool:
-    """Whether a barrier isolates: as its entry states, else by its kind, else because it states what it supplies."""
-    if barrier.isolation is not None:
-        return barrier.isolation == "isolator"
-    if barrier.kind is Kind.ISOLATOR:
-        return True
-    return barrier.available_20ma_v is not None or barrier.available_alarm_v is not None
 
 
 def _stating(circuit: Circuit) -> tuple[str, DeviceType] | None:

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 from instruments.area import Area
 from instruments.installed import Installed
+from instruments.kind import Kind
 from instruments.origin import Cell
 from instruments.record import DeviceType, Instrument
 from loops.record import CableType, LoopRow
@@ -22,12 +23,14 @@ THERMOCOUPLE = "TC"
 class Given:
     """A number of a circuit with where it came from.
 
-    `source` is ``loop row``, ``row`` (of the device), ``power supply``, ``card`` or ``cables``.
+    `source` is ``loop row``, ``row`` (of the device), ``power supply``, ``card``, ``cables`` or ``device``
+    (another one on the circuit, which `item` names).
     """
 
     number: float
     source: str
     cells: tuple[Cell, ...] = ()
+    item: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -70,7 +73,8 @@ class Circuit:
     receiver_ohm
         What the signal's receiver comes to: the range resistor with the inputs across it.
     receivers
-        All that are stated: of the loop list, the row, the card.
+        All that are stated: of the loop list, the row, the card, and of other devices on the circuit that
+        read the volts across the range resistor.
     cable_length_m, cable_type, conductor
         The whole run. Where its cables differ in type, `segments` are those cables.
     powered_by_loop
@@ -116,6 +120,38 @@ class Circuit:
     def live(self) -> bool:
         """Whether the device is live."""
         return self.device.live
+
+    @property
+    def isolator(self) -> DeviceType | None:
+        """The entry of the isolator that parts the circuit; None where nothing does, or a zener barrier stands there.
+
+        It ends one circuit and begins another: what lies between it and the card is none of the field's.
+        """
+        return self.barrier if self.barrier is not None and is_isolator(self.barrier) else None
+
+    @property
+    def zener(self) -> DeviceType | None:
+        """The entry of the barrier that lies in series; None where there is none, or an isolator stands there."""
+        return self.barrier if self.barrier is not None and not is_isolator(self.barrier) else None
+
+    @property
+    def driven(self) -> Installed:
+        """The device that an output moves: the positioner or the like on a valve's circuit, else the device."""
+        if self.device.kind in _DRIVES or len(self.members) == 1:
+            return self.device
+        return next((each for each in self.members if each.kind in _DRIVES), self.device)
+
+
+_DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
+
+
+def is_isolator(barrier: DeviceType) -> bool:
+    """Whether a barrier isolates: as its entry states, else by its kind, else because it states what it supplies."""
+    if barrier.isolation is not None:
+        return barrier.isolation == "isolator"
+    if barrier.kind is Kind.ISOLATOR:
+        return True
+    return barrier.available_20ma_v is not None or barrier.available_alarm_v is not None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)

@@ -7,6 +7,7 @@ from collections.abc import Iterable, Sequence
 from functools import lru_cache
 from typing import TYPE_CHECKING, Any, Final, NamedTuple
 
+from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.origin import Cell
 from instruments.record import DeviceType, Instrument
@@ -166,9 +167,18 @@ def _goes_with(nominal_v: float, supply: Supply) -> bool:
 
 
 def receivers_of(
-    row: LoopRow | None, signal: Instrument, record: Instrument, card: DeviceType | None
+    row: LoopRow | None,
+    signal: Instrument,
+    record: Instrument,
+    *,
+    card: DeviceType | None,
+    others: Iterable[Installed] = (),
 ) -> tuple[Given, ...]:
-    """Return what is stated to lie across a circuit's signal: range resistor, receiver, the card's own input."""
+    """Return what is stated to lie across a circuit's signal.
+
+    Range resistor, receiver, the card's own input, and the inputs of other devices on the circuit: a
+    recorder, an indicator that reads volts.
+    """
     found: list[Given | None] = []
     if row is not None:
         found.append(_given(row.range_resistor_ohm, "loop row", row, "range_resistor_ohm"))
@@ -176,6 +186,11 @@ def receivers_of(
     found.append(_given(owner.receiver_ohm, "row", owner, "receiver_ohm"))
     if card is not None:
         found.append(_given(card.input_ohm, "card", card, "input_ohm"))
+    for other in others:
+        kind = other.type
+        if kind is not None and kind.input_ohm is not None:
+            cells = kind.cells("input_ohm")
+            found.append(Given(number=kind.input_ohm, source="device", cells=cells, item=other.name))
     return tuple(each for each in found if each is not None)
 
 
@@ -187,16 +202,20 @@ def in_parallel(receivers: Sequence[Given]) -> Given | None:
     """Return the resistance that receivers of one signal come to; None where none is stated.
 
     Inputs that read volts lie across the range resistor. Of two that are range resistors themselves, the
-    first is taken: two papers speak of one resistor, and the loop's own is nearer to it than a catalogue.
+    first is taken: two papers speak of one resistor, and the loop's own is nearer to it than a catalogue. The
+    input of another device is always one more.
 
     >>> [round(in_parallel([Given(number=250.0, source="loop row"), Given(number=ohm, source="card")]).number, 3)
     ...  for ohm in (10000.0, 250.0)]
     [243.902, 250.0]
     """
-    low = next((each for each in receivers if each.number < VOLTAGE_INPUT_OHM), None)
-    across = [each for each in receivers if each.number >= VOLTAGE_INPUT_OHM]
+    low = next((each for each in receivers if each.number < VOLTAGE_INPUT_OHM and each.source != "device"), None)
+    across = [each for each in receivers if each.number >= VOLTAGE_INPUT_OHM or each.source == "device"]
     if not across or (low is not None and low.number <= 0.0):
         return low
+    dead = next((each for each in across if each.number <= 0.0), None)
+    if dead is not None:
+        return dead
     together = [*([low] if low is not None else []), *across]
     return Given(
         number=1.0 / sum(1.0 / each.number for each in together),

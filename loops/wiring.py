@@ -48,6 +48,8 @@ _SIGNAL_KINDS: Final = frozenset(kind for kind in Kind if kind.wired in ("yes", 
 _TRANSMITTERS: Final = frozenset({Kind.TRANSMITTER, Kind.ANALYSER, Kind.GAS_DETECTOR, Kind.FIRE_DETECTOR})
 _POSITIONERS: Final = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER})
 _VALVE_DRIVES: Final = _POSITIONERS | {Kind.SOLENOID}
+# Of a split range on one output: the current goes through each of them.
+_SERIES_DRIVES: Final = _POSITIONERS | {Kind.CONTROL_VALVE}
 _DRIVEN_VALVES: Final = frozenset({Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE})
 # Through whose signal a device lies that has none of its own.
 _LIES_IN: Final[Mapping[Kind, frozenset[Kind]]] = {
@@ -102,10 +104,13 @@ def wire(plant: Plant) -> tuple[tuple[Circuit, ...], tuple[Loop, ...]]:
         if len(members) > 1:
             hosts.update(_share(members, signals, rows))
         own.update(signals)
+    for each in live:
+        if not each.loop:
+            own[id(each)] = _signals(each, (), rows)
+    _put_together(rows.together, own, hosts)
     made: list[_Signal] = []
     for each in live:
-        signals_of = own[id(each)] if each.loop else _signals(each, (), rows)
-        made.extend(rows.assigned(each, signals_of))
+        made.extend(rows.assigned(each, own[id(each)]))
     circuits = _circuits(made, hosts, live, plant, rows)
     on_loop: dict[str, list[Circuit]] = defaultdict(list)
     for circuit in circuits:
@@ -139,12 +144,17 @@ class _LoopRows:
         self.by_device: dict[int, list[LoopRow]] = defaultdict(list)
         self.by_number: dict[str, list[LoopRow]] = defaultdict(list)
         self.count: dict[str, int] = defaultdict(int)
+        self.together: list[tuple[Installed, ...]] = []
+        self.place: dict[int, int] = {}
         self._used: set[int] = set()
+        self._plant = plant
         # By their contents, so that the order of rows decides nothing.
         for row in sorted(plant.loop_rows, key=_contents):
             if row.number:
                 self.count[loop_key(row.number)] += 1
             named = plant.by_tag(row.circuit) if row.circuit else ()
+            if not named and row.circuit:
+                named = self._several(row.circuit, plant)
             if not named and row.number:
                 # Pump P-101 has the number of the pressure loop P-101.
                 a_loop = loop_key(row.number) in loops
@@ -159,6 +169,29 @@ class _LoopRows:
                 if text and loop_key(text) in loops:
                     self.by_number[loop_key(text)].append(row)
                     break
+
+    def one_item(self, barrier: str | None) -> bool:
+        """Whether a barrier is named by its own tag, and so is one thing; a catalogue's code may stand for many."""
+        return bool(barrier) and bool(self._plant.by_tag(barrier or ""))
+
+    def _several(self, text: str, plant: Plant) -> tuple[Installed, ...]:
+        """Return the device that carries the signal of a row that names all its devices, from field to system.
+
+        The others are put on its circuit, in the order in which they are named.
+        """
+        parts = [part for part in _DEVICES.split(text[:_LONGEST_ROW]) if part.strip()]
+        if len(parts) < 2:
+            return ()
+        devices = [plant.by_tag(part.strip()) for part in parts]
+        if any(len(found) != 1 for found in devices):
+            return ()
+        in_order = tuple(found[0] for found in devices)
+        carrier = _carrier(in_order)
+        if carrier is None or len({id(each) for each in in_order}) < len(in_order):
+            return ()
+        self.together.append((carrier, *(each for each in in_order if each is not carrier)))
+        self.place.update((id(each), place) for place, each in enumerate(in_order))
+        return (carrier,)
 
     def assigned(self, each: Installed, signals: Iterable[Instrument]) -> list[_Signal]:
         """Return a device's signals with their rows, and its rows that no signal of the index answers to."""
@@ -197,6 +230,38 @@ class _LoopRows:
         row = next((row for row in fitting if id(row) not in self._used), fitting[0])
         self._used.add(id(row))
         return row
+
+
+_DEVICES: Final = re.compile(r"[,;\n|]| ?\+ | ?/ | ?& | ?-> ?| ?\u2192 ?")
+_LONGEST_ROW: Final = 300
+# What lies in another's signal where a row names both.
+_RIDES: Final = frozenset(
+    {Kind.ELEMENT, Kind.INDICATOR, Kind.CONTROL_VALVE, Kind.ON_OFF_VALVE, Kind.JUNCTION_BOX, Kind.BARRIER}
+    | {Kind.ISOLATOR, Kind.CARD, Kind.POWER_SUPPLY, Kind.SOFT_FUNCTION, Kind.PANEL}
+)
+
+
+def _carrier(devices: Sequence[Installed]) -> Installed | None:
+    """Return the device whose signal the others lie in; None where several could be."""
+    own = [each for each in devices if each.kind not in _RIDES]
+    if not own:
+        own = [each for each in devices if each.kind in _DRIVEN_VALVES or each.kind is Kind.ELEMENT]
+    if len(own) > 1 and all(each.kind in _SERIES_DRIVES for each in own):
+        return own[0]
+    return own[0] if len(own) == 1 else None
+
+
+def _put_together(
+    together: Iterable[tuple[Installed, ...]], own: dict[int, tuple[Instrument, ...]], hosts: dict[int, Installed]
+) -> None:
+    """Put on one circuit the devices that one row of the loop list names."""
+    for carrier, *others in together:
+        for each in others:
+            hosts[id(each)] = carrier
+            own[id(each)] = ()
+        hosts.pop(id(carrier), None)
+        if not own.get(id(carrier)):
+            own[id(carrier)] = (carrier.signals[0] if carrier.signals else carrier.record,)
 
 
 _ROW_FIELDS: Final = tuple(
@@ -361,7 +426,68 @@ def _share(
             shown = [one for one in members if one is not each and one.kind is not Kind.SOFT_FUNCTION]
             if any(_repeats(mine, signals[id(one)]) for one in shown):
                 signals[id(each)] = ()
+    _take_from_function(members, signals, rows)
+    _in_series_on_one_output(members, signals, hosts, rows)
     return hosts
+
+
+def _take_from_function(
+    members: Sequence[Installed], signals: dict[int, tuple[Instrument, ...]], rows: _LoopRows
+) -> None:
+    """Give a positioner without a channel the analogue output that stands on its controller's row."""
+    drives = [each for each in members if each.kind in _POSITIONERS and signals[id(each)]]
+    functions = [
+        each
+        for each in members
+        if each.kind is Kind.SOFT_FUNCTION
+        and id(each) not in rows.by_device
+        and [circuit_kind(row.io_type) for row in signals[id(each)]] == [ANALOGUE_OUTPUT]
+    ]
+    if len(drives) != 1 or len(functions) != 1 or id(drives[0]) in rows.by_device:
+        return
+    drive, function = drives[0], functions[0]
+    if not any(map(has_io, signals[id(drive)])):
+        (given,) = signals[id(function)]
+        own = drive.record
+        # The channel is the function's; what is wired to it is said by the row of the drive.
+        filled = {
+            field: getattr(own, field) if getattr(own, field) is not None else getattr(given, field)
+            for field in _OF_THE_WIRING
+        }
+        signals[id(drive)] = (replace(own, io_type=given.io_type, io_address=given.io_address, **filled),)
+        signals[id(function)] = ()
+
+
+_OF_THE_WIRING: Final = ("card", "barrier", "power_supply", "signal")
+
+
+def _in_series_on_one_output(
+    members: Sequence[Installed],
+    signals: dict[int, tuple[Instrument, ...]],
+    hosts: dict[int, Installed],
+    rows: _LoopRows,
+) -> None:
+    """Put the two valves of a split range that share an analogue output on one circuit, one behind the other."""
+    at: dict[str, list[Installed]] = defaultdict(list)
+    for each in members:
+        mine = signals[id(each)]
+        if each.kind in _SERIES_DRIVES and len(mine) == 1 and circuit_kind(mine[0].io_type) == ANALOGUE_OUTPUT:
+            address = _address(mine[0])
+            if address is not None:
+                at[address].append(each)
+    for sharing in at.values():
+        if len(sharing) != 2 or any(id(each) in rows.by_device for each in sharing):
+            continue
+        behind = {signals[id(each)][0].barrier or each.record.barrier for each in sharing}
+        if len(behind) > 1 or (None not in behind and not rows.one_item(*behind)):
+            # Each with a barrier of its own: a circuit in the field each, whatever joins them in the cabinet.
+            continue
+        first, second = sharing
+        signals[id(second)] = ()
+        hosts[id(second)] = first
+        for other, host in list(hosts.items()):
+            if host is second:
+                hosts[other] = first
 
 
 def _take_from_element(
@@ -440,7 +566,7 @@ def _circuits(
             several = per_loop[key] > 1 or rows.count.get(key, 0) > 1
             called[place] = _free(f"{number} {device.name}" if number and several else number or device.name, taken)
     return tuple(
-        _circuit(name, signal, riders.get(id(signal.device), ()), cables, barriers, plant)
+        _circuit(name, signal, riders.get(id(signal.device), ()), cables, barriers, rows.place, plant)
         for name, signal in zip(called, made, strict=True)
     )
 
@@ -469,6 +595,7 @@ def _circuit(
     riders: Sequence[Installed],
     cables: Mapping[str, Sequence[str]],
     barriers: dict[str, tuple[Installed, ...]],
+    placed: Mapping[int, int],
     plant: Plant,
 ) -> Circuit:
     device, given, row = signal
@@ -478,7 +605,6 @@ def _circuit(
     card = plant.named_type(card_named)
     supply_named = given.power_supply or record.power_supply
     supply = supply_of(row, given, supply_named, card=card, plant=plant)
-    receivers = receivers_of(row, given, record, card)
     run = cable_run(
         row,
         given,
@@ -497,7 +623,9 @@ def _circuit(
     named_barriers = _by_tag(barrier_named, barriers, plant) if barrier_named else ()
     if riders or named_barriers:
         others = [each for each in named_barriers if each is not device and each not in riders]
-        members = tuple(sorted((device, *riders, *others), key=_in_field_order))
+        members = tuple(sorted((device, *riders, *others), key=lambda each: _in_field_order(each, placed)))
+    across = [each for each in members if each is not device and each.kind is Kind.INDICATOR]
+    receivers = receivers_of(row, given, record, card=card, others=across)
     return Circuit(
         name=name,
         loop=(row.number if row else None) or device.loop,
@@ -528,8 +656,13 @@ def _circuit(
     )
 
 
-def _in_field_order(each: Installed) -> int:
-    return _FIELD_ORDER.get(each.kind, _WITH_DEVICE) if each.kind else _WITH_DEVICE
+def _in_field_order(each: Installed, placed: Mapping[int, int]) -> tuple[int, int]:
+    """Order from the field to the system: as a row of the loop list names them, else by their kinds."""
+    usual = _FIELD_ORDER.get(each.kind, _WITH_DEVICE) if each.kind else _WITH_DEVICE
+    place = placed.get(id(each))
+    if place is not None:
+        return _WITH_DEVICE, place
+    return usual, -1
 
 
 def _by_tag(text: str, known: dict[str, tuple[Installed, ...]], plant: Plant) -> tuple[Installed, ...]:

@@ -152,6 +152,17 @@ def test_what_the_receiver_comes_to(row: Row, loop: Row | None, expected: tuple[
     assert len(found.receivers) == ("receiver ohm" in row) + ("card" in row) + (loop is not None)
 
 
+def test_the_input_of_another_device_is_always_one_more() -> None:
+    def of(*ohms: tuple[float, str]) -> float | None:
+        found = in_parallel([Given(number=ohm, source=source) for ohm, source in ohms])
+        return None if found is None else round(found.number, 3)
+
+    assert of((250.0, "card"), (250.0, "device")) == 125.0
+    assert of((250.0, "loop row"), (250.0, "card"), (10000.0, "device")) == 243.902
+    assert of((250.0, "device")) == 250.0
+    assert of((250.0, "card"), (0.0, "device")) == 0.0
+
+
 def test_no_receiver_is_none() -> None:
     assert in_parallel([]) is None
     assert told(in_parallel([Given(number=0.0, source="row"), Given(number=1e6, source="card")])) == (0.0, "row")

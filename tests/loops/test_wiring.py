@@ -146,6 +146,128 @@ def test_devices_without_a_signal_of_their_own_lie_in_anothers(
     assert circuits(*rows) == expected
 
 
+@pytest.mark.parametrize(
+    ("rows", "expected"),
+    [
+        # Two valves of a split range on one output lie one behind the other: one address, one circuit.
+        (
+            (io("PV-1A", "AO", "A2", signal="4-20 mA"), io("PV-1B", "AO", "A2", signal="4-20 mA")),
+            ["P-1 AO: PV-1A PV-1B"],
+        ),
+        (
+            ("PV-1A", "PV-1B", *(
+                {**io(f"PY-1{x}", "AO", "A2", signal="4-20 mA"), "kind": "positioner"} for x in "AB")),
+            ["P-1 AO: PV-1A PV-1B PY-1A PY-1B"],
+        ),
+        # On an output each they are two; three on one are a mistake, and stay three.
+        (
+            (io("PV-1A", "AO", "A2", signal="4-20 mA"), io("PV-1B", "AO", "A3", signal="4-20 mA")),
+            ["P-1 PV-1A AO: PV-1A", "P-1 PV-1B AO: PV-1B"],
+        ),
+        (
+            tuple(io(f"PV-1{x}", "AO", "A2", signal="4-20 mA") for x in "ABC"),
+            ["P-1 PV-1A AO: PV-1A", "P-1 PV-1B AO: PV-1B", "P-1 PV-1C AO: PV-1C"],
+        ),
+        # Behind a barrier each they are a circuit each in the field; behind one that is named by its tag, one.
+        (
+            tuple(io(f"PV-1{x}", "AO", "A2", signal="4-20 mA", barrier="ISO-AO") for x in "AB"),
+            ["P-1 PV-1A AO: PV-1A", "P-1 PV-1B AO: PV-1B"],
+        ),
+        (
+            (*(io(f"PV-1{x}", "AO", "A2", signal="4-20 mA", barrier="PB-1") for x in "AB"),
+             {"tag": "PB-1", "kind": "isolator", "location": "cabinet"}),
+            ["P-1 AO: PV-1A PV-1B PB-1"],
+        ),
+        # Solenoids on one output are not put behind each other.
+        (
+            tuple({**io(f"XY-1{x}", "DO", "D2", signal="24 VDC"), "kind": "solenoid"} for x in "AB"),
+            ["X-1 XY-1A DO: XY-1A", "X-1 XY-1B DO: XY-1B"],
+        ),
+        # The controller's row has the output; the positioner is what it drives.
+        (
+            ({**io("FIC-1", "AO", "A1"), "location": "system"}, {"tag": "FY-1", "kind": "I/P converter"}, "FV-1"),
+            ["F-1 AO: FV-1 FY-1"],
+        ),
+        # An input on the controller's row is another signal; so is an output where the positioner has its own.
+        (
+            ({**io("FIC-1", "DO", "A1"), "location": "system"}, {"tag": "FY-1", "kind": "I/P converter"}),
+            ["F-1 FIC-1 DO: FIC-1", "F-1 FY-1 AO: FY-1"],
+        ),
+        # 2-, 3- and 4-wire inputs, a contact, a proximity switch, RTD and thermocouple: each by itself.
+        (tuple(ai(f"AT-1{x}", x, wires=str(n)) for x, n in zip("ABC", (2, 3, 4), strict=True)),
+         ["A-1 AT-1A AI: AT-1A", "A-1 AT-1B AI: AT-1B", "A-1 AT-1C AI: AT-1C"]),
+        ((io("LSH-1", "DI", "D1", signal="VFC"), io("ZSO-2", "DI", "D2", signal="NAMUR")),
+         ["L-1 DI: LSH-1", "Z-2 DI: ZSO-2"]),
+        ((io("TE-1", "RTD", "R1", signal="Pt100"), io("TE-2", "TC", "R2", signal="TC type K")),
+         ["T-1 RTD: TE-1", "T-2 TC: TE-2"]),
+    ],
+)  # fmt: skip
+def test_outputs_and_inputs_of_all_sorts(rows: tuple[str | Row, ...], expected: list[str]) -> None:
+    assert circuits(*rows) == expected
+
+
+def test_a_controllers_channel_brings_its_card_to_the_positioner() -> None:
+    function = {**io("FIC-1", "AO", "A1"), "location": "system", "card": "AO8"}
+    drive = {"tag": "FY-1", "kind": "I/P converter", "barrier": "ISO", "signal": "4-20 mA"}
+    (found,) = plant_of(function, drive).circuits
+    row = found.signal_row
+    assert (row.tag, row.io_address, row.card, row.barrier, row.signal) == ("FY-1", "A1", "AO8", "ISO", "4-20 mA")
+
+
+@pytest.mark.parametrize(
+    ("cell", "expected"),
+    [
+        # From field to system, as the cell names them.
+        ("PT-1, PI-1, PI-2", ["100 AI: PT-1 PI-1 PI-2"]),
+        ("PT-1 + PI-2 + PI-1", ["100 AI: PT-1 PI-2 PI-1"]),
+        ("PI-1; PT-1", ["100 AI: PI-1 PT-1"]),
+        ("PT-1 / PB-1 / PI-1", ["100 AI: PT-1 PB-1 PI-1"]),
+        # A name that nothing has, one device alone, or two that carry a signal: no row of one circuit.
+        ("PT-1, PI-9", ["P-1 AI: PT-1 PI-1"]),
+        ("PT-1", ["100 AI: PT-1 PI-1"]),
+    ],
+)
+def test_a_row_of_the_loop_list_may_name_all_devices_of_its_circuit(cell: str, expected: list[str]) -> None:
+    shown = [{"tag": tag, "kind": "indicator", "location": "panel", "signal": "4-20 mA"} for tag in ("PI-1", "PI-2")]
+    barrier = {"tag": "PB-1", "kind": "barrier", "location": "cabinet"}
+    loops = [{"number": "100", "circuit or tag": cell, "kind": "AI", "supply V nominal": 24}]
+    assert circuits(ai("PT-1", "A1"), *shown, barrier, loops=loops) == expected
+
+
+def test_what_reads_volts_lies_across_the_range_resistor() -> None:
+    recorder = {"tag": "PI-1", "kind": "indicator", "location": "panel", "signal": "1-5 V", "device type": "R10"}
+    types = [
+        {"code": "R10", "kind": "indicator", "input ohm": 10000},
+        {"code": "AI8", "kind": "card", "input ohm": 250},
+    ]
+    (found,) = plant_of(ai("PT-1", "A1", card="AI8"), recorder, types=types).circuits
+    assert [(each.number, each.source, each.item) for each in found.receivers] == [
+        (250.0, "card", ""), (10000.0, "device", "PI-1")
+    ]  # fmt: skip
+    assert found.receiver_ohm is not None
+    assert found.receiver_ohm.number == pytest.approx(243.902, abs=5e-4)
+
+
+def test_the_two_sides_of_a_barrier() -> None:
+    types = [
+        {"code": "ISO", "kind": "isolator"},
+        {"code": "ZB", "kind": "barrier", "zener or isolator": "zener", "volts available at 20 mA": 15},
+        {"code": "REP", "kind": "barrier", "volts available at 20 mA": 15},
+    ]
+    for named, isolates in (("ISO", True), ("ZB", False), ("REP", True)):
+        (found,) = plant_of(ai("PT-1", "A1", barrier=named), types=types).circuits
+        assert ((found.isolator is not None), (found.zener is not None)) == (isolates, not isolates)
+    (found,) = plant_of(ai("PT-1", "A1", barrier="LOST"), types=types).circuits
+    assert (found.isolator, found.zener, found.barrier_named) == (None, None, "LOST")
+
+
+def test_what_an_output_drives() -> None:
+    (found,) = plant_of(io("FV-1", "AO", "A1", signal="4-20 mA"), {"tag": "FY-1", "kind": "positioner"}).circuits
+    assert (found.device.name, found.driven.name) == ("FV-1", "FY-1")
+    (found,) = plant_of(ai("PT-1", "A1")).circuits
+    assert found.driven is found.device
+
+
 def test_where_all_letters_share_their_numbers_an_element_stays_with_its_own_variable() -> None:
     rows = ("TE-101", ai("FT-101", "A1"), "AE-102", ai("AT-102", "A2"))
     assert circuits(*rows, plant={"numbering": "serial"}) == [
@@ -222,7 +344,7 @@ def test_rows_with_one_number_are_taken_in_the_order_of_the_tags() -> None:
 
 
 def test_no_order_of_rows_decides_which_row_is_whose() -> None:
-    rows = [ai("PT-1A", "A1"), ai("PT-1B", "A2"), io("FV-2", "AO", "A3"), ai("FT-2", "A4"), "XV-3"]
+    rows: list[str | Row] = [ai("PT-1A", "A1"), ai("PT-1B", "A2"), io("FV-2", "AO", "A3"), ai("FT-2", "A4"), "XV-3"]
     loops = [
         {"number": "P-1", "kind": "AI", "cable length": 20},
         {"number": "P-1", "kind": "AI", "cable length": 10},
