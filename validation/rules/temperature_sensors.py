@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from functools import lru_cache
-from typing import Final, NamedTuple
+from typing import Final
 
 from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.measurement import Measurement, amount, at
+from instruments.named_sensor import NamedSensor, named_sensor
 from instruments.quantity import format_number
-from instruments.sensor import SensorLimits, SensorType, read_sensor_type, sensor_limits, sensors_for_range
+from instruments.sensor import sensors_for_range
 from instruments.span import beyond_limit
 from loops.plant import Plant
 from validation.bodies import body_check, measured, type_fixes
@@ -18,21 +18,6 @@ from validation.mending import with_fixes
 from validation.rule import Subject, rule
 
 _SENSES_TEMPERATURE: Final = frozenset({None, Kind.ELEMENT, Kind.TRANSMITTER})
-
-
-class _Named(NamedTuple):
-    """The sensor that a list names, what it can measure, and where it says so."""
-
-    sensor: SensorType
-    limits: SensorLimits
-    field: str
-    owner: Installed
-
-
-@lru_cache(maxsize=4096)
-def _read(text: str) -> tuple[SensorType, SensorLimits] | None:
-    sensor, limits = read_sensor_type(text), sensor_limits(text)
-    return None if sensor is None or limits is None else (sensor, limits)
 
 
 def _with_sensor(installed: Installed, plant: Plant) -> bool:
@@ -48,39 +33,19 @@ def _asks_for_a_sensor(measurement: Measurement) -> bool:
         return measurement.variable == "T" and measurement.asked
     if scale.unit is None:
         return measurement.variable == "T"
-    return scale.unit.kind == "temperature" and (measurement.variable == "T" or _own_sensor(installed) is not None)
+    return scale.unit.kind == "temperature" and (measurement.variable == "T" or named_sensor(installed) is not None)
 
 
-def _own_sensor(installed: Installed) -> _Named | None:
-    """Return the sensor that the type names, else the words of the row or of the type."""
-    record, device = installed.record, installed.type
-    stated = device.sensor_type if device is not None else None
-    if stated and _read(stated) is None and any(sign.isdigit() for sign in stated):
-        return None  # Ni100, Cu10: named well enough, and no standard function is held for it
-    texts = (
-        ("type.sensor_type", stated),
-        ("signal", record.signal),
-        ("kind", record.kind_written),
-        ("type.signal", device.signal if device is not None else None),
-        ("type.description", device.description if device is not None else None),
-    )
-    for field, text in texts:
-        found = _read(text) if text else None
-        if found is not None:
-            return _Named(*found, field, installed)
-    return None
-
-
-def _sensor_of(installed: Installed, plant: Plant) -> _Named | None:
+def _sensor_of(installed: Installed, plant: Plant) -> NamedSensor | None:
     """Return the sensor of an instrument; of a transmitter that names none, its element's in the loop."""
-    own = _own_sensor(installed)
+    own = named_sensor(installed)
     if own is not None or installed.kind is Kind.ELEMENT:
         return own
     if installed.type is not None and installed.type.sensor_type:
         return None
     loop = plant.loop_of(installed)
     elements = (each for each in (loop.members if loop is not None else ()) if each.kind is Kind.ELEMENT)
-    named = (_own_sensor(each) for each in elements if each is not installed)
+    named = (named_sensor(each) for each in elements if each is not installed)
     return next((each for each in named if each is not None), None)
 
 
