@@ -7,6 +7,7 @@ numbers are from memory of the named editions.
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from types import MappingProxyType
@@ -17,12 +18,12 @@ from instruments.area import (
     GAS_ZONES,
     Area,
     AreaSide,
-    named_gases,
     permitted_dust_surface_c,
     read_classification,
 )
 from instruments.certificate import Certificate
 from instruments.epl import EPLS_IN_ZONE
+from instruments.gas import INERT, gases_in, iec_group_of, named_gases, nec_group_of
 from instruments.marking import Marking
 from instruments.marking_entry import (
     T_CLASS_C,
@@ -323,6 +324,21 @@ def dust_group(entry: MarkingEntry, area_group: str | None) -> Acceptance:
     return _refused(f"{entry.group_text} for dust {area_group}, which accepts {', '.join(sorted(accepts))}")
 
 
+_LETTERS: Final = re.compile(r"[A-G](?:[\s,&/]*[A-G])*")
+
+
+def group_letters(group: str | Iterable[str] | None) -> tuple[str, ...]:
+    """Return the letters of a division's group, ``C,D``; none of a text that is no such group, ``IIC``.
+
+    >>> group_letters("C,D"), group_letters("IIC"), group_letters(None)
+    (('C', 'D'), (), ())
+    """
+    text = ",".join(group) if group is not None and not isinstance(group, str) else group or ""
+    if not _LETTERS.fullmatch(text.strip()):
+        return ()
+    return tuple(dict.fromkeys(letter for letter in text if letter in "ABCDEFG"))
+
+
 def division_group(marked: Iterable[str], needed: str | Iterable[str] | None) -> Acceptance:
     """Say whether a division mark has the group letters that an area needs (NEC 500.6, 500.8(C)).
 
@@ -340,7 +356,7 @@ def division_group(marked: Iterable[str], needed: str | Iterable[str] | None) ->
     ('refused', 'accepted')
     """
     letters = sorted(set(marked))
-    wanted = sorted({letter for letter in needed or "" if letter in "ABCDEFG"})
+    wanted = sorted(group_letters(needed))
     if not wanted:
         return _unknown("the area has no group letter", "group")
     if not letters:
@@ -704,23 +720,48 @@ def translated_group(
     ['accepted', 'accepted', 'review']
     """
     asked = side or _side_asked(entry, area)
-    named = named_gases(gas or area.gas)
-    alone = named[0] if len(named) == 1 else ""
+    said = gases_in(gas or area.gas)
+    alone = said.names[0] if len(said.names) == 1 and not said.vague else ""
+    # What it is when all are known and no amount of one is left to be weighed.
+    names = [] if said.vague or said.amounts else [name for name in said.names if name not in INERT]
     if entry.is_division:
         if asked == "dust":
             return _letters_for_dust(entry, area.dust_group)
-        return _letters_for_gas(entry, area.gas_group, nec_group or GAS_NEC_GROUP.get(alone), alone)
+        known = nec_group or GAS_NEC_GROUP.get(alone)
+        plain = _letters_for_gas(entry, area.gas_group, known, alone)
+        remembered = None if known or not names else nec_group_of(names)
+        if remembered is None:
+            return plain
+        return _with_memory(plain, _letters_for_gas(entry, area.gas_group, remembered, alone), names, remembered)
     if entry.group_contradicts_epl:
         return _unknown(f"group {entry.group_text} contradicts EPL {entry.epl_text}", "group of the marking")
-    letters = (area.dust_group if asked == "dust" else area.gas_group) or ""
     if asked == "dust":
-        wanted = [x for x in letters if x in "EFG"] or (["III"] if "III" in area.classes else [])
+        wanted = [x for x in group_letters(area.dust_group) if x in "EFG"]
+        wanted = wanted or (["III"] if "III" in area.classes else [])
         return _worst([_dust_for_letter(entry, x) for x in wanted]) if wanted else _no_letter()
-    known = iec_group or GAS_IEC_GROUP.get(alone)
-    wanted = [letter for letter in letters if letter in "ABCD"]
+    wanted = [letter for letter in group_letters(area.gas_group) if letter in "ABCD"]
     if not wanted:
         return _no_letter()
-    return _worst([_gas_for_letter(entry, letter, known, gas or area.gas) for letter in wanted])
+
+    def judged(group: str | None) -> Acceptance:
+        return _worst([_gas_for_letter(entry, letter, group, gas or area.gas) for letter in wanted])
+
+    known = iec_group or GAS_IEC_GROUP.get(alone)
+    plain = judged(known)
+    remembered = None if known or not names else iec_group_of(names)
+    return plain if remembered is None else _with_memory(plain, judged(remembered), names, remembered)
+
+
+def _with_memory(plain: Acceptance, named: Acceptance, names: list[str], group: str) -> Acceptance:
+    """Return what a named gas's group makes of a translation: it may refuse or settle a review, never overrule."""
+    source = f"{' and '.join(names)}: group {group}, from memory"
+    if plain.outcome == "unknown" or named.outcome == plain.outcome:
+        return plain
+    if named.outcome == "accepted" and plain.outcome == "review":
+        return _accepted(named.reason, source)
+    if named.outcome == "accepted":
+        return _review(f"{plain.reason}; {source}")
+    return Acceptance(outcome=named.outcome, reason=f"{named.reason} ({source})", missing=named.missing)
 
 
 def _no_letter() -> Acceptance:

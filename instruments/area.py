@@ -10,6 +10,7 @@ from dataclasses import dataclass, field, replace
 from functools import lru_cache
 from typing import Any, Final, Literal
 
+from instruments.gas import GAS_NAMES, named_gases
 from instruments.marking_entry import CLASS_LETTERS, T_CODE_C
 from instruments.marking_grammar import (
     DIVISION,
@@ -243,88 +244,6 @@ def permitted_dust_surface_c(area: Area) -> PermittedSurface:
     )
 
 
-# Gases ---------------------------------------------------------------------------------------------------
-
-_GAS_WORDS: Final[dict[str, tuple[str, ...]]] = {
-    "hydrogen": (
-        "h2", "wasserstoff", "hydrogene", "hydrogène", "hidrogeno", "hidrógeno", "idrogeno", "waterstof",
-        "1333-74-0",
-    ),
-    "acetylene": (
-        "c2h2", "acetylen", "ethyne", "azetylen", "acetileno", "acetilene", "acétylène", "74-86-2",
-    ),
-    "carbon disulfide": (
-        "cs2", "carbon disulphide", "carbon bisulphide", "carbon bisulfide", "schwefelkohlenstoff",
-        "kohlenstoffdisulfid", "sulfure de carbone", "75-15-0",
-    ),
-    "methane": ("ch4", "methan", "méthane", "metano", "74-82-8"),
-    "natural gas": ("erdgas", "fuel gas", "lng", "ng"),
-    "ethane": ("c2h6", "ethan", "74-84-0"),
-    "propane": ("c3h8", "propan", "propano", "74-98-6"),
-    "n-butane": ("butane", "c4h10", "butan", "106-97-8"),
-    "lpg": ("liquefied petroleum gas", "flüssiggas", "fluessiggas"),
-    "ethylene": ("c2h4", "ethene", "ethylen", "ethen", "74-85-1"),
-    "propylene": ("c3h6", "propene", "propylen", "propen", "115-07-1"),
-    "ammonia": ("nh3", "ammoniak", "ammoniac", "7664-41-7"),
-    "hydrogen sulfide": ("h2s", "hydrogen sulphide", "schwefelwasserstoff", "7783-06-4"),
-    "hydrogen cyanide": ("hcn", "blausäure", "74-90-8"),
-    "carbon monoxide": ("co", "kohlenmonoxid", "630-08-0"),
-    "methanol": ("ch3oh", "methyl alcohol", "67-56-1"),
-    "ethanol": ("c2h5oh", "ethyl alcohol", "64-17-5"),
-    "ethylene oxide": ("ethylenoxid", "75-21-8"),
-    "propylene oxide": ("propylenoxid", "75-56-9"),
-    "diethyl ether": ("ether", "diethylether", "60-29-7"),
-    "acetone": ("aceton", "67-64-1"),
-    "toluene": ("toluol", "108-88-3"),
-    "benzene": ("benzol", "71-43-2"),
-    "n-hexane": ("hexane", "hexan", "110-54-3"),
-    "n-pentane": ("pentane", "pentan", "109-66-0"),
-    "n-heptane": ("heptane", "heptan", "142-82-5"),
-    "hydrocarbons": ("hydrocarbon", "kohlenwasserstoffe", "hc"),
-    "petrol": ("gasoline", "benzin", "naphtha"),
-}  # fmt: skip
-GAS_NAMES: Final = {word: name for name, words in _GAS_WORDS.items() for word in (name, *words)}
-OTHER_GASES: Final = "other gases"
-_GASES_APART: Final = re.compile(
-    r"[,;/+&()]|\b(?:and|und|et|with|mit|in|mixed|mixture|gemisch|mix|or|oder)\b", re.IGNORECASE
-)
-_NO_GAS: Final = re.compile(r"\b(?:gas|vapou?rs?|pure|dry|wet|rein|of|the)\b", re.IGNORECASE)
-_MIXTURE: Final = re.compile(r"\b(?:mixed|mixture|gemisch|mix|others?|andere)\b", re.IGNORECASE)
-
-
-@lru_cache(maxsize=1024)
-def named_gases(text: str | None) -> tuple[str, ...]:
-    """Return the gases that a text names, in one spelling each; unknown ones as written, in lower case.
-
-    A mixture with things unnamed ends in ``other gases``.
-
-    >>> named_gases("Wasserstoff"), named_gases("H2 / CH4"), named_gases("H2S")
-    (('hydrogen',), ('hydrogen', 'methane'), ('hydrogen sulfide',))
-    >>> named_gases("hydrogen rich gas")
-    ('hydrogen', 'other gases')
-    """
-    if not text or len(text) > MAX_LENGTH:
-        return ()
-    plain = normalised(text)[0].casefold()
-    found: list[str] = []
-    for piece in _GASES_APART.split(plain):
-        whole = " ".join(piece.split())
-        bare = " ".join(_NO_GAS.sub(" ", piece).split())
-        known = GAS_NAMES.get(whole) or GAS_NAMES.get(bare)
-        if known:
-            found.append(known)
-        elif bare:
-            inside = [GAS_NAMES[word] for word in re.split(r"[\s-]+", bare) if word in GAS_NAMES]
-            found += [*inside, OTHER_GASES] if inside else [] if _MIXTURE.search(bare) else [bare]
-    if _MIXTURE.search(plain):
-        found.append(OTHER_GASES)
-    once = list(dict.fromkeys(found))
-    if OTHER_GASES in once:
-        once.remove(OTHER_GASES)
-        once.append(OTHER_GASES)
-    return tuple(once)
-
-
 # Reading -------------------------------------------------------------------------------------------------
 
 _UNCLASSIFIED_PHRASES: Final = frozenset(
@@ -375,9 +294,18 @@ FILLER: Final = Token(
     r"|t(?:emp(?:erature)?|emperatur)?[\s.-]*(?:class|klasse|cl)|tc|tk|temp|class(?=\s*T\d)|max(?:imum)?)(?![A-Za-z0-9])\.?",
     any_case=True,
 )
+# Abbreviations that a classification cell holds for no other thing.
+_SHORT_GASES: Final = frozenset({"co", "ng", "hc", "lng", "lpg", "hcn"})
+
+
+def _stands_by_itself(word: str) -> bool:
+    """Whether a gas's name is taken for one in a classification cell: a short word may be a unit's code."""
+    return len(word) > 3 or word in _SHORT_GASES or (len(word) > 1 and not word.isalpha())
+
+
 GAS_NAME: Final = Token(
     "("
-    + "|".join(re.escape(word) for word in sorted(GAS_NAMES, key=len, reverse=True) if len(word) > 1)
+    + "|".join(re.escape(word) for word in sorted(GAS_NAMES, key=len, reverse=True) if _stands_by_itself(word))
     + r")(?![A-Za-z0-9])",
     any_case=True,
 )
@@ -427,7 +355,8 @@ def _take_element(scanner: Scanner, draft: _Draft, *, letters_alone: bool = Fals
 
 
 def _take_zone(scanner: Scanner, draft: _Draft) -> bool:
-    bare = ZONE_BARE if draft.empty and not draft.t_classes else None
+    # A number behind a gas may be that of a unit: CO 1.
+    bare = ZONE_BARE if draft.empty and not draft.t_classes and not draft.gases else None
     match = scanner.take(ZONE) or (scanner.take(bare) if bare else None)
     if match is None:
         return False

@@ -265,6 +265,11 @@ def test_dust_group(text: str, area_group: str | None, outcome: str) -> None:
         ("D", "", "unknown"),
         ("D", None, "unknown"),
         ("D", "?", "unknown"),
+        # a zone's group has no letters of a division in it
+        ("C", "IIC", "unknown"),
+        ("AB", "IIA, IIB", "unknown"),
+        ("CD", "C & D", "accepted"),
+        ("CD", "CD", "accepted"),
     ],
 )
 def test_division_groups_are_no_ladder(marked: str, needed: str | None, outcome: str) -> None:
@@ -596,6 +601,37 @@ def test_a_gas_between_the_systems_boundaries_is_refused_where_its_groups_are_kn
     zone = place("Zone 1 IIB T2")
     assert translated_group(mark("Class I Div 1 Gr C"), zone, gas="ethanol", nec_group="D").outcome == "refused"
     assert translated_group(mark("Class I Div 1 Gr D"), zone, gas="ethanol", nec_group="D").outcome == "accepted"
+
+
+def in_division(letter: str, gas: str | None = None) -> Area:
+    return Area(system="division", class_="I", division="2", gas_group=letter, gas=gas)
+
+
+@pytest.mark.parametrize(
+    ("text", "area", "outcome", "assumed"),
+    [
+        # a named gas whose group is held refuses, or settles what was left to a person
+        ("AEx db IIA T2 Gb", in_division("D", "Ethanol"), "refused", ""),
+        ("AEx db IIA T2 Gb", in_division("D", "Acetone"), "accepted",
+         "acetone: group IIA, from memory"),
+        ("AEx db IIA T2 Gb", in_division("D", "Acetone, MEK"), "refused", ""),
+        ("AEx db IIA T2 Gb", in_division("D", "Acetone, Solvent XY"), "review", ""),
+        ("AEx db IIA T2 Gb", in_division("D", "acetone mixture"), "review", ""),
+        ("AEx db IIA T2 Gb", in_division("D", "biogas"), "review", ""),
+        ("AEx db IIA T2 Gb", in_division("D"), "review", ""),
+        ("AEx db IIB T2 Gb", in_division("C", "Diethyl ether"), "accepted",
+         "diethyl ether: group IIB, from memory"),
+        # it never overrules what the zone's own group refuses
+        ("Class I Div 1 Gr D", Area(system="zone", zone="1", gas_group="IIB", gas="ethanol"), "review", ""),
+        ("Class I Div 1 Gr C", Area(system="zone", zone="1", gas_group="IIB", gas="ethanol"), "refused", ""),
+        # a group of the other system is none
+        ("AEx db IIC T2 Gb", Area(system="division", class_="I", division="2", gas_group="IIC"), "unknown", ""),
+        ("AEx tb IIIC T85°C Db", Area(system="division", class_="II", division="2", dust_group="IIIC"), "unknown", ""),
+    ],
+)  # fmt: skip
+def test_what_a_named_gas_makes_of_a_translation(text: str, area: Area, outcome: str, assumed: str) -> None:
+    found = translated_group(mark(text), area)
+    assert (found.outcome, "; ".join(found.assumed)) == (outcome, assumed)
 
 
 # Certificates
