@@ -24,11 +24,11 @@ from loops.circuit import (
     Circuit,
     Given,
 )
-from loops.plant import Plant, name_key
+from loops.plant import Plant
 from loops.power import VoltageBudget
-from loops.record import Termination
 from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, signal_of
 from loops.sheet.pack import LoopOnPaper, area_title, filed_under
+from loops.sheet.path import Path, path_of, terminations_of
 
 NOT_APPLICABLE: Final = "\u2013"
 """Printed where this kind of device has no such value; None stands for one that nobody gave."""
@@ -135,13 +135,17 @@ class Power:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class CircuitContent:
-    """One circuit: its wiring as given, its terminations, its power and its check table."""
+    """One circuit: its path with what its device's area is, its wiring as given, its terminations, its power and
+    its check table.
+    """
 
     name: str
     kind: str | None
     device: str
     service: str | None
     fields: tuple[Field, ...]
+    path: Path | None = None
+    classification: str | None = None
     conductors: tuple[Conductor, ...] = ()
     power: Power | None = None
     check: CheckTable | None = None
@@ -187,7 +191,7 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
     """
     members = loop.members
     service = loop_service(loop)
-    circuits = tuple(_circuit(circuit, plant, service) for circuit in loop.circuits)
+    circuits = tuple(_circuit(circuit, plant, service, members) for circuit in loop.circuits)
     several_areas = len({filed_under(each) for each in members if _in_field(each)}) > 1
     settings = tuple(_setting_lines(loop, plant))
     return SheetContent(
@@ -451,7 +455,7 @@ def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValu
 # Circuits
 
 
-def _circuit(circuit: Circuit, plant: Plant, shown_above: str | None) -> CircuitContent:
+def _circuit(circuit: Circuit, plant: Plant, shown_above: str | None, members: Sequence[Installed]) -> CircuitContent:
     service = circuit.device.record.service
     if circuit.signal_row.service and circuit.signal_row is not circuit.device.record:
         service = circuit.signal_row.service
@@ -461,6 +465,8 @@ def _circuit(circuit: Circuit, plant: Plant, shown_above: str | None) -> Circuit
         device=circuit.device.name,
         service=service if service != shown_above else None,
         fields=tuple(_fields(circuit)),
+        path=path_of(circuit, plant, members=members),
+        classification=_classification(circuit.device),
         conductors=_conductors(circuit, plant),
         power=power_of(circuit, plant),
         check=check_table(circuit, plant),
@@ -557,7 +563,6 @@ def _signal_text(circuit: Circuit) -> str | None:
 
 
 def _conductors(circuit: Circuit, plant: Plant) -> tuple[Conductor, ...]:
-    by_circuit = plant.once("loop sheets' terminations", _terminations)
     return tuple(
         Conductor(
             from_item=row.from_item,
@@ -571,36 +576,8 @@ def _conductors(circuit: Circuit, plant: Plant) -> tuple[Conductor, ...]:
             wire_mark=row.wire_mark,
             screen=row.screen_earthed_at,
         )
-        for row in by_circuit.get(id(circuit), ())
+        for row in terminations_of(circuit, plant)
     )
-
-
-def _terminations(plant: Plant) -> dict[int, list[Termination]]:
-    """Return the terminations of each circuit: by the circuit's name, by a tag on it, or by a loop of one circuit.
-
-    A device with several circuits shows its terminations with the first: no row says which is meant.
-    """
-    by_name: dict[str, Circuit] = {}
-    by_loop: dict[str, list[Circuit]] = defaultdict(list)
-    for circuit in plant.circuits:
-        by_name.setdefault(name_key(circuit.name), circuit)
-        by_loop[name_key(circuit.loop)].append(circuit)
-    found: dict[int, list[Termination]] = defaultdict(list)
-    for row in plant.terminations:
-        if not row.circuit:
-            continue
-        named = by_name.get(name_key(row.circuit))
-        if named is None:
-            devices = plant.by_tag(row.circuit)
-            circuits = plant.circuits_of(devices[0]) if devices else ()
-            own = [circuit for circuit in circuits if circuit.device is devices[0]]
-            named = next(iter(own or circuits), None)
-        if named is None:
-            of_loop = by_loop.get(name_key(row.circuit), [])
-            named = of_loop[0] if len(of_loop) == 1 else None
-        if named is not None:
-            found[id(named)].append(row)
-    return found
 
 
 # --------------------------------------------------------------------------------------------------------

@@ -22,6 +22,7 @@ from loops.sheet.shapes import (
     Style,
     Text,
     Use,
+    lowered,
     share,
     style,
 )
@@ -478,6 +479,17 @@ class Flow:
         """Move down by what was drawn."""
         self.y += height
         self.fresh = False
+
+    def back(self, height: float) -> None:
+        """Take a gap back, so that what comes next touches what was drawn; nothing at the top of a page."""
+        if not self.fresh:
+            self.y -= height
+
+    def draw(self, height: float, shapes: Iterable[Shape]) -> None:
+        """Draw shapes made from 0 mm downwards, whole, on this page or the next."""
+        self.need(height)
+        self.page.extend(lowered(shape, self.y) for shape in shapes)
+        self.took(height)
 
     def add(self, made: SetTable, *, together_mm: float = 60.0) -> None:
         """Draw a table; one of at most `together_mm` is not parted where a page holds it."""

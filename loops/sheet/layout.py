@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from functools import lru_cache
 from typing import Final
@@ -14,13 +15,16 @@ from loops.sheet.content import (
     SETTINGS,
     CircuitContent,
     DeviceLine,
+    Field,
     Power,
     SettingLine,
     SettingValue,
     SheetContent,
 )
+from loops.sheet.drawing import bands_of
 from loops.sheet.flow import (
     BODY,
+    GAP_MM,
     HEAD,
     LABEL,
     NOTHING,
@@ -362,13 +366,32 @@ def _fixed(value: float, places: int) -> str:
     return text[1:] if text.startswith("-") and not text.strip("-0.") else text
 
 
-def _grid(circuit: CircuitContent, tight: bool) -> SetTable:
+_DRAWN: Final = frozenset(
+    {"I/O address", "Card", "Barrier or isolator", "Junction box", "Terminals", "Cable", "Cable type", "Pair"}
+)
+"""What the drawing shows; what does not stand there in full stands in the table too."""
+_PARTS: Final = re.compile(r"[\s,;:]+")
+
+
+def _words_of(shapes: Iterable[Shape]) -> Iterable[str]:
+    for shape in shapes:
+        if isinstance(shape, Text):
+            yield from _PARTS.split(shape.text)
+
+
+def _is_drawn(field: Field, drawn: frozenset[str]) -> bool:
+    if field.label not in _DRAWN:
+        return False
+    return field.value is None or all(word in drawn for word in _PARTS.split(printable(field.value)) if word)
+
+
+def _grid(circuit: CircuitContent, tight: bool, *, drawn: frozenset[str]) -> SetTable:
     parts = [f"Circuit {circuit.name}", circuit.kind or "kind not given"]
     if circuit.device not in circuit.name:
         parts.append(circuit.device)
     if circuit.service:
         parts.append(circuit.service)
-    fields = circuit.fields
+    fields = [field for field in circuit.fields if not (drawn and _is_drawn(field, drawn))]
     rows: list[list[Cell]] = []
     labels: list[str] = []
     for start in range(0, len(fields), len(_GRID)):
@@ -595,7 +618,19 @@ def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
 
 
 def _circuit(circuit: CircuitContent, flow: Flow, tight: bool) -> None:
-    flow.add(_grid(circuit, tight))
+    bands = (
+        bands_of(circuit.path, left=LEFT, width=WIDTH, classification=circuit.classification) if circuit.path else []
+    )
+    grid = _grid(circuit, tight, drawn=frozenset(word for band in bands for word in _words_of(band.shapes)))
+    if bands:
+        flow.need(grid.height + GAP_MM + bands[0].height)
+    flow.add(grid)
+    for number, band in enumerate(bands):
+        if number == 0:
+            flow.back(GAP_MM)
+        flow.draw(band.height, band.shapes)
+    if bands:
+        flow.skip(GAP_MM)
     if circuit.conductors:
         flow.add(_conductors(circuit, tight), together_mm=75.0)
     power = _power(circuit.power, tight) if circuit.power is not None else None

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import zlib
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from functools import cache
@@ -18,7 +19,7 @@ from loops.sheet.content import sheet_content, source_of
 from loops.sheet.index import TITLE, entries_of, lay_index, outline_of
 from loops.sheet.layout import INDEX, PAGE_HEIGHT, PAGE_WIDTH, sheet_pages
 from loops.sheet.pack import sheets_of
-from loops.sheet.shapes import BLACK, Box, Line, Link, Page, Shape, Style, Text, Use, group
+from loops.sheet.shapes import BLACK, Box, Circle, Line, Link, Page, Shape, Style, Text, Use, group
 
 __all__ = ["write_sheets"]
 
@@ -307,6 +308,12 @@ class _Drawing:
                     fills.append(f"{fill:g} g {rectangle} f")
                 if weight_mm:
                     strokes.setdefault((weight_mm, BLACK, False), []).append(rectangle)
+            elif isinstance(shape, Circle):
+                ring = _ring(shape.x * _POINTS, height - shape.y * _POINTS, shape.radius * _POINTS)
+                if shape.fill is not None:
+                    fills.append(f"{shape.fill:g} g {ring} f")
+                if shape.weight_mm:
+                    strokes.setdefault((shape.weight_mm, BLACK, False), []).append(ring)
             elif isinstance(shape, Use):
                 if letters:
                     body.append("ET")
@@ -344,6 +351,22 @@ class _Drawing:
         first = self._names[look.bold]
         shown = " ".join(f"/{name} {look.size_pt:g} Tf {code}" for name, code in known)
         return f"{shown} /{first} {look.size_pt:g} Tf"
+
+
+_HANDLE: Final = 4.0 / 3.0 * (math.sqrt(2.0) - 1.0)
+"""Length of a handle by which a curve follows a quarter of a circle of radius 1."""
+
+
+def _ring(x: float, y: float, radius: float) -> str:
+    """Return the operators of a circle's path: four curves, each a quarter."""
+    h = radius * _HANDLE
+    return (
+        f"{x + radius:.2f} {y:.2f} m "
+        f"{x + radius:.2f} {y + h:.2f} {x + h:.2f} {y + radius:.2f} {x:.2f} {y + radius:.2f} c "
+        f"{x - h:.2f} {y + radius:.2f} {x - radius:.2f} {y + h:.2f} {x - radius:.2f} {y:.2f} c "
+        f"{x - radius:.2f} {y - h:.2f} {x - h:.2f} {y - radius:.2f} {x:.2f} {y - radius:.2f} c "
+        f"{x + h:.2f} {y - radius:.2f} {x + radius:.2f} {y - h:.2f} {x + radius:.2f} {y:.2f} c h"
+    )
 
 
 @cache

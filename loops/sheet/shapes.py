@@ -1,4 +1,4 @@
-"""What a page is made of: texts, lines, boxes, links and groups, in millimetres from its upper left corner."""
+"""What a page is made of: texts, lines, boxes, circles, links and groups, in millimetres from its upper left corner."""
 
 from __future__ import annotations
 
@@ -88,6 +88,16 @@ class Box(NamedTuple):
     fill: float | None = None
 
 
+class Circle(NamedTuple):
+    """A circle, with an outline, a filling, or both; a weight of 0 is no outline."""
+
+    x: float
+    y: float
+    radius: float
+    weight_mm: float = THIN_MM
+    fill: float | None = None
+
+
 class Use(NamedTuple):
     """A group of shapes that many pages share, `share`d under a name, drawn `y` lower than it was made."""
 
@@ -102,7 +112,7 @@ class Link(NamedTuple):
     target: str
 
 
-Shape = Text | Line | Box | Use | Link
+Shape = Text | Line | Box | Circle | Use | Link
 
 
 class Page(NamedTuple):
@@ -155,7 +165,7 @@ def lowered(shape: Shape, by_mm: float) -> Shape:
         return shape._replace(y0=shape.y0 + by_mm, y1=shape.y1 + by_mm)
     if isinstance(shape, Box):
         return shape._replace(top=shape.top + by_mm, bottom=shape.bottom + by_mm)
-    if isinstance(shape, Use):
+    if isinstance(shape, Use | Circle):
         return shape._replace(y=shape.y + by_mm)
     box = shape.box
     return shape._replace(box=Bounds(box.left, box.top + by_mm, box.right, box.bottom + by_mm))

@@ -111,7 +111,7 @@ def test_the_index_names_pages_and_what_has_no_sheet(whole: pypdf.PdfReader) -> 
     "words",
     [
         "P-101", "Feed pump discharge pressure", "A1 Tank farm", "Zone 1, IIB, T3", "PID-1", "1 of 1",
-        "Quillmoor QP-4", "0 to 10 barg", "8 barg", "80.0 % = 16.80 mA", "X1:1,X1:2", "PT-101+", "MAR-1",
+        "Quillmoor QP-4", "0 to 10 barg", "8 barg", "80.0 % = 16.80 mA", "X1:1", "PT-101+", "MAR-1",
         "10.383", "-0.117", "24.0 V - 22 mA x 618.955 ohm = 10.383 V at the terminals, 10.5 V needed, short by 0.117 V",
         "FAULT ELC01 P-101: short by 0.117 V", CAUTION, "page 4", "Witnessed by", "Signature",
     ],
