@@ -298,10 +298,10 @@ class _Look:
 
     def rows(self, text: bytes, at: int) -> None:
         """Look at a block of whole rows that begins at byte `at` of the part."""
-        self._extents(text)
         # One byte is looked for at ten times the speed of two, and lists seldom have these.
         if (b"!" in text and b"<!" in text) or (b"?" in text and b"<?" in text):
             raise NotPlain
+        self._extents(text)
         self._errors(text, at)
         if b"<f" in text:
             self._formulas(text, at)

@@ -15,7 +15,7 @@ from instruments.workbook.annotate.sheet import Frame, cell_edits, frame_of, leg
 from instruments.workbook.annotate.splice import Edit, in_utf8, spliced
 from instruments.workbook.annotate.styles import NEW_STYLES, Fill, Styles
 from instruments.workbook.annotate.threads import with_person, with_replies
-from instruments.workbook.package import LIMITS, WORKBOOK, Limits, Package, Relation, SheetEntry, read_contents
+from instruments.workbook.package import LIMITS, STYLES, WORKBOOK, Limits, Package, Relation, SheetEntry, read_contents
 from instruments.workbook.plain import BrokenXml
 from instruments.workbook.sheet import UnreadableFile
 from instruments.workbook.sheet_look import NotPlain
@@ -167,7 +167,7 @@ class _Copy:
         changes, name = self._changes, self._contents.styles
         told = [one for one in self._package.relations(WORKBOOK).values() if one.kind == "styles"]
         if name is None:
-            name = changes.free_name("xl/styles{}.xml")
+            name = STYLES  # where they would have been found
             changes.declare(name, _STYLES_TYPE)
         if not told:
             changes.refer(WORKBOOK, "styles", name, spaces=_STRICT_KINDS if strict else _KINDS)
