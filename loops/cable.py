@@ -3,6 +3,7 @@
 import math
 import re
 import unicodedata
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import Final, Literal
 
@@ -164,6 +165,50 @@ def loop_resistance_ohm(
     """
     conductors = 2.0 if per == "conductor" else 1.0
     return conductors * length_m / 1000.0 * ohm_per_km_20c * temperature_factor(conductor_c)
+
+
+LONGEST_CABLE_M: Final = 100_000
+"""No cable length beyond this is worked out: it stands for any."""
+
+
+def longest_m(holds: Callable[[int], bool]) -> int | None:
+    """Longest cable in whole metres with which a condition still holds that a longer one only ever breaks.
+
+    One metre more breaks it, up to the 100 km that no loop has. None where no cable at all breaks it already.
+
+    >>> longest_m(lambda metres: loop_resistance_ohm(metres, 12.1, conductor_c=20.0) <= 50.0)
+    2066
+    """
+    if not holds(0):
+        return None
+    low, high = 0, LONGEST_CABLE_M + 1
+    while high - low > 1:
+        middle = (low + high) // 2
+        low, high = (middle, high) if holds(middle) else (low, middle)
+    return low
+
+
+def smallest_mm2(
+    holds: Callable[[float], bool],
+    *,
+    conductor_class: int = 2,
+    tinned: bool = False,
+    sizes_mm2: Sequence[float] = STANDARD_SIZES_MM2,
+) -> float | None:
+    """Smallest conductor of a series, in mm2, with whose resistance in ohm/km at 20 degC a condition holds.
+
+    A size that the table of IEC 60228 does not hold is passed over. None where none of them does.
+
+    >>> smallest_mm2(lambda ohm_per_km: loop_resistance_ohm(500.0, ohm_per_km, conductor_c=20.0) <= 8.0)
+    2.5
+    """
+    for size_mm2 in sorted(sizes_mm2):
+        ohm_per_km = conductor_ohm_per_km_20c(
+            Conductor(size_mm2=size_mm2, conductor_class=conductor_class, tinned=tinned)
+        )
+        if ohm_per_km is not None and holds(ohm_per_km):
+            return size_mm2
+    return None
 
 
 _LONGEST_TEXT: Final = 100
