@@ -17,13 +17,14 @@ from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import audit, reaudit
 from validation.mend import with_consequences
+from validation.report.annotated import Annotations
 from validation.report.exceptions import write_exceptions
 from validation.report.findings_json import as_text
 from validation.rule import load_rules
 
 
 def audit_stages(path: Path) -> dict[str, float]:
-    """Audit a list and return the seconds of each stage, without sheets and annotated copy."""
+    """Audit a list and return the seconds of each stage, without the loop sheets."""
     load_rules()
     gc.disable()  # as the command does
     marks = [time.perf_counter()]
@@ -49,6 +50,8 @@ def audit_stages(path: Path) -> dict[str, float]:
         write_exceptions(result, Path(folder) / "exceptions.xlsx")
         (Path(folder) / "findings.json").write_text(as_text(result, digests={}, version="", inputs={}))
         seconds["write"] = mark()
+        Annotations(result).write(str(path), Path(folder) / "annotated.xlsx")
+        seconds["annotate"] = mark()
     wired = [each for each in plant.live if plant.circuits_of(each)][:200] or list(plant.live[:200])
     since = time.perf_counter()
     for each in wired:

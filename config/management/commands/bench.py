@@ -57,7 +57,7 @@ class Command(BaseCommand):
             self.stdout.write(f"made {tags:,} tags, {cells:,} cells in {time.perf_counter() - since:.1f} s")
         figures = self._alone("audit", path)
         bare = self._alone("bare", path)
-        stages = ("read", "normalise", "assemble", "rules", "fixes", "write")
+        stages = ("read", "normalise", "assemble", "rules", "fixes", "write", "annotate")
         total = sum(figures[stage] for stage in stages)
         for stage in stages:
             self.stdout.write(f"  {stage:12} {figures[stage]:8.2f} s")
