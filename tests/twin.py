@@ -15,6 +15,7 @@ from instruments.workbook import lists
 from instruments.workbook.headings import SheetMatch
 from instruments.workbook.normalise import SheetRecords
 from instruments.workbook.sheet import Sheet, Value, take_out_errors
+from loops.certificates import certificates_of
 from loops.plant import Plant, assemble
 from tests.marrowbeck import (
     DEMO,
@@ -162,6 +163,7 @@ def _quiet(rule: Rule, subject: str, plant: Plant) -> Outcome:
         Subject.CIRCUIT: plant.circuits,
         Subject.LOOP: plant.loops,
         Subject.AREA: plant.areas_seen,
+        Subject.CERTIFICATE: certificates_of(plant),
     }[rule.on]
     (one,) = (each for each in subjects if each.name == subject)
     if not one.live or isinstance(check_one(rule, one, plant), NotApplicable):

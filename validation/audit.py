@@ -12,6 +12,7 @@ from typing import Any
 from instruments.installed import Installed
 from instruments.origin import Cell
 from instruments.tag import natural_key
+from loops.certificates import certificates_of
 from loops.circuit import Circuit
 from loops.plant import Plant
 from validation.finding import (
@@ -395,6 +396,8 @@ def _subjects(rule: Rule, plant: Plant) -> Iterable[Any]:
         return plant.loops
     if rule.on is Subject.AREA:
         return plant.areas_seen
+    if rule.on is Subject.CERTIFICATE:
+        return certificates_of(plant)
     raise ValueError(f"{rule.code}: no subjects for {rule.on}")
 
 

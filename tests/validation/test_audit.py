@@ -10,6 +10,7 @@ import pytest
 from openpyxl import load_workbook
 
 import validation.rules
+from loops.certificates import certificates_of
 from loops.plant import Plant
 from tests.marrowbeck import DEMO, audit_of
 from validation.audit import Audit, Broken, audit, bare_name, check_one, finding_order, group_name, reaudit
@@ -180,6 +181,33 @@ def test_circuits_loops_areas_and_the_whole_list_are_counted() -> None:
     assert {each.subject for each in result.findings} == {"list.xlsx"}
 
 
+def test_a_certificate_is_counted_once_however_many_name_it() -> None:
+    rows: list[Row] = [
+        {"tag": "PT-1", "certificate": "ABC 20 ATEX 0001", "device type": "", "status": ""},
+        {"tag": "PT-2", "certificate": "ABC20ATEX0001X", "device type": "", "status": ""},
+        {"tag": "PT-3", "certificate": "", "device type": "T-1", "status": ""},
+        {"tag": "PT-4", "certificate": "ABC 20 ATEX 0009", "device type": "", "status": "spare"},
+    ]
+    types = [
+        {"code": "T-1", "kind": "transmitter", "certificate": "IECEx ABC 20.0002X"},
+        {"code": "T-2", "kind": "transmitter", "certificate": "ABC 20 ATEX 0008"},
+    ]
+    result = run(
+        lambda subject, plant: Found(
+            values={"what": ", ".join(each.name for each in subject.members)}, fields=("certificate",)
+        ),
+        on=Subject.CERTIFICATE,
+        rows=rows,
+        sheets={"types": types},
+    )
+    found = [(each.subject, each.message, [f"{c.sheet} {c.address}" for c in each.cells]) for each in result.findings]
+    assert found == [
+        ("ABC 20 ATEX 0001X", "found PT-1, PT-2", ["Instruments B2", "Instruments B3"]),
+        ("IECEx ABC 20.0002X", "found PT-3", ["Device types C2", "Instruments C4"]),
+    ]
+    assert outcomes(result) == {"finding": 2}
+
+
 def groups_of(*groups: str) -> Callable[[Plant], list[tuple[Any, ...]]]:
     def find(plant: Plant) -> list[tuple[Any, ...]]:
         by_name = {each.name: each for each in plant.instruments}
@@ -322,6 +350,7 @@ def test_the_five_outcomes_add_up_to_the_subjects(demo: Audit) -> None:
         Subject.CIRCUIT: len(plant.circuits),
         Subject.LOOP: len(plant.loops),
         Subject.AREA: len(plant.areas_seen),
+        Subject.CERTIFICATE: len(certificates_of(plant)),
         Subject.WHOLE: 1,
     }
     added = {each.code: sum(demo.coverage[each.code].outcomes.values()) for each in load_rules()}
