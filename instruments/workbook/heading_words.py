@@ -409,6 +409,17 @@ class Finder:
         """Return what a heading may be by its words, else by likeness."""
         return self.candidates(levels) or tuple(self._candidates(levels, alike=True))
 
+    def unit_of(self, levels: Levels, column: Column) -> tuple[Unit | None, str]:
+        """Return the unit that a heading states for a column, whatever else it says: the unit, and its text."""
+        for each in self.candidates_or_alike(levels):
+            if each.column is column:
+                return each.unit, each.unit_text
+        for _, text in _without_unit(levels.joined):
+            stated = unit_for(column, text)
+            if stated is not None:
+                return stated if isinstance(stated, Unit) else None, text
+        return None, ""
+
     def _candidates(self, levels: Levels, *, alike: bool) -> Iterable[Candidate]:
         best: dict[str, Candidate] = {}
 

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass
+from collections.abc import Callable, Iterator, Mapping, Sequence
+from dataclasses import dataclass, field, replace
 from pathlib import PurePath
 from types import MappingProxyType
 from typing import Any
@@ -11,11 +11,15 @@ from typing import Any
 from instruments.column import SheetKind
 from instruments.plant_data import PlantData
 from instruments.workbook.headings import SheetMatch, match_sheet
+from instruments.workbook.mapping import LEAVE_OUT, MappedSheet
+from instruments.workbook.mapping import Mapping as ListMapping
+from instruments.workbook.mapping_fit import MappingNote, find_sheets, match_by_mapping
 from instruments.workbook.normalise import SheetRecords, read_records
 from instruments.workbook.number_format import as_text
 from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet
 from instruments.workbook.problem import CellProblem
 from instruments.workbook.sheet import Sheet
+from instruments.workbook.turned import turned_where_tags_stand_across
 from instruments.workbook.words import folded
 
 __all__ = ["Lists", "NoTags", "SheetReport", "records_of_sheets"]
@@ -43,6 +47,12 @@ class SheetReport:
         What became of its cells; of a sheet that was left out they are filled only.
     sections, notes
         Section rows; title lines, notes and legends: row counted from 1, and text.
+    left_out
+        Whether a mapping told to leave it out.
+    decimal, decimals
+        The decimal mark that its numbers were read with, and those of columns that have another, by index.
+    encoding, separator
+        Of a delimited text.
     """
 
     file: str
@@ -59,6 +69,11 @@ class SheetReport:
     sections: tuple[tuple[int, str], ...] = ()
     notes: tuple[tuple[int, str], ...] = ()
     remarks: tuple[str, ...] = ()
+    left_out: bool = False
+    decimal: str = ""
+    decimals: Mapping[int, str] = field(default_factory=dict)
+    encoding: str = ""
+    separator: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -83,6 +98,8 @@ class Lists:
         The file that holds the index (the first, if several do).
     index_columns
         The fields that columns of the index fill.
+    mapping_notes
+        What a mapping that was given says and the lists do not, and what they have that it does not say.
     """
 
     records: Mapping[str, tuple[Any, ...]]
@@ -93,6 +110,7 @@ class Lists:
     files: tuple[str, ...] = ()
     index_file: str = ""
     index_columns: frozenset[str] = frozenset()
+    mapping_notes: tuple[MappingNote, ...] = ()
 
 
 _LEFT_OUT = (
@@ -124,6 +142,7 @@ def records_of_sheets(
     *,
     stated: Sequence[PlantEntry] = (),
     files: Sequence[str] = (),
+    mapping: ListMapping | None = None,
     on_progress: Callable[[str], None] | None = None,
 ) -> Lists:
     """Understand sheets that are read: their kinds first, then the plant's data, then their rows.
@@ -138,6 +157,8 @@ def records_of_sheets(
         What a plant.toml says.
     files
         The files' names, for the report.
+    mapping
+        How earlier lists were understood, and are to be again; None to find out.
     on_progress
         Called with a line for each sheet.
 
@@ -147,7 +168,11 @@ def records_of_sheets(
         No sheet holds tags.
     """
     tell = on_progress or (lambda line: None)
-    matches = _match(sheets, kinds)
+    sheets = [turned for sheet in sheets for turned in turned_where_tags_stand_across(sheet, kinds)]
+    found_sheets = find_sheets(mapping, sheets) if mapping is not None else None
+    mapped = found_sheets.mapped if found_sheets is not None else (None,) * len(sheets)
+    notes: list[MappingNote] = list(found_sheets.notes) if found_sheets is not None else []
+    matches = _match(sheets, kinds, mapped, notes)
     if not any(match is not None and match.kind.key == (("tag",),) for match in matches):
         raise NoTags(_no_tags(sheets, matches))
     entries: list[PlantEntry] = []
@@ -161,9 +186,9 @@ def records_of_sheets(
     reports: list[SheetReport] = []
     columns: set[str] = set()
     index_file = ""
-    for sheet, match in zip(sheets, matches, strict=True):
+    for sheet, match, told in zip(sheets, matches, mapped, strict=True):
         if match is None:
-            reports.append(_left_out(sheet))
+            reports.append(_left_out(sheet, told))
             continue
         if _is_plant(match.kind):
             reports.append(_plant_report(sheet, match, plant_problems))
@@ -191,6 +216,7 @@ def records_of_sheets(
         files=tuple(files) or tuple(dict.fromkeys(sheet.file for sheet in sheets)),
         index_file=PurePath(index_file).name,
         index_columns=frozenset(columns),
+        mapping_notes=tuple(notes),
     )
 
 
@@ -198,9 +224,27 @@ def _is_plant(kind: SheetKind) -> bool:
     return "thresholds" in getattr(kind.record, "__dataclass_fields__", {})
 
 
-def _match(sheets: Sequence[Sheet], kinds: Sequence[SheetKind]) -> list[SheetMatch | None]:
+def _match(
+    sheets: Sequence[Sheet],
+    kinds: Sequence[SheetKind],
+    mapped: Sequence[MappedSheet | None],
+    notes: list[MappingNote],
+) -> list[SheetMatch | None]:
     """Match all sheets: those that list codes first, so that a column of such codes is known for one."""
-    found: list[SheetMatch | None] = [match_sheet(sheet, kinds) for sheet in sheets]
+    told = {number: each for number, each in enumerate(mapped) if each is not None and each.kind}
+    found: list[SheetMatch | None] = []
+    of_sheet: dict[int, tuple[MappingNote, ...]] = {}
+
+    def take(number: int, codes: frozenset[str] = frozenset()) -> SheetMatch | None:
+        each = told.get(number)
+        if each is None:
+            return match_sheet(sheets[number], kinds, codes=codes) if codes else match_sheet(sheets[number], kinds)
+        if each.kind == LEAVE_OUT:
+            return None
+        match, of_sheet[number] = match_by_mapping(sheets[number], each, kinds, codes=codes)
+        return match
+
+    found.extend(take(number) for number in range(len(sheets)))
     codes: set[str] = set()
     for sheet, match in zip(sheets, found, strict=True):
         if match is not None and match.kind.key != (("tag",),) and "code" in match.columns:
@@ -208,9 +252,9 @@ def _match(sheets: Sequence[Sheet], kinds: Sequence[SheetKind]) -> list[SheetMat
             codes.update(folded(as_text(row[index])) for row in sheet.rows[match.first_row :] if row[index] is not None)
     if codes:
         known = frozenset(codes)
-        for number, (sheet, match) in enumerate(zip(sheets, found, strict=True)):
+        for number, match in enumerate(found):
             if match is not None and match.kind.key == (("tag",),):
-                found[number] = match_sheet(sheet, kinds, codes=known)
+                found[number] = take(number, known)
     index_kinds = [kind for kind in kinds if kind.key == (("tag",),)]
     if index_kinds and not any(match is not None and match.kind is index_kinds[0] for match in found):
         # The only list with tags is the index, whatever it is called: the I/O list first, then an alarm list.
@@ -222,11 +266,30 @@ def _match(sheets: Sequence[Sheet], kinds: Sequence[SheetKind]) -> list[SheetMat
         others.sort(key=lambda each: [kind.name for kind in kinds].index(each[1].kind.name))
         chosen = others[0][1].kind if others else None
         for number, match in others:
-            if match.kind is chosen:
+            if match.kind is not chosen:
+                continue
+            if number in told:
+                told[number] = replace(told[number], kind=index_kinds[0].name)
+                again = take(number, frozenset(codes))
+            else:
                 again = match_sheet(sheets[number], kinds, forced=index_kinds[0], codes=frozenset(codes))
-                if again is not None:
-                    found[number] = again
+            if again is not None:
+                found[number] = again
+    for number in sorted(of_sheet):
+        notes.extend(of_sheet[number])
+    if any(each is not None for each in mapped):
+        notes.extend(_new_sheets(sheets, mapped, found))
     return found
+
+
+def _new_sheets(
+    sheets: Sequence[Sheet], mapped: Sequence[MappedSheet | None], found: Sequence[SheetMatch | None]
+) -> Iterator[MappingNote]:
+    """Tell the sheets that a mapping does not know, and what they were taken for."""
+    for sheet, told, match in zip(sheets, mapped, found, strict=True):
+        if told is None and (match is not None or sheet.cells_filled):
+            what = f"taken for {match.kind.name}" if match is not None else "not read"
+            yield MappingNote(file=PurePath(sheet.file).name, sheet=sheet.name, text=f"is not in the mapping: {what}")
 
 
 def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None]) -> str:
@@ -246,16 +309,25 @@ def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None]) -> s
     return f"no list with tags was found: a sheet needs a heading such as 'Tag' or 'Tag No.' over its tags ({said})"
 
 
-def _left_out(sheet: Sheet) -> SheetReport:
+def _left_out(sheet: Sheet, told: MappedSheet | None) -> SheetReport:
     name = folded(sheet.name)
-    if not any(any(cell is not None for cell in row) for row in sheet.rows):
+    if told is not None and told.kind == LEAVE_OUT:
+        why = told.why or "the mapping leaves it out"
+    elif not any(any(cell is not None for cell in row) for row in sheet.rows):
         why = "empty"
     elif any(word in name for word in _LEFT_OUT):
         why = f"a sheet named {sheet.name} holds no list"
     else:
         why = "no heading of a known list was found"
     return SheetReport(
-        file=sheet.file, sheet=sheet.name, skipped=why, cells_filled=sheet.cells_filled, remarks=sheet.notes
+        file=sheet.file,
+        sheet=sheet.name,
+        skipped=why,
+        cells_filled=sheet.cells_filled,
+        remarks=sheet.notes,
+        left_out=told is not None and told.kind == LEAVE_OUT,
+        encoding=sheet.encoding,
+        separator=sheet.separator,
     )
 
 
@@ -272,6 +344,8 @@ def _plant_report(sheet: Sheet, match: SheetMatch, problems: Sequence[CellProble
         cells_read=sheet.cells_filled - len(cells),
         cells_unread=len(cells),
         remarks=sheet.notes,
+        encoding=sheet.encoding,
+        separator=sheet.separator,
     )
 
 
@@ -299,4 +373,8 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
         sections=found.sections,
         notes=found.notes,
         remarks=tuple(remarks),
+        decimal=found.decimal,
+        decimals=found.decimals,
+        encoding=sheet.encoding,
+        separator=sheet.separator,
     )

@@ -277,6 +277,10 @@ class _Report:
             said.extend(sheet.remarks)
             lines.extend((self.file(sheet.file), sheet.sheet, text) for text in said)
             noted += len(sheet.sections) + len(sheet.notes)
+        lines.extend(
+            (note.file, note.sheet, f"mapping{f', line {note.line}' if note.line else ''}: {note.text}")
+            for note in self.lists.mapping_notes
+        )
         figures = counts(self.result)
         not_live = figures["instruments"] - figures["live"]
         if not_live:

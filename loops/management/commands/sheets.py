@@ -39,6 +39,7 @@ class Command(BaseCommand):
         parser.add_argument("lists", nargs="+", metavar="LIST", help="the list, or all lists of one plant")
         parser.add_argument("--to", required=True, metavar="DIR", help="the folder for the sheets")
         parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
+        parser.add_argument("--mapping", metavar="mapping.toml", help="how an audit read these lists, mended")
 
     def handle(self, *args: Any, **options: Any) -> None:
         """Run and leave with the exit status."""
@@ -53,6 +54,7 @@ class Command(BaseCommand):
                 [Path(name) for name in options["lists"]],
                 (*INSTRUMENT_SHEETS, *LOOP_SHEETS),
                 plant_toml=Path(options["plant"]) if options["plant"] else None,
+                mapping_toml=Path(options["mapping"]) if options["mapping"] else None,
             )
             plant = assemble(lists)
             path = Path(options["to"]) / NAME

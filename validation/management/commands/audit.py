@@ -16,6 +16,8 @@ from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.workbook.files import read_lists
 from instruments.workbook.lists import NoTags, SheetReport
+from instruments.workbook.mapping import mapping_of
+from instruments.workbook.mapping_toml import mapping_text
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
@@ -27,7 +29,9 @@ from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
 
+KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
+MOST_SAID = 20
 
 
 class Command(BaseCommand):
@@ -35,7 +39,8 @@ class Command(BaseCommand):
 
     help = (
         "Reads a plant's instrument list (.xlsx, .xlsm or .csv; several files are one plant), runs every rule over "
-        "the whole of it and writes exceptions.xlsx, loop-sheets.pdf and findings.json. Exit status: 0 finished; "
+        "the whole of it and writes exceptions.xlsx, an annotated copy, loop-sheets.pdf, mapping.toml (how headings "
+        "were understood, to mend and give back) and findings.json. Exit status: 0 finished; "
         "1 findings at or above --fail-on; 2 something cannot be read or written; 3 a rule broke."
     )
     requires_system_checks = ()
@@ -45,7 +50,7 @@ class Command(BaseCommand):
         parser.add_argument("lists", nargs="*", metavar="LIST", help="the list, or all lists of one plant")
         parser.add_argument("--to", required=True, metavar="DIR", help="the folder for the outputs")
         parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
-        parser.add_argument("--mapping", metavar="mapping.toml", help="how headings are to be understood")
+        parser.add_argument("--mapping", metavar="mapping.toml", help="how an earlier run read these lists, mended")
         parser.add_argument("--no-sheets", action="store_true", help="leave out loop-sheets.pdf")
         parser.add_argument("--no-annotated", action="store_true", help="leave out the annotated copy")
         parser.add_argument(
@@ -66,15 +71,15 @@ class Command(BaseCommand):
         self._annotated: list[str] = []
         if not options["lists"]:
             return self._cannot("name the list to audit; the plant's own index cannot be kept yet")
-        if options["mapping"]:
-            return self._cannot("--mapping: mapping files cannot be given back yet; run without it")
         paths = [Path(name) for name in options["lists"]]
         plant_toml = Path(options["plant"]) if options["plant"] else None
+        mapping_toml = Path(options["mapping"]) if options["mapping"] else None
         with Progress(self.stderr) as progress:
             try:
                 progress.stage("reading")
-                inputs = {str(path): _digest(path) for path in [*paths, *([plant_toml] if plant_toml else [])]}
-                lists = read_lists(paths, (*INSTRUMENT_SHEETS, *LOOP_SHEETS), plant_toml=plant_toml)
+                beside = [path for path in (plant_toml, mapping_toml) if path is not None]
+                inputs = {str(path): _digest(path) for path in [*paths, *beside]}
+                lists = read_lists(paths, KINDS, plant_toml=plant_toml, mapping_toml=mapping_toml)
                 progress.stage("putting the plant together")
                 plant = assemble(lists)
                 result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
@@ -115,6 +120,8 @@ class Command(BaseCommand):
                 "loop-sheets.pdf",
                 lambda path: _draw(result, path, progress),
             )
+        mapping = mapping_text(mapping_of(result.plant.lists.sheets), KINDS)
+        outputs.add("mapping.toml", lambda path: _write_text(path, mapping))
         digests = dict(outputs.digests)
         text = as_text(result, digests=digests, version=VERSION, inputs=inputs)
         outputs.add("findings.json", lambda path: _write_text(path, text))
@@ -151,8 +158,13 @@ class Command(BaseCommand):
         for line in self._annotated:
             say(line)
         guessed = [note for sheet in result.plant.lists.sheets for note in _guesses(sheet)]
-        for note in guessed[:20]:
+        for note in guessed[:MOST_SAID]:
             say(f"heading guessed: {note}")
+        notes = result.plant.lists.mapping_notes
+        for misfit in notes[:MOST_SAID]:
+            self.stderr.write(f"mapping: {misfit}")
+        if len(notes) > MOST_SAID:
+            self.stderr.write(f"mapping: and {len(notes) - MOST_SAID} more; see the Summary of exceptions.xlsx")
         for each in result.broken[:5]:
             self.stderr.write(f"rule {each.rule} could not be run on {each.subject}: {each.error}")
         if len(result.broken) > 5:

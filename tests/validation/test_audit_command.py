@@ -1,0 +1,94 @@
+"""manage.py audit: the mapping that a run leaves, given back with the same list and with the next revision."""
+
+from __future__ import annotations
+
+import hashlib
+import io
+import json
+from pathlib import Path
+
+import pytest
+from django.core.management import call_command
+
+LIST = """Lakeside Works;;;;
+Tag No.;Service;von;bis;Zeichen
+PT-101;feed;0;10,5 barg;rot
+PT-102;return;0;16 barg;blau
+PT-103;reflux;0;6 barg;
+"""
+NEXT = """Lakeside Works;;;;;
+Revision C;;;;;
+Tag No.;Zeichen;Service;von;bis;IP Code
+PT-101;PT-101A;feed;0;10,5 barg;IP66
+PT-104;;top;0;1 barg;IP66
+"""
+
+
+def run(*arguments: object) -> tuple[int, str, str]:
+    out, err = io.StringIO(), io.StringIO()
+    with pytest.raises(SystemExit) as left:
+        call_command("audit", *map(str, arguments), "--no-sheets", "--no-annotated", stdout=out, stderr=err)
+    assert isinstance(left.value.code, int)
+    return left.value.code, out.getvalue(), err.getvalue()
+
+
+@pytest.fixture
+def listed(tmp_path: Path) -> Path:
+    path = tmp_path / "rev-b.csv"
+    path.write_text(LIST, encoding="utf-8")
+    return path
+
+
+def test_a_mapping_is_left_and_listed_with_its_digest(listed: Path, tmp_path: Path) -> None:
+    status, out, err = run(listed, "--to", tmp_path / "out")
+    assert (status, err) == (0, "")
+    assert out.endswith("exceptions.xlsx, mapping.toml, findings.json\n")
+    mapping = tmp_path / "out" / "mapping.toml"
+    said = json.loads((tmp_path / "out" / "findings.json").read_text(encoding="utf-8"))
+    assert said["outputs"]["mapping.toml"] == hashlib.sha256(mapping.read_bytes()).hexdigest()
+
+
+def test_mended_and_given_back_with_the_next_revision(listed: Path, tmp_path: Path) -> None:
+    run(listed, "--to", tmp_path / "one")
+    text = (tmp_path / "one" / "mapping.toml").read_text(encoding="utf-8")
+    entry = 'cell = "E2", heading = "Zeichen", field = "none",'
+    assert text.count(entry) == 1
+    mended = tmp_path / "mended.toml"
+    mended.write_text(text.replace(entry, entry.replace('"none"', '"former tag"')), encoding="utf-8")
+    following = tmp_path / "rev-c.csv"
+    following.write_text(NEXT, encoding="utf-8")
+    status, out, err = run(following, "--to", tmp_path / "two", "--mapping", mended)
+    assert status == 0
+    assert err.splitlines() == [
+        "mapping: rev-c.csv is read as rev-b.csv was mapped",
+        "mapping: rev-c.csv, sheet 'rev-c': column F 'IP Code' is new: taken for IP code (synonym)",
+    ]
+    assert "heading guessed" not in out
+    said = json.loads((tmp_path / "two" / "findings.json").read_text(encoding="utf-8"))
+    assert [each["file"] for each in said["audit"]["files"]] == [str(following), str(mended)]
+    again = (tmp_path / "two" / "mapping.toml").read_text(encoding="utf-8")
+    assert 'cell = "B3", heading = "Zeichen", field = "former tag", how = "mapping", likely = 1.00 },' in again
+
+
+@pytest.mark.parametrize(
+    ("old", "new", "said"),
+    [
+        ('field = "service"', 'field = "servise"', "Instruments has no field 'servise'; the nearest: service"),
+        ('field = "service"', 'field = "tag"', "tag is read from column A ('Tag No.', line {tag}) already"),
+    ],
+)
+def test_a_mapping_that_contradicts_is_refused_with_its_line(
+    listed: Path, tmp_path: Path, old: str, new: str, said: str
+) -> None:
+    run(listed, "--to", tmp_path / "one")
+    mapping = tmp_path / "one" / "mapping.toml"
+    lines = mapping.read_text(encoding="utf-8").splitlines()
+    number = next(at for at, line in enumerate(lines, start=1) if old in line)
+    tag = next(at for at, line in enumerate(lines, start=1) if 'heading = "Tag No."' in line)
+    mapping.write_text("\n".join(lines).replace(old, new), encoding="utf-8")
+    status, out, err = run(listed, "--to", tmp_path / "two", "--mapping", mapping)
+    assert (status, out) == (2, "")
+    begin = f"audit: {mapping}, line {number}, heading 'Service' of rev-b.csv, sheet 'rev-b': "
+    assert err.startswith(begin + said.format(tag=tag))
+    assert err.count("\n") == 1
+    assert not (tmp_path / "two").exists()
