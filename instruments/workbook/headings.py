@@ -540,6 +540,8 @@ def _assign(
     fields = {name for match in columns.values() for name in _fills(match.column)} | set(columns)
     if not any(all(name in fields for name in key) for key in kind.key):
         return None
+    if "tag" in columns and _names_lines(content(columns["tag"].index), finder):
+        return None
     if "tag" in columns and len(columns) == 1 and content(columns["tag"].index).fit(columns["tag"].column, codes) < 0.5:
         return None
     speaking = {index for index, _ in unit_columns} | {index for match in columns.values() for index, _ in match.parts}
@@ -568,6 +570,13 @@ def _assign(
         last_heading_row=bottom,
         headings={index: heading.joined for index, heading in sorted(headings.items())},
     )
+
+
+def _names_lines(cells: Contents, finder: Finder) -> bool:
+    """Whether what stands below a heading are themselves headings: a form that has a property on each line."""
+    if cells.count < 2 or cells.holds(_DIGIT) > 0.3:
+        return False
+    return sum(finder.names.knows(heading_words(text)) for text in cells.texts) * 2 > cells.count
 
 
 def _in_order(item: tuple[str, ColumnMatch]) -> tuple[bool, int, int]:

@@ -932,12 +932,12 @@ class _SheetReader:
         problems, unread = problems_of(sheet, [*self._unread_cells(), *self.outside], self._filled_in)
         # Errors, formulas without a value and far cells are blanks among the rows, or not there.
         elsewhere = len(sheet.errors) + len(sheet.no_value) + len(sheet.far)
-        read = sum(len(row) - row.count(None) for row in sheet.rows)
+        read = sheet.cells_in_titles + sum(len(row) - row.count(None) for row in sheet.rows)
         return SheetRecords(
             records=tuple(self._records()),
             problems=problems,
             sections=tuple((number + 1, text) for number, text in self.rows.sections),
-            notes=tuple((number + 1, text) for number, text in self.rows.notes),
+            notes=tuple((number + 1, text) for number, text in (*sheet.titles, *self.rows.notes)),
             assumptions=tuple(self.assumptions),
             cells_filled=sheet.cells_filled,
             cells_read=read - (unread - elsewhere),
@@ -955,6 +955,7 @@ class _SheetReader:
         place = Place(
             file=self.sheet.file,
             sheet=self.sheet.name,
+            turned=self.sheet.turned,
             columns=MappingProxyType({name: indexes for name, indexes in self.places.items() if indexes}),
         )
         own = {name for column in kind.columns if column.owner == "own" for name in (column.field, *column.into)}

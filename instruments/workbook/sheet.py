@@ -88,6 +88,11 @@ class Sheet:
     """Of a delimited text: what its bytes were read as, in the words of `delimited.ENCODINGS`."""
     separator: str = ""
     """Of a delimited text: what stands between its cells."""
+    turned: bool = False
+    """True where columns were made rows, so that `rows[6][1]` is cell G2: a data sheet with one tag a column."""
+    titles: tuple[tuple[int, str], ...] = ()
+    """Of a turned sheet: lines of the written one that no tag has a part in, and their text; not in `rows`."""
+    cells_in_titles: int = 0
 
     @property
     def width(self) -> int:

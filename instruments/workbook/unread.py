@@ -59,7 +59,7 @@ def problems_of(
         told.add(key)
         problems.append(
             CellProblem(
-                cell=Cell(file=sheet.file, sheet=sheet.name, row=each.row + 1, column=each.column),
+                cell=_cell(sheet, each.row, each.column),
                 field=each.field,
                 title=each.title,
                 subject="" if whole else each.subject,
@@ -74,7 +74,7 @@ def problems_of(
         row, column = min(sheet.far)
         problems.append(
             CellProblem(
-                cell=Cell(file=sheet.file, sheet=sheet.name, row=row + 1, column=column),
+                cell=_cell(sheet, row, column),
                 field="",
                 title="",
                 subject="",
@@ -84,6 +84,13 @@ def problems_of(
             )
         )
     return tuple(problems), len(unread) + len(sheet.far)
+
+
+def _cell(sheet: Sheet, row: int, column: int) -> Cell:
+    """Return the cell of the file that stands at a place of a sheet, which may be turned."""
+    if sheet.turned:
+        row, column = column, row
+    return Cell(file=sheet.file, sheet=sheet.name, row=row + 1, column=column)
 
 
 def _without_quotes(reason: str) -> str:
