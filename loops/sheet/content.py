@@ -29,6 +29,7 @@ from loops.power import VoltageBudget
 from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, signal_of
 from loops.sheet.pack import LoopOnPaper, area_title, filed_under
 from loops.sheet.path import Path, path_of, terminations_of
+from loops.sheet.span_scale import SpanScale
 
 NOT_APPLICABLE: Final = "\u2013"
 """Printed where this kind of device has no such value; None stands for one that nobody gave."""
@@ -69,11 +70,15 @@ class SettingValue:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class SettingLine:
-    """One device's settings in the order of `SETTINGS`; a text stands where there can be none."""
+    """One device's settings in the order of `SETTINGS`; a text stands where there can be none.
+
+    `scale` has them on a scale of the span; None where none of them has a place on it.
+    """
 
     tag: str
     values: tuple[SettingValue | str | None, ...]
     direction: str | None
+    scale: SpanScale | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -415,10 +420,46 @@ def _setting_lines(loop: LoopOnPaper, plant: Plant) -> Iterable[SettingLine]:
         direction = record.trip_direction
         if direction is None and record.trip is not None:
             direction = _DIRECTIONS.get(record.trip.qualifier or "")
-        yield SettingLine(tag=each.name, values=tuple(values), direction=direction or blank)
+        yield SettingLine(
+            tag=each.name,
+            values=tuple(values),
+            direction=direction or blank,
+            scale=_span_scale(each, values, plant),
+        )
 
 
 _DIRECTIONS: Final = {"rising": "high", "falling": "low"}
+
+
+_OPERATING: Final = ("min", "normal", "max")
+
+
+def _span_scale(each: Installed, values: Sequence[SettingValue | str | None], plant: Plant) -> SpanScale | None:
+    """Return the settings and the operating values on the range that the settings are compared with."""
+    settings = tuple(
+        (title, value.percent)
+        for (title, _), value in zip(SETTINGS, values, strict=True)
+        if isinstance(value, SettingValue) and value.percent is not None
+    )
+    if not settings:
+        return None
+    measurement = measurement_of(each)
+    given = (*(getattr(each.record, name) for _, name in SETTINGS), each.record.set_pressure)
+    scale = next((found for value in given if value is not None and (found := measurement.scale_of(value))), None)
+    if scale is None:
+        return None
+    operating = [
+        (title, setting_value(quantity, each, plant).percent)
+        for title, quantity in zip(_OPERATING, measurement.values, strict=True)
+        if quantity is not None and measurement.scale_of(quantity) is scale
+    ]
+    return SpanScale(
+        tag=each.name,
+        lrv=str(scale.lrv),
+        urv=str(scale.urv),
+        settings=settings,
+        operating=tuple((title, percent) for title, percent in operating if percent is not None),
+    )
 
 
 def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValue:

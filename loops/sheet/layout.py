@@ -66,6 +66,7 @@ from loops.sheet.shapes import (
     share,
     style,
 )
+from loops.sheet.span_scale import draw_scale
 
 PAGE_WIDTH: Final = 210.0
 PAGE_HEIGHT: Final = 297.0
@@ -600,6 +601,7 @@ def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
     flow.add(_devices(content.devices, tight))
     if content.settings:
         flow.add(_settings(content.settings, tight))
+        _scales(content.settings, flow)
     for circuit in content.circuits:
         _circuit(circuit, flow, tight)
     cut = _title_block(content, [])
@@ -615,6 +617,16 @@ def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
     if flow.room < SIGN_MM:
         flow.new_page()
     return flow
+
+
+def _scales(lines: Iterable[SettingLine], flow: Flow) -> None:
+    drawn = [draw_scale(line.scale, left=LEFT, width=WIDTH) for line in lines if line.scale is not None]
+    if not drawn:
+        return
+    flow.back(GAP_MM)
+    for each in drawn:
+        flow.draw(each.height, each.shapes)
+    flow.skip(GAP_MM)
 
 
 def _circuit(circuit: CircuitContent, flow: Flow, tight: bool) -> None:
