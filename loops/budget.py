@@ -330,9 +330,12 @@ def _in_series(circuit: Circuit, current_ma: float) -> _InSeries:
     if len(circuit.members) == 1:
         return found
     for member in circuit.members:
-        if member is circuit.device or member.kind in _NOT_IN_SERIES:
+        if member is circuit.device or member.kind in _NOT_IN_SERIES or circuit.on_system_side(member):
             continue
         kind = member.type
+        if kind is not None and kind.input_ohm is not None and kind.resistance_ohm is None:
+            # It reads the volts across the range resistor.
+            continue
         if kind is None or (kind.resistance_ohm is None and kind.fixed_drop_v is None):
             if member.kind is Kind.INDICATOR:
                 found.missing.append(f"resistance ohm or fixed drop V of {member.name}")

@@ -134,6 +134,17 @@ class Circuit:
         """The entry of the barrier that lies in series; None where there is none, or an isolator stands there."""
         return self.barrier if self.barrier is not None and not is_isolator(self.barrier) else None
 
+    def on_system_side(self, member: Installed) -> bool:
+        """Whether a member stands between the isolator and the card: behind it in the list's order, or indoors."""
+        if len(self.members) == 1 or self.isolator is None:
+            return False
+        for each in self.members:
+            if each is member:
+                break
+            if each.kind in (Kind.ISOLATOR, Kind.BARRIER):
+                return True
+        return member.record.location in _INDOORS
+
     @property
     def driven(self) -> Installed:
         """The device that an output moves: the positioner or the like on a valve's circuit, else the device."""
@@ -142,6 +153,7 @@ class Circuit:
         return next((each for each in self.members if each.kind in _DRIVES), self.device)
 
 
+_INDOORS = frozenset({"cabinet", "control room", "system"})
 _DRIVES = frozenset({Kind.POSITIONER, Kind.IP_CONVERTER, Kind.SOLENOID})
 
 

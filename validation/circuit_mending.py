@@ -9,6 +9,7 @@ from typing import Any, NamedTuple
 from loops.budget import SUPPLY_TOLERANCE_PERCENT
 from loops.circuit import Circuit
 from loops.plant import Plant
+from loops.record import Cable
 from validation.finding import Fix
 
 
@@ -47,6 +48,20 @@ def length_change(circuit: Circuit, length_m: int, plant: Plant) -> dict[str, An
     return _changing(row, {"cable length": str(length_m)})
 
 
+def card_change(circuit: Circuit, code: str, plant: Plant) -> dict[str, Any]:
+    """Return what a `Fix` changes to put a circuit on another card: its row of the loop list, or the device's."""
+    row = _loop_row(circuit, plant) if circuit.row is not None and circuit.row.card else _own_row(circuit)
+    return _changing(row, {"card": code})
+
+
+def range_resistor_change(circuit: Circuit, ohm: float, plant: Plant) -> dict[str, Any]:
+    """Return what a `Fix` changes to give a circuit another range resistor; nothing where it is a card's own."""
+    source = circuit.receivers[0].source if circuit.receivers else ""
+    if source == "loop row":
+        return _changing(_loop_row(circuit, plant), {"range resistor": f"{ohm:g}"})
+    return _changing(_own_row(circuit), {"receiver ohm": f"{ohm:g}"}) if source == "row" else {}
+
+
 def conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, Any]:
     """Return what a `Fix` changes to give a circuit's cable another conductor.
 
@@ -55,6 +70,27 @@ def conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, Any]:
     if circuit.signal_row.conductor and (circuit.cable_type is None or circuit.cable_type.ohm_per_km is None):
         return _changing(_own_row(circuit), {"conductor size": f"{size_mm2:g} mm2"})
     return {}
+
+
+def cable_type_change(circuit: Circuit, code: str, cable: Cable | None, plant: Plant) -> dict[str, Any]:
+    """Return what a `Fix` changes to give a circuit's cable another type: of its row, else of the cable itself.
+
+    A cable of several pairs is shared by other circuits: changing it is for a person to say.
+    """
+    if cable is not None:
+        alone = sum(1 for other in plant.cables.values() if other.number == cable.number) == 1
+        own = cable.number and alone and (cable.pairs is None or cable.pairs <= 1)
+        return _changing(_Row(cable.number or "", "Cables") if own else None, {"type": code})
+    row = _loop_row(circuit, plant) if circuit.row is not None and circuit.row.cable_type else _own_row(circuit)
+    return _changing(row, {"cable type": code})
+
+
+def wires_change(circuit: Circuit, wires: int) -> dict[str, Any]:
+    """Return what a `Fix` changes to connect a device by another number of wires; nothing where its type has others."""
+    kind = circuit.device.type
+    if kind is not None and kind.wires not in (None, wires):
+        return {}
+    return _changing(_own_row(circuit), {"wires": str(wires)})
 
 
 def least_supply_change(circuit: Circuit, least_v: float, plant: Plant) -> dict[str, Any]:
@@ -106,3 +142,20 @@ def volts_text(volts: float, margin_v: float) -> str:
         decimals += 1
     shown = f"{volts:.{decimals}f}".rstrip("0").rstrip(".")
     return f"{shown} V"
+
+
+def barrier_change(circuit: Circuit, code: str, plant: Plant, *, length_m: int | None = None) -> dict[str, Any]:
+    """Return what a `Fix` changes to give a circuit another barrier, and a cable of that length with it.
+
+    Nothing where no one row holds both.
+    """
+    row = circuit.row
+    if row is not None and row.barrier:
+        place, source = _loop_row(circuit, plant), "loop row"
+    else:
+        place, source = _own_row(circuit), "row"
+    if length_m is None:
+        return _changing(place, {"barrier": code})
+    if circuit.cable_length_m is None or circuit.cable_length_m.source != source:
+        return {}
+    return _changing(place, {"barrier": code, "cable length": str(length_m)})
