@@ -257,10 +257,25 @@ def _count(text: str) -> Outcome:
     return Outcome(value=int(found[1])) if found else _in_trouble(f"'{text}' is no count")
 
 
+_NEGLIGIBLE: Final = re.compile(
+    r"(?:negl(?:igible|igibly small|igeable)?|vernachl(?:(?:ä|ae)ssigbar(?: klein)?)?|verwaarloosbaar|n[ée]gligeable"
+    r"|trascurabile|despreciable)\.?",
+    re.IGNORECASE,
+)
+# Of a device's certificate: what is negligible counts as nothing.
+_MAY_BE_NEGLIGIBLE: Final = frozenset({"ci_nf", "li_uh"})
+
+
 def number_cell(field: str, unit: str, *, stated: str | None, decimal: str | None) -> Read:
-    """Return the reader of a column of bare numbers; parameters as for `read_plain_number`."""
+    """Return the reader of a column of bare numbers; parameters as for `read_plain_number`.
+
+    >>> number_cell("ci_nf", "nF", stated=None, decimal=None)("negligible").value
+    0.0
+    """
 
     def read(cell: Value) -> Outcome:
+        if field in _MAY_BE_NEGLIGIBLE and isinstance(cell, str) and _NEGLIGIBLE.fullmatch(cell.strip()):
+            return Outcome(value=0.0)
         value = read_plain_number(cell, unit, heading_unit=stated, decimal=decimal)
         return Outcome(trouble=value) if isinstance(value, CellTrouble) else Outcome(value=value)
 

@@ -5,6 +5,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from instruments.columns import CONTACTS, HIGH_LOW, LOCATIONS, MOUNTINGS, POSITIONS
+from instruments.workbook.cell import number_cell
 from instruments.workbook.column_unit import factor_to, read_plain_number
 from instruments.workbook.words import Words, folded, is_ditto, is_plainly_a_value, not_live, placeholder, yes_or_no
 
@@ -205,3 +206,18 @@ def test_plain_numbers(cell: object, unit: str, heading: str | None, value: floa
 @pytest.mark.parametrize(("cell", "unit"), [("abc", "V"), ("30 kg", "V"), ("5 barg", ""), ("1-2", "V"), ("", "V")])
 def test_what_is_no_plain_number_is_trouble(cell: object, unit: str) -> None:
     assert not isinstance(read_plain_number(cell, unit, heading_unit=None, decimal="."), float)
+
+
+@pytest.mark.parametrize("text", ["negligible", "Negl.", "vernachlässigbar", "vernachlaessigbar klein", "négligeable"])
+@pytest.mark.parametrize("field", ["ci_nf", "li_uh"])
+def test_what_a_certificate_calls_negligible_counts_as_nothing(field: str, text: str) -> None:
+    assert number_cell(field, "nF", stated=None, decimal=None)(text).value == 0.0
+
+
+@pytest.mark.parametrize(
+    ("field", "text"), [("co_iic_nf", "negligible"), ("ci_nf", "negligible or 3"), ("pi_mw", "negl.")]
+)
+def test_nothing_else_is_negligible(field: str, text: str) -> None:
+    read = number_cell(field, "nF", stated=None, decimal=None)(text)
+    assert read.value is None
+    assert read.trouble is not None
