@@ -142,14 +142,20 @@ def width_mm(text: str, style: Style) -> float:
     return _measured(text, style)[1] * style.size_pt
 
 
+MOST_SET: Final = 4000
+"""Characters of a text that are printed; a cell of a list may hold 32,767, and a sheet repeats it ten times."""
+
 _BREAK_AFTER: Final = frozenset("-/,.;:_+&)]}")
 
 
 def wrapped(text: str, style: Style, room_mm: float) -> list[str]:
     """Return a text in lines that fit, none of its characters lost but the blanks at which it breaks.
 
-    A word wider than the room is broken, behind a dash, a stroke or a stop where it has one.
+    A word wider than the room is broken, behind a dash, a stroke or a stop where it has one. What no sheet is for,
+    a text of more than `MOST_SET` characters, is cut and says so.
     """
+    if len(text) > MOST_SET:
+        text = f"{text[:MOST_SET]} \u2026 (cut: {len(text):,} characters)"
     text, width = _measured(text, style)
     if width * style.size_pt <= room_mm:
         return [text]

@@ -9,6 +9,7 @@ from hypothesis import strategies as st
 from loops.sheet.flow import (
     BODY,
     HEAD,
+    MOST_SET,
     NOTHING,
     PAD_X,
     SMALL,
@@ -107,6 +108,12 @@ def test_a_row_higher_than_a_page_goes_on() -> None:
     assert all(said.count(f"word{number} ") == 2 for number in range(299))
     assert len(pages) > 4
     assert max(shape.box.bottom for page in pages for shape in page if isinstance(shape, Text)) <= 60.0
+
+
+@pytest.mark.parametrize(("length", "kept"), [(MOST_SET, MOST_SET), (MOST_SET + 1, MOST_SET), (32_000, MOST_SET)])
+def test_a_text_that_no_sheet_is_for_is_cut_and_says_so(length: int, kept: int) -> None:
+    said = "".join(wrapped("y" * length, BODY, 40.0)).replace(" ", "")
+    assert said == "y" * kept + ("" if length == kept else f"\u2026(cut:{length:,}characters)")
 
 
 def test_a_row_of_more_than_half_a_page_begins_where_it_stands() -> None:
