@@ -9,6 +9,7 @@ from types import MappingProxyType
 from typing import Any
 
 from instruments.column import SheetKind
+from instruments.origin import column_letters
 from instruments.plant_data import PlantData
 from instruments.workbook.headings import SheetMatch, match_sheet
 from instruments.workbook.mapping import LEAVE_OUT, MappedSheet
@@ -49,6 +50,8 @@ class SheetReport:
         Section rows; title lines, notes and legends: row counted from 1, and text.
     left_out
         Whether a mapping told to leave it out.
+    turned
+        Whether its tags stood side by side, and its lines were read as columns.
     decimal, decimals
         The decimal mark that its numbers were read with, and those of columns that have another, by index.
     encoding, separator
@@ -70,6 +73,7 @@ class SheetReport:
     notes: tuple[tuple[int, str], ...] = ()
     remarks: tuple[str, ...] = ()
     left_out: bool = False
+    turned: bool = False
     decimal: str = ""
     decimals: Mapping[int, str] = field(default_factory=dict)
     encoding: str = ""
@@ -168,7 +172,7 @@ def records_of_sheets(
         No sheet holds tags.
     """
     tell = on_progress or (lambda line: None)
-    sheets = [turned for sheet in sheets for turned in turned_where_tags_stand_across(sheet, kinds)]
+    sheets = _turned(sheets, kinds, mapping)
     found_sheets = find_sheets(mapping, sheets) if mapping is not None else None
     mapped = found_sheets.mapped if found_sheets is not None else (None,) * len(sheets)
     notes: list[MappingNote] = list(found_sheets.notes) if found_sheets is not None else []
@@ -218,6 +222,20 @@ def records_of_sheets(
         index_columns=frozenset(columns),
         mapping_notes=tuple(notes),
     )
+
+
+def _turned(sheets: Sequence[Sheet], kinds: Sequence[SheetKind], mapping: ListMapping | None) -> list[Sheet]:
+    """Turn the sheets whose tags stand side by side, but for those that a mapping reads as they are."""
+    told = find_sheets(mapping, sheets).mapped if mapping is not None else (None,) * len(sheets)
+    return [
+        each
+        for sheet, mapped in zip(sheets, told, strict=True)
+        for each in (
+            (sheet,)
+            if mapped is not None and mapped.kind and not mapped.turned
+            else turned_where_tags_stand_across(sheet, kinds)
+        )
+    ]
 
 
 def _is_plant(kind: SheetKind) -> bool:
@@ -354,9 +372,7 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
     if not sheet.visible:
         remarks.append("hidden in the workbook; read like the others")
     if sheet.hidden_rows or sheet.hidden_columns:
-        remarks.append(
-            f"{len(sheet.hidden_rows)} hidden rows and {len(sheet.hidden_columns)} hidden columns, read like the others"
-        )
+        remarks.append(f"hidden, and read like the others: {_hidden(sheet, match)}")
     if found.merged:
         remarks.append(f"{found.merged} cells filled from merged cells")
     return SheetReport(
@@ -375,6 +391,39 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
         remarks=tuple(remarks),
         decimal=found.decimal,
         decimals=found.decimals,
+        turned=sheet.turned,
         encoding=sheet.encoding,
         separator=sheet.separator,
     )
+
+
+MOST_NAMED = 20
+"""Runs of hidden rows, or hidden columns, that a remark names; more of them are counted."""
+
+
+def _hidden(sheet: Sheet, match: SheetMatch) -> str:
+    """Name the hidden rows and columns of a sheet, as its own program does."""
+    rows = [(row, "") for row in sorted(sheet.hidden_rows)]
+    columns = [(column, match.headings.get(column, "")) for column in sorted(sheet.hidden_columns)]
+    lines, across = (columns, rows) if sheet.turned else (rows, columns)
+    said: list[str] = []
+    runs: list[list[int]] = []
+    for line, _ in lines:
+        if runs and runs[-1][-1] == line - 1:
+            runs[-1].append(line)
+        else:
+            runs.append([line])
+    if runs:
+        named = [f"{run[0] + 1}-{run[-1] + 1}" if len(run) > 1 else f"{run[0] + 1}" for run in runs]
+        said.append(f"row{'s' if len(lines) > 1 else ''} {_first_of(named)}")
+    if across:
+        named = [
+            f"{column_letters(column)} ({heading})" if heading else column_letters(column) for column, heading in across
+        ]
+        said.append(f"column{'s' if len(across) > 1 else ''} {_first_of(named)}")
+    return "; ".join(said)
+
+
+def _first_of(named: Sequence[str]) -> str:
+    more = len(named) - MOST_NAMED
+    return ", ".join(named[:MOST_NAMED]) + (f" and {more} more" if more > 0 else "")

@@ -90,6 +90,8 @@ class MappedSheet:
         The decimal mark; blank where no number tells.
     encoding, separator
         Of a delimited text.
+    turned
+        Its tags stand side by side: its lines are the columns here, and its columns the rows.
     """
 
     file: str
@@ -100,6 +102,7 @@ class MappedSheet:
     decimal: str = ""
     encoding: str = ""
     separator: str = ""
+    turned: bool = False
     columns: tuple[MappedColumn, ...] = ()
     line: int = field(default=0, compare=False)
 
@@ -148,6 +151,7 @@ def _sheet(report: SheetReport) -> MappedSheet:
         decimal=report.decimal,
         encoding=report.encoding,
         separator=report.separator,
+        turned=report.turned,
         columns=_columns(match, report.decimals) if match is not None and match.header_rows else (),
     )
 

@@ -28,10 +28,12 @@ MOST_BYTES: Final = 2 << 20
 _NONE: Final = "none"
 _NOT_READ: Final = "not read"
 _CELL: Final = re.compile(r"([A-Z]{1,3})([1-9][0-9]{0,6})?")
-_UNIT_OF: Final = re.compile(r"unit of ([A-Z]{1,3}(?: ?, ?[A-Z]{1,3}){0,200})", re.IGNORECASE)
+_UNIT_OF: Final = re.compile(r"unit of ([A-Z0-9]{1,7}(?: ?, ?[A-Z0-9]{1,7}){0,200})", re.IGNORECASE)
+_LETTERS: Final = re.compile(r"[A-Z]{1,3}")
 _MARKS: Final = ("", ".", ",")
 _OF_SHEET: Final = (
-    "file", "sheet", "read_as", "why", "encoding", "separator", "heading_rows", "decimal_sign", "columns",
+    "file", "sheet", "read_as", "why", "encoding", "separator", "heading_rows", "heading_columns",
+    "decimal_sign", "columns",
 )  # fmt: skip
 _OF_COLUMN: Final = (
     "cell", "heading", "field", "unit", "part", "before", "only", "decimal_sign", "how", "likely",
@@ -101,10 +103,14 @@ def _sheet_lines(sheet: MappedSheet, kind: SheetKind | None) -> Iterator[str]:
     if not sheet.heading_rows:
         yield "heading_rows = []  # a field and its value on each row"
         return
-    yield f"heading_rows = [{', '.join(str(row + 1) for row in sheet.heading_rows)}]"
+    if sheet.turned:
+        shown = ", ".join(_text(column_letters(row)) for row in sheet.heading_rows)
+        yield f"heading_columns = [{shown}]  # its tags stand side by side: each line is read as a column"
+    else:
+        yield f"heading_rows = [{', '.join(str(row + 1) for row in sheet.heading_rows)}]"
     yield f"decimal_sign = {_text(sheet.decimal)}"
     titles = {column.field: column.title for column in kind.columns}
-    rows = [_entry(column, titles) for column in sheet.columns]
+    rows = [_entry(column, titles, turned=sheet.turned) for column in sheet.columns]
     widths = [min(max((len(row[at]) for row in rows), default=0), limit) for at, limit in enumerate((14, 44, 40))]
     yield "columns = ["
     for *first, rest, found in rows:
@@ -113,12 +119,15 @@ def _sheet_lines(sheet: MappedSheet, kind: SheetKind | None) -> Iterator[str]:
     yield "]"
 
 
-def _entry(column: MappedColumn, titles: dict[str, str]) -> tuple[str, str, str, str, str]:
+def _entry(column: MappedColumn, titles: dict[str, str], *, turned: bool) -> tuple[str, str, str, str, str]:
     """Return an entry in pieces: cell, heading, field, what there may be beside, and how it was found."""
-    row = "" if column.row is None else str(column.row + 1)
+    if turned:
+        cell = f"{column_letters(column.row or 0)}{column.index + 1}"
+    else:
+        cell = column_letters(column.index) + ("" if column.row is None else str(column.row + 1))
     names = [titles.get(name, name) for name in column.fields]
     if column.unit_of:
-        names.append(f"unit of {', '.join(map(column_letters, column.unit_of))}")
+        names.append(f"unit of {', '.join(str(at + 1) if turned else column_letters(at) for at in column.unit_of)}")
     field = f"[{', '.join(map(_text, names))}]" if len(names) > 1 else _text(names[0] if names else _NONE)
     beside: list[str] = []
     if column.units is not None:
@@ -137,7 +146,7 @@ def _entry(column: MappedColumn, titles: dict[str, str]) -> tuple[str, str, str,
     if column.likelihood is not None:
         found.append(f"likely = {column.likelihood:.2f}")
     return (
-        f"cell = {_text(column_letters(column.index) + row)},",
+        f"cell = {_text(cell)},",
         f"heading = {_text(column.heading)},",
         f"field = {field}{',' if beside or found else ''}",
         "".join(f"{text}, " for text in beside),
@@ -233,7 +242,8 @@ class _Reader:
         seen: dict[tuple[str, str], int] = {}
         for each in read:
             key = (folded(each.file), folded(each.sheet))
-            if key in seen:
+            # A page of tags may stand below another on one sheet.
+            if key in seen and not each.turned:
                 self.line, self.entry = each.line, ""
                 self._refuse(f"{each.file}, sheet '{each.sheet}' stands in line {seen[key]} already")
             seen[key] = each.line
@@ -254,7 +264,10 @@ class _Reader:
         encoding = self._one_of(told, "encoding", ("", *ENCODINGS))
         separator = self._one_of(told, "separator", ("", *SEPARATORS))
         decimal = self._one_of(told, "decimal_sign", _MARKS)
-        rows = self._rows(told.get("heading_rows", []))
+        turned = "heading_columns" in told
+        if turned and "heading_rows" in told:
+            self._refuse("has heading_rows and heading_columns: the one for a list, the other for tags side by side")
+        rows = self._rows(self._numbers(told["heading_columns"]) if turned else told.get("heading_rows", []))
         columns: tuple[MappedColumn, ...] = ()
         entries = told.get("columns", [])
         if not isinstance(entries, list) or not all(isinstance(each, dict) for each in entries):
@@ -263,7 +276,7 @@ class _Reader:
             if entries and not rows:
                 self._refuse("has columns, and no 'heading_rows' that they stand under")
             columns = tuple(
-                self._column(each, lines[at] if at < len(lines) else line, self.kinds[kind], file, sheet)
+                self._column(each, lines[at] if at < len(lines) else line, self.kinds[kind], file, sheet, turned)
                 for at, each in enumerate(entries)
             )
             self._contradictions(columns, self.kinds[kind], file, sheet)
@@ -276,6 +289,7 @@ class _Reader:
             decimal=decimal,
             encoding=encoding,
             separator=separator,
+            turned=turned,
             columns=columns,
             line=line,
         )
@@ -291,6 +305,15 @@ class _Reader:
             self._refuse(f"read_as: there is no kind of sheet '{text}'; {_nearest(text, [*self.kinds, LEAVE_OUT])}")
         return found
 
+    def _numbers(self, told: Any) -> list[int]:
+        """Return columns by number, counted from 1."""
+        letters = [told] if isinstance(told, str) else told
+        if not isinstance(letters, list) or not all(
+            isinstance(each, str) and _LETTERS.fullmatch(each) for each in letters
+        ):
+            self._refuse(f'heading_columns is no list of columns, such as ["B"]: {_shown(told)}')
+        return [column_number(each) + 1 for each in letters]
+
     def _rows(self, told: Any) -> tuple[int, ...]:
         rows = [told] if isinstance(told, int) else told
         if not isinstance(rows, list) or not all(type(row) is int and 1 <= row <= MAX_ROWS for row in rows):
@@ -304,13 +327,15 @@ class _Reader:
 
     # --- a column -------------------------------------------------------------------------------------------------
 
-    def _column(self, told: dict[str, Any], line: int, kind: SheetKind, file: str, sheet: str) -> MappedColumn:
+    def _column(
+        self, told: dict[str, Any], line: int, kind: SheetKind, file: str, sheet: str, turned: bool
+    ) -> MappedColumn:
         self.line, self.entry = line, f"{file}, sheet '{sheet}'"
         heading = self._string(told, "heading")
         self.line, self.entry = line, f"heading '{heading}' of {file}, sheet '{sheet}'"
         self._known_keys(told, _OF_COLUMN)
         cell = _CELL.fullmatch(self._string(told, "cell"))
-        if cell is None or column_number(cell[1]) >= MAX_COLUMNS:
+        if cell is None or column_number(cell[1]) >= MAX_COLUMNS or (turned and not cell[2]):
             self._refuse(f"cell is no cell such as C5: {_shown(told.get('cell', 'missing'))}")
         fields, unit_of = self._fields(told.get("field", _NONE), kind)
         part = told.get("part", 0)
@@ -322,9 +347,10 @@ class _Reader:
         if only and not re.fullmatch("[A-Za-z]", only):
             self._refuse(f"only is one letter, with which tags begin: {_shown(only)}")
         likelihood = told.get("likely")
+        column, row = column_number(cell[1]), int(cell[2]) - 1 if cell[2] else None
         return MappedColumn(
-            index=column_number(cell[1]),
-            row=int(cell[2]) - 1 if cell[2] else None,
+            index=row if turned and row is not None else column,
+            row=column if turned else row,
             heading=heading,
             fields=tuple(column.field for column in fields),
             units=self._units(told["unit"], fields) if "unit" in told else None,
@@ -349,12 +375,19 @@ class _Reader:
                 continue
             speaks_for = _UNIT_OF.fullmatch(text.strip())
             if speaks_for is not None:
-                unit_of += tuple(column_number(each.strip().upper()) for each in speaks_for[1].split(","))
+                unit_of += tuple(self._line_or_column(each.strip().upper()) for each in speaks_for[1].split(","))
                 continue
             fields.append(self._field(text, kind))
         if len({column.field for column in fields}) < len(fields):
             self._refuse(f"field names one field twice: {_shown(told)}")
         return fields, unit_of
+
+    def _line_or_column(self, text: str) -> int:
+        if text.isascii() and text.isdecimal() and int(text):
+            return int(text) - 1
+        if not _LETTERS.fullmatch(text):
+            self._refuse(f"'{text}' is no column, such as C")
+        return column_number(text)
 
     def _field(self, text: str, kind: SheetKind) -> Column:
         plain = folded(text)

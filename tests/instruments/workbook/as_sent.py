@@ -13,6 +13,7 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from instruments.workbook.files import read_lists
 from instruments.workbook.lists import Lists
+from tests.instruments.workbook.accounted import assert_mapping_reads_the_same, assert_no_cell_is_lost
 from tests.instruments.workbook.sheets import KINDS, said
 
 Look = Callable[[Worksheet], None]
@@ -46,26 +47,25 @@ def fill(sheet: Worksheet, text: str) -> None:
 def workbook(path: Path, sheets: str | Mapping[str, str], look: Look | None = None) -> Path:
     """Write a workbook: its sheets by name, or the text of one; `look` dresses the last."""
     made = openpyxl.Workbook()
-    made.remove(made.active)
+    first = made.active
+    assert first is not None
+    made.remove(first)
     for name, text in ({"Index": sheets} if isinstance(sheets, str) else sheets).items():
-        sheet = made.create_sheet(name)
-        fill(sheet, text)
+        fill(made.create_sheet(name), text)
     if look is not None:
-        look(sheet)
+        look(made.worksheets[-1])
     made.save(path)
     return path
 
 
 def delimited(path: Path, text: str, *, separator: str = ",", encoding: str = "utf-8") -> Path:
     """Write a delimited text of lines with bars between the cells, quoted where they must be."""
-    lines = []
+    lines: list[str] = []
+    quoted = re.compile(rf'[{separator}"\n]')
     for line in text.strip("\n").split("\n"):
         pieces = [piece.replace("\\n", "\n") for piece in line.split("|")]
-        quoted = [
-            '"' + piece.replace('"', '""') + '"' if re.search(rf'[{separator}"\n]', piece) else piece
-            for piece in pieces
-        ]
-        lines.append(separator.join(quoted))
+        written = ['"' + piece.replace('"', '""') + '"' if quoted.search(piece) else piece for piece in pieces]
+        lines.append(separator.join(written))
     path.write_bytes("\r\n".join([*lines, ""]).encode(encoding))
     return path
 
@@ -76,6 +76,8 @@ def as_read(*paths: Path) -> Lists:
     assert [(each.sheet, each.cells_read + each.cells_unread) for each in found.sheets if each.kind] == [
         (each.sheet, each.cells_filled) for each in found.sheets if each.kind
     ]
+    assert_no_cell_is_lost(paths, found)
+    assert_mapping_reads_the_same(paths, found)
     return found
 
 
