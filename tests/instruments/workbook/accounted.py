@@ -1,4 +1,4 @@
-"""What must hold of every file that is read: no cell is lost, and the mapping that it leaves reads it again the same."""
+"""What must hold of every file that is read: no cell is lost, and by the mapping that it leaves it reads the same."""
 
 from __future__ import annotations
 
@@ -29,8 +29,11 @@ def cells_in(path: Path, *, encoding: str = "", separator: str = "", quotes: boo
         text = path.read_bytes().decode({"UTF-8": "utf-8-sig", "UTF-16": "utf-16"}.get(encoding, "cp1252"), "replace")
         if text.lower().startswith("sep="):
             text = text.partition("\n")[2]
-        quoting = csv.QUOTE_MINIMAL if quotes else csv.QUOTE_NONE
-        rows = csv.reader(io.StringIO(text, newline=""), delimiter=separator, quoting=quoting)
+        rows = csv.reader(
+            io.StringIO(text, newline=""),
+            delimiter=separator,
+            quoting=csv.QUOTE_MINIMAL if quotes else csv.QUOTE_NONE,
+        )
         return sum(bool(cell.strip(_SHOWS_NOTHING)) and cell != '=""' for row in rows for cell in row)
     book = openpyxl.load_workbook(path)
     return sum(
@@ -101,6 +104,11 @@ def _read_by(paths: Sequence[Path], mapping: Mapping, stated: Sequence[PlantEntr
         file.write_text(mapping_text(mapping, KINDS), encoding="utf-8")
         read = read_mapping(file, KINDS)
     assert without_how(read) == without_how(mapping)
-    told = {each.file: {"encoding": each.encoding, "separator": each.separator} for each in read.sheets}
-    sheets = [sheet for path in paths for sheet in read_file(path, **told.get(path.name, {}))]
+    told = {each.file: (each.encoding, each.separator) for each in read.sheets}
+    sheets = [
+        sheet
+        for path in paths
+        for encoding, separator in [told.get(path.name, ("", ""))]
+        for sheet in read_file(path, encoding=encoding, separator=separator)
+    ]
     return records_of_sheets(sheets, KINDS, stated=stated, files=tuple(map(str, paths)), mapping=read)
