@@ -220,7 +220,7 @@ def _of_input(circuit: Circuit, data: PlantData, *, named: bool) -> Loads:
             made.append(_of_transmitter(circuit, data, kind, named=named))
     if isolator is not None:
         if isolator.maximum_load_ohm is None:
-            missing.append("maximum load ohm of the isolator")
+            missing.append("maximum load ohm")
         else:
             found = Series()
             indicators_in_series(circuit, found, system_side=True)
@@ -263,7 +263,7 @@ def _of_transmitter(circuit: Circuit, data: PlantData, kind: DeviceType, *, name
     if circuit.isolator is not None:
         behind = isolator_input(circuit, NOMINAL_MA)
         if behind is None:
-            found.missing.append("input ohm of the isolator")
+            found.missing.append("input ohm")
         else:
             found.terms.append(behind)
     else:

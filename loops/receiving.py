@@ -105,8 +105,8 @@ def silent_receivers(circuit: Circuit) -> tuple[str, ...]:
     for member in indicators(circuit):
         kind = member.type
         if kind is None or (kind.resistance_ohm is None and kind.input_ohm is None and kind.fixed_drop_v is None):
-            found.append(f"resistance ohm or input ohm of {member.name}")
-    return tuple(found)
+            found.append("resistance ohm or input ohm")
+    return tuple(dict.fromkeys(found))
 
 
 # ------------------------------------------------------------------------------------------------ series indicators

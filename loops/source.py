@@ -69,7 +69,7 @@ def parts_of(circuit: Circuit) -> Parts:
         name=name,
         what=ISOLATOR,
         role=_stated(isolator) or ("source" if _gives(isolator) else None),
-        missing="source or sink of the isolator",
+        missing="source or sink",
     )
     return Parts(field=(*devices, to_field), system=(_to_the_system(isolator, name, output), _card(circuit, output)))
 
@@ -108,9 +108,7 @@ def _card(circuit: Circuit, output: bool) -> Part:
     role = _stated(card)
     if role is None and (_gives(card) if output else card.available_20ma_v is not None):
         role = "source"
-    return Part(
-        name=f"card {card.code or circuit.card_named}", what=CARD, role=role, missing="source or sink of the card"
-    )
+    return Part(name=f"card {card.code or circuit.card_named}", what=CARD, role=role, missing="source or sink")
 
 
 def _to_the_system(isolator: DeviceType, name: str, output: bool) -> Part:
@@ -122,7 +120,7 @@ def _to_the_system(isolator: DeviceType, name: str, output: bool) -> Part:
         name=f"output of {name}",
         what=ISOLATOR,
         role="source",
-        missing="maximum load ohm of the isolator",
+        missing="maximum load ohm",
         assumed=f"the output of {isolator.code} drives its current itself",
     )
 
