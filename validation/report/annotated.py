@@ -33,6 +33,9 @@ _FILLS: Final[Mapping[str, Fill]] = {
     "gap": Fill(pale="BDD7EE", dark="1F4E79"),
     "review": Fill(pale="DCCBEF", dark="5B2C83"),
 }
+_MENDED: Final = Mark(
+    fill=Fill(pale="C6E7C8", dark="1E5B24"), text=(Passage("Found by an earlier audit, and not by the last one."),)
+)
 _LEGEND: Final = (
     "Screening aid - requires review by a competent person. Marked by Ferrule: red danger, orange fault, blue gap, "
     "violet to be reviewed; each comment says what was found in its cell. The whole list stands in exceptions.xlsx."
@@ -159,7 +162,7 @@ class Annotations:
         """
         marks = self.marks(file)
         if _is_workbook(file):
-            return _annotated(write_marked_copy(file, path, marks, author=AUTHOR))
+            return _annotated(write_marked_copy(file, path, marks, author=AUTHOR, mended=_MENDED))
         with tempfile.TemporaryDirectory(prefix="ferrule-") as folder:
             plain = Path(folder) / "list.xlsx"
             name = write_text_workbook(read_file(file)[0], plain)
@@ -176,7 +179,7 @@ def _is_workbook(file: str) -> bool:
 
 
 def _annotated(copied: MarkedCopy) -> Annotated:
-    remarks = [f"sheet {sheet!r} is left unmarked: it {reason}" for sheet, reason in copied.unmarked]
+    remarks = [f"sheet {sheet!r} is left unmarked: {reason}" for sheet, reason in copied.unmarked]
     if copied.signed:
         remarks.append("the list is digitally signed; its signature does not hold for the copy")
     return Annotated(cells=copied.cells, sheets=copied.sheets, remarks=tuple(remarks))

@@ -5,7 +5,7 @@ from __future__ import annotations
 import hashlib
 import os
 import tempfile
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from pathlib import Path
 from types import TracebackType
 
@@ -24,10 +24,18 @@ class Outputs:
 
     Used as a context manager: left normally, the files take their names in the order in which they
     were added; left by an exception, nothing of them remains.
+
+    Parameters
+    ----------
+    folder
+        Where they go.
+    keep
+        Files that are never written over: the lists themselves, one of which may be an annotated copy.
     """
 
-    def __init__(self, folder: Path) -> None:
+    def __init__(self, folder: Path, *, keep: Sequence[Path] = ()) -> None:
         self.folder = folder
+        self._keep = keep
         self.digests: dict[str, str] = {}
         self._made: list[tuple[Path, Path]] = []
 
@@ -47,6 +55,9 @@ class Outputs:
 
         A file whose writing fails is left out; the others may still take their names.
         """
+        final = self.folder / name
+        if final.exists() and any(final.samefile(path) for path in self._keep if path.exists()):
+            raise CannotWrite(final, "is the list that is read; name another folder with --to")
         try:
             handle, text = tempfile.mkstemp(prefix=".ferrule-", suffix=".part", dir=self.folder)
             os.close(handle)

@@ -77,6 +77,7 @@ def with_boxes(
     data: bytes | None,
     new: Mapping[Place, str],
     longer: Mapping[Place, str],
+    afresh: Mapping[Place, str],
     *,
     grid: Grid,
     numbers: Numbers,
@@ -87,8 +88,8 @@ def with_boxes(
     ----------
     data
         The drawing; None where the sheet has none yet.
-    new, longer
-        The texts of new comments, and those added to others, by their cells.
+    new, longer, afresh
+        The texts of new comments, those added to others, and those in place of others; by their cells.
     grid
         How wide the sheet's columns are and how high its rows.
     numbers
@@ -113,8 +114,8 @@ def with_boxes(
             data_of = comma + b",".join(b"%d" % cluster for cluster in clusters)
             edits.append(Edit(listed.end(1), listed.end(1), data_of))
         edits.append(Edit(end, end, b"".join(made)))
-    if longer:
-        edits += _stretched(drawing, longer, grid)
+    if longer or afresh:
+        edits += _stretched(drawing, longer, afresh, grid)
     return b"".join(spliced([drawing], edits))
 
 
@@ -155,18 +156,20 @@ def _walk(at: int, px: float, size: Callable[[int], float], most: int) -> tuple[
     return at, int(max(0.0, min(px, size(at))))
 
 
-def _stretched(drawing: bytes, longer: Mapping[Place, str], grid: Grid) -> Iterable[Edit]:
-    """Return the edits that make room in boxes of comments that became longer."""
+def _stretched(drawing: bytes, longer: Mapping[Place, str], afresh: Mapping[Place, str], grid: Grid) -> Iterable[Edit]:
+    """Return the edits that give boxes the room that their comments take now."""
     for client in _CLIENT.finditer(drawing):
         row, column, anchor = (pattern.search(client[1]) for pattern in (_ROW, _COLUMN, _ANCHOR))
         if row is None or column is None or anchor is None:
             continue
-        text = longer.get((int(row[1]), int(column[1])))
-        if text is None:
-            continue
-        corners = [int(number) for number in anchor[1].split(b",")]
-        if corners[6] >= MAX_ROWS:
-            continue
-        corners[6], corners[7] = _walk(corners[6], corners[7] + _height_px(text), grid.height, MAX_ROWS)
+        place = int(row[1]), int(column[1])
         at = client.start(1) + anchor.start(1)
-        yield Edit(at, at + len(anchor[1]), b", ".join(b"%d" % corner for corner in corners))
+        if place in afresh:
+            yield Edit(at, at + len(anchor[1]), _anchor(place, _height_px(afresh[place]), grid))
+        elif place in longer:
+            corners = [int(number) for number in anchor[1].split(b",")]
+            if corners[6] < MAX_ROWS:
+                corners[6], corners[7] = _walk(
+                    corners[6], corners[7] + _height_px(longer[place]), grid.height, MAX_ROWS
+                )
+            yield Edit(at, at + len(anchor[1]), b", ".join(b"%d" % corner for corner in corners))

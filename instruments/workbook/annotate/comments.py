@@ -27,6 +27,9 @@ class Passage(NamedTuple):
 
 Text = Sequence[Passage]
 
+_HEADED: Final = b"%b:\n"
+"""What stands in a run of its own above a text that is added to somebody else's comment."""
+
 Place = tuple[int, int]
 
 
@@ -67,28 +70,37 @@ class Comments:
             place = cell_position(child.attributes.get("ref", "")) if child.name == "comment" else None
             if place is not None:
                 self.standing[place] = child
+        name = text_in_xml(author)
+        self.own: frozenset[Place] = frozenset(place for place in self.standing if self._author_of(place) == name)
+        """The cells whose comment is this author's, from an earlier copy."""
+        self.added: frozenset[Place] = frozenset(
+            place for place, comment in self.standing.items() if self._added_before(comment) is not None
+        )
+        """The cells where an earlier copy added something to a comment of somebody else's."""
 
     def length(self, place: Place) -> int:
-        """Return how many bytes the text of a comment takes that stands there; 0 where there is none."""
+        """Return how many bytes the text of somebody else's comment takes that stands there; else 0."""
         comment = self.standing.get(place)
         text = comment.first("text") if comment else None
-        return text.close - text.inside if text else 0
+        return text.close - text.inside if text and place not in self.own else 0
+
+    def _author_of(self, place: Place) -> bytes:
+        number = self.standing[place].attributes.get("authorId", "")
+        authors = self._root.first("authors")
+        names = authors.children if authors else []
+        if not (number.isascii() and number.isdigit() and len(number) < 7) or int(number) >= len(names):
+            return b""
+        return self._data[names[int(number)].inside : names[int(number)].close].strip()
 
     def thread_of(self, place: Place) -> bool:
         """Whether the comment of a cell stands for a thread, which newer programs show in its place."""
-        comment = self.standing.get(place)
-        authors = self._root.first("authors")
-        if comment is None or authors is None:
-            return False
-        number = comment.attributes.get("authorId", "")
-        names = authors.children
-        if not (number.isascii() and number.isdigit() and len(number) < 7) or int(number) >= len(names):
-            return False
-        author = names[int(number)]
-        return self._data[author.inside : author.close].strip().startswith(b"tc=")
+        return place in self.standing and self._author_of(place).startswith(b"tc=")
 
     def with_added(self, texts: Mapping[Place, Text]) -> bytes:
-        """Return the part with a comment added to each of these cells, beneath what stands there."""
+        """Return the part with a comment added to each of these cells, beneath what stands there.
+
+        What was added to an earlier copy gives way to what is added now.
+        """
         prefix = self._root.prefix
         edits: list[Edit] = []
         number = self._author_number(edits)
@@ -108,6 +120,10 @@ class Comments:
                         prefix,
                     )
                 )
+            elif place in self.own:
+                made = b"<%btext>%b</%btext>" % (prefix, _runs(texts[place], prefix), prefix)
+                holder = comment.first("text")
+                edits.append(Edit(holder.start, holder.end, made) if holder else comment.appended(self._data, made))
             else:
                 edits += self._beneath(comment, texts[place])
         if new:
@@ -146,8 +162,23 @@ class Comments:
                 edits.append(Edit(child.end, child.end, b"</%br>" % prefix))
             elif child.name in ("rPh", "phoneticPr"):
                 at = min(at, child.start)
-        edits.append(Edit(at, at, runs))
+        begun = self._added_before(comment)
+        edits.append(Edit(at if begun is None else begun, at, runs))
         return edits
+
+    def _added_before(self, comment: Element) -> int | None:
+        """Return where in somebody else's comment begins what an earlier copy added; None where it has nothing."""
+        holder = comment.first("text")
+        previous: Element | None = None
+        for run in holder.children if holder else ():
+            text = run.first("t") if run.name == "r" else None
+            if text is None:
+                continue
+            said = self._data[text.inside : text.close]
+            if said == _HEADED % text_in_xml(self._author):
+                return run.start if previous is None else previous.start
+            previous = run if not said.strip() else None
+        return None
 
 
 def _empty(space: str) -> bytes:

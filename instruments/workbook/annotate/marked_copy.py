@@ -36,6 +36,8 @@ _MOST_BYTES_PARSED: Final = 150_000_000
 _ROOM_WORTH: Final = 200
 """With less room than this in a comment nothing is added to it."""
 
+_A_FEW_LINES: Final = "\n" * 4
+
 _CUT: Final = "... (cut)"
 
 
@@ -84,6 +86,7 @@ def write_marked_copy(
     marks: Mapping[str, Mapping[Place, Mark]],
     *,
     author: str,
+    mended: Mark | None = None,
     limits: Limits = LIMITS,
 ) -> MarkedCopy:
     """Write a copy of a workbook in which cells are marked; every part that this does not change is the same bytes.
@@ -96,6 +99,9 @@ def write_marked_copy(
         The marks by sheet and by row and column, counted from 0.
     author
         Whose comments they are.
+    mended
+        What cells get that bear a comment of this author's, as the workbook is such a copy itself, and
+        are not marked any more; None leaves them as they are.
     limits
         How large the workbook may be.
 
@@ -108,7 +114,7 @@ def write_marked_copy(
     """
     with Package(source, file=os.fspath(source), limits=limits) as package:
         try:
-            return _Copy(package, author).write(target, marks)
+            return _Copy(package, author, mended).write(target, marks)
         except BrokenXml as error:
             raise UnreadableFile(package.file, "", str(error)) from None
 
@@ -116,8 +122,9 @@ def write_marked_copy(
 class _Copy:
     """One copy while it is made."""
 
-    def __init__(self, package: Package, author: str) -> None:
+    def __init__(self, package: Package, author: str, mended: Mark | None) -> None:
         self._package = package
+        self._mended = mended
         self._author = author
         self._changes = Changes(package)
         self._contents = read_contents(package)
@@ -133,26 +140,24 @@ class _Copy:
                 self._numbers.note(b"".join(self._package.pieces(name)))
         cells = sheets = 0
         unmarked: list[tuple[str, str]] = []
-        known = {entry.name: entry for entry in contents.sheets}
         strict = False
-        for sheet, wanted in marks.items():
-            if not wanted:
-                continue
-            if sheet not in known:
-                unmarked.append((sheet, "is not in the workbook any more"))
-                continue
+        there = {entry.name for entry in contents.sheets}
+        gone = [sheet for sheet, wanted in marks.items() if wanted and sheet not in there]
+        unmarked += ((sheet, "it is not in the workbook any more") for sheet in gone)
+        for entry in contents.sheets:
+            sheet, wanted = entry.name, marks.get(entry.name, {})
+            state = self._styles.state()
             try:
-                marked, frame = self._mark(known[sheet], wanted)
-            except BrokenXml as error:
-                unmarked.append((sheet, str(error)))
-            except UnreadableFile as error:
-                unmarked.append((sheet, f"{error.place} {error.reason}".strip()))
-            except NotPlain:
-                unmarked.append((sheet, "is not what a sheet looks like"))
+                if not wanted and not self._marked_before(entry):
+                    continue
+                marked, frame = self._mark(entry, wanted)
+            except (BrokenXml, UnreadableFile, NotPlain) as error:
+                self._styles.back_to(state)
+                unmarked.append((sheet, _reason(error)))
             else:
                 strict = strict or frame.strict
                 cells += marked
-                sheets += 1
+                sheets += bool(marked)
         if self._styles.changed:
             self._write_styles(strict=strict)
         changes.write(target)
@@ -175,11 +180,29 @@ class _Copy:
 
     # --- one sheet ----------------------------------------------------------------------------------------------
 
+    def _marked_before(self, entry: SheetEntry) -> bool:
+        """Whether a sheet bears comments of an earlier copy that may have to go."""
+        if self._mended is None:
+            return False
+        name = _target(self._package.relations(entry.part), "comments")
+        if name is None:
+            return False
+        comments = Comments(self._changes.part(name), author=self._author)
+        return bool(comments.own or comments.added)
+
     def _mark(self, entry: SheetEntry, wanted: Mapping[Place, Mark]) -> tuple[int, Frame]:
         """Mark the cells of one sheet; nothing of it is changed where it cannot be done whole."""
         package = self._package
         frame = frame_of(lambda: package.pieces(entry.part), lambda: self._whole(entry.part))
-        marks = _on_what_is_seen(wanted, frame)
+        relations = package.relations(entry.part)
+        comments_part = _target(relations, "comments")
+        comments = Comments(
+            self._changes.part(comments_part) if comments_part else None, author=self._author, strict=frame.strict
+        )
+        marks = dict(_on_what_is_seen(wanted, frame))
+        count = len(marks)
+        if self._mended is not None:
+            marks = dict.fromkeys(comments.own | comments.added, self._mended) | marks
         rows: dict[int, list[int]] = {}
         for row, column in sorted(marks):
             rows.setdefault(row, []).append(column)
@@ -192,7 +215,7 @@ class _Copy:
         except NotPlain:
             frame = parsed_frame(self._whole(entry.part))
             edits = cell_edits(frame, (frame.data,), rows, restyle)
-        beside = self._beside(entry.part, frame, marks)
+        beside = self._beside(relations, comments_part, comments, frame, marks)
         spaces = _STRICT_KINDS if frame.strict else _KINDS
         for name, data in beside.changed.items():
             self._changes.put_bytes(name, data)
@@ -204,7 +227,7 @@ class _Copy:
             relation = self._changes.refer(entry.part, "vmlDrawing", beside.boxes, spaces=spaces)
             edits.append(legacy_drawing(frame, relation, spaces))
         self._changes.put(entry.part, functools.partial(self._edited, entry.part, edits, plain=frame.plain))
-        return len(marks), frame
+        return count, frame
 
     def _whole(self, part: str) -> bytes:
         return in_utf8(b"".join(self._package.pieces(part, at_most=_MOST_BYTES_PARSED)))
@@ -212,20 +235,22 @@ class _Copy:
     def _edited(self, part: str, edits: list[Edit], *, plain: bool) -> Iterable[bytes]:
         return spliced(self._package.pieces(part) if plain else (self._whole(part),), edits)
 
-    def _beside(self, part: str, frame: Frame, marks: Mapping[Place, Mark]) -> _Beside:
+    def _beside(
+        self,
+        relations: Mapping[str, Relation],
+        comments_part: str | None,
+        comments: Comments,
+        frame: Frame,
+        marks: Mapping[Place, Mark],
+    ) -> _Beside:
         """Return what becomes of the parts beside a sheet: its comments, their boxes and its threads."""
         changes = self._changes
-        relations = self._package.relations(part)
         beside = _Beside({}, "", "")
-        name = _target(relations, "comments")
-        if name is None:
-            name = beside.comments = changes.free_name("xl/comments{}.xml")
-            comments = Comments(None, author=self._author, strict=frame.strict)
-        else:
-            comments = Comments(changes.part(name), author=self._author)
+        if comments_part is None:
+            comments_part = beside.comments = changes.free_name("xl/comments{}.xml")
         texts = {place: _within(mark.text, comments.length(place)) for place, mark in marks.items()}
         texts = {place: text for place, text in texts.items() if text}
-        beside.changed[name] = comments.with_added(texts)
+        beside.changed[comments_part] = comments.with_added(texts)
         said = {place: plain_text(text) for place, text in texts.items()}
         boxes: str | None = None
         if frame.drawing is not None:
@@ -234,16 +259,23 @@ class _Copy:
                 raise BrokenXml("refers to a drawing of comments that the workbook has not got")
             boxes = relation.target
         # Without boxes the comments that stand there have none either.
-        without = dict.fromkeys(comments.standing, "") if boxes is None else {}
-        new = without | {place: text for place, text in said.items() if place not in comments.standing}
-        longer = {place: text for place, text in said.items() if place in comments.standing}
+        new = dict.fromkeys(comments.standing, _A_FEW_LINES) if boxes is None else {}
+        new |= {place: text for place, text in said.items() if place not in comments.standing}
+        afresh = {place: text for place, text in said.items() if place in comments.own}
+        first_time = comments.standing.keys() - comments.own - comments.added
+        longer = {place: text for place, text in said.items() if place in first_time}
         drawn = with_boxes(
-            changes.part(boxes) if boxes is not None else None, new, longer, grid=frame.grid, numbers=self._numbers
+            changes.part(boxes) if boxes is not None else None,
+            new,
+            longer,
+            afresh,
+            grid=frame.grid,
+            numbers=self._numbers,
         )
         if boxes is None:
             boxes = beside.boxes = changes.free_name("xl/drawings/vmlDrawing{}.vml")
         beside.changed[boxes] = drawn
-        threaded = {place: text for place, text in longer.items() if comments.thread_of(place)}
+        threaded = {place: text for place, text in said.items() if comments.thread_of(place)}
         if threaded:
             self._reply(relations, threaded, beside)
         return beside
@@ -264,6 +296,12 @@ class _Beside:
     changed: dict[str, bytes]
     comments: str
     boxes: str
+
+
+def _reason(error: Exception) -> str:
+    if isinstance(error, UnreadableFile):
+        return f"{error.place} {error.reason}".strip()
+    return f"it, or a part beside it, {str(error) or 'is not what it should look like'}"
 
 
 def _target(relations: Mapping[str, Relation], kind: str) -> str | None:

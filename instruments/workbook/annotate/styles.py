@@ -78,6 +78,17 @@ class Styles:
         """Whether a format was added."""
         return bool(self._new_formats)
 
+    def state(self) -> tuple[int, int]:
+        """Return how much was added so far; see `back_to`."""
+        return len(self._new_fills), len(self._new_formats)
+
+    def back_to(self, state: tuple[int, int]) -> None:
+        """Forget what was added since, as the sheet that asked for it cannot be marked."""
+        while len(self._new_fills) > state[0]:
+            self._new_fills.popitem()
+        while len(self._new_formats) > state[1]:
+            self._new_formats.popitem()
+
     def filled(self, style: int, fill: Fill) -> int:
         """Return the number of the format that is `style` with another fill.
 

@@ -44,7 +44,7 @@ def with_person(data: bytes, name: str) -> tuple[bytes, str]:
 
 
 def with_replies(data: bytes, texts: Mapping[Place, str], person: str) -> bytes:
-    """Return a part of threads with a reply to the thread of each of these cells that has one.
+    """Return a part of threads with this person's reply to the thread of each of these cells that has one.
 
     A reply bears the time of the one before it: the same list gives the same copy at any time of day.
 
@@ -65,6 +65,13 @@ def with_replies(data: bytes, texts: Mapping[Place, str], person: str) -> bytes:
         if not thread:
             continue
         first, last = thread[0], thread[-1]
+        own = next((one for one in thread if one.attributes.get("personId", "").upper() == person.upper()), None)
+        if own is not None:
+            # From an earlier copy: its text gives way.
+            held = own.children[0] if own.children else None
+            if held is not None and not held.closes_itself:
+                edits.append(Edit(held.inside, held.close, text_in_xml(text)))
+            continue
         time = f' dT="{last.attributes["dT"]}"' if "dT" in last.attributes else ""
         address = cell_address(*place)
         parent = first.attributes.get("parentId") or first.attributes.get("id", "")

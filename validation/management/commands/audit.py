@@ -85,7 +85,7 @@ class Command(BaseCommand):
                 result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
                 with_consequences(result, on_fix=lambda number, of: progress.step("fixes", number, of))
                 folder = Path(options["to"])
-                with Outputs(folder) as outputs:
+                with Outputs(folder, keep=paths) as outputs:
                     self._write(outputs, result, inputs, options, progress)
             except (UnreadableFile, NoTags, CannotWrite) as error:
                 return self._cannot(str(error))

@@ -8,6 +8,7 @@ import zipfile
 from collections.abc import Callable, Mapping
 from pathlib import Path
 from typing import Any
+from xml.etree import ElementTree
 
 import openpyxl
 from openpyxl.chart import BarChart, Reference
@@ -253,6 +254,61 @@ def with_macros(data: bytes) -> bytes:
     )
 
 
+COMMENTS_TYPE = "application/vnd.openxmlformats-officedocument.spreadsheetml.comments+xml"
+THREADS = "http://schemas.microsoft.com/office/spreadsheetml/2018/threadedcomments"
+NOT_READ_HERE = "[Threaded comment]\n\nYour version allows you to read this threaded comment.\n\nComment:\n    Why 16?"
+VML = (
+    '<xml xmlns:v="urn:schemas-microsoft-com:vml" xmlns:o="urn:schemas-microsoft-com:office:office" '
+    'xmlns:x="urn:schemas-microsoft-com:office:excel"><o:shapelayout v:ext="edit"><o:idmap v:ext="edit" data="1"/>'
+    '</o:shapelayout><v:shapetype id="_x0000_t202" coordsize="21600,21600" o:spt="202" '
+    'path="m,l,21600r21600,l21600,xe"/>'
+    '<v:shape id="_x0000_s1025" type="#_x0000_t202" style="visibility:hidden"><v:textbox><div><br></div></v:textbox>'
+    '<x:ClientData ObjectType="Note"><x:Anchor>3, 15, 0, 10, 5, 15, 4, 4</x:Anchor><x:Row>1</x:Row>'
+    "<x:Column>2</x:Column></x:ClientData></v:shape></xml>"
+)
+
+
+def beside(
+    comments: str | None, *, boxes: str | None = VML, threads: str | None = None, persons: str | None = None
+) -> bytes:
+    """A package of one sheet with parts of comments beside it, as they are given."""
+    found = []
+    types = (
+        f'<Default Extension="vml" ContentType="{SHEET_TYPE}.vmlDrawing"/>'
+        f'<Override PartName="/xl/comments1.xml" ContentType="{COMMENTS_TYPE}"/>'
+    )
+    more: dict[str, str | bytes | None] = {}
+    if comments is not None:
+        found.append(("rId1", f"{KINDS}/comments", "../comments1.xml"))
+        more["xl/comments1.xml"] = f'<comments xmlns="{MAIN}">{comments}</comments>'
+    if boxes is not None:
+        found.append(("rId2", f"{KINDS}/vmlDrawing", "../drawings/vmlDrawing1.vml"))
+        more["xl/drawings/vmlDrawing1.vml"] = boxes
+    if threads is not None:
+        kind = "http://schemas.microsoft.com/office/2017/10/relationships"
+        found.append(("rId3", f"{kind}/threadedComment", "../threadedComments/threadedComment1.xml"))
+        more["xl/threadedComments/threadedComment1.xml"] = (
+            f'<ThreadedComments xmlns="{THREADS}">{threads}</ThreadedComments>'
+        )
+        more["xl/persons/person.xml"] = f'<personList xmlns="{THREADS}">{persons}</personList>'
+    more["xl/worksheets/_rels/sheet1.xml.rels"] = (
+        f'<Relationships xmlns="{RELATIONS}">'
+        + "".join(f'<Relationship Id="{one}" Type="{kind}" Target="{to}"/>' for one, kind, to in found)
+        + "</Relationships>"
+    )
+    drawing = '<legacyDrawing r:id="rId2"/>' if boxes is not None else ""
+    data = made(worksheet(PLAIN_ROWS, after=AFTER + drawing), **more)
+    with zipfile.ZipFile(io.BytesIO(data)) as package:
+        listed = package.read("[Content_Types].xml").decode().replace("</Types>", f"{types}</Types>")
+        relations = package.read("xl/_rels/workbook.xml.rels").decode()
+    if threads is not None:
+        kind = "http://schemas.microsoft.com/office/2017/10/relationships/person"
+        relations = relations.replace(
+            "</Relationships>", f'<Relationship Id="rId9" Type="{kind}" Target="persons/person.xml"/></Relationships>'
+        )
+    return with_parts(data, {"[Content_Types].xml": listed, "xl/_rels/workbook.xml.rels": relations})
+
+
 BY_OPENPYXL: Mapping[str, Callable[[], bytes]] = {
     "busy": lambda: saved(busy_book()),
     "commented": lambda: saved(commented_book()),
@@ -284,6 +340,12 @@ ORDER = (
     "webPublishItems", "tableParts", "extLst",
 )  # fmt: skip
 """The children of a worksheet as ECMA-376-1 18.3.1.99 orders them."""
+
+
+def parsed(text: str | bytes) -> ElementTree.Element:
+    """A part as the standard library reads it, which fails where it is not well-formed."""
+    return ElementTree.fromstring(text)  # noqa: S314 - of our own making
+
 
 MAY_CHANGE = re.compile(
     r"\[Content_Types\]\.xml|xl/styles\.xml|xl/worksheets/(?:_rels/)?sheet\d+\.xml(?:\.rels)?|xl/comments.*\.xml|"
@@ -369,13 +431,12 @@ def assert_marked(
 
 def assert_in_order(after: Path) -> None:
     """Assert that what stands in each sheet stands in the order of the standard, and rows and cells in theirs."""
-    from xml.etree import ElementTree
 
     with zipfile.ZipFile(after) as package:
         for name in package.namelist():
             if not re.fullmatch(r"xl/worksheets/sheet\d+\.xml", name):
                 continue
-            root = ElementTree.fromstring(package.read(name))  # noqa: S314
+            root = parsed(package.read(name))
             names = [child.tag.rpartition("}")[2] for child in root]
             places = [ORDER.index(each) for each in names if each in ORDER]
             assert places == sorted(places), names
