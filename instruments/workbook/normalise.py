@@ -50,7 +50,7 @@ from instruments.workbook.rows import RowsOfSheet, sort_rows
 from instruments.workbook.sheet import Sheet, Value
 from instruments.workbook.tag_column import TagCell, profile_of, read_tag_cell
 from instruments.workbook.unread import Unread, problems_of
-from instruments.workbook.words import is_ditto, not_live, placeholder
+from instruments.workbook.words import folded, is_ditto, not_live, placeholder
 
 __all__ = ["SheetRecords", "read_records"]
 
@@ -219,6 +219,7 @@ class _SheetReader:
         self._take_io_type_of_titles()
         self._take_status()
         self._keep_unknown()
+        self._ask_about_second_columns()
         self._add_notes_and_places()
         return self._result()
 
@@ -911,6 +912,32 @@ class _SheetReader:
                 for position, cell in enumerate(self.cells(index)):
                     if cell is not None:
                         self.other[position].append((heading, texts[cell]))
+
+    def _ask_about_second_columns(self) -> None:
+        """Tell of a column whose heading another has that is read, where they do not say the same."""
+        first = {folded(match.heading): match for match in self.match.columns.values() if not match.parts}
+        units = {index for index, _ in self.match.unit_columns}
+        read = {match.index for match in self.match.columns.values()}
+        for index, heading in self.match.headings.items():
+            match = first.get(folded(heading))
+            if match is None or index in read or index in units:
+                continue
+            pairs = list(zip(self.cells(match.index), self.cells(index), strict=True))
+            differ = [
+                position
+                for position, (one, two) in enumerate(pairs)
+                if two is not None
+                and not placeholder(as_text(two).strip())
+                and as_text(one).strip() != as_text(two).strip()
+            ]
+            if differ:
+                where = self._column_name(match.index)
+                found = trouble(f"a second column headed '{heading}', with other values: the first ({where}) is read")
+                number, text = self.numbers[differ[0]], as_text(pairs[differ[0]][1])
+                self.outside.append(Unread(number, index, "", heading, "", text, found, len(differ)))
+
+    def _column_name(self, index: int) -> str:
+        return f"line {index + 1}" if self.sheet.turned else f"column {column_letters(index)}"
 
     def _add_notes_and_places(self) -> None:
         """Put what stands beside a tag into the remarks, and the section into the place where there is no other."""

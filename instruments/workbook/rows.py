@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from typing import Final
 
 from instruments.column import Reads
+from instruments.tag_cell import split_note
 from instruments.workbook.headings import SheetMatch
 from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet, Value
@@ -72,10 +73,12 @@ _SECTION: Final = re.compile(
     r"(?:process |plant )?(?:unit|area|system|section|zone|train|anlage|bereich|teilanlage|package|plant|skid|"
     r"building|gebaeude|module|deck|level|system|circuit|part)\b.{0,120}"
 )
-_TAG_LIKE: Final = re.compile(r"[^\w(]{0,3}[\w.\-/ ()+*,&~‑–−]{0,60}", re.DOTALL)
 _UNIT_TITLE: Final = re.compile(
-    r"(?:unit|area|section|system|anlage|bereich|zone|train|page|sheet|note|rev)\b", re.IGNORECASE
+    r"(?:unit|area|section|system|anlage|teilanlage|bereich|zone|train|page|sheet|note|rev)\b", re.IGNORECASE
 )
+# What stands alone in its row and has a word in it is a title, whatever figures it has: Boiler house 2.
+_WORDY: Final = re.compile(r"(?<![^\W\d_])[^\W\d_]{4,}(?![^\W\d_])")
+_FIGURE: Final = re.compile(r"[<>~]?\s?[-+]?\d[\d.,]{0,15}")
 
 
 def looks_like_tag(text: str) -> bool:
@@ -179,7 +182,7 @@ class _Sorter:
                 known = plain.get(cell)
                 if known is None:
                     known = plain[cell] = self._is_plain_key(cell)
-                if known and (not ended or self._filled(number) > 2):
+                if known and (not ended or self._filled(number) > 2) and not self._stands_alone(number, cell):
                     ended = False
                     if self.pending:
                         self._settle_sections()
@@ -218,6 +221,12 @@ class _Sorter:
         if self.has_tags:
             return looks_like_tag(text)
         return len(text) <= 40 and not _END.fullmatch(folded(text)) and not _NOTE.fullmatch(folded(text))
+
+    def _stands_alone(self, row: int, text: str) -> bool:
+        """Whether a text of the tag column that is no plain tag is all that its row holds."""
+        if not self.has_tags or " " not in text or _WORDY.search(text) is None or self._filled(row) > 1:
+            return False
+        return not not_live(text) and split_note(text)[1] == ""
 
     def _filled(self, row: int) -> int:
         return sum(cell is not None for cell in self.sheet.rows[row])
@@ -283,7 +292,11 @@ class _Sorter:
         return False
 
     def _is_section(self, filled: Mapping[int, Value], texts: list[str], key: Value) -> bool:
-        if any(not isinstance(cell, str) for index, cell in filled.items() if index in self.mapped):
+        if any(
+            not isinstance(cell, str) or (_FIGURE.fullmatch(cell.strip()) and index in self.numeric)
+            for index, cell in filled.items()
+            if index in self.mapped
+        ):
             return False
         # The running number in front of a section is in a column that no field is read from.
         wordy = {
@@ -301,7 +314,12 @@ class _Sorter:
             return False
         index, cell = next(iter(wordy.items()))
         text = str(cell)
-        if index == self.key and self.has_tags and looks_like_tag(text):
+        if (
+            index == self.key
+            and self.has_tags
+            and looks_like_tag(text)
+            and (" " not in text or not _WORDY.search(text))
+        ):
             return False
         if index in self.numeric and len(wordy) == 1 and not re.search(r"[A-Za-z]{3}", text):
             return False

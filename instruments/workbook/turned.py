@@ -99,11 +99,8 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[_Block]:
         starts = [0]
         for before, line in pairwise(tags):
             head = folded(as_text(sheet.rows[min(first, tags[0])][labels]))
-            again = [
-                at
-                for at in range(before + 1, line + 1)
-                if folded(as_text(sheet.rows[at][labels])) == head and names[at]
-            ]
+            lines = range(before + 1, line + 1)
+            again = [at for at in lines if names[at] and folded(as_text(sheet.rows[at][labels])) == head]
             starts.append(again[0] if again else line)
         ends = [*(start - 1 for start in starts[1:]), len(sheet.rows) - 1]
         blocks = [

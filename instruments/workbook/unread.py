@@ -22,7 +22,8 @@ FEWEST_OF_A_COLUMN = 3
 class Unread(NamedTuple):
     """One cell that could not be read: where it stands (counted from 0), its field, what it holds, and why.
 
-    `field` is blank for a cell that no field is read from, `subject` for a cell of no record.
+    `field` is blank for a cell that no field is read from, `subject` for a cell of no record. `cells` is more
+    than one where it speaks of its whole column.
     """
 
     row: int
@@ -32,6 +33,7 @@ class Unread(NamedTuple):
     subject: str
     text: str
     trouble: CellTrouble
+    cells: int = 0
 
 
 def problems_of(
@@ -66,8 +68,8 @@ def problems_of(
                 text=each.text,
                 reason=each.trouble.reason,
                 readings=tuple(each.trouble.readings),
-                whole_column=whole,
-                cells_concerned=alike[key] if whole else 1,
+                whole_column=whole or each.cells > 0,
+                cells_concerned=alike[key] if whole else max(each.cells, 1),
             )
         )
     if sheet.far:
@@ -83,7 +85,7 @@ def problems_of(
                 cells_concerned=len(sheet.far),
             )
         )
-    return tuple(problems), len(unread) + len(sheet.far)
+    return tuple(problems), sum(max(each.cells, 1) for each in unread) + len(sheet.far)
 
 
 def _cell(sheet: Sheet, row: int, column: int) -> Cell:
