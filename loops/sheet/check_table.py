@@ -30,7 +30,10 @@ from loops.plant import Plant
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class CheckPoint:
-    """One point of the check table; None where it cannot be worked, or is no part of this table."""
+    """One point of the check table; None where it cannot be worked, or is no part of this table.
+
+    `sensor_warm` is a thermocouple's voltage where its terminals are at `TERMINALS_C`.
+    """
 
     percent: float
     input_value: float | None = None
@@ -38,6 +41,7 @@ class CheckPoint:
     range_v: float | None = None
     test_mv: float | None = None
     sensor: float | None = None
+    sensor_warm: float | None = None
     reading: float | None = None
 
 
@@ -76,6 +80,8 @@ class CheckTable:
 
 
 LIVE_ZERO: Final = "4-20 mA"
+TERMINALS_C: Final = 20.0
+"""Of the terminals at which millivolts are fed in, beside 0 degC: a room's."""
 
 
 def signal_of(row: Instrument, each: Installed) -> str | None:
@@ -239,6 +245,7 @@ def _sensor_table(circuit: Circuit, sensor: SensorType | None) -> CheckTable:
                 percent=percent,
                 input_value=value,
                 sensor=reading,
+                sensor_warm=_warm(sensor, reading),
                 reading=_reading(percent, system, False),
             )
         )
@@ -248,7 +255,7 @@ def _sensor_table(circuit: Circuit, sensor: SensorType | None) -> CheckTable:
     elif sensor.letter is None:
         name = f"{sensor.name}, IEC 60751"
     else:
-        name = f"{sensor.name}, IEC 60584-1, terminals at 0 \u00b0C"
+        name = f"{sensor.name}, IEC 60584-1, with the terminals at 0 or {TERMINALS_C:g} \u00b0C"
     return CheckTable(
         points=tuple(points),
         input_unit=_unit_text(source[1]) if ends is not None else None,
@@ -257,6 +264,13 @@ def _sensor_table(circuit: Circuit, sensor: SensorType | None) -> CheckTable:
         reading_unit=_unit_text(record.system_urv) if system is not None else None,
         remarks=tuple(dict.fromkeys(remarks)),
     )
+
+
+def _warm(sensor: SensorType | None, cold_mv: float | None) -> float | None:
+    """Return what is left to feed in where the terminals are warm themselves."""
+    if sensor is None or sensor.letter is None or cold_mv is None:
+        return None
+    return cold_mv - thermocouple_mv(sensor.letter, TERMINALS_C)
 
 
 def _sensor_reading(sensor: SensorType | None, value: float, unit: Unit | None, remarks: list[str]) -> float | None:

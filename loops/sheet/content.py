@@ -26,6 +26,7 @@ from loops.circuit import (
 )
 from loops.plant import Plant
 from loops.power import VoltageBudget
+from loops.sheet.check_record import Set, ToTry, things_to_try
 from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, signal_of
 from loops.sheet.pack import LoopOnPaper, area_title, filed_under
 from loops.sheet.path import Path, path_of, terminations_of
@@ -154,6 +155,7 @@ class CircuitContent:
     conductors: tuple[Conductor, ...] = ()
     power: Power | None = None
     check: CheckTable | None = None
+    tries: tuple[ToTry, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -196,9 +198,9 @@ def sheet_content(loop: LoopOnPaper, plant: Plant, *, notes: Sequence[str] | Non
     """
     members = loop.members
     service = loop_service(loop)
-    circuits = tuple(_circuit(circuit, plant, service, members) for circuit in loop.circuits)
     several_areas = len({filed_under(each) for each in members if _in_field(each)}) > 1
     settings = tuple(_setting_lines(loop, plant))
+    circuits = tuple(_circuit(circuit, plant, service, members, settings) for circuit in loop.circuits)
     return SheetContent(
         loop=loop.name,
         plant=plant.data.name,
@@ -496,7 +498,13 @@ def setting_value(value: Quantity, each: Installed, plant: Plant) -> SettingValu
 # Circuits
 
 
-def _circuit(circuit: Circuit, plant: Plant, shown_above: str | None, members: Sequence[Installed]) -> CircuitContent:
+def _circuit(
+    circuit: Circuit,
+    plant: Plant,
+    shown_above: str | None,
+    members: Sequence[Installed],
+    settings: Iterable[SettingLine],
+) -> CircuitContent:
     service = circuit.device.record.service
     if circuit.signal_row.service and circuit.signal_row is not circuit.device.record:
         service = circuit.signal_row.service
@@ -511,7 +519,21 @@ def _circuit(circuit: Circuit, plant: Plant, shown_above: str | None, members: S
         conductors=_conductors(circuit, plant),
         power=power_of(circuit, plant),
         check=check_table(circuit, plant),
+        tries=things_to_try(circuit, _set_on(circuit.device, settings), members),
     )
+
+
+def _set_on(device: Installed, lines: Iterable[SettingLine]) -> list[Set]:
+    """Return the settings of a device with the currents that they give."""
+    found: list[Set] = []
+    for line in lines:
+        if line.tag != device.name:
+            continue
+        for (title, _), value in zip(SETTINGS, line.values, strict=True):
+            if isinstance(value, SettingValue):
+                text = value.text if value.ma is None else f"{value.text} = {value.ma:.2f} mA"
+                found.append(Set(title=title, text=text, direction=line.direction))
+    return found
 
 
 _YES_NO: Final = {True: "yes", False: "no", None: None}

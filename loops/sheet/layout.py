@@ -10,8 +10,10 @@ from typing import Final
 from instruments.quantity import format_number
 from instruments.signal import RANGE_RESISTOR_OHM
 from loops.power import HIGH_ALARM_MA, LOW_FAILURE_MA
-from loops.sheet.check_table import CheckPoint, CheckTable
+from loops.sheet.check_record import ToTry
+from loops.sheet.check_table import TERMINALS_C, CheckPoint, CheckTable
 from loops.sheet.content import (
+    NOT_APPLICABLE,
     SETTINGS,
     CircuitContent,
     DeviceLine,
@@ -295,6 +297,16 @@ _CONDUCTORS: Final = (
 )
 _NOTES: Final = (Column("", WIDTH),)
 _NAMED: Final = (Column("", 26.0), Column("", WIDTH - 26.0))
+_TRIES: Final = (
+    Column("Device", 26.0),
+    Column("Tried", 32.0),
+    Column("Brought about", 36.0),
+    Column("Expected", 33.0),
+    Column("acts at", 15.0, "centre"),
+    Column("resets at", 15.0, "centre"),
+    Column("tolerance", 14.0, "centre"),
+    Column("as\nexpected", 14.0, "centre"),
+)
 _GRID: Final = (Column("", WIDTH / 6.0),) * 6
 _TITLES: Final = {
     "devices": ("Devices", _DEVICES),
@@ -303,6 +315,7 @@ _TITLES: Final = {
     "findings": ("Open findings and reviews", _NOTES),
     "assumed": ("Assumed or derived, not given *", _NOTES),
     "remarks": ("Remarks in the list", _NAMED),
+    "tries": ("Function check", _TRIES),
     "in full": ("Title block in full", _NAMED),
 }
 
@@ -523,8 +536,11 @@ def _check(check: CheckTable, width: float, tight: bool) -> SetTable:
         unit = check.input_unit or ""
         add(f"input\n{unit}".rstrip(), 16.0, lambda point: _number(point.input_value))
     if check.sensor_unit:
-        unit = "\u03a9" if check.sensor_unit == "ohm" else check.sensor_unit
-        add(f"sensor\n{unit}", 15.0, lambda point: _places_or_none(point.sensor, 2 if unit == "\u03a9" else 3))
+        if check.sensor_unit == "ohm":
+            add("sensor\n\u03a9", 15.0, lambda point: _places_or_none(point.sensor, 2))
+        else:
+            add("mV at\n0 \u00b0C", 15.0, lambda point: _places_or_none(point.sensor, 3))
+            add(f"mV at\n{TERMINALS_C:g} \u00b0C", 15.0, lambda point: _places_or_none(point.sensor_warm, 3))
     if check.current:
         add("\nmA", 11.0, lambda point: _places_or_none(point.ma, 2))
         if check.resistor_ohm is not None:
@@ -604,6 +620,9 @@ def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
         _scales(content.settings, flow)
     for circuit in content.circuits:
         _circuit(circuit, flow, tight)
+    tries = [each for circuit in content.circuits for each in circuit.tries]
+    if tries:
+        flow.add(_tries(tries, tight))
     cut = _title_block(content, [])
     if cut:
         flow.add(_named("in full", [(cell(label, LABEL), cell(text)) for label, text in cut], tight=tight))
@@ -617,6 +636,22 @@ def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
     if flow.room < SIGN_MM:
         flow.new_page()
     return flow
+
+
+def _tries(tries: Iterable[ToTry], tight: bool) -> SetTable:
+    not_asked = (Para(NOT_APPLICABLE),)
+    rows = [
+        (
+            cell(each.device, STRONG),
+            cell(each.what),
+            cell(each.bring_about),
+            cell(each.expect),
+            *((NOTHING,) * 3 if each.acts else (not_asked,) * 3),
+            NOTHING,
+        )
+        for each in tries
+    ]
+    return _named("tries", rows, tight=tight)
 
 
 def _scales(lines: Iterable[SettingLine], flow: Flow) -> None:

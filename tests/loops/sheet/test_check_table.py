@@ -106,7 +106,9 @@ def test_type_k() -> None:
     """IEC 60584-1: 0, 10.153, 20.644, 31.213 and 41.276 mV at 0, 250, 500, 750 and 1000 degC."""
     made = table(THERMOCOUPLE)
     assert column(made, "sensor") == pytest.approx([0.0, 10.153, 20.644, 31.213, 41.276], abs=5e-4)
-    assert made.sensor == "type K, IEC 60584-1, terminals at 0 °C"
+    # Less the 0.798 mV that type K gives at 20 degC (IEC 60584-1): millivolts are subtracted, never degrees.
+    assert column(made, "sensor_warm") == pytest.approx([-0.798, 9.355, 19.846, 30.415, 40.478], abs=1e-3)
+    assert made.sensor == "type K, IEC 60584-1, with the terminals at 0 or 20 °C"
 
 
 @pytest.mark.parametrize(
