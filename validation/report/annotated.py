@@ -237,9 +237,10 @@ def _mark(entries: Mapping[_Entry, Sequence[str]], *, first: bool) -> Mark:
 def _said(entry: _Entry, subjects: Sequence[str], *, blank_line: bool) -> Iterable[Passage]:
     yield Passage("\n\n" if blank_line else "")
     yield Passage(entry.code, bold=True)
-    about = _short(some_of(subjects)) if subjects else ""
-    part = f" ({cell_text(entry.part)})" if entry.part else ""
-    yield Passage(f"  {about}{part}\n{entry.message}" if about or part else f"\n{entry.message}")
+    about = [_short(some_of(subjects))] if subjects else []
+    if entry.part:
+        about.append(f"({cell_text(entry.part)})")
+    yield Passage(f"  {' '.join(about)}\n{entry.message}" if about else f"\n{entry.message}")
     if entry.fixes:
         yield Passage(f"\nFix: {entry.fixes}")
 
@@ -249,21 +250,25 @@ def _said(entry: _Entry, subjects: Sequence[str], *, blank_line: bool) -> Iterab
 
 def _column_headings(problems: Iterable[CellProblem], sheets: Iterable[SheetReport]) -> dict[Cell, Cell]:
     """Return, for what is wrong with a whole column, the heading of that column."""
-    rows = {
-        (sheet.file, sheet.sheet): sheet.match.header_rows[-1]
-        for sheet in sheets
-        if sheet.match is not None and sheet.match.header_rows
-    }
-    return {
-        problem.cell: Cell(
-            file=problem.cell.file,
-            sheet=problem.cell.sheet,
-            row=rows[problem.cell.file, problem.cell.sheet] + 1,
-            column=problem.cell.column,
-        )
-        for problem in problems
-        if problem.whole_column and (problem.cell.file, problem.cell.sheet) in rows
-    }
+    known = {(sheet.file, sheet.sheet): sheet for sheet in sheets}
+    found: dict[Cell, Cell] = {}
+    for problem in problems:
+        sheet = known.get((problem.cell.file, problem.cell.sheet))
+        if problem.whole_column and sheet is not None:
+            index = problem.cell.row - 1 if sheet.turned else problem.cell.column
+            if (heading := _heading(sheet, index)) is not None:
+                found[problem.cell] = heading
+    return found
+
+
+def _heading(sheet: SheetReport, index: int) -> Cell | None:
+    """Return the cell over a column; on a data sheet with one tag a column, the one before a line."""
+    if sheet.match is None or not sheet.match.header_rows:
+        return None
+    # The last row of the heading is that of the column alone; those above it may span several.
+    line = sheet.match.header_rows[-1]
+    row, column = (index, line) if sheet.turned else (line, index)
+    return Cell(file=sheet.file, sheet=sheet.sheet, row=row + 1, column=column)
 
 
 def _home(result: Audit) -> Cell | None:
@@ -272,11 +277,10 @@ def _home(result: Audit) -> Cell | None:
     own = [sheet for sheet in lists.sheets if sheet.kind == INSTRUMENTS.name and sheet.match is not None]
     own.sort(key=lambda sheet: PurePath(sheet.file).name != PurePath(lists.index_file).name)
     for sheet in own:
-        if sheet.match is None or not sheet.match.header_rows:
-            continue
-        tag = next((match for name, match in sheet.match.columns.items() if name.startswith("tag")), None)
-        if tag is not None:
-            return Cell(file=sheet.file, sheet=sheet.sheet, row=sheet.match.header_rows[-1] + 1, column=tag.index)
+        columns = sheet.match.columns if sheet.match is not None else {}
+        tag = next((match for name, match in columns.items() if name.startswith("tag")), None)
+        if tag is not None and (heading := _heading(sheet, tag.index)) is not None:
+            return heading
     for each in result.plant.instruments:
         origin = each.record.origin
         cells = origin.cells("tag") if origin is not None else ()

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Sequence
+from dataclasses import replace
 from pathlib import Path
 from typing import Any
 
@@ -12,7 +13,7 @@ import pytest
 
 from instruments.workbook.annotate.comments import plain_text
 from instruments.workbook.reader import read_file
-from tests.validation.report.small_audit import FINDINGS, cell, finding, small_audit
+from tests.validation.report.small_audit import FINDINGS, PROBLEMS, SHEETS, cell, finding, small_audit
 from validation.finding import Finding, Fix, Outcome, Severity
 from validation.report.annotated import Annotated, Annotations, annotated_names
 
@@ -92,6 +93,28 @@ def test_a_comment_does_not_grow_for_ever() -> None:
 def test_what_the_whole_list_lacks_is_said_at_the_heading_of_the_tags() -> None:
     lacking = finding(rule="DAT01", severity=Severity.GAP, subject="index.xlsx", part="", message="no column", cells=())
     assert said([lacking], problems=()) == {"Index A2 gap": "DAT01 gap  index.xlsx\nno column"}
+
+
+def test_a_data_sheet_with_one_tag_a_column_has_its_headings_at_the_left() -> None:
+    index, *others = SHEETS
+    turned = (replace(index, turned=True), *others)
+    problem = replace(PROBLEMS[1], cell=cell(4, 6))
+    lacking = finding(rule="DAT01", severity=Severity.GAP, subject="index.xlsx", part="", message="no column", cells=())
+    assert said([lacking], problems=(problem,), sheets=turned) == {
+        "Index B1 gap": "DAT01 gap  index.xlsx\nno column",
+        "Index B4 gap": "not read\nLRV: 'kg' cannot be read: a mass is no pressure (and 1,233 more)",
+    }
+
+
+def test_an_unread_cell_that_a_finding_tells_is_not_told_twice() -> None:
+    told = finding(
+        rule="DAT09", severity=Severity.GAP, subject="PT-100", part="URV", message="16 bsr", cells=(cell(6, 21),)
+    )
+    column = finding(rule="DAT09", severity=Severity.GAP, subject="", part="LRV", message="all kg", cells=(cell(3, 3),))
+    assert said([told, column]) == {
+        "Index V6 gap": "DAT09 gap  PT-100 (URV)\n16 bsr",
+        "Index D2 gap": "DAT09 gap   (LRV)\nall kg",
+    }
 
 
 def test_the_caution_stands_once_a_sheet_in_its_first_comment() -> None:
