@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Sequence
 from dataclasses import replace
+from functools import partial
 from pathlib import Path
 from typing import Any
 
@@ -107,13 +108,12 @@ def test_a_data_sheet_with_one_tag_a_column_has_its_headings_at_the_left() -> No
 
 
 def test_an_unread_cell_that_a_finding_tells_is_not_told_twice() -> None:
-    told = finding(
-        rule="DAT09", severity=Severity.GAP, subject="PT-100", part="URV", message="16 bsr", cells=(cell(6, 21),)
-    )
-    column = finding(rule="DAT09", severity=Severity.GAP, subject="", part="LRV", message="all kg", cells=(cell(3, 3),))
-    assert said([told, column]) == {
+    unread = partial(finding, rule="DAT09", severity=Severity.GAP)
+    one = unread(subject="PT-100", part="URV", message="16 bsr", cells=(cell(6, 21),))
+    column = unread(subject="", part="LRV", message="all kg", cells=(cell(3, 3),))
+    assert said([one, column]) == {
         "Index V6 gap": "DAT09 gap  PT-100 (URV)\n16 bsr",
-        "Index D2 gap": "DAT09 gap   (LRV)\nall kg",
+        "Index D2 gap": "DAT09 gap  (LRV)\nall kg",
     }
 
 
