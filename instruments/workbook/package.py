@@ -22,7 +22,7 @@ from types import TracebackType
 from typing import IO, Final, NamedTuple, Self, TypeVar
 
 from instruments.workbook.number_format import BUILT_IN, format_kind
-from instruments.workbook.plain import BrokenXml, is_utf8, read_xml, rewritten, without_codes
+from instruments.workbook.plain import BrokenXml, is_utf8, read_xml, rewritten, well_formed, without_codes
 from instruments.workbook.sheet import UnreadableFile, cell_position
 from instruments.workbook.sheet_look import (
     Looks,
@@ -47,7 +47,7 @@ class Limits:
     file_bytes: int = 100_000_000
     unpacked_bytes: int = 600_000_000
     ratio: int = 200
-    """Unpacked over packed, for parts of more than 1 MB: a sheet of a list has about 10."""
+    """Unpacked over packed, for parts of more than 16 MB: a sheet has about 10, one full of equal texts more."""
     parts: int = 2_000
     side_part_bytes: int = 50_000_000
     """A part other than a sheet or its texts: styles, comments, drawings."""
@@ -235,7 +235,7 @@ class Package:
             if info.compress_type not in (zipfile.ZIP_STORED, zipfile.ZIP_DEFLATED):
                 raise self._unreadable(f"part {name}", "is packed in a way no workbook is")
             unpacked += info.file_size
-            if info.file_size > 1_000_000 and info.file_size > limits.ratio * max(1, info.compress_size):
+            if info.file_size > 16_000_000 and info.file_size > limits.ratio * max(1, info.compress_size):
                 raise self._unreadable(
                     f"part {name}",
                     f"unpacks to {info.file_size:,} bytes, more than {limits.ratio} times its size",
@@ -374,7 +374,7 @@ def _spelt(package: Package, part: str, place: str, work: Callable[[Iterable[byt
     """Do a work over a part in the usual spelling, rewritten where it must be, and say whether it was."""
     try:
         try:
-            return work(package.pieces(part)), False
+            return work(well_formed(package.pieces(part))), False
         except NotPlain:
             return work(rewritten(package.pieces(part))), True
     except NotPlain:

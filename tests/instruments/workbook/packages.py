@@ -64,8 +64,8 @@ def parts(
         "xl/workbook.xml": f'<workbook xmlns="{MAIN}" xmlns:r="{KINDS}"><sheets>{listed}</sheets></workbook>',
         "xl/_rels/workbook.xml.rels": relations(
             *((f"rId{number}", "worksheet", f"worksheets/sheet{number}.xml") for number in range(1, len(sheets) + 1)),
-            ("rId90", "sharedStrings", "sharedStrings.xml"),
-            ("rId91", "styles", "styles.xml"),
+            ("rIdTexts", "sharedStrings", "sharedStrings.xml"),
+            ("rIdStyles", "styles", "styles.xml"),
         ),
         "xl/sharedStrings.xml": shared,
         "xl/styles.xml": style,

@@ -76,9 +76,9 @@ def without(name: str) -> dict[str, str | bytes]:
             "list.xlsx: unpacks to 1,001,{} bytes; at most 1,000,000 are read.",
         ),
         (
-            ONE | {"xl/media/photo.png": bytes(1_000_001)},
+            ONE | {"xl/media/photo.png": bytes(16_000_001)},
             LIMITS,
-            "list.xlsx, part xl/media/photo.png: unpacks to 1,000,001 bytes, more than 200 times its size.",
+            "list.xlsx, part xl/media/photo.png: unpacks to 16,000,001 bytes, more than 200 times its size.",
         ),
         (without("xl/workbook.xml"), LIMITS, "list.xlsx: is a zip file with no workbook in it."),
         (
@@ -412,3 +412,32 @@ def test_the_look_keeps_no_file_open(tmp_path: Path) -> None:
     refusal(tmp_path, zipped({"a": "b"}))
     refusal(tmp_path, b"PK\3\4")
     assert len(os.listdir("/proc/self/fd")) == before
+
+
+def test_a_part_full_of_equal_texts_is_no_bomb(tmp_path: Path) -> None:
+    made = ONE | {"xl/media/photo.png": bytes(16_000_000)}
+    with Package(saved(tmp_path, zipped(made)), file="list.xlsx") as package:
+        assert "xl/media/photo.png" in package
+
+
+@pytest.mark.parametrize(
+    ("part", "place", "broken"),
+    [
+        (FIRST_SHEET, "sheet 'Sheet1'", ("<c ", "<<c ")),
+        (FIRST_SHEET, "sheet 'Sheet1'", ("</v>", "/v>")),
+        (FIRST_SHEET, "sheet 'Sheet1'", ("</c>", "")),
+        (FIRST_SHEET, "sheet 'Sheet1'", ("</worksheet>", "</worksheet")),
+        ("xl/sharedStrings.xml", "part xl/sharedStrings.xml", ("</t>", "/t>")),
+        ("xl/sharedStrings.xml", "part xl/sharedStrings.xml", ("</sst>", "")),
+    ],
+)
+def test_xml_that_the_value_reader_would_read_wrongly(
+    tmp_path: Path, part: str, place: str, broken: tuple[str, str]
+) -> None:
+    made = parts(
+        worksheet('<row r="1"><c r="A1" t="s"><v>0</v></c><c r="B1"><v>5</v></c></row>'), shared=texts("<t>Tag</t>")
+    )
+    damaged = str(made[part]).replace(*broken, 1)
+    assert damaged != made[part]
+    said = refusal(tmp_path, zipped(made | {part: damaged}))
+    assert said.startswith(f"list.xlsx, {place}: is not well-formed XML: ")

@@ -6,7 +6,15 @@ from collections.abc import Iterator
 
 import pytest
 
-from instruments.workbook.plain import MAX_TOKEN, BrokenXml, is_utf8, read_xml, rewritten, without_codes
+from instruments.workbook.plain import (
+    MAX_TOKEN,
+    BrokenXml,
+    is_utf8,
+    read_xml,
+    rewritten,
+    well_formed,
+    without_codes,
+)
 from tests.instruments.workbook.packages import KINDS, MAIN, STRICT
 
 
@@ -153,3 +161,30 @@ def test_whether_a_part_is_in_utf8(head: bytes, answer: bool) -> None:
 )
 def test_coded_characters(written: str, meant: str) -> None:
     assert without_codes(written) == meant
+
+
+@pytest.mark.parametrize("size", [1, 7, 1000])
+@pytest.mark.parametrize(
+    ("text", "reason"),
+    [
+        (b'<a b="1">x<c/></a>', None),
+        (b'<a xmlns:r="r"><r:b>\xc2\xb0</r:b></a>', None),
+        (b"<a><b></a>", "is not well-formed XML: mismatched tag, line 1, column 9"),
+        (b"<a>", "is not well-formed XML: no element found, line 1, column 4"),
+        (b"", "is not well-formed XML: no element found, line 1, column 1"),
+        (b"<a>\xff</a>", "is not well-formed XML: not well-formed (invalid token), line 1, column 4"),
+        (b"<!DOCTYPE a><a/>", "has a DOCTYPE, which no workbook needs and which can make a small file fill the memory"),
+    ],
+)
+def test_pieces_are_passed_on_and_looked_at(text: bytes, reason: str | None, size: int) -> None:
+    pieces = [text[at : at + size] for at in range(0, len(text), size)]
+    passed: list[bytes] = []
+    found: str | None = None
+    try:
+        passed.extend(well_formed(pieces))
+    except BrokenXml as error:
+        found = str(error)
+    assert found == reason
+    assert b"".join(passed) == text[: len(b"".join(passed))]
+    if reason is None:
+        assert passed == pieces
