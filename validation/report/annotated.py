@@ -59,6 +59,19 @@ class Annotated:
     sheets: int
     remarks: tuple[str, ...] = ()
 
+    @property
+    def lines(self) -> tuple[str, ...]:
+        """What the summary says of it.
+
+        >>> Annotated(cells=1, sheets=1).lines, Annotated(cells=1200, sheets=3).lines
+        (('1 cell marked on 1 sheet',), ('1,200 cells marked on 3 sheets',))
+        """
+        cells, sheets = (
+            f"{number:,} {what}{'' if number == 1 else 's'}"
+            for number, what in ((self.cells, "cell"), (self.sheets, "sheet"))
+        )
+        return (f"{cells} marked on {sheets}" if self.cells else "no cell marked", *self.remarks)
+
 
 @dataclass(frozen=True, slots=True)
 class _Entry:

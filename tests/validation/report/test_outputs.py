@@ -52,6 +52,30 @@ def test_files_take_their_names_together_at_the_end(tmp_path: Path) -> None:
     assert [(folder / name).stat().st_mode & 0o777 for name in ("a.txt", "b.txt")] == [0o644, 0o644]
 
 
+def test_a_file_that_is_to_be_kept_is_not_written_over(tmp_path: Path) -> None:
+    (tmp_path / "list.xlsx").write_text("mine")
+    (tmp_path / "link.xlsx").symlink_to(tmp_path / "list.xlsx")
+    keep = [tmp_path / "list.xlsx", tmp_path / "gone.xlsx"]
+    for name in ("list.xlsx", "link.xlsx"):
+        with Outputs(tmp_path, keep=keep) as outputs:
+            with pytest.raises(CannotWrite, match="is the list that is read"):
+                outputs.add(name, text("new"))
+    assert inside(tmp_path) == {"list.xlsx": "mine", "link.xlsx": "mine"}
+    with Outputs(tmp_path, keep=keep) as outputs:
+        outputs.add("gone.xlsx", text("new"))
+    assert inside(tmp_path)["gone.xlsx"] == "new"
+
+
+def test_a_file_that_cannot_be_made_is_left_out(tmp_path: Path) -> None:
+    with Outputs(tmp_path) as outputs:
+        outputs.add("a.txt", text("first"))
+        with pytest.raises(ValueError, match="no"):
+            outputs.add("b.txt", fail(ValueError("no")))
+        outputs.add("c.txt", text("third"))
+    assert inside(tmp_path) == {"a.txt": "first", "c.txt": "third"}
+    assert set(outputs.digests) == {"a.txt", "c.txt"}
+
+
 def test_the_last_added_takes_its_name_last(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
     order: list[str] = []
     replace = os.replace

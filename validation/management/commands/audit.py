@@ -137,8 +137,7 @@ class Command(BaseCommand):
             except UnreadableFile as error:
                 self._annotated.append(f"no annotated copy of {file}: {error.place} {error.reason}")
             else:
-                self._annotated.append(f"{name}: {made[0].cells} cells marked on {made[0].sheets} sheets")
-                self._annotated.extend(f"{name}: {remark}" for remark in made[0].remarks)
+                self._annotated.extend(f"{name}: {line}" for line in made[0].lines)
 
     def _cannot(self, text: str) -> int:
         self.stderr.write(f"audit: {text}")
