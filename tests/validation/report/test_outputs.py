@@ -4,6 +4,8 @@ import errno
 import hashlib
 import os
 import shutil
+import subprocess
+import sys
 from collections.abc import Callable
 from pathlib import Path
 from typing import Any
@@ -57,9 +59,8 @@ def test_a_file_that_is_to_be_kept_is_not_written_over(tmp_path: Path) -> None:
     (tmp_path / "link.xlsx").symlink_to(tmp_path / "list.xlsx")
     keep = [tmp_path / "list.xlsx", tmp_path / "gone.xlsx"]
     for name in ("list.xlsx", "link.xlsx"):
-        with Outputs(tmp_path, keep=keep) as outputs:
-            with pytest.raises(CannotWrite, match="is the list that is read"):
-                outputs.add(name, text("new"))
+        with Outputs(tmp_path, keep=keep) as outputs, pytest.raises(CannotWrite, match="is the list that is read"):
+            outputs.add(name, text("new"))
     assert inside(tmp_path) == {"list.xlsx": "mine", "link.xlsx": "mine"}
     with Outputs(tmp_path, keep=keep) as outputs:
         outputs.add("gone.xlsx", text("new"))
@@ -185,3 +186,144 @@ def test_two_runs_give_the_same_digests(tmp_path: Path) -> None:
         whole = (tmp_path / folder / "exceptions.xlsx").read_bytes()
         assert outputs.digests == {"exceptions.xlsx": hashlib.sha256(whole).hexdigest()}
     assert digests[0] == digests[1]
+
+
+def test_two_runs_beside_each_other_leave_one_whole_set(tmp_path: Path) -> None:
+    (tmp_path / ".ferrule-killed-1.part").write_text("half")
+    with Outputs(tmp_path) as first:
+        first.add("a.txt", text("of the first"))
+        with Outputs(tmp_path) as second:
+            second.add("a.txt", text("of the second"))
+            second.add("b.txt", text("of the second"))
+        assert {name: held for name, held in inside(tmp_path).items() if not name.startswith(".ferrule-")} == {
+            "a.txt": "of the second",
+            "b.txt": "of the second",
+        }
+        first.add("b.txt", text("of the first"))
+    assert inside(tmp_path) == {"a.txt": "of the first", "b.txt": "of the first"}
+
+
+WAITS = """
+import pathlib, sys, time
+from validation.report.outputs import Outputs
+with Outputs(pathlib.Path(sys.argv[1])) as outputs:
+    outputs.add("a.txt", lambda path: path.write_text("of another process") and None)
+    print("ready", flush=True)
+    time.sleep(60)
+"""
+
+
+def test_what_a_living_process_writes_stays_and_what_a_killed_one_left_goes(tmp_path: Path) -> None:
+    with subprocess.Popen(
+        [sys.executable, "-c", WAITS, str(tmp_path)], stdout=subprocess.PIPE, text=True, cwd=Path(__file__).parents[3]
+    ) as other:
+        assert other.stdout is not None
+        assert other.stdout.readline() == "ready\n"
+        its = set(inside(tmp_path))
+        assert len(its) == 2
+        make(tmp_path, {"b.txt": text("mine")})
+        assert set(inside(tmp_path)) == {*its, "b.txt"}
+        other.kill()
+    make(tmp_path, {"b.txt": text("mine again")})
+    assert inside(tmp_path) == {"b.txt": "mine again"}
+
+
+class Killed(BaseException):
+    pass
+
+
+NEW = {"a.txt": "new a", "b.txt": "new b", "last.json": "new last"}
+OLD = {"a.txt": "old a", "b.txt": "old b", "last.json": "old last"}
+
+
+def steps(monkeypatch: pytest.MonkeyPatch, at: int, error: BaseException | None) -> list[str]:
+    """Let the n-th renaming or bringing to the disk fail; return what was done, to be looked at afterwards."""
+    done: list[str] = []
+
+    def counted(name: str) -> Callable[..., Any]:
+        real = getattr(os, name)
+
+        def call(*arguments: Any) -> Any:
+            done.append(name)
+            if len(done) == at and error is not None:
+                raise error
+            return real(*arguments)
+
+        return call
+
+    for name in ("replace", "fsync", "unlink"):
+        monkeypatch.setattr(os, name, counted(name))
+    return done
+
+
+def all_steps(folder: Path) -> int:
+    """How many steps a run takes that replaces an old set."""
+    with pytest.MonkeyPatch.context() as patch:
+        done = steps(patch, 0, None)
+        make(folder, {name: text(held) for name, held in NEW.items()})
+    return len(done)
+
+
+def test_whichever_step_fails_the_old_set_stays_whole(tmp_path: Path) -> None:
+    make(tmp_path / "counted", {name: text(held) for name, held in OLD.items()})
+    failed = 0
+    for at in range(1, all_steps(tmp_path / "counted") + 1):
+        folder = tmp_path / str(at)
+        make(folder, {name: text(held) for name, held in OLD.items()})
+        with pytest.MonkeyPatch.context() as patch:
+            steps(patch, at, OSError(errno.EIO, "Input/output error"))
+            try:
+                make(folder, {name: text(held) for name, held in NEW.items()})
+            except CannotWrite as error:
+                failed += 1
+                assert str(error).endswith(": input/output error")  # noqa: PT017 - not each step's failure is one
+                assert inside(folder) == OLD
+            else:
+                assert {name: held for name, held in inside(folder).items() if not name.startswith(".")} == NEW
+        make(folder, {name: text(held) for name, held in NEW.items()})
+        assert inside(folder) == NEW
+    assert failed > 10
+
+
+KILLED = """
+import os, pathlib, signal, sys
+at = int(sys.argv[2])
+done = 0
+def counted(name):
+    real = getattr(os, name)
+    def call(*arguments, **named):
+        global done
+        done += 1
+        if done == at:
+            os.kill(os.getpid(), signal.SIGKILL)
+        return real(*arguments, **named)
+    return call
+for name in ("replace", "fsync", "unlink", "open"):
+    setattr(os, name, counted(name))
+from validation.report.outputs import Outputs
+with Outputs(pathlib.Path(sys.argv[1])) as outputs:
+    for name in ("a.txt", "b.txt", "last.json"):
+        outputs.add(name, lambda path: path.write_text("new " + name.partition(".")[0]) and None)
+print(done)
+"""
+
+
+def test_killed_at_any_step_the_old_or_the_new_set_is_there_or_the_last_is_missing(tmp_path: Path) -> None:
+    found = set()
+    for at in range(1, 200):
+        folder = tmp_path / str(at)
+        make(folder, {name: text(held) for name, held in OLD.items()})
+        code = [sys.executable, "-S", "-c", KILLED, str(folder), str(at)]
+        done = subprocess.run(code, cwd=Path(__file__).parents[3], capture_output=True, text=True, check=False)
+        left = {name: held for name, held in inside(folder).items() if not name.startswith(".ferrule-")}
+        if done.returncode == 0:
+            assert inside(folder) == NEW
+            break
+        if "last.json" in left:
+            assert left in (OLD, NEW)
+        found.add("none" if "last.json" not in left else "old" if left == OLD else "new")
+        make(folder, {name: text(held) for name, held in NEW.items()})
+        assert inside(folder) == NEW
+    else:
+        pytest.fail("it never came to its end")
+    assert found == {"old", "none", "new"}
