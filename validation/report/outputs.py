@@ -117,30 +117,30 @@ class Outputs:
             with _alone(self.folder):
                 try:
                     for _, final in reversed(self._made):
-                        if at := final if final.exists() else self.folder:
-                            pass
+                        at = final
                         if final.exists():
-                            passing = run.part()
+                            passing = run.name()
                             os.replace(final, passing)
                             aside.append((passing, final))
-                        _to_disk(self.folder)
+                            _to_disk(self.folder)
                     for part, final in self._made:
                         at = final
+                        _to_disk(self.folder)
                         os.replace(part, final)
                         placed.append(final)
-                        _to_disk(self.folder)
+                    at = self.folder
+                    _to_disk(self.folder)
                 except BaseException:
-                    for final in reversed(placed):
+                    for final in placed:
                         final.unlink(missing_ok=True)
                     for passing, final in reversed(aside):
                         os.replace(passing, final)
                     raise
         except OSError as problem:
             raise CannotWrite(at, _words(problem)) from problem
-        finally:
-            for passing, _ in aside:
-                with contextlib.suppress(OSError):
-                    passing.unlink(missing_ok=True)
+        for passing, _ in aside:
+            with contextlib.suppress(OSError):
+                passing.unlink(missing_ok=True)
 
 
 class _Run:
@@ -148,6 +148,7 @@ class _Run:
 
     def __init__(self, folder: Path) -> None:
         self._folder = folder
+        self._names = 0
         for _ in range(_ATTEMPTS):
             self._handle, text = tempfile.mkstemp(prefix=".ferrule-", suffix=".lock", dir=folder)
             self._lock = Path(text)
@@ -159,9 +160,14 @@ class _Run:
 
     def part(self) -> Path:
         """Make an empty file under a passing name."""
-        handle, text = tempfile.mkstemp(prefix=f"{self._lock.stem}-", suffix=".part", dir=self._folder)
-        os.close(handle)
-        return Path(text)
+        part = self.name()
+        part.touch(mode=0o600, exist_ok=False)
+        return part
+
+    def name(self) -> Path:
+        """Return a passing name that no file has."""
+        self._names += 1
+        return self._folder / f"{self._lock.stem}-{self._names}.part"
 
     def end(self) -> None:
         """Give up the lock; nothing is left."""
