@@ -8,7 +8,7 @@ from typing import Any, NamedTuple
 
 from loops.budget import SUPPLY_TOLERANCE_PERCENT
 from loops.circuit import Circuit
-from loops.plant import Plant
+from loops.plant import Plant, name_key
 from loops.record import Cable
 from validation.finding import Fix
 
@@ -42,8 +42,10 @@ def _changing(row: _Row | None, change: Mapping[str, str]) -> dict[str, Any]:
 
 
 def length_change(circuit: Circuit, length_m: int, plant: Plant) -> dict[str, Any]:
-    """Return what a `Fix` changes to give a circuit's cable another length; nothing where its cables are summed."""
+    """Return what a `Fix` changes to give a circuit's cable another length; nothing where cables are summed."""
     source = circuit.cable_length_m.source if circuit.cable_length_m else ""
+    if source == "cables":
+        return _changing(_only_cable(circuit, plant), {"length": str(length_m)})
     row = {"loop row": _loop_row(circuit, plant), "row": _own_row(circuit)}.get(source)
     return _changing(row, {"cable length": str(length_m)})
 
@@ -60,6 +62,15 @@ def range_resistor_change(circuit: Circuit, ohm: float, plant: Plant) -> dict[st
     if source == "loop row":
         return _changing(_loop_row(circuit, plant), {"range resistor": f"{ohm:g}"})
     return _changing(_own_row(circuit), {"receiver ohm": f"{ohm:g}"}) if source == "row" else {}
+
+
+def _only_cable(circuit: Circuit, plant: Plant) -> _Row | None:
+    """Return the row of the cable schedule that is the whole run, of one circuit alone."""
+    cable = plant.cables.get(name_key(circuit.signal_row.cable or circuit.device.record.cable))
+    given = circuit.cable_length_m
+    if cable is None or not cable.number or given is None or cable.length_m != given.number:
+        return None
+    return _Row(cable.number, "Cables") if cable.pairs is None or cable.pairs <= 1 else None
 
 
 def conductor_change(circuit: Circuit, size_mm2: float) -> dict[str, Any]:

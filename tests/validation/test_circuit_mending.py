@@ -5,11 +5,13 @@ from typing import Any
 import pytest
 
 from validation.circuit_mending import (
+    cable_type_change,
     conductor_change,
     highest_supply_fix,
     least_supply_change,
     length_change,
     volts_text,
+    wires_change,
 )
 from validation.example import example_plant
 
@@ -41,10 +43,50 @@ def test_the_length_is_changed_where_it_stands(
     assert length_change(circuit, 90, plant) == change
 
 
-def test_a_sum_of_cables_has_no_one_cell() -> None:
+def test_a_cable_that_is_the_whole_run_is_changed_in_the_schedule() -> None:
     cables = [{"number": "C-1", "from": "PT-101", "to": "X", "length": 40, "type": "A"}]
     circuit, plant = made({"cable": "C-1"}, {}, cables=cables)
+    assert length_change(circuit, 30, plant) == {"change": {"length": "30"}, "subject": "C-1", "sheet": "Cables"}
+
+
+def test_a_sum_of_cables_has_no_one_cell() -> None:
+    cables = [
+        {"number": "C-1", "from": "PT-101", "to": "JB-1", "length": 40, "type": "A"},
+        {"number": "M-1", "from": "JB-1", "to": "X", "length": 60, "type": "A"},
+    ]
+    circuit, plant = made({"cable": "C-1"}, {}, cables=cables)
+    assert circuit.cable_length_m.number == 100.0
     assert length_change(circuit, 30, plant) == {}
+
+
+def test_a_cable_of_several_pairs_is_not_changed_for_one_circuit() -> None:
+    cables = [{"number": "C-1", "from": "PT-101", "to": "X", "length": 40, "type": "A", "pairs": 4}]
+    circuit, plant = made({"cable": "C-1"}, {}, cables=cables)
+    assert length_change(circuit, 30, plant) == {}
+    assert cable_type_change(circuit, "B", next(iter(plant.cables.values())), plant) == {}
+
+
+def test_the_cable_type_is_changed_where_it_stands() -> None:
+    cables = [{"number": "C-1", "from": "PT-101", "to": "X", "length": 40, "type": "A"}]
+    circuit, plant = made({"cable": "C-1"}, {}, cables=cables)
+    cable = next(iter(plant.cables.values()))
+    assert cable_type_change(circuit, "B", cable, plant) == {
+        "change": {"type": "B"}, "subject": "C-1", "sheet": "Cables",
+    }  # fmt: skip
+    circuit, plant = made({"cable type": "A"}, {})
+    assert cable_type_change(circuit, "B", None, plant) == {"change": {"cable type": "B"}, **ON_ROW}
+    circuit, plant = made({"cable type": "A"}, {"cable type": "C", "kind": "AI"})
+    assert cable_type_change(circuit, "B", None, plant) == {"change": {"cable type": "B"}, **ON_LOOP}
+
+
+@pytest.mark.parametrize(
+    ("of_type", "change"),
+    [(None, {"change": {"wires": "3"}, **ON_ROW}), (3, {"change": {"wires": "3"}, **ON_ROW}), (2, {})],
+)
+def test_wires_are_changed_where_the_type_allows_it(of_type: int | None, change: dict[str, Any]) -> None:
+    types = [{"code": "T", "kind": "element", "sensor type": "Pt100", "wires": of_type}]
+    plant = example_plant([{**TAG, "device type": "T"}], types=types)
+    assert wires_change(plant.circuits[0], 3) == change
 
 
 def test_a_row_of_the_loop_list_that_is_not_alone_is_not_changed() -> None:
