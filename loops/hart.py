@@ -347,6 +347,7 @@ def time_constant(circuit: Circuit, data: PlantData, *, named: bool = False) -> 
     indicators_in_series(circuit, found, system_side=False if circuit.isolator is not None else None)
     zener_in_series(circuit, found)
     assumed_term = None
+    assumed = ""
     missing = [*found.missing]
     if circuit.barrier_named and circuit.barrier is None:
         missing.append("barrier")
@@ -354,6 +355,7 @@ def time_constant(circuit: Circuit, data: PlantData, *, named: bool = False) -> 
         own = circuit.isolator.input_ohm if circuit.isolator.input_ohm is not None else circuit.isolator.resistance_ohm
         if own is None:
             assumed_term = assumed_receiver(data)
+            assumed = f"input of isolator {circuit.isolator.code} {format_number(assumed_term.ohm)} ohm"
         else:
             found.terms.append(Term(name="isolator", ohm=own, source=entry_name(circuit.isolator)))
     elif output:
@@ -390,7 +392,7 @@ def time_constant(circuit: Circuit, data: PlantData, *, named: bool = False) -> 
         nf_per_m=nf_per_m,
         cable_nf_words=words,
         missing=tuple(dict.fromkeys(missing)),
-        assumed=(f"receiver {format_number(assumed_term.ohm)} ohm",) if assumed_term is not None else (),
+        assumed=(assumed or f"receiver {format_number(assumed_term.ohm)} ohm",) if assumed_term is not None else (),
         cells=(
             *(circuit.cable_length_m.cells if circuit.cable_length_m is not None else ()),
             *cells,

@@ -22,6 +22,7 @@ from loops.series import (
     driven_in_series,
     entry_name,
     exceeds,
+    given_by,
     hot_cable,
     indicators_in_series,
     is_output,
@@ -51,8 +52,8 @@ class Load:
         The source, and the part of a finding: empty for what the device itself or an output drives.
     maximum_ohm, kindest_maximum_ohm
         What it may drive: with the default for a blank, and with the kindest value that could be true.
-    maximum_words
-        How the maximum came about, where its supply is not the one it is declared for.
+    maximum_words, kindest_words
+        How they came about, where the supply is not the one that the load is declared for.
     current_ma
         The current for which it is declared.
     terms
@@ -70,6 +71,7 @@ class Load:
     maximum_ohm: float
     kindest_maximum_ohm: float
     maximum_words: str = ""
+    kindest_words: str = ""
     current_ma: float
     terms: tuple[Term, ...]
     assumed_term: Term | None = None
@@ -114,7 +116,8 @@ class Load:
         summed = " + ".join(each.as_ohm(self.current_ma) for each in terms)
         over = ohm - maximum
         verdict = f"over by {_fine(over, over)} ohm" if exceeds(ohm, maximum) else f"margin {_fine(-over, over)} ohm"
-        words = f"{self.maximum_words} = " if self.maximum_words and not at_best else ""
+        told = self.kindest_words if at_best else self.maximum_words
+        words = f"{told} = " if told else ""
         return (
             f"{summed or '0 ohm'} = {_fine(ohm, over)} ohm; {words}{_fine(maximum, over)} ohm allowed"
             f" ({entry_name(self.entry)}, at {format_number(self.current_ma)} mA), {verdict}"
@@ -320,22 +323,13 @@ def _load(
             cells.extend(circuit.cable_length_m.cells)
     if assumed_term is not None:
         assumed.append(f"receiver {format_number(assumed_term.ohm)} ohm")
-    kindest, worst, words = declared, declared, ""
+    kindest = worst = declared
+    kindest_words = worst_words = ""
     if own_supply and entry.maximum_load_supply_v is not None:
         low_v, best_v, source, tolerance = _own_supply_v(circuit, data)
         if low_v is not None and best_v is not None:
-            for_v = entry.maximum_load_supply_v
-            most_v = entry.maximum_v if entry.maximum_v is not None else math.inf
-
-            def at(supply_v: float) -> float:
-                return max(declared + (min(supply_v, most_v) - for_v) / (current_ma / 1000.0), 0.0)
-
-            kindest, worst = at(best_v), at(low_v)
-            if worst != declared:
-                words = (
-                    f"{format_number(declared)} ohm + ({shown(min(low_v, most_v))} V, {source}, -"
-                    f" {format_number(for_v)} V) / {format_number(current_ma)} mA"
-                )
+            worst, worst_words = _maximum_at(low_v, entry, current_ma, source)
+            kindest, kindest_words = _maximum_at(best_v, entry, current_ma, source.partition(" less ")[0])
             if tolerance and worst != kindest:
                 assumed.append(tolerance)
     return Load(
@@ -345,7 +339,8 @@ def _load(
         field=field,
         maximum_ohm=worst,
         kindest_maximum_ohm=kindest,
-        maximum_words=words,
+        maximum_words=worst_words,
+        kindest_words=kindest_words,
         current_ma=current_ma,
         terms=tuple(found.terms),
         assumed_term=assumed_term,
@@ -357,12 +352,28 @@ def _load(
     )
 
 
+def _maximum_at(supply_v: float, entry: DeviceType, current_ma: float, source: str) -> tuple[float, str]:
+    """Return the load that may be driven at another supply than it is declared for, and how it came about.
+
+    24 V with 630 ohm are 830 ohm at 28 V and 20 mA, as far as the device bears the volts.
+    """
+    declared, for_v = entry.maximum_load_ohm or 0.0, entry.maximum_load_supply_v or 0.0
+    volts = min(supply_v, entry.maximum_v if entry.maximum_v is not None else math.inf)
+    ohm = max(declared + (volts - for_v) / (current_ma / 1000.0), 0.0)
+    if volts == for_v:
+        return ohm, ""
+    return ohm, (
+        f"{format_number(declared)} ohm + ({shown(volts)} V, {source}, - {format_number(for_v)} V)"
+        f" / {format_number(current_ma)} mA"
+    )
+
+
 def _own_supply_v(circuit: Circuit, data: PlantData) -> tuple[float | None, float | None, str, str]:
     """Return a four-wire device's own supply: its lowest, the kindest that could be true, its source, the tolerance."""
     lowest, nominal = circuit.supply_min_v, circuit.supply_nominal_v
-    if lowest is not None and lowest.source == "row":
-        return lowest.number, lowest.number, "its row", ""
-    if nominal is not None and nominal.source in ("row", "power supply"):
+    if lowest is not None:
+        return lowest.number, lowest.number, given_by(lowest, circuit), ""
+    if nominal is not None and nominal.source != "card":
         percent = data.threshold("ELC supply tolerance %", SUPPLY_TOLERANCE_PERCENT)
         volts = nominal.number
         words = f"supply {volts:g} V may be {percent:g} % low"

@@ -400,7 +400,7 @@ def receivers_across(circuit: Circuit, plant: Plant) -> Verdict:
     inputs = " and ".join(
         f"{_plain(each.number)} ohm{f' of {each.item}' if each.item else ''}" for each in found.across
     )
-    shown_shift = f"{shown(shift)} %"
+    shown_shift = f"{volts_text(shift, abs(shift) - limit)[:-2]} %"
     return Found(
         values={
             "inputs": inputs,
@@ -412,7 +412,7 @@ def receivers_across(circuit: Circuit, plant: Plant) -> Verdict:
         fields=("receiver_ohm",),
         found=f"{shown_shift} of span",
         wanted=f"within {format_number(limit)} % of span",
-        off_by=f"{shown(abs(shift) - limit)} % of span",
+        off_by=f"{volts_text(abs(shift) - limit, abs(shift) - limit)[:-2]} % of span",
         working=(
             f"{found.words(circuit)} = {shown(together)} ohm; ({shown(together)} ohm - {_plain(resistor.number)} ohm)"
             f" / {_plain(resistor.number)} ohm x 20 mA / 16 mA = {shown_shift} of span"

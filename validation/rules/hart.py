@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from instruments.quantity import format_number
+from instruments.record import DeviceType
 from loops.circuit import Circuit
 from loops.hart import (
     LEAST_OHM,
@@ -61,7 +62,8 @@ def too_little_for_hart(circuit: Circuit, plant: Plant) -> Verdict:
         return Unchecked("HART")
     if circuit.barrier_named and circuit.barrier is None:
         return Unchecked("barrier")
-    if isolator is not None and isolator.hart is False and not _heard_in_the_field(circuit):
+    least = plant.threshold("ELC05 ohm", LEAST_OHM)
+    if isolator is not None and isolator.hart is False and not _heard_in_the_field(isolator, least):
         return _not_passed(circuit, f"isolator {isolator.code}", Found, plant)
     zener = circuit.zener
     if zener is not None and zener.hart is False:
@@ -70,7 +72,6 @@ def too_little_for_hart(circuit: Circuit, plant: Plant) -> Verdict:
         # A current output is no short to HART: what it drives is the resistance.
         return NotApplicable()
     heard = heard_across(circuit)
-    least = plant.threshold("ELC05 ohm", LEAST_OHM)
     if heard.ohm is None:
         return Unchecked(*heard.missing)
     if _short_of(heard.ohm, least):
@@ -88,13 +89,10 @@ def _short_of(ohm: float, least: float) -> bool:
     return series_resistor_ohm(ohm, least) > 0
 
 
-def _heard_in_the_field(circuit: Circuit) -> bool:
+def _heard_in_the_field(isolator: DeviceType, least: float) -> bool:
     """Whether an isolator that passes no HART has the resistance for a communicator on its field side."""
-    isolator = circuit.isolator
-    own = isolator.input_ohm if isolator is not None and isolator.input_ohm is not None else None
-    if isolator is not None and own is None:
-        own = isolator.resistance_ohm
-    return own is not None and not _short_of(own, LEAST_OHM)
+    own = isolator.input_ohm if isolator.input_ohm is not None else isolator.resistance_ohm
+    return own is not None and not _short_of(own, least)
 
 
 def _not_passed(circuit: Circuit, what: str, kind: type[Found], plant: Plant) -> Found:
@@ -114,7 +112,6 @@ def _not_passed(circuit: Circuit, what: str, kind: type[Found], plant: Plant) ->
     return kind(
         values={"what": what, "device": circuit.device.name},
         fields=("row.barrier",),
-        part=what,
         found=f"{what}: HART no",
         wanted="HART yes",
         working=f"{circuit.device.name} speaks HART; {what} states that it does not pass it",
