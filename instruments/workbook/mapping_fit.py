@@ -377,10 +377,9 @@ def _matched(
     sheet: Sheet, mapped: MappedSheet, kind: SheetKind, codes: frozenset[str], notes: list[tuple[int, str]]
 ) -> SheetMatch | None:
     if not mapped.heading_rows:
-        match = match_sheet(sheet, [kind], forced=kind, codes=codes)
-        if match is None and "thresholds" in getattr(kind.record, "__dataclass_fields__", {}):
+        if "thresholds" in getattr(kind.record, "__dataclass_fields__", {}):
             return SheetMatch(kind=kind, header_rows=(), first_row=0, columns={}, named=True)
-        return match
+        return match_sheet(sheet, [kind], forced=kind, codes=codes)
     place = _rows_of_heading(sheet, mapped, notes)
     if place is None:
         anew = match_sheet(sheet, [kind], forced=kind, codes=codes)

@@ -113,14 +113,14 @@ def _sheet_lines(sheet: MappedSheet, kind: SheetKind | None) -> Iterator[str]:
     rows = [_entry(column, titles, turned=sheet.turned) for column in sheet.columns]
     widths = [min(max((len(row[at]) for row in rows), default=0), limit) for at, limit in enumerate((14, 44, 40))]
     yield "columns = ["
-    for *first, rest, found in rows:
+    for *first, rest in rows:
         start = " ".join(text.ljust(width) for text, width in zip(first, widths, strict=True))
-        yield f"  {{ {start} {rest}{found} }},"
+        yield f"  {{ {start} {rest} }}," if rest else f"  {{ {start.rstrip()} }},"
     yield "]"
 
 
-def _entry(column: MappedColumn, titles: dict[str, str], *, turned: bool) -> tuple[str, str, str, str, str]:
-    """Return an entry in pieces: cell, heading, field, what there may be beside, and how it was found."""
+def _entry(column: MappedColumn, titles: dict[str, str], *, turned: bool) -> tuple[str, str, str, str]:
+    """Return an entry in pieces: cell, heading, field, and what there may be beside."""
     if turned:
         cell = f"{column_letters(column.row or 0)}{column.index + 1}"
     else:
@@ -142,15 +142,15 @@ def _entry(column: MappedColumn, titles: dict[str, str], *, turned: bool) -> tup
         beside.append(f"only = {_text(column.only)}")
     if column.decimal:
         beside.append(f"decimal_sign = {_text(column.decimal)}")
-    found = [f"how = {_text(column.how)}"] if column.how else []
+    if column.how:
+        beside.append(f"how = {_text(column.how)}")
     if column.likelihood is not None:
-        found.append(f"likely = {column.likelihood:.2f}")
+        beside.append(f"likely = {column.likelihood:.2f}")
     return (
         f"cell = {_text(cell)},",
         f"heading = {_text(column.heading)},",
-        f"field = {field}{',' if beside or found else ''}",
-        "".join(f"{text}, " for text in beside),
-        ", ".join(found),
+        f"field = {field}{',' if beside else ''}",
+        ", ".join(beside),
     )
 
 
@@ -429,7 +429,7 @@ class _Reader:
             self.line, self.entry = column.line, f"heading '{column.heading}' of {file}, sheet '{sheet}'"
             before = cells.setdefault(column.index, column)
             if before is not column:
-                self._refuse(f"column {column_letters(column.index)} stands in line {before.line} already")
+                self._refuse(f"this column stands in line {before.line} already")
             for name in column.fields:
                 owners[name].append((column, column.part if name == column.fields[-1] else 0))
         for name, entries in owners.items():
