@@ -22,6 +22,7 @@ from instruments.area import (
     read_classification,
 )
 from instruments.certificate import Certificate
+from instruments.certificate import conditions_accepted as is_recorded
 from instruments.epl import EPLS_IN_ZONE
 from instruments.gas import INERT, gases_in, iec_group_of, named_gases, nec_group_of
 from instruments.marking import Marking
@@ -828,6 +829,42 @@ def _dust_for_letter(entry: MarkingEntry, letter: str) -> Acceptance:
     return Acceptance(outcome=found.outcome, reason=reason, missing=found.missing)
 
 
+# Schemes --------------------------------------------------------------------------------------------------
+
+
+def scheme_as_evidence(entry: MarkingEntry, jurisdiction: str | None) -> Acceptance:
+    """Say whether a marking's scheme is evidence where a jurisdiction's rules hold; at most a review.
+
+    The US take divisions and AEx (NEC 500.8(A) and 505.9(C)), Canada divisions and Ex without a category (CSA
+    C22.1 section 18), the EU and the IEC's members Ex; a dust category alone is the EU's (all from memory).
+
+    >>> from instruments.marking import read_marking
+    >>> texts = ("Ex ia IIC T4 Ga", "AEx ia IIC T4 Ga", "Class I Div 1 Group D T4")
+    >>> marks = [read_marking(text).entries[0] for text in texts]
+    >>> [[scheme_as_evidence(mark, where).outcome for mark in marks] for where in ("IEC", "US")]
+    [['accepted', 'review', 'review'], ['review', 'accepted', 'accepted']]
+    """
+    if jurisdiction is None:
+        return _unknown("no jurisdiction is stated", "jurisdiction")
+    evidence: tuple[str, ...]
+    if entry.is_division:
+        scheme, evidence = "a mark by class and division", ("US", "Canada")
+    elif entry.scheme == "atex only":
+        scheme, evidence = "an ATEX category", ("ATEX",)
+    elif entry.prefix == "AEx":
+        scheme, evidence = "an AEx mark", ("US",)
+    elif entry.categories:
+        scheme, evidence = f"an {entry.prefix} mark with an ATEX category", ("ATEX", "IEC")
+    elif entry.prefix == "EEx":
+        scheme, evidence = "an EEx mark", ("ATEX", "IEC")
+    else:
+        scheme, evidence = "a plain Ex mark", ("ATEX", "IEC", "Canada")
+    if jurisdiction in evidence:
+        return _accepted(f"{scheme} under {jurisdiction}")
+    rules = {"US": "the US", "IEC": "the IEC's standards", "ATEX": "the ATEX directive"}.get(jurisdiction, jurisdiction)
+    return _review(f"{scheme} is no evidence by itself under the rules of {rules}")
+
+
 # Certificates ---------------------------------------------------------------------------------------------
 
 
@@ -852,7 +889,7 @@ def certificate_suffix(certificates: Iterable[Certificate], *, conditions_accept
     if not complete:
         return _refused(f"{', '.join(map(str, evidence))}: an Ex component is the only evidence")
     conditional = [str(certificate) for certificate in complete if certificate.suffix == "X"]
-    if conditional and not (conditions_accepted or "").strip():
+    if conditional and not is_recorded(conditions_accepted):
         return _review(f"{', '.join(conditional)}: nobody has recorded that the conditions of use are met")
     return _accepted(", ".join(map(str, complete)))
 
@@ -921,6 +958,8 @@ def best_entry(
                 )
             )
         found.append(ambient(entry, area_min_c=area.ambient_min_c, area_max_c=area.ambient_max_c))
+        if jurisdiction is not None:
+            found.append(scheme_as_evidence(entry, jurisdiction))
         outside = crosses_systems(entry, area) and jurisdiction not in ("US", "Canada")
         wrong_side = entry.side is not None and entry.side != side
         return sum(weights[each.outcome] for each in found) + 20 * outside + 40 * wrong_side

@@ -119,3 +119,43 @@ def _known(text: str) -> tuple[Certificate, ...]:
         while scanner.take(_BETWEEN_CERTIFICATES):
             pass
     return tuple(found) if scanner.ended else ()
+
+
+# What a record of acceptance holds: somebody's name and a day. Text of the conditions themselves is none.
+_DATE: Final = re.compile(
+    r"\b(?:\d{4}-\d{1,2}(?:-\d{1,2})?|\d{1,2}[./-]\d{1,2}[./-]\d{2,4}|\d{1,2}[./-]\d{4}|\d{1,2}/\d{2}"
+    r"|\d{1,2}\.?[ -]?[a-zäéûô]{3,9}\.?[ -]?,?\d{2,4}|[a-zäéûô]{3,9}\.?[ -]\d{1,2},? ?\d{4}|[a-zäéûô]{3,9}\.?[ -]\d{4})"
+    r"(?:[ t]\d{2}:\d{2}(?::\d{2})?)?\b",
+    re.IGNORECASE,
+)
+_MONTH: Final = re.compile(
+    r"(?:jan|feb|mar|mär|mrz|apr|ma[iy]|jun|jul|aug|sep|o[ck]t|nov|de[cz]|fév|avr|juin|juil|aoû|déc|ene|abr|ago|dic)",
+    re.IGNORECASE,
+)
+_NOT_YET: Final = re.compile(
+    r"\b(?:not?|never|none|rejected|refused|declined|open|outstanding|pending|awaiting|due|until|nicht|kein|offen|"
+    r"abgelehnt|ausstehend|non|tb[acd])\b",
+    re.IGNORECASE,
+)
+_NAME: Final = re.compile(r"[^\W\d_]{2,}")
+_NO_NAME: Final = re.compile(
+    r"\b(?:yes|ja|oui|ok|accepted|met|done|date|on|by|am|von|seen|read|reviewed|checked)\b", re.I
+)
+
+
+def conditions_accepted(text: str | None) -> bool:
+    """Whether a text records that somebody has accepted the conditions of use: a name and a date.
+
+    >>> conditions_accepted("N. Hollin, 3 May 2026"), conditions_accepted("yes"), conditions_accepted(None)
+    (True, False, False)
+    >>> conditions_accepted("Clean with a damp cloth only, see 17"), conditions_accepted("not accepted, NH 2026-05-03")
+    (False, False)
+    """
+    if not text or len(text) > MAX_LENGTH or _NOT_YET.search(text):
+        return False
+    for date in _DATE.finditer(text):
+        word = _NAME.search(date[0])
+        if word and not _MONTH.match(word[0]):
+            continue
+        return bool(_NAME.search(_NO_NAME.sub(" ", text[: date.start()] + " " + text[date.end() :])))
+    return False

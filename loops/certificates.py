@@ -8,8 +8,8 @@ from typing import Final
 
 from instruments.certificate import Certificate, read_certificates
 from instruments.installed import Installed
-from instruments.marking import Marking, read_marking
 from instruments.origin import Cell
+from instruments.protection import marking_of
 from instruments.tag import natural_key
 from loops.plant import Plant
 
@@ -65,16 +65,9 @@ def certificate_cells(installed: Installed) -> tuple[Cell, ...]:
 def evidence_of(installed: Installed) -> tuple[Certificate, ...]:
     """Return the certificates that an instrument names: those of its certificate cell, and those of its marking."""
     text = certificate_text(installed)
-    marking = _whole_marking(installed)
+    marking = marking_of(installed)
     found = (*(read_certificates(text) if text else ()), *(marking.certificates if marking is not None else ()))
     return tuple({_key(each): each for each in reversed(found)}.values())[::-1]
-
-
-def _whole_marking(installed: Installed) -> Marking | None:
-    if installed.marking is not None:
-        return installed.marking
-    protection = installed.record.protection
-    return read_marking(protection) if protection else None
 
 
 def _key(certificate: Certificate) -> str:

@@ -21,6 +21,7 @@ from instruments.acceptance import (
     dust_surface,
     entry_in_zone,
     gas_group,
+    scheme_as_evidence,
     temperature,
     translated_group,
     zone_marked,
@@ -30,6 +31,7 @@ from instruments.installed import Installed
 from instruments.kind import Kind
 from instruments.marking import Marking, read_marking
 from instruments.marking_entry import T_CODE_C, MarkingEntry, division_text
+from instruments.origin import Cell
 from instruments.protection import (
     intrinsically_safe,
     is_simple_apparatus,
@@ -163,6 +165,12 @@ CLASSIFICATION_FIELDS: Final = ("zone", "class_", "division", "gas_group", "dust
 """The fields of an area that classify it."""
 
 
+def areas_named(installed: Installed, plant: Plant) -> tuple[Area, ...]:
+    """Return the classified areas that its row names, wherever its kind stands; none where that cannot be told."""
+    found = _areas_of(installed, plant)
+    return () if isinstance(found, Unchecked) else found
+
+
 def areas_of(installed: Installed, plant: Plant) -> tuple[Area, ...] | Unchecked:
     """Return the classified areas that its row names, the area list's first, or what is missing to tell."""
     return _case(installed, plant).areas
@@ -188,7 +196,9 @@ def _areas_of(installed: Installed, plant: Plant) -> tuple[Area, ...] | Unchecke
 def jurisdiction_of(area: Area, plant: Plant) -> tuple[str | None, tuple[str, ...]]:
     """Return whose rules hold in an area, and what was assumed: its own, the plant's, US for a division without."""
     stated = area.jurisdiction or plant.data.jurisdiction
-    if stated is None and area.system == "division":
+    by_division = area.system == "division"
+    if by_division and (stated is None or (area.from_row_cell and stated not in ("US", "Canada"))):
+        # A row's own cell has no place for a jurisdiction, and elsewhere there are no divisions.
         return "US", ("areas by class and division without a jurisdiction are read as US",)
     return stated, ()
 
@@ -234,7 +244,30 @@ def place(area: Area, installed: Installed | None = None) -> str:
     return f"area {area.code} ({described(area)})"
 
 
+def first_cell(area: Area, plant: Plant) -> tuple[Cell, ...]:
+    """Return the first cell that makes the area, where no list has a row for it."""
+    if not area.from_row_cell:
+        return ()
+    firsts: dict[Any, tuple[Cell, ...]] = plant.once("first cells of rows' own areas", _first_cells)
+    return firsts.get(name_key(area.code), ())
+
+
+def _first_cells(plant: Plant) -> dict[Any, tuple[Cell, ...]]:
+    firsts: dict[Any, tuple[Cell, ...]] = {}
+    for each in plant.live:
+        area = each.area
+        if area is not None and area.from_row_cell and name_key(area.code) not in firsts:
+            firsts[name_key(area.code)] = each.record.cells(area_fields((), area, each)[0])
+    return firsts
+
+
 # ----------------------------------------------------------------------------------------------------- the marking
+
+
+def is_marked_in_area(installed: Installed, plant: Plant) -> bool:
+    """Whether it has an Ex marking, and stands where `may_be_in_area` says."""
+    marking = marking_of(installed)
+    return marking is not None and not marking.none_stated and may_be_in_area(installed, plant)
 
 
 def marking_field(installed: Installed) -> str:
@@ -331,7 +364,7 @@ class Fit:
         ]
         if not judged:
             return NotApplicable()
-        if code == "HAZ08" and len(judged) == 2 and judged[0].acceptance == judged[1].acceptance:
+        if code in ("HAZ08", "HAZ16") and len(judged) == 2 and judged[0].acceptance == judged[1].acceptance:
             judged = judged[:1]
         against = [each for each in judged if each.acceptance.outcome in ("refused", "review")]
         if against:
@@ -340,7 +373,7 @@ class Fit:
         if any(each.acceptance.outcome == "unknown" for each in judged):
             return Unchecked(*dict.fromkeys(_MISSING.get(name, name) for name in missing or ["Ex marking"]))
         assumed = [f"{self.marking.text}: {text}" for each in judged for text in each.acceptance.assumed]
-        if code in ("HAZ09", "HAZ10"):
+        if code in ("HAZ09", "HAZ10", "HAZ16"):
             assumed += self.assumed
         assumed += repaired(self.marking)
         return Clear(tuple(dict.fromkeys(assumed))) if assumed else None
@@ -508,6 +541,14 @@ def _letters(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | None
     return division_group(entry.groups, fit.area.dust_group if side == "dust" else fit.area.gas_group)
 
 
+def _scheme(fit: Fit, side: AreaSide, entry: MarkingEntry) -> Acceptance | None:
+    if crosses_systems(entry, fit.area) and fit.jurisdiction and not fit.in_north_america:
+        what = "a mark by class and division" if entry.is_division else "a mark for zones"
+        where = f"a {'zone' if entry.is_division else 'division'} under {fit.jurisdiction}"
+        return Acceptance(outcome="review", reason=f"{what} is no evidence by itself in {where}")
+    return scheme_as_evidence(entry, fit.jurisdiction)
+
+
 _TABLES: Final[Mapping[str, Callable[[Fit, AreaSide, MarkingEntry], Acceptance | None]]] = {
     "HAZ03": _epl,
     "HAZ04": _gas_group,
@@ -517,6 +558,7 @@ _TABLES: Final[Mapping[str, Callable[[Fit, AreaSide, MarkingEntry], Acceptance |
     "HAZ08": _ambient,
     "HAZ09": _division,
     "HAZ10": _letters,
+    "HAZ16": _scheme,
 }
 
 
@@ -617,7 +659,7 @@ def judge(code: str, installed: Installed, plant: Plant) -> Verdict:
     Parameters
     ----------
     code
-        HAZ03 to HAZ10.
+        HAZ03 to HAZ10, HAZ16.
     installed
         An instrument for which `may_be_in_area` holds.
     plant
@@ -656,7 +698,7 @@ def _asks(code: str, area: Area, plant: Plant) -> bool:
             return not by_division and "dust" in sides
         case "HAZ07":
             return "dust" in sides and (not by_division or _has_dust_limit(area))
-        case "HAZ08":
+        case "HAZ08" | "HAZ16":
             return True
         case "HAZ09":
             return by_division or jurisdiction_of(area, plant)[0] in ("US", "Canada")
@@ -699,7 +741,7 @@ def _assumed(code: str, fit: Fit, judged: Judged) -> tuple[str, ...]:
     if code == "HAZ03" and entry.epl_source in ("derived", "category"):
         source = " ".join(entry.protections) if entry.epl_source == "derived" else "the ATEX category"
         assumed.append(f"{fit.marking.text}: EPL {entry.epl_text} follows from {source}")
-    if code in ("HAZ09", "HAZ10"):
+    if code in ("HAZ09", "HAZ10", "HAZ16"):
         assumed += fit.assumed
     return tuple(dict.fromkeys((*assumed, *repaired(fit.marking))))
 
@@ -724,6 +766,8 @@ def _area_fields(code: str, fit: Fit, judged: Judged) -> tuple[str, ...]:
     if code == "HAZ08":
         hot = area.ambient_max_c is not None and area.ambient_max_c > judged.entry.ambient_max_c
         return ("ambient_max_c",) if hot else ("ambient_min_c",)
+    if code == "HAZ16":
+        return ("jurisdiction",)
     if code == "HAZ09":
         return ("class_", "division") if area.system == "division" else ("zone",)
     return (group,)
@@ -751,6 +795,8 @@ def _figures(code: str, fit: Fit, judged: Judged) -> tuple[str, str, str, str]:
             return f"{_number(marked)} degC", f"at most {_number(limit)} degC", over, permitted.working
         case "HAZ08":
             return _ambient_figures(entry, area)
+        case "HAZ16":
+            return fit.marking.text, f"a marking for {fit.jurisdiction}", "", ""
         case "HAZ09":
             marked_for = division_text(entry) if entry.is_division else f"Zone {zone_marked(entry) or '?'}"
             return marked_for, described(area), "", ""

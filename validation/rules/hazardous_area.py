@@ -6,12 +6,11 @@ Ferrule classifies nothing and accepts nothing: screening aid - requires review 
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
-from typing import Any, Final
+from typing import Final
 
 from instruments.area import Area, permitted_dust_surface_c
 from instruments.installed import Installed
 from instruments.kind import Kind
-from instruments.origin import Cell
 from instruments.protection import NEVER_SIMPLE, is_passive, is_simple_apparatus, marking_of
 from loops.plant import AreaInPlant, Plant, name_key
 from validation.finding import Clear, Found, NotApplicable, Review, Severity, Unchecked, Verdict
@@ -20,7 +19,9 @@ from validation.hazardous_place import (
     area_fields,
     areas_of,
     described,
+    first_cell,
     has_its_systems_group,
+    is_marked_in_area,
     judge,
     kind_is_known,
     marking_field,
@@ -468,15 +469,11 @@ def group_letter_not_marked(installed: Installed, plant: Plant) -> Verdict:
     return judge("HAZ10", installed, plant)
 
 
-def _is_marked_in_area(installed: Installed, plant: Plant) -> bool:
-    return installed.marking is not None and not installed.marking.none_stated and may_be_in_area(installed, plant)
-
-
 @rule(
     "HAZ15",
     severity=Severity.DANGER,
     on=Subject.INSTRUMENT,
-    applies=_is_marked_in_area,
+    applies=is_marked_in_area,
     message="the Ex marking '{marking}' cannot be read: {problem}",
     basis="IEC 60079-0:2017 29 and NEC 500.8(C) for what a marking holds (from memory)",
 )
@@ -495,7 +492,7 @@ def unreadable_marking(installed: Installed, plant: Plant) -> Verdict:
     >>> said("HAZ15", [{**row, "Ex marking": "EEx e II T3"}])
     []
     """
-    marking = installed.marking
+    marking = marking_of(installed)
     assert marking is not None
     if marking.readable:
         assumed = repaired(marking)
@@ -631,7 +628,7 @@ def incomplete_area(subject: AreaInPlant, plant: Plant) -> Verdict:
         fields=tuple(f"area.{name}" for name in lacking),
         found="blank" if not unread else "blank or unreadable",
         wanted=", ".join(lacks),
-        cells=_first_cell(area, plant),
+        cells=first_cell(area, plant),
     )
 
 
@@ -647,20 +644,3 @@ def _words(name: str, area: Area) -> str:
 
 def _and(parts: list[str]) -> str:
     return parts[0] if len(parts) == 1 else f"{', '.join(parts[:-1])} and {parts[-1]}"
-
-
-def _first_cell(area: Area, plant: Plant) -> tuple[Cell, ...]:
-    """Return the first cell that makes the area, where no list has a row for it."""
-    if not area.from_row_cell:
-        return ()
-    firsts: dict[Any, tuple[Cell, ...]] = plant.once("first cells of rows' own areas", _first_cells)
-    return firsts.get(name_key(area.code), ())
-
-
-def _first_cells(plant: Plant) -> dict[Any, tuple[Cell, ...]]:
-    firsts: dict[Any, tuple[Cell, ...]] = {}
-    for each in plant.live:
-        area = each.area
-        if area is not None and area.from_row_cell and name_key(area.code) not in firsts:
-            firsts[name_key(area.code)] = each.record.cells(area_fields((), area, each)[0])
-    return firsts
