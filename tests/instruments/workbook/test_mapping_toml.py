@@ -121,7 +121,7 @@ def test_half_a_character_is_written_as_none() -> None:
     ],
 )  # fmt: skip
 def test_a_field_by_its_title_or_a_heading_that_means_it_alone(tmp_path: Path, field: str, meant: str) -> None:
-    text = SHEET.replace('"service"', f'"{field}"').replace('"tag" }', '"none" }')
+    text = SHEET.replace('"tag" }', '"none" }').replace('"service"', f'"{field}"')
     text = text.replace('"range", unit = "barg"', '"none"')
     assert reading(tmp_path, text).sheets[0].columns[1].fields == (meant,)
 
