@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import datetime
 import re
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any, Final, NamedTuple
@@ -11,7 +12,7 @@ from instruments.number import CellTrouble, read_number
 from instruments.quantity import Quantity, read_quantity, read_range, read_triplet
 from instruments.unit import Unit, read_unit
 from instruments.workbook.column_unit import read_plain_number
-from instruments.workbook.number_format import as_text
+from instruments.workbook.number_format import as_text, as_typed
 from instruments.workbook.sheet import Value
 from instruments.workbook.words import Words, folded, is_ditto, is_plainly_a_value, placeholder, yes_or_no
 
@@ -24,11 +25,12 @@ __all__ = [
     "Read",
     "UnitCell",
     "count_cell",
+    "is_settings_text",
     "joined_cell",
     "labelled_settings",
     "number_cell",
-    "one_of_several",
     "part_marking",
+    "pieces_of",
     "quantity_cell",
     "text_cell",
     "trouble",
@@ -116,6 +118,14 @@ _TERMINALS: Final = frozenset({"from_terminal", "to_terminal"})
 _GENEROUS: Final = frozenset({"location", "mounting", "system"})
 
 
+_DATES: Final = (datetime.date, datetime.time)
+# Fields in which a date may stand; elsewhere it is a terminal or an address such as 1-2.
+_MAY_BE_DATES: Final = frozenset(
+    {"x_accepted", "hold", "status", "revision", "scope", "service", "description", "name"}
+)
+MADE_A_DATE: Final = "the spreadsheet made a date or time of it"
+
+
 def _plain(cell: Value) -> str:
     return (cell if isinstance(cell, str) else as_text(cell)).strip()
 
@@ -152,6 +162,7 @@ def text_cell(field: str) -> Read:
     ('by vendor', 'N/A')
     """
     joint = ", " if field in _BY_LINES else " "
+    dated = field in _MAY_BE_DATES
 
     def read(text: str) -> Outcome:
         if "\n" in text or "\r" in text:
@@ -159,7 +170,14 @@ def text_cell(field: str) -> Read:
         return Outcome(value=" ".join(text.split()) or None)
 
     if field != "remarks":
-        return _unless_blank(field, read)
+        plain = _unless_blank(field, read)
+
+        def said(cell: Value) -> Outcome:
+            if isinstance(cell, _DATES) and not dated:
+                return _in_trouble(MADE_A_DATE, as_typed(cell))
+            return plain(cell)
+
+        return said
 
     def remark(cell: Value) -> Outcome:
         text = _plain(cell)
@@ -303,6 +321,18 @@ _LEVELS: Final = {
 }
 
 
+_FIGURE_FIRST: Final = re.compile(r"[<>~(]{0,2}\s?[-+]?\d")
+
+
+def is_settings_text(text: str) -> bool:
+    """Whether a text is about figures of settings, read or not; see the cause and effect chart is not.
+
+    >>> is_settings_text("12/10 barg"), is_settings_text("trip at HH 12"), is_settings_text("see chart CE-01")
+    (True, True, False)
+    """
+    return placeholder(text) is None and (_FIGURE_FIRST.match(text) is not None or _LABEL.search(text) is not None)
+
+
 def labelled_settings(text: str) -> tuple[str | None, ...] | None:
     """Return the settings that one cell names, LL L H HH and trip, each with its unit; None where it names none.
 
@@ -352,16 +382,53 @@ def with_prefix(prefix: str, text: str) -> str:
     return f"{prefix} {text}"
 
 
-def one_of_several(cell: Value, place: int, count: int) -> Value:
-    """Return one of several values of a cell; the whole cell where it has not that many.
+_PARTS: Final = re.compile(r"[/|\n;]")
+_PARTS_TOO: Final = re.compile(r",\s")
+_END_LABEL: Final = re.compile(r"(?<![A-Za-z])(min|nor|max)[a-z]{0,6}(?![A-Za-z])[.:= ]*", re.IGNORECASE)
+_TAIL: Final = re.compile(r"[\d.,]\s?([^\d.,<>\s+-][^\d]{0,20}\d?)$")
+_ENDS: Final = ("min", "nor", "max")
 
-    >>> one_of_several("20 / 90", 1, 2), one_of_several("20", 1, 2)
-    ('90', '20')
+
+def pieces_of(cell: Value, fields: Sequence[str]) -> tuple[Value, ...] | CellTrouble:
+    """Return the values of a cell that holds one for each of several fields, in order.
+
+    A placeholder, or a word such as ambient, speaks for all of them. Of minimum, normal and maximum a single
+    value is the normal one, and a unit that stands once is all the others'.
+
+    >>> pieces_of("20 / 90", ("design_pressure", "design_temperature"))
+    ('20', '90')
+    >>> pieces_of("2/8 degC", ("operating_temperature_min", "operating_temperature_max"))
+    ('2 degC', '8 degC')
+    >>> pieces_of("max. 60", ("operating_temperature_min", "operating_temperature_max"))
+    (None, '60')
+    >>> pieces_of("20", ("design_pressure", "design_temperature")).reason
+    "'20' holds 1 value where 2 are wanted"
     """
-    if not isinstance(cell, str):
-        return cell
-    pieces = [piece.strip() for piece in re.split(r"[/|\n;]", cell)]
-    return (pieces[place] or None) if len(pieces) == count else cell
+    if cell is None or isinstance(cell, datetime.date | datetime.time):
+        return (cell,) * len(fields)
+    text = _plain(cell)
+    if placeholder(text) or is_ditto(text) or not any(map(str.isdigit, text)):
+        return (text,) * len(fields)
+    ends = [place for name in fields for place, end in enumerate(_ENDS) if name.rpartition("_")[2].startswith(end)]
+    pieces = [piece.strip() for piece in _PARTS.split(text)]
+    if len(pieces) != len(fields) and _PARTS_TOO.search(text):
+        pieces = [piece.strip() for piece in _PARTS_TOO.split(text)]
+    pieces = pieces if len(pieces) > 1 else [piece for piece in pieces if piece]
+    of_one_kind = len(ends) == len(fields) or all(name.startswith("setting_") for name in fields)
+    if of_one_kind and (tail := _TAIL.search(pieces[-1])) is not None and "/" not in tail[1]:
+        pieces = [f"{piece} {tail[1]}" if re.fullmatch(r"[<>~]?\s?[-+]?[\d.,]+", piece) else piece for piece in pieces]
+    if len(ends) == len(fields):
+        named = [_END_LABEL.search(piece) for piece in pieces]
+        places = [_ENDS.index(each[1].lower()) for each in named if each is not None]
+        if len(places) == len(pieces) == len(set(places)) and set(places) <= set(ends):
+            by_place = {place: _END_LABEL.sub("", piece).strip() for place, piece in zip(places, pieces, strict=True)}
+            return tuple(by_place.get(place) for place in ends)
+        if len(pieces) == 1 and not places and 1 in ends:
+            return tuple(pieces[0] if place == 1 else None for place in ends)
+    if len(pieces) == len(fields):
+        return tuple(piece or None for piece in pieces)
+    held = f"{len(pieces)} value{'s' if len(pieces) > 1 else ''}"
+    return trouble(f"'{text}' holds {held} where {len(fields)} are wanted", pieces[:4] if len(pieces) > 1 else ())
 
 
 def joined_cell(cells: Sequence[Value], joints: Sequence[str]) -> str | None:
@@ -472,7 +539,7 @@ def quantity_cell(cell: Value, unit: UnitCell, column: Column, *, decimal: str |
         return NOTHING
     if type(cell) is not float:
         if not isinstance(cell, str):
-            return _in_trouble("the spreadsheet made a date or time of it")
+            return _in_trouble(MADE_A_DATE, as_typed(cell)[1:])
         text = cell.strip()
         if is_ditto(text):
             return DITTO

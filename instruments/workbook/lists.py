@@ -373,6 +373,10 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
         remarks.append("hidden in the workbook; read like the others")
     if sheet.hidden_rows or sheet.hidden_columns:
         remarks.append(f"hidden, and read like the others: {_hidden(sheet, match)}")
+    if sheet.shapes:
+        remarks.append(
+            f"{sheet.shapes} drawn shapes (clouds, triangles, pictures) are not read: which rows they mark is not known"
+        )
     if found.merged:
         remarks.append(f"{found.merged} cells filled from merged cells")
     return SheetReport(

@@ -28,11 +28,12 @@ from instruments.workbook.cell import (
     Read,
     UnitCell,
     count_cell,
+    is_settings_text,
     joined_cell,
     labelled_settings,
     number_cell,
-    one_of_several,
     part_marking,
+    pieces_of,
     quantity_cell,
     text_cell,
     trouble,
@@ -47,7 +48,7 @@ from instruments.workbook.headings import ColumnMatch, SheetMatch
 from instruments.workbook.number_format import as_text, format_kind
 from instruments.workbook.problem import CellProblem
 from instruments.workbook.rows import RowsOfSheet, sort_rows
-from instruments.workbook.sheet import Sheet, Value
+from instruments.workbook.sheet import Sheet, Value, cell_address
 from instruments.workbook.tag_column import TagCell, profile_of, read_tag_cell
 from instruments.workbook.unread import Unread, problems_of
 from instruments.workbook.words import folded, is_ditto, not_live, placeholder
@@ -72,6 +73,19 @@ _SET_AT: Final = re.compile(
 )
 _ZERO_OR_ONE: Final = re.compile(r"[01]|0\s?(?:-|/|\.{2,3}|to)\s?1")
 _DIGITAL: Final = re.compile(r"d[io]\b|digital|discrete|b[ea]\b|d[ea]\b", re.IGNORECASE)
+
+
+LONGEST_COMMENT: Final = 1000
+"""Characters of a comment that are kept with its row."""
+
+# What an annotated copy has in its comments: the code of a rule, by itself or with what it speaks of behind it.
+_OWN_COMMENT: Final = re.compile(r"(?:^|\n)(?:Ferrule:\s{0,3})?[A-Z]{3}[0-9]{2}(?=\n|  |$)")
+
+_OF_A_SIGNAL: Final = re.compile(r"\d ?(?:mA|V)\b|psi|bar|kPa")
+# A cell and the unit that its row or heading give it.
+_Key = tuple[Value, UnitCell]
+
+_LIKE_THOUSANDS: Final = re.compile(r"(?<![\d.,])[1-9]\d{0,2}\.\d{3}(?![\d.,])")
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -215,6 +229,7 @@ class _SheetReader:
                     self._read_quantities(name, match, self._units_for(match, base if of_range else None))
         for _, match in labelled:
             self._read_labelled(match, base)
+        self._take_signals_of_ranges()
         self._part_markings()
         self._take_io_type_of_titles()
         self._take_status()
@@ -236,10 +251,22 @@ class _SheetReader:
                 found[position] = value
             for position, code in self._formats.get(index, {}).items():
                 cell = found[position]
-                if isinstance(cell, float) and format_kind(code) != "date":
-                    found[position] = as_text(cell, code)
+                if isinstance(cell, float) and format_kind(code) not in ("date", "scientific"):
+                    text = as_text(cell, code)
+                    # Its point is a decimal point, whatever the texts of the sheet have.
+                    found[position] = _LIKE_THOUSANDS.sub(r"\g<0>0", text) if index in self._numeric else text
             self._columns[index] = found
         return found
+
+    @cached_property
+    def _numeric(self) -> frozenset[int]:
+        return frozenset(each.index for each in self.match.columns.values() if each.column.reads in NUMERIC)
+
+    def _texts(self, index: int) -> set[str]:
+        """Return the texts of a column as they were written: what a number looks like is none."""
+        cells = self.cells(index)
+        looks = self._formats.get(index, {})
+        return {cell for position, cell in enumerate(cells) if isinstance(cell, str) and position not in looks}
 
     @cached_property
     def _instead(self) -> dict[int, dict[int, Value]]:
@@ -275,14 +302,28 @@ class _SheetReader:
         """Let a column be read as its heading means it: one of two values, or only the rows that it speaks of."""
         cells = self.cells(match.index)
         if match.piece is not None:
-            place, count = match.piece
-            cells = [one_of_several(cell, place, count) for cell in cells]
+            cells = self._pieces(match, match.piece[0], cells)
         if match.only and self.letters:
             spoken_of = [not letters or letters[0] == match.only for letters in self.letters]
             self._set_aside(match, cells, spoken_of)
             cells = [cell if yes else None for cell, yes in zip(cells, spoken_of, strict=True)]
         with self._seeing(match.index, cells):
             yield
+
+    def _pieces(self, match: ColumnMatch, place: int, cells: Sequence[Value]) -> list[Value]:
+        """Return what a column of several values holds for one of its fields; a cell of too few or many is trouble."""
+        together = {name: each.piece for name, each in self.match.columns.items() if each.index == match.index}
+        names = sorted((name for name, piece in together.items() if piece), key=lambda name: together[name] or (0, 0))
+        known = {cell: pieces_of(cell, names) for cell in set(cells)}
+        found: list[Value] = []
+        for position, cell in enumerate(cells):
+            pieces = known[cell]
+            if isinstance(pieces, CellTrouble):
+                self._trouble(position, match.index, match.field, as_text(cell), pieces)
+                found.append(None)
+            else:
+                found.append(pieces[place])
+        return found
 
     def _set_aside(self, match: ColumnMatch, cells: Sequence[Value], wanted: Sequence[bool]) -> None:
         """Keep the cells that a column's field does not take under the column's heading."""
@@ -297,7 +338,7 @@ class _SheetReader:
         told = self.told_marks.get(index) or self.decimal
         if told is not None:
             return told
-        texts = {cell for cell in self.cells(index) if isinstance(cell, str)}
+        texts = self._texts(index)
         own = decimal_convention(texts) if texts else None
         if own is not None:
             self.own_marks.setdefault(index, own)
@@ -310,7 +351,7 @@ class _SheetReader:
         texts: set[str] = set()
         for each in self.match.columns.values():
             if each.column.reads in (Reads.QUANTITY, Reads.NUMBER, Reads.RANGE, Reads.TRIPLET):
-                texts.update(cell for cell in self.cells(each.index) if isinstance(cell, str))
+                texts |= self._texts(each.index)
         return decimal_convention(texts)
 
     # --- what the columns say -----------------------------------------------------------------------------------------
@@ -387,10 +428,13 @@ class _SheetReader:
         cells = self.cells(match.index)
         different = dict.fromkeys(cells)
         profile = profile_of(self.plant, [cell for cell in different if isinstance(cell, str)])
+        looks = self._formats.get(match.index, {}) if not match.parts else {}
         known = {cell: TagCell() if cell is None else read_tag_cell(cell, profile) for cell in different}
         last = TagCell(blank="ditto without a row above")
         for position, cell in enumerate(cells):
             found = known[cell]
+            if position in looks and cell is not None and not isinstance(cell, str):
+                found = read_tag_cell(cell, profile, number_format=looks[position])
             if found.ditto:
                 found = last
             elif found.tags:
@@ -697,17 +741,35 @@ class _SheetReader:
             blank = (None,) * len(targets)
             parts = {key: each.value or blank for key, each in known.items()}
             found = [list(each) for each in zip(*(parts[key] for key in keys), strict=True)] or [[] for _ in targets]
+        self._say_other_units(match, keys, known)
         if any(each.value is None and each is not NOTHING for each in known.values()):
             self._quantities_without_value(name, match, column, keys, known, found)
         return found
+
+    def _say_other_units(self, match: ColumnMatch, keys: Sequence[_Key], known: Mapping[_Key, Outcome]) -> None:
+        """Say where a cell, or the unit column, has another unit than the heading: the nearer one is taken."""
+        if match.unit is None or not (_has_own_unit(known) or any(unit != match.unit for _, unit in known)):
+            return
+        others: dict[Unit, int] = defaultdict(int)
+        for key in keys:
+            value = known[key].value
+            parts = [part for part in (value if isinstance(value, tuple) else (value,)) if isinstance(part, Quantity)]
+            unit = parts[-1].unit if parts else None
+            if unit is not None and unit != match.unit and not _refines(unit, match.unit):
+                others[unit] += 1
+        for unit, count in others.items():
+            self.assumptions.setdefault(
+                f"{match.column.title}: {count} {'cell' if count == 1 else 'cells'} in {unit}, not in the {match.unit} "
+                f"of the heading: what stands nearer is taken"
+            )
 
     def _quantities_without_value(
         self,
         name: str,
         match: ColumnMatch,
         column: Column,
-        keys: Sequence[tuple[Value, UnitCell]],
-        known: Mapping[tuple[Value, UnitCell], Outcome],
+        keys: Sequence[_Key],
+        known: Mapping[_Key, Outcome],
         found: list[list[Any]],
     ) -> None:
         targets = column.into or (name,)
@@ -803,7 +865,14 @@ class _SheetReader:
                     units = self._units_for(dataclasses.replace(match, column=column), base)
                     self._store(target, self._quantities(target, match, column, units)[0])
                 self._place_too(target, match.index)
-        self._set_aside(match, cells, [cell is None or known[cell] is not None for cell in cells])
+        # Figures of which nobody says which setting they are: there are more readings than one.
+        asked = {cell for cell, text in texts.items() if known[cell] is None and is_settings_text(text)}
+        for position, cell in enumerate(cells):
+            if cell in asked:
+                pieces = tuple(piece.strip() for piece in re.split(r"[/|;\n]", texts[cell]) if piece.strip())
+                unsaid = trouble(f"'{texts[cell]}' does not say which settings it holds", pieces[:4])
+                self._trouble(position, match.index, match.field, texts[cell], unsaid, match.column.into)
+        self._set_aside(match, cells, [cell is None or known[cell] is not None or cell in asked for cell in cells])
 
     def _take_set_cells(self) -> None:
         """Read "Set 12 barg" in a column of ranges as what it is: a set point."""
@@ -823,6 +892,21 @@ class _SheetReader:
         self._columns[match.index] = [
             None if each is not None else cell for cell, each in zip(cells, said, strict=True)
         ]
+
+    def _take_signals_of_ranges(self) -> None:
+        """Take the signal that a range states (4-20 mA = 0-250 m3/h) for the row's, where it has no other."""
+        match = self.match.columns.get("range")
+        if match is None or "signal" not in self.record_fields:
+            return
+        cells = self.cells(match.index)
+        told = {cell for cell in cells if isinstance(cell, str) and _OF_A_SIGNAL.search(cell)}
+        signals: dict[Value, str | None] = {}
+        for cell in told:
+            pair = read_range(" ".join(str(cell).split()), decimal=self._sheet_convention)
+            signals[cell] = None if isinstance(pair, CellTrouble) else pair.signal
+        if any(signals.values()):
+            self._store("signal", [signals.get(cell) if isinstance(cell, str) else None for cell in cells])
+            self._place_too("signal", match.index)
 
     # --- the rest of a row --------------------------------------------------------------------------------------------
 
@@ -948,9 +1032,46 @@ class _SheetReader:
                 for remark, tag in zip(self.values.get("remarks") or nothing, self.tags, strict=True)
             ]
             self.places.setdefault("remarks", self.places.get("tag", ()))
+        for row, column in sorted(self.rows.struck_cells):
+            for name in self._fields_of(column):
+                self.blanks[self.at[row]].setdefault(name, "struck out")
+        self._add_comments()
         if "place" in self.record_fields and any(self.rows.places):
             stated = self.values.get("place") or nothing
             self.values["place"] = [one or two for one, two in zip(stated, self.rows.places, strict=True)]
+
+    def _fields_of(self, column: int) -> tuple[str, ...]:
+        """Return the fields that a column is read into."""
+        found = [
+            match.column.into or (name,)
+            for name, match in self.match.columns.items()
+            if column in (match.index, *(index for index, _ in match.parts))
+        ]
+        return tuple(name for names in found for name in names if name in self.known or name in self.record_fields)
+
+    def _add_comments(self) -> None:
+        """Add what people noted at a row's cells to its remarks; what they noted elsewhere is a note of the sheet."""
+        self.comments: list[tuple[int, str]] = []
+        said: dict[int, list[str]] = defaultdict(list)
+        for (row, column), text in sorted(self.sheet.comments.items()):
+            one_line = " ".join(_OWN_COMMENT.split(text, maxsplit=1)[0].split())[:LONGEST_COMMENT]
+            position = self.at.get(row)
+            if not one_line:
+                continue
+            if position is not None and "remarks" in self.record_fields:
+                said[position].append(one_line)
+            else:
+                self.comments.append((row + 1, f"comment at {self._address(row, column)}: {one_line}"))
+        if said:
+            before = self.values.get("remarks") or [None] * self.count
+            self.values["remarks"] = [
+                "; ".join(filter(None, (remark, *said.get(position, ())))) or None
+                for position, remark in enumerate(before)
+            ]
+            self.places.setdefault("remarks", self.places.get("tag", ()))
+
+    def _address(self, row: int, column: int) -> str:
+        return cell_address(column, row) if self.sheet.turned else cell_address(row, column)
 
     # --- records ------------------------------------------------------------------------------------------------------
 
@@ -964,7 +1085,8 @@ class _SheetReader:
             records=tuple(self._records()),
             problems=problems,
             sections=tuple((number + 1, text) for number, text in self.rows.sections),
-            notes=tuple((number + 1, text) for number, text in (*sheet.titles, *self.rows.notes)),
+            notes=tuple((number + 1, text) for number, text in (*sheet.titles, *self.rows.notes))
+            + tuple(self.comments),
             assumptions=tuple(self.assumptions),
             cells_filled=sheet.cells_filled,
             cells_read=read - (unread - elsewhere),
@@ -1083,6 +1205,15 @@ def _copies(fields: Mapping[str, Any], tags: Sequence[str]) -> Iterator[dict[str
         if blanks:
             copy["blanks"] = MappingProxyType(blanks)
         yield copy
+
+
+def _has_own_unit(known: Mapping[_Key, Outcome]) -> bool:
+    return any(isinstance(cell, str) for cell, _ in known)
+
+
+def _refines(unit: Unit, stated: Unit) -> bool:
+    """Whether a unit is the stated one, and only says besides what it is measured from: barg for bar."""
+    return unit.referred_to("unstated") == stated if stated.reference == "unstated" and unit.reference else False
 
 
 def _is_bare(cell: Value) -> bool:

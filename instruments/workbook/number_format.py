@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import datetime
 import functools
+import math
 import re
 from collections.abc import Mapping
 from types import MappingProxyType
@@ -11,7 +12,7 @@ from typing import Final, Literal
 
 from instruments.workbook.sheet import Value
 
-Kind = Literal["date", "percent", "padded", "worded"]
+Kind = Literal["date", "percent", "padded", "worded", "scientific"]
 
 # ECMA-376-1 18.8.30: what a format number means where the file gives no code of its own. Only those whose
 # numbers look otherwise than they are; the days of 27 to 36 and 50 to 58 differ by language (from memory).
@@ -19,6 +20,7 @@ BUILT_IN: Final[Mapping[int, str]] = MappingProxyType(
     {
         9: "0%",
         10: "0.00%",
+        11: "0.00E+00",
         14: "mm-dd-yy",
         15: "d-mmm-yy",
         16: "d-mmm",
@@ -31,6 +33,7 @@ BUILT_IN: Final[Mapping[int, str]] = MappingProxyType(
         45: "mm:ss",
         46: "[h]:mm:ss",
         47: "mmss.0",
+        48: "##0.0E+0",
     }
     | dict.fromkeys((*range(27, 32), 36, *range(50, 55), 57, 58), "yyyy-mm-dd")
     | dict.fromkeys((32, 33, 34, 35, 55, 56), "h:mm")
@@ -65,8 +68,8 @@ def format_kind(code: str) -> Kind | None:
 
     `padded` fills with zeros, `worded` has letters or digits beside the number.
 
-    >>> [format_kind(code) for code in ("d-mmm", "[h]:mm", "0.0%", "0000", '0.0" barg"', "#,##0.00")]
-    ['date', 'date', 'percent', 'padded', 'worded', None]
+    >>> [format_kind(code) for code in ("d-mmm", "[h]:mm", "0.0%", "0000", '0.0" barg"', "#,##0.00", "0.00E+00")]
+    ['date', 'date', 'percent', 'padded', 'worded', None, 'scientific']
     """
     pieces = _pieces(code)
     signs = "".join(text for kind, text in pieces if kind == "sign")
@@ -79,6 +82,8 @@ def format_kind(code: str) -> Kind | None:
         return "date"
     if "%" in signs:
         return "percent"
+    if re.search(r"[0#?][eE][-+]", signs):
+        return "scientific"
     whole = re.split(r"[.Ee/]", signs, maxsplit=1)[0]
     if whole.count("0") >= 2:
         return "padded"
@@ -120,6 +125,41 @@ def as_text(cell: Value, number_format: str | None = None) -> str:
     if kind in ("padded", "worded") and number_format:
         return _laid_out(cell, number_format)
     return _plain(cell)
+
+
+def as_typed(cell: Value, number_format: str | None = None) -> tuple[str, ...]:
+    """Return what may have been typed where a spreadsheet made a date, or a number with an exponent, of a text.
+
+    Parameters
+    ----------
+    cell
+        A date, or a number.
+    number_format
+        The format code of the cell: by it the spreadsheet shows which it took the text for.
+
+    >>> as_typed(datetime.datetime(2024, 2, 1), "d-mmm"), as_typed(2e-101)
+    (('1-FEB', '02-01', '01-02'), ('2E-101',))
+    >>> as_typed(datetime.datetime(2024, 2, 1), "mmm-yy"), as_typed(300000.0, "0.00E+00")
+    (('FEB-24', '02-01', '01-02'), ('3E5', '300000'))
+    """
+    if isinstance(cell, datetime.date):
+        month = _MONTHS[cell.month - 1]
+        code = (number_format or "").lower()
+        first = f"{month}-{cell:%y}" if cell.day == 1 and "d" not in code and "mmm" in code else f"{cell.day}-{month}"
+        return tuple(dict.fromkeys((first, f"{cell:%m-%d}", f"{cell:%d-%m}")))
+    if not isinstance(cell, float) or not cell or not math.isfinite(cell):
+        return ()
+    figures, _, exponent = f"{cell:.14e}".partition("e")
+    figures = figures.rstrip("0").rstrip(".")
+    places = int(exponent)
+    if "." in figures:
+        places -= len(figures.partition(".")[2])
+        figures = figures.replace(".", "")
+    whole = (_plain(cell),) if 0 <= places <= 12 else ()
+    return (f"{figures}E{places}", *whole)
+
+
+_MONTHS: Final = ("JAN", "FEB", "MAR", "APR", "MAY", "JUN", "JUL", "AUG", "SEP", "OCT", "NOV", "DEC")
 
 
 def _plain(number: float) -> str:

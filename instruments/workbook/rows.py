@@ -38,7 +38,9 @@ class RowsOfSheet:
     headings
         Heading rows, the repeated ones among them.
     struck
-        Rows of `data` that are struck out.
+        Rows of `data` that are struck out: their tag is, or half of their cells.
+    struck_cells
+        Cells of other rows of `data` that are struck out whole, with nothing beside: row and column.
     instead
         What stands in a cell, where that is not what the sheet's rows hold: merged cells, and cells of
         which a part is struck out.
@@ -52,6 +54,7 @@ class RowsOfSheet:
     notes: tuple[tuple[int, str], ...]
     headings: tuple[int, ...]
     struck: frozenset[int]
+    struck_cells: frozenset[tuple[int, int]]
     instead: Mapping[int, Mapping[int, Value]]
     merged: int = 0
 
@@ -352,14 +355,23 @@ class _Sorter:
     def result(self) -> RowsOfSheet:
         rows = set(self.data)
         counts = Counter(row for row, _ in self.sheet.struck if row in rows)
-        struck = frozenset(row for row, count in counts.items() if count * 2 >= self._filled(row))
+        struck = {row for row, count in counts.items() if count * 2 >= self._filled(row)}
+        struck |= {row for row in counts if (row, self.key) in self.sheet.struck}
+        struck_cells = {
+            (row, column)
+            for row, column in self.sheet.struck
+            if row in rows and row not in struck and column in self.mapped
+        }
+        for row, column in struck_cells:
+            self.instead.setdefault(row, {})[column] = None
         return RowsOfSheet(
             data=tuple(self.data),
             places=tuple(self.places),
             sections=tuple(self.sections),
             notes=tuple(sorted(self.notes)),
             headings=tuple(sorted(self.headings)),
-            struck=struck,
+            struck=frozenset(struck),
+            struck_cells=frozenset(struck_cells),
             instead=self.instead,
             merged=sum(
                 self.sheet.at(row, column) is None

@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Sequence
 from dataclasses import dataclass
+from typing import Final
 
 from instruments.number import CellTrouble
 from instruments.plant_data import PlantData
@@ -19,7 +20,7 @@ from instruments.tag import (
     tags_of_cell,
 )
 from instruments.workbook.cell import trouble
-from instruments.workbook.number_format import as_text
+from instruments.workbook.number_format import as_text, as_typed, format_kind
 from instruments.workbook.sheet import Value
 from instruments.workbook.words import is_ditto, not_live, placeholder
 
@@ -64,8 +65,69 @@ def profile_of(plant: PlantData, texts: Sequence[str]) -> TagProfile:
     return stated or (best_profile(texts) if texts else DEFAULT)
 
 
-def read_tag_cell(cell: Value, profile: TagProfile) -> TagCell:
+# A month as a spreadsheet writes it into a text file, with a day or a year, and dates all in figures.
+_MONTH: Final = (
+    r"(?:jan(?:uary|uar|v)?|feb(?:ruary|ruar|r)?|mar(?:ch|s)?|m[äa]rz?|m[äa]r|apr(?:il)?|avr(?:il)?|ma[yi]|june?|juni?|"
+    r"july?|juli?|juil|aug(?:ust)?|ao[uû]t|sept?(?:ember)?|o[ck]t(?:ober)?|nov(?:ember)?|de[cz](?:ember)?|d[ée]c)"
+)
+_DATE: Final = re.compile(
+    rf"(?P<day>\d{{1,2}})(?:\.\s?|[-/ ])(?P<month>{_MONTH})\.?(?:[-/ ](?:\d\d|\d{{4}}))?"
+    rf"|(?P<first>{_MONTH})\.?[-/ ](?P<tail>\d{{1,2}}|\d{{4}})"
+    r"|\d{4}[-./]\d{1,2}[-./]\d{1,2}|\d{1,2}[./]\d{1,2}[./](?:\d\d|\d{4})",
+    re.IGNORECASE,
+)
+_EXPONENT: Final = re.compile(r"(?P<figures>\d[.,]\d{1,14}|\d)E\+(?P<places>\d{1,3})", re.IGNORECASE)
+_MADE_A_DATE: Final = "the spreadsheet made a date or time of it"
+_MADE_A_NUMBER: Final = "the spreadsheet made a number of it"
+
+
+def _made_of_it(text: str, profile: TagProfile) -> CellTrouble | None:
+    """Return the trouble with a text that a spreadsheet wrote for a date or a number that it took a tag for."""
+    found = _EXPONENT.fullmatch(text)
+    if found is not None:
+        return trouble(_MADE_A_NUMBER, as_typed(float(text.replace(",", "."))))
+    found = _DATE.fullmatch(text)
+    if found is None:
+        return None
+    # DEC-12 in capitals may be a density element; a spreadsheet writes Dec-12.
+    if text == text.upper() and profile.parts(text) is not None:
+        return None
+    word = found["month"] or found["first"]
+    if word is None:
+        return trouble(_MADE_A_DATE)
+    month = word.upper()[:3]
+    other = found["day"] or found["tail"]
+    shown = f"{int(other)}-{month}" if found["day"] else f"{month}-{other}"
+    number = _MONTH_NUMBERS.get(month)
+    if number is None or len(other) > 2:
+        return trouble(_MADE_A_DATE, (shown,))
+    return trouble(_MADE_A_DATE, (shown, f"{number:02}-{int(other):02}", f"{int(other):02}-{number:02}"))
+
+
+_MONTH_NUMBERS: Final = {
+    name: number
+    for number, names in enumerate(
+        (
+            ("JAN",), ("FEB",), ("MAR", "MÄR"), ("APR", "AVR"), ("MAY", "MAI"), ("JUN",), ("JUL",),
+            ("AUG", "AOU", "AOÛ"), ("SEP",), ("OCT", "OKT"), ("NOV",), ("DEC", "DEZ", "DÉC"),
+        ),
+        1,
+    )
+    for name in names
+}  # fmt: skip
+
+
+def read_tag_cell(cell: Value, profile: TagProfile, *, number_format: str | None = None) -> TagCell:
     """Read a cell of a tag column.
+
+    Parameters
+    ----------
+    cell
+        The cell.
+    profile
+        How the sheet's tags are written.
+    number_format
+        The format code of a number or date that looks otherwise than it is.
 
     >>> found = read_tag_cell("PT-1001A/B (Note 3)", DEFAULT)
     >>> found.tags, found.letters, found.note
@@ -73,15 +135,20 @@ def read_tag_cell(cell: Value, profile: TagProfile) -> TagCell:
     >>> read_tag_cell("PT-102 DELETED", DEFAULT).status, read_tag_cell(1001.0, DEFAULT).tags
     ('deleted', ('1001',))
     """
-    text = as_text(cell).strip()
     if cell is not None and not isinstance(cell, str | float):
-        # 05-12 became the fifth of December, or the twelfth of May.
-        readings = (text[5:10], f"{text[8:10]}-{text[5:7]}") if re.match(r"\d{4}-\d\d-\d\d", text) else ()
-        return TagCell(trouble=trouble("the spreadsheet made a date or time of it", readings))
+        return TagCell(trouble=trouble(_MADE_A_DATE, as_typed(cell, number_format)))
+    if isinstance(cell, float):
+        scientific = number_format is not None and format_kind(number_format) == "scientific"
+        if scientific or not 1e-4 < abs(cell) < 1e15:
+            return TagCell(trouble=trouble(_MADE_A_NUMBER, as_typed(cell, number_format)))
+    text = as_text(cell).strip()
     plain = text.isascii() and text.isupper() and " " not in text and "/" not in text
     parts = profile.parts(text) if plain else None
     if parts is not None:
         return TagCell(tags=(text,), letters=parts[1])
+    made = _made_of_it(text, profile) if text[:1].isdigit() or text[-1:].isdigit() else None
+    if made is not None:
+        return TagCell(trouble=made)
     status = not_live(text)
     if status and not any(sign.isdigit() for sign in text):
         return TagCell(status=status, blank=status, note=text)

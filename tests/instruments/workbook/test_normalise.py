@@ -344,8 +344,8 @@ def test_a_date_in_a_column_of_tags_or_numbers_is_a_problem() -> None:
     made.rows[2][1] = datetime.date(2024, 3, 1)
     found = read(made)
     assert [(each.cell.address, each.reason, each.readings) for each in found.problems] == [
-        ("A2", "the spreadsheet made a date or time of it", ("12-05", "05-12")),
-        ("B3", "the spreadsheet made a date or time of it", ()),
+        ("A2", "the spreadsheet made a date or time of it", ("5-DEC", "12-05", "05-12")),
+        ("B3", "the spreadsheet made a date or time of it", ("03-01", "01-03")),
     ]
     assert all_said(found) == [
         {"setting_h": "8 bar", "unread": ["tag"]},
@@ -408,7 +408,10 @@ def test_a_column_may_hold_pressure_and_temperature() -> None:
         {"design_pressure": "20 barg", "design_temperature": "90 °C"},
         {"design_pressure": "16 barg", "design_temperature": "120 °C"},
         {},
-        {"design_pressure": "25 barg", "design_temperature": "25 °C"},
+        {},
+    ]
+    assert [(each.cell.address, each.reason) for each in found.problems] == [
+        ("B5", "'25' holds 1 value where 2 are wanted")
     ]
 
 
@@ -445,7 +448,7 @@ SETTINGS_IN_ONE_CELL = [
     ("TRIP @ 9.5", {"trip": "9.5 barg"}),
     ("Hi-Hi: 9", {"setting_hh": "9 barg"}),
     ("see cause & effect", {"other": (("Alarm settings", "see cause & effect"),)}),
-    ("H 8 H 9", {"other": (("Alarm settings", "H 8 H 9"),)}),
+    ("H per cause & effect", {"other": (("Alarm settings", "H per cause & effect"),)}),
 ]
 
 
@@ -455,6 +458,17 @@ def test_a_cell_may_name_several_settings(text: str, wanted: dict[str, Any]) -> 
     names = ("setting_ll", "setting_l", "setting_h", "setting_hh", "trip", "other")
     assert all_said(found, *names)[0] == wanted
     assert found.problems == ()
+
+
+@pytest.mark.parametrize("text", ["H 8 H 9", "12/10 barg", "9"])
+def test_figures_of_which_nobody_says_which_setting_they_are_are_a_problem(text: str) -> None:
+    found = read(
+        f"Tag|Range|Alarm settings\nPT-1|0-10 barg|{text}\nPT-2|0-10 barg|H=8\nPT-3|0-10 barg|H=8", numbers=False
+    )
+    assert [(each.cell.address, each.reason) for each in found.problems] == [
+        ("C2", f"'{text}' does not say which settings it holds")
+    ]
+    assert {"setting_h", "setting_hh", "trip"} <= found.records[0].unread
 
 
 def test_a_set_point_in_a_column_of_ranges_is_a_set_point() -> None:

@@ -19,7 +19,7 @@ from instruments.workbook.number_format import BUILT_IN, as_text, format_kind
         ("#,##0", None),
         ("#,##0.00_);[Red](#,##0.00)", None),
         ("@", None),
-        ("0.00E+00", None),
+        ("0.00E+00", "scientific"),
         ("# ?/?", None),
         ("[Red]0;[Magenta]-0", None),
         ("[>100]0;0.0", None),
@@ -63,7 +63,7 @@ def test_kind_of_a_format_code(code: str, kind: str | None) -> None:
 def test_every_built_in_code_shows_numbers_otherwise() -> None:
     assert {number: format_kind(code) for number, code in BUILT_IN.items()} == dict.fromkeys(
         (*range(14, 23), *range(27, 37), 45, 46, 47, *range(50, 59)), "date"
-    ) | {9: "percent", 10: "percent"}
+    ) | {9: "percent", 10: "percent", 11: "scientific", 48: "scientific"}
 
 
 @pytest.mark.parametrize(
