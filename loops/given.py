@@ -362,7 +362,9 @@ def _to_the_end(cables: tuple[Cable, ...], box: str | None, plant: Plant) -> tup
             if item and ends[_key(item)] == 1 and is_box(item, box, plant)
         ]
         if not open_ends:
-            return tuple(run)
+            # Where others say where they go and one does not, it may go on from a box.
+            blank = any(each.from_item and not each.to_item for each in run)
+            return None if blank and plant.once("cables say where they go", _say_where_they_go) else tuple(run)
         here = [each for each in at.get(_key(open_ends[0]), ()) if each not in run]
         # A schedule goes from the field to the system; one that goes the other way says what leads to the box.
         onward = [each for each in here if _key(each.from_item) == _key(open_ends[0])] or [
@@ -373,6 +375,10 @@ def _to_the_end(cables: tuple[Cable, ...], box: str | None, plant: Plant) -> tup
             return None
         run.append(onward[0])
     return None
+
+
+def _say_where_they_go(plant: Plant) -> bool:
+    return any(cable.to_item for cable in plant.cables.values())
 
 
 def _by_end(plant: Plant) -> dict[str, list[Cable]]:

@@ -230,6 +230,15 @@ def test_a_junction_box_is_known_by_its_row_in_the_index() -> None:
     assert told(circuit({"cable": "C-1"}, cables=cables).cable_length_m) == (50.0, "cables")
 
 
+def test_a_cable_that_does_not_say_where_it_goes_has_no_known_run() -> None:
+    """It may go on from a box: the length of the run is not its own."""
+    lost = {"number": "C-1", "from": "PT-1", "length": 50, "type": "P15"}
+    other = cable("C-2", "PT-2", "MAR", 50)
+    assert told(circuit({"cable": "C-1"}, cables=[lost, other]).cable_length_m) is None
+    # A schedule that never says where cables go gives whole runs.
+    assert told(circuit({"cable": "C-1"}, cables=[lost]).cable_length_m) == (50.0, "cables")
+
+
 def test_the_terminations_name_a_circuits_cables() -> None:
     cables = [cable("C-1", "PT-1", "JB-1", 50), cable("MC-1", "JB-1", "MAR", 100), cable("MC-2", "JB-1", "MAR", 300)]
     wired = [
