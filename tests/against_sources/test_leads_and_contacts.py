@@ -45,7 +45,7 @@ def by_the_package(letter: str, hot_c: float, head_c: float, cabinet_c: float, c
     if cable is not None:
         wire = thermocouple_its90.get(cable)
         mv += wire.emf(head_c) - wire.emf(cabinet_c)
-    low, high = hot_c - 200.0, hot_c + 200.0
+    low, high = 0.0, element.range[1]
     for _ in range(80):
         middle = 0.5 * (low + high)
         low, high = (middle, high) if element.emf(middle) < mv else (low, middle)
