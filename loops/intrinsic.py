@@ -276,7 +276,7 @@ def _intrinsic(circuit: Circuit, plant: Plant) -> Intrinsic:
         items=items,
         sources=sources,
         source_missing=missing,
-        ruling=_ruling(items) if because else Ruling(),
+        ruling=_ruling(items) if because or any(item.relies for item in items) else Ruling(),
     )
 
 
@@ -743,6 +743,9 @@ def entity_with(of: Intrinsic, source: ExSource, plant: Plant, *, length_m: floa
     taken = source_for(source, ruling.group)
     comparison = compare(taken, apparatus, cable, group=group)
     kindest = compare(taken, apparatus, tuple(map(_kindest, cable)), group=group) if _is_unsure(cable) else comparison
+    ratios = [each.uh_per_ohm for each in cable if "uh_per_ohm" in each.assumed and each.uh_per_ohm is not None]
+    if ratios and any(line.by_ratio for line in comparison.of("inductance")):
+        assumed = (*assumed, f"cable {number(ratios[0])} uH/ohm ({_defaults(of, plant).basis})")
     harder = None
     if ruling.group and ruling.harder and ruling.harder != ruling.group and not ruling.letters <= source.letters:
         harder = compare(source_for(source, ruling.harder), apparatus, cable, group=ruling.harder)
