@@ -24,10 +24,10 @@ _LETTERS: Final = 56
 """Letters in a line of the box, of Tahoma 9."""
 _MOST_LINES: Final = 32
 
-_IDMAP: Final = re.compile(rb"""<o:idmap\b[^<>]*?\bdata\s*=\s*["']([0-9, ]*)["']""")
+_IDMAP: Final = re.compile(rb"""<o:idmap\b[^<>]{0,500}?\bdata\s*=\s*["']([0-9, ]*)["']""")
 _SHAPE_NUMBER: Final = re.compile(rb"""_x0000_[si]([0-9]{1,9})\b""")
 _CLIENT: Final = re.compile(
-    rb"""<x:ClientData\b[^<>]*\bObjectType\s*=\s*["']Note["'][^<>]*>([^<]*+(?:<(?!/?x:ClientData)[^<]*+)*+)</x:ClientData>"""
+    rb"""<x:ClientData\b[^<>]{0,200}?\bObjectType\s{0,9}=\s{0,9}["']Note["'][^<>]{0,200}>([^<]*+(?:<(?!/?x:ClientData)[^<]*+)*+)</x:ClientData>"""
 )
 _ROW: Final = re.compile(rb"<x:Row>\s*([0-9]{1,7})\s*</x:Row>")
 _COLUMN: Final = re.compile(rb"<x:Column>\s*([0-9]{1,5})\s*</x:Column>")

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Final, NamedTuple
 
-from instruments.workbook.annotate.splice import Edit, Element, elements, spliced, text_in_xml
+from instruments.workbook.annotate.splice import Edit, Element, closing, elements, spliced, text_in_xml
 from instruments.workbook.plain import BrokenXml
 from instruments.workbook.sheet import cell_address, cell_position
 
@@ -59,7 +59,7 @@ class Comments:
     def __init__(self, data: bytes | None, *, author: str, strict: bool = False) -> None:
         self._author = author
         self._data = data if data is not None else _empty(_STRICT if strict else _MAIN)
-        self._root = elements(self._data)
+        self._root = elements(self._data, deepest=2)
         listed = self._root.first("commentList")
         if self._root.name != "comments" or listed is None:
             raise BrokenXml("is no part of comments")
@@ -81,8 +81,22 @@ class Comments:
     def length(self, place: Place) -> int:
         """Return how many bytes the text of somebody else's comment takes that stands there; else 0."""
         comment = self.standing.get(place)
-        text = comment.first("text") if comment else None
-        return text.close - text.inside if text and place not in self.own else 0
+        text = self._text_of(comment) if comment is not None and place not in self.own else None
+        return text.close - text.inside if text else 0
+
+    def _text_of(self, comment: Element) -> Element | None:
+        """Return the text of a comment, where it stands in the part.
+
+        A part can have a hundred thousand comments: each is looked into when it is its turn.
+        """
+        if comment.closes_itself:
+            return None
+        head = self._data[self._root.start : self._root.inside]
+        whole = head + self._data[comment.start : comment.end] + closing(head)
+        text = elements(whole).children[0].first("text")
+        if text is not None:
+            text.moved(comment.start - len(head))
+        return text
 
     def _author_of(self, place: Place) -> bytes:
         number = self.standing[place].attributes.get("authorId", "")
@@ -122,7 +136,7 @@ class Comments:
                 )
             elif place in self.own:
                 made = b"<%btext>%b</%btext>" % (prefix, _runs(texts[place], prefix), prefix)
-                holder = comment.first("text")
+                holder = self._text_of(comment)
                 edits.append(Edit(holder.start, holder.end, made) if holder else comment.appended(self._data, made))
             else:
                 edits += self._beneath(comment, texts[place])
@@ -148,7 +162,7 @@ class Comments:
     def _beneath(self, comment: Element, text: Text) -> list[Edit]:
         prefix = self._root.prefix
         runs = _runs((Passage("\n\n"), Passage(f"{self._author}:\n", bold=True), *text), prefix)
-        holder = comment.first("text")
+        holder = self._text_of(comment)
         if holder is None:
             return [comment.appended(self._data, b"<%btext>%b</%btext>" % (prefix, runs, prefix))]
         if holder.closes_itself:
@@ -168,14 +182,17 @@ class Comments:
 
     def _added_before(self, comment: Element) -> int | None:
         """Return where in somebody else's comment begins what an earlier copy added; None where it has nothing."""
-        holder = comment.first("text")
+        headed = _HEADED % text_in_xml(self._author)
+        if headed not in self._data[comment.start : comment.end]:
+            return None
+        holder = self._text_of(comment)
         previous: Element | None = None
         for run in holder.children if holder else ():
             text = run.first("t") if run.name == "r" else None
             if text is None:
                 continue
             said = self._data[text.inside : text.close]
-            if said == _HEADED % text_in_xml(self._author):
+            if said == headed:
                 return run.start if previous is None else previous.start
             previous = run if not said.strip() else None
         return None

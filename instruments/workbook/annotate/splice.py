@@ -18,6 +18,9 @@ from instruments.workbook.sheet_look import Edit
 
 __all__ = ["Edit", "Element", "elements", "in_utf8", "spliced", "text_in_xml", "with_attribute"]
 
+MOST_ELEMENTS: Final = 300_000
+"""Elements of a part that are told; a workbook has at most 64,000 formats, and a sheet few comments."""
+
 _MAIN: Final = frozenset(
     {
         "http://schemas.openxmlformats.org/spreadsheetml/2006/main",
@@ -25,6 +28,7 @@ _MAIN: Final = frozenset(
     }
 )
 _ATTRIBUTE: Final = re.compile(rb"""\s+([^\s=>"']+)\s*=\s*("[^"]*"|'[^']*')""")
+_NAME: Final = re.compile(rb"<[^\s/>]+")
 _TAG: Final = re.compile(rb"""<([^\s/>]+)((?:\s+[^\s=>"']+\s*=\s*(?:"[^"]*"|'[^']*'))*+)\s*(/?)>""")
 _DECLARATION: Final = re.compile(r"\A\ufeff?<\?xml[^>]{0,300}\?>")
 _NO_XML: Final = re.compile("[\x00-\x08\x0b\x0c\x0e-\x1f\ud800-\udfff\ufffe\uffff]")
@@ -62,6 +66,14 @@ class Element:
     def first(self, name: str) -> Element | None:
         """Return the first child of this name."""
         return next((child for child in self.children if child.name == name), None)
+
+    def moved(self, by: int) -> None:
+        """Move it and all in it, where it was read out of its part."""
+        self.start, self.inside, self.close, self.end = (
+            at + by for at in (self.start, self.inside, self.close, self.end)
+        )
+        for child in self.children:
+            child.moved(by)
 
     def appended(self, data: bytes, text: bytes) -> Edit:
         """Return the edit that puts `text` behind the last child."""
@@ -105,8 +117,10 @@ def elements(data: bytes, *, deepest: int = MAX_DEPTH, leaving_out: Sequence[str
     Raises
     ------
     BrokenXml
-        It is not well-formed, has a DOCTYPE, or is nested deeper than any part is.
+        It is not well-formed, has a DOCTYPE, is nested deeper than any part is, or has more than
+        `MOST_ELEMENTS` elements.
     """
+    count = 0
     found: list[Element] = []
     path: list[Element] = []
     depth = 0
@@ -114,12 +128,15 @@ def elements(data: bytes, *, deepest: int = MAX_DEPTH, leaving_out: Sequence[str
     parser = expat.ParserCreate("utf-8", " ")
 
     def start(name: str, attributes: dict[str, str]) -> None:
-        nonlocal depth
+        nonlocal depth, count
         depth += 1
         if depth > MAX_DEPTH:
             raise BrokenXml("is nested too deeply")
         if depth - 1 > deepest or (left_out and depth - 1 > left_out[0]):
             return
+        count += 1
+        if count > MOST_ELEMENTS:
+            raise BrokenXml(f"has more than {MOST_ELEMENTS:,} elements")
         at = parser.CurrentByteIndex
         tag = _TAG.match(data, at)
         if tag is None:
@@ -227,9 +244,12 @@ def with_attribute(tag: bytes, name: bytes, value: bytes) -> bytes:
     >>> with_attribute(b'<c r="B7" s="4"/>', b"s", b"12"), with_attribute(b"<c r='B7'>", b"s", b"12")
     (b'<c r="B7" s="12"/>', b'<c r=\\'B7\\' s="12">')
     """
-    for found in _ATTRIBUTE.finditer(tag):
+    named = _NAME.match(tag)
+    at = named.end() if named else len(tag)
+    while found := _ATTRIBUTE.match(tag, at):
         if found[1] == name:
             return tag[: found.start(2)] + b'"' + value + b'"' + tag[found.end(2) :]
+        at = found.end()
     end = len(tag) - (2 if tag.endswith(b"/>") else 1)
     return tag[:end].rstrip() + b" " + name + b'="' + value + b'"' + tag[end:]
 

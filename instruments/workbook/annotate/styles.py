@@ -61,7 +61,9 @@ class Styles:
 
     def __init__(self, data: bytes) -> None:
         self._data = data
-        self._root = elements(data, deepest=4)
+        self._root = elements(
+            data, deepest=3, leaving_out=("dxfs", "cellStyles", "cellStyleXfs", "borders", "fill", "xf")
+        )
         if self._root.name != "styleSheet":
             raise BrokenXml("is no part of styles")
         formats = self._root.first("cellXfs")
