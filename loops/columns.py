@@ -31,6 +31,12 @@ LOOPS = SheetKind(
         ("number", "card"),
         ("number", "cable_length_m"),
         ("number", "range_resistor_ohm"),
+        ("number", "supply_max_v"),
+        ("number", "circuit", "barrier"),
+        ("number", "circuit", "hart"),
+        ("number", "circuit", "intrinsically_safe"),
+        ("number", "circuit", "parent_loop"),
+        ("number", "circuit", "drawing"),
     ),
     record=LoopRow,
     columns=(

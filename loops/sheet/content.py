@@ -28,6 +28,7 @@ from loops.plant import Plant
 from loops.power import VoltageBudget
 from loops.sheet.check_record import Set, ToTry, things_to_try
 from loops.sheet.check_table import LIVE_ZERO, CheckTable, check_table, signal_of
+from loops.sheet.entity_table import EntityTable, SystemDocument, entity_table, system_document
 from loops.sheet.pack import LoopOnPaper, area_title, filed_under
 from loops.sheet.path import Path, path_of, terminations_of
 from loops.sheet.span_scale import SpanScale
@@ -156,6 +157,8 @@ class CircuitContent:
     power: Power | None = None
     check: CheckTable | None = None
     tries: tuple[ToTry, ...] = ()
+    entity: EntityTable | None = None
+    system: SystemDocument | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -231,6 +234,8 @@ def _assumed(
         for text in circuit.power.assumed if circuit.power else ():
             made[text][circuit.device] = None
         for text in circuit.check.assumed if circuit.check else ():
+            made[text][circuit.device] = None
+        for text in circuit.entity.assumed if circuit.entity else ():
             made[text][circuit.device] = None
     for line in settings:
         for value in line.values:
@@ -508,18 +513,21 @@ def _circuit(
     service = circuit.device.record.service
     if circuit.signal_row.service and circuit.signal_row is not circuit.device.record:
         service = circuit.signal_row.service
+    path = path_of(circuit, plant, members=members)
     return CircuitContent(
         name=circuit.name,
         kind=circuit.kind,
         device=circuit.device.name,
         service=service if service != shown_above else None,
         fields=tuple(_fields(circuit)),
-        path=path_of(circuit, plant, members=members),
+        path=path,
         classification=_classification(circuit.device),
         conductors=_conductors(circuit, plant),
         power=power_of(circuit, plant),
         check=check_table(circuit, plant),
         tries=things_to_try(circuit, _set_on(circuit.device, settings), members),
+        entity=entity_table(circuit, plant),
+        system=system_document(circuit, plant, path),
     )
 
 

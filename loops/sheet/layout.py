@@ -24,6 +24,7 @@ from loops.sheet.content import (
     SheetContent,
 )
 from loops.sheet.drawing import bands_of
+from loops.sheet.entity_table import EntityTable, SystemDocument
 from loops.sheet.flow import (
     BODY,
     GAP_MM,
@@ -308,6 +309,21 @@ _TRIES: Final = (
     Column("as\nexpected", 14.0, "centre"),
 )
 _GRID: Final = (Column("", WIDTH / 6.0),) * 6
+_ENTITY: Final = (
+    Column("Compared", 40.0),
+    Column("Device", 34.0),
+    Column("Found", 34.0, "right"),
+    Column("Allowed", 34.0, "right"),
+    Column("Outcome", 43.0),
+)
+_SYSTEM_PARTS: Final = (
+    Column("Part", 30.0),
+    Column("What it is", 32.0),
+    Column("Marking: group, temperature class, ambient, EPL", 70.0),
+    Column("Certificate", 43.0),
+    Column("Level", 10.0, "centre"),
+)
+_SYSTEM_ITEMS: Final = (Column("", 40.0), Column("", WIDTH - 40.0))
 _TITLES: Final = {
     "devices": ("Devices", _DEVICES),
     "settings": ("Settings: value, percent of span, current", _SETTINGS),
@@ -654,6 +670,42 @@ def _tries(tries: Iterable[ToTry], tight: bool) -> SetTable:
     return _named("tries", rows, tight=tight)
 
 
+def _entity(entity: EntityTable, tight: bool) -> SetTable:
+    rows = [
+        (
+            cell(each.what),
+            cell(each.device or NOT_APPLICABLE),
+            cell(each.found),
+            cell(each.allowed),
+            cell(each.outcome, BODY if each.outcome.startswith("holds") else STRONG),
+        )
+        for each in entity.lines
+    ]
+    foot = [Para(f"{text}.", SMALL) for text in entity.workings]
+    if entity.missing:
+        foot.append(Para(f"Not worked for want of: {', '.join(entity.missing)}.", SMALL))
+    title = f"Entity comparison: {entity.source}"
+    return set_table(Table(title=title, columns=_ENTITY, rows=rows, row_mm=4.3, tight=tight, foot=tuple(foot)))
+
+
+def _system(system: SystemDocument, name: str, flow: Flow, tight: bool) -> None:
+    """Set what the standard asks of the document of an Ex i system, and what of it is missing."""
+    parts = [
+        (cell(each.name, STRONG), cell(each.role), cell(each.marking), cell(each.certificate), cell(each.level))
+        for each in system.parts
+    ]
+    title = f"Descriptive system document: {name}"
+    flow.add(set_table(Table(title=title, columns=_SYSTEM_PARTS, rows=parts, row_mm=4.3, tight=tight)))
+    rows = [(cell(label, LABEL), cell(text)) for label, text in system.items]
+    if system.missing:
+        state = f"not complete, missing: {', '.join(system.missing)}"
+    else:
+        state = "no item is blank; whether the document is complete is for a competent person to say"
+    rows.append((cell("State", LABEL), cell(state, STRONG)))
+    title = "Items of IEC 60079-25:2020 clause 4"
+    flow.add(set_table(Table(title=title, columns=_SYSTEM_ITEMS, rows=rows, shared=True, row_mm=4.3, tight=tight)))
+
+
 def _scales(lines: Iterable[SettingLine], flow: Flow) -> None:
     drawn = [draw_scale(line.scale, left=LEFT, width=WIDTH) for line in lines if line.scale is not None]
     if not drawn:
@@ -688,6 +740,10 @@ def _circuit(circuit: CircuitContent, flow: Flow, tight: bool) -> None:
             flow.add(_check(circuit.check, WIDTH, tight))
     elif power is not None:
         flow.add(power)
+    if circuit.entity is not None:
+        flow.add(_entity(circuit.entity, tight))
+    if circuit.system is not None:
+        _system(circuit.system, circuit.name, flow, tight)
 
 
 def _notes(content: SheetContent) -> tuple[str, ...]:

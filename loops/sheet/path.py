@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from enum import StrEnum
 from typing import Final, NamedTuple
 
@@ -303,6 +303,7 @@ def _listed_path(
     place = {key: number for number, key in enumerate(order)}
     wires: list[list[Wire | None]] = [[None] * len(chains) for _ in order[1:]]
     firsts: list[Termination | None] = [None] * len(wires)
+    screens: list[str | None] = [None] * len(wires)
     for lane, chain in enumerate(chains):
         for hop in chain:
             start, end = place.get(hop.start.station), place.get(hop.end.station)
@@ -312,6 +313,7 @@ def _listed_path(
             onward = end == start + 1
             if onward:
                 firsts[start] = firsts[start] or row
+                screens[start] = screens[start] or row.screen_earthed_at
             elif start >= len(wires):
                 continue
             elsewhere = name_key(hop.end.item) != name_key(hop.start.item)
@@ -327,8 +329,11 @@ def _listed_path(
             )
     stations = [_listed_station(number, key, longest, circuit, plant) for number, key in enumerate(order)]
     stretches = [
-        _listed_stretch(tuple(lanes), first, plant, internal=order[number][0] == order[number + 1][0])
-        for number, (lanes, first) in enumerate(zip(wires, firsts, strict=True))
+        replace(
+            _listed_stretch(tuple(lanes), first, plant, internal=order[number][0] == order[number + 1][0]),
+            screen_earthed_at=screen,
+        )
+        for number, (lanes, first, screen) in enumerate(zip(wires, firsts, screens, strict=True))
     ]
     return _in_zones(stations), stretches
 
@@ -400,7 +405,6 @@ def _listed_stretch(
         cable_type=cable.type if cable is not None else None,
         pair=row.pair if row is not None else None,
         length_m=cable.length_m if cable is not None else None,
-        screen_earthed_at=row.screen_earthed_at if row is not None else None,
         internal=internal,
     )
 

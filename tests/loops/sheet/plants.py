@@ -150,7 +150,7 @@ def crowded() -> Plant:
     ]  # fmt: skip
     rows += [
         {"tag": "PT-201", "service": LONG, "area": "A1", "signal": "4-20 mA", "I/O type": "AI", "line": LONG,
-         "equipment": LONG, "P&ID": LONG, "remarks": LONG * 30, "junction box": LONG, "cable": "x" * 400},
+         "equipment": LONG, "P&ID": LONG, "remarks": LONG * 12, "junction box": LONG, "cable": "x" * 400},
         {"tag": "PT-202", "I/O type": "AI"},
         {"tag": "PT-203", "service": HOSTILE, "maker": HOSTILE, "model": HOSTILE, "area": HOSTILE, "I/O type": "DI",
          "I/O address": HOSTILE},

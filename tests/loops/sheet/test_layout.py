@@ -83,8 +83,8 @@ def test_no_word_of_a_long_text_is_lost() -> None:
                 columns[round(shape.box.left, 2), round(shape.box.right, 2)].append(shape.text)
     long = " ".join(LONG.split())
     counts = sorted(" ".join(lines).count(long) for lines in columns.values() if long in " ".join(lines))
-    # Once the junction box; thirty times the remarks, and service, plant, P&ID, line, equipment, drawing in full.
-    assert counts == [1, 30 + 6]
+    # Once the junction box; twelve times the remarks, and service, plant, P&ID, line, equipment, drawing in full.
+    assert counts == [1, 12 + 6]
     assert max("".join(lines).count("x" * 400) for lines in columns.values()) == 1
     assert len(pages) > 1
 

@@ -49,4 +49,5 @@ def test_every_finding_about_a_drawn_instrument_stands_on_a_sheet(plant: Plant, 
     path = tmp_path / "loop-sheets.pdf"
     assert write_sheets(plant, path, notes=notes) == len(sheets.drawn) > 100
     reader = pypdf.PdfReader(path, strict=True)
-    assert len(reader.pages) < 1.5 * len(sheets.drawn)
+    # Front and back: drawing and figures, then what is tried and signed.
+    assert len(reader.pages) < 2.1 * len(sheets.drawn)

@@ -121,6 +121,12 @@ def test_the_termination_list_gives_the_path(rows: list[Row]) -> None:
     assert found.boundary == 1
 
 
+def test_the_screen_is_earthed_where_any_of_its_rows_says() -> None:
+    rows = [{**each, **({"screen earthed at": "MAR-1"} if each.get("core") == "S" else {})} for each in LISTED]
+    earthed = [stretch.screen_earthed_at for stretch in path([DEVICE], terminations=rows).stretches]
+    assert earthed == ["MAR-1", "MAR-1", None, None]
+
+
 def test_a_list_that_ends_at_the_card_needs_no_more_stations() -> None:
     rows = [
         row("PT-1 +", "JB-1 X1:1"),
