@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections import OrderedDict, defaultdict
-from collections.abc import Callable, Iterable, Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from types import MappingProxyType
 from typing import Any, Final
@@ -84,41 +84,50 @@ class Cuts:
 
     def around(self, finding: Finding, fix: Fix) -> Part:
         """Return the part of the plant that a finding and a fix of it can touch."""
-        members: dict[int, Installed] = {}
-        for each in self._touched(finding, fix):
-            members[id(each)] = each
-        texts = frozenset(name_key(text) for text in (*fix.change.values(), fix.subject))
-        named = texts & self._names_of_entries()
+        members = {id(each): each for each in self._touched(finding.subject, fix)}
+        named = self._entries_named_in((fix,))
         key = (frozenset(members), named)
         part = self._kept.get(key)
         if part is None:
             if len(self._kept) >= MOST_KEPT:
                 self._kept.popitem(last=False)
-            part = self._kept[key] = Part(self._part(list(members.values()), named, fix.subject))
+            part = self._kept[key] = Part(self._part(list(members.values()), named, (fix.subject,)))
         return part
+
+    def touched(self, changes: Iterable[Fix]) -> list[Installed]:
+        """Return the instruments that changes can touch, each change of the row that its subject names."""
+        return list({id(each): each for fix in changes for each in self._touched(fix.subject, fix)}.values())
+
+    def around_all(self, members: list[Installed], changes: Sequence[Fix]) -> Plant:
+        """Return the part of the plant that changes made together can touch; `members` as `touched` gives them."""
+        return self._part(members, self._entries_named_in(changes), [fix.subject for fix in changes])
+
+    def _entries_named_in(self, changes: Iterable[Fix]) -> frozenset[str]:
+        texts = frozenset(name_key(text) for fix in changes for text in (*fix.change.values(), fix.subject))
+        return texts & self._names_of_entries()
 
     # ------------------------------------------------------------------------------------------- who is touched
 
-    def _touched(self, finding: Finding, fix: Fix) -> Iterator[Installed]:
-        for each in self._meant(finding, fix):
+    def _touched(self, subject: str, fix: Fix) -> Iterator[Installed]:
+        for each in self._meant(subject, fix):
             yield from self._beside(each)
             if "tag" in fix.change and each.tag is not None:
                 yield from self._by_number[_number_key(each.tag)]
-        for name in (finding.subject, fix.subject):
+        for name in (subject, fix.subject):
             yield from self._by_loop.get(loop_key(name), ())
         if "tag" in fix.change:
             yield from self._beside_tag(fix.change["tag"])
         if "loop" in fix.change:
             yield from self._by_loop.get(loop_key(fix.change["loop"]), ())
 
-    def _meant(self, finding: Finding, fix: Fix) -> Iterator[Installed]:
-        """Give the instruments that a finding and a fix name: by tag, by circuit, by an entry that they use."""
-        for name in dict.fromkeys([finding.subject, *finding.subject.split(", "), fix.subject]):
+    def _meant(self, subject: str, fix: Fix) -> Iterator[Installed]:
+        """Give the instruments that a subject and a fix name: by tag, by circuit, by an entry that they use."""
+        for name in dict.fromkeys([subject, *subject.split(", "), fix.subject]):
             yield from self._by_name.get(bare_name(name), ())
             if name in self._devices:
                 yield self._devices[name]
         if fix.sheet in _CATALOGUES or fix.sheet == "Cables":
-            yield from self._users(fix.sheet, fix.subject or finding.subject)
+            yield from self._users(fix.sheet, fix.subject or subject)
 
     def _beside(self, each: Installed) -> Iterator[Installed]:
         """Give an instrument and all that a rule may see together with it."""
@@ -175,9 +184,10 @@ class Cuts:
 
     # ------------------------------------------------------------------------------------------------- the part
 
-    def _part(self, members: list[Installed], named: frozenset[str], subject: str) -> Plant:
+    def _part(self, members: list[Installed], named: frozenset[str], subjects: Iterable[str]) -> Plant:
         records: dict[str, tuple[Any, ...]] = dict(self._plant.lists.records)
-        called = {key for each in members for key in _both_keys(each.record.tag, each.loop)} | {*_both_keys(subject)}
+        called = {key for each in members for key in _both_keys(each.record.tag, each.loop)}
+        called.update(_both_keys(*subjects))
         loops = records["Loops"] = self._picked("Loops", called, lambda row: _both_keys(row.number, row.circuit))
         wired = records["Terminations"] = self._picked("Terminations", called, lambda row: _both_keys(row.circuit))
         for name in ("IO list", "Alarm and trip list"):

@@ -22,7 +22,7 @@ from validation.cut import Cuts, row_key
 from validation.finding import Finding, Fix, Outcome
 from validation.rule import Registry
 
-_KINDS: Mapping[str, SheetKind] = {kind.name: kind for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS)}
+SHEET_KINDS: Mapping[str, SheetKind] = {kind.name: kind for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS)}
 _NAMES = {"Device types": "code", "Areas": "code", "Cables": "number", "Cable types": "code"}
 
 
@@ -43,19 +43,19 @@ def mended(plant: Plant, finding: Finding, fix: Fix) -> Lists:
     CannotStand
         A field cannot hold its new value, or no row is the fix's subject.
     """
-    kind = _KINDS[fix.sheet]
+    kind = SHEET_KINDS[fix.sheet]
     records = dict(plant.lists.records)
     name = fix.sheet
     if name == "Instruments" and name not in records:
         name = "IO list"
     rows = records.get(name, ())
     subject = fix.subject or finding.subject
-    meant = _meant(plant, subject, rows, fix.sheet)
+    meant = rows_meant(plant, subject, rows, fix.sheet)
     if not meant:
         raise CannotStand(f"no row of {fix.sheet} is {subject}")
-    records[name] = tuple(_changed(row, kind, fix.change) if id(row) in meant else row for row in rows)
+    records[name] = tuple(changed_row(row, kind, fix.change) if id(row) in meant else row for row in rows)
     changed = [row for row in rows if id(row) in meant]
-    filled = {cell for row in changed for field in _fields(kind, fix.change) for cell in row.cells(field)}
+    filled = {cell for row in changed for field in fields_of(kind, fix.change) for cell in row.cells(field)}
     return replace(
         plant.lists,
         records=MappingProxyType(records),
@@ -63,13 +63,14 @@ def mended(plant: Plant, finding: Finding, fix: Fix) -> Lists:
     )
 
 
-def _fields(kind: SheetKind, titles: Iterable[str]) -> list[str]:
+def fields_of(kind: SheetKind, titles: Iterable[str]) -> list[str]:
+    """Return the fields of a sheet's columns, by their titles."""
     wanted = {title.casefold() for title in titles}
     return [column.field for column in kind.columns if column.title.casefold() in wanted]
 
 
-def _meant(plant: Plant, subject: str, rows: Iterable[Any], sheet: str) -> frozenset[int]:
-    """Return the rows that a subject's name means."""
+def rows_meant(plant: Plant, subject: str, rows: Iterable[Any], sheet: str) -> frozenset[int]:
+    """Return the rows of a sheet that a subject's name means, by their ids."""
     if sheet == "Instruments":
         origins = {
             row_key(row)
@@ -94,7 +95,14 @@ def _by_name(plant: Plant) -> dict[str, list[Installed]]:
     return named
 
 
-def _changed(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Record:
+def changed_row(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Record:
+    """Return a row with new texts in some of its columns, by their titles.
+
+    Raises
+    ------
+    CannotStand
+        The sheet has no such column, or the column cannot hold its text.
+    """
     values: dict[str, Any] = {}
     own: dict[str, Any] = {}
     by_title = {column.title.casefold(): column for column in kind.columns}
