@@ -15,6 +15,7 @@ from reportlab.pdfgen.canvas import Canvas
 
 from loops.plant import Plant
 from loops.sheet import font
+from loops.sheet.choice import Choice, chosen
 from loops.sheet.content import sheet_content, source_of
 from loops.sheet.index import TITLE, entries_of, lay_index, outline_of
 from loops.sheet.layout import INDEX, PAGE_HEIGHT, PAGE_WIDTH, sheet_pages
@@ -22,6 +23,8 @@ from loops.sheet.pack import sheets_of
 from loops.sheet.shapes import BLACK, Box, Circle, Line, Link, Page, Shape, Style, Text, Use, group
 
 __all__ = ["write_sheets"]
+
+EVERY: Final = Choice()
 
 _POINTS: Final = 72.0 / 25.4
 _SIZE: Final = (PAGE_WIDTH * _POINTS, PAGE_HEIGHT * _POINTS)
@@ -42,8 +45,9 @@ def write_sheets(
     *,
     notes: Mapping[str, Sequence[str]] | None = None,
     on_sheet: Callable[[int, int], None] | None = None,
+    choice: Choice = EVERY,
 ) -> int:
-    """Write the sheets of all loops that have an electrical signal; the same bytes for the same plant.
+    """Write the sheets of the loops that have an electrical signal; the same bytes for the same plant and choice.
 
     Parameters
     ----------
@@ -55,6 +59,8 @@ def write_sheets(
         Open findings in plain words, by the loop's name; None where the plant was not audited.
     on_sheet
         Called after each sheet with its number and their count.
+    choice
+        Which sheets are wanted.
 
     Returns
     -------
@@ -65,12 +71,15 @@ def write_sheets(
     ------
     OSError
         The file cannot be written.
+    NothingChosen
+        No loop has what the choice names.
     """
-    sheets = sheets_of(plant)
+    sheets = chosen(sheets_of(plant), choice, plant)
     entries = entries_of(sheets, notes)
     source = source_of(plant)
     with path.open("wb") as file:
-        drawing = _Drawing(file, title=f"{TITLE} - {plant.data.name}" if plant.data.name else TITLE)
+        title = " - ".join(text for text in (TITLE, plant.data.name, str(choice)) if text)
+        drawing = _Drawing(file, title=title)
         blank: list[None] = []
         lay_index(plant, sheets, entries, source, emit=lambda page: blank.append(None))
         drawing.reserve(INDEX, len(blank))

@@ -19,8 +19,16 @@ from instruments.workbook.lists import NoTags
 from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
+from loops.sheet.choice import Choice, NothingChosen
 
 NAME = "loop-sheets.pdf"
+_CHOICES = {
+    "area": "only the loops of this area; may be given more than once, as the other choices",
+    "unit": "only those of this process unit",
+    "system": "only those wired to this system: control, safety, fire and gas, package",
+    "box": "only those through this junction box",
+    "tag": "only the loop of this tag, or of this number",
+}
 FINISHED, UNREADABLE = 0, 2
 
 
@@ -41,6 +49,9 @@ class Command(BaseCommand):
         parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
         parser.add_argument("--mapping", metavar="mapping.toml", help="how an audit read these lists, mended")
 
+        for option, words in _CHOICES.items():
+            parser.add_argument(f"--{option}", action="append", default=[], metavar=option.upper(), help=words)
+
     def handle(self, *args: Any, **options: Any) -> None:
         """Run and leave with the exit status."""
         sys.exit(self.run(options))
@@ -49,6 +60,13 @@ class Command(BaseCommand):
         """Return the exit status."""
         from loops.sheet.pdf import write_sheets
 
+        choice = Choice(
+            areas=tuple(options["area"]),
+            units=tuple(options["unit"]),
+            systems=tuple(options["system"]),
+            boxes=tuple(options["box"]),
+            tags=tuple(options["tag"]),
+        )
         try:
             lists = read_lists(
                 [Path(name) for name in options["lists"]],
@@ -58,8 +76,8 @@ class Command(BaseCommand):
             )
             plant = assemble(lists)
             path = Path(options["to"]) / NAME
-            count = _whole(path, lambda part: write_sheets(plant, part, on_sheet=self._progress()))
-        except (UnreadableFile, NoTags) as error:
+            count = _whole(path, lambda part: write_sheets(plant, part, on_sheet=self._progress(), choice=choice))
+        except (UnreadableFile, NoTags, NothingChosen) as error:
             return self._cannot(str(error))
         except OSError as error:
             return self._cannot(f"{error.filename or options['to']}: {(error.strerror or str(error)).lower()}")

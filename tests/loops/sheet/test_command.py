@@ -81,3 +81,17 @@ def test_nothing_is_left_where_drawing_fails(listed: Path, tmp_path: Path, monke
     status, _, err = run(str(listed), "--to", str(tmp_path / "out"))
     assert (status, err) == (2, "sheets: part: no space left on device\n")
     assert [each.read_text() for each in (tmp_path / "out").iterdir()] == ["old"]
+
+
+def test_a_pack_of_one_tag(listed: Path, tmp_path: Path) -> None:
+    assert run(str(listed), "--to", str(tmp_path), "--tag", "PT-101")[:2] == (
+        0,
+        f"1 loop drawn, without an audit; written to {tmp_path / 'loop-sheets.pdf'}\n",
+    )
+
+
+def test_a_pack_of_nothing_is_refused_and_leaves_nothing(listed: Path, tmp_path: Path) -> None:
+    status, out, err = run(str(listed), "--to", str(tmp_path / "new"), "--box", "JB-9")
+    assert (status, out) == (2, "")
+    assert err == "sheets: no loop with a sheet has the junction box JB-9\n"
+    assert list((tmp_path / "new").iterdir()) == []
