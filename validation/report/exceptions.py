@@ -9,19 +9,16 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from pathlib import Path, PurePath
 from typing import Any, Final
 
-from instruments.column import SheetKind
-from instruments.columns import INSTRUMENTS
-from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.origin import Cell, column_letters
 from instruments.workbook.lists import SheetReport
 from instruments.workbook.problem import CellProblem
-from loops.columns import SHEETS as LOOP_SHEETS
 from validation.audit import Audit, Coverage
 from validation.finding import Finding, Fix, Outcome, Severity
 from validation.report.book import Book, Column, Look, Page, Shown, Table
 from validation.report.causes import Cause, causes_of, some_of
 from validation.report.caution import CAUTION
 from validation.report.findings_json import counts
+from validation.report.wanted_sheets import wanted_columns, wanted_sheets
 from validation.rule import Registry, Rule, load_rules
 
 __all__ = ["write_exceptions"]
@@ -50,6 +47,7 @@ _MEANING: Final = {
 }
 _COMMONEST: Final = 10
 _MOST_LINES: Final = 200
+_MOST_COLUMNS: Final = 15
 
 
 def write_exceptions(result: Audit, path: Path, *, rules: Registry | None = None) -> None:
@@ -144,7 +142,8 @@ class _Report:
             f"{figures['live']:,} of them live; {_count(figures['loops'], 'loop')}, "
             f"{_count(figures['circuits'], 'circuit')}, from {_count(figures['rows'], 'row')} of "
             f"{_count(figures['sheets'], 'sheet')} in {_count(figures['files'], 'file')}. "
-            f"{_count(figures['cells_read'], 'cell')} read, {figures['cells_unread']:,} unread."
+            f"{_count(figures['cells_filled'], 'cell')} in them: {figures['cells_read']:,} read, "
+            f"{figures['cells_unread']:,} unread, {figures['cells_left_out']:,} on sheets that were not read."
         )
 
     def _figures(self, page: Page) -> None:
@@ -230,40 +229,36 @@ class _Report:
 
     def _absent(self, page: Page) -> None:
         page.section("Sheets that were absent, and what they would let be checked")
-        there = {sheet.kind for sheet in self.lists.sheets if not sheet.skipped}
-        absent = [kind for kind in (*INSTRUMENT_SHEETS, *LOOP_SHEETS) if kind.name not in there]
-        rows: list[Sequence[Shown]] = []
-        missed_by_none: list[str] = []
-        for kind in absent:
-            fields, rules = self._for_want_of(kind)
-            if rules:
-                rows.append((kind.name, fields, rules))
-            else:
-                missed_by_none.append(kind.name)
+        absent = wanted_sheets(self.result)
+        wanted = [each for each in absent if each.checks or each.with_others]
+        missed_by_none = [each.name for each in absent if not each.checks and not each.with_others]
         if missed_by_none:
             page.paragraph(f"Absent, and missed by no rule of this audit: {', '.join(missed_by_none)}.")
-        elif not rows:
+        elif not wanted:
             page.paragraph("None.")
-        if not rows:
-            return
-        page.table(
-            ("sheet", "unchecked for want of", "rules, with the checks each could not make"),
-            rows,
-            spans=(3, 9, 12),
-        )
-
-    def _for_want_of(self, kind: SheetKind) -> tuple[str, str]:
-        """Return the fields that only such a sheet brings and rules found blank, and those rules."""
-        titles = _titles_of(kind)
-        wanted: Counter[str] = Counter()
-        rules: Counter[str] = Counter()
-        for code, coverage in self.result.coverage.items():
-            for fields, subjects in coverage.unchecked.items():
-                named = {title for field in fields for title in field.split(" or ") if title in titles}
-                wanted.update(dict.fromkeys(named, len(subjects)))
-                if named:
-                    rules[code] += len(subjects)
-        return _with_counts(wanted), ", ".join(f"{code} ({times:,})" for code, times in sorted(rules.items()))
+        if wanted:
+            page.table(
+                ("sheet", "checks it would let be made", "and with other values", "what it brings", "rules"),
+                [
+                    (
+                        f"{each.name}, named in a column '{each.named_in}'" if each.named_in else each.name,
+                        each.count,
+                        sum(each.with_others.values()),
+                        _with_counts(each.fields),
+                        _with_counts(Counter(each.checks) + Counter(each.with_others)),
+                    )
+                    for each in wanted
+                ],
+                spans=(4, 3, 3, 7, 7),
+            )
+        columns = wanted_columns(self.result)
+        if columns:
+            page.section("Columns that the index does not have, and what they would let be checked")
+            page.table(
+                ("columns", "checks they would let be made", "rules"),
+                [(each.name, each.count, _with_counts(each.checks)) for each in columns[:_MOST_COLUMNS]],
+                spans=(11, 3, 10),
+            )
 
     def _skipped(self, page: Page) -> None:
         page.section("What was skipped, and what was noticed in reading")
@@ -613,14 +608,6 @@ def _with_cells(cause: Cause) -> str:
     if cause.count == 1 or not cause.cells:
         return cause.text
     return f"{cause.text}\n({_sheets_and_cells(cause.cells)})"
-
-
-def _titles_of(kind: SheetKind) -> frozenset[str]:
-    """Return the titles, as rules name them, of the fields that no plain column of the index brings."""
-    owner = "area " if kind.name == "Areas" else ""
-    own = {column.title for column in INSTRUMENTS.columns if not column.owner}
-    titles = {f"{owner}{column.title}" for column in kind.columns}
-    return frozenset(titles - own)
 
 
 _TICKS: Final = re.compile(r"``([^`]*)``")

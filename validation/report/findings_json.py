@@ -31,6 +31,7 @@ def counts(audit: Audit) -> dict[str, int]:
         "cells_filled": sum(sheet.cells_filled for sheet in lists.sheets),
         "cells_read": sum(sheet.cells_read for sheet in lists.sheets),
         "cells_unread": sum(sheet.cells_unread for sheet in lists.sheets),
+        "cells_left_out": sum(sheet.cells_filled for sheet in lists.sheets if sheet.skipped),
         **audit.counts(),
         "unchecked": sum(each.count(Outcome.UNCHECKED) for each in audit.coverage.values()),
         "broken": len(audit.broken),

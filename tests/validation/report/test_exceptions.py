@@ -84,12 +84,12 @@ def test_summary(small: Path) -> None:
         [],
         ["What was read"],
         ["file", "sheet", "read as", "rows", "cells filled", "read", "unread"],
-        ["index.xlsx", "Index", "Instruments", 4, 40, 37, 1],
+        ["index.xlsx", "Index", "Instruments", 4, 38, 37, 1],
         ["index.xlsx", "Types", "Device types", 2, 9, 9, 0],
         ["areas.csv", "Zones", "not read: no heading of a known list was found", 0, 6, 0, 0],
         [
             "4 tags on 4 instruments, 3 of them live; 3 loops, 3 circuits, from 6 rows of 3 sheets in 2 files. "
-            "46 cells read, 1 unread."
+            "53 cells in them: 46 read, 1 unread, 6 on sheets that were not read."
         ],
         [],
         ["Findings by severity and family"],
@@ -126,8 +126,8 @@ def test_summary(small: Path) -> None:
             "Absent, and missed by no rule of this audit: IO list, Alarm and trip list, Plant, Loops, Terminations, "
             "Cables, Cable types."
         ],
-        ["sheet", "unchecked for want of", "rules, with the checks each could not make"],
-        ["Areas", "area temperature class (1)", "HAZ05 (1)"],
+        ["sheet", "checks it would let be made", "and with other values", "what it brings", "rules"],
+        ["Areas, named in a column 'area'", 1, 0, "area temperature class (1)", "HAZ05 (1)"],
         [],
         ["What was skipped, and what was noticed in reading"],
         ["file", "sheet", "what"],
@@ -343,7 +343,7 @@ def test_a_sheet_that_would_help_more_rules_is_told_with_each(tmp_path: Path) ->
         },
     )  # fmt: skip
     found = sheets(write(tmp_path, result))["Summary"]
-    assert ["Loops", "HART (3), range resistor (2), supply V min (1)", "RNG02 (4)"] in found
+    assert ["Loops", 4, 0, "HART (3), range resistor (2), supply V min (1)", "RNG02 (4)"] in found
 
 
 def test_files_of_one_name_are_told_apart(tmp_path: Path) -> None:

@@ -28,10 +28,12 @@ from validation.report.annotated import Annotated, Annotations, annotated_names
 from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
+from validation.report.wanted_sheets import wanted_sheets
 
 KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
 MOST_SAID = 20
+MOST_WANTED = 4
 
 
 class Command(BaseCommand):
@@ -149,6 +151,7 @@ class Command(BaseCommand):
         say(
             f"{figures['tags']} tags, {figures['loops']} loops, {figures['circuits']} circuits from "
             f"{figures['rows']} rows; {figures['cells_read']} cells read, {figures['cells_unread']} unread"
+            + (f", {figures['cells_left_out']} on sheets that were not read" if figures["cells_left_out"] else "")
         )
         say(
             f"findings: {figures['danger']} danger, {figures['fault']} fault, {figures['gap']} gap; "
@@ -156,6 +159,8 @@ class Command(BaseCommand):
         )
         for line in self._annotated:
             say(line)
+        for wanted in [each for each in wanted_sheets(result) if each.checks][:MOST_WANTED]:
+            say(f"not checked: {wanted}")
         guessed = [note for sheet in result.plant.lists.sheets for note in _guesses(sheet)]
         for note in guessed[:MOST_SAID]:
             say(f"heading guessed: {note}")
