@@ -21,7 +21,8 @@ NAMED = {"digests": {"exceptions.xlsx": "ab12"}, "version": "0.1", "inputs": {"i
 def test_counts() -> None:
     assert counts(small_audit()) == {
         "tags": 4, "instruments": 4, "live": 3, "rows": 6, "rows_merged": 0, "loops": 3, "circuits": 3, "files": 2,
-        "sheets": 3, "cells_filled": 53, "cells_read": 46, "cells_unread": 1, "cells_left_out": 6, "danger": 1, "fault": 1, "gap": 1,
+        "sheets": 3, "cells_filled": 53, "cells_read": 46, "cells_unread": 1, "cells_left_out": 6,
+        "danger": 1, "fault": 1, "gap": 1,
         "review": 1, "unchecked": 3, "broken": 1,
     }  # fmt: skip
 
