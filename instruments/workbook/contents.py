@@ -11,6 +11,7 @@ from instruments.column import Column, Reads
 from instruments.kind import kind_from_words
 from instruments.workbook.cell import labelled_settings
 from instruments.workbook.heading_words import unit_in
+from instruments.workbook.negligible import is_negligible
 from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.words import Words, folded, is_ditto, placeholder, yes_or_no
@@ -146,6 +147,11 @@ class Contents:
         if reads in (Reads.QUANTITY, Reads.NUMBER, Reads.COUNT):
             if self.part(_TWO_NUMBERS) > 0.5:
                 return 0.2
+            if any(is_negligible(column.field, text) for text in self.texts):
+                good = sum(
+                    is_negligible(column.field, text) or bool(_ONE_NUMBER.fullmatch(text)) for text in self.texts
+                )
+                return good / self.count
             return (
                 max(self.part(_ONE_NUMBER), self.part(_NUMBER_AND_WORDS))
                 if not self.sequence or self.count < 8
