@@ -208,6 +208,8 @@ def _empty(space: str) -> bytes:
 def _runs(text: Text, prefix: bytes) -> bytes:
     made: list[bytes] = []
     for passage in text:
+        if not passage.text:
+            continue
         bold = b"<%bb/>" % prefix if passage.bold else b""
         made.append(
             b'<%br><%brPr>%b<%bsz val="9"/><%bcolor indexed="81"/><%brFont val="Tahoma"/><%bfamily val="2"/></%brPr>'

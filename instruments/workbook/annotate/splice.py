@@ -16,7 +16,7 @@ from xml.parsers import expat
 from instruments.workbook.plain import MAX_DEPTH, BrokenXml, is_utf8
 from instruments.workbook.sheet_look import Edit
 
-__all__ = ["Edit", "Element", "elements", "in_utf8", "spliced", "text_in_xml", "with_attribute"]
+__all__ = ["Edit", "Element", "elements", "in_utf8", "spliced", "text_in_xml", "with_attribute", "with_room"]
 
 MOST_ELEMENTS: Final = 300_000
 """Elements of a part that are told; a workbook has at most 64,000 formats, and a sheet few comments."""
@@ -188,6 +188,18 @@ def elements(data: bytes, *, deepest: int = MAX_DEPTH, leaving_out: Sequence[str
     except (LookupError, ValueError) as error:
         raise BrokenXml(f"cannot be read ({error})") from None
     return found[0]
+
+
+def with_room(data: bytes) -> bytes:
+    """Return a part whose outermost element has an end tag, so that several things can be put into it.
+
+    >>> with_room(b'<styleSheet a="1"/>'), with_room(b"<a><b/></a>")
+    (b'<styleSheet a="1"></styleSheet>', b'<a><b/></a>')
+    """
+    root = elements(data, deepest=0)
+    if not root.closes_itself:
+        return data
+    return b"".join(spliced([data], [root.appended(data, b"")]))
 
 
 def in_utf8(data: bytes) -> bytes:

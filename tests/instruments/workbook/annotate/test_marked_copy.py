@@ -375,13 +375,21 @@ def test_opens_in_another_program(convert: Convert, tmp_path: Path) -> None:
     folder = tmp_path / "before"
     folder.mkdir()
     marked = {}
-    for number, (shape, make) in enumerate((BY_HAND | BY_OPENPYXL).items()):
+    commented = OF_THE_USER.format("C2", "<text><t>Why 16?</t></text>")
+    more = {
+        "beside": lambda: beside(commented),
+        "without boxes": lambda: beside(commented, boxes=None),
+        "thread": lambda: beside(STANDS_FOR_THREAD, threads=THREAD, persons=BRAND),
+    }
+    for number, (shape, make) in enumerate((BY_HAND | more | BY_OPENPYXL).items()):
         path = folder / f"{number}.xlsx"
         path.write_bytes(make())
         marks = BUSY_MARKS if shape in BY_OPENPYXL else {"Sheet1": MARKS}
         marked[path.name] = shape, marks
         write_marked_copy(path, tmp_path / path.name, marks, author="Ferrule")
     for path in LISTS:
+        if path.stem not in ("instrument-list", "water-works", "wasser-ea"):
+            continue  # a second each
         shutil.copy(path, folder)
         marks = {
             sheet.name: {(row, column): mark() for row in range(3, 30, 5) for column in (0, 2)}
