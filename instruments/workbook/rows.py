@@ -324,6 +324,8 @@ class _Sorter:
             and (" " not in text or not _WORDY.search(text))
         ):
             return False
+        if index == self.key and self.has_tags and self._is_lone_tag(text):
+            return False
         if index in self.numeric and len(wordy) == 1 and not re.search(r"[A-Za-z]{3}", text):
             return False
         if not self.has_tags and index == self.key and len(text) <= 40 and len(filled) == 1:
@@ -333,6 +335,11 @@ class _Sorter:
         if column is not None and column.field in ("remarks",) and len(wordy) == 1:
             return False
         return not not_live(text)
+
+    def _is_lone_tag(self, text: str) -> bool:
+        """Whether a word may be a tag for want of anything else: the sheet has no other column."""
+        one_column = not any(index != self.key for index in self.mapped) and not self.match.unknown
+        return one_column and not re.search(r"\s", text.strip()) and _SECTION.fullmatch(folded(text)) is None
 
     def _take_merged_and_struck(self) -> None:
         sheet, first = self.sheet, self.match.first_row

@@ -191,3 +191,35 @@ def test_a_water_works_list_reads_whole() -> None:
     expected = json.loads(path.with_name("water-works.expected.json").read_text(encoding="utf-8"))
     named = {tag.strip() for each in expected["must"] for tag in each["subject"].split(",")}
     assert named <= set(by_tag)
+
+
+@pytest.mark.parametrize(
+    ("rows", "tags"),
+    [
+        ("Tag\nPT-101\nPT-102\nTT-103", ["PT-101", "PT-102", "TT-103"]),
+        ("Instrument list\n\nTag No.\nPT-101\nUNIT 20 - FEED\nTT-103\nEND OF LIST", ["PT-101", "TT-103"]),
+        # Names without a number are tags where nothing else stands in the sheet.
+        ("Tag\nMAINVALVE\nSTOPBUTTON\nHORN", ["MAINVALVE", "STOPBUTTON", "HORN"]),
+        ("Tag\nMAINVALVE\nFilter gallery\nHORN\nSIREN\nLAMP\nUnit 7", ["MAINVALVE", "HORN", "SIREN", "LAMP"]),
+        ("KKS\n10LBA10CP001\n10LBA10CP002", ["10LBA10CP001", "10LBA10CP002"]),
+    ],
+)
+def test_a_list_of_tags_alone(rows: str, tags: list[str]) -> None:
+    found = records_of_sheets([sheet(rows)], KINDS)
+    assert [each.tag for each in found.records["Instruments"]] == tags
+
+
+@pytest.mark.parametrize(
+    "rows",
+    [
+        "Code|mm2\nA1|1.5\nA1|2.5",
+        "Code|Conductor|ohm/km\nA1|1.5|12\nA1|2.5|7",
+        "Code|Conductor size\nA1|1.5 mm2\nA1|2.5 mm2",
+        "Type|Conductor size|Insulation\nA1|1.5 mm2|70\nA1|2.5 mm2|90",
+        "Cable type|AWG\nA1|16\nA1|16",
+    ],
+)
+def test_a_small_list_of_cable_types_with_a_code_twice_is_one(rows: str) -> None:
+    index = sheet("Tag|Cable type\nPT-101|A1\nPT-102|A1")
+    found = records_of_sheets([index, sheet(rows, name="Cable types")], KINDS)
+    assert [(each.kind, each.records) for each in found.sheets] == [("Instruments", 2), ("Cable types", 2)]
