@@ -210,7 +210,8 @@ _FULL_VACUUM = frozenset({"fv", "fullvacuum", "fullvac", "fullv", "vollvakuum", 
 _ATMOSPHERIC = frozenset({"atm", "atmos", "atmosphere", "atmospheric", "atmosphericpressure", "atmpress", "drucklos"})
 _AMBIENT = frozenset({"amb", "ambient", "ambienttemp", "ambienttemperature", "ambtemp", "umgebung"})
 _AND_VACUUM = re.compile(
-    r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?(?:/|&|\+|,|and|to|-(?= )) ?(?=[0-9]))"
+    r"(?:^(?:f\.?v\.?|full vac(?:uum)?) ?"
+    r"(?:/|&|\+|,|and|to|bis|\.{2,4}|…|~|÷|-(?= |[0-9]{1,2}(?![0-9A-Za-z]))) ?(?=[0-9]))"
     r"|(?: ?(?:/|&|\+|,|and) ?(?:f\.?v\.?|full vac(?:uum)?)$)",
     re.IGNORECASE,
 )

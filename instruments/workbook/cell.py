@@ -12,6 +12,7 @@ from instruments.number import CellTrouble, read_number
 from instruments.quantity import Quantity, read_quantity, read_range, read_triplet
 from instruments.unit import Unit, read_unit
 from instruments.workbook.column_unit import read_plain_number
+from instruments.workbook.negligible import is_negligible
 from instruments.workbook.number_format import as_text, as_typed
 from instruments.workbook.sheet import Value
 from instruments.workbook.words import Words, folded, is_ditto, is_plainly_a_value, placeholder, yes_or_no
@@ -114,6 +115,11 @@ _BY_LINES: Final = frozenset(
 )
 # Terminals whose name may be a sign: there a dash is the minus.
 _TERMINALS: Final = frozenset({"from_terminal", "to_terminal"})
+# Contacts that are both, as wired.
+_CHANGEOVER: Final = re.compile(
+    r"(?:[1-4] ?x? ?)?(?:spdt|dpdt|co|c/o|changeover|change-over|change over|wechsler|umschaltkontakt|inverseur)"
+    r"|n\.?/?o\.? ?(?:/|\+|&|,|and|und) ?n\.?/?c\.?|n\.?/?c\.? ?(?:/|\+|&|,|and|und) ?n\.?/?o\.?"
+)
 # Words that are matched generously: another text there says something else and is no mistake.
 _GENEROUS: Final = frozenset({"location", "mounting", "system"})
 
@@ -199,6 +205,8 @@ def word_cell(column: Column) -> Read:
             return Outcome(value=found[0])
         if generous:
             return Outcome(aside=True)
+        if column.field == "contact" and _CHANGEOVER.fullmatch(folded(text)):
+            return Outcome(blank="changeover contact")
         return _in_trouble(f"'{text}' is not one of: {', '.join(words.canonical)}", found or words.canonical[:4])
 
     blank = _unless_blank(column.field, read)
@@ -275,15 +283,6 @@ def _count(text: str) -> Outcome:
     return Outcome(value=int(found[1])) if found else _in_trouble(f"'{text}' is no count")
 
 
-_NEGLIGIBLE: Final = re.compile(
-    r"(?:negl(?:igible|igibly small|igeable)?|vernachl(?:(?:ä|ae)ssigbar(?: klein)?)?|verwaarloosbaar|n[ée]gligeable"
-    r"|trascurabile|despreciable)\.?",
-    re.IGNORECASE,
-)
-# Of a device's certificate: what is negligible counts as nothing.
-_MAY_BE_NEGLIGIBLE: Final = frozenset({"ci_nf", "li_uh"})
-
-
 def number_cell(field: str, unit: str, *, stated: str | None, decimal: str | None) -> Read:
     """Return the reader of a column of bare numbers; parameters as for `read_plain_number`.
 
@@ -292,7 +291,7 @@ def number_cell(field: str, unit: str, *, stated: str | None, decimal: str | Non
     """
 
     def read(cell: Value) -> Outcome:
-        if field in _MAY_BE_NEGLIGIBLE and isinstance(cell, str) and _NEGLIGIBLE.fullmatch(cell.strip()):
+        if isinstance(cell, str) and is_negligible(field, cell):
             return Outcome(value=0.0)
         value = read_plain_number(cell, unit, heading_unit=stated, decimal=decimal)
         return Outcome(trouble=value) if isinstance(value, CellTrouble) else Outcome(value=value)

@@ -78,8 +78,10 @@ _DIGITAL: Final = re.compile(r"d[io]\b|digital|discrete|b[ea]\b|d[ea]\b", re.IGN
 LONGEST_COMMENT: Final = 1000
 """Characters of a comment that are kept with its row."""
 
-# What an annotated copy has in its comments: the code of a rule, by itself or with what it speaks of behind it.
-_OWN_COMMENT: Final = re.compile(r"(?:^|\n)(?:Ferrule:\s{0,3})?[A-Z]{3}[0-9]{2}(?=\n|  |$)")
+# Where what an annotated copy says begins, in a comment of its own or beneath another.
+_OWN_COMMENT: Final = re.compile(r"(?:^|\n)Ferrule:(?=\s)")
+
+_GONE: Final = frozenset({"deleted", "void", "demolished"})
 
 _OF_A_SIGNAL: Final = re.compile(r"\d ?(?:mA|V)\b|psi|bar|kPa")
 # A cell and the unit that its row or heading give it.
@@ -230,6 +232,7 @@ class _SheetReader:
         for _, match in labelled:
             self._read_labelled(match, base)
         self._take_signals_of_ranges()
+        self._take_unconnected()
         self._part_markings()
         self._take_io_type_of_titles()
         self._take_status()
@@ -934,6 +937,21 @@ class _SheetReader:
                 self.unread[position].update((*column.into, name) if column is not None else (name,))
             self.troubles.append((position, index, names[0], text, trouble(reason)))
 
+    def _take_unconnected(self) -> None:
+        """Take NC in a column of terminals for no connection, but where the device has a changeover contact there."""
+        for name, item in (("terminals", ""), ("from_terminal", "from_item"), ("to_terminal", "to_item")):
+            terminals = self.values.get(name)
+            if terminals is None or not any(map(_is_nc, terminals)):
+                continue
+            items = self.values.get(item) or [None] * self.count
+            contacts = {
+                at for at, terminal in zip(items, terminals, strict=True) if terminal and terminal.upper() in _CONTACT
+            }
+            for position, terminal in enumerate(terminals):
+                if _is_nc(terminal) and (not item or items[position] not in contacts):
+                    terminals[position] = None
+                    self.blanks[position][name] = "no connection"
+
     def _part_markings(self) -> None:
         """Take a certificate's number that stands behind the marking for the certificate, where there is no other."""
         markings = self.values.get("ex_marking")
@@ -955,16 +973,20 @@ class _SheetReader:
             return
         nothing = [None] * self.count
         found: list[str | None] = []
-        for number, said, service, equipment, tag in zip(
+        for number, said, service, equipment, remark, tag in zip(
             self.numbers,
             self.values.get("status") or nothing,
             self.values.get("service") or nothing,
             self.values.get("equipment") or nothing,
+            self.values.get("remarks") or nothing,
             self.tags or [TagCell()] * self.count,
             strict=True,
         ):
             word = (not_live(said, status_column=True) if said else None) or tag.status
             word = word or (not_live(service) if service else None) or (not_live(equipment) if equipment else None)
+            # A remark speaks of the row where it says nothing else; a spare or future one may be the line's.
+            gone = not_live(remark) if not word and remark else None
+            word = gone if gone in _GONE else word
             found.append(word or ("deleted" if number in self.rows.struck else said))
         if any(found):
             self.values["status"] = found
@@ -1205,6 +1227,13 @@ def _copies(fields: Mapping[str, Any], tags: Sequence[str]) -> Iterator[dict[str
         if blanks:
             copy["blanks"] = MappingProxyType(blanks)
         yield copy
+
+
+_CONTACT: Final = frozenset({"NO", "N/O", "N.O.", "C", "COM", "COMMON"})
+
+
+def _is_nc(terminal: str | None) -> bool:
+    return terminal is not None and terminal.upper() in ("NC", "N/C", "N.C.", "N.C")
 
 
 def _has_own_unit(known: Mapping[_Key, Outcome]) -> bool:

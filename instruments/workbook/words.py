@@ -144,9 +144,13 @@ def is_ditto(text: str) -> bool:
 _STATUS_WORDS: Final[Mapping[str, str]] = {
     word: status
     for status, words in {
-        "deleted": ("deleted", "removed", "delete", "geloescht", "supprime", "entfallen", "dropped"),
+        "deleted": (
+            "deleted", "removed", "delete", "geloescht", "supprime", "entfallen", "dropped", "entfaellt", "gestrichen",
+            "vervallen", "eliminado", "suprimido", "eliminato", "usuniete", "zurueckgezogen", "withdrawn",
+        ),
         "void": (
             "void", "voided", "cancelled", "canceled", "not used", "unused", "superseded", "annule", "ungueltig",
+            "geannuleerd", "anulado", "annullato", "storniert", "nicht belegt", "nicht verwendet",
         ),
         "spare": ("spare", "reserve", "reserved", "spares", "unassigned"),
         "future": ("future", "for future use", "future use", "zukuenftig", "kuenftig", "futur"),
@@ -156,11 +160,15 @@ _STATUS_WORDS: Final[Mapping[str, str]] = {
 }  # fmt: skip
 _STATUS: Final = "|".join(sorted(map(re.escape, _STATUS_WORDS), key=len, reverse=True))
 _STATUS_STEM: Final = re.compile(
-    "delet|remov|lösch|loesch|suppr|entfall|dropp|void|cancel|used|unus|supers|annul|ungült|ungult|ungueltig|spare|reserv|"
+    "delet|remov|lösch|loesch|suppr|supri|entf[aä]|dropp|void|cancel|used|unus|supers|annul|ungült|ungult|ungueltig|spare|"
+    "reserv|gestrich|vervall|elimin|usuni|zurück|zurueck|withdr|geannul|anulad|storn|nicht (?:bel|verw)|"
     "unassig|futur|künft|kuenft|demol|decom|dismant|demont|stillg|scrap",
     re.IGNORECASE,
 )
-_STATUS_WHOLE: Final = re.compile(rf"\W*({_STATUS})\W*(?:rev\.? ?\w{{1,3}}|row|tag|instrument)?\W*")
+_STATUS_WHOLE: Final = re.compile(
+    rf"\W*({_STATUS})\W*(?:(?:in |at |with |by |per |since |mit |in der )?rev(?:ision)?\.? ?\w{{1,3}}"
+    r"|row|tag|instrument)?\W*"
+)
 _STATUS_AT_HEAD: Final = re.compile(
     r"\W*(deleted|voided|void|not used|cancelled|canceled|demolished|spare|future|removed)\s?[-:;,(/].*", re.DOTALL
 )
