@@ -152,10 +152,10 @@ def temperature_asked(gas: Gas, stated: str | None, *, jurisdiction: str | None)
 
 
 def _of_its_parts(gas: Gas, stated: str, jurisdiction: str | None) -> GasAsks | None:
-    """Return what a mixture's parts ask for, where that is more than is stated; nothing is cleared by them."""
+    """Return what a mixture's parts ask for by the source that counts, where it is more; they clear nothing."""
     for part in map(gas_of, gas.holds):
         asked = temperature_asked(part, stated, jurisdiction=jurisdiction) if part is not None else None
-        if asked is not None and asked.outcome in ("refused", "review"):
+        if asked is not None and asked.outcome == "refused":
             return GasAsks(
                 gas=gas.name,
                 about="temperature_class",
