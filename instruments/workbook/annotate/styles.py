@@ -6,7 +6,7 @@ import re
 from dataclasses import dataclass
 from typing import Final
 
-from instruments.workbook.annotate.splice import Edit, Element, elements, spliced, with_attribute
+from instruments.workbook.annotate.splice import Edit, Element, elements, spliced, with_attribute, with_room
 from instruments.workbook.plain import BrokenXml
 
 __all__ = ["MOST_FORMATS", "NEW_STYLES", "Fill", "Styles"]
@@ -60,7 +60,7 @@ class Styles:
     """
 
     def __init__(self, data: bytes) -> None:
-        self._data = data
+        self._data = data = with_room(data)
         self._root = elements(
             data, deepest=3, leaving_out=("dxfs", "cellStyles", "cellStyleXfs", "borders", "fill", "xf")
         )
