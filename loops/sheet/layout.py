@@ -328,6 +328,7 @@ _TITLES: Final = {
     "devices": ("Devices", _DEVICES),
     "settings": ("Settings: value, percent of span, current", _SETTINGS),
     "conductors": ("Terminations", _CONDUCTORS),
+    "changed": ("Changed", _NOTES),
     "findings": ("Open findings and reviews", _NOTES),
     "assumed": ("Assumed or derived, not given *", _NOTES),
     "remarks": ("Remarks in the list", _NAMED),
@@ -602,7 +603,14 @@ def _places_or_none(value: float | None, places: int) -> str | None:
 # The sheet
 
 
-def sheet_pages(content: SheetContent, *, anchors: tuple[str, ...] = (), first_page: int = 1) -> list[Page]:
+def sheet_pages(
+    content: SheetContent,
+    *,
+    anchors: tuple[str, ...] = (),
+    first_page: int = 1,
+    mark: str = "",
+    changed: str = "",
+) -> list[Page]:
     """Lay a loop's sheet out.
 
     Parameters
@@ -613,23 +621,29 @@ def sheet_pages(content: SheetContent, *, anchors: tuple[str, ...] = (), first_p
         What links and bookmarks call its first page.
     first_page
         Number of its first page in the file.
+    mark
+        Its content mark.
+    changed
+        What of it is not as it was, in words.
     """
-    flow = _fill_pages(content, tight=False)
+    flow = _fill_pages(content, changed, tight=False)
     if len(flow.pages) > 1 and flow.y - NEXT_TOP <= _SPILL_MM:
-        tighter = _fill_pages(content, tight=True)
+        tighter = _fill_pages(content, changed, tight=True)
         if len(tighter.pages) < len(flow.pages):
             flow = tighter
     flow.page.append(Use(SIGN, BOTTOM - SIGN_MM))
-    return _finished(flow, content, anchors, first_page)
+    return _finished(flow, content, anchors, first_page, mark)
 
 
 _SPILL_MM: Final = 45.0
 """What a last page may hold, beside the lines to sign on, for it to be worth trying without it."""
 
 
-def _fill_pages(content: SheetContent, *, tight: bool) -> Flow:
+def _fill_pages(content: SheetContent, changed: str, *, tight: bool) -> Flow:
     """Fill the pages below the title block; the last has room for the lines to sign on."""
     flow = Flow(left=LEFT, width=WIDTH, bottom=BOTTOM, first_top=FIRST_TOP, next_top=NEXT_TOP)
+    if changed:
+        flow.add(_named("changed", [(cell(changed, STRONG),)], row_mm=3.9, tight=tight))
     flow.add(_devices(content.devices, tight))
     if content.settings:
         flow.add(_settings(content.settings, tight))
@@ -764,7 +778,7 @@ def _title_block(content: SheetContent, out: list[Shape]) -> list[tuple[str, str
     return cut
 
 
-def _finished(flow: Flow, content: SheetContent, anchors: tuple[str, ...], first_page: int) -> list[Page]:
+def _finished(flow: Flow, content: SheetContent, anchors: tuple[str, ...], first_page: int, mark: str) -> list[Page]:
     pages: list[Page] = []
     title: list[Shape] = []
     _title_block(content, title)
@@ -780,7 +794,7 @@ def _finished(flow: Flow, content: SheetContent, anchors: tuple[str, ...], first
             _fill(_NEXT["loop"], content.loop, head)
             _fill(_NEXT["service"], content.service, head)
             _fill(_NEXT["number"], f"{number + 1} of {count}", head)
-        foot = page_foot(f"page {first_page + number}", content.source, link=True)
+        foot = page_foot(f"page {first_page + number}", content.source, link=True, mark=mark)
         pages.append(Page((*head, *shapes, Use(FOOT), *foot), anchors if number == 0 else ()))
     return pages
 
@@ -788,8 +802,8 @@ def _finished(flow: Flow, content: SheetContent, anchors: tuple[str, ...], first
 _FOOT_RIGHT: Final = Bounds(RIGHT - 33.0, BOTTOM + 1.2, RIGHT, FOOT_BOTTOM)
 
 
-def page_foot(page: str, source: str, *, link: bool) -> list[Shape]:
-    """Return the right end of a page's foot: the page's number and the way back; and the list it was made from."""
+def page_foot(page: str, source: str, *, link: bool, mark: str = "") -> list[Shape]:
+    """Return the right end of a page's foot: number and way back; the list it was made from; the content mark."""
     shapes: list[Shape] = []
     base = BOTTOM + 1.6 + HEAD.ascent_mm
     box = _FOOT_RIGHT
@@ -799,8 +813,15 @@ def page_foot(page: str, source: str, *, link: bool) -> list[Shape]:
         shapes.append(Text(box.left, base, text, LABEL, box))
         ends = Bounds(box.left, BOTTOM + 1.2, box.left + width_mm(text, LABEL), base + 0.8)
         shapes.append(Link(ends, INDEX))
-    room = WIDTH
-    made_from = shortened(f"Ferrule, from {source}", LABEL, room)[0][0]
     y = BOTTOM + 1.6 + HEAD.pitch_mm + LABEL.pitch_mm + LABEL.ascent_mm
-    shapes.append(Text(LEFT, y, made_from, LABEL, Bounds(LEFT, BOTTOM + 1.2, RIGHT, FOOT_BOTTOM)))
+    room = WIDTH
+    whole = Bounds(LEFT, BOTTOM + 1.2, RIGHT, FOOT_BOTTOM)
+    if mark:
+        text = f"content mark {mark}"
+        room -= width_mm(text, LABEL) + 2.0
+        shapes.append(
+            Text(RIGHT - width_mm(text, LABEL), y, text, LABEL, Bounds(LEFT, BOTTOM + 1.2, RIGHT, FOOT_BOTTOM))
+        )
+    made_from = shortened(f"Ferrule, from {source}", LABEL, room)[0][0]
+    shapes.append(Text(LEFT, y, made_from, LABEL, whole))
     return shapes

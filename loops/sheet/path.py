@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from enum import StrEnum
 from typing import Final, NamedTuple
 
@@ -66,7 +66,7 @@ class Station:
     zone: Zone
     name: str | None
     lines: tuple[str, ...] = ()
-    device: Installed | None = None
+    device: Installed | None = field(default=None, repr=False)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -125,8 +125,8 @@ class Path:
 
     stations: tuple[Station, ...]
     stretches: tuple[Stretch, ...]
-    joined: tuple[Installed, ...] = ()
-    functions: tuple[Installed, ...] = ()
+    joined: tuple[Installed, ...] = field(default=(), repr=False)
+    functions: tuple[Installed, ...] = field(default=(), repr=False)
     supply: str | None = None
     boundary: int | None = None
     from_terminations: bool = False

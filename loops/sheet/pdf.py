@@ -5,9 +5,10 @@ from __future__ import annotations
 import math
 import zlib
 from collections.abc import Callable, Iterable, Mapping, Sequence
+from dataclasses import replace
 from functools import cache
 from pathlib import Path
-from typing import Any, BinaryIO, Final
+from typing import Any, BinaryIO, Final, NamedTuple
 
 from reportlab.pdfbase import pdfdoc, pdfmetrics
 from reportlab.pdfbase.ttfonts import TTFont
@@ -19,7 +20,8 @@ from loops.sheet.choice import Choice, chosen
 from loops.sheet.content import sheet_content, source_of
 from loops.sheet.index import TITLE, entries_of, lay_index, outline_of
 from loops.sheet.layout import INDEX, PAGE_HEIGHT, PAGE_WIDTH, sheet_pages
-from loops.sheet.pack import sheets_of
+from loops.sheet.mark import TYPE, Marks, Parts, change_of, mark_of, packed, parts_of
+from loops.sheet.pack import LoopOnPaper, Sheets, sheets_of
 from loops.sheet.shapes import BLACK, Box, Circle, Line, Link, Page, Shape, Style, Text, Use, group
 
 __all__ = ["write_sheets"]
@@ -46,7 +48,8 @@ def write_sheets(
     notes: Mapping[str, Sequence[str]] | None = None,
     on_sheet: Callable[[int, int], None] | None = None,
     choice: Choice = EVERY,
-) -> int:
+    before: Marks | None = None,
+) -> Drawn:
     """Write the sheets of the loops that have an electrical signal; the same bytes for the same plant and choice.
 
     Parameters
@@ -61,11 +64,8 @@ def write_sheets(
         Called after each sheet with its number and their count.
     choice
         Which sheets are wanted.
-
-    Returns
-    -------
-    int
-        The number of loops that have a sheet.
+    before
+        The marks of an earlier pack: only what is not as it was then is drawn, and says what changed.
 
     Raises
     ------
@@ -75,6 +75,11 @@ def write_sheets(
         No loop has what the choice names.
     """
     sheets = chosen(sheets_of(plant), choice, plant)
+    marks: dict[str, Parts] = {}
+    changes: dict[str, str] = {}
+    if before is not None:
+        sheets, unchanged = _changed(sheets, plant, before, changes)
+        marks.update(unchanged)
     entries = entries_of(sheets, notes)
     source = source_of(plant)
     with path.open("wb") as file:
@@ -88,9 +93,16 @@ def write_sheets(
         for number, (loop, entry) in enumerate(zip(sheets.drawn, entries, strict=True), start=1):
             own = None if notes is None else notes.get(loop.name, ())
             content = sheet_content(loop, plant, notes=own)
+            parts = marks[loop.name] = parts_of(content)
             pages[entry.anchor] = drawing.number
             anchors = (entry.anchor, entry.area_anchor) if entry.area_anchor else (entry.anchor,)
-            for page in sheet_pages(content, anchors=anchors, first_page=drawing.number):
+            for page in sheet_pages(
+                content,
+                anchors=anchors,
+                first_page=drawing.number,
+                mark=mark_of(parts),
+                changed=changes.get(loop.name, ""),
+            ):
                 drawing.page(page)
             if on_sheet is not None:
                 on_sheet(number, total)
@@ -98,8 +110,37 @@ def write_sheets(
         lay_index(plant, sheets, entries, source, emit=drawing.reserved, pages=pages, count=count)
         for level, title, anchor in outline_of(entries):
             drawing.bookmark(level, title, anchor)
+        drawing.keep(marks)
         drawing.save()
-    return total
+    gone = tuple(name for name in before if name not in marks) if before is not None and not choice else ()
+    return Drawn(loops=total, marks=marks, unchanged=len(marks) - total, gone=gone)
+
+
+class Drawn(NamedTuple):
+    """What a pack holds: the number of loops drawn, the marks of all, and what was left out for being as it was.
+
+    `gone` are loops of the earlier pack that have no sheet any more.
+    """
+
+    loops: int
+    marks: Marks
+    unchanged: int = 0
+    gone: tuple[str, ...] = ()
+
+
+def _changed(sheets: Sheets, plant: Plant, before: Marks, changes: dict[str, str]) -> tuple[Sheets, dict[str, Parts]]:
+    """Return the sheets that are not as they were, and the marks of the others; fill in what changed."""
+    drawn: list[LoopOnPaper] = []
+    unchanged: dict[str, Parts] = {}
+    for loop in sheets.drawn:
+        parts = parts_of(sheet_content(loop, plant))
+        change = change_of(parts, before.get(loop.name))
+        if change is None:
+            unchanged[loop.name] = parts
+        else:
+            drawn.append(loop)
+            changes[loop.name] = str(change)
+    return replace(sheets, drawn=tuple(drawn), left_out=()), unchanged
 
 
 class _Document(pdfdoc.PDFDocument):  # type: ignore[misc]
@@ -144,9 +185,9 @@ class _Document(pdfdoc.PDFDocument):  # type: ignore[misc]
         """Write a reserved page that shows `code`; each link is a rectangle and the name of a page."""
         data = zlib.compress(code.encode("ascii"), _COMPRESSION)
         head = f"<< /Length {len(data)} /Filter /FlateDecode >>\nstream\n".encode("ascii")
-        contents = self._write_plain(b"%b%b\nendstream" % (head, data))
+        contents = self.write_plain(b"%b%b\nendstream" % (head, data))
         annotations = [
-            self._write_plain(
+            self.write_plain(
                 (
                     f"<< /Type /Annot /Subtype /Link /Rect [{' '.join(f'{each:.2f}' for each in rectangle)}] "
                     f"/Border [0 0 0] /Dest [{self._number(target)} 0 R /Fit] >>"
@@ -155,7 +196,7 @@ class _Document(pdfdoc.PDFDocument):  # type: ignore[misc]
             for rectangle, target in links
         ]
         annots = f" /Annots [{' '.join(f'{number} 0 R' for number in annotations)}]" if annotations else ""
-        self._write_plain(
+        self.write_plain(
             (
                 f"<< /Type /Page /Parent {self._number(self.Reference(self.Pages).name)} 0 R "
                 f"/MediaBox [0 0 {_SIZE[0]:.3f} {_SIZE[1]:.3f}] /Contents {contents} 0 R "
@@ -168,7 +209,7 @@ class _Document(pdfdoc.PDFDocument):  # type: ignore[misc]
         number: int = self.idToObjectNumberAndVersion[name][0]
         return number
 
-    def _write_plain(self, data: bytes, number: int = 0) -> int:
+    def write_plain(self, data: bytes, number: int = 0) -> int:
         """Write an object in plain words and return its number, a new one where none is given."""
         if not number:
             number = self.objectcounter + 1
@@ -244,6 +285,12 @@ class _Drawing:
     def bookmark(self, level: int, title: str, anchor: str) -> None:
         """Add a line to the bookmarks."""
         self._canvas.addOutlineEntry(font.printable(title), anchor, level=level, closed=level == 0)
+
+    def keep(self, marks: Marks) -> None:
+        """Keep the content marks of the sheets in the file, for a later pack to be compared with."""
+        data = packed(marks)
+        head = f"<< /Type {TYPE} /Length {len(data)} /Filter /FlateDecode >>\nstream\n".encode("ascii")
+        self._document.write_plain(b"%b%b\nendstream" % (head, data))
 
     def save(self) -> None:
         """Finish the file."""

@@ -9,7 +9,7 @@ import time
 from argparse import ArgumentParser
 from collections.abc import Callable
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from django.core.management.base import BaseCommand
 
@@ -20,6 +20,10 @@ from instruments.workbook.reader import UnreadableFile
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from loops.sheet.choice import Choice, NothingChosen
+from loops.sheet.mark import NoMarks, marks_in
+
+if TYPE_CHECKING:
+    from loops.sheet.pdf import Drawn
 
 NAME = "loop-sheets.pdf"
 _CHOICES = {
@@ -49,6 +53,11 @@ class Command(BaseCommand):
         parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
         parser.add_argument("--mapping", metavar="mapping.toml", help="how an audit read these lists, mended")
 
+        parser.add_argument(
+            "--changed-since",
+            metavar="PACK",
+            help="only the sheets whose content is not as it was in this loop-sheets.pdf or findings.json",
+        )
         for option, words in _CHOICES.items():
             parser.add_argument(f"--{option}", action="append", default=[], metavar=option.upper(), help=words)
 
@@ -76,12 +85,20 @@ class Command(BaseCommand):
             )
             plant = assemble(lists)
             path = Path(options["to"]) / NAME
-            count = _whole(path, lambda part: write_sheets(plant, part, on_sheet=self._progress(), choice=choice))
-        except (UnreadableFile, NoTags, NothingChosen) as error:
+            before = marks_in(Path(options["changed_since"])) if options["changed_since"] else None
+            drawn = _whole(
+                path,
+                lambda part: write_sheets(plant, part, on_sheet=self._progress(), choice=choice, before=before),
+            )
+        except (UnreadableFile, NoTags, NothingChosen, NoMarks) as error:
             return self._cannot(str(error))
         except OSError as error:
             return self._cannot(f"{error.filename or options['to']}: {(error.strerror or str(error)).lower()}")
-        self.stdout.write(f"{count} loop{'' if count == 1 else 's'} drawn, without an audit; written to {path}")
+        count = drawn.loops
+        since = f"; {drawn.unchanged} unchanged and left out" if before is not None else ""
+        self.stdout.write(f"{count} loop{'' if count == 1 else 's'} drawn, without an audit{since}; written to {path}")
+        if drawn.gone:
+            self.stdout.write(f"no longer there: {', '.join(drawn.gone[:20])}{' ...' if len(drawn.gone) > 20 else ''}")
         return FINISHED
 
     def _progress(self) -> Callable[[int, int], None] | None:
@@ -109,16 +126,16 @@ class Command(BaseCommand):
         return UNREADABLE
 
 
-def _whole(path: Path, write: Callable[[Path], int]) -> int:
+def _whole(path: Path, write: Callable[[Path], Drawn]) -> Drawn:
     """Let `write` make a file under a passing name and give it its own when it is whole."""
     path.parent.mkdir(parents=True, exist_ok=True)
     handle, text = tempfile.mkstemp(prefix=".ferrule-", suffix=".part", dir=path.parent)
     os.close(handle)
     part = Path(text)
     try:
-        count = write(part)
+        drawn = write(part)
         part.chmod(0o644)
         os.replace(part, path)
     finally:
         part.unlink(missing_ok=True)
-    return count
+    return drawn

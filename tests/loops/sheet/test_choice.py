@@ -67,7 +67,7 @@ def test_what_no_loop_has_is_said(plant: Plant, choice: Choice, said: str) -> No
 
 def test_a_pack_says_what_it_is_of(plant: Plant, tmp_path: Path) -> None:
     path = tmp_path / "pack.pdf"
-    assert write_sheets(plant, path, choice=Choice(boxes=("JB-1",))) == 2
+    assert write_sheets(plant, path, choice=Choice(boxes=("JB-1",))).loops == 2
     reader = pypdf.PdfReader(path, strict=True)
     assert reader.metadata is not None
     assert reader.metadata.title == "Loop sheets - Marrowbeck Works - junction box JB-1"

@@ -95,3 +95,17 @@ def test_a_pack_of_nothing_is_refused_and_leaves_nothing(listed: Path, tmp_path:
     assert (status, out) == (2, "")
     assert err == "sheets: no loop with a sheet has the junction box JB-9\n"
     assert list((tmp_path / "new").iterdir()) == []
+
+
+def test_only_what_changed(listed: Path, tmp_path: Path) -> None:
+    old, new = tmp_path / "old", tmp_path / "new"
+    assert run(str(listed), "--to", str(old))[0] == 0
+    pack = str(old / "loop-sheets.pdf")
+    status, out, _ = run(str(listed), "--to", str(new), "--changed-since", pack)
+    assert (status, out) == (
+        0, f"0 loops drawn, without an audit; 1 unchanged and left out; written to {new / 'loop-sheets.pdf'}\n"
+    )  # fmt: skip
+    status, _, err = run(str(listed), "--to", str(new), "--changed-since", str(listed))
+    assert (status, err) == (
+        2, f"sheets: {listed}: is neither a loop-sheets.pdf nor a findings.json, or is damaged\n"
+    )  # fmt: skip

@@ -47,7 +47,7 @@ def test_every_finding_about_a_drawn_instrument_stands_on_a_sheet(plant: Plant, 
         if finding.subject in drawn:
             assert any(f" {finding.rule} {finding.subject}" in note for note in printed), finding
     path = tmp_path / "loop-sheets.pdf"
-    assert write_sheets(plant, path, notes=notes) == len(sheets.drawn) > 100
+    assert write_sheets(plant, path, notes=notes).loops == len(sheets.drawn) > 100
     reader = pypdf.PdfReader(path, strict=True)
     # Front and back: drawing and figures, then what is tried and signed.
     assert len(reader.pages) < 2.1 * len(sheets.drawn)

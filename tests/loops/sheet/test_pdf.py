@@ -150,7 +150,7 @@ def test_the_same_plant_gives_the_same_bytes(tmp_path: Path) -> None:
 
 def test_progress_and_count(tmp_path: Path) -> None:
     steps: list[tuple[int, int]] = []
-    assert write_sheets(works(), tmp_path / "a.pdf", on_sheet=lambda number, of: steps.append((number, of))) == 6
+    assert write_sheets(works(), tmp_path / "a.pdf", on_sheet=lambda number, of: steps.append((number, of))).loops == 6
     assert steps == [(number, 6) for number in range(1, 7)]
 
 
@@ -194,7 +194,7 @@ def test_more_than_256_characters_of_one_face(tmp_path: Path) -> None:
 def test_a_plant_without_a_signal(tmp_path: Path, rows: list[dict[str, Any]], words: str) -> None:
     plant = example_plant(rows or [{"tag": "PT-1", "status": "void"}])
     path = tmp_path / "a.pdf"
-    assert write_sheets(plant, path) == 0
+    assert write_sheets(plant, path).loops == 0
     reader = pypdf.PdfReader(path, strict=True)
     assert len(reader.pages) == 1
     assert words in plain(reader.pages[0].extract_text())
