@@ -105,14 +105,17 @@ def concerned(change: Change, rows: Sheets) -> frozenset[Place]:
         if key is not None:
             found.update(rows_called(rows, sheet, cells[key][1] if key in cells else row))
     for name in change.about.split(", "):
+        # Where a loop has several circuits, they are called by number and tag.
         for sheet in (INDEX, PACKAGE, "Areas", "Loops"):
             found.update(rows_called(rows, sheet, name))
+            if change.rule.startswith("ELC"):
+                found.update(rows_called(rows, sheet, name.rpartition(" ")[2]))
         # A circuit or a loop is called by its number.
         for number in range(len(rows["Loops"])):
             if cell(rows, ("Loops", number), "Loop No.") == name:
                 found.add(("Loops", number))
         for number in range(len(rows[INDEX])):
-            if cell(rows, (INDEX, number), "Loop No.") == name and change.rule in ("DAT07", "ELC01", "ELC02"):
+            if cell(rows, (INDEX, number), "Loop No.") == name and change.rule.startswith(("DAT07", "ELC")):
                 found.add((INDEX, number))
     for place in tuple(found):
         if place[0] == "Loops":
