@@ -265,7 +265,7 @@ def _intrinsic(circuit: Circuit, plant: Plant) -> Intrinsic:
     else:
         # What hangs on a transmitter is fed by it: it makes no Ex i circuit of the transmitter's.
         fed = [item for item in items if not item.at_transmitter]
-        relying = next((item for item in fed if item.classified and item.how == "intrinsically safe"), None)
+        relying = next((item for item in fed if item.areas != () and item.how == "intrinsically safe"), None)
         if relying is not None:
             because = f"{relying.name} has no protection but {relying.protection}"
     if circuit.intrinsically_safe is False and not any(item.how in ("intrinsically safe", "simple") for item in items):

@@ -38,7 +38,7 @@ def _may_rely_on_energy(circuit: Circuit, plant: Plant) -> bool:
     of = intrinsic(circuit, plant)
     if of.concerns is False:
         return False
-    return of.is_ex_i or any(item.how not in ("other", "pending", "unmarked") for item in of.items if item.classified)
+    return of.is_ex_i or any(item.how not in ("other", "pending", "unmarked") for item in of.items if item.areas != ())
 
 
 @rule(
