@@ -22,6 +22,7 @@ def read_lists(
     *,
     plant_toml: str | os.PathLike[str] | None = None,
     mapping_toml: str | os.PathLike[str] | None = None,
+    thresholds: Callable[[], Sequence[str]] | None = None,
     on_progress: Callable[[str], None] | None = None,
 ) -> Lists:
     """Read a plant's lists.
@@ -36,6 +37,8 @@ def read_lists(
         A file with the plant's data; what it states goes before a Plant sheet.
     mapping_toml
         A file that says how headings are to be understood, as an earlier run wrote it.
+    thresholds
+        Called, where the plant states a threshold, for the names of all that there are; None: any name is taken.
     on_progress
         Called with a line for each file and sheet.
 
@@ -63,6 +66,7 @@ def read_lists(
         stated=entries,
         files=tuple(os.fspath(path) for path in paths),
         mapping=mapping,
+        thresholds=thresholds,
         on_progress=tell,
     )
 

@@ -147,6 +147,7 @@ def records_of_sheets(
     stated: Sequence[PlantEntry] = (),
     files: Sequence[str] = (),
     mapping: ListMapping | None = None,
+    thresholds: Callable[[], Sequence[str]] | None = None,
     on_progress: Callable[[str], None] | None = None,
 ) -> Lists:
     """Understand sheets that are read: their kinds first, then the plant's data, then their rows.
@@ -163,6 +164,8 @@ def records_of_sheets(
         The files' names, for the report.
     mapping
         How earlier lists were understood, and are to be again; None to find out.
+    thresholds
+        Called, where the plant states a threshold, for the names of all that there are; None: any name is taken.
     on_progress
         Called with a line for each sheet.
 
@@ -183,7 +186,7 @@ def records_of_sheets(
     for sheet, match in zip(sheets, matches, strict=True):
         if match is not None and _is_plant(match.kind):
             entries.extend(read_plant_sheet(sheet, match))
-    plant, row, plant_problems = plant_data([*entries, *stated])
+    plant, row, plant_problems = plant_data([*entries, *stated], thresholds=thresholds)
     records: dict[str, list[Any]] = {}
     problems: list[CellProblem] = list(plant_problems)
     assumptions: dict[str, None] = dict.fromkeys(plant.assumptions)

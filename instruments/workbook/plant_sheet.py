@@ -5,7 +5,7 @@ from __future__ import annotations
 import os
 import re
 import tomllib
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from types import MappingProxyType
 from typing import Any, Final
@@ -160,7 +160,8 @@ def _toml_text(value: Any) -> str:
 
 
 class _Understood:
-    def __init__(self) -> None:
+    def __init__(self, thresholds: Callable[[], Sequence[str]] | None) -> None:
+        self.known_thresholds = thresholds
         self.values: dict[str, str] = {}
         self.entries: dict[str, PlantEntry] = {}
         self.thresholds: dict[str, float] = {}
@@ -183,7 +184,10 @@ class _Understood:
 
 
 def plant_data(
-    entries: Iterable[PlantEntry], *, kind: SheetKind = PLANT
+    entries: Iterable[PlantEntry],
+    *,
+    kind: SheetKind = PLANT,
+    thresholds: Callable[[], Sequence[str]] | None = None,
 ) -> tuple[PlantData, PlantRow | None, tuple[CellProblem, ...]]:
     """Understand what a plant says of itself.
 
@@ -193,6 +197,8 @@ def plant_data(
         What it says; of two entries of one name the later is used, and that is listed.
     kind
         The Plant sheet's columns.
+    thresholds
+        Called, where the plant states a threshold, for the names of all that there are; None: any name is taken.
 
     Returns
     -------
@@ -200,7 +206,7 @@ def plant_data(
         The data with an assumption for each default that was used, the texts as written (None where
         it says nothing), and a problem for each name or value that could not be understood.
     """
-    found = _Understood()
+    found = _Understood(thresholds)
     names = {
         heading_words(text): column.field
         for column in kind.columns
@@ -216,7 +222,10 @@ def plant_data(
             _threshold(found, entry, name)
             continue
         if field is None:
-            found.problem(entry, "no plant setting has this name", _nearest(name, names))
+            known = [" ".join(words) for words in names]
+            if thresholds is not None and re.search(r"\d|%", name):
+                known += thresholds()
+            found.problem(entry, "no plant setting has this name", _nearest(name, known))
             continue
         if placeholder(entry.text):
             continue
@@ -248,11 +257,11 @@ def _where(entry: PlantEntry) -> str:
     return f"{entry.cell.file} {entry.cell.sheet} {entry.cell.address}".replace("  ", " ")
 
 
-def _nearest(name: str, names: Mapping[tuple[str, ...], str]) -> list[str]:
-    from rapidfuzz import process
+def _nearest(name: str, known: Sequence[str]) -> list[str]:
+    from rapidfuzz import process, utils
 
-    texts = [" ".join(words) for words in names]
-    return [text for text, score, _ in process.extract(" ".join(heading_words(name)), texts, limit=2) if score >= 70]
+    found = process.extract(name, known, processor=utils.default_process, limit=2, score_cutoff=70)
+    return [text for text, _, _ in found]
 
 
 def _threshold(found: _Understood, entry: PlantEntry, name: str) -> None:
@@ -261,12 +270,24 @@ def _threshold(found: _Understood, entry: PlantEntry, name: str) -> None:
     name = " ".join(name.split())
     if placeholder(entry.text):
         return
+    if found.known_thresholds is not None:
+        known = found.known_thresholds()
+        plain = {_plain(each): each for each in known}
+        if _plain(name) not in plain:
+            found.problem(entry, "no rule has a threshold of this name", _nearest(name, known))
+            return
+        name = plain[_plain(name)]
     number = re.fullmatch(r"([+-]?\d{1,9}(?:[.,]\d{1,9})?)\s*(?:%|mA|V|ohm|Ω|K|°C|degC|nF)?", entry.text.strip())
     if number is None:
         found.problem(entry, "a threshold is a number")
         return
     found.thresholds[name.casefold()] = float(number[1].replace(",", "."))
     found.threshold_texts[name] = entry.text
+
+
+def _plain(name: str) -> str:
+    """Return the name of a threshold as names are compared: a sign that a key of TOML cannot hold may be missing."""
+    return re.sub(r"[^a-z0-9]+", "", name.casefold().replace("%", "percent"))
 
 
 def _data(found: _Understood) -> PlantData:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import hashlib
 import io
 import json
+import re
 from pathlib import Path
 
 import pytest
@@ -68,6 +69,28 @@ def test_mended_and_given_back_with_the_next_revision(listed: Path, tmp_path: Pa
     assert [each["file"] for each in said["audit"]["files"]] == [str(following), str(mended)]
     again = (tmp_path / "two" / "mapping.toml").read_text(encoding="utf-8")
     assert 'cell = "B3", heading = "Zeichen", field = "former tag", how = "mapping", likely = 1.00 },' in again
+
+
+def test_a_threshold_that_no_rule_has_is_told_with_the_nearest(listed: Path, tmp_path: Path) -> None:
+    plant = tmp_path / "plant.toml"
+    plant.write_text('"RNG08 low %" = 10\n"RNG08 hihg %" = 80\n"RGN08 low %" = 5\n"ZZZ99 x" = 1\n', encoding="utf-8")
+    status, _, err = run(listed, "--to", tmp_path / "out", "--plant", plant)
+    assert status == 0
+    assert err.splitlines() == [
+        "plant: RNG08 hihg % = 80: no rule has a threshold of this name; the nearest: RNG08 high %",
+        "plant: RGN08 low % = 5: no plant setting has this name; the nearest: RNG08 low %, ELC low failure mA",
+        "plant: ZZZ99 x = 1: no plant setting has this name",
+    ]
+
+
+def test_what_would_let_more_be_checked_is_said(listed: Path, tmp_path: Path) -> None:
+    _, out, _ = run(listed, "--to", tmp_path / "out")
+    (catalogue,) = (line for line in out.splitlines() if "a device catalogue" in line)
+    assert re.fullmatch(
+        r"not checked: a device catalogue, with a column 'device type' in the index, "
+        r"would let \d+ rules check \d+ more: ELC01 3, ELC02 3, .*",
+        catalogue,
+    )
 
 
 @pytest.mark.parametrize(

@@ -233,3 +233,36 @@ def test_no_sheet_is_too_much(rows: list[list[str | None]]) -> None:
     assert (
         read_plant_sheet(made, match or SheetMatch(kind=KINDS[5], header_rows=(), first_row=0, columns={})) is not None
     )
+
+
+@pytest.mark.parametrize(
+    ("name", "kept", "readings"),
+    [
+        ("RNG08 low %", {"rng08 low %": 25.0}, None),
+        ("rng08  LOW percent", {"rng08 low %": 25.0}, None),
+        ("RNG08 low", {}, ("RNG08 low %",)),
+        ("RNG08 lo %", {}, ("RNG08 low %", "RNG08 high %")),
+        ("RNG09 low %", {}, ("RNG08 low %",)),
+    ],
+)
+def test_a_threshold_that_there_is_not_is_told(
+    name: str, kept: dict[str, float], readings: tuple[str, ...] | None
+) -> None:
+    asked: list[bool] = []
+
+    def names() -> list[str]:
+        asked.append(True)
+        return ["RNG08 low %", "RNG08 high %", "ELC hot degC"]
+
+    data, _, problems = plant_data(entries(**{name: "25"}), thresholds=names)
+    assert dict(data.thresholds) == kept
+    if readings is None:
+        assert problems == ()
+    else:
+        (problem,) = problems
+        assert problem.reason == "no rule has a threshold of this name"
+        assert problem.readings[: len(readings)] == readings
+    # Without a threshold nobody asks for their names.
+    asked.clear()
+    plant_data(entries(numbering="serial"), thresholds=names)
+    assert asked == []

@@ -29,6 +29,7 @@ from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
 from validation.report.wanted_sheets import wanted_sheets
+from validation.thresholds import threshold_names
 
 KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
@@ -81,7 +82,9 @@ class Command(BaseCommand):
                 progress.stage("reading")
                 beside = [path for path in (plant_toml, mapping_toml) if path is not None]
                 inputs = {str(path): _digest(path) for path in [*paths, *beside]}
-                lists = read_lists(paths, KINDS, plant_toml=plant_toml, mapping_toml=mapping_toml)
+                lists = read_lists(
+                    paths, KINDS, plant_toml=plant_toml, mapping_toml=mapping_toml, thresholds=threshold_names
+                )
                 progress.stage("putting the plant together")
                 plant = assemble(lists)
                 result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
@@ -164,6 +167,9 @@ class Command(BaseCommand):
         guessed = [note for sheet in result.plant.lists.sheets for note in _guesses(sheet)]
         for note in guessed[:MOST_SAID]:
             say(f"heading guessed: {note}")
+        for problem in [each for each in result.plant.lists.problems if each.subject == "plant"][:MOST_SAID]:
+            nearest = f"; the nearest: {', '.join(problem.readings)}" if problem.readings else ""
+            self.stderr.write(f"plant: {problem.title} = {problem.text}: {problem.reason}{nearest}")
         notes = result.plant.lists.mapping_notes
         for misfit in notes[:MOST_SAID]:
             self.stderr.write(f"mapping: {misfit}")
