@@ -268,6 +268,9 @@ def _said_at(station: Station, path: Path) -> Iterable[str]:
         if path.supply and station.symbol is Symbol.DEVICE:
             yield f"supply {path.supply}"
         yield from (text for text in (kind.value if kind else None, code) if text)
+        if station.symbol is Symbol.IN_SERIES and kind is Kind.INDICATOR:
+            diode = station.device.type.bypass_diode if station.device.type is not None else None
+            yield {True: "diode across it", False: "no diode", None: "diode: not given"}[diode]
     yield from station.lines
 
 

@@ -11,6 +11,7 @@ from typing import Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
+from instruments.quantity import format_number
 from loops.circuit import (
     ANALOGUE_INPUT,
     ANALOGUE_OUTPUT,
@@ -417,7 +418,7 @@ def _told_path(circuit: Circuit, plant: Plant) -> tuple[list[Station], list[Stre
     """Return the path as far as the circuit's row tells it: device, what is in series, the junction box."""
     signal, record = circuit.signal_row, circuit.device.record
     stations = [Station(symbol=Symbol.DEVICE, zone=Zone.FIELD, name=circuit.device.name, device=circuit.device)]
-    riding = [each for each in circuit.members if each is not circuit.device and each.kind is Kind.INDICATOR]
+    riding = [each for each in circuit.members if each is not circuit.device and each.kind in _IN_SERIES]
     stations += [Station(symbol=Symbol.IN_SERIES, zone=Zone.FIELD, name=each.name, device=each) for each in riding]
     box = signal.junction_box or record.junction_box
     strip, numbers = _terminals(signal.terminals or record.terminals)
@@ -466,6 +467,7 @@ def _told_path(circuit: Circuit, plant: Plant) -> tuple[list[Station], list[Stre
     return stations, stretches
 
 
+_IN_SERIES: Final = frozenset({Kind.INDICATOR, Kind.POSITIONER, Kind.IP_CONVERTER})
 _POLARITY: Final = ("+", "\u2212")
 _POLARISED: Final = frozenset({ANALOGUE_INPUT, ANALOGUE_OUTPUT, THERMOCOUPLE})
 _CABLE_NAMES: Final = re.compile(r"\s*[,;\n]\s*")
@@ -576,7 +578,15 @@ def _card_lines(circuit: Circuit, name: str | None) -> tuple[str, ...]:
             signal.io_type or (circuit.row.kind if circuit.row else None) or record.io_type,
         )
         if text
-    )
+    ) + _resistor(circuit)
+
+
+def _resistor(circuit: Circuit) -> tuple[str, ...]:
+    """Return the resistor across which an input reads, with what lies across it."""
+    receiver = circuit.receiver_ohm
+    if circuit.kind != ANALOGUE_INPUT or receiver is None:
+        return ()
+    return (f"{format_number(receiver.number)} \u03a9",)
 
 
 # --------------------------------------------------------------------------------------------------------

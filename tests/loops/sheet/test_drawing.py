@@ -48,7 +48,19 @@ CONTROL: list[Row] = [
     {"tag": "FV-1"},
     {"tag": "FI-1", "kind": "indicator", "location": "field"},
 ]
+SERIES: list[Row] = [
+    {**DEVICE, "receiver ohm": "250"},
+    {"tag": "PI-1", "kind": "indicator", "signal": "4-20 mA", "location": "field", "loop": "P-1"},
+]
+SPLIT: list[Row] = [
+    {"tag": "FY-1A", "kind": "positioner", "signal": "4-20 mA", "I/O type": "AO", "I/O address": "1", "area": "A1"},
+    {"tag": "FV-1A"},
+    {"tag": "FY-1B", "kind": "positioner", "signal": "4-20 mA", "I/O type": "AO", "I/O address": "1", "area": "A1"},
+    {"tag": "FV-1B"},
+]
 PLANTS = {
+    "in series": plant_of(SERIES),
+    "split range": plant_of(SPLIT),
     "listed": plant_of([DEVICE], LISTED),
     "far": plant_of([DEVICE], FAR),
     "control": plant_of(CONTROL),

@@ -249,6 +249,22 @@ def test_cables_of_the_schedule_stand_where_they_run() -> None:
     ]
 
 
+def test_what_lies_in_series_stands_between_device_and_box() -> None:
+    rows = [
+        {**DEVICE, "receiver ohm": "250"},
+        {"tag": "PI-1", "kind": "indicator", "signal": "4-20 mA", "location": "field", "loop": "P-1"},
+    ]
+    found = path(rows)
+    assert [(each.symbol, each.name) for each in found.stations] == [
+        (Symbol.DEVICE, "PT-1"),
+        (Symbol.IN_SERIES, "PI-1"),
+        (Symbol.BOX, "JB-1"),
+        (Symbol.BARRIER, "ZB-28"),
+        (Symbol.CARD, "AI-8"),
+    ]
+    assert found.stations[-1].lines == ("1.1.1", "AI", "250 \u03a9")
+
+
 @pytest.mark.parametrize(("area", "boundary"), [("A1", 1), ("A2", None), ("", None)])
 def test_the_hazardous_area_ends_behind_the_last_station_in_the_field(area: str, boundary: int | None) -> None:
     assert path([{**DEVICE, "area": area}]).boundary == boundary
