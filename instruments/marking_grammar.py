@@ -112,6 +112,20 @@ LEAD: Final = Token(
     r"|non-?\s?incendive)(?:\s+for)?\s*[:,/]?\s*(?=(?:Class|Cl)(?:es)?(?![a-z]))",
     any_case=True,
 )
+# What protects it, behind the classes: Class I Div 1 Groups C, D explosionproof.
+TAIL: Final = Token(
+    r"(?:[-,]\s*)?\(?\s*(XP|DIP|NI|IS|I\.S\.|intrinsically[\s-]safe|explosion[\s-]?proof|dust[\s-]ignition[\s-]?proof"
+    r"|non-?\s?incendive)(?![A-Za-z0-9/]|\s*(?:for\s*)?[:,]?\s*Cl)\s*\)?",
+    any_case=True,
+)
+# As approval listings write it: XP / I / 1 / BCD / T4. An A before it is for associated apparatus.
+STROKED: Final = Token(
+    r"(?P<associated>A)?(?P<lead>XP|DIP|NI|IS)\s*[-/]\s*(?P<classes>(?:III|II|I)(?:\s*,\s*(?:III|II|I))*)\s*/"
+    r"\s*(?:Div\.?\s*)?(?P<division>[12](?:\s*,\s*[12])?)(?!\d)"
+    r"(?:\s*/\s*(?:(?:Groups?|Grps?|Gps?|Grs?)\.?\s*)?(?P<letters>[A-G](?:[\s,]*[A-G])*)(?![A-Za-z]))?",
+    any_case=True,
+)
+ENTITY: Final = Token(r"(?:[-,]\s*)?\(?\s*(?:entity|FISCO)(?![A-Za-z])\s*\)?", any_case=True)
 CLASS: Final = Token(r"(?:Class(?:es)?|Cl)\.?\s*(III|II|I|[123])(?![A-Za-z0-9])", any_case=True)
 CLASS_MORE: Final = Token(r"(?:[,/&+]|and(?![A-Za-z]))\s*(III|II|I)(?![A-Za-z0-9])", any_case=True)
 CLASS_SHORT: Final = Token(r"C\s?(III|II|I|[123])\s?[/-]?\s?D(?:iv\.?)?\s?([12])(?!\d)", any_case=True)
@@ -396,11 +410,20 @@ class ClassPart:
     division: str | None = None
     letters: tuple[str, ...] = ()
     lead: str | None = None
+    associated: bool = False
 
 
 def take_class(scanner: Scanner) -> ClassPart | None:
     """Take one class with its division and group letters, in whatever order; None without."""
     start = scanner.position
+    if stroked := scanner.take(STROKED):
+        return ClassPart(
+            classes=[each.strip().upper() for each in stroked["classes"].split(",")],
+            division=min(each.strip() for each in stroked["division"].split(",")),
+            letters=tuple(sorted({letter for letter in (stroked["letters"] or "").upper() if letter.isalpha()})),
+            lead=_LEADS[stroked["lead"].casefold()],
+            associated=stroked["associated"] is not None,
+        )
     lead = scanner.take(LEAD)
     if short := scanner.take(CLASS_SHORT):
         part = ClassPart(classes=[_class(short[1])], division=short[2])
@@ -412,8 +435,7 @@ def take_class(scanner: Scanner) -> ClassPart | None:
         scanner.position = start
         return None
     if lead:
-        word = lead[1].casefold()
-        part.lead = _LEADS.get(word) or _LEADS[word[:3]]
+        part.lead = _protection_named(lead[1])
     while True:
         here = scanner.position
         scanner.take(BETWEEN_CLASS_PARTS)
@@ -426,6 +448,10 @@ def take_class(scanner: Scanner) -> ClassPart | None:
                 continue
         scanner.position = here
         return part
+
+
+def _protection_named(word: str) -> str:
+    return _LEADS.get(word.casefold()) or _LEADS[word.casefold()[:3]]
 
 
 def _class(text: str) -> str:
@@ -764,20 +790,29 @@ class RecordReader:
             parts.append(part)
         if not parts:
             return False
-        associated = scanner.take(ASSOCIATED) is not None
-        temperatures = take_t_codes(scanner)
-        associated = scanner.take(ASSOCIATED) is not None or associated
+        associated, tail = False, ""
+        temperatures: tuple[MarkedTemperature, ...] = ()
+        while True:
+            if scanner.take(ASSOCIATED):
+                associated = True
+            elif match := scanner.take(TAIL):
+                said = _protection_named(match[1])
+                if said != (tail or said) or any(part.lead not in (None, said) for part in parts):
+                    raise UnreadableMarking(f"two types of protection: {tail or parts[0].lead}, {said}")
+                tail = said
+            elif not scanner.take(ENTITY) and (temperatures or not (temperatures := take_t_codes(scanner))):
+                break
         if any(t.t_class is None for t in temperatures) and any("I" in part.classes for part in parts):
             raise UnreadableMarking("degrees instead of a T code on Class I")
         for part in parts:
             for class_, letters in class_letters(part):
                 self._add(
                     MarkingEntry(
-                        scheme="associated" if associated else "division",
+                        scheme="associated" if associated or part.associated else "division",
                         class_=class_,
                         division=part.division,
                         groups=letters,
-                        division_protection=part.lead,
+                        division_protection=part.lead or tail or None,
                         temperatures=temperatures,
                     )
                 )

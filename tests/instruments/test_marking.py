@@ -845,3 +845,75 @@ def test_the_length_is_bounded_on_both_sides() -> None:
     fits = "Ex ia IIC T4 Ga".ljust(MAX_LENGTH)
     assert read_marking(fits).readable
     assert not read_marking(f"{fits} ").readable
+
+
+# What protects it, behind the classes or in strokes
+
+
+@pytest.mark.parametrize(
+    ("text", "entries"),
+    [
+        ("Class I Div 1 Groups B,C,D explosionproof", [("I", "1", "BCD", "explosionproof", "none")]),
+        ("Class I, Division 1, Groups C and D T4 Explosion-proof", [("I", "1", "CD", "explosionproof", "T4")]),
+        ("Class I Div 1 Groups B,C,D (explosion proof) T6", [("I", "1", "BCD", "explosionproof", "T6")]),
+        ("Cl I Div 1 Gr BCD XP", [("I", "1", "BCD", "explosionproof", "none")]),
+        ("Class I Div 1 Groups ABCD T4 intrinsically safe", [("I", "1", "ABCD", "intrinsically safe", "T4")]),
+        ("Class I Div 2 Groups A-D, non-incendive, T4", [("I", "2", "ABCD", "nonincendive", "T4")]),
+        ("Class II Div 1 Groups EFG dust-ignitionproof", [("II", "1", "EFG", "dust-ignitionproof", "none")]),
+        ("IS Class I Div 1 ABCD T4 Entity", [("I", "1", "ABCD", "intrinsically safe", "T4")]),
+        ("XP/I/1/BCD/T4", [("I", "1", "BCD", "explosionproof", "T4")]),
+        ("XP / I / 1 / BCD / T4", [("I", "1", "BCD", "explosionproof", "T4")]),
+        ("xp-i/1/b,c,d/t4a", [("I", "1", "BCD", "explosionproof", "T4A = 120 °C")]),
+        ("NI/I/2/ABCD/T4", [("I", "2", "ABCD", "nonincendive", "T4")]),
+        ("IS/I/1,2/CD", [("I", "1", "CD", "intrinsically safe", "none")]),
+        (
+            "IS/I,II,III/1/ABCDEFG/T4",
+            [
+                ("I", "1", "ABCD", "intrinsically safe", "T4"),
+                ("II", "1", "EFG", "intrinsically safe", "T4"),
+                ("III", "1", "", "intrinsically safe", "T4"),
+            ],
+        ),
+        (
+            "XP/I/1/CD; DIP/II/1/EFG; T6",
+            [("I", "1", "CD", "explosionproof", "T6"), ("II", "1", "EFG", "dust-ignitionproof", "T6")],
+        ),
+        (
+            "IS/I/1/ABCD/T4; NI/I/2/ABCD/T5",
+            [("I", "1", "ABCD", "intrinsically safe", "T4"), ("I", "2", "ABCD", "nonincendive", "T5")],
+        ),
+        (
+            "Class I Div 1 Groups C,D T4, NI Class I Div 2 Groups A,B T5",
+            [("I", "1", "CD", None, "T4"), ("I", "2", "AB", "nonincendive", "T5")],
+        ),
+    ],
+)
+def test_division_marks_that_name_their_protection(text: str, entries: list[tuple[str | None, ...]]) -> None:
+    marking = read_marking(text)
+    assert [
+        (each.class_, each.division, "".join(each.groups), each.division_protection, each.temperature_text)
+        for each in marking.entries
+    ] == entries
+    assert not marking.is_associated
+
+
+@pytest.mark.parametrize("text", ["AIS/I/1/ABCD", "ANI / I / 2 / ABCD"])
+def test_an_a_before_the_strokes_is_associated_apparatus(text: str) -> None:
+    assert read_marking(text).is_associated
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "explosionproof",
+        "XP",
+        "XP/I",
+        "XP/IV/1/BCD",
+        "XP/I/3/BCD",
+        "XP/I/1/BCX",
+        "XP Class I Div 1 Groups B,C,D nonincendive",
+        "Class I Div 1 Group D explosionproof nonincendive",
+    ],
+)
+def test_a_protection_alone_or_two_that_disagree_are_no_marking(text: str) -> None:
+    assert not read_marking(text).readable
