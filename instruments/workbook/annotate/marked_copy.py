@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import functools
 import os
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Final
 
@@ -35,6 +35,9 @@ _MOST_BYTES_PARSED: Final = 150_000_000
 
 _ROOM_WORTH: Final = 200
 """With less room than this in a comment nothing is added to it."""
+
+_MOST_TOGETHER: Final = 8
+"""Cells of a merged range whose comments are said in the one that it has."""
 
 _A_FEW_LINES: Final = "\n" * 4
 
@@ -313,16 +316,22 @@ def _on_what_is_seen(wanted: Mapping[Place, Mark], frame: Frame) -> Mapping[Plac
     moved = frame.anchors(wanted)
     if not moved:
         return wanted
-    marks: dict[Place, Mark] = {}
+    gathered: dict[Place, list[Mark]] = {}
     for place in sorted(wanted):
-        shown = moved.get(place, place)
-        mark, there = wanted[place], marks.get(shown)
-        if there is not None:
-            fill = min(there, mark, key=lambda one: one.rank)
-            text = (*there.text, Passage("\n\n"), *mark.text)
-            mark = Mark(fill=fill.fill, text=text, rank=fill.rank)
-        marks[shown] = mark
-    return marks
+        gathered.setdefault(moved.get(place, place), []).append(wanted[place])
+    return {place: marks[0] if len(marks) == 1 else _as_one(marks) for place, marks in gathered.items()}
+
+
+def _as_one(marks: Sequence[Mark]) -> Mark:
+    """Return one mark for merged cells: the worst gives the colour and is said first, and nothing is said twice."""
+    ordered = sorted(marks, key=lambda mark: mark.rank)
+    texts = list(dict.fromkeys(tuple(mark.text) for mark in ordered))
+    text: list[Passage] = []
+    for each in texts[:_MOST_TOGETHER]:
+        text += (Passage("\n\n" if text else ""), *each)
+    if len(texts) > _MOST_TOGETHER:
+        text.append(Passage(f"\n\nand more at {len(texts) - _MOST_TOGETHER:,} of the cells merged here"))
+    return Mark(fill=ordered[0].fill, text=text, rank=ordered[0].rank)
 
 
 def _within(text: Text, taken: int) -> Text:

@@ -18,12 +18,14 @@ from instruments.workbook.annotate.styles import Fill
 from instruments.workbook.reader import read_file
 from instruments.workbook.sheet import UnreadableFile
 from tests.instruments.workbook.annotate.shapes import (
+    BLUE,
     BUSY_MARKS,
     BY_HAND,
     BY_OPENPYXL,
     MARKS,
     NOT_READ_HERE,
     PLAIN,
+    PLAIN_ROWS,
     RED,
     VML,
     assert_in_order,
@@ -39,6 +41,7 @@ from tests.instruments.workbook.annotate.shapes import (
     with_macros,
     with_parts,
 )
+from tests.instruments.workbook.packages import worksheet
 
 Convert = Callable[[list[Path], Path], None]
 
@@ -177,6 +180,21 @@ def test_boxes_of_controls_without_comments(tmp_path: Path) -> None:
     assert boxes.startswith(control[: control.index("</xml>")].replace('data="1"', 'data="1,2"'))
     assert said_in(part(after, "xl/comments1.xml")) == {"A2": SAID}
     assert part(after, "xl/worksheets/sheet1.xml").count("legacyDrawing") == 1
+
+
+def test_merged_cells_have_one_comment(tmp_path: Path) -> None:
+    data = made(worksheet(PLAIN_ROWS, after='<mergeCells><mergeCell ref="E2:F40"/></mergeCells>'))
+    marks = {
+        (row, 4 + row % 2): mark(f"said {row // 2}", BLUE if row != 9 else RED, 1 - (row == 9)) for row in range(1, 25)
+    }
+    found, after = copied(tmp_path, data, marks)
+    assert found == MarkedCopy(cells=1, sheets=1)
+    said = said_in(part(after, "xl/comments1.xml"))
+    assert list(said) == ["E2"]
+    # The worst first, each text once, and no more than can be read.
+    assert re.findall(r"said \d+", said["E2"]) == [f"said {number}" for number in (4, 0, 1, 2, 3, 5, 6, 7)]
+    assert said["E2"].endswith("\n\nand more at 5 of the cells merged here")
+    assert openpyxl.load_workbook(after).worksheets[0]["E2"].fill.start_color.rgb[2:] == RED.pale
 
 
 # --- threads ----------------------------------------------------------------------------------------------------
