@@ -19,6 +19,7 @@ from instruments.workbook.lists import NoTags, SheetReport
 from instruments.workbook.mapping import mapping_of
 from instruments.workbook.mapping_toml import mapping_text
 from instruments.workbook.reader import UnreadableFile
+from instruments.written import CannotStand
 from loops.columns import SHEETS as LOOP_SHEETS
 from loops.plant import assemble
 from validation.audit import Audit, audit
@@ -29,7 +30,9 @@ from validation.report.findings_json import as_text, counts
 from validation.report.outputs import CannotWrite, Outputs
 from validation.report.progress import Progress
 from validation.report.wanted_sheets import wanted_sheets
+from validation.report.what_if_text import what_if_lines
 from validation.thresholds import threshold_names
+from validation.what_if import Change, WhatIf, changed_lists, read_changes, what_if
 
 KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
@@ -54,6 +57,7 @@ class Command(BaseCommand):
         parser.add_argument("--to", required=True, metavar="DIR", help="the folder for the outputs")
         parser.add_argument("--plant", metavar="plant.toml", help="the plant's data, where no sheet has them")
         parser.add_argument("--mapping", metavar="mapping.toml", help="how an earlier run read these lists, mended")
+        parser.add_argument("--what-if", metavar="FILE.toml", help="changes; prints what would be found with them")
         parser.add_argument("--no-sheets", action="store_true", help="leave out loop-sheets.pdf")
         parser.add_argument("--no-annotated", action="store_true", help="leave out the annotated copy")
         parser.add_argument(
@@ -77,8 +81,10 @@ class Command(BaseCommand):
         paths = [Path(name) for name in options["lists"]]
         plant_toml = Path(options["plant"]) if options["plant"] else None
         mapping_toml = Path(options["mapping"]) if options["mapping"] else None
+        supposed: WhatIf | None = None
         with Progress(self.stderr) as progress:
             try:
+                changes = _changes(options["what_if"])
                 progress.stage("reading")
                 beside = [path for path in (plant_toml, mapping_toml) if path is not None]
                 inputs = {str(path): _digest(path) for path in [*paths, *beside]}
@@ -87,17 +93,27 @@ class Command(BaseCommand):
                 )
                 progress.stage("putting the plant together")
                 plant = assemble(lists)
+                if changes:
+                    changed_lists(plant, changes)  # refused before anything is written
                 result = audit(plant, on_rule=lambda number, of, code: progress.step("rules", number, of, code))
+                if changes:
+                    progress.stage("what if")
+                    supposed = what_if(result, changes)
                 with_consequences(result, on_fix=lambda number, of: progress.step("fixes", number, of))
                 folder = Path(options["to"])
                 with Outputs(folder, keep=paths) as outputs:
                     self._write(outputs, result, inputs, options, progress)
             except (UnreadableFile, NoTags, CannotWrite) as error:
                 return self._cannot(str(error))
+            except CannotStand as error:
+                return self._cannot(f"{options['what_if']}: {error}")
             except OSError as error:
                 return self._cannot(f"{error.filename or 'a file'}: {(error.strerror or str(error)).lower()}")
         self._say(result, Path(options["to"]), outputs)
-        if result.broken:
+        if supposed is not None:
+            for line in what_if_lines(supposed):
+                self.stdout.write(line)
+        if result.broken or (supposed is not None and supposed.broken):
             return BROKEN
         if options["fail_on"]:
             limit = Severity(options["fail_on"]).rank
@@ -180,6 +196,17 @@ class Command(BaseCommand):
         if len(result.broken) > 5:
             self.stderr.write(f"and {len(result.broken) - 5} more; see findings.json")
         say(f"written to {folder}: {', '.join(outputs.digests)}")
+
+
+def _changes(name: str | None) -> tuple[Change, ...]:
+    if not name:
+        return ()
+    try:
+        return read_changes(Path(name).read_text(encoding="utf-8-sig"))
+    except UnicodeDecodeError as error:
+        raise UnreadableFile(name, "", "is not text in UTF-8") from error
+    except OSError as error:
+        raise UnreadableFile(name, "", (error.strerror or str(error)).lower()) from error
 
 
 def _digest(path: Path) -> str:
