@@ -33,6 +33,9 @@ _ROW: Final = re.compile(rb"<x:Row>\s*([0-9]{1,7})\s*</x:Row>")
 _COLUMN: Final = re.compile(rb"<x:Column>\s*([0-9]{1,5})\s*</x:Column>")
 _ANCHOR: Final = re.compile(rb"<x:Anchor>\s*([0-9]{1,7}(?:\s*,\s*[0-9]{1,7}){7})\s*</x:Anchor>")
 
+_LONGEST: Final = 2_000
+"""Bytes in which a number, or the list of a drawing's clusters, stands."""
+
 _A_CLUSTER: Final = 1024
 """Numbers of shapes that a drawing takes at once."""
 
@@ -55,14 +58,19 @@ class Numbers:
     def __init__(self) -> None:
         self._highest = 0
 
-    def note(self, data: bytes) -> None:
+    def note(self, pieces: Iterable[bytes]) -> None:
         """Take note of the numbers that a drawing has."""
-        for listed in _IDMAP.finditer(data):
-            for number in listed[1].split(b","):
-                if number.strip().isdigit() and len(number) < 8:
-                    self._highest = max(self._highest, int(number))
-        for shape in _SHAPE_NUMBER.finditer(data):
-            self._highest = max(self._highest, int(shape[1]) // _A_CLUSTER)
+        kept = b""
+        for piece in pieces:
+            data = kept + piece
+            for listed in _IDMAP.finditer(data):
+                for number in listed[1].split(b","):
+                    if number.strip().isdigit() and len(number) < 8:
+                        self._highest = max(self._highest, int(number))
+            for shape in _SHAPE_NUMBER.finditer(data):
+                self._highest = max(self._highest, int(shape[1]) // _A_CLUSTER)
+            # What is cut in two here is whole in the next.
+            kept = data[-_LONGEST:]
 
     def take(self, count: int) -> tuple[int, list[int]]:
         """Return the first of `count` numbers in a row, and the clusters that they are in."""

@@ -140,7 +140,7 @@ class _Copy:
         names = [entry.filename for entry in self._package.entries()]
         for name in names:
             if name.casefold().endswith(".vml"):
-                self._numbers.note(b"".join(self._package.pieces(name)))
+                self._numbers.note(self._package.pieces(name))
         cells = sheets = 0
         unmarked: list[tuple[str, str]] = []
         strict = False

@@ -49,18 +49,12 @@ class Grid:
 
     column_px: float = 64.0
     row_px: float = 20.0
-    columns: Sequence[tuple[int, int, float]] = ()
-    """First, last and width of those that differ."""
+    columns: dict[int, float] = field(default_factory=dict)
     rows: dict[int, float] = field(default_factory=dict)
-    _widths: dict[int, float] = field(default_factory=dict)
 
     def width(self, column: int) -> float:
         """Return the width of a column."""
-        px = self._widths.get(column)
-        if px is None:
-            px = next((px for first, last, px in self.columns if first <= column <= last), self.column_px)
-            self._widths[column] = px
-        return px
+        return self.columns.get(column, self.column_px)
 
     def height(self, row: int) -> float:
         """Return the height of a row."""
@@ -79,8 +73,8 @@ class Frame:
     """How many bytes they are."""
     strict: bool
     merged: list[tuple[int, int, int, int]]
-    column_styles: list[tuple[int, int, int]]
-    """First and last column, counted from 0, and the style of their blank cells."""
+    column_styles: dict[int, int]
+    """The styles of the blank cells of columns, counted from 0."""
     grid: Grid
     plain: bool
     """Whether the part is in the usual spelling."""
@@ -111,7 +105,7 @@ class Frame:
 
     def column_style(self, column: int) -> int:
         """Return the style of a column's blank cells."""
-        return next((style for first, last, style in self.column_styles if first <= column <= last), 0)
+        return self.column_styles.get(column, 0)
 
     def at(self, place: int) -> int:
         """Return where in the part a byte of the frame stands."""
@@ -156,8 +150,7 @@ def _frame(data: bytes, gap_at: int, left_out: int, *, plain: bool) -> Frame:
     if root.name != "worksheet":
         raise BrokenXml("is no worksheet")
     merged: list[tuple[int, int, int, int]] = []
-    styles: list[tuple[int, int, int]] = []
-    widths: list[tuple[int, int, float]] = []
+    styles: dict[int, int] = {}
     grid = Grid()
     for child in root.children:
         if child.name == "mergeCells":
@@ -171,13 +164,16 @@ def _frame(data: bytes, gap_at: int, left_out: int, *, plain: bool) -> Frame:
             usual = _number(child.attributes.get("defaultColWidth"), 0.0)
             grid.column_px = usual * _DIGIT_PX if usual else 64.0
         elif child.name == "cols":
+            told = -1
             for one in child.children:
-                between = _whole(one.attributes.get("min")) - 1, _whole(one.attributes.get("max")) - 1
-                if one.attributes.get("style"):
-                    styles.append((*between, _whole(one.attributes["style"])))
+                # They follow each other, so each column is told once.
+                begin = max(_whole(one.attributes.get("min")) - 1, told + 1)
+                told = max(told, min(_whole(one.attributes.get("max")), MAX_COLUMNS) - 1)
                 width = _number(one.attributes.get("width"), grid.column_px / _DIGIT_PX) * _DIGIT_PX
-                widths.append((*between, 0.0 if one.attributes.get("hidden") in ("1", "true") else width))
-    grid.columns = widths
+                px = 0.0 if one.attributes.get("hidden") in ("1", "true") else width
+                grid.columns.update(dict.fromkeys(range(begin, told + 1), px))
+                if one.attributes.get("style"):
+                    styles.update(dict.fromkeys(range(begin, told + 1), _whole(one.attributes["style"])))
     return Frame(
         root=root,
         data=data,
