@@ -10,7 +10,7 @@ from typing import Final, Literal
 from instruments.kind import Kind, code_kind
 from instruments.letters import USERS_CHOICE, nearest_legal_letters, read_letters
 from instruments.plant_codes import CODES, PlantCode, code_for
-from instruments.tag_cell import NOT_TAGS, split_note, tags_of_cell
+from instruments.tag_cell import EQUIPMENT_WORDS, NOT_TAGS, split_note, tags_of_cell
 from instruments.tag_profile import (
     DEFAULT,
     PROFILES,
@@ -189,6 +189,14 @@ def _read_parts(
 ) -> TagReading:
     prefix, letters, number, suffix = parts
     scheme = profile.scheme
+    if letters in EQUIPMENT_WORDS and letters not in codes:
+        return TagReading(
+            text=text,
+            normalised=normalised,
+            verdict="invalid",
+            reason=f"{letters} names equipment, not an instrument",
+            scheme=scheme,
+        )
     if letters in NOT_TAGS and letters not in codes:
         return _placeholder(text, normalised)
     means = tags_of_cell(normalised, profile=profile) if "/" in suffix else ()
@@ -657,12 +665,18 @@ def natural_key(tag: str) -> NaturalKey:
     return tuple((text, len(number), number) for text, number in runs), tag
 
 
-def is_equipment_shape(reading: TagReading) -> bool:
-    """Whether a tag is one letter and a number, as equipment is tagged: P-3601A, 10-E-101.
+_WORD_AND_NUMBER: Final = re.compile(r"(?:[0-9]{1,4}[-./ ])?([A-ZÄÖÜ]{3,12})[-_./ ]?(?:NO\.? ?)?[0-9]{0,5}[A-Z]?")
 
-    >>> is_equipment_shape(read_tag("P-3601A")), is_equipment_shape(read_tag("PT-3601A"))
-    (True, False)
+
+def is_equipment_shape(reading: TagReading) -> bool:
+    """Whether a tag is one letter and a number, as equipment is tagged (P-3601A, 10-E-101), or its word and a number.
+
+    >>> [is_equipment_shape(read_tag(tag)) for tag in ("P-3601A", "PT-3601A", "MIXER 7")]
+    [True, False, True]
     """
+    worded = _WORD_AND_NUMBER.fullmatch(reading.normalised.upper())
+    if worded is not None and worded[1] in EQUIPMENT_WORDS:
+        return True
     return reading.parsed and len(reading.letters) == 1 and reading.scheme != "kks"
 
 

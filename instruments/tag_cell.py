@@ -9,7 +9,7 @@ from instruments.letters import letters_stem, read_letters
 from instruments.tag_profile import DEFAULT, TagProfile
 from instruments.tag_text import latin, tidy
 
-__all__ = ["NOT_TAGS", "split_note", "tags_of_cell"]
+__all__ = ["EQUIPMENT_WORDS", "NOT_TAGS", "split_note", "tags_of_cell"]
 
 #: Words that stand in a tag column and are no tags.
 NOT_TAGS: Final = frozenset(
@@ -76,6 +76,18 @@ NOT_TAGS: Final = frozenset(
         "OO",
     ]
 )
+
+#: Words by which drives, heaters and vessels are called where they have no tag; some would pass for letters.
+EQUIPMENT_WORDS: Final = frozenset(
+    (
+        "PUMP", "PUMPS", "MIXER", "AGITATOR", "STIRRER", "HEATER", "COOLER", "CHILLER", "BOILER", "FURNACE", "MOTOR",
+        "DRIVE", "FAN", "BLOWER", "COMPRESSOR", "CONVEYOR", "ELEVATOR", "FEEDER", "CRUSHER", "SCREEN", "SCRAPER",
+        "FILTER", "CENTRIFUGE", "DECANTER", "DRYER", "DRIER", "BURNER", "TANK", "VESSEL", "SILO", "HOPPER",
+        "EXCHANGER", "COLUMN", "REACTOR", "TURBINE", "GENERATOR", "VALVE", "DAMPER", "PUMPE", "MISCHER",
+        "RUEHRWERK", "RÜHRWERK", "RUEHRER", "RÜHRER", "GEBLAESE", "GEBLÄSE", "KESSEL", "BEHAELTER", "BEHÄLTER",
+        "VERDICHTER", "VENTILATOR", "LUEFTER", "LÜFTER", "BRENNER", "HEIZER", "HEIZUNG", "POMPE", "MOTEUR", "BOMBA",
+    )
+)  # fmt: skip
 
 # Words that people write beside a tag: its state, its supplier, which of a motor's or valve's signals it is.
 _NOTE_WORDS: Final = frozenset(

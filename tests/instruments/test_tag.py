@@ -382,7 +382,7 @@ def test_loop_agrees_with_the_valve_and_with_serial_numbering() -> None:
 @pytest.mark.parametrize(
     ("tag", "is_one"),
     [("P-3601A", True), ("10-E-101", True), ("P-3601A running", True), ("K101", True), ("PT-101", False),
-     ("PUMP 1", False), ("101", False)],
+     ("PUMP 1", True), ("MIXER-8A", True), ("HEATER 3", True), ("20-FAN-2", True), ("PUMPT 1", False), ("101", False)],
 )  # fmt: skip
 def test_equipment_shape(tag: str, is_one: bool) -> None:
     assert is_equipment_shape(read_tag(tag)) is is_one

@@ -68,7 +68,7 @@ def test_a_placeholder_is_blank_for_a_reason_in_any_column(
     )
     found = as_read(made(tmp_path, text, kind))
     record = found.records["Instruments"][0]
-    names = ("service", "pid", "lrv", "urv", "setting_h", "failure_position", "cable_length_m")
+    names: tuple[str, ...] = ("service", "pid", "lrv", "urv", "setting_h", "failure_position", "cable_length_m")
     # None is an answer where yes or no is asked.
     names = names if written == "none" else (*names, "hart")
     assert {name: record.blanks.get(name) for name in names} == dict.fromkeys(names, reason)
