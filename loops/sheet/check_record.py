@@ -135,28 +135,26 @@ _OPPOSITE: Final = {"open": "closed", "closed": "open"}
 
 
 def _output(circuit: Circuit, members: Iterable[Installed]) -> Iterable[ToTry]:
-    """Yield what a valve does without signal or air, and of a coil what it does with both."""
-    driven = [circuit.device, *circuit.members, *members]
-    positions = dict.fromkeys(
-        each.record.failure_position for each in driven if each.record.failure_position and _is_driven(each, circuit)
-    )
-    position = next(iter(positions)) if len(positions) == 1 else None
-    fails = None if position is None else "stays in place" if position == "in place" else f"valve {position}"
-    device = circuit.device.name
-    if circuit.kind == DIGITAL_OUTPUT:
-        yield ToTry(device=device, what="energised", bring_about="output on", expect=_moved(position))
-        yield ToTry(device=device, what="de-energised", bring_about="output off", expect=fails)
-    else:
-        yield ToTry(device=device, what="signal fails", bring_about="wire off", expect=fails)
-    if circuit.device.kind in _BY_AIR:
-        yield ToTry(device=device, what="air fails", bring_about="air off", expect=fails)
+    """Yield what a valve does without signal or air, and of a coil what it does with both; for each device on it."""
+    valves = [each for each in members if each.kind in VALVES]
+    others = [each for each in circuit.members if each is not circuit.device and each.kind in _BY_AIR - VALVES]
+    for driver in (circuit.device, *others):
+        own = [driver, *(valve for valve in valves if _drives(driver, valve))]
+        positions = dict.fromkeys(each.record.failure_position for each in own if each.record.failure_position)
+        position = next(iter(positions)) if len(positions) == 1 else None
+        fails = None if position is None else "stays in place" if position == "in place" else f"valve {position}"
+        if circuit.kind == DIGITAL_OUTPUT:
+            yield ToTry(device=driver.name, what="energised", bring_about="output on", expect=_moved(position))
+            yield ToTry(device=driver.name, what="de-energised", bring_about="output off", expect=fails)
+        else:
+            yield ToTry(device=driver.name, what="signal fails", bring_about="wire off", expect=fails)
+        if driver.kind in _BY_AIR:
+            yield ToTry(device=driver.name, what="air fails", bring_about="air off", expect=fails)
 
 
-def _is_driven(each: Installed, circuit: Circuit) -> bool:
-    if each is circuit.device or any(each is member for member in circuit.members):
-        return True
-    own, other = circuit.device.tag, each.tag
-    return each.kind in VALVES and own is not None and other is not None and own.suffix == other.suffix
+def _drives(driver: Installed, valve: Installed) -> bool:
+    own, other = driver.tag, valve.tag
+    return valve is not driver and own is not None and other is not None and own.suffix == other.suffix
 
 
 def _moved(position: str | None) -> str | None:

@@ -57,6 +57,8 @@ _WIDTHS: Final = {
     Symbol.CARD: 19.0,
 }
 _DEVICE_TERMINAL_MM: Final = 7.0
+_SERIES_RADIUS_MM: Final = 3.9
+"""Of a device that one conductor goes through: the next passes beneath it."""
 
 CONTINUES: Final = "continues below"
 CONTINUED: Final = "continued from above"
@@ -243,7 +245,8 @@ def _station(
 ) -> Iterable[Shape]:
     heavy = THICK_MM if station.symbol in (Symbol.BARRIER, Symbol.CARD) else THIN_MM
     yield Box(place.left, place.top, place.right, place.bottom, heavy)
-    inner = Bounds(place.left + PAD_X, place.top, place.right - PAD_X, lanes_top)
+    head_ends = lanes_top - 1.4 if station.symbol is Symbol.IN_SERIES else lanes_top
+    inner = Bounds(place.left + PAD_X, place.top, place.right - PAD_X, head_ends)
     if station.name is None:
         yield _line_of(station.symbol.value, inner, place.top + 0.6, CAPTION, "centre")
         yield _to_write(inner.left, inner.right, place.top + 6.0)
@@ -264,11 +267,12 @@ def _station(
 def _said_at(station: Station, path: Path) -> Iterable[str]:
     if station.device is not None:
         kind = station.device.kind
-        code = station.device.record.device_type
+        in_series = station.symbol is Symbol.IN_SERIES
+        code = None if in_series else station.device.record.device_type
         if path.supply and station.symbol is Symbol.DEVICE:
             yield f"supply {path.supply}"
         yield from (text for text in (kind.value if kind else None, code) if text)
-        if station.symbol is Symbol.IN_SERIES and kind is Kind.INDICATOR:
+        if in_series and kind is Kind.INDICATOR:
             diode = station.device.type.bypass_diode if station.device.type is not None else None
             yield {True: "diode across it", False: "no diode", None: "diode: not given"}[diode]
     yield from station.lines
@@ -318,25 +322,38 @@ def _device(
     station: Station, place: Bounds, before: Stretch | None, behind: Stretch | None, lanes_top: float, lanes: int
 ) -> Iterable[Shape]:
     assert station.device is not None
-    series = station.symbol is Symbol.IN_SERIES
+    if station.symbol is Symbol.IN_SERIES:
+        yield from _in_series(station.device, place, lanes_top, lanes)
+        return
     middle = lanes_top + lanes * PITCH_MM / 2.0
-    edge = _DEVICE_TERMINAL_MM + 1.4 if series else 0.8
-    right = place.right - (_DEVICE_TERMINAL_MM + 1.4)
-    yield from _bubble(
-        station.device, (place.left + edge + right) / 2.0, middle, min(RADIUS_MM, (right - place.left - edge) / 2.0)
-    )
+    inside = place.right - (_DEVICE_TERMINAL_MM + 1.4)
+    radius = min(RADIUS_MM, (inside - place.left - 0.8) / 2.0)
+    yield from _bubble(station.device, (place.left + 0.8 + inside) / 2.0, middle, radius)
     for lane in range(lanes):
         y = lanes_top + (lane + 0.5) * PITCH_MM
         other = behind.wires[lane] if behind is not None and lane < len(behind.wires) else None
-        one = before.wires[lane] if before is not None and lane < len(before.wires) else None
-        if other is not None and other.is_screen and other.left is None:
-            continue  # cut back and insulated in the field: it has no terminal there
-        if other is not None:
+        # A screen without a terminal is cut back and insulated in the field.
+        if other is not None and not (other.is_screen and other.left is None):
             yield from _box(place.right - 0.8 - _DEVICE_TERMINAL_MM, place.right - 0.8, other.left, y)
             yield Line(place.right - 0.8, y, place.right, y, THIN_MM)
-        if series and one is not None and not one.ends_at:
-            yield from _box(place.left + 0.8, place.left + 0.8 + _DEVICE_TERMINAL_MM, one.right, y)
-            yield Line(place.left, y, place.left + 0.8, y, THIN_MM)
+
+
+def _in_series(device: Installed, place: Bounds, lanes_top: float, lanes: int) -> Iterable[Shape]:
+    """Yield a device that one conductor goes through; the others pass it by."""
+    y = lanes_top + PITCH_MM / 2.0
+    x = (place.left + place.right) / 2.0
+    yield from _bubble(device, x, y, _SERIES_RADIUS_MM)
+    for left, right, edge in (
+        (place.left + 0.8, place.left + 0.8 + _DEVICE_TERMINAL_MM, place.left),
+        (place.right - 0.8 - _DEVICE_TERMINAL_MM, place.right - 0.8, place.right),
+    ):
+        yield from _box(left, right, None, y)
+        yield Line(edge, y, left if edge == place.left else right, y, THIN_MM)
+    yield Line(place.left + 0.8 + _DEVICE_TERMINAL_MM, y, x - _SERIES_RADIUS_MM, y, THIN_MM)
+    yield Line(x + _SERIES_RADIUS_MM, y, place.right - 0.8 - _DEVICE_TERMINAL_MM, y, THIN_MM)
+    for lane in range(1, lanes):
+        y = lanes_top + (lane + 0.5) * PITCH_MM
+        yield Line(place.left, y, place.right, y, THIN_MM)
 
 
 def _bubble(each: Installed, x: float, y: float, radius: float) -> Iterable[Shape]:
@@ -490,7 +507,12 @@ def _boundary(room: Bounds, height: float, left: float, width: float, classifica
     if classification:
         yield _line_of(printable(classification), here, top, PLAIN, "right")
     beyond = Bounds(x + 1.0, top, left + width - EDGE_MM, height)
-    yield _line_of("beyond, by the area drawing:", beyond, top, CAPTION)
-    start = beyond.left + width_mm("beyond, by the area drawing:", CAPTION) + 1.0
+    words = next((text for text in _BEYOND if width_mm(text, CAPTION) + 12.0 < beyond.right - beyond.left), _BEYOND[-1])
+    yield _line_of(words, beyond, top, CAPTION)
+    start = beyond.left + width_mm(words, CAPTION) + 1.0
     if start < beyond.right - 5.0:
         yield _to_write(start, beyond.right, height - 0.9)
+
+
+_BEYOND: Final = ("beyond, by the area drawing:", "beyond:")
+"""What stands there is not in the list, and is left to be written in."""

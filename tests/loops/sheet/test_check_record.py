@@ -124,3 +124,15 @@ def test_of_two_valves_each_coil_has_its_own() -> None:
 def test_a_lamp_has_no_air() -> None:
     rows = [{"tag": "XL-1", "kind": "lamp", "I/O type": "DO", "I/O address": "1"}]
     assert [what for _, what, _, _ in tried(rows)] == ["energised", "de-energised"]
+
+
+def test_of_two_valves_on_one_output_each_has_its_own() -> None:
+    rows = [
+        {"tag": f"TY-1{letter}", "kind": "positioner", "signal": "4-20 mA", "I/O type": "AO", "I/O address": "1"}
+        for letter in "AB"
+    ]
+    rows += [{"tag": "TV-1A", "failure position": "FC"}, {"tag": "TV-1B", "failure position": "FO"}]
+    assert [(device, expect) for device, what, _, expect in tried(rows) if what == "signal fails"] == [
+        ("TY-1A", "valve closed"),
+        ("TY-1B", "valve open"),
+    ]

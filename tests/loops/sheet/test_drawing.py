@@ -14,6 +14,7 @@ from loops.sheet.layout import LEFT, TOP, WIDTH, sheet_pages
 from loops.sheet.pack import sheets_of
 from loops.sheet.path import Path, path_of
 from loops.sheet.shapes import GREY, Bounds, Box, Circle, Line, Page, Shape, Text, expanded, lowered
+from tests.loops.sheet import gallery
 from tests.loops.sheet.geometry import inside, troubles, words
 from tests.loops.sheet.plants import crowded, works
 from tests.loops.sheet.test_path import AREAS, DEVICE, LISTED, TOLD, TYPES, Row, row
@@ -75,8 +76,23 @@ def drawn(path: Path) -> list[tuple[float, tuple[Shape, ...]]]:
     ]
 
 
+def test_a_diode_across_an_indicator_is_said() -> None:
+    (path,) = paths(gallery.plant_of("indicator in series")).values()
+    ((_, shapes),) = drawn(path)
+    assert "diode across it" in [shape.text for shape in shapes if isinstance(shape, Text)]
+
+
+def test_the_gallery_has_a_sheet_of_every_kind() -> None:
+    circuits = {kind: list(paths(gallery.plant_of(kind)).values()) for kind in gallery.KINDS}
+    assert all(circuits.values())
+    assert len(circuits["solenoid with its valve and switches"]) == 3
+    assert len(circuits["three voting"]) == 3
+    assert len(circuits["flow by orifice"]) == 2
+
+
 def all_paths() -> list[tuple[str, Path]]:
     plants = {**PLANTS, "works": works(), "crowded": crowded()}
+    plants |= {kind: gallery.plant_of(kind) for kind in gallery.KINDS}
     return [
         (f"{name}: {circuit}"[:40], path) for name, plant in plants.items() for circuit, path in paths(plant).items()
     ]
