@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import dataclasses
 import re
-from collections import defaultdict
+from collections import Counter, defaultdict
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from types import MappingProxyType
@@ -288,7 +288,7 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         as_written = reading_of(written)
         return as_written if match_key(as_written) == match_key(reading) else reading
 
-    fitter = _Fitter(data, types, {key: area for key, area in areas.items() if key not in areas_twice})
+    fitter = _Fitter(data, types, {key: area for key, area in areas.items() if key not in areas_twice}, index)
     grouped, alone = _same_tag(index, reading_of)
     placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
     for rows in grouped:
@@ -480,13 +480,18 @@ def _one_or_several(
     rows = sorted(rows, key=_contents)
     name = _called(rows[0], profile)
     merged: list[list[Instrument]] = []
+    # Rows that say the same agree with the same rows: one of them is asked for all.
+    said: list[dict[tuple[Any, ...], Instrument]] = []
     for row in rows:
-        for group in merged:
-            if all(rows_agree(row, other) for other in group):
+        saying = _saying(row)
+        for group, others in zip(merged, said, strict=True):
+            if saying in others or all(rows_agree(row, other) for other in others.values()):
                 group.append(row)
+                others.setdefault(saying, row)
                 break
         else:
             merged.append([row])
+            said.append({saying: row})
     placed: list[tuple[Instrument, TagReading | None, tuple[Instrument, ...], str]] = []
     for number, group in enumerate(merged, start=1):
         called = name if number == 1 else f"{name} ({number})"
@@ -505,6 +510,12 @@ def disagreements(one: Instrument, other: Instrument) -> tuple[str, ...]:
             f"type.{name}" for name in _TYPE_FIELDS if not same_value(getattr(one.own, name), getattr(other.own, name))
         )
     return found
+
+
+def _saying(row: Instrument) -> tuple[Any, ...]:
+    """Return what `rows_agree` compares of a row, as it is written."""
+    own = None if row.own is None else tuple(repr(getattr(row.own, name)) for name in _TYPE_FIELDS)
+    return (*(repr(getattr(row, name)) for name in COMPARED), own)
 
 
 def rows_agree(one: Instrument, other: Instrument) -> bool:
@@ -690,7 +701,14 @@ class _Draft:
 class _Fitter:
     """Joins a record with its device type, its area and its marking."""
 
-    def __init__(self, data: PlantData, types: Mapping[str, DeviceType], areas: Mapping[str, Area]) -> None:
+    def __init__(
+        self,
+        data: PlantData,
+        types: Mapping[str, DeviceType],
+        areas: Mapping[str, Area],
+        rows: Iterable[Instrument],
+    ) -> None:
+        self._spelt = _spellings(rows)
         self._data = data
         self._types = types
         self._areas = areas
@@ -816,11 +834,20 @@ class _Fitter:
         key = _key(text)
         area = self._made.get(key)
         if area is None:
-            made = area_from_classification(text, own_column=own_column)
+            made = area_from_classification(self._spelt.get(key, text), own_column=own_column)
             if made is None:
                 return None
             area = self._made[key] = made
         return area
+
+
+def _spellings(rows: Iterable[Instrument]) -> dict[str, str]:
+    """Return how each text of an area is spelt: as most rows have it, whatever their order."""
+    counts = Counter(text for row in rows for text in (row.area_classification, row.area) if text)
+    found: dict[str, str] = {}
+    for text in sorted(counts, key=lambda text: (-counts[text], text)):
+        found.setdefault(_key(text), text)
+    return found
 
 
 def _signals(rows: tuple[Instrument, ...]) -> tuple[Instrument, ...]:

@@ -71,6 +71,7 @@ _FIELD_ORDER: Final = {
 }
 _WITH_DEVICE: Final = 1
 _WIRES: Final = re.compile(r"\b([234])[ -]?(?:wire|leiter|fils|draht)|\b(two|three|four)[ -]wire", re.IGNORECASE)
+_MOST_SIGNALS: Final = 64
 _WIRE_WORDS: Final = {"two": 2, "three": 3, "four": 4}
 _LOOP_POWERED: Final = re.compile(r"\b(?:loop|2[ -]?wire|two[ -]?wire|2l)\b", re.IGNORECASE)
 
@@ -347,6 +348,8 @@ _ADDRESSES: Final = re.compile(r" ?[,;\n] ?| / | & | \+ ")
 def _one_an_address(row: Instrument) -> tuple[Instrument, ...]:
     """Part a row whose cell holds several addresses: each is a signal, with its part of the I/O type."""
     addresses = [part for part in _ADDRESSES.split(row.io_address or "") if part.strip()]
+    if len(addresses) > _MOST_SIGNALS:
+        addresses = [row.io_address or ""]  # no device has so many; it is one text that says something else
     if len(addresses) < 2:
         return (row,)
     kinds = io_types(row.io_type)
@@ -554,7 +557,7 @@ def _circuits(
             riders[id(host)].append(each)
     cables = _cables_of_terminations(plant)
     barriers: dict[str, tuple[Installed, ...]] = {}
-    taken: set[str] = set()
+    taken: dict[str, int] = {}
     called: list[str] = [""] * len(made)
     # A loop's number before the tag of a pump that is called alike.
     for with_number in (True, False):
@@ -571,13 +574,14 @@ def _circuits(
     )
 
 
-def _free(name: str, taken: set[str]) -> str:
-    """Return a name that no circuit has yet, and take it."""
-    free, count = name, 1
+def _free(name: str, taken: dict[str, int]) -> str:
+    """Return a name that no circuit has yet, and take it; beside each name stands how far its copies are counted."""
+    free, count = name, taken.get(name, 1)
     while free in taken:
         count += 1
         free = f"{name} ({count})"
-    taken.add(free)
+    taken[name] = count
+    taken.setdefault(free, 1)
     return free
 
 

@@ -357,6 +357,9 @@ def unit_for(column: Column, text: str) -> Unit | str | None:
     return None
 
 
+MOST_CHARACTERS: Final = 1000
+"""The longest heading, all its levels together; a cell holds 32,767, and every row may be a heading's."""
+
 _NO_UNITS: Final = frozenset(["l", "h", "ll", "hh", "min", "max", "no", "in", "from", "to", "at"])
 
 
@@ -399,7 +402,9 @@ class Finder:
         self._known: dict[Levels, tuple[Candidate, ...]] = {}
 
     def candidates(self, levels: Levels) -> tuple[Candidate, ...]:
-        """Return what a heading may be by its words."""
+        """Return what a heading may be by its words; a text longer than `MOST_CHARACTERS` is none."""
+        if len(levels.joined) > MOST_CHARACTERS:
+            return ()
         known = self._known.get(levels)
         if known is None:
             known = self._known[levels] = tuple(self._candidates(levels, alike=False))
@@ -407,6 +412,8 @@ class Finder:
 
     def candidates_or_alike(self, levels: Levels) -> tuple[Candidate, ...]:
         """Return what a heading may be by its words, else by likeness."""
+        if len(levels.joined) > MOST_CHARACTERS:
+            return ()
         return self.candidates(levels) or tuple(self._candidates(levels, alike=True))
 
     def unit_of(self, levels: Levels, column: Column) -> tuple[Unit | None, str]:
