@@ -419,7 +419,7 @@ def parameters_in_part(circuit: Circuit, plant: Plant) -> Verdict:
     found: list[Found | Review] = []
     blank: dict[str, None] = {}
     for item in of.fed:
-        if item.how == "unknown":
+        if item.how in ("unknown", "unmarked", "pending"):
             blank[item.missing] = None
         if item.how not in ("intrinsically safe", "several"):
             continue

@@ -299,7 +299,10 @@ def several_sources(circuit: Circuit, plant: Plant) -> Verdict:
     if of.concerns is None:
         return Unchecked("area")
     if len(of.sources) < 2:
-        return Unchecked(of.source_missing) if of.source_missing else None
+        missing = [of.source_missing] if of.source_missing else []
+        # Whether it feeds this circuit or another its marking would say.
+        missing += [item.missing for item in of.items if item.missing and _states_volts(item)]
+        return Unchecked(*dict.fromkeys(missing)) if missing else None
     return Review(
         values={"count": len(of.sources), "sources": ", ".join(map(_with_volts, of.sources))},
         fields=("barrier",),
@@ -307,6 +310,10 @@ def several_sources(circuit: Circuit, plant: Plant) -> Verdict:
         wanted="one, or the combination worked out",
         cells=tuple(cell for source in of.sources for cell in source.entry.cells("uo_v")),
     )
+
+
+def _states_volts(item: Item) -> bool:
+    return item.installed.type is not None and bool(item.installed.type.uo_v)
 
 
 def _with_volts(source: ExSource) -> str:

@@ -276,6 +276,8 @@ def test_a_source_marked_for_the_divisions_groups_states_their_own_pairs() -> No
         ({}, {}, "clear"),
         ({"Pi mW": ""}, {}, "review: PT-101 states Ui, Ii, Ci, Li and no Pi"),
         ({"Pi mW": "n/a"}, {}, "clear"),
+        ({"Pi mW": "", "Ex marking": ""}, {}, "unchecked: Ex marking"),
+        ({"Pi mW": "", "Ex marking": "Ex db IIC T4 Gb"}, {}, "clear"),
         ({"Ii mA": "n/a"}, {}, "clear"),
         ({"Ui V": "n/a"}, {}, "review: PT-101 states Ii, Pi, Ci, Li and no Ui"),
         ({"Ci nF": "n/a"}, {}, "review: PT-101 states Ui, Ii, Pi, Li and no Ci"),

@@ -241,6 +241,7 @@ def test_without_a_source_the_level_is_not_known() -> None:
         ({"card": "AI8"}, {}, (CARD,), "clear"),
         ({}, {"Uo V": "5.4", "Io mA": "30"}, (), "review: 2 sources on one circuit: ZB (28 V), PT-101 (5.4 V)"),
         ({}, {"Uo V": "0"}, (), "clear"),
+        ({}, {"Uo V": "5.4", "Ex marking": ""}, (), "unchecked: Ex marking"),
         ({}, {"Uo V": "5.4", "Ex marking": "Ex ia [ia Ga] IIC T4 Ga"}, (), "clear"),
         ({"tag": "TT-101"}, {"Uo V": "5.4", "Io mA": "30"}, (), "clear"),
     ],
