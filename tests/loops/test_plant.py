@@ -246,3 +246,14 @@ def test_a_part_takes_what_is_wrong_with_whole_columns_from_the_whole() -> None:
     part.stand_in(whole)
     assert part.whole_finding("TAG90", lambda plant: "asked again") == "wrong"
     assert part.whole_finding("TAG91", lambda plant: "asked") == "asked"
+
+
+@pytest.mark.parametrize("order", [(0, 1, 2, 3), (3, 2, 1, 0), (1, 3, 0, 2)])
+def test_an_area_of_the_rows_own_cells_is_spelt_as_most_have_it_in_any_order(order: tuple[int, ...]) -> None:
+    spelt = ("zone 1 iib t3", "Zone 1 IIB T3", "Zone 1  IIB T3", "Zone 1 IIB T3")
+    rows = [f"PT-{number}|Feed|{spelt[number]}" for number in order]
+    plant = assemble(
+        records_of_sheets([sheet("\n".join(["Tag|Service|Area classification", *rows]), name="Index")], KINDS)
+    )
+    assert {each.area.code for each in plant.instruments if each.area is not None} == {"Zone 1 IIB T3"}
+    assert len(plant.instruments) == 4
