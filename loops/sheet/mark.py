@@ -21,6 +21,8 @@ Parts = Mapping[str, str]
 """What a sheet has, by the names that people see, with the digest of each."""
 Marks = Mapping[str, Parts]
 """The parts of each loop's sheet, by the loop's number."""
+Known = Mapping[str, Parts | str]
+"""What is known of earlier sheets: the parts, or the marks of the whole alone."""
 
 
 class NoMarks(Exception):
@@ -76,14 +78,16 @@ class Change(NamedTuple):
         return "new sheet" if self.new else ", ".join(self.parts)
 
 
-def change_of(parts: Parts, before: Parts | None) -> Change | None:
-    """Return what changed of a sheet; None where nothing did.
+def change_of(parts: Parts, before: Parts | str | None) -> Change | None:
+    """Return what changed of a sheet; None where nothing did. Where only the whole's mark is known, no part is told.
 
     >>> change_of({"devices": "a", "settings": "b"}, {"devices": "a", "settings": "c", "remarks": "d"})
     Change(parts=('settings', 'remarks (gone)'), new=False)
     """
     if before is None:
         return Change((), new=True)
+    if isinstance(before, str):
+        return None if mark_of(parts) == before else Change(("content",))
     changed = [name for name, digest in parts.items() if name in before and before[name] != digest]
     added = [f"{name} (new)" for name in parts if name not in before]
     gone = [f"{name} (gone)" for name in before if name not in parts]
@@ -104,8 +108,8 @@ def packed(marks: Marks) -> bytes:
     return zlib.compress(json.dumps(marks, ensure_ascii=True, separators=(",", ":")).encode("ascii"), 6)
 
 
-def marks_in(path: Path) -> Marks:
-    """Return the marks of the sheets in a pack (.pdf) or an audit (findings.json).
+def marks_in(path: Path) -> Known:
+    """Return the marks of the sheets in a pack (.pdf), part by part, or of an audit (findings.json), of the whole.
 
     Raises
     ------
@@ -149,5 +153,7 @@ def _read(path: Path, data: bytes) -> Any:
 
 def _are_marks(told: Any) -> bool:
     return isinstance(told, dict) and all(
-        isinstance(parts, dict) and all(isinstance(digest, str) for digest in parts.values()) for parts in told.values()
+        isinstance(parts, str)
+        or (isinstance(parts, dict) and all(isinstance(digest, str) for digest in parts.values()))
+        for parts in told.values()
     )

@@ -20,7 +20,7 @@ from loops.sheet.choice import Choice, chosen
 from loops.sheet.content import sheet_content, source_of
 from loops.sheet.index import TITLE, entries_of, lay_index, outline_of
 from loops.sheet.layout import INDEX, PAGE_HEIGHT, PAGE_WIDTH, sheet_pages
-from loops.sheet.mark import TYPE, Marks, Parts, change_of, mark_of, packed, parts_of
+from loops.sheet.mark import TYPE, Known, Marks, Parts, change_of, mark_of, packed, parts_of
 from loops.sheet.pack import LoopOnPaper, Sheets, sheets_of
 from loops.sheet.shapes import BLACK, Box, Circle, Line, Link, Page, Shape, Style, Text, Use, group
 
@@ -48,7 +48,7 @@ def write_sheets(
     notes: Mapping[str, Sequence[str]] | None = None,
     on_sheet: Callable[[int, int], None] | None = None,
     choice: Choice = EVERY,
-    before: Marks | None = None,
+    before: Known | None = None,
 ) -> Drawn:
     """Write the sheets of the loops that have an electrical signal; the same bytes for the same plant and choice.
 
@@ -128,7 +128,7 @@ class Drawn(NamedTuple):
     gone: tuple[str, ...] = ()
 
 
-def _changed(sheets: Sheets, plant: Plant, before: Marks, changes: dict[str, str]) -> tuple[Sheets, dict[str, Parts]]:
+def _changed(sheets: Sheets, plant: Plant, before: Known, changes: dict[str, str]) -> tuple[Sheets, dict[str, Parts]]:
     """Return the sheets that are not as they were, and the marks of the others; fill in what changed."""
     drawn: list[LoopOnPaper] = []
     unchanged: dict[str, Parts] = {}

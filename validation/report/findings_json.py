@@ -38,7 +38,14 @@ def counts(audit: Audit) -> dict[str, int]:
     }
 
 
-def as_data(audit: Audit, *, digests: Mapping[str, str], version: str, inputs: Mapping[str, str]) -> dict[str, Any]:
+def as_data(
+    audit: Audit,
+    *,
+    digests: Mapping[str, str],
+    version: str,
+    inputs: Mapping[str, str],
+    sheets: Mapping[str, str] | None = None,
+) -> dict[str, Any]:
     """Return the audit as plain data.
 
     Parameters
@@ -51,6 +58,8 @@ def as_data(audit: Audit, *, digests: Mapping[str, str], version: str, inputs: M
         Ferrule's own.
     inputs
         Digests of the files that were read, by name.
+    sheets
+        The content marks of the loop sheets, by the loop's number; None where none were drawn.
     """
     plant = audit.plant
     return {
@@ -86,6 +95,7 @@ def as_data(audit: Audit, *, digests: Mapping[str, str], version: str, inputs: M
         ],
         "assumptions": list(audit.assumptions),
         "outputs": dict(digests),
+        **({} if sheets is None else {"sheets": dict(sheets)}),
     }
 
 

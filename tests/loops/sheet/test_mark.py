@@ -143,5 +143,11 @@ def test_a_file_without_marks_is_named(tmp_path: Path, content: bytes, said: str
 
 def test_findings_hold_marks_too(tmp_path: Path) -> None:
     path = tmp_path / "findings.json"
-    path.write_text(json.dumps({"sheets": {"P-1": {"devices": "0a"}}}), encoding="utf-8")
-    assert marks_in(path) == {"P-1": {"devices": "0a"}}
+    path.write_text(json.dumps({"sheets": {"P-1": "0a"}}), encoding="utf-8")
+    assert marks_in(path) == {"P-1": "0a"}
+
+
+def test_the_mark_of_the_whole_tells_that_something_changed() -> None:
+    told = parts(plant_of())["P-101"]
+    assert change_of(told, mark_of(told)) is None
+    assert str(change_of(told, "00000000")) == "content"

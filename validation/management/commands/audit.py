@@ -14,6 +14,7 @@ from django.core.management.base import BaseCommand
 
 from instruments import VERSION
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.console import for_console
 from instruments.workbook.files import read_lists
 from instruments.workbook.lists import NoTags, SheetReport
 from instruments.workbook.mapping import mapping_of
@@ -37,6 +38,7 @@ from validation.what_if import Change, WhatIf, changed_lists, read_changes, what
 KINDS = (*INSTRUMENT_SHEETS, *LOOP_SHEETS)
 FINISHED, FOUND, UNREADABLE, BROKEN = 0, 1, 2, 3
 MOST_SAID = 20
+HOW_TO_MAP = "see README.md, Mend how a list was read"
 MOST_WANTED = 4
 
 
@@ -103,7 +105,9 @@ class Command(BaseCommand):
                 folder = Path(options["to"])
                 with Outputs(folder, keep=paths) as outputs:
                     self._write(outputs, result, inputs, options, progress)
-            except (UnreadableFile, NoTags, CannotWrite) as error:
+            except NoTags as error:
+                return self._cannot(f"{error}; or tell with --mapping which heading is the tag: {HOW_TO_MAP}")
+            except (UnreadableFile, CannotWrite) as error:
                 return self._cannot(str(error))
             except CannotStand as error:
                 return self._cannot(f"{options['what_if']}: {error}")
@@ -112,7 +116,7 @@ class Command(BaseCommand):
         self._say(result, Path(options["to"]), outputs)
         if supposed is not None:
             for line in what_if_lines(supposed):
-                self.stdout.write(line)
+                self._out(line)
         if result.broken or (supposed is not None and supposed.broken):
             return BROKEN
         if options["fail_on"]:
@@ -131,20 +135,19 @@ class Command(BaseCommand):
     ) -> None:
         from validation.report.exceptions import write_exceptions
 
+        marks: dict[str, str] | None = None
         progress.stage("writing exceptions.xlsx")
         outputs.add("exceptions.xlsx", lambda path: write_exceptions(result, path))
         if not options["no_annotated"]:
             self._annotate(outputs, result, progress)
         if not options["no_sheets"]:
             progress.stage("drawing loop-sheets.pdf")
-            outputs.add(
-                "loop-sheets.pdf",
-                lambda path: _draw(result, path, progress),
-            )
+            marks = {}
+            outputs.add("loop-sheets.pdf", lambda path: marks.update(_draw(result, path, progress)))
         mapping = mapping_text(mapping_of(result.plant.lists.sheets), KINDS)
         outputs.add("mapping.toml", lambda path: _write_text(path, mapping))
         digests = dict(outputs.digests)
-        text = as_text(result, digests=digests, version=VERSION, inputs=inputs)
+        text = as_text(result, digests=digests, version=VERSION, inputs=inputs, sheets=marks)
         outputs.add("findings.json", lambda path: _write_text(path, text))
 
     def _annotate(self, outputs: Outputs, result: Audit, progress: Progress) -> None:
@@ -160,13 +163,19 @@ class Command(BaseCommand):
             else:
                 self._annotated.extend(f"{name}: {line}" for line in made[0].lines)
 
+    def _out(self, text: str) -> None:
+        self.stdout.write(for_console(text))
+
+    def _err(self, text: str) -> None:
+        self.stderr.write(for_console(text))
+
     def _cannot(self, text: str) -> int:
-        self.stderr.write(f"audit: {text}")
+        self._err(f"audit: {text}")
         return UNREADABLE
 
     def _say(self, result: Audit, folder: Path, outputs: Outputs) -> None:
         figures = counts(result)
-        say = self.stdout.write
+        say = self._out
         say(
             f"{figures['tags']} tags, {figures['loops']} loops, {figures['circuits']} circuits from "
             f"{figures['rows']} rows; {figures['cells_read']} cells read, {figures['cells_unread']} unread"
@@ -185,16 +194,16 @@ class Command(BaseCommand):
             say(f"heading guessed: {note}")
         for problem in [each for each in result.plant.lists.problems if each.subject == "plant"][:MOST_SAID]:
             nearest = f"; the nearest: {', '.join(problem.readings)}" if problem.readings else ""
-            self.stderr.write(f"plant: {problem.title} = {problem.text}: {problem.reason}{nearest}")
+            self._err(f"plant: {problem.title} = {problem.text}: {problem.reason}{nearest}")
         notes = result.plant.lists.mapping_notes
         for misfit in notes[:MOST_SAID]:
-            self.stderr.write(f"mapping: {misfit}")
+            self._err(f"mapping: {misfit}")
         if len(notes) > MOST_SAID:
-            self.stderr.write(f"mapping: and {len(notes) - MOST_SAID} more; see the Summary of exceptions.xlsx")
+            self._err(f"mapping: and {len(notes) - MOST_SAID} more; see the Summary of exceptions.xlsx")
         for each in result.broken[:5]:
-            self.stderr.write(f"rule {each.rule} could not be run on {each.subject}: {each.error}")
+            self._err(f"rule {each.rule} could not be run on {each.subject}: {each.error}")
         if len(result.broken) > 5:
-            self.stderr.write(f"and {len(result.broken) - 5} more; see findings.json")
+            self._err(f"and {len(result.broken) - 5} more; see findings.json")
         say(f"written to {folder}: {', '.join(outputs.digests)}")
 
 
@@ -211,6 +220,8 @@ def _changes(name: str | None) -> tuple[Change, ...]:
 
 def _digest(path: Path) -> str:
     try:
+        if path.exists() and not (path.is_file() or path.is_dir()):
+            raise UnreadableFile(str(path), "", "is no ordinary file")  # a pipe may never end
         with path.open("rb") as file:
             return hashlib.file_digest(file, "sha256").hexdigest()
     except IsADirectoryError as error:
@@ -229,16 +240,19 @@ def _guesses(sheet: SheetReport) -> list[str]:
     ]
 
 
-def _draw(result: Audit, path: Path, progress: Progress) -> None:
+def _draw(result: Audit, path: Path, progress: Progress) -> dict[str, str]:
+    """Draw the sheets; return their content marks."""
+    from loops.sheet.mark import mark_of
     from loops.sheet.pdf import write_sheets
     from validation.report.sheet_notes import notes_by_loop
 
-    write_sheets(
+    drawn = write_sheets(
         result.plant,
         path,
         notes=notes_by_loop(result),
         on_sheet=lambda number, of: progress.step("sheets", number, of),
     )
+    return {loop: mark_of(parts) for loop, parts in drawn.marks.items()}
 
 
 def _annotate(annotations: Annotations, file: str, made: list[Annotated], path: Path) -> None:
