@@ -115,3 +115,43 @@ def test_a_mapping_that_contradicts_is_refused_with_its_line(
     assert err.startswith(begin + said.format(tag=tag))
     assert err.count("\n") == 1
     assert not (tmp_path / "two").exists()
+
+
+def test_a_what_if_is_said_after_the_audit(listed: Path, tmp_path: Path) -> None:
+    changes = tmp_path / "what-if.toml"
+    changes.write_text('[[change]]\nrows = "PT-103"\nset = { LRV = "3 barg", URV = "3 barg" }\n', encoding="utf-8")
+    status, out, _ = run(listed, "--to", tmp_path / "out", "--what-if", changes)
+    lines = out.splitlines()
+    said = lines[lines.index("what if:") :]
+    assert status == 0
+    assert said[1].startswith("  Instruments PT-103: LRV becomes 3 barg, URV becomes 3 barg (was LRV ")
+    assert any(line.startswith("  fault RNG01 PT-103: ") for line in said)
+    assert any(line.startswith("findings that go: ") for line in said)
+    # The outputs are those of the list as it is.
+    told = json.loads((tmp_path / "out" / "findings.json").read_text(encoding="utf-8"))
+    assert "RNG01" not in {each["rule"] for each in told["findings"]}
+
+
+@pytest.mark.parametrize(
+    ("text", "says"),
+    [
+        ('[[change]]\nrows = "PT-9"\nset = { URV = "1 barg" }\n', "no row of Instruments is PT-9"),
+        ('[[change]]\nrows = "PT-101"\nset = { colour = "red" }\n', "Instruments has no column colour"),
+        ('[[change]]\nrows = "PT-101"\nset = { URV = "wide" }\n', "URV cannot be 'wide'"),
+        ("[[change", "it is no TOML"),
+    ],
+)
+def test_a_what_if_that_cannot_be_is_refused_before_anything_is_written(
+    listed: Path, tmp_path: Path, text: str, says: str
+) -> None:
+    changes = tmp_path / "what-if.toml"
+    changes.write_text(text, encoding="utf-8")
+    status, _, err = run(listed, "--to", tmp_path / "out", "--what-if", changes)
+    assert (status, err.startswith(f"audit: {changes}: {says}")) == (2, True)
+    assert not (tmp_path / "out").exists()
+
+
+def test_a_what_if_that_is_not_there_is_said(listed: Path, tmp_path: Path) -> None:
+    status, _, err = run(listed, "--to", tmp_path / "out", "--what-if", tmp_path / "none.toml")
+    assert status == 2
+    assert "none.toml" in err
