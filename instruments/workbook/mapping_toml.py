@@ -239,14 +239,14 @@ class _Reader:
         if not sheets:
             self._refuse("says nothing of any sheet: each begins with [[sheet]]")
         read = tuple(self._sheet(number, each) for number, each in enumerate(sheets))
-        seen: dict[tuple[str, str], int] = {}
+        seen: dict[tuple[str, str], list[MappedSheet]] = {}
         for each in read:
-            key = (folded(each.file), folded(each.sheet))
-            # A page of tags may stand below another on one sheet.
-            if key in seen and not each.turned:
+            before = seen.setdefault((folded(each.file), folded(each.sheet)), [])
+            # A page of tags may stand below another on one sheet, and a table beside another.
+            if before and not each.turned and not all(_stands_beside(each, other) for other in before):
                 self.line, self.entry = each.line, ""
-                self._refuse(f"{each.file}, sheet '{each.sheet}' stands in line {seen[key]} already")
-            seen[key] = each.line
+                self._refuse(f"{each.file}, sheet '{each.sheet}' stands in line {before[-1].line} already")
+            before.append(each)
         return Mapping(sheets=read, source=self.file)
 
     # --- a sheet --------------------------------------------------------------------------------------------------
@@ -468,6 +468,12 @@ class _Reader:
         if found is None:
             self._refuse(f"{name} is one of {', '.join(map(_text, known))}, not {_text(text)}")
         return found
+
+
+def _stands_beside(one: MappedSheet, other: MappedSheet) -> bool:
+    """Whether two tables of one sheet have no column in common."""
+    columns = [{column.index for column in each.columns} for each in (one, other)]
+    return all(columns) and columns[0].isdisjoint(columns[1])
 
 
 def _nearest(text: str, known: Sequence[str]) -> str:

@@ -262,3 +262,17 @@ def test_no_such_file(tmp_path: Path) -> None:
         read_mapping(tmp_path / "none.toml", KINDS)
     with pytest.raises(UnreadableFile, match="cannot be opened"):
         read_mapping(tmp_path, KINDS)
+
+
+def test_two_tables_of_one_sheet_side_by_side(tmp_path: Path) -> None:
+    table = """[[sheet]]
+file = "a.xlsx"
+sheet = "Index"
+read_as = "Instruments"
+heading_rows = [1]
+columns = [{ cell = "A1", heading = "Tag", field = "tag" }]
+"""
+    one, two = reading(tmp_path, table + table.replace('"A1"', '"C1"')).sheets
+    assert [one.columns[0].index, two.columns[0].index] == [0, 2]
+    with pytest.raises(UnreadableFile, match=r"line 7: a.xlsx, sheet 'Index' stands in line 1 already"):
+        reading(tmp_path, table + table)
