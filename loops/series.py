@@ -127,10 +127,18 @@ def carries_a_current(circuit: Circuit) -> bool:
 
 
 def is_output(circuit: Circuit) -> bool:
-    """Whether the system sends the current: an analogue output."""
+    """Whether the system sends the current: an analogue output.
+
+    What a device is goes before its I/O type: a positioner on an input is a wrong I/O type, and no transmitter.
+    """
+    kind = circuit.driven.kind
+    if kind in _DRIVES:
+        return True
+    if kind in _SENDS:
+        return False
     if circuit.kind is not None:
         return circuit.kind == ANALOGUE_OUTPUT
-    return circuit.device.kind in _DRIVES or circuit.device.kind in _VALVES
+    return kind in _VALVES
 
 
 def driven_devices(circuit: Circuit) -> tuple[Installed, ...]:

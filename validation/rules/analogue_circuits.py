@@ -235,6 +235,8 @@ def _other_card(circuit: Circuit, role: str, plant: Plant) -> tuple[Fix, ...]:
         for each in plant.once(f"cards that are {role}s", lambda whole: _cards(whole, role))
         if each.code is not None and _takes_alike(each, circuit.card, circuit)
     ]
+    used = plant.once("cards by system", _cards_by_system).get(circuit.device.record.system, frozenset())
+    others = [code for code in others if code in used] or others
     if not others:
         word = "passive" if role == "sink" else "active"
         return (Fix(text=f"{word} terminals of the card"),)
@@ -244,6 +246,15 @@ def _other_card(circuit: Circuit, role: str, plant: Plant) -> tuple[Fix, ...]:
 def _cards(plant: Plant, role: str) -> tuple[DeviceType, ...]:
     found = [each for each in plant.types.values() if each.kind is Kind.CARD and each.source_or_sink == role]
     return tuple(sorted(found, key=lambda each: each.code or ""))
+
+
+def _cards_by_system(plant: Plant) -> dict[str | None, frozenset[str]]:
+    """Return the cards that each system has: those that its circuits are on."""
+    found: dict[str | None, set[str]] = {}
+    for circuit in plant.circuits:
+        if circuit.card is not None and circuit.card.code:
+            found.setdefault(circuit.device.record.system, set()).add(circuit.card.code)
+    return {system: frozenset(codes) for system, codes in found.items()}
 
 
 def _takes_alike(other: DeviceType, card: DeviceType, circuit: Circuit) -> bool:

@@ -184,7 +184,7 @@ def _instead(circuit: Circuit, heard: Heard, least: float, plant: Plant) -> tupl
     """Return another range resistor, where one stands alone and the list holds its value."""
     found = heard.receivers
     resistor = found.range_resistor
-    if resistor is None or found.across or found.other is not None or len(circuit.receivers) != 1:
+    if resistor is None or found.across or (found.other is not None and _short_of(found.other.number, least)):
         return ()
     extra = heard.in_card.ohm if heard.in_card is not None else 0.0
     ohm = max(_USUAL_OHM, least - extra)

@@ -413,6 +413,8 @@ def test_each_side_of_an_isolator_has_a_source_of_its_own(tag: Row, isolator: Ro
         ({}, ({"code": "AO8", "kind": "card"}, POSITIONER), "unchecked: source or sink"),
         ({}, (OUTPUT, {**POSITIONER, "source or sink": "source"}),
          "finding: two sources: FY-7 and card AO8 both drive the current"),
+        # A positioner on an input is a wrong I/O type, and no transmitter with a supply of its own.
+        ({"I/O type": "AI"}, (OUTPUT, POSITIONER), "clear"),
         ({}, ({**OUTPUT, "source or sink": "sink"}, POSITIONER),
          "review: no source: FY-7 and card AO8 only take the current, and no supply is named"),
     ],
@@ -435,6 +437,15 @@ def test_two_sources_are_mended_by_a_card_of_the_other_sort() -> None:
     (there,) = asked("ELC04", _with(tag, {"card": None}), types, loops=on_loop)
     assert [(fix.sheet, fix.subject) for fix in there.fixes] == [("Loops", "FT-7")]
     assert left_after("ELC04", _with(tag, {"card": None}), types, loops=on_loop) == []
+
+
+def test_a_card_that_the_system_has_comes_before_another_systems() -> None:
+    other = {"tag": "FT-8", "signal": "4-20 mA", "I/O type": "AI", "I/O address": "2", "card": "AIP", "system": "DCS"}
+    types = (METER, ACTIVE, PASSIVE, {**PASSIVE, "code": "AAA"})
+    (found,) = asked("ELC04", {**FT, "card": "AIA", "system": "DCS"}, types, rows=(other,))
+    assert [fix.text for fix in found.fixes] == ["card AIP"]
+    (elsewhere,) = asked("ELC04", {**FT, "card": "AIA", "system": "SIS"}, types, rows=(other,))
+    assert [fix.text for fix in elsewhere.fixes] == ["card AAA, or AIP"]
 
 
 def test_no_source_is_mended_by_an_active_card_or_a_supply() -> None:
