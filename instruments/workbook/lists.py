@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from pathlib import PurePath
@@ -20,6 +21,7 @@ from instruments.workbook.number_format import as_text
 from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet
 from instruments.workbook.problem import CellProblem
 from instruments.workbook.sheet import Sheet
+from instruments.workbook.side_by_side import parted_where_tables_stand_side_by_side
 from instruments.workbook.turned import turned_where_tags_stand_across
 from instruments.workbook.words import folded
 
@@ -181,7 +183,7 @@ def records_of_sheets(
     notes: list[MappingNote] = list(found_sheets.notes) if found_sheets is not None else []
     matches = _match(sheets, kinds, mapped, notes)
     if not any(match is not None and match.kind.key == (("tag",),) for match in matches):
-        raise NoTags(_no_tags(sheets, matches))
+        raise NoTags(_no_tags(sheets, matches, files))
     entries: list[PlantEntry] = []
     for sheet, match in zip(sheets, matches, strict=True):
         if match is not None and _is_plant(match.kind):
@@ -212,6 +214,14 @@ def records_of_sheets(
         if match.kind.key == (("tag",),):
             index_file = index_file or sheet.file
             columns |= match.fields | set(match.columns)
+    indexes = [
+        (sheet, match)
+        for sheet, match in zip(sheets, matches, strict=True)
+        if match is not None and match.kind.key == (("tag",),)
+    ]
+    if not any(records.get(match.kind.name) for _, match in indexes):
+        said = ", ".join(f"{PurePath(sheet.file).name}, sheet '{sheet.name}'" for sheet, _ in indexes[:12])
+        raise NoTags(f"no row stands under the headings of any list with tags ({said})")
     if row is not None:
         records["Plant"] = [row]
     return Lists(
@@ -230,15 +240,22 @@ def records_of_sheets(
 def _turned(sheets: Sequence[Sheet], kinds: Sequence[SheetKind], mapping: ListMapping | None) -> list[Sheet]:
     """Turn the sheets whose tags stand side by side, but for those that a mapping reads as they are."""
     told = find_sheets(mapping, sheets).mapped if mapping is not None else (None,) * len(sheets)
+    often = Counter((each.file, each.sheet) for each in mapping.sheets) if mapping is not None else Counter()
     return [
         each
         for sheet, mapped in zip(sheets, told, strict=True)
         for each in (
             (sheet,)
-            if mapped is not None and mapped.kind and not mapped.turned
-            else turned_where_tags_stand_across(sheet, kinds)
+            if mapped is not None and mapped.kind and not mapped.turned and often[mapped.file, mapped.sheet] == 1
+            else _as_rows(sheet, kinds)
         )
     ]
+
+
+def _as_rows(sheet: Sheet, kinds: Sequence[SheetKind]) -> tuple[Sheet, ...]:
+    """Return a sheet as lists stand, a row for each tag, in as many as it has lists."""
+    turned = turned_where_tags_stand_across(sheet, kinds)
+    return turned if turned[0].turned else parted_where_tables_stand_side_by_side(sheet, kinds)
 
 
 def _is_plant(kind: SheetKind) -> bool:
@@ -313,9 +330,9 @@ def _new_sheets(
             yield MappingNote(file=PurePath(sheet.file).name, sheet=sheet.name, text=f"is not in the mapping: {what}")
 
 
-def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None]) -> str:
+def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None], files: Sequence[str]) -> str:
     if not sheets:
-        return "no sheet was found in the files"
+        return f"no sheet was found in {', '.join(PurePath(file).name for file in files)}"
     said = "; ".join(
         f"{PurePath(sheet.file).name}, sheet '{sheet.name}': "
         + (

@@ -524,3 +524,37 @@ def test_two_columns_of_one_heading_are_asked_about_where_they_differ(
     assert [each.whole_column for each in found.problems] == [True] * len(wanted)
     # What stands in the second is kept.
     assert rows(found)[0]["other"]
+
+
+SIDE_BY_SIDE = [
+    pytest.param(
+        "INSTRUMENT LIST|||||||\nDWG MB-1001 SHEET 2|||||||\nITEM|TAG|DESCRIPTION|RANGE||ITEM|TAG|DESCRIPTION|RANGE\n"
+        "1|PT-1|Feed|0-16 barg||3|TT-3|Gas|0-100 degC\n2|PT-2|Feed|0-16 barg||4|TT-4|Gas|0-100 barx",
+        ["PT-1", "PT-2", "TT-3", "TT-4"],
+        [("I5", "TT-4", "unit 'barx' is not known")],
+        id="case12-a-drawings-tables",
+    ),
+    pytest.param(
+        "TAG|RANGE|TAG|RANGE|TAG|RANGE\nPT-1|0-1 bar|PT-3|0-2 bar|PT-5|0-3 bar\nPT-2|0-1 bar|PT-4|0-2 bar||",
+        ["PT-1", "PT-2", "PT-3", "PT-4", "PT-5"],
+        [],
+        id="case12-three-without-a-gap",
+    ),
+    pytest.param(
+        "Tag|Service|Range|Tag\nPT-1|Feed|0-1 bar|PT-1\nPT-2|Feed|0-1 bar|PT-2",
+        ["PT-1", "PT-2"],
+        [],
+        id="case12-a-tag-that-is-repeated",
+    ),
+]
+
+
+@pytest.mark.parametrize(("text", "wanted", "problems"), SIDE_BY_SIDE)
+@pytest.mark.parametrize("kind", ["xlsx", "csv"])
+def test_tables_that_stand_side_by_side_are_all_read(
+    tmp_path: Path, text: str, wanted: list[str], problems: list[tuple[str, str, str]], kind: str
+) -> None:
+    path = workbook(tmp_path / "l.xlsx", text) if kind == "xlsx" else delimited(tmp_path / "l.csv", text)
+    found = as_read(path)
+    assert (tags(found), unread(found)) == (wanted, problems)
+    assert [each.cells_filled for each in found.sheets if each.kind is None] == []
