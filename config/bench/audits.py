@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import contextlib
+import importlib
 import json
 import os
 import signal
@@ -80,14 +81,13 @@ def serve() -> None:
     os.environ.setdefault("DJANGO_SETTINGS_MODULE", "config.settings")
     import django
 
-    import loops.sheet.pdf
-    import validation.report.exceptions
-    import validation.report.sheet_notes  # noqa: F401 - what a command imports late, imported once for all
     from instruments.unit_table import unit
     from validation.management.commands import audit
     from validation.rule import load_rules
 
     django.setup()
+    for late in ("loops.sheet.pdf", "validation.report.exceptions", "validation.report.sheet_notes"):
+        importlib.import_module(late)
     unit("bar")
     load_rules()
     answers = os.fdopen(os.dup(1), "wb")

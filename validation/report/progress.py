@@ -6,6 +6,8 @@ import time
 from types import TracebackType
 from typing import Any
 
+from instruments.console import for_console
+
 
 class Progress:
     """One line that is rewritten: the stage, how far, and the time left where it can be told."""
@@ -44,5 +46,5 @@ class Progress:
 
     def _line(self, text: str) -> None:
         if self._shown:
-            self._stream.write(f"\r\x1b[2K{text}", ending="")
+            self._stream.write(f"\r\x1b[2K{for_console(text)}", ending="")
             self._stream.flush()

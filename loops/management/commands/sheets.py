@@ -14,6 +14,7 @@ from typing import TYPE_CHECKING, Any
 from django.core.management.base import BaseCommand
 
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
+from instruments.console import for_console
 from instruments.workbook.files import read_lists
 from instruments.workbook.lists import NoTags
 from instruments.workbook.reader import UnreadableFile
@@ -96,9 +97,11 @@ class Command(BaseCommand):
             return self._cannot(f"{error.filename or options['to']}: {(error.strerror or str(error)).lower()}")
         count = drawn.loops
         since = f"; {drawn.unchanged} unchanged and left out" if before is not None else ""
-        self.stdout.write(f"{count} loop{'' if count == 1 else 's'} drawn, without an audit{since}; written to {path}")
+        said = f"{count} loop{'' if count == 1 else 's'} drawn, without an audit{since}; written to {path}"
+        self.stdout.write(for_console(said))
         if drawn.gone:
-            self.stdout.write(f"no longer there: {', '.join(drawn.gone[:20])}{' ...' if len(drawn.gone) > 20 else ''}")
+            gone = f"no longer there: {', '.join(drawn.gone[:20])}{' ...' if len(drawn.gone) > 20 else ''}"
+            self.stdout.write(for_console(gone))
         return FINISHED
 
     def _progress(self) -> Callable[[int, int], None] | None:
@@ -122,7 +125,7 @@ class Command(BaseCommand):
         return show
 
     def _cannot(self, text: str) -> int:
-        self.stderr.write(f"sheets: {text}")
+        self.stderr.write(for_console(f"sheets: {text}"))
         return UNREADABLE
 
 
