@@ -267,7 +267,7 @@ _UNCLASSIFIED_PHRASES: Final = frozenset(
     }
 )  # fmt: skip
 _LIKE_A_CODE: Final = re.compile(
-    r"(?:Z|Zn)?[\s.-]?\d[\d./-]*|n\.?/?\s?a\.?|SA|NHA?|GP|nil|none|ohne|keine?|sicher|ordinary|C\d\s?D\d",
+    r"(?:Z|Zn)?[\s.-]?\d[\d./-]*|SA|NHA?|GP|ordinary|C\d\s?D\d",
     re.IGNORECASE,
 )
 _PHRASE_SIGNS: Final = re.compile(r"[\s\-_./():,]+")

@@ -93,6 +93,27 @@ _KEPT: Final[Mapping[str, frozenset[str]]] = {
     "status": frozenset({"on hold", "to be defined"}),
     "hold": frozenset({"on hold"}),
     "area_classification": frozenset({"not applicable"}),
+    "area": frozenset({"not applicable"}),
+}
+# Of those words what says nothing of a place all the same: in an area's column only none or N/A is unclassified.
+_NO_WORDS: Final[Mapping[str, frozenset[str]]] = {
+    "area": frozenset(
+        (
+            "n/r",
+            "not required",
+            "not appl.",
+            "entfaellt",
+            "entf.",
+            "entf",
+            "k.a.",
+            "k. a.",
+            "keine angabe",
+            "s.o.",
+            "s/o",
+            "sans objet",
+            "n.v.t.",
+        )
+    ),
 }
 _MINUS: Final = frozenset({"-", "\u2212", "\u2013"})
 _DASHES: Final = frozenset({"-", "--", "---", "----", ".", "..", "_", "__", "- -", "/", "//", ""})
@@ -150,7 +171,8 @@ def _unless_blank(field: str, read: Callable[[str], Outcome]) -> Read:
             return DITTO
         reason = placeholder(text)
         held = "on hold" in kept and reason is not None and reason.startswith("hold")
-        if reason and not held and (reason not in kept or folded(text) in _DASHES):
+        said = reason in kept and folded(text) not in (*_DASHES, *_NO_WORDS.get(field, ()))
+        if reason and not held and not said:
             return Outcome(blank=reason)
         return read(text)
 

@@ -213,7 +213,7 @@ def test_what_cannot_be_read_as_a_whole_is_not_read(text: str) -> None:
     assert area_from_classification(text) is None
 
 
-@pytest.mark.parametrize("text", ["1", "21", "2.0", "1/21", "Z2", "Z-1", "C1D2", "SA", "NH", "N/A", "none", "GP"])
+@pytest.mark.parametrize("text", ["1", "21", "2.0", "1/21", "Z2", "Z-1", "C1D2", "SA", "NH", "GP"])
 def test_in_a_column_of_area_codes_a_short_text_is_a_code(text: str) -> None:
     assert read_classification(text) is not None
     assert read_classification(text, own_column=False) is None
@@ -232,6 +232,10 @@ def test_in_a_column_of_area_codes_a_short_text_is_a_code(text: str) -> None:
         "safe area",
         "non-haz",
         "unclassified",
+        "N/A",
+        "n.a.",
+        "none",
+        "keine",
     ],
 )
 def test_in_a_column_of_area_codes_a_classification_is_one(text: str) -> None:
@@ -451,6 +455,20 @@ def test_the_working_of_a_dust_limit_shows_its_figures() -> None:
 )
 def test_named_gases(text: str | None, gases: tuple[str, ...]) -> None:
     assert named_gases(text) == gases
+
+
+@pytest.mark.parametrize("text", ["CO 1", "NG 2", "HC 1", "H2 1", "MEK 2", "EDC 1", "PO-2"])
+def test_a_number_behind_a_gas_is_a_units_and_no_zone(text: str) -> None:
+    assert read_classification(text) is None
+
+
+@pytest.mark.parametrize(
+    "text", ["Zone 2 IIB T2 ethanol", "Zone 2 IIB T2 Ethanol", "Zone 2 IIC T1 hydrogen", "Zone 1 IIB T3 H2S"]
+)
+def test_a_gas_is_read_in_a_classification(text: str) -> None:
+    said = read_classification(text)
+    assert said is not None
+    assert said.gas is not None
 
 
 # Any text

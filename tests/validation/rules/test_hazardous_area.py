@@ -1237,3 +1237,28 @@ def test_every_marking_comes_to_an_outcome_everywhere_and_no_blank_is_clear() ->
     result = audit(example_plant(there, areas=areas), codes=CODES, raise_errors=True)
     for code in ("HAZ04", "HAZ05", "HAZ06", "HAZ07", "HAZ08", "HAZ10"):
         assert (code, result.coverage[code].count(Outcome.CLEAR)) == (code, 0)
+
+
+@pytest.mark.parametrize(
+    ("text", "unclassified"),
+    [
+        ("N/A", True),
+        ("n.a.", True),
+        ("none", True),
+        ("Not applicable", True),
+        ("keine", True),
+        ("safe", True),
+        ("-", False),
+        ("", False),
+        ("TBA", False),
+        ("n/r", False),
+        ("entf.", False),
+    ],
+)
+def test_none_in_the_column_of_areas_is_unclassified_and_a_dash_is_blank(text: str, unclassified: bool) -> None:
+    rows = [{"tag": "PT-1", "area": text}, {"tag": "PT-2", "area": "A"}]
+    plant = example_plant(rows, areas=[{"code": "A", **gas()}])
+    said = [each.subject for each in audit(plant, codes=["HAZ01"], raise_errors=True).findings]
+    assert (plant.instruments[0].unclassified, said) == (unclassified, [] if unclassified else ["PT-1"])
+    listed = f"'{text}' in an area column is read as: not a hazardous area"
+    assert (listed in plant.assumptions) is unclassified
