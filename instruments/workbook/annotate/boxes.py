@@ -5,9 +5,10 @@ VML as spreadsheets write it is not always well-formed, so what stands there is 
 
 from __future__ import annotations
 
+import functools
 import math
 import re
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from typing import Final
 
 from instruments.workbook.annotate.sheet import Grid
@@ -15,7 +16,7 @@ from instruments.workbook.annotate.splice import Edit, spliced
 from instruments.workbook.plain import BrokenXml, is_utf8
 from instruments.workbook.sheet import MAX_COLUMNS, MAX_ROWS
 
-__all__ = ["Numbers", "with_boxes"]
+__all__ = ["Numbers", "lines_in", "with_boxes"]
 
 _WIDTH_PX: Final = 340.0
 _LINE_PX: Final = 15.0
@@ -32,6 +33,8 @@ _CLIENT: Final = re.compile(
 _ROW: Final = re.compile(rb"<x:Row>\s*([0-9]{1,7})\s*</x:Row>")
 _COLUMN: Final = re.compile(rb"<x:Column>\s*([0-9]{1,5})\s*</x:Column>")
 _ANCHOR: Final = re.compile(rb"<x:Anchor>\s*([0-9]{1,7}(?:\s*,\s*[0-9]{1,7}){7})\s*</x:Anchor>")
+
+_AT_ONCE: Final = 500
 
 _LONGEST: Final = 2_000
 """Bytes in which a number, or the list of a drawing's clusters, stands."""
@@ -81,23 +84,34 @@ class Numbers:
         return first * _A_CLUSTER + 1, clusters
 
 
+def lines_in(text: str) -> int:
+    """Return how many lines of a box a text takes.
+
+    >>> lines_in("RNG02 fault\\nURV 20 bar is above 16 bar"), lines_in("word " * 20)
+    (2, 2)
+    """
+    return sum(max(1, math.ceil(len(line) / _LETTERS)) for line in text.split("\n"))
+
+
 def with_boxes(
     data: bytes | None,
-    new: Mapping[Place, str],
-    longer: Mapping[Place, str],
-    afresh: Mapping[Place, str],
+    new: Mapping[Place, int],
+    longer: Mapping[Place, int],
+    afresh: Mapping[Place, int],
     *,
     grid: Grid,
     numbers: Numbers,
-) -> bytes:
-    """Return a drawing with a box for each new comment, and larger ones for those that became longer.
+) -> Callable[[], Iterator[bytes]]:
+    """Return what gives a drawing with a box for each new comment, and larger ones for those that became longer.
+
+    It is not made before it is asked for, piece by piece.
 
     Parameters
     ----------
     data
         The drawing; None where the sheet has none yet.
     new, longer, afresh
-        The texts of new comments, those added to others, and those in place of others; by their cells.
+        The lines of new comments, of what is added to others, and of those in place of others; by their cells.
     grid
         How wide the sheet's columns are and how high its rows.
     numbers
@@ -112,22 +126,32 @@ def with_boxes(
     end = drawing.rfind(b"</xml>")
     if not is_utf8(drawing) or end < 0:
         raise BrokenXml("is no drawing of comments that can be added to")
-    edits: list[Edit] = []
-    first, clusters = numbers.take(len(new))
-    made = [] if b'"_x0000_t202"' in drawing else [_SHAPE_TYPE]
-    made += (_box(first + index, place, new[place], grid) for index, place in enumerate(sorted(new)))
+    edits = list(_stretched(drawing[:end], longer, afresh, grid)) if longer or afresh else []
+    first = 0
     if new:
-        if (listed := _IDMAP.search(drawing)) is not None:
+        first, clusters = numbers.take(len(new))
+        if (listed := _IDMAP.search(drawing, 0, end)) is not None:
             comma = b"," if listed[1].strip() else b""
             data_of = comma + b",".join(b"%d" % cluster for cluster in clusters)
             edits.append(Edit(listed.end(1), listed.end(1), data_of))
-        edits.append(Edit(end, end, b"".join(made)))
-    if longer or afresh:
-        edits += _stretched(drawing, longer, afresh, grid)
-    return b"".join(spliced([drawing], edits))
+    return functools.partial(_pieces, drawing, end, edits, new, first, grid)
 
 
-def _box(number: int, place: Place, text: str, grid: Grid) -> bytes:
+def _pieces(
+    drawing: bytes, end: int, edits: Sequence[Edit], new: Mapping[Place, int], first: int, grid: Grid
+) -> Iterator[bytes]:
+    yield from spliced((drawing[:end],), edits)
+    if new and b'"_x0000_t202"' not in drawing:
+        yield _SHAPE_TYPE
+    places = sorted(new)
+    for at in range(0, len(places), _AT_ONCE):
+        yield b"".join(
+            _box(first + number, place, new[place], grid) for number, place in enumerate(places[at : at + _AT_ONCE], at)
+        )
+    yield drawing[end:]
+
+
+def _box(number: int, place: Place, lines: int, grid: Grid) -> bytes:
     row, column = place
     return (
         b'<v:shape id="_x0000_s%d" type="#_x0000_t202" style="position:absolute;visibility:hidden"'
@@ -135,11 +159,10 @@ def _box(number: int, place: Place, text: str, grid: Grid) -> bytes:
         b'<v:path o:connecttype="none"/><v:textbox style="mso-direction-alt:auto"><div style="text-align:left"/>'
         b'</v:textbox><x:ClientData ObjectType="Note"><x:MoveWithCells/><x:SizeWithCells/><x:Anchor>%b</x:Anchor>'
         b"<x:AutoFill>False</x:AutoFill><x:Row>%d</x:Row><x:Column>%d</x:Column></x:ClientData></v:shape>"
-    ) % (number, _anchor(place, _height_px(text), grid), row, column)
+    ) % (number, _anchor(place, _height_px(lines), grid), row, column)
 
 
-def _height_px(text: str) -> float:
-    lines = sum(max(1, math.ceil(len(line) / _LETTERS)) for line in text.split("\n"))
+def _height_px(lines: int) -> float:
     return min(lines, _MOST_LINES) * _LINE_PX + _EDGES_PX
 
 
@@ -164,7 +187,7 @@ def _walk(at: int, px: float, size: Callable[[int], float], most: int) -> tuple[
     return at, int(max(0.0, min(px, size(at))))
 
 
-def _stretched(drawing: bytes, longer: Mapping[Place, str], afresh: Mapping[Place, str], grid: Grid) -> Iterable[Edit]:
+def _stretched(drawing: bytes, longer: Mapping[Place, int], afresh: Mapping[Place, int], grid: Grid) -> Iterable[Edit]:
     """Return the edits that give boxes the room that their comments take now."""
     for client in _CLIENT.finditer(drawing):
         row, column, anchor = (pattern.search(client[1]) for pattern in (_ROW, _COLUMN, _ANCHOR))

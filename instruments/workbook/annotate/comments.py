@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+import functools
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Final, NamedTuple
 
 from instruments.workbook.annotate.splice import Edit, Element, closing, elements, spliced, text_in_xml
@@ -13,6 +14,8 @@ __all__ = ["MOST_CHARACTERS", "Comments", "Passage", "Text", "plain_text"]
 
 MOST_CHARACTERS: Final = 32_000
 """Characters of a comment; a cell's text ends at 32,767, and programs differ in what they count."""
+
+_AT_ONCE: Final = 500
 
 _MAIN: Final = "http://schemas.openxmlformats.org/spreadsheetml/2006/main"
 _STRICT: Final = "http://purl.oclc.org/ooxml/spreadsheetml/main"
@@ -61,6 +64,10 @@ class Comments:
         self._data = data if data is not None else _empty(_STRICT if strict else _MAIN)
         self._root = elements(self._data, deepest=2)
         listed = self._root.first("commentList")
+        if listed is not None and listed.closes_itself:
+            self._data = b"".join(spliced((self._data,), [listed.appended(self._data, b"")]))
+            self._root = elements(self._data, deepest=2)
+            listed = self._root.first("commentList")
         if self._root.name != "comments" or listed is None:
             raise BrokenXml("is no part of comments")
         self._list = listed
@@ -110,39 +117,45 @@ class Comments:
         """Whether the comment of a cell stands for a thread, which newer programs show in its place."""
         return place in self.standing and self._author_of(place).startswith(b"tc=")
 
-    def with_added(self, texts: Mapping[Place, Text]) -> bytes:
-        """Return the part with a comment added to each of these cells, beneath what stands there.
+    def with_added(self, texts: Mapping[Place, Text]) -> Callable[[], Iterator[bytes]]:
+        """Return what gives the part with a comment added to each of these cells, beneath what stands there.
 
-        What was added to an earlier copy gives way to what is added now.
+        What was added to an earlier copy gives way to what is added now. The part is not made before it is
+        asked for, piece by piece: it may be larger than the sheet.
         """
         prefix = self._root.prefix
         edits: list[Edit] = []
         number = self._author_number(edits)
-        new: list[bytes] = []
-        for place in sorted(texts):
-            comment = self.standing.get(place)
-            if comment is None:
-                new.append(
-                    b'<%bcomment ref="%b" authorId="%d"><%btext>%b</%btext></%bcomment>'
-                    % (
-                        prefix,
-                        cell_address(*place).encode(),
-                        number,
-                        prefix,
-                        _runs(texts[place], prefix),
-                        prefix,
-                        prefix,
-                    )
-                )
-            elif place in self.own:
+        for place in sorted(texts.keys() & self.standing.keys()):
+            comment = self.standing[place]
+            if place in self.own:
                 made = b"<%btext>%b</%btext>" % (prefix, _runs(texts[place], prefix), prefix)
                 holder = self._text_of(comment)
                 edits.append(Edit(holder.start, holder.end, made) if holder else comment.appended(self._data, made))
             else:
                 edits += self._beneath(comment, texts[place])
-        if new:
-            edits.append(self._list.appended(self._data, b"".join(new)))
-        return b"".join(spliced([self._data], edits))
+        return functools.partial(self._pieces, edits, number, texts)
+
+    def _pieces(self, edits: Sequence[Edit], author: int, texts: Mapping[Place, Text]) -> Iterator[bytes]:
+        prefix = self._root.prefix
+        end = self._list.close
+        yield from spliced((self._data[:end],), edits)
+        new = sorted(texts.keys() - self.standing.keys())
+        for at in range(0, len(new), _AT_ONCE):
+            yield b"".join(
+                b'<%bcomment ref="%b" authorId="%d"><%btext>%b</%btext></%bcomment>'
+                % (
+                    prefix,
+                    cell_address(*place).encode(),
+                    author,
+                    prefix,
+                    _runs(texts[place], prefix),
+                    prefix,
+                    prefix,
+                )
+                for place in new[at : at + _AT_ONCE]
+            )
+        yield self._data[end:]
 
     def _author_number(self, edits: list[Edit]) -> int:
         authors = self._root.first("authors")

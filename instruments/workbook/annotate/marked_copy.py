@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import functools
 import os
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Final
 
-from instruments.workbook.annotate.boxes import Numbers, with_boxes
+from instruments.workbook.annotate.boxes import Numbers, lines_in, with_boxes
 from instruments.workbook.annotate.comments import MOST_CHARACTERS, Comments, Passage, Text, plain_text
 from instruments.workbook.annotate.package_parts import Changes
 from instruments.workbook.annotate.sheet import Frame, cell_edits, frame_of, legacy_drawing, parsed_frame
@@ -39,7 +39,7 @@ _ROOM_WORTH: Final = 200
 _MOST_TOGETHER: Final = 8
 """Cells of a merged range whose comments are said in the one that it has."""
 
-_A_FEW_LINES: Final = "\n" * 4
+_A_FEW_LINES: Final = 5
 
 _CUT: Final = "... (cut)"
 
@@ -220,8 +220,8 @@ class _Copy:
             edits = cell_edits(frame, (frame.data,), rows, restyle)
         beside = self._beside(relations, comments_part, comments, frame, marks)
         spaces = _STRICT_KINDS if frame.strict else _KINDS
-        for name, data in beside.changed.items():
-            self._changes.put_bytes(name, data)
+        for name, pieces in beside.changed.items():
+            self._changes.put(name, pieces)
         if beside.comments:
             self._changes.declare(beside.comments, _COMMENTS_TYPE)
             self._changes.refer(entry.part, "comments", beside.comments, spaces=spaces)
@@ -254,7 +254,7 @@ class _Copy:
         texts = {place: _within(mark.text, comments.length(place)) for place, mark in marks.items()}
         texts = {place: text for place, text in texts.items() if text}
         beside.changed[comments_part] = comments.with_added(texts)
-        said = {place: plain_text(text) for place, text in texts.items()}
+        lines = {place: lines_in(plain_text(text)) for place, text in texts.items()}
         boxes: str | None = None
         if frame.drawing is not None:
             relation = relations.get(frame.drawing)
@@ -263,22 +263,20 @@ class _Copy:
             boxes = relation.target
         # Without boxes the comments that stand there have none either.
         new = dict.fromkeys(comments.standing, _A_FEW_LINES) if boxes is None else {}
-        new |= {place: text for place, text in said.items() if place not in comments.standing}
-        afresh = {place: text for place, text in said.items() if place in comments.own}
+        new |= {place: number for place, number in lines.items() if place not in comments.standing}
         first_time = comments.standing.keys() - comments.own - comments.added
-        longer = {place: text for place, text in said.items() if place in first_time}
         drawn = with_boxes(
             changes.part(boxes) if boxes is not None else None,
             new,
-            longer,
-            afresh,
+            longer={place: number for place, number in lines.items() if place in first_time},
+            afresh={place: number for place, number in lines.items() if place in comments.own},
             grid=frame.grid,
             numbers=self._numbers,
         )
         if boxes is None:
             boxes = beside.boxes = changes.free_name("xl/drawings/vmlDrawing{}.vml")
         beside.changed[boxes] = drawn
-        threaded = {place: text for place, text in said.items() if comments.thread_of(place)}
+        threaded = {place: plain_text(text) for place, text in texts.items() if comments.thread_of(place)}
         if threaded:
             self._reply(relations, threaded, beside)
         return beside
@@ -288,15 +286,17 @@ class _Copy:
         persons = _target(self._package.relations(WORKBOOK), "person")
         if threads is None or persons is None or threads not in self._changes or persons not in self._changes:
             return
-        beside.changed[persons], person = with_person(self._changes.part(persons), self._author)
-        beside.changed[threads] = with_replies(self._changes.part(threads), texts, person)
+        persons_now, person = with_person(self._changes.part(persons), self._author)
+        threads_now = with_replies(self._changes.part(threads), texts, person)
+        beside.changed[persons] = lambda: (persons_now,)
+        beside.changed[threads] = lambda: (threads_now,)
 
 
 @dataclass(slots=True)
 class _Beside:
     """Parts beside a sheet: those that change, and the names of those that are new."""
 
-    changed: dict[str, bytes]
+    changed: dict[str, Callable[[], Iterable[bytes]]]
     comments: str
     boxes: str
 

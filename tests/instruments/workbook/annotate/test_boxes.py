@@ -4,7 +4,7 @@ import re
 
 import pytest
 
-from instruments.workbook.annotate.boxes import Numbers, with_boxes
+from instruments.workbook.annotate.boxes import Numbers, lines_in, with_boxes
 from instruments.workbook.annotate.sheet import Grid
 from instruments.workbook.plain import BrokenXml
 from tests.instruments.workbook.annotate.shapes import VML, parsed
@@ -37,12 +37,24 @@ def test_numbers_are_free(drawings: list[str], first: int) -> None:
     assert numbers.take(1024) == (first + 2048, [first // 1024 + 2, first // 1024 + 3])
 
 
+def joined(
+    data: bytes | None,
+    new: dict[tuple[int, int], str],
+    longer: dict[tuple[int, int], str],
+    afresh: dict[tuple[int, int], str],
+    *,
+    grid: Grid | None = None,
+) -> bytes:
+    counted = [{place: lines_in(text) for place, text in texts.items()} for texts in (new, longer, afresh)]
+    return b"".join(with_boxes(data, *counted, grid=grid or Grid(), numbers=Numbers())())
+
+
 def anchors(drawing: bytes) -> list[list[int]]:
     return [[int(number) for number in each.split(",")] for each in re.findall("<x:Anchor>(.*?)<", drawing.decode())]
 
 
 def drawn(text: str = "x", place: tuple[int, int] = (9, 3), grid: Grid | None = None) -> list[int]:
-    made = with_boxes(None, {place: text}, {}, {}, grid=grid or Grid(), numbers=Numbers())
+    made = joined(None, {place: text}, {}, {}, grid=grid)
     parsed(made)
     (found,) = anchors(made)
     return found
@@ -81,13 +93,13 @@ def test_a_box_lies_on_the_sheet(place: tuple[int, int]) -> None:
 @pytest.mark.parametrize("data", [b"", b"<html></html>", VML.encode("utf-16")])
 def test_what_is_no_drawing(data: bytes) -> None:
     with pytest.raises(BrokenXml):
-        with_boxes(data, {(0, 0): "x"}, {}, {}, grid=Grid(), numbers=Numbers())
+        joined(data, {(0, 0): "x"}, {}, {})
 
 
 def test_boxes_that_stand_there_grow_or_are_drawn_afresh() -> None:
-    grown = with_boxes(VML.encode(), {}, {(1, 2): "x\n" * 3}, {}, grid=Grid(), numbers=Numbers())
+    grown = joined(VML.encode(), {}, {(1, 2): "x\n" * 3}, {})
     assert anchors(grown) == [[3, 15, 0, 10, 5, 15, 7, 18]]
-    afresh = with_boxes(VML.encode(), {}, {}, {(1, 2): "x\n" * 3}, grid=Grid(), numbers=Numbers())
+    afresh = joined(VML.encode(), {}, {}, {(1, 2): "x\n" * 3})
     assert anchors(afresh) == [drawn("x\n" * 3, (1, 2))]
-    other = with_boxes(VML.encode(), {}, {(1, 3): "x"}, {(2, 2): "x"}, grid=Grid(), numbers=Numbers())
+    other = joined(VML.encode(), {}, {(1, 3): "x"}, {(2, 2): "x"})
     assert other == VML.encode()
