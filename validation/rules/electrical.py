@@ -20,6 +20,7 @@ from loops.budget import (
     highest_volts,
     lift_off,
 )
+from loops.budget_in_full import budget_in_full
 from loops.circuit import Circuit
 from loops.plant import Plant
 from loops.power import highest_supply_v, least_supply_v, longest_cable_m, smallest_conductor
@@ -101,7 +102,7 @@ def starved_transmitter(circuit: Circuit, plant: Plant) -> Verdict:
         found=f"{volts} at {current}" + (f", {at_20_ma} at 20 mA" if at_20_ma else ""),
         wanted=f"at least {needed}",
         off_by=short,
-        working=shown.working,
+        working=f"{shown.working}; {budget_in_full(circuit, budget, plant.data, at_best=short_at_best)}",
         assumed=() if short_at_best else budget.assumed,
         fixes=_lift_off_fixes(circuit, budget, plant),
         cells=figure_cells(circuit),

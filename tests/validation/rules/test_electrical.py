@@ -104,8 +104,16 @@ def test_the_check_current_is_that_of_a_failure_and_not_20_ma() -> None:
     (finding,) = asked("ELC01")
     assert finding.subject == "P-101"
     assert finding.message == "PT-101 gets 10.488 V at 22 mA, its lift-off is 10.5 V: short by 0.012 V"
+    # The sum, then each term at the check current, with where it stands, at 20 mA and at 4 mA.
     assert finding.working == (
-        "24.0 V - 22 mA x 614.2 ohm = 10.488 V at the terminals, 10.5 V needed, short by 0.012 V"
+        "24.0 V - 22 mA x 614.2 ohm = 10.488 V at the terminals, 10.5 V needed, short by 0.012 V;"
+        " at 22 mA: supply 24 V (lowest, loop list) - barrier 22 mA x 340 ohm = 7.48 V (type ZB)"
+        " - receiver 22 mA x 250 ohm = 5.5 V (loop list) - cable 22 mA x 24.2 ohm = 0.532 V (2 x 1000 m, loop list,"
+        " x 12.1 ohm/km, IEC 60228 for 1.5 mm2, x 1.0000 at 20 degC): 10.488 V left;"
+        " at 20 mA: supply 24 V - barrier 20 mA x 340 ohm = 6.8 V - receiver 20 mA x 250 ohm = 5 V"
+        " - cable 20 mA x 24.2 ohm = 0.484 V: 11.716 V left;"
+        " at 4 mA: supply 24 V - barrier 4 mA x 340 ohm = 1.36 V - receiver 4 mA x 250 ohm = 1 V"
+        " - cable 4 mA x 24.2 ohm = 0.097 V: 21.543 V left"
     )
     assert (finding.found, finding.wanted, finding.off_by) == (
         "10.488 V at 22 mA, 11.716 V at 20 mA",
@@ -213,7 +221,7 @@ def test_receivers_that_read_volts_lie_across_the_range_resistor() -> None:
     changed: dict[str, Any] = {"loop": {"card": "AI8", "supply V min": 23.8}, "more": (card,)}
     # 250 ohm with 10 kohm across it are 243.902 ohm.
     (finding,) = asked("ELC01", **changed)
-    assert finding.working == (
+    assert finding.working.partition("; ")[0] == (
         "23.8 V - 22 mA x 608.102 ohm = 10.422 V at the terminals, 10.5 V needed, short by 0.078 V"
     )
     # Another range resistor in the catalogue than in the loop is no second one.
@@ -325,7 +333,9 @@ def test_the_supply_of_the_card() -> None:
     # What the card puts in series counts, and says what the receiver is.
     loud = {**card, "resistance ohm": 300.0}
     (review,) = asked("ELC01", tag=tag, loop={**loop, "range resistor": None}, more=(loud,))
-    assert review.working == ("24.7 V - 22 mA x 664.2 ohm = 10.088 V at the terminals, 10.5 V needed, short by 0.412 V")
+    assert review.working.partition("; ")[0] == (
+        "24.7 V - 22 mA x 664.2 ohm = 10.088 V at the terminals, 10.5 V needed, short by 0.412 V"
+    )
 
 
 # --------------------------------------------------------------------------------------------------- isolators (M8)
@@ -363,7 +373,9 @@ def test_the_receiver_does_not_count_on_the_field_side_of_an_isolator() -> None:
     changed: dict[str, Any] = {"loop": {"barrier": "ISO"}, "more": (isolator,), "plant": plant}
     assert comes_to("ELC01", transmitter={"lift-off V": 12.0}, **changed) == "clear"
     (finding,) = asked("ELC01", transmitter={"lift-off V": 14.6}, **changed)
-    assert finding.working == ("15.0 V - 20 mA x 24.2 ohm = 14.516 V at the terminals, 14.6 V needed, short by 0.084 V")
+    assert finding.working.partition("; ")[0] == (
+        "15.0 V - 20 mA x 24.2 ohm = 14.516 V at the terminals, 14.6 V needed, short by 0.084 V"
+    )
     # Nobody raises the supply of an isolator.
     assert [fix.text for fix in finding.fixes] == ["cable no longer than 826 m", "conductor of at least 2.5 mm2"]
 
@@ -372,7 +384,9 @@ def test_a_card_that_states_its_volts_is_a_source_too() -> None:
     card = {"code": "AI8", "kind": "card", "volts available at high alarm": 18.0}
     (finding,) = asked("ELC01", loop={"card": "AI8"}, transmitter={"lift-off V": 10.5}, more=(card,))
     # Behind its terminals lies its own receiver; the zener barrier is in front of them.
-    assert finding.working == ("18.0 V - 22 mA x 364.2 ohm = 9.988 V at the terminals, 10.5 V needed, short by 0.512 V")
+    assert finding.working.partition("; ")[0] == (
+        "18.0 V - 22 mA x 364.2 ohm = 9.988 V at the terminals, 10.5 V needed, short by 0.512 V"
+    )
 
 
 # --------------------------------------------------------------------------------------------- what lies in series
