@@ -5,12 +5,13 @@ from __future__ import annotations
 import dataclasses
 import re
 from collections import Counter, defaultdict
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from types import MappingProxyType
-from typing import Any
+from typing import Any, Final
 
 from instruments.area import Area, Classification, area_from_classification, read_classification, understood
+from instruments.columns import AREAS
 from instruments.installed import NOT_LIVE, Installed
 from instruments.kind import Kind, derive_kind, read_kind
 from instruments.marking import Marking, read_marking
@@ -261,7 +262,8 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
     if profile is None:
         profile, assumptions = _profile(data, index)
     types, types_twice = _unlike_left_out(*_by_name(records.get("Device types", ()), "code"))
-    listed_areas = tuple(understood(area) for area in records.get("Areas", ()))
+    written_areas: tuple[Area, ...] = records.get("Areas", ())
+    listed_areas = tuple(map(understood, written_areas))
     areas, areas_twice = _by_name(listed_areas, "code")
     cables, cables_twice = _unlike_left_out(*_by_name(records.get("Cables", ()), "number"))
     cable_types, cable_types_twice = _unlike_left_out(*_by_name(records.get("Cable types", ()), "code"))
@@ -331,7 +333,7 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         profile=profile,
         codes=codes,
         assumptions=(*lists.assumptions, *assumptions, *fitter.assumptions),
-        more_problems=tuple(fitter.problems),
+        more_problems=(*fitter.problems, *_unread_in_areas(written_areas, listed_areas)),
         _by_tag={key: tuple(found) for key, found in by_tag.items()},
         _columns=lists.index_columns,
     )
@@ -1005,6 +1007,25 @@ def _point_kind(record: Instrument) -> Kind | None:
     if "ma" in text or "hart" in text or record.io_type in ("AI",):
         return Kind.TRANSMITTER
     return None
+
+
+_AREA_TITLES: Final = {column.field: column.title for column in AREAS.columns}
+
+
+def _unread_in_areas(written: Iterable[Area], listed: Iterable[Area]) -> Iterator[CellProblem]:
+    """Give the texts of a list of areas that no reading of an area has a place for."""
+    for before, after in zip(written, listed, strict=True):
+        for name in sorted(after.unread - before.unread):
+            title = _AREA_TITLES[name]
+            for cell in before.cells(name)[:1]:
+                yield CellProblem(
+                    cell=cell,
+                    field=name,
+                    title=title,
+                    subject=before.code or "",
+                    text=str(getattr(before, name)),
+                    reason=f"no {title} is read in it",
+                )
 
 
 def _areas_seen(listed: Iterable[Area], found: Iterable[Installed]) -> tuple[AreaInPlant, ...]:

@@ -1262,3 +1262,25 @@ def test_none_in_the_column_of_areas_is_unclassified_and_a_dash_is_blank(text: s
     assert (plant.instruments[0].unclassified, said) == (unclassified, [] if unclassified else ["PT-1"])
     listed = f"'{text}' in an area column is read as: not a hazardous area"
     assert (listed in plant.assumptions) is unclassified
+
+
+@pytest.mark.parametrize(
+    ("area", "expected"),
+    [
+        ({"zone": "spray booth"}, ["A: zone: 'spray booth' cannot be read: no zone is read in it"]),
+        ({"gas group": "IIX"}, ["A: gas group: 'IIX' cannot be read: no gas group is read in it"]),
+        (
+            {"temperature class": "T7"},
+            ["A: temperature class: 'T7' cannot be read: no temperature class is read in it"],
+        ),
+        ({"zone": "safe"}, []),
+        ({"gas group": "Gr. IIB + H2"}, []),
+        ({}, []),
+    ],
+)
+def test_a_text_of_the_list_of_areas_that_cannot_be_read_is_told(area: Row, expected: list[str]) -> None:
+    rows = [{"tag": "PT-1", "area": "A"}]
+    assert said("DAT09", rows, areas=[{"code": "A", **gas(), **area}]) == expected
+    assert [
+        cell.sheet for each in findings("DAT09", rows, areas=[{"code": "A", **gas(), **area}]) for cell in each.cells
+    ] == (["Areas"] * len(expected))
