@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Final
 
 from instruments.kind import Kind
@@ -270,7 +271,7 @@ class TimeConstant:
     @property
     def worst_us(self) -> float | None:
         """With the defaults; None where a blank has none."""
-        return None if self.missing else self._us(kindest=False)
+        return None if self.missing else self._us(kindest=self.assumed_term is None)
 
     @property
     def kindest_us(self) -> float:
@@ -355,7 +356,7 @@ def time_constant(circuit: Circuit, data: PlantData, *, named: bool = False) -> 
         own = circuit.isolator.input_ohm if circuit.isolator.input_ohm is not None else circuit.isolator.resistance_ohm
         if own is None:
             assumed_term = assumed_receiver(data)
-            assumed = f"input of isolator {circuit.isolator.code} {format_number(assumed_term.ohm)} ohm"
+            assumed = _assumed_words(f"input of isolator {circuit.isolator.code}", assumed_term.ohm)
         else:
             found.terms.append(Term(name="isolator", ohm=own, source=entry_name(circuit.isolator)))
     elif output:
@@ -392,13 +393,20 @@ def time_constant(circuit: Circuit, data: PlantData, *, named: bool = False) -> 
         nf_per_m=nf_per_m,
         cable_nf_words=words,
         missing=tuple(dict.fromkeys(missing)),
-        assumed=(assumed or f"receiver {format_number(assumed_term.ohm)} ohm",) if assumed_term is not None else (),
+        assumed=(assumed or _assumed_words("receiver", assumed_term.ohm),) if assumed_term is not None else (),
         cells=(
             *(circuit.cable_length_m.cells if circuit.cable_length_m is not None else ()),
             *cells,
             *found.cells,
-        ),
+        )
+        if named
+        else (),
     )
+
+
+@lru_cache(maxsize=1024)
+def _assumed_words(what: str, ohm: float) -> str:
+    return f"{what} {format_number(ohm)} ohm"
 
 
 def _cable_nf(circuit: Circuit, *, named: bool) -> tuple[float | None, float | None, str, tuple[Cell, ...]]:
@@ -432,6 +440,8 @@ def _cable_nf(circuit: Circuit, *, named: bool) -> tuple[float | None, float | N
     length = circuit.cable_length_m
     if length is None:
         return None, nf_per_m, "", ()
+    if not named:
+        return length.number * nf_per_m, nf_per_m, "", ()
     words = f"{shown(length.number)} m x {shown(kind.capacitance_pf_per_m)} pF/m, cable type {kind.code}"
     return length.number * nf_per_m, nf_per_m, words, kind.cells("capacitance_pf_per_m")
 

@@ -171,6 +171,8 @@ class HotCable:
     @property
     def missing(self) -> tuple[str, ...]:
         """What it lacks, as titles."""
+        if self.length_m is not None and self.ohm_per_m is not None:
+            return ()
         lacking = (("cable length", self.length_m), ("conductor size", self.ohm_per_m))
         return tuple(title for title, value in lacking if value is None)
 
@@ -357,7 +359,7 @@ def isolator_input(circuit: Circuit, current_ma: float) -> Term | None:
 
 def total_ohm(terms: Iterable[Term], current_ma: float) -> float:
     """Sum of resistances at a current in mA."""
-    return math.fsum(each.ohm_at(current_ma) for each in terms)
+    return math.fsum([each.ohm_at(current_ma) for each in terms])
 
 
 def total_volts(terms: Iterable[Term], current_ma: float) -> float:

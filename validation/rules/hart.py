@@ -232,9 +232,10 @@ def too_slow_for_hart(circuit: Circuit, plant: Plant) -> Verdict:
     if circuit.hart is None:
         return Unchecked("HART")
     asked = time_constant(circuit, plant.data)
-    if too_slow(asked.kindest_us):
+    kindest = asked.kindest_us
+    if too_slow(kindest):
         return _rounded_off(circuit, plant, kindest=True)
-    worst = asked.worst_us
+    worst = kindest if asked.assumed_term is None and not asked.missing else asked.worst_us
     if worst is None:
         return Unchecked(*asked.missing)
     if too_slow(worst):
