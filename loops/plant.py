@@ -337,14 +337,195 @@ def assemble(lists: Lists, *, profile: TagProfile | None = None) -> Plant:
         _by_tag={key: tuple(found) for key, found in by_tag.items()},
         _columns=lists.index_columns,
     )
+    _wire(plant)
+    return plant
+
+
+# What tells which rows are one instrument, what it is called, its loop and its kind. Other fields are values.
+_STRUCTURE = frozenset(
+    {
+        "tag", "tag_written", "tag_cell", "tag_number", "status", "kind", "kind_written", "loop", "signal", "io_type",
+        "io_address", "card", "location", "device_type", "ex_marking", "equipment", "own", "area",
+        "area_classification", "origin", "elsewhere", "other",
+    }
+)  # fmt: skip
+_OF_ENTRIES = {"Areas": frozenset({"code"}), "Device types": frozenset({"code", "kind", "description"})}
+_WIRING = frozenset({"Loops", "Cables", "Cable types"})
+
+
+def with_values(plant: Plant, lists: Lists) -> Plant | None:
+    """Return a plant with other values in its lists; None where more than values has changed.
+
+    What values cannot change is kept: tags, names, loops, kinds; and the circuits too, where only areas have
+    changed. It is what `assemble` gives, for a fraction of the time.
+
+    Parameters
+    ----------
+    plant
+        The plant as it is.
+    lists
+        Its lists with the same rows, each the same object or one with other values.
+    """
+    moved = _moved(plant, lists)
+    if moved is None:
+        return None
+    index_name = "Instruments" if plant.lists.records.get("Instruments") else "IO list"
+    rows = {id(old): new for old, new in moved.pop(index_name, ())}
+    records = lists.records
+    listed_areas, areas, areas_twice = _areas_with_values(plant, records) if "Areas" in moved else (None, {}, None)
+    types, types_twice = plant.types, plant.types_twice
+    if "Device types" in moved:
+        types, types_twice = _unlike_left_out(*_by_name(records["Device types"], "code"))
+    cables, cables_twice = plant.cables, plant.cables_twice
+    if "Cables" in moved:
+        cables, cables_twice = _unlike_left_out(*_by_name(records["Cables"], "number"))
+    cable_types, cable_types_twice = plant.cable_types, plant.cable_types_twice
+    if "Cable types" in moved:
+        cable_types, cable_types_twice = _unlike_left_out(*_by_name(records["Cable types"], "code"))
+    if (types_twice, areas_twice or plant.areas_twice) != (plant.types_twice, plant.areas_twice):
+        return None
+    fitter = _Fitter(plant.data, types, {}, ())
+    new: dict[int, Installed] = {}
+    for each in plant.instruments:
+        row = rows.pop(id(each.record), None)
+        if row is not None and (each.merged_rows != 1 or not each.record.tag or _shares_its_tag(plant, each)):
+            return None
+        record = row if row is not None else each.record
+        listed = types.get(_key(record.device_type)) if record.device_type else None
+        area = areas.get(id(each.area), each.area) if each.area is not None else None
+        if row is None and listed is each.listed_type and area is each.area:
+            continue
+        device = fitter._effective(record, listed) if record.own is not None or listed is not each.listed_type else None
+        device = each.type if device is None and listed is each.listed_type else device
+        marking_text = record.ex_marking or (device.ex_marking if device else None)
+        new[id(each)] = replace(
+            each,
+            record=record,
+            signals=(record,) if row is not None else each.signals,
+            listed_type=listed,
+            type=device,
+            area=area,
+            unclassified=area.unclassified if area is not None and area is not each.area else each.unclassified,
+            marking=fitter._marking(marking_text) if marking_text else None,
+            body=_body_of(device),
+        )
+    if rows:
+        return None  # of an instrument that several rows make
+    instruments = tuple(new.get(id(each), each) for each in plant.instruments)
+    changed = replace(
+        plant,
+        lists=lists,
+        instruments=instruments,
+        areas_seen=plant.areas_seen if listed_areas is None else _areas_seen(listed_areas, instruments),
+        types=types,
+        areas=plant.areas if listed_areas is None else _by_name(listed_areas, "code")[0],
+        cables=cables,
+        cables_twice=cables_twice,
+        cable_types=cable_types,
+        cable_types_twice=cable_types_twice,
+        loop_rows=records.get("Loops", ()),
+        _by_tag={key: tuple(new.get(id(each), each) for each in found) for key, found in plant._by_tag.items()},
+        _asked={},
+        _whole={},
+        _notes={},
+    )
+    only_areas = moved.keys() == {"Areas"} and all(
+        old.record is each.record for old, each in zip(plant.instruments, instruments, strict=True)
+    )
+    if only_areas:
+        _keep_circuits(plant, changed, new)
+    else:
+        _wire(changed)
+    return changed
+
+
+def _moved(plant: Plant, lists: Lists) -> dict[str, list[tuple[Any, Any]]] | None:
+    """Return the rows that have other values, old and new by their sheet; None where more has changed."""
+    before, after = plant.lists.records, lists.records
+    if before.keys() != after.keys() or lists.plant is not plant.lists.plant:
+        return None
+    index_name = "Instruments" if before.get("Instruments") else "IO list"
+    moved: dict[str, list[tuple[Any, Any]]] = {}
+    for name, rows in before.items():
+        if len(rows) != len(after[name]):
+            return None
+        pairs = [(old, new) for old, new in zip(rows, after[name], strict=True) if old is not new]
+        if not pairs:
+            continue
+        if name in _WIRING:
+            moved[name] = pairs
+            continue
+        structure = _STRUCTURE if name == index_name else _OF_ENTRIES.get(name)
+        if structure is None or any(
+            not same_value(getattr(old, field), getattr(new, field))
+            or (getattr(old, field) is None) != (getattr(new, field) is None)
+            for old, new in pairs
+            for field in structure
+            if hasattr(old, field)
+        ):
+            return None
+        moved[name] = pairs
+    return moved
+
+
+def _areas_with_values(
+    plant: Plant, records: Mapping[str, tuple[Any, ...]]
+) -> tuple[tuple[Area, ...], dict[int, Area], frozenset[str]]:
+    """Return the areas as listed now, those that have changed by the ids of the old ones, and names that two have."""
+    listed = tuple(understood(area) for area in records["Areas"])
+    areas, twice = _by_name(listed, "code")
+    changed = {id(old): areas[key] for key, old in plant.areas.items() if key in areas and areas[key] != old}
+    return listed, changed, twice
+
+
+def _shares_its_tag(plant: Plant, each: Installed) -> bool:
+    return each.tag is not None and len(plant._by_tag.get(_lookup_key(each.tag), ())) > 1
+
+
+def _keep_circuits(plant: Plant, changed: Plant, new: Mapping[int, Installed]) -> None:
+    """Give a plant the circuits and loops of another, whose instruments have other areas."""
+    circuits: dict[int, Circuit] = {
+        id(circuit): replace(
+            circuit,
+            device=new.get(id(circuit.device), circuit.device),
+            members=tuple(new.get(id(each), each) for each in circuit.members),
+        )
+        for circuit in plant.circuits
+    }
+    changed.circuits = tuple(circuits[id(circuit)] for circuit in plant.circuits)
+    changed.loops = tuple(
+        replace(
+            loop,
+            members=tuple(new.get(id(each), each) for each in loop.members),
+            circuits=tuple(circuits[id(circuit)] for circuit in loop.circuits),
+        )
+        for loop in plant.loops
+    )
+    _find_circuits(changed)
+
+
+def _wire(plant: Plant) -> None:
+    """Give a plant its circuits and loops."""
     plant.circuits, plant.loops = wire(plant)
+    _find_circuits(plant)
+
+
+def _find_circuits(plant: Plant) -> None:
     plant._by_loop = {loop_key(loop.name): loop for loop in plant.loops}
     on: dict[int, list[Circuit]] = defaultdict(list)
     for circuit in plant.circuits:
         for member in circuit.members:
             on[id(member)].append(circuit)
     plant._circuits_of = {key: tuple(found) for key, found in on.items()}
-    return plant
+
+
+def _body_of(device: DeviceType | None) -> str | None:
+    """Return gauge, absolute or differential for a device's body: as stated, else as its limits are referred."""
+    if device is None or device.body is not None:
+        return device.body if device is not None else None
+    if device.url is not None and device.url.reference in ("gauge", "absolute", "differential"):
+        return device.url.reference
+    return None
 
 
 def name_key(text: str | None) -> str:
@@ -738,14 +919,6 @@ class _Fitter:
         live = record.status not in NOT_LIVE
         if not live and record.tag:
             name = f"{name} ({record.status})"
-        body = device.body if device else None
-        if (
-            body is None
-            and device is not None
-            and device.url is not None
-            and device.url.reference in ("gauge", "absolute", "differential")
-        ):
-            body = device.url.reference
         signals = _signals(rows)
         return _Draft(
             record=record,
@@ -764,7 +937,7 @@ class _Fitter:
             unclassified=unclassified,
             marking=self._marking(marking_text) if marking_text else None,
             signals=signals,
-            body=body,
+            body=_body_of(device),
             merged_rows=len(rows),
         )
 

@@ -119,6 +119,8 @@ class Cuts:
             yield from self._beside_tag(fix.change["tag"])
         if "loop" in fix.change:
             yield from self._by_loop.get(loop_key(fix.change["loop"]), ())
+        if "I/O address" in fix.change:
+            yield from self._by_address.get(name_key(fix.change["I/O address"]), ())
 
     def _meant(self, subject: str, fix: Fix) -> Iterator[Installed]:
         """Give the instruments that a subject and a fix name: by tag, by circuit, by an entry that they use."""

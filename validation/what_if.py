@@ -19,7 +19,7 @@ from instruments.unit import unit_label
 from instruments.workbook.lists import Lists
 from instruments.written import CannotStand, value_of
 from loops.circuit import Circuit
-from loops.plant import Plant, assemble, name_key, same_value
+from loops.plant import Plant, assemble, name_key, same_value, with_values
 from loops.record import CableType, LoopRow
 from validation.audit import Audit, Broken, audit, finding_order
 from validation.cut import Cuts, row_key
@@ -387,7 +387,9 @@ def what_if(
         found = _of_a_part(result, made, registry, raise_errors)
         if found is not None:
             return found
-    after = assemble(made.lists, profile=None if tags else plant.profile)
+    after = None if tags else with_values(plant, made.lists)
+    if after is None:
+        after = assemble(made.lists, profile=None if tags else plant.profile)
     names = None if tags else changed_names(plant, after)
     asked = _asked(registry, names)
     again = audit(after, rules=registry, codes=[rule.code for rule in asked], raise_errors=raise_errors)
@@ -411,20 +413,20 @@ def _of_a_part(result: Audit, made: _Made, registry: Registry, raise_errors: boo
     if names is None:
         return None
     asked = _asked(registry, names)
-    # What a rule says of the whole list cannot be told of a part of it.
+    # What a rule says of the whole list cannot be told of a part of it, nor which instruments make a group anew.
     whole = frozenset(
         rule.code
         for rule in asked
-        if rule.on is Subject.WHOLE or (rule.whole is not None and can_read_in(rule.whole, names))
+        if rule.on is Subject.WHOLE
+        or any(each is not None and can_read_in(each, names) for each in (rule.whole, rule.groups))
     )
     local = [rule.code for rule in asked if rule.code not in whole]
     before = audit(part, rules=registry, codes=local, raise_errors=raise_errors)
     after = audit(changed, rules=registry, codes=local, raise_errors=raise_errors)
     was = list(before.findings)
     if whole:
-        more = audit(
-            assemble(made.lists, profile=plant.profile), rules=registry, codes=whole, raise_errors=raise_errors
-        )
+        everything = with_values(plant, made.lists) or assemble(made.lists, profile=plant.profile)
+        more = audit(everything, rules=registry, codes=whole, raise_errors=raise_errors)
         after.findings.extend(more.findings)
         after.broken.extend(more.broken)
         was.extend(finding for finding in result.findings if finding.rule in whole)

@@ -72,6 +72,8 @@ def names(subject: str, fix: Row) -> set[str]:
         ("TT-9", {"change": {"tag": "LT-2"}}, {"TT-9", "LT-2", "LV-2"}),
         ("TT-9", {"change": {"tag": "FT-003"}}, {"TT-9", "FT-3", "FT-03"}),
         ("TT-9", {"change": {"loop": "L-2"}}, {"TT-9", "LT-2", "LV-2"}),
+        # What has the address that it would have.
+        ("TT-9", {"change": {"I/O address": "a2"}}, {"TT-9", "PT-1B"}),
         # A group is all its members; an entry of a catalogue all that name it.
         ("PT-1A, TT-9", {"change": {"tag": "XX-1"}}, {"PT-1A", "PT-1B", "LT-2", "TT-9", "PB-1"}),
         ("LT-2", {"change": {"description": "d"}, "subject": "T1", "sheet": "Device types"},
