@@ -8,13 +8,16 @@ import sys
 import tempfile
 import time
 from argparse import ArgumentParser
+from collections import Counter
 from pathlib import Path
 from typing import Any
 
 from django.core.management.base import BaseCommand
 
 from config.bench.made_list import write_list
+from config.bench.mutants import mutant, settled, tried
 from config.bench.stages import audit_stages, bare_read
+from instruments.console import for_console
 
 
 class Command(BaseCommand):
@@ -31,10 +34,17 @@ class Command(BaseCommand):
         parser.add_argument("--tags", type=int, default=50_000, help="tags of the list")
         parser.add_argument("--and", type=int, dest="second", metavar="N", help="tags of a second, longer list")
         parser.add_argument("--list", metavar="FILE", help="a list of your own instead of a made one")
+        parser.add_argument("--mutants", type=int, metavar="N", help="audit N workbooks broken by chance instead")
+        parser.add_argument("--seed", type=int, default=1, help="of the mutants: one seed breaks them one way")
+        parser.add_argument("--first", type=int, default=1, metavar="N", help="number of the first mutant")
+        parser.add_argument("--keep", metavar="DIR", help="a folder for the mutants that the audit did not take well")
         parser.add_argument("--stage", choices=["audit", "bare"], help="measure one stage alone; prints JSON")
 
     def handle(self, *args: Any, **options: Any) -> None:
         """Measure and print."""
+        if options["mutants"]:
+            self._mutants(options["mutants"], options["seed"], options["first"], options["list"], options["keep"])
+            return
         if options["stage"]:
             measure = audit_stages if options["stage"] == "audit" else bare_read
             self.stdout.write(json.dumps(measure(Path(options["list"]))))
@@ -48,6 +58,34 @@ class Command(BaseCommand):
                     f"{options['second']:,} tags take {ratio:.2f} times what {options['tags']:,} take "
                     f"({options['second'] / options['tags']:.2f} times the tags)"
                 )
+
+    def _mutants(self, count: int, seed: int, first: int, given: str | None, keep: str | None) -> None:
+        """Audit mutants, tell of each that is not taken as it should be, and leave with 1 where there is one."""
+        ended: Counter[int] = Counter()
+        failed = 0
+        peak_mb = longest_s = 0.0
+        with tempfile.TemporaryDirectory(prefix="ferrule-mutants-") as folder:
+            path = Path(given) if given else Path(folder) / "sound.xlsx"
+            if not given:
+                write_list(path, 40)
+            sound = settled(path.read_bytes())
+            for number, done, why in tried(sound, range(first, first + count), Path(folder), seed=seed):
+                ended[done.status] += 1
+                peak_mb, longest_s = max(peak_mb, done.peak_mb), max(longest_s, done.cpu_s)
+                if why:
+                    failed += 1
+                    self.stdout.write(f"mutant {number} of seed {seed}: {for_console(why)}")
+                    if keep:
+                        Path(keep).mkdir(parents=True, exist_ok=True)
+                        (Path(keep) / f"mutant-{seed}-{number}.xlsx").write_bytes(mutant(sound, number, seed=seed))
+                if number % 1000 == 0:
+                    self.stdout.write(f"{number}: {dict(ended)}, {failed} failed, peak {peak_mb:.0f} MB")
+        self.stdout.write(
+            f"{count:,} mutants: {ended[0]:,} audited, {ended[2]:,} refused, {failed} not taken as they should be; "
+            f"longest {longest_s:.1f} s, peak {peak_mb:.0f} MB"
+        )
+        if failed:
+            sys.exit(1)
 
     def _measure(self, folder: str, tags: int, given: str | None) -> dict[str, float]:
         path = Path(given) if given else Path(folder) / f"made-{tags}.xlsx"
