@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Final
 
 from instruments.certificate import Certificate, read_certificates
@@ -90,7 +90,7 @@ def _certificates_of(plant: Plant) -> tuple[CertificateInPlant, ...]:
             members[key].append(each)
     made = [
         CertificateInPlant(
-            certificate=min(read[key], key=lambda each: (_SUFFIX_ORDER.index(each.suffix), not each.form_known)),
+            certificate=_as_one(read[key]),
             members=tuple(sorted(members[key], key=lambda each: natural_key(each.name))),
         )
         for key in read
@@ -99,3 +99,11 @@ def _certificates_of(plant: Plant) -> tuple[CertificateInPlant, ...]:
 
 
 _SUFFIX_ORDER: Final = ("X", "U", "")
+
+
+def _as_one(read: list[Certificate]) -> Certificate:
+    """Return one certificate of several spellings: with the suffix that one of them has, and with its capitals."""
+    suffix = min((each.suffix for each in read), key=_SUFFIX_ORDER.index)
+    known = [each for each in read if each.form_known] or read
+    best = min(known, key=lambda each: (-sum(sign.isupper() for sign in each.number), each.number))
+    return replace(best, suffix=suffix)

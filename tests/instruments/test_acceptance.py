@@ -22,6 +22,7 @@ from instruments.acceptance import (
     entry_in_zone,
     epl_in_zone,
     gas_group,
+    scheme_as_evidence,
     t_class_for_ignition,
     temperature,
     translated_group,
@@ -652,6 +653,28 @@ def test_what_a_named_gas_makes_of_a_translation(text: str, area: Area, outcome:
 )
 def test_certificate_suffix(cell: str, accepted_by: str | None, outcome: str) -> None:
     assert certificate_suffix(read_certificates(cell), conditions_accepted=accepted_by).outcome == outcome
+
+
+# Schemes
+
+
+@pytest.mark.parametrize(
+    ("text", "evidence"),
+    [
+        ("Ex ia IIC T4 Ga", {"IEC", "ATEX", "Canada"}),
+        ("II 1 G Ex ia IIC T4 Ga", {"IEC", "ATEX"}),
+        ("EEx ia IIC T4", {"IEC", "ATEX"}),
+        ("II 2 D T 80 °C", {"ATEX"}),
+        ("AEx ia IIC T4 Ga", {"US"}),
+        ("Class I, Zone 1, AEx db IIC T4 Gb", {"US"}),
+        ("Class I Div 1 Gr D T4", {"US", "Canada"}),
+    ],
+)
+def test_every_scheme_under_every_jurisdiction(text: str, evidence: set[str]) -> None:
+    places = ("IEC", "ATEX", "US", "Canada")
+    found = {each: scheme_as_evidence(mark(text), each).outcome for each in places}
+    assert found == {each: "accepted" if each in evidence else "review" for each in places}
+    assert scheme_as_evidence(mark(text), None).missing == ("jurisdiction",)
 
 
 # One marking of several
