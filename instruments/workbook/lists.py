@@ -10,6 +10,7 @@ from types import MappingProxyType
 from typing import Any
 
 from instruments.column import SheetKind
+from instruments.number import CellTrouble
 from instruments.origin import column_letters
 from instruments.plant_data import PlantData
 from instruments.workbook.headings import SheetMatch, match_sheet
@@ -23,6 +24,7 @@ from instruments.workbook.problem import CellProblem
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.side_by_side import parted_where_tables_stand_side_by_side
 from instruments.workbook.turned import turned_where_tags_stand_across
+from instruments.workbook.unread import Unread, problems_of
 from instruments.workbook.words import folded
 
 __all__ = ["Lists", "NoTags", "SheetReport", "records_of_sheets"]
@@ -200,7 +202,9 @@ def records_of_sheets(
             reports.append(_left_out(sheet, told))
             continue
         if _is_plant(match.kind):
-            reports.append(_plant_report(sheet, match, plant_problems))
+            failed, count = _failed_cells(sheet)
+            problems.extend(failed)
+            reports.append(_plant_report(sheet, match, entries, plant_problems, count))
             continue
         tell(f"understanding {sheet.file}, sheet {sheet.name}: {match.kind.name}")
         found = read_records(sheet, match, plant=plant)
@@ -362,14 +366,22 @@ def _left_out(sheet: Sheet, told: MappedSheet | None) -> SheetReport:
         sheet=sheet.name,
         skipped=why,
         cells_filled=sheet.cells_filled,
-        remarks=sheet.notes,
+        remarks=(*sheet.notes, *_drawn_and_said(sheet)),
         left_out=told is not None and told.kind == LEAVE_OUT,
         encoding=sheet.encoding,
         separator=sheet.separator,
     )
 
 
-def _plant_report(sheet: Sheet, match: SheetMatch, problems: Sequence[CellProblem]) -> SheetReport:
+def _drawn_and_said(sheet: Sheet) -> list[str]:
+    """Tell what belongs to a sheet of which no row is read and stands in none of its cells."""
+    said = [f"{len(sheet.comments)} comments are not read"] if sheet.comments else []
+    return said + ([f"{sheet.shapes} drawn shapes are not read"] if sheet.shapes else [])
+
+
+def _plant_report(
+    sheet: Sheet, match: SheetMatch, entries: Sequence[PlantEntry], problems: Sequence[CellProblem], failed: int
+) -> SheetReport:
     cells = {each.cell for each in problems if (each.cell.file, each.cell.sheet) == (sheet.file, sheet.name)}
     return SheetReport(
         file=sheet.file,
@@ -379,12 +391,46 @@ def _plant_report(sheet: Sheet, match: SheetMatch, problems: Sequence[CellProble
         rows=1,
         records=1,
         cells_filled=sheet.cells_filled,
-        cells_read=sheet.cells_filled - len(cells),
-        cells_unread=len(cells),
-        remarks=sheet.notes,
+        cells_read=sheet.cells_filled - len(cells) - failed,
+        cells_unread=len(cells) + failed,
+        notes=_beside_the_plant_s_data(sheet, match, entries),
+        remarks=(*sheet.notes, *_drawn_and_said(sheet)),
         encoding=sheet.encoding,
         separator=sheet.separator,
     )
+
+
+def _failed_cells(sheet: Sheet) -> tuple[tuple[CellProblem, ...], int]:
+    """Return the cells of a Plant sheet that show an error, have no value or stand far away, and how many they are."""
+    failed = [
+        Unread(row, column, "", "", "", text, CellTrouble(reason=f"the cell shows {text}"))
+        for (row, column), text in sheet.errors.items()
+    ]
+    failed += [
+        Unread(row, column, "", "", "", "", CellTrouble(reason="a formula without a saved value"))
+        for row, column in sheet.no_value
+    ]
+    return problems_of(sheet, failed, lambda column: 0)
+
+
+def _beside_the_plant_s_data(
+    sheet: Sheet, match: SheetMatch, entries: Sequence[PlantEntry]
+) -> tuple[tuple[int, str], ...]:
+    """Return what a Plant sheet says besides: lines with one cell, and cells behind the values."""
+    own = {each.cell.row: each for each in entries if (each.cell.file, each.cell.sheet) == (sheet.file, sheet.name)}
+    rows = range(len(sheet.rows)) if not match.header_rows else range(match.header_rows[0])
+    notes: list[tuple[int, str]] = []
+    for number in rows:
+        filled = [as_text(cell).strip() for cell in sheet.rows[number] if cell is not None]
+        entry = own.get(number + 1) if not match.header_rows else None
+        if entry is not None:
+            # The name, the value, and its unit.
+            filled = [text for text in filled[2:] if text not in entry.text.split()]
+        elif len(filled) == 2 and not match.header_rows:
+            continue
+        if filled:
+            notes.append((number + 1, " | ".join(filled)))
+    return tuple(notes)
 
 
 def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport:

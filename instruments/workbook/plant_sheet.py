@@ -31,6 +31,7 @@ ATMOSPHERE_PA: Final = (45_000.0, 110_000.0)
 """Atmospheric pressures that a plant can have: from some 6,000 m above the sea to below it (ISO 2533, from memory)."""
 
 _THRESHOLD: Final = re.compile(r"(?i)(?:tag|dat|rng|pro|elc|haz|isc|wir|set|ctl|doc|com|xch)(?:\d\d)?\b.*\S")
+_NUMBER: Final = re.compile(r"[+-]?\d{1,12}(?:[.,]\d{1,12})?")
 _REFERENCES: Final = {"gauge": ("gauge", "g", "gage", "barg", "relative"), "absolute": ("absolute", "a", "abs")}
 _NUMBERING: Final = {
     "parallel": ("parallel", "parallel numbering", "per letter", "by letter"),
@@ -65,12 +66,12 @@ def read_plant_sheet(sheet: Sheet, match: SheetMatch) -> tuple[PlantEntry, ...]:
                 continue
             name = filled[0][1].strip(" :=\t\n")
             index = filled[1][0]
-            # A unit of its own behind the value belongs to it.
-            text = " ".join(_text(sheet, number, at) for at, _ in filled[1:3])
-            if len(filled) > 2 and not re.fullmatch(
-                r"[^\d\W]{1,12}|%|[^\W\d]{1,6}\([a-z]{1,4}\)", _text(sheet, number, filled[2][0])
-            ):
-                text = _text(sheet, number, index)
+            text = _text(sheet, number, index)
+            # A unit of its own behind a number belongs to it.
+            if len(filled) > 2 and _NUMBER.fullmatch(text):
+                beside = _text(sheet, number, filled[2][0])
+                if re.fullmatch(r"[^\d\W]{1,12}|%|[^\W\d]{1,6}\([a-z]{1,4}\)", beside):
+                    text = f"{text} {beside}"
             if folded(name) in ("field", "name of field", "item", "setting") and folded(text) in (
                 "value",
                 "setting",

@@ -223,3 +223,38 @@ def test_a_small_list_of_cable_types_with_a_code_twice_is_one(rows: str) -> None
     index = sheet("Tag|Cable type\nPT-101|A1\nPT-102|A1")
     found = records_of_sheets([index, sheet(rows, name="Cable types")], KINDS)
     assert [(each.kind, each.records) for each in found.sheets] == [("Instruments", 2), ("Cable types", 2)]
+
+
+def test_what_stands_beside_the_plant_s_data_is_noted_and_what_failed_told() -> None:
+    plant = sheet(
+        "Plant data||\nField|Value|Remark\nJurisdiction|ATEX|since 2003\nAtmospheric pressure|98|kPa\n"
+        "Numbering||\nName||\nChecked by A. N.||",
+        name="Plant",
+        errors={(4, 1): "#REF!"},
+        no_value={(5, 1)},
+        far={(900, 0): "x"},
+    )
+    index = sheet("Tag|Service\nPT-101|feed\nPT-102|return")
+    found = records_of_sheets([index, plant], KINDS)
+    report = found.sheets[1]
+    assert (found.plant.jurisdiction, found.plant.atmospheric_pa) == ("ATEX", 98000.0)
+    assert (report.cells_filled, report.cells_read, report.cells_unread) == (16, 13, 3)
+    assert [(each.cell.address, each.reason) for each in found.problems] == [
+        ("B5", "the cell shows #REF!"),
+        ("B6", "a formula without a saved value"),
+        ("A901", "stands so far from the list that it was left out"),
+    ]
+    assert report.notes == (
+        (1, "Plant data"), (2, "Field | Value | Remark"), (3, "since 2003"), (5, "Numbering"), (6, "Name"),
+        (7, "Checked by A. N."),
+    )  # fmt: skip
+
+
+def test_comments_and_shapes_of_a_sheet_that_is_not_read_are_counted() -> None:
+    index = sheet("Tag|Service\nPT-101|feed\nPT-102|return")
+    cover = sheet("A list", name="Cover", comments={(0, 0): "A. N.: old", (3, 3): "x"}, shapes=2)
+    report = records_of_sheets([index, cover], KINDS).sheets[1]
+    assert (report.skipped, report.remarks) == (
+        "a sheet named Cover holds no list",
+        ("2 comments are not read", "2 drawn shapes are not read"),
+    )
