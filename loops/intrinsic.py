@@ -34,6 +34,7 @@ from instruments.record import DeviceType
 from loops.cable import read_conductor_size
 from loops.circuit import Circuit, Given
 from loops.entity import (
+    CAPS_NF,
     IEC_DEFAULTS,
     MORE_DEMANDING,
     US_DEFAULTS,
@@ -197,6 +198,10 @@ class Intrinsic:
         Its Ex i sources.
     source_missing
         What it would take to tell whether it has a source; empty where that is known.
+    ruling
+        The group that rules it.
+    concerns
+        Whether a part of it stands in a classified area, or it is declared; None where nothing tells.
     """
 
     circuit: Circuit
@@ -205,18 +210,12 @@ class Intrinsic:
     sources: tuple[ExSource, ...] = ()
     source_missing: str = ""
     ruling: Ruling = Ruling()
+    concerns: bool | None = None
 
     @property
     def is_ex_i(self) -> bool:
         """Whether it has an Ex i source, is declared so, or has a device with no other protection."""
         return bool(self.because)
-
-    @property
-    def concerns(self) -> bool | None:
-        """Whether a part of it stands in a classified area, or it is declared; None where nothing tells."""
-        if self.circuit.intrinsically_safe or any(item.classified for item in self.items):
-            return True
-        return None if any(item.areas is None for item in self.items) else False
 
     @property
     def fed(self) -> tuple[Item, ...]:
@@ -255,7 +254,7 @@ def _nothing_yet(plant: Plant) -> dict[Any, Any]:
 
 
 def _intrinsic(circuit: Circuit, plant: Plant) -> Intrinsic:
-    items = tuple(_items(circuit))
+    items = tuple(_items(circuit, plant))
     sources, missing = _sources(circuit, items, plant)
     because = ""
     if sources:
@@ -276,14 +275,31 @@ def _intrinsic(circuit: Circuit, plant: Plant) -> Intrinsic:
         items=items,
         sources=sources,
         source_missing=missing,
-        ruling=_ruling(items) if because or any(item.relies for item in items) else Ruling(),
+        ruling=_cached_ruling(items, plant) if because or any(item.relies for item in items) else Ruling(),
+        concerns=_concerns(circuit, items),
     )
+
+
+def _concerns(circuit: Circuit, items: tuple[Item, ...]) -> bool | None:
+    if circuit.intrinsically_safe or any(item.areas for item in items):
+        return True
+    return None if any(item.areas is None for item in items) else False
+
+
+def _cached_ruling(items: tuple[Item, ...], plant: Plant) -> Ruling:
+    key = tuple(area for item in items for area in item.areas or ())
+    known: dict[tuple[int, ...], tuple[tuple[Area, ...], Ruling]] = plant.once("ruling groups", _nothing_yet)
+    ids = tuple(map(id, key))
+    found = known.get(ids)
+    if found is None or any(one is not other for one, other in zip(found[0], key, strict=True)):
+        found = known[ids] = (key, _ruling(items))
+    return found[1]
 
 
 # ------------------------------------------------------------------------------------------------- the field's side
 
 
-def _items(circuit: Circuit) -> Iterator[Item]:
+def _items(circuit: Circuit, plant: Plant) -> Iterator[Item]:
     members = circuit.members
     driven = len(members) > 1 and any(each.kind in _DRIVES for each in members)
     transmits = circuit.device.kind in _TRANSMITTERS and len(members) > 1 and _is_in_field(circuit.device)
@@ -299,7 +315,7 @@ def _items(circuit: Circuit) -> Iterator[Item]:
         if areas == () and each.record.location == "panel":
             # On which side of the barrier a panel stands nobody says.
             continue
-        told = _protection(each, areas or ())
+        told = _known_protection(each, areas or (), plant)
         yield Item(
             installed=each,
             areas=areas,
@@ -340,6 +356,29 @@ class _Told(NamedTuple):
     level: Level | None = None
     missing: str = ""
     blank: bool = False
+
+
+def _known_protection(installed: Installed, areas: tuple[Area, ...], plant: Plant) -> _Told:
+    """Return how a device is protected, worked out once for all that are alike in what it depends on."""
+    record = installed.record
+    known: dict[Any, tuple[tuple[Any, ...], _Told]] = plant.once("how devices are protected", _nothing_yet)
+    held = (*areas, installed.type, installed.listed_type)
+    key = (
+        installed.marking.text if installed.marking is not None else None,
+        record.protection,
+        tuple(map(id, held)),
+        installed.kind,
+        record.simple_apparatus,
+        record.nonincendive,
+        record.signal,
+        record.device_type,
+        "ex_marking" in record.unread,
+        installed.letters[:1],
+    )
+    found = known.get(key)
+    if found is None or any(one is not other for one, other in zip(found[0], held, strict=True)):
+        found = known[key] = (held, _protection(installed, areas))
+    return found[1]
 
 
 def _protection(installed: Installed, areas: tuple[Area, ...]) -> _Told:
@@ -422,17 +461,22 @@ _APART: Final = re.compile(r" ?[,;\n] ?| \+ | / | & | and | und ")
 _MOST_NAMES: Final = 4
 
 
+@lru_cache(maxsize=4096)
+def _says_none(named: str) -> bool:
+    return _NO_BARRIER.fullmatch(named.strip()) is not None
+
+
 def _sources(circuit: Circuit, items: tuple[Item, ...], plant: Plant) -> tuple[tuple[ExSource, ...], str]:
     """Return a circuit's Ex i sources, and what is missing to tell whether it has one."""
     found: list[ExSource] = []
     missing = ""
     named = circuit.barrier_named
-    if named and not _NO_BARRIER.fullmatch(named.strip()):
+    if named and not _says_none(named):
         for name, entry, marking in _barriers(named, circuit, plant):
             if entry is None:
                 missing = "barrier"
                 continue
-            source = _source(name, entry, marking, "barrier")
+            source = _known_source(name, entry, marking, "barrier", plant)
             if source is None:
                 missing = "barrier"
             elif isinstance(source, ExSource):
@@ -440,7 +484,7 @@ def _sources(circuit: Circuit, items: tuple[Item, ...], plant: Plant) -> tuple[t
     elif not named:
         missing = _blank_barrier(circuit, plant)
     if circuit.card is not None and circuit.card is not circuit.barrier:
-        source = _source(circuit.card.code or "card", circuit.card, None, "card")
+        source = _known_source(circuit.card.code or "card", circuit.card, None, "card", plant)
         if isinstance(source, ExSource):
             found.append(source)
     elif circuit.card_named and circuit.card is None and says_intrinsically_safe(circuit.card_named):
@@ -468,6 +512,18 @@ def _barriers(named: str, circuit: Circuit, plant: Plant) -> Iterator[tuple[str,
                 yield each.name, each.type, each.marking
         else:
             yield (entry.code or name) if entry is not None else name, entry, None
+
+
+def _known_source(
+    name: str, entry: DeviceType, marking: Marking | None, role: str, plant: Plant
+) -> ExSource | bool | None:
+    """Return an entry as a source, worked out once: most circuits of a plant share a few."""
+    known: dict[Any, tuple[DeviceType, ExSource | bool | None]] = plant.once("Ex i sources by entry", _nothing_yet)
+    key = (id(entry), name, role, marking.text if marking is not None else None)
+    found = known.get(key)
+    if found is None or found[0] is not entry:
+        found = known[key] = (entry, _source(name, entry, marking, role))
+    return found[1]
 
 
 def _source(name: str, entry: DeviceType, marking: Marking | None, role: str) -> ExSource | bool | None:
@@ -720,6 +776,92 @@ def _entity(of: Intrinsic, plant: Plant) -> Entity:
     return entity_with(of, of.sources[0], plant)
 
 
+_MARGIN: Final = 1.0 - 1e-9
+
+
+def plainly_holds(of: Intrinsic, plant: Plant) -> tuple[str, ...] | None:
+    """Return the assumptions of a comparison in which every term holds with room to spare; None of any other.
+
+    Most circuits of a plant pass by far, even with halved Co and Lo, and need no line of the comparison.
+    """
+    circuit, group = of.circuit, of.ruling.group
+    if len(of.sources) != 1 or group is None or of.ruling.harder != group:
+        return None
+    source = of.sources[0]
+    entry = source.entry
+    uo, io, po = entry.uo_v, entry.io_ma, entry.po_mw
+    if uo is None or io is None or po is None:
+        return None
+    taken = _taken_floats(entry, group)
+    linear, assumed_linear = _is_linear(source)
+    if taken is None or not linear:
+        return None
+    ci = li = 0.0
+    for item in of.items:
+        if item.at_transmitter:
+            continue
+        device = item.installed.type
+        if item.how == "simple":
+            if device is None:
+                continue
+            if any(getattr(device, name) is not None for name in DEVICE_LIMITS):
+                return None
+            continue
+        if device is None or item.how not in ("intrinsically safe", "several"):
+            return None
+        ui, ii, pi = device.ui_v, device.ii_ma, device.pi_mw
+        if ui is None or ii is None or pi is None or device.ci_nf is None or device.li_uh is None:
+            return None
+        if uo > ui * _MARGIN or io > ii * _MARGIN or po > pi * _MARGIN:
+            return None
+        ci += device.ci_nf
+        li += device.li_uh
+    stored = _stored_floats(circuit)
+    if stored is None:
+        return None
+    co_nf, lo_mh = taken
+    if ci + stored[0] > co_nf * _MARGIN or (li + stored[1]) / 1000.0 > lo_mh * _MARGIN:
+        return None
+    return linear_assumption(source) if assumed_linear else ()
+
+
+def _taken_floats(entry: DeviceType, group: Group) -> tuple[float, float] | None:
+    """Return half of the Co and Lo of a group's own pair, with the cap; None where it has no pair of its own."""
+    co, lo = getattr(entry, f"co_{group.casefold()}_nf"), getattr(entry, f"lo_{group.casefold()}_mh")
+    if co is None or lo is None:
+        return None
+    return min(co / 2.0, float(CAPS_NF[group])), lo / 2.0
+
+
+def _stored_floats(circuit: Circuit) -> tuple[float, float] | None:
+    """Return what the cables of a run store in nF and uH; None where anything of them is not given."""
+    if circuit.segments:
+        pieces: list[tuple[float, Any]] = [(each.length_m, each.type) for each in circuit.segments]
+    elif circuit.cable_length_m is not None:
+        pieces = [(circuit.cable_length_m.number, circuit.cable_type)]
+    else:
+        return None
+    nf = uh = 0.0
+    for length_m, kind in pieces:
+        if kind is None or kind.capacitance_pf_per_m is None or kind.inductance_uh_per_m is None:
+            return None
+        nf += length_m * kind.capacitance_pf_per_m / 1000.0
+        uh += length_m * kind.inductance_uh_per_m
+    return nf, uh
+
+
+def _is_linear(source: ExSource) -> tuple[bool | None, bool]:
+    """Return whether a source's output characteristic is linear, and whether that is assumed of a zener barrier."""
+    stated, isolation = source.entry.output_characteristic, source.entry.isolation
+    zener = source.role == "barrier" and (isolation == "zener" or (isolation is None and _is_zener(source.entry)))
+    return (stated == "linear" if stated is not None else True if zener else None), stated is None and zener
+
+
+def linear_assumption(source: ExSource) -> tuple[str, ...]:
+    """Return the assumption about a zener barrier's characteristic, in words."""
+    return (f"{source.name}: a zener barrier's output characteristic is taken as linear",)
+
+
 def entity_with(of: Intrinsic, source: ExSource, plant: Plant, *, length_m: float | None = None) -> Entity:
     """Return the entity comparison of a circuit as it would be with a source, and with another length of cable.
 
@@ -749,8 +891,7 @@ def entity_with(of: Intrinsic, source: ExSource, plant: Plant, *, length_m: floa
     harder = None
     if ruling.group and ruling.harder and ruling.harder != ruling.group and not ruling.letters <= source.letters:
         harder = compare(source_for(source, ruling.harder), apparatus, cable, group=ruling.harder)
-    stated, isolation = source.entry.output_characteristic, source.entry.isolation
-    zener = source.role == "barrier" and (isolation == "zener" or (isolation is None and _is_zener(source.entry)))
+    linear, linear_assumed = _is_linear(source)
     return Entity(
         intrinsic=of,
         source=source,
@@ -758,8 +899,8 @@ def entity_with(of: Intrinsic, source: ExSource, plant: Plant, *, length_m: floa
         kindest=kindest,
         harder=harder,
         assumed=assumed,
-        linear=stated == "linear" if stated is not None else True if zener else None,
-        linear_assumed=stated is None and zener,
+        linear=linear,
+        linear_assumed=linear_assumed,
     )
 
 

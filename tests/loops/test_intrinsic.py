@@ -5,7 +5,7 @@ from typing import Any
 import pytest
 
 from loops.circuit import Circuit
-from loops.intrinsic import entity_comparison, groups_stated, intrinsic, needed_level
+from loops.intrinsic import entity_comparison, groups_stated, intrinsic, needed_level, plainly_holds
 from loops.plant import Plant
 from validation.example import example_plant
 
@@ -462,3 +462,32 @@ def test_without_one_source_there_is_no_comparison(changes: Row, missing: tuple[
     plant = plant_of({**TAG, **changes})
     found = entity_comparison(circuit_of(plant), plant)
     assert (found.comparison, found.missing) == (None, missing)
+
+
+@pytest.mark.parametrize(
+    ("changes", "types", "plainly"),
+    [
+        ({}, {}, True),
+        ({"cable length": "345 m"}, {}, True),  # 40.95 of half the 83 nF
+        ({"cable length": "360 m"}, {}, False),
+        ({}, {"Ui V": "28"}, False),  # equal holds, though not plainly
+        ({}, {"Li uH": "1290"}, True),
+        ({}, {"Li uH": "1340"}, False),
+        ({}, {"Ci nF": ""}, False),
+        ({"cable type": ""}, {}, False),
+        ({"area classification": "Zone 1 IIB T4"}, {}, True),
+        ({"area classification": "Cl I Div 1 Gr D T4"}, {}, False),
+        ({"card": "AIX"}, {}, False),
+    ],
+)
+def test_what_plainly_holds_passes_line_by_line(changes: Row, types: Row, plainly: bool) -> None:
+    plant = plant_of({**TAG, **changes}, types=[{**TYPES[0], **types}, *TYPES[1:]])
+    circuit = circuit_of(plant)
+    found = plainly_holds(intrinsic(circuit, plant), plant)
+    assert (found is not None) is plainly
+    if plainly:
+        entity = entity_comparison(circuit, plant)
+        assert entity.comparison is not None
+        assert entity.comparison.passes is True
+        assert (entity.assumed, entity.harder, entity.linear) == ((), None, True)
+        assert found == ("ZB: a zener barrier's output characteristic is taken as linear",)

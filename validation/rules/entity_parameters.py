@@ -22,6 +22,8 @@ from loops.intrinsic import (
     entity_comparison,
     groups_stated,
     intrinsic,
+    linear_assumption,
+    plainly_holds,
 )
 from loops.plant import Plant
 from validation.finding import Clear, Fix, Found, NotApplicable, Review, Severity, Unchecked, Verdict
@@ -40,6 +42,19 @@ def is_ex_i(circuit: Circuit, plant: Plant) -> bool:
     """Whether a circuit is an Ex i circuit of which a part may stand in a classified area, or declared one."""
     of = intrinsic(circuit, plant)
     return of.is_ex_i and of.concerns is not False
+
+
+def plain(of: Intrinsic, plant: Plant) -> tuple[str, ...] | None:
+    """Return the assumptions of a comparison that plainly holds, asked once a circuit; None of any other."""
+    known: dict[int, tuple[Intrinsic, tuple[str, ...] | None]] = plant.once("plain comparisons", _nothing_yet)
+    found = known.get(id(of))
+    if found is None or found[0] is not of:
+        found = known[id(of)] = (of, plainly_holds(of, plant))
+    return found[1]
+
+
+def _nothing_yet(plant: Plant) -> dict[int, tuple[Intrinsic, tuple[str, ...] | None]]:
+    return {}
 
 
 def barrier_cells(circuit: Circuit) -> tuple[Cell, ...]:
@@ -66,6 +81,8 @@ def _against_devices(circuit: Circuit, plant: Plant, quantity: Literal["voltage"
     of = intrinsic(circuit, plant)
     if of.concerns is None:
         return Unchecked("area")
+    if plain(of, plant) is not None and any(item.how != "simple" for item in of.fed):
+        return None
     entity = entity_comparison(circuit, plant)
     if entity.comparison is None:
         return Unchecked(*entity.missing)
@@ -187,6 +204,9 @@ def _against_stores(circuit: Circuit, plant: Plant, quantity: Literal["capacitan
     of = intrinsic(circuit, plant)
     if of.concerns is None:
         return Unchecked("area")
+    plainly = plain(of, plant)
+    if plainly is not None:
+        return Clear(plainly) if plainly else None
     entity = entity_comparison(circuit, plant)
     comparison, kindest = entity.comparison, entity.kindest
     if comparison is None or kindest is None:
@@ -217,7 +237,7 @@ def _against_stores(circuit: Circuit, plant: Plant, quantity: Literal["capacitan
 def _linear_assumed(entity: Entity) -> tuple[str, ...]:
     if not entity.linear_assumed or entity.source is None:
         return ()
-    return (f"{entity.source.name}: a zener barrier's output characteristic is taken as linear",)
+    return linear_assumption(entity.source)
 
 
 def _titles(missing: Iterable[str], of: Intrinsic) -> tuple[str, ...]:
