@@ -143,6 +143,7 @@ _NO_NAME: Final = re.compile(
 )
 
 
+@lru_cache(maxsize=4096)
 def conditions_accepted(text: str | None) -> bool:
     """Whether a text records that somebody has accepted the conditions of use: a name and a date.
 

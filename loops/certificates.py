@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from dataclasses import dataclass, replace
+from functools import lru_cache
 from typing import Final
 
 from instruments.certificate import Certificate, read_certificates
@@ -64,14 +65,19 @@ def certificate_cells(installed: Installed) -> tuple[Cell, ...]:
 
 def evidence_of(installed: Installed) -> tuple[Certificate, ...]:
     """Return the certificates that an instrument names: those of its certificate cell, and those of its marking."""
-    text = certificate_text(installed)
     marking = marking_of(installed)
-    found = (*(read_certificates(text) if text else ()), *(marking.certificates if marking is not None else ()))
-    return tuple({_key(each): each for each in reversed(found)}.values())[::-1]
+    return _evidence(certificate_text(installed), marking.certificates if marking is not None else ())
 
 
-def _key(certificate: Certificate) -> str:
-    return "".join(certificate.number.casefold().split())
+@lru_cache(maxsize=4096)
+def _evidence(text: str | None, marked: tuple[Certificate, ...]) -> tuple[Certificate, ...]:
+    found = (*(read_certificates(text) if text else ()), *marked)
+    return tuple({_key(each.number): each for each in reversed(found)}.values())[::-1]
+
+
+@lru_cache(maxsize=4096)
+def _key(number: str) -> str:
+    return "".join(number.casefold().split())
 
 
 def certificates_of(plant: Plant) -> tuple[CertificateInPlant, ...]:
@@ -85,13 +91,13 @@ def _certificates_of(plant: Plant) -> tuple[CertificateInPlant, ...]:
     members: dict[str, list[Installed]] = defaultdict(list)
     for each in plant.live:
         for certificate in evidence_of(each):
-            key = _key(certificate)
+            key = _key(certificate.number)
             read[key].append(certificate)
             members[key].append(each)
     made = [
         CertificateInPlant(
             certificate=_as_one(read[key]),
-            members=tuple(sorted(members[key], key=lambda each: natural_key(each.name))),
+            members=tuple(members[key]),  # the plant's instruments are in the order of their names
         )
         for key in read
     ]

@@ -3,13 +3,30 @@
 from __future__ import annotations
 
 from collections import defaultdict
+from collections.abc import Mapping
 
 from instruments.installed import Installed
+from instruments.marking import Marking
 from instruments.protection import marking_of
 from loops.plant import Plant
 from validation.finding import Found, Severity, Unchecked, Verdict
 from validation.hazardous_place import is_marked_in_area, marking_field
 from validation.rule import Subject, rule
+
+
+def _by_kind(marking: Marking, plant: Plant) -> Mapping[str, list[str]]:
+    """Return the contradictions of a marking by their kind; worked out once for all that bear it."""
+    known: dict[str, Mapping[str, list[str]]] = plant.once("contradictions of markings", _none_yet)
+    if marking.text not in known:
+        found: dict[str, list[str]] = defaultdict(list)
+        for each in marking.contradictions:
+            found[each.kind].append(each.text)
+        known[marking.text] = found
+    return known[marking.text]
+
+
+def _none_yet(plant: Plant) -> dict[str, Mapping[str, list[str]]]:
+    return {}
 
 
 @rule(
@@ -39,9 +56,7 @@ def contradictory_marking(installed: Installed, plant: Plant) -> Verdict:
     marking = marking_of(installed)
     if marking is None or not marking.readable:
         return Unchecked("Ex marking")
-    by_kind: dict[str, list[str]] = defaultdict(list)
-    for each in marking.contradictions:
-        by_kind[each.kind].append(each.text)
+    by_kind = _by_kind(marking, plant)
     if not by_kind:
         return None
     own = marking_field(installed)
