@@ -6,10 +6,11 @@ import dataclasses
 from collections import defaultdict
 from collections.abc import Callable, Iterable, Mapping
 from dataclasses import replace
+from functools import lru_cache
 from types import MappingProxyType
 from typing import Any
 
-from instruments.column import Reads, SheetKind
+from instruments.column import Column, Reads, SheetKind
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
 from instruments.installed import Installed
 from instruments.record import DeviceType, Instrument, Record
@@ -105,12 +106,10 @@ def changed_row(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Reco
     """
     values: dict[str, Any] = {}
     own: dict[str, Any] = {}
-    by_title = {column.title.casefold(): column for column in kind.columns}
     for title, text in change.items():
-        column = by_title.get(title.casefold())
+        column, value = _read(kind.name, title.casefold(), text)
         if column is None:
             raise CannotStand(f"{kind.name} has no column {title}")
-        value = value_of(column, text) if text else None
         if column.reads is Reads.KIND:
             values["kind_written"] = text
         if column.reads is Reads.TAG:
@@ -130,6 +129,13 @@ def changed_row(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Reco
         unread=row.unread - filled,
         unitless=MappingProxyType({field: text for field, text in row.unitless.items() if field not in filled}),
     )
+
+
+@lru_cache(maxsize=4096)
+def _read(kind: str, title: str, text: str) -> tuple[Column | None, Any]:
+    """Return the column of a title and its value for a text: often the same in many rows."""
+    column = next((each for each in SHEET_KINDS[kind].columns if each.title.casefold() == title), None)
+    return column, value_of(column, text) if column is not None and text else None
 
 
 def found_after(plant: Plant, finding: Finding, fix: Fix, *, rules: Registry | None = None) -> list[Finding]:

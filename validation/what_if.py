@@ -212,10 +212,11 @@ def _made(plant: Plant, changes: Iterable[Change]) -> _Made:
         after: list[Any] = []
         filled: set[Any] = set()
         moved: list[tuple[Any, Mapping[str, str]]] = []
+        columns = {column.title: column for column in kind.columns}
         for row in before:
             text = _texts_for(row, change, kind) if id(row) in meant else {}
             new = changed_row(row, kind, text) if text else row
-            if text and not _alike(row, new):
+            if text and not _alike(row, new, [columns[title] for title in text]):
                 moved.append((row, text))
                 filled.update(cell for each in fields_of(kind, text) for cell in row.cells(each))
                 after.append(new)
@@ -233,11 +234,9 @@ def _made(plant: Plant, changes: Iterable[Change]) -> _Made:
     return _Made(lists, tuple(fixes), tuple(said))
 
 
-def _alike(row: Record, new: Record) -> bool:
-    """Whether a changed row says what it said before, its written words apart."""
-    return all(
-        getattr(row, each.name) == getattr(new, each.name) for each in dataclasses.fields(row) if each.name != "unread"
-    ) and (row.unread == new.unread)
+def _alike(row: Record, new: Record, columns: Iterable[Column]) -> bool:
+    """Whether a changed row says in some columns what it said before, its written words apart."""
+    return row.unread == new.unread and all(_value(row, each) == _value(new, each) for each in columns)
 
 
 def _rows_of(plant: Plant, change: Change, kind: SheetKind, rows: Sequence[Any]) -> frozenset[int]:
