@@ -565,7 +565,8 @@ IO_ADDRESS = _text(
     "i/o channel", "plc addr", "dcs channel", "i o address", "plc i/o address", "tag address", "sps adresse", "ch",
     "point", "rack/slot/channel", "rack/slot/ch", "node/card/channel", "card/channel", "kanal", "r/s/c", "rsc",
     "channel address", "terminal address", "location in plc", "plc i/o", "node/slot/pt", "node/slot/point",
-    "rack/slot/point", "slot/channel", "i/o location", "i/o ref", "i/o point", "plc location", "dcs location",
+    "rack/slot/point", "slot/channel", "i/o", "io", "e/a", "i/o location", "i/o ref", "i/o point", "plc location",
+    "dcs location",
 )
 CARD = _text(
     "card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module", "baugruppe",
@@ -591,6 +592,7 @@ SETTINGS = (
         (),
         "ll", "lo lo", "low low", "lolo", "alarm ll", "ll alarm", "trip ll", "lala", "low low alarm", "sp ll",
         "set ll", "setpoint ll", "l l", "alarms ll", "min min", "alarm low low", "trip low", "low trip", "trip l",
+        "alarm tief tief", "seuil tres bas", "alarme tres basse", "alarma muy baja",
         unit_from=("settings_unit",),
     ),
     _quantity(
@@ -598,7 +600,8 @@ SETTINGS = (
         "L",
         (),
         "l", "lo", "low", "alarm l", "l alarm", "low alarm", "alarm low", "sp l", "set l", "setpoint l", "alarms l",
-        "alarm min", "alarms lo", "min alarm", "alarm lo",
+        "alarm min", "alarms lo", "min alarm", "alarm lo", "alarm tief", "alarm niedrig", "tiefalarm", "alarm unten",
+        "grenzwert tief", "grenzwert unten", "seuil bas", "alarme basse", "alarma baja", "allarme basso", "alarm laag",
         unit_from=("settings_unit",),
     ),
     _quantity(
@@ -606,7 +609,8 @@ SETTINGS = (
         "H",
         (),
         "h", "hi", "high", "alarm h", "h alarm", "high alarm", "alarm high", "sp h", "set h", "setpoint h",
-        "alarms h", "alarm max", "alarms hi", "max alarm", "alarm hi",
+        "alarms h", "alarm max", "alarms hi", "max alarm", "alarm hi", "alarm hoch", "hochalarm", "alarm oben",
+        "grenzwert hoch", "grenzwert oben", "seuil haut", "alarme haute", "alarma alta", "allarme alto", "alarm hoog",
         unit_from=("settings_unit",),
     ),
     _quantity(
@@ -615,6 +619,7 @@ SETTINGS = (
         (),
         "hh", "hi hi", "high high", "hihi", "alarm hh", "hh alarm", "trip hh", "high high alarm", "sp hh", "set hh",
         "setpoint hh", "h h", "alarms hh", "max max", "alarm high high", "trip high", "high trip", "trip h",
+        "alarm hoch hoch", "seuil tres haut", "alarme tres haute", "alarma muy alta",
         unit_from=("settings_unit",),
     ),
     _quantity(

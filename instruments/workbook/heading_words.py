@@ -43,6 +43,7 @@ _PHRASES: Final = tuple(
         (r"\br\s?(?:&|\+|und)\s?i\b", "ri"),
         (r"\bi\s?/\s?o\b", "io"),
         (r"\be\s?/\s?a\b", "ea"),
+        (r"\be\s?/\s?s\b", "io"),  # entrées/sorties, entradas/salidas
         (r"\by\s?/\s?n\b|\byes\s?/\s?no\b|\bja\s?/\s?nein\b", ""),
         (r"\bn\.?\s?[oc]\.?\s?/\s?n\.?\s?[oc]\b", "nonc"),
         (r"\bs\s?/\s?n\b", "serial"),
@@ -393,6 +394,9 @@ _OVER_SETTINGS: Final = frozenset(
 )  # fmt: skip
 
 
+_LANGUAGES: Final = re.compile(r"\s/\s|\n")
+
+
 class Finder:
     """Finds what the headings of a sheet can be, for one kind of sheet."""
 
@@ -484,6 +488,11 @@ class Finder:
                 if len(texts) == 3:
                     yield texts[0], 0.9
         for text in dict.fromkeys((levels.joined, *(texts if len(texts) > 1 and not levels.spread else ()))):
+            # Two languages, which may have a stroke of their own: E/S / I/O address.
+            languages = [piece for piece in _LANGUAGES.split(text) if len(piece.strip()) > 2]
+            if len(languages) > 1:
+                for piece in languages[:3]:
+                    yield piece, 0.93
             # m3/h and I/O are no two headings.
             pieces = [piece for piece in _PARTS.split(text) if len(piece.strip()) > 2]
             if pieces != [text]:

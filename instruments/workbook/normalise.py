@@ -19,7 +19,7 @@ from instruments.origin import Origin, Place, column_letters
 from instruments.plant_data import PlantData
 from instruments.quantity import Quantity, read_quantity, read_range, read_triplet
 from instruments.record import DeviceType
-from instruments.signal_words import io_type_of_title
+from instruments.signal_words import io_type_of_title, io_types
 from instruments.unit import Unit, commensurable, read_unit
 from instruments.workbook.cell import (
     BAD,
@@ -80,6 +80,9 @@ LONGEST_COMMENT: Final = 1000
 
 # Where what an annotated copy says begins, in a comment of its own or beneath another.
 _OWN_COMMENT: Final = re.compile(r"(?:^|\n)Ferrule:(?=\s)")
+
+# AI 1/06, DI-2.01: what it is stands before where it is connected.
+_TYPE_AND_ADDRESS: Final = re.compile(r"([A-Za-z/]{2,5})[ :.-]{1,3}(?=[A-Za-z]{0,6}[ ./-]?\d)")
 
 _GONE: Final = frozenset({"deleted", "void", "demolished"})
 
@@ -997,6 +1000,15 @@ class _SheetReader:
         if "io_type" not in self.record_fields or "io_type" in self.values:
             return
         of_sheet = io_type_of_title(self.sheet.name)
+        addresses = self.values.get("io_address") or []
+        types = [
+            word[1] if address and (word := _TYPE_AND_ADDRESS.match(address)) and io_types(word[1]) else None
+            for address in addresses
+        ]
+        if any(types):
+            self.values["io_type"] = types
+            self.places["io_type"] = self.places.get("io_address", ())
+            return
         found = [(io_type_of_title(place) if place else None) or of_sheet for place in self.rows.places]
         if any(found):
             self.values["io_type"] = found

@@ -81,6 +81,8 @@ _UNIT_TITLE: Final = re.compile(
 )
 # What stands alone in its row and has a word in it is a title, whatever figures it has: Boiler house 2.
 _WORDY: Final = re.compile(r"(?<![^\W\d_])[^\W\d_]{4,}(?![^\W\d_])")
+_PAGE: Final = re.compile(r"\b(?:page|sheet|blatt|seite|folio|pagina|pag|bladzijde)\b")
+_FIGURES: Final = re.compile(r"\d+")
 _FIGURE: Final = re.compile(r"[<>~]?\s?[-+]?\d[\d.,]{0,15}")
 
 
@@ -137,6 +139,13 @@ class _Sorter:
             frozenset(self._comparable(row).items())
             for row in range(min(match.header_rows, default=0))
             if any(cell is not None for cell in sheet.rows[row])
+        }
+        # The title of a later page has another page's number.
+        self.page_titles = {
+            _FIGURES.sub("", text)
+            for title in self.titles
+            for _, text in title
+            if len(title) == 1 and _PAGE.search(text)
         }
         self.header_key = self._header_texts(self.key)
         self.data: list[int] = []
@@ -254,6 +263,11 @@ class _Sorter:
             return "note"
         texts = list(dict.fromkeys(comparable.values()))
         first = texts[0] if texts else ""
+        if len(texts) == 1 and _FIGURES.sub("", first) in self.page_titles:
+            return "note"
+        if texts and not failed and not any(sign.isalnum() for text in texts for sign in text):
+            # A line ruled in signs.
+            return "note"
         status = key is not None and not_live(as_text(key))
         if ended and not status:
             return "end" if _END.fullmatch(first) else "note"

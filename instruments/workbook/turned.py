@@ -93,6 +93,11 @@ def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[_Block]:
         tags = [
             line for line, name in enumerate(names) if name == "tag" and _holds_tags(sheet.rows[line][labels + 1 :])
         ]
+        # Two lines of tags with hardly a line between them are one page's: Item, and Tag number below it.
+        for line, after in pairwise(tags):
+            if sum(map(bool, names[line:after])) < _SHORT:
+                names[line] = ""
+        tags = [line for line in tags if names[line]]
         if not tags:
             continue
         first = next(line for line, name in enumerate(names) if name)

@@ -558,3 +558,67 @@ def test_tables_that_stand_side_by_side_are_all_read(
     found = as_read(path)
     assert (tags(found), unread(found)) == (wanted, problems)
     assert [each.cells_filled for each in found.sheets if each.kind is None] == []
+
+
+def test_a_line_over_the_tags_that_repeats_them_is_a_title(tmp_path: Path) -> None:
+    text = "Item|Unit|PT-1|PT-2\nTag number||PT-1|PT-2\nService||Feed|Gas\nLRV|barg|0|0\nURV|barg|16|25"
+    found = as_read(workbook(tmp_path / "l.xlsx", text))
+    assert rows(found) == [
+        {"tag": "PT-1", "service": "Feed", "lrv": "0 barg", "urv": "16 barg", "range_unit": "barg"},
+        {"tag": "PT-2", "service": "Gas", "lrv": "0 barg", "urv": "25 barg", "range_unit": "barg"},
+    ]
+    assert found.sheets[0].notes == ((1, "Item | Unit | PT-1 | PT-2"),)
+
+
+@pytest.mark.parametrize(
+    ("title", "place"),
+    [
+        pytest.param("INSTRUMENT SCHEDULE   PAGE {}", None, id="case06-page"),
+        pytest.param("Messstellenliste Blatt {}", None, id="case06-german"),
+        pytest.param("AREA {}0", "AREA 20", id="case06-a-section-is-no-page"),
+    ],
+)
+@pytest.mark.parametrize("kind", ["xlsx", "csv"])
+def test_the_title_of_a_later_page_is_no_section(tmp_path: Path, title: str, place: str | None, kind: str) -> None:
+    head = "TAG NO|SERVICE|RANGE\n----------|----------|----------\n"
+    text = f"{title.format(1)}||\n{head}PT-1|Feed|0-1 bar\n{title.format(2)}||\n{head}PT-2|Feed|0-1 bar"
+    path = workbook(tmp_path / "l.xlsx", text) if kind == "xlsx" else delimited(tmp_path / "l.csv", text)
+    found = as_read(path)
+    assert (tags(found), rows(found)[1].get("place")) == (["PT-1", "PT-2"], place)
+
+
+@pytest.mark.parametrize(
+    ("heading", "cells", "wanted"),
+    [
+        pytest.param("I/O", ("AI 1/06", "DI 2/01"), [("AI", "AI 1/06"), ("DI", "DI 2/01")], id="case02-both-in-one"),
+        pytest.param("I/O", ("AI", "DI"), [("AI", None), ("DI", None)], id="case02-type-alone"),
+        pytest.param(
+            "Adresse E/S / I/O address", ("1.01", "1.02"), [(None, "1.01"), (None, "1.02")], id="case02-two-languages"
+        ),
+        pytest.param("E/S / I/O type", ("AI", "DI"), [("AI", None), ("DI", None)], id="case02-two-languages-type"),
+    ],
+)
+@pytest.mark.parametrize("kind", ["xlsx", "csv"])
+def test_inputs_and_outputs_are_known_by_what_stands_below(
+    tmp_path: Path, heading: str, cells: tuple[str, str], wanted: list[tuple[str | None, str | None]], kind: str
+) -> None:
+    text = f"Tag|Service|{heading}\nPT-1|Feed|'{cells[0]}\nLS-2|Feed|'{cells[1]}"
+    path = (
+        workbook(tmp_path / "l.xlsx", text) if kind == "xlsx" else delimited(tmp_path / "l.csv", text.replace("'", ""))
+    )
+    found = as_read(path)
+    assert [(each.get("io_type"), each.get("io_address")) for each in rows(found)] == wanted
+
+
+@pytest.mark.parametrize(
+    ("heading", "field"),
+    [
+        pytest.param("Alarm hoch", "setting_h", id="german"),
+        pytest.param("Alarm tief", "setting_l", id="german-low"),
+        pytest.param("Seuil haut / High alarm", "setting_h", id="french"),
+        pytest.param("Alarme très basse", "setting_ll", id="french-low-low"),
+    ],
+)
+def test_alarms_are_headed_in_other_languages(tmp_path: Path, heading: str, field: str) -> None:
+    found = as_read(delimited(tmp_path / "l.csv", f"Tag|Service|{heading}\nPT-1|Feed|8 bar\nPT-2|Feed|9 bar"))
+    assert [each.get(field) for each in rows(found)] == ["8 bar", "9 bar"]
