@@ -5,6 +5,7 @@ from __future__ import annotations
 import io
 import random
 import re
+import warnings
 import zipfile
 from collections.abc import Callable, Iterator, Sequence
 from pathlib import Path
@@ -140,7 +141,8 @@ def _unpacked(data: bytes) -> list[tuple[str, bytes]]:
 
 def _packed(parts: Sequence[tuple[str, bytes]], method: int = zipfile.ZIP_DEFLATED) -> bytes:
     out = io.BytesIO()
-    with zipfile.ZipFile(out, "w", method) as package:
+    with zipfile.ZipFile(out, "w", method) as package, warnings.catch_warnings():
+        warnings.simplefilter("ignore")  # a name that stands twice is one of the ways to be broken
         for name, text in parts:
             package.writestr(zipfile.ZipInfo(name), text, method)
     return out.getvalue()
