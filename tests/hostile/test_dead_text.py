@@ -57,9 +57,8 @@ def test_a_workbook_holds_neither_formula_nor_outer_link(folder: Path, name: str
 
 def test_the_cells_of_the_exception_list_are_texts(folder: Path) -> None:
     workbook = load_workbook(folder / "exceptions.xlsx")
-    kinds = {
-        cell.data_type for sheet in workbook for row in sheet.iter_rows() for cell in row if cell.value is not None
-    }
+    cells = [cell for sheet in workbook for row in sheet.iter_rows() for cell in row]
+    kinds = {cell.data_type for cell in cells if cell.value is not None}
     assert kinds <= {"s", "n", "b", "d", "inlineStr"}
     linked = [cell.hyperlink for cell in cells if cell.hyperlink]
     assert [link.target for link in linked if link.target] == []
