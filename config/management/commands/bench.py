@@ -78,7 +78,7 @@ class Command(BaseCommand):
                     if keep:
                         Path(keep).mkdir(parents=True, exist_ok=True)
                         (Path(keep) / f"mutant-{seed}-{number}.xlsx").write_bytes(mutant(sound, number, seed=seed))
-                if number % 1000 == 0:
+                if number % 250 == 0:
                     self.stdout.write(f"{number}: {dict(ended)}, {failed} failed, peak {peak_mb:.0f} MB")
         self.stdout.write(
             f"{count:,} mutants: {ended[0]:,} audited, {ended[2]:,} refused, {failed} not taken as they should be; "
