@@ -102,7 +102,7 @@ def test_a_change_finds_its_cells(change: Change) -> None:
     if change.copied:
         assert sum(map(len, after.values())) == sum(map(len, before.values())) + 1
     else:
-        assert differing == len(change.cells)
+        assert differing == len(change.cells) + sum(len(edit.cells) for edit in change.more)
 
 
 def test_the_demo_has_about_a_hundred_changes_each_on_cells_of_its_own() -> None:
