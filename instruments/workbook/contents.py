@@ -106,6 +106,14 @@ class Contents:
         """Return the part of the cells that a pattern fits whole."""
         return sum(pattern.fullmatch(text) is not None for text in self.texts) / self.count if self.count else 0.0
 
+    def without_sections(self, pattern: re.Pattern[str]) -> float:
+        """Return the part that a pattern fits whole of the cells of one word: those of several name a section."""
+        texts = [text for text in self.texts if " " not in text]
+        # A unit of one tag or two, each under a name of its own, leaves as many names as tags.
+        if len(texts) < 2 or len(texts) * 3 < self.count:
+            return 0.0
+        return sum(pattern.fullmatch(text) is not None for text in texts) / len(texts)
+
     def holds(self, pattern: re.Pattern[str]) -> float:
         """Return the part of the cells that hold a pattern."""
         return sum(pattern.search(text) is not None for text in self.texts) / self.count if self.count else 0.0

@@ -528,6 +528,9 @@ def _assign(
     _take_beside_normal(kind, levels, content, columns, used)
     _take_low_and_high(kind, levels, columns)
     _take_text_of_signals(kind, content, columns)
+    if not given.columns:
+        _take_model_for_code(kind, content, columns)
+        notes += _take_listed_codes(kind, levels, content, columns, used, codes)
     unit_columns = _place_units(kind, levels, content, columns, used, taken)
     _join_parts(kind, levels, content, columns, used)
     _join_address(kind, levels, content, columns, used)
@@ -640,6 +643,53 @@ def _take_text_of_signals(kind: SheetKind, content: Callable[[int], Contents], c
     cells = content(signal.index)
     if cells.fit(signal.column, frozenset()) < 0.5 and cells.part(_SEVERAL_WORDS) > 0.6:
         columns["service"] = replace(columns.pop("signal"), column=kind.column("service"), how="contents")
+
+
+_DESCRIBED: Final = frozenset(("uo_v", "io_ma", "ui_v", "ii_ma", "lrl", "url", "limits", "lift_off_v"))
+
+
+def _take_model_for_code(kind: SheetKind, content: Callable[[int], Contents], columns: dict[str, ColumnMatch]) -> None:
+    """Take the models of a list that gives each of them its figures, and no code, for its codes."""
+    model = columns.get("model")
+    if model is None or "code" in columns or not any(column.field == "code" for column in kind.columns):
+        return
+    code = kind.column("code")
+    if _DESCRIBED & columns.keys() and content(model.index).fit(code, frozenset()) > 0.5:
+        columns["code"] = replace(columns.pop("model"), column=code, how="contents")
+
+
+_NAMES_AN_ENTRY: Final = frozenset(("code", "model", "ref", "reference", "catalogue", "catalog", "type", "typ", "spec"))
+_MOSTLY: Final = 0.6
+
+
+def _take_listed_codes(
+    kind: SheetKind,
+    levels: Mapping[int, Levels],
+    content: Callable[[int], Contents],
+    columns: dict[str, ColumnMatch],
+    used: set[int],
+    codes: frozenset[str],
+) -> list[str]:
+    """Take a column that names entries of a list of codes for the device type where no other is, and tell it."""
+    if not codes or "device_type" in columns or ("tag",) not in kind.key:
+        return []
+    if not any(column.field == "device_type" for column in kind.columns):
+        return []
+    column = kind.column("device_type")
+    model = columns.get("model")
+    for index, heading in levels.items():
+        of_model = model is not None and model.index == index
+        if (index in used and not of_model) or not _NAMES_AN_ENTRY & set(heading_words(heading.joined)):
+            continue
+        if content(index).fit(column, codes) >= _MOSTLY:
+            if of_model:
+                del columns["model"]
+            columns["device_type"] = ColumnMatch(
+                column=column, index=index, heading=heading.joined, how="contents", likelihood=0.8
+            )
+            used.add(index)
+            return [f"heading '{heading.joined}' is taken for {column.title}: it names entries of the lists of codes"]
+    return []
 
 
 _SPEAKS_OF: Final = {"flow": "F", "flowrate": "F", "durchfluss": "F", "level": "L", "fuellstand": "L"}
@@ -890,12 +940,14 @@ def _match_parted_tag(
         if number not in levels or not words[index] & _TAGS_LETTERS or not words[number] & _TAGS_NUMBER:
             continue
         letters, numbers = content(index), content(number)
-        if letters.count < 2 or letters.part(_LETTERS_ONLY) < 0.9 or letters.part(IO_WORD) > 0.5:
+        if letters.without_sections(_LETTERS_ONLY) < 0.9 or letters.part(IO_WORD) > 0.5:
             continue
         if numbers.count < 2 or numbers.part(_NUMBER_ONLY) < 0.9:
             continue
         if any(
-            "tag" in each and content(at).fit(column, frozenset()) > 0.8 for at, each in words.items() if at != index
+            "tag" in each and content(at).fit(column, frozenset()) > 0.8
+            for at, each in words.items()
+            if at not in (index, number)
         ):
             return
         parts = [index, number]
@@ -942,9 +994,9 @@ def _join_tag(
         letters, number = content(index), content(index + 1)
         if letters.count < 2 or number.count < 2 or index not in levels or index + 1 not in levels:
             continue
-        if letters.part(_LETTERS_ONLY) < 0.9 or number.part(_NUMBER_ONLY) < 0.9:
+        if letters.without_sections(_LETTERS_ONLY) < 0.9 or number.part(_NUMBER_ONLY) < 0.9:
             continue
-        if sum(text[:1] in _TAG_FIRST for text in letters.texts) < 0.8 * letters.count or letters.part(IO_WORD) > 0.5:
+        if letters.without_sections(_FIRST_LETTER) < 0.8 or letters.part(IO_WORD) > 0.5:
             continue
         parts = [(index + 1, "-")]
         suffix = content(index + 2) if index + 2 < width else None
@@ -966,7 +1018,7 @@ def _join_tag(
     return False
 
 
-_TAG_FIRST: Final = frozenset("ABEFHIJKLPQRSTUVWXYZCDGMN")
+_FIRST_LETTER: Final = re.compile(r"[A-NP-Z].*", re.DOTALL)
 
 # --- rows that belong to the heading --------------------------------------------------------------------------------
 

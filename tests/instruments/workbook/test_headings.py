@@ -382,6 +382,12 @@ def test_a_tag_in_columns_of_its_own_is_joined() -> None:
         ),
         # a unit that is not said to be part of the tag
         ("Unit|Func.|Tag No.|Service\n31|PIT|1001|Feed\n31|TIT|1002|Feed\n32|FT|1003|Feed", (1, ((2, "-"),))),
+        # the names of areas stand over the rows, in the column of the letters
+        (
+            "Tag Func|Tag No.|Tag Sfx|Service\nAREA 20 - IN|||\nPT|1|A|Feed\nUNIT 30|||\nTT|3001||Feed\nFT|3002||x",
+            (0, ((1, "-"), (2, ""))),
+        ),
+        ("Function|No.|Service\nUnit 10 feed||\nPT|1|Feed\nTT|2|Feed\nUnit 20 steam||\nFT|3|Feed", (0, ((1, "-"),))),
         # a whole tag beside them is the tag; I/O types are no letters of one
         ("Tag|Function|No.|Service\nPIT-1|PIT|1|Feed\nTIT-2|TIT|2|Feed\nFT-3|FT|3|Feed", (0, ())),
         ("Tag|Type|No.|Service\nPIT-1|AI|1|Feed\nTIT-2|AI|2|Feed\nFT-3|DO|3|Feed", (0, ())),
