@@ -63,7 +63,11 @@ class _Text:
         return f"line {number + bool(self.said)}"
 
     def _lines(self) -> Iterator[str]:
-        stream = io.TextIOWrapper(io.BytesIO(self._data), self._encoding, self._errors, newline="")
+        stream: Iterable[str]
+        if self._errors == _EITHER:
+            stream = (piece for line in io.BytesIO(self._data) for piece in io.StringIO(_either(line), newline=""))
+        else:
+            stream = io.TextIOWrapper(io.BytesIO(self._data), self._encoding, self._errors, newline="")
         for number, line in enumerate(stream, 1):
             if "\0" in line:
                 raise UnreadableFile(
@@ -102,6 +106,10 @@ class _Text:
                 beyond_ascii += sum(1 for character in piece if character > "\x7f")
         if not damaged:
             return "utf-8-sig", "strict"
+        if told != "Windows-1252" and beyond_ascii > damaged and (others := _lines_of_another_hand(data)):
+            shown = ", ".join(map(str, others[:10])) + (" ..." if len(others) > 10 else "")
+            self.notes.append(f"in UTF-8, but for lines read as Windows-1252: {len(others)}, line {shown}")
+            return "utf-8-sig", _EITHER
         # A text with a few damaged bytes must not have every degree sign read as two other characters.
         if told == "UTF-8" or (beyond_ascii > 2 * damaged and told != "Windows-1252"):
             self.notes.append(f"damaged characters, shown as \ufffd: {damaged}")
@@ -111,6 +119,54 @@ class _Text:
         if unknown := sum(piece.count("\ufffd") for piece in _decoded(data, "cp1252", "replace")):
             self.notes.append(f"characters that Windows-1252 has not, shown as \ufffd: {unknown}")
         return "cp1252", "replace"
+
+
+_EITHER: Final = "line by line"
+"""Said in place of a way to take bytes that are none: each line is in UTF-8 or else in Windows-1252."""
+
+_AS_PEOPLE_WRITE: Final = re.compile("[\u00a0-\u024f\u0370-\u04ff\u2010-\u22ff\ufeff]+")
+
+
+def _either(line: bytes) -> str:
+    try:
+        return line.decode("utf-8").removeprefix("\ufeff")
+    except UnicodeDecodeError:
+        return line.decode("cp1252")
+
+
+def _lines_of_another_hand(data: bytes) -> list[int]:
+    """Return the lines in Windows-1252 of a text that was put together from two; nothing where it is damaged.
+
+    In a text of two hands each line is wholly one or the other. A line that holds characters in UTF-8 and bytes
+    that are none is damaged, and so is one whose bytes make no letter or sign of any word.
+    """
+    others: list[int] = []
+    good = 0
+    for number, line in enumerate(io.BytesIO(data), 1):
+        if line.isascii():
+            continue
+        try:
+            beyond = "".join(sign for sign in line.decode("utf-8") if sign > "\x7f")
+        except UnicodeDecodeError:
+            if any(sign > "\x7f" for sign in line.decode("utf-8", "ignore")):
+                return []
+            try:
+                text = line.decode("cp1252")
+            except UnicodeDecodeError:
+                return []
+            if _IN_WORDS.search(text) is None:
+                return []
+            others.append(number)
+        else:
+            # Two letters of Windows-1252 may by chance be one in UTF-8, but hardly one that is written.
+            if not _AS_PEOPLE_WRITE.fullmatch(beyond):
+                return []
+            good += 1
+    return others if good else []
+
+
+# Länge, °C, m³/h, 1½": what lists have beyond ASCII.
+_IN_WORDS: Final = re.compile("[À-ÖØ-öø-ÿ][a-z]|[a-z][À-ÖØ-öø-ÿ]|[°º²³µ½¼¾±\u2013\u2014\u2018-\u201d\u00a0]")
 
 
 def _decoded(data: bytes, encoding: str, errors: str) -> Iterator[str]:

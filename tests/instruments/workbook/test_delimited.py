@@ -56,6 +56,12 @@ SEMICOLONS = "columns taken to be separated by semicolons"
                 SEMICOLONS,
             ),
         ),
+        # Two files put together, each line as its own file had it.
+        (
+            TEXT.encode() + "Länge;20 °C\n".encode("cp1252") + "Höhe;½\n".encode(),
+            [*ROWS, ["Länge", "20 °C"], ["Höhe", "½"]],
+            ("in UTF-8, but for lines read as Windows-1252: 1, line 3", SEMICOLONS),
+        ),
         # One damaged byte among good ones: every other degree sign stays what it is.
         (
             TEXT.encode() * 2 + b"TT-\xff;1\n",
@@ -113,7 +119,9 @@ DAMAGED = "Tag;C\nTT-1;20 °C\n".encode() + b"TT-2;30 \xb0C\n"
         ("tag;y\na;°C\n".encode(), "Windows-1252", ";", ("UTF-8", ";"), ["a", "°C"]),
         ("tag;y\na;°C\n".encode("utf-16"), "Windows-1252", ";", ("UTF-16", ";"), ["a", "°C"]),
         ("tag;y\na;°C\n".encode("cp1252"), "UTF-8", ";", ("UTF-8", ";"), ["a", "\ufffdC"]),
-        (DAMAGED, "", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
+        (DAMAGED, "", "", ("UTF-8", ";"), ["TT-1", "20 °C"]),
+        (DAMAGED, "Windows-1252", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
+        (DAMAGED + b"TT-3;20 \xc2\xb0 \xb0\n" + b"\xff" * 9, "", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
         (DAMAGED, "UTF-8", "", ("UTF-8", ";"), ["TT-1", "20 °C"]),
         (DAMAGED + "\u00b5".encode() * 9, "", "", ("UTF-8", ";"), ["TT-1", "20 °C"]),
         (DAMAGED + "\u00b5".encode() * 9, "Windows-1252", "", ("Windows-1252", ";"), ["TT-1", "20 Â°C"]),
