@@ -275,6 +275,11 @@ def signal_against_input(installed: Installed, plant: Plant) -> Verdict:
     ['LIT-1: 4-20 mA does not fit the I/O type DI']
     >>> said("ELC16", [{"tag": "LIT-1", "signal": "4-20 mA", "I/O type": "AI", "I/O address": "R1.4"}])
     []
+
+    Whatever its signal is, a switch sends it, and a solenoid is driven by it:
+
+    >>> said("ELC16", [{"tag": "ZSO-1", "kind": "switch", "I/O type": "DO"}])
+    ['ZSO-1: a switch sends its signal, and the I/O type DO takes none']
     """
     found: list[Found] = []
     unknown: dict[str, None] = {}
@@ -289,7 +294,9 @@ def signal_against_input(installed: Installed, plant: Plant) -> Verdict:
         for field, text, card in _takers(row, plant):
             asked = True
             fits = _io_type_fits(text, signal, installed.kind) if card is None else _card_fits(card, signal, installed)
-            if isinstance(fits, str):
+            if signal is None and card is None and not several and (way := _only_the_other_way(installed.kind, text)):
+                found.append(_turned_about(installed, row, text, *way))
+            elif isinstance(fits, str):
                 unknown.setdefault(fits)
             elif not fits:
                 found.append(_misfit(installed, row, signal or "", field, text))
@@ -361,6 +368,40 @@ def _wrong_way(kind: Kind | None, sort: str, taken: frozenset[str]) -> bool:
     if sort in ("contact", "digital") and kind in _MAKES_CONTACT:
         return not taken & {"DI", "PI"}
     return sort == "volts" and kind is Kind.SOLENOID and "DO" not in taken
+
+
+# Kinds whose signal goes one way only, whatever it is; a hand switch may have a lamp, a valve its position.
+_ONLY_SENDS: Final = _SENDS | {Kind.SWITCH}
+_ONLY_DRIVEN: Final = frozenset({Kind.IP_CONVERTER, Kind.SOLENOID})
+
+
+@lru_cache(maxsize=4096)
+def _only_the_other_way(kind: Kind | None, io_type: str) -> tuple[str, str] | None:
+    """Return what a kind does and why the channel cannot, where no signal of this kind could fit; else None."""
+    taken = frozenset(io_types(io_type))
+    if kind in _ONLY_SENDS and taken and taken <= {"AO", "DO"}:
+        return "sends its signal", "takes none"
+    if kind in _ONLY_DRIVEN and taken and not taken & {"AO", "DO"}:
+        return "is driven by its signal", "gives none"
+    return None
+
+
+def _turned_about(installed: Installed, row: Instrument, text: str, does: str, channel: str) -> Found:
+    kind = installed.kind
+    name = kind.value if kind is not None else ""
+    digital = kind in (Kind.SWITCH, Kind.SOLENOID)
+    wanted = ("D" if digital else "A") + ("O" if kind in _ONLY_DRIVEN else "I")
+    certain = digital or kind is Kind.IP_CONVERTER
+    change = {} if installed.listed else {"I/O type": wanted}
+    return Found(
+        values={"signal": row.signal or "", "io": text, "kind": name, "does": does, "channel": channel},
+        fields=("io_type",),
+        found=text,
+        wanted=wanted if certain else "an input",
+        fixes=(Fix(text=f"I/O type {wanted}", change=change),) if certain else (),
+        cells=row.cells("io_type"),
+        message="a {kind} {does}, and the I/O type {io} {channel}",
+    )
 
 
 def _misfit(installed: Installed, row: Instrument, signal: str, field: str, text: str) -> Found:

@@ -647,6 +647,16 @@ def test_a_transmitters_signal_fits_its_channel(signal: str, io: str, fits: bool
         # A pump's running contact is a signal of its own.
         ({"tag": "P-3601A", "signal": "VFC", "I/O type": "DI"}, "clear"),
         ({"tag": "P-3601A", "signal": "4-20 mA", "I/O type": "DI"}, "finding"),
+        # Without a signal the kind says which way it goes.
+        ({"tag": "ZSO-1", "kind": "limit switch", "I/O type": "DO"}, "finding"),
+        ({"tag": "ZSO-1", "kind": "limit switch", "I/O type": "DI"}, "unchecked: signal"),
+        ({"tag": "ZSO-1", "kind": "limit switch", "I/O type": "DI/DO"}, "unchecked: signal"),
+        ({"tag": "ZSO-1", "kind": "limit switch", "I/O type": "DO", "signal": "Modbus"}, "clear"),
+        ({"tag": "PT-1", "kind": "transmitter", "I/O type": "AO"}, "finding"),
+        ({"tag": "XY-1", "kind": "solenoid", "I/O type": "DI"}, "finding"),
+        ({"tag": "XY-1", "kind": "solenoid", "I/O type": "DO"}, "unchecked: signal"),
+        ({"tag": "FV-1", "kind": "control valve", "I/O type": "AI"}, "unchecked: signal"),
+        ({"tag": "HS-1", "kind": "hand switch", "I/O type": "DO"}, "unchecked: signal"),
         # Blanks, and words that say nothing here.
         ({"tag": "PT-1", "signal": "4-20 mA"}, "unchecked: I/O type"),
         ({"tag": "PT-1", "I/O type": "AI"}, "unchecked: signal"),
