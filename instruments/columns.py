@@ -182,6 +182,11 @@ def _pair(
     )
 
 
+def _of_letters(symbol: str, *letters: str) -> tuple[str, ...]:
+    """Return the headings of a limit of a source by the group letters of a division, as control drawings head it."""
+    return tuple(f"{symbol}{word} {each}" for each in letters for word in ("", " gr", " gp", " group", " groups"))
+
+
 def device_columns(owner: str) -> tuple[Column, ...]:
     """Return the columns of device limits: of the catalogue (`owner` blank) or on an instrument's row (``own``)."""
     limit = ("limit_unit",)
@@ -466,12 +471,36 @@ def device_columns(owner: str) -> tuple[Column, ...]:
         _number("uo_v", "Uo V", "V", "uo v", "uo", "voc", owner=owner),
         _number("io_ma", "Io mA", "mA", "io ma", "io", "isc", owner=owner),
         _number("po_mw", "Po mW", "mW", "po mw", "po", "po w", owner=owner),
-        _number("co_iic_nf", "Co nF IIC", "nF", "co nf iic", "co iic", "co", "co nf", "ca", "co iic nf", owner=owner),
-        _number("co_iib_nf", "Co nF IIB", "nF", "co nf iib", "co iib", "co iib nf", owner=owner),
-        _number("co_iia_nf", "Co nF IIA", "nF", "co nf iia", "co iia", "co iia nf", owner=owner),
-        _number("lo_iic_mh", "Lo mH IIC", "mH", "lo mh iic", "lo iic", "lo mh", "la", "lo iic mh", owner=owner),
-        _number("lo_iib_mh", "Lo mH IIB", "mH", "lo mh iib", "lo iib", "lo iib mh", owner=owner),
-        _number("lo_iia_mh", "Lo mH IIA", "mH", "lo mh iia", "lo iia", "lo iia mh", owner=owner),
+        _number(
+            "co_iic_nf", "Co nF IIC", "nF", "co nf iic", "co iic", "co", "co nf", "ca", "co iic nf",
+            *_of_letters("ca", "a,b", "a-d", "a,b,c,d"),
+            owner=owner,
+        ),
+        _number(
+            "co_iib_nf", "Co nF IIB", "nF", "co nf iib", "co iib", "co iib nf",
+            *_of_letters("ca", "c", "c,e"),
+            owner=owner,
+        ),
+        _number(
+            "co_iia_nf", "Co nF IIA", "nF", "co nf iia", "co iia", "co iia nf",
+            *_of_letters("ca", "d", "d,f,g"),
+            owner=owner,
+        ),
+        _number(
+            "lo_iic_mh", "Lo mH IIC", "mH", "lo mh iic", "lo iic", "lo mh", "la", "lo iic mh",
+            *_of_letters("la", "a,b", "a-d", "a,b,c,d"),
+            owner=owner,
+        ),
+        _number(
+            "lo_iib_mh", "Lo mH IIB", "mH", "lo mh iib", "lo iib", "lo iib mh",
+            *_of_letters("la", "c", "c,e"),
+            owner=owner,
+        ),
+        _number(
+            "lo_iia_mh", "Lo mH IIA", "mH", "lo mh iia", "lo iia", "lo iia mh",
+            *_of_letters("la", "d", "d,f,g"),
+            owner=owner,
+        ),
         _number("lo_ro_uh_per_ohm", "Lo/Ro", "uH/ohm", "lo/ro", "lo ro", "l/r", "lo/ro uh/ohm", owner=owner),
         _yes("combined_pairs", "combined pairs", "combined pairs", "co lo combined", owner=owner),
         _word(
@@ -555,7 +584,7 @@ MODEL = _text(
 
 IO_TYPE = _text(
     "io_type", "I/O type", "i/o type", "io type", "i/o", "io", "signal i/o", "type of i/o", "e/a typ", "ea typ",
-    "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type",
+    "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type", "type d'e/s", "nature e/s",
     "i/o signal", "type of signal", "typ", "signalart", "signaltyp", "signal class", "pt type", "i/o kind",
     "channel kind", "i/o signal class",
 )
@@ -566,10 +595,10 @@ IO_ADDRESS = _text(
     "point", "rack/slot/channel", "rack/slot/ch", "node/card/channel", "card/channel", "kanal", "r/s/c", "rsc",
     "channel address", "terminal address", "location in plc", "plc i/o", "node/slot/pt", "node/slot/point",
     "rack/slot/point", "slot/channel", "i/o", "io", "e/a", "i/o location", "i/o ref", "i/o point", "plc location",
-    "dcs location",
+    "dcs location", "plc channel",
 )
 CARD = _text(
-    "card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module", "baugruppe",
+    "card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module", "baugruppe", "carte",
     "i o card",
 )
 SYSTEM = _word(
@@ -684,7 +713,7 @@ INSTRUMENTS = SheetKind(
             "instrument description", "function", "benennung", "bezeichnung", "beschreibung", "designation",
             "description of service", "service / description", "application", "purpose", "tag description",
             "process description", "text", "comment", "langtext", "kurztext", "klartext", "signal description",
-            "point description",
+            "point description", "libelle", "libelle / service", "fonction",
         ),
         _text(
             "device_type", "device type", "device type", "type code", "catalogue code", "device code", "typecode",
@@ -701,6 +730,8 @@ INSTRUMENTS = SheetKind(
                 "instr type", "equipment type", "messgerät", "device description", "gerät", "instrumenttype", "typ",
                 "instrument", "messgeraet", "instrument description type", "device", "tag type", "kind of instrument",
                 "function / type", "equipment class", "device type", "type of device", "gerätetyp",
+                "nature", "nature de l'instrument", "nature de l'appareil", "type d'appareil", "type d'instrument",
+                "appareil",
             ),
         ),
         UNIT_TEXT,
@@ -717,11 +748,11 @@ INSTRUMENTS = SheetKind(
             "ri fließbild", "r i", "flow diagram", "p & id", "p&id drawing", "p id", "drawing no", "r&i nr",
             "p&id ref", "flow sheet", "ri schema", "r+i", "r+i nr", "r+i blatt", "r&i blatt", "ri blatt", "r&i bl",
             "p&id sheet", "p&id sht", "p&id page", "p&id dwg", "p&id dwg no", "fliessbild", "ri fliessbild nr",
-            "p&i diagram", "efd", "pefs", "eld", "ufd", "flowsheet", "flowsheet no",
+            "p&i diagram", "schema", "schema pid", "plan pid", "efd", "pefs", "eld", "ufd", "flowsheet", "flowsheet no",
         ),
         _text(
             "line", "line", "line", "line no", "pipe", "line number", "pipe no", "rohrleitung", "leitung", "line no.",
-            "piping line", "leitungs nr", "pipe line", "line / equipment", "line equipment", "line or equipment",
+            "piping line", "leitungs nr", "ligne", "de ligne", "tuyauterie", "pipe line", "line / equipment", "line equipment", "line or equipment",
             "line/equip", "line/equipment", "line or vessel", "line / vessel", "piping", "vessel / line",
             "line no / vessel", "apparat / leitung", "leitung / apparat", "pipe / equipment",
         ),
@@ -730,7 +761,7 @@ INSTRUMENTS = SheetKind(
             "equipment tag", "apparat", "bmk",
             "betriebsmittel", "betriebsmittelkennzeichen", "aggregat", "drive",
             "consumer", "mounted on", "equipment number", "behälter", "equip no", "apparate nr",
-            "main equipment", "asset", "equipement",
+            "main equipment", "asset", "equipement", "appareil ou ligne",
         ),
         _word(
             "location",
@@ -886,7 +917,8 @@ INSTRUMENTS = SheetKind(
             "instrument range min", "span min", "zero", "calibrated range min", "calibrated range from",
             "messbereich anfang", "mb anfang", "calibration range min", "range lo", "cal range min", "min", "from",
             "scale min", "calibrated range low", "calibration low", "field range min", "messbereich min",
-            "range 4 ma", "4 ma", "value at 4 ma", "range start", "mba", "cal low", "set range min", "ranged from",
+            "range 4 ma", "4 ma", "value at 4 ma", "range start", "echelle basse", "echelle min", "debut d'echelle", "bas d'echelle",
+            "debut echelle", "min echelle", "borne basse", "mba", "cal low", "set range min", "ranged from",
             "range lrv", "calibrated range lrv", "range 0%", "0%", "eng lo", "eng low", "eu low", "eu lo", "eu min",
             "min eu", "span lo", "span low", "lower range", "range bottom", "0 % value", "messanfang",
             unit_from=("range_unit",),
@@ -900,7 +932,8 @@ INSTRUMENTS = SheetKind(
             "instrument range max", "span max", "calibrated range max", "calibrated range to", "messbereich ende",
             "mb ende", "calibration range max", "range hi", "cal range max", "max", "to", "scale max",
             "calibrated range high", "calibration high", "field range max", "messbereich max", "range 20 ma", "20 ma",
-            "value at 20 ma", "range end", "mbe", "cal high", "set range max", "ranged to", "range urv",
+            "value at 20 ma", "range end", "echelle haute", "echelle max", "fin d'echelle", "haut d'echelle",
+            "fin echelle", "max echelle", "borne haute", "mbe", "cal high", "set range max", "ranged to", "range urv",
             "calibrated range urv", "range 100%", "100%", "eng hi", "eng high", "eu high", "eu hi", "eu max",
             "max eu", "span hi", "span high", "upper range", "range top", "100 % value", "messende",
             unit_from=("range_unit",),
@@ -912,7 +945,8 @@ INSTRUMENTS = SheetKind(
             (),
             "range", "calibrated range", "cal range", "measuring range", "messbereich", "instrument range",
             "calibration range", "set range", "field range", "range set", "span", "range as set", "range calibrated",
-            "scale", "scale range", "etendue de mesure", "range lrv urv", "range lrv - urv", "calibration",
+            "scale", "scale range", "etendue de mesure", "echelle", "echelle de mesure", "plage de mesure",
+            "gamme de mesure", "range lrv urv", "range lrv - urv", "calibration",
             "measurement range", "meas range", "eng range", "engineering range", "range & units", "range & unit",
             "range units", "range / unit", "range with unit", "range incl unit", "mess bereich", "span range",
             "calibrated span",
@@ -1003,7 +1037,7 @@ INSTRUMENTS = SheetKind(
             "failure", "air fail", "air fail position", "fails to", "valve fails", "valve fails to", "cv fails",
             "cv fail", "luftausfall", "bei ausfall", "stellung bei ausfall", "stellung bei luftausfall",
             "stellung bei energieausfall", "sich stellung", "sicherheits stellung", "sicherheitslage", "fail to",
-            "on failure", "spring fails", "spring position", "spring return",
+            "position de repli", "position de securite", "position de defaut", "on failure", "spring fails", "spring position", "spring return",
             "fail safe", "f p", "de energised", "deenergised", "fail mode",
             "failure mode", "failsafe", "on loss of air", "loss of air", "loss of power", "stellung stromlos",
             "ruhestellung",
@@ -1044,7 +1078,7 @@ INSTRUMENTS = SheetKind(
         SYSTEM,
         _text(
             "power_supply", "power supply", "power supply", "supply", "power", "psu", "power source", "hilfsenergie",
-            "versorgung", "supply voltage", "powered by", "speisung", "fed from", "loop power", "power feed",
+            "versorgung", "alimentation", "alim", "supply voltage", "powered by", "speisung", "fed from", "loop power", "power feed",
         ),
         _text(
             "barrier", "barrier", "barrier", "barrier tag", "isolator", "barrier type", "is barrier",
@@ -1057,15 +1091,16 @@ INSTRUMENTS = SheetKind(
         ),
         _text(
             "junction_box", "junction box", "junction box", "jb", "jb no", "junction box no", "klemmenkasten",
-            "j box", "jb tag", "field jb", "field box", "verteiler", "box",
+            "j box", "jb tag", "field jb", "field box", "verteiler", "box", "boite de jonction", "bj",
+            "coffret", "coffret de jonction", "boite",
         ),
         _text(
             "terminals", "terminals", "terminals", "terminal", "terminal no", "jb terminals", "klemmen", "term",
-            "terminal nos", "jb terminal", "klemme",
+            "terminal nos", "jb terminal", "klemme", "borne", "bornes", "bornier",
         ),
         _text(
             "cable", "cable", "cable", "cable no", "cable tag", "cable number", "field cable", "kabel", "kabel nr",
-            "instrument cable", "cable id",
+            "instrument cable", "cable id", "de cable", "repere cable", "repere de cable",
         ),
         _text(
             "cable_type", "cable type", "cable type", "cable spec", "cable code", "type of cable", "kabeltyp",
@@ -1073,11 +1108,26 @@ INSTRUMENTS = SheetKind(
         ),
         _number(
             "cable_length_m", "cable length", "m", "cable length", "length", "cable length m", "route length",
-            "kabellänge", "cable len", "length m", "kabel länge", "run", "cable run", "loop length",
+            "kabellänge", "longueur", "longueur de cable", "cable len", "length m", "kabel länge", "run", "cable run", "loop length", "cable m",
+            "cable ft",
         ),
         _text(
             "conductor", "conductor size", "conductor size", "conductor", "core size", "cable size", "csa", "awg",
             "querschnitt", "conductor csa", "wire size", "conductor mm2", "conductor mm²", "core csa", "mm2",
+        ),
+        _number(
+            "ohm_per_km", "cable ohm per km", "ohm/km", "cable ohm per km", "cable ohm/km", "cable resistance",
+            "cable resistance ohm/km", "cable r ohm/km", "ohm/km", "cable dc resistance",
+        ),
+        _number(
+            "capacitance_pf_per_m", "cable capacitance", "pF/m", "cable capacitance", "cable pf/m", "cable c pf/m",
+            "cable nf/km", "cable c nf/km", "cable capacitance pf/m", "cable capacitance nf/km", "cable cc pf/m",
+            "cc pf/m", "pf/m", "cable cap", "cable c", "cable pf/ft", "kabelkapazität",
+        ),
+        _number(
+            "inductance_uh_per_m", "cable inductance", "uH/m", "cable inductance", "cable uh/m", "cable l uh/m",
+            "cable mh/km", "cable l mh/km", "cable inductance uh/m", "cable inductance mh/km", "cable lc uh/m",
+            "lc uh/m", "uh/m", "cable ind", "cable l", "cable uh/ft", "kabelinduktivität",
         ),
         _text("pair", "pair", "pair", "pair no", "pair number", "paar", "pr"),
         _text(
@@ -1106,9 +1156,9 @@ INSTRUMENTS = SheetKind(
             "special conditions accepted", "x accepted by", "special conditions",
         ),
         _yes("simple_apparatus", "simple apparatus", "simple apparatus", "simple app", "simple"),
-        _number("generated_v", "generated V", "V", "generated v", "generates v", "source v"),
-        _number("generated_ma", "generated mA", "mA", "generated ma", "generates ma", "source ma"),
-        _number("generated_mw", "generated mW", "mW", "generated mw", "generates mw", "source mw"),
+        _number("generated_v", "generated V", "V", "generated v", "generates v", "source v", "gen v", "v generated"),
+        _number("generated_ma", "generated mA", "mA", "generated ma", "generates ma", "source ma", "gen ma"),
+        _number("generated_mw", "generated mW", "mW", "generated mw", "generates mw", "source mw", "gen mw"),
         _number("surface_mm2", "surface area", "mm2", "surface area", "surface mm2", "surface area mm2"),
         _yes("earthed_sensor", "earthed sensor", "earthed sensor", "grounded sensor", "sensor earthed", "grounded"),
         IP,

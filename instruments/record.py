@@ -212,6 +212,9 @@ class Instrument(Record):
     cable_type: str | None = None
     cable_length_m: float | None = None
     conductor: str | None = None
+    ohm_per_km: float | None = None  # of the cable, as the next two are
+    capacitance_pf_per_m: float | None = None
+    inductance_uh_per_m: float | None = None
     pair: str | None = None
     area_classification: str | None = None
     process_zone: str | None = None

@@ -190,11 +190,12 @@ CABLE_TYPES = SheetKind(
         ),
         _number(
             "capacitance_pf_per_m", "capacitance", "pF/m", "capacitance", "capacitance pf/m", "c pf/m",
-            "capacitance nf/km", "c nf/km", "kapazität",
+            "capacitance nf/km", "c nf/km", "kapazität", "pf/m", "nf/km", "pf/ft", "cable capacitance", "c",
         ),
         _number(
             "inductance_uh_per_m", "inductance", "uH/m", "inductance", "inductance uh/m", "l uh/m",
-            "inductance mh/km", "l mh/km", "inductance µh/m", "induktivität",
+            "inductance mh/km", "l mh/km", "inductance µh/m", "induktivität", "uh/m", "mh/km", "uh/ft",
+            "cable inductance", "l",
         ),
         _number(
             "lr_uh_per_ohm", "inductance/resistance", "uH/ohm", "inductance/resistance", "l/r", "l/r uh/ohm",

@@ -4,12 +4,14 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from functools import lru_cache
+from types import MappingProxyType
 from typing import TYPE_CHECKING, Any, Final, NamedTuple
 
 from instruments.installed import Installed
 from instruments.kind import Kind
-from instruments.origin import Cell
+from instruments.origin import Cell, Origin
 from instruments.record import DeviceType, Instrument
 from loops.cable import read_conductor_size
 from loops.circuit import Given, Segment
@@ -293,9 +295,32 @@ def cable_run(
                 )
                 for each in cables
             )
-    found = _listed_type(type_named, plant)
+    found = _with_figures_of_row(_listed_type(type_named, plant), type_named, signal, record)
     conductor = signal.conductor or record.conductor or (found.conductor if found else None) or _own_size(type_named)
     return CableRun(length, found, type_named, conductor, segments)
+
+
+_CABLE_FIGURES: Final = ("ohm_per_km", "capacitance_pf_per_m", "inductance_uh_per_m")
+
+
+def _with_figures_of_row(
+    listed: CableType | None, named: str | None, signal: Instrument, record: Instrument
+) -> CableType | None:
+    """Return a circuit's cable type with what the row states of its cable, as a row's limits are its device's."""
+    stated: dict[str, float] = {}
+    elsewhere: dict[str, Origin] = {}
+    for name in _CABLE_FIGURES:
+        owner = signal if getattr(signal, name) is not None else record
+        figure = getattr(owner, name)
+        if figure is not None:
+            stated[name] = figure
+            origin = owner.elsewhere.get(name) or owner.origin
+            if origin is not None:
+                elsewhere[name] = origin
+    if not stated:
+        return listed
+    base = listed if listed is not None else CableType(code=named or f"of {record.tag or 'the row'}")
+    return replace(base, **stated, elsewhere=MappingProxyType({**base.elsewhere, **elsewhere}))  # type: ignore[arg-type]
 
 
 def listed_cables(text: str | None, *, box: str | None, plant: Plant) -> tuple[Cable, ...]:

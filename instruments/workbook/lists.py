@@ -21,6 +21,7 @@ from instruments.workbook.normalise import SheetRecords, read_records
 from instruments.workbook.number_format import as_text
 from instruments.workbook.plant_sheet import PlantEntry, plant_data, read_plant_sheet
 from instruments.workbook.problem import CellProblem
+from instruments.workbook.row_barriers import barriers_of_rows
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.side_by_side import parted_where_tables_stand_side_by_side
 from instruments.workbook.turned import turned_where_tags_stand_across
@@ -228,6 +229,7 @@ def records_of_sheets(
         raise NoTags(f"no row stands under the headings of any list with tags ({said})")
     if row is not None:
         records["Plant"] = [row]
+    _describe_barriers(records)
     return Lists(
         records=MappingProxyType({name: tuple(each) for name, each in records.items()}),
         problems=tuple(problems),
@@ -239,6 +241,15 @@ def records_of_sheets(
         index_columns=frozenset(columns),
         mapping_notes=tuple(notes),
     )
+
+
+def _describe_barriers(records: dict[str, list[Any]]) -> None:
+    """Make entries of the catalogue of the barriers that rows of the index describe beside their instrument."""
+    name = "Instruments" if records.get("Instruments") else "IO list"
+    rows, barriers = barriers_of_rows(records.get(name, ()), records.get("Device types", ()))
+    if barriers:
+        records[name] = list(rows)
+        records.setdefault("Device types", []).extend(barriers)
 
 
 def _turned(sheets: Sequence[Sheet], kinds: Sequence[SheetKind], mapping: ListMapping | None) -> list[Sheet]:
