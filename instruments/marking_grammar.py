@@ -112,6 +112,12 @@ LEAD: Final = Token(
     r"|non-?\s?incendive)(?:\s+for)?\s*[:,/]?\s*(?=(?:Class|Cl)(?:es)?(?![a-z]))",
     any_case=True,
 )
+# Associated apparatus before its classes: AIS Class I Div 1, [IS] CL I DIV 1 GP A-D, Associated apparatus for Class I.
+ASSOCIATED_LEAD: Final = Token(
+    r"(?:AIS|\[\s*IS\s*\]|Associated\s+(?:apparatus|equipment)(?:\s*\[\s*IS\s*\])?)"
+    r"(?:\s+(?:for|providing\s+IS\s+(?:connections?|circuits?)\s+(?:to|for)))?\s*[:,/]?\s*(?=(?:Class|Cl)(?:es)?(?![a-z]))",
+    any_case=True,
+)
 # What protects it, behind the classes: Class I Div 1 Groups C, D explosionproof.
 TAIL: Final = Token(
     r"(?:[-,]\s*)?\(?\s*(XP|DIP|NI|IS|I\.S\.|intrinsically[\s-]safe|explosion[\s-]?proof|dust[\s-]ignition[\s-]?proof"
@@ -139,7 +145,7 @@ LETTERS_TO: Final = Token(r"(?:-|to(?![A-Za-z])|thru(?![A-Za-z])|through(?![A-Za
 BETWEEN_LETTERS: Final = Token(r"[,&/+]?\s*(?:and(?![A-Za-z])|und(?![A-Za-z])|&)?", any_case=True)
 BETWEEN_CLASS_PARTS: Final = Token(r"[,/]|-(?=\s*[A-Za-z])")
 BETWEEN_CLASSES: Final = Token(r"[,;/&+]|and(?![A-Za-z])", any_case=True)
-ASSOCIATED: Final = Token(r"\(?\s*associated(?:\s+(?:apparatus|equipment))?\s*\)?", any_case=True)
+ASSOCIATED: Final = Token(r"(?:\(?\s*associated(?:\s+(?:apparatus|equipment))?\s*\)?|\[\s*IS\s*\])", any_case=True)
 
 _ROMAN: Final = {"1": "I", "2": "II", "3": "III"}
 _LEADS: Final = {
@@ -424,7 +430,10 @@ def take_class(scanner: Scanner) -> ClassPart | None:
             lead=_LEADS[stroked["lead"].casefold()],
             associated=stroked["associated"] is not None,
         )
-    lead = scanner.take(LEAD)
+    lead = None
+    associated = scanner.take(ASSOCIATED_LEAD) is not None
+    if not associated:
+        lead = scanner.take(LEAD)
     if short := scanner.take(CLASS_SHORT):
         part = ClassPart(classes=[_class(short[1])], division=short[2])
     elif match := scanner.take(CLASS):
@@ -434,7 +443,10 @@ def take_class(scanner: Scanner) -> ClassPart | None:
     else:
         scanner.position = start
         return None
-    if lead:
+    part.associated = associated
+    if associated:
+        part.lead = _LEADS["is"]
+    elif lead:
         part.lead = _protection_named(lead[1])
     while True:
         here = scanner.position

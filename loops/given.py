@@ -319,7 +319,7 @@ def _with_figures_of_row(
                 elsewhere[name] = origin
     if not stated:
         return listed
-    base = listed if listed is not None else CableType(code=named or f"of {record.tag or 'the row'}")
+    base = listed if listed is not None else CableType(code=named or f"on the row of {record.tag or 'no tag'}")
     return replace(base, **stated, elsewhere=MappingProxyType({**base.elsewhere, **elsewhere}))  # type: ignore[arg-type]
 
 

@@ -917,3 +917,33 @@ def test_an_a_before_the_strokes_is_associated_apparatus(text: str) -> None:
 )
 def test_a_protection_alone_or_two_that_disagree_are_no_marking(text: str) -> None:
     assert not read_marking(text).readable
+
+
+@pytest.mark.parametrize(
+    ("text", "groups"),
+    [
+        ("AIS Class I Div 1 Groups A-D", ("A", "B", "C", "D")),
+        ("[IS] CL I DIV 1 GP ABCD", ("A", "B", "C", "D")),
+        ("Associated apparatus [IS] Class I, Div. 1, Groups C, D", ("C", "D")),
+        ("Associated equipment for Class I, Div 1, Group D", ("D",)),
+        ("Class I Div 1 Groups CD [IS]", ("C", "D")),
+    ],
+)
+def test_associated_apparatus_says_so_before_or_behind_its_classes(text: str, groups: tuple[str, ...]) -> None:
+    marking = read_marking(text)
+    assert [(entry.is_output, entry.class_, entry.division, entry.groups) for entry in marking.entries] == [
+        (True, "I", "1", groups)
+    ]
+
+
+def test_associated_apparatus_beside_a_mark_of_its_own() -> None:
+    entries = read_marking("NI CL I DIV 2 GP ABCD T4; AIS CL I DIV 1 GP CD").entries
+    assert [(entry.is_output, entry.division, entry.groups) for entry in entries] == [
+        (False, "2", ("A", "B", "C", "D")),
+        (True, "1", ("C", "D")),
+    ]
+
+
+@pytest.mark.parametrize("text", ["AIS", "[IS]", "AIS something"])
+def test_associated_apparatus_without_classes_cannot_be_read(text: str) -> None:
+    assert not read_marking(text).readable
