@@ -448,7 +448,8 @@ def device_columns(owner: str) -> tuple[Column, ...]:
         ),
         _number("coil_w", "coil W", "W", "coil w", "coil power", "coil watts", "power w", owner=owner),
         _number(
-            "nominal_v", "nominal V", "V", "nominal v", "nominal voltage", "coil voltage", "rated voltage", owner=owner
+            "nominal_v", "nominal V", "V", "nominal v", "nominal voltage", "coil voltage",
+            "rated voltage", owner=owner
         ),
         _number(
             "pull_in_percent", "pull-in %", "%", "pull in %", "pull in", "pull in percent", "pickup %", owner=owner
@@ -584,7 +585,8 @@ MODEL = _text(
 
 IO_TYPE = _text(
     "io_type", "I/O type", "i/o type", "io type", "i/o", "io", "signal i/o", "type of i/o", "e/a typ", "ea typ",
-    "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type", "type d'e/s", "nature e/s",
+    "i o type", "io class", "point type", "e/a", "type", "signal type", "signal", "sig type", "channel type",
+    "type d'e/s", "nature e/s",
     "i/o signal", "type of signal", "typ", "signalart", "signaltyp", "signal class", "pt type", "i/o kind",
     "channel kind", "i/o signal class",
 )
@@ -598,7 +600,7 @@ IO_ADDRESS = _text(
     "dcs location", "plc channel",
 )
 CARD = _text(
-    "card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module", "baugruppe", "carte",
+    "card", "card", "card", "i/o card", "io card", "card type", "module", "io module", "i/o module", "baugruppe",
     "i o card",
 )
 SYSTEM = _word(
@@ -630,7 +632,8 @@ SETTINGS = (
         (),
         "l", "lo", "low", "alarm l", "l alarm", "low alarm", "alarm low", "sp l", "set l", "setpoint l", "alarms l",
         "alarm min", "alarms lo", "min alarm", "alarm lo", "alarm tief", "alarm niedrig", "tiefalarm", "alarm unten",
-        "grenzwert tief", "grenzwert unten", "seuil bas", "alarme basse", "alarma baja", "allarme basso", "alarm laag",
+        "grenzwert tief", "grenzwert unten", "seuil bas", "alarme basse", "alarma baja", "allarme basso",
+        "alarm laag",
         unit_from=("settings_unit",),
     ),
     _quantity(
@@ -748,11 +751,13 @@ INSTRUMENTS = SheetKind(
             "ri fließbild", "r i", "flow diagram", "p & id", "p&id drawing", "p id", "drawing no", "r&i nr",
             "p&id ref", "flow sheet", "ri schema", "r+i", "r+i nr", "r+i blatt", "r&i blatt", "ri blatt", "r&i bl",
             "p&id sheet", "p&id sht", "p&id page", "p&id dwg", "p&id dwg no", "fliessbild", "ri fliessbild nr",
-            "p&i diagram", "schema", "schema pid", "plan pid", "efd", "pefs", "eld", "ufd", "flowsheet", "flowsheet no",
+            "p&i diagram", "schema", "schema pid", "plan pid", "efd", "pefs", "eld", "ufd", "flowsheet",
+            "flowsheet no",
         ),
         _text(
             "line", "line", "line", "line no", "pipe", "line number", "pipe no", "rohrleitung", "leitung", "line no.",
-            "piping line", "leitungs nr", "ligne", "de ligne", "tuyauterie", "pipe line", "line / equipment", "line equipment", "line or equipment",
+            "piping line", "leitungs nr", "ligne", "de ligne", "tuyauterie", "pipe line", "line / equipment",
+            "line equipment", "line or equipment",
             "line/equip", "line/equipment", "line or vessel", "line / vessel", "piping", "vessel / line",
             "line no / vessel", "apparat / leitung", "leitung / apparat", "pipe / equipment",
         ),
@@ -917,7 +922,8 @@ INSTRUMENTS = SheetKind(
             "instrument range min", "span min", "zero", "calibrated range min", "calibrated range from",
             "messbereich anfang", "mb anfang", "calibration range min", "range lo", "cal range min", "min", "from",
             "scale min", "calibrated range low", "calibration low", "field range min", "messbereich min",
-            "range 4 ma", "4 ma", "value at 4 ma", "range start", "echelle basse", "echelle min", "debut d'echelle", "bas d'echelle",
+            "range 4 ma", "4 ma", "value at 4 ma", "range start", "echelle basse", "echelle min",
+            "debut d'echelle", "bas d'echelle",
             "debut echelle", "min echelle", "borne basse", "mba", "cal low", "set range min", "ranged from",
             "range lrv", "calibrated range lrv", "range 0%", "0%", "eng lo", "eng low", "eu low", "eu lo", "eu min",
             "min eu", "span lo", "span low", "lower range", "range bottom", "0 % value", "messanfang",
@@ -1037,7 +1043,8 @@ INSTRUMENTS = SheetKind(
             "failure", "air fail", "air fail position", "fails to", "valve fails", "valve fails to", "cv fails",
             "cv fail", "luftausfall", "bei ausfall", "stellung bei ausfall", "stellung bei luftausfall",
             "stellung bei energieausfall", "sich stellung", "sicherheits stellung", "sicherheitslage", "fail to",
-            "position de repli", "position de securite", "position de defaut", "on failure", "spring fails", "spring position", "spring return",
+            "position de repli", "position de securite", "position de defaut", "on failure", "spring fails",
+            "spring position", "spring return",
             "fail safe", "f p", "de energised", "deenergised", "fail mode",
             "failure mode", "failsafe", "on loss of air", "loss of air", "loss of power", "stellung stromlos",
             "ruhestellung",
@@ -1078,7 +1085,8 @@ INSTRUMENTS = SheetKind(
         SYSTEM,
         _text(
             "power_supply", "power supply", "power supply", "supply", "power", "psu", "power source", "hilfsenergie",
-            "versorgung", "alimentation", "alim", "supply voltage", "powered by", "speisung", "fed from", "loop power", "power feed",
+            "versorgung", "alimentation", "alim", "supply voltage", "powered by", "speisung", "fed from",
+            "loop power", "power feed",
         ),
         _text(
             "barrier", "barrier", "barrier", "barrier tag", "isolator", "barrier type", "is barrier",
@@ -1108,7 +1116,8 @@ INSTRUMENTS = SheetKind(
         ),
         _number(
             "cable_length_m", "cable length", "m", "cable length", "length", "cable length m", "route length",
-            "kabellänge", "longueur", "longueur de cable", "cable len", "length m", "kabel länge", "run", "cable run", "loop length", "cable m",
+            "kabellänge", "longueur", "longueur de cable", "cable len", "length m", "kabel länge", "run",
+            "cable run", "loop length", "cable m",
             "cable ft",
         ),
         _text(

@@ -31,7 +31,7 @@ _CONTACT: Final = re.compile(
     r"\bspdt\b|\bspst\b|\bdpdt\b|\breed\b|\brelay\b",
     re.IGNORECASE,
 )
-_VOLTS: Final = re.compile(r"\b(?:12|24|48|110|115|120|125|220|230|240) ?v ?(?:ac|dc)?\b", re.IGNORECASE)
+_VOLTS: Final = re.compile(r"\b(?:12|24|48|110|115|120|125|220|230|240) ?v ?(?:ac|dc|cc|ca)?\b", re.IGNORECASE)
 # A measurement in volts: 1-5 V, 0-10 VDC, +/-10 V; what is switched has one figure.
 _VOLTAGE: Final = re.compile(
     rf"(?<![\d.,])[0-2]{_TO}(?:5|10) ?v|(?:\+/-|\u00b1) ?(?:5|10) ?v|\bmv\b|millivolt", re.IGNORECASE
@@ -120,16 +120,28 @@ _SUFFIX: Final = r"(?:is|[hsnxipc])?(?![^\W\d_])"
 _IN: Final = r"[ -]?(?:in\b|inputs?\b|eing(?:ang|\u00e4nge)?\b)"
 _OUT: Final = r"[ -]?(?:out\b|outputs?\b|ausg(?:ang|\u00e4nge)?\b)"
 _ANALOGUE: Final = r"analog(?:ue|e|er)?"
+_ENTREE: Final = r"(?:entr[e\u00e9]e|entrada)s? "
+_SORTIE: Final = r"(?:sortie|salida)s? "
+_ANALOGIQUE: Final = r"anal[o\u00f3]gi(?:que|ca)s?\b"
+_TOUT_OU_RIEN: Final = r"(?:tor|tout[ -]ou[ -]rien|logiques?|num[e\u00e9]riques?|digital(?:e|es)?)\b"
 _BINARY: Final = r"(?:digital(?:e|er)?|discrete|binary|bin[\u00e4a]r(?:e|er)?|status)"
+_ENTREE_TOR: Final = rf"^ed$|^e ?tor$|{_ENTREE}{_TOUT_OU_RIEN}"
+_SORTIE_TOR: Final = rf"^sd$|^s ?tor$|{_SORTIE}{_TOUT_OU_RIEN}"
 # What a resistance thermometer or a thermocouple is wired to is told before the analogue input that it also is.
 _IO_WORDS: Final = (
     ("RTD", re.compile(r"\brtd\b|\bpt ?-?100\b|resistance|widerstand", re.IGNORECASE)),
     ("TC", re.compile(r"\btc\b|thermoc|thermoe", re.IGNORECASE)),
     ("PI", re.compile(r"(?<![a-z/])pi(?![a-z])|pulse|frequency|counter|\bhsc\b|impuls|frequenz", re.IGNORECASE)),
-    ("AI", re.compile(rf"{_PREFIX}ai{_SUFFIX}|{_ANALOGUE}{_IN}|^ae$", re.IGNORECASE)),
-    ("AO", re.compile(rf"{_PREFIX}ao{_SUFFIX}|{_ANALOGUE}{_OUT}|^aa$", re.IGNORECASE)),
-    ("DI", re.compile(rf"{_PREFIX}[db]i{_SUFFIX}|{_BINARY}{_IN}|^[db]e$", re.IGNORECASE)),
-    ("DO", re.compile(rf"{_PREFIX}[db]o{_SUFFIX}|{_BINARY}{_OUT}|^[db]a$", re.IGNORECASE)),
+    ("AI", re.compile(rf"{_PREFIX}ai{_SUFFIX}|{_ANALOGUE}{_IN}|^ae$|^ea$|{_ENTREE}{_ANALOGIQUE}", re.IGNORECASE)),
+    ("AO", re.compile(rf"{_PREFIX}ao{_SUFFIX}|{_ANALOGUE}{_OUT}|^aa$|^sa$|{_SORTIE}{_ANALOGIQUE}", re.IGNORECASE)),
+    (
+        "DI",
+        re.compile(rf"{_PREFIX}[db]i{_SUFFIX}|{_BINARY}{_IN}|^[db]e$|{_ENTREE_TOR}", re.IGNORECASE),
+    ),
+    (
+        "DO",
+        re.compile(rf"{_PREFIX}[db]o{_SUFFIX}|{_BINARY}{_OUT}|^[db]a$|{_SORTIE_TOR}", re.IGNORECASE),
+    ),
 )
 _BETWEEN: Final = re.compile(r"[/,+&;|\n]")
 _BOTH_WAYS: Final = re.compile(rf"{_BINARY}[ -]?in(?:put)? ?/ ?out", re.IGNORECASE)

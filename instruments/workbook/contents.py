@@ -38,7 +38,7 @@ _TAG_LIKE: Final = re.compile(
 IO_WORD: Final = re.compile(
     r"(?:h?(?:[ad][io]|p[io]|r?tdi?|rtd|tc|ff|pa|bus|hart|soft|serial|analog(?:ue)?[ -]?(?:in|out)(?:put)?|"
     r"digital[ -]?(?:in|out)(?:put)?|discrete[ -]?(?:in|out)(?:put)?|ae|aa|be|ba|de|da|uio|uai|eth(?:ernet)?|modbus|"
-    r"pulse))"
+    r"pulse|ea|sa|ed|sd|[es] ?tor))"
     r"(?:[ \-]?(?:is|hart|ex|nis|s|sis|4-20.{0,8}))?(?:\s?[/+,&]\s?[a-z]{2,4}){0,3}",
     re.IGNORECASE,
 )

@@ -123,7 +123,7 @@ _ONE_WORD: Final[Mapping[str, str]] = {
 _DROPPED: Final = frozenset(
     (
         "no", "nr", "num", "number", "nos", "nummer", "nbr", "#", "of", "the", "for", "a", "an", "and", "or", "der",
-        "die", "das", "des", "und", "in", "at", "&", "numero", "n°", "du", "et", "oder", "s",
+        "die", "das", "des", "und", "in", "at", "&", "numero", "n°", "du", "de", "et", "oder", "s",
     )
 )  # fmt: skip
 NEUTRAL: Final = frozenset(
@@ -160,8 +160,94 @@ def heading_words(text: str) -> tuple[str, ...]:
     for pattern, word in _PHRASES:
         plain = pattern.sub(word, plain)
     words = [word for word in _SPLIT.split(plain) if word]
+    if len(words) == 1 and (parts := _parts_of(words[0])):
+        words = list(parts)
     kept = [_one_word(word) for word in words if word not in _DROPPED]
     return tuple(kept or words)
+
+
+# The abbreviations of which databases with eight letters to a name put their headings together: TAGNMBR, RNGELOW.
+_GLUED: Final[Mapping[str, str]] = {
+    spelling: word
+    for word, spellings in {
+        "tag": ("tag",),
+        "number": ("numb", "nmbr", "nmb", "nbr", "num", "no", "nr", "number", "numbr"),
+        "service": ("serv", "srvc", "svc", "service", "servc"),
+        "description": ("desc", "descr", "dscr", "dsc", "descrip", "descrptn"),
+        "instrument": ("inst", "instr", "ins", "instrmnt"),
+        "type": ("type", "typ", "ty"),
+        "loop": ("loop", "lp"),
+        "pid": ("pid", "pandid", "pnid"),
+        "line": ("line", "lin", "ln"),
+        "equipment": ("eqpt", "eqp", "equip", "eqpmt", "equp"),
+        "range": ("range", "rnge", "rng", "rang"),
+        "calibrated": ("calib", "clb"),
+        "min": ("min", "mini", "mn"),
+        "max": ("max", "maxi", "mx"),
+        "low": ("low", "lo", "lw"),
+        "high": ("high", "hi", "hgh"),
+        "ll": ("lolo", "lowlow"),
+        "hh": ("hihi", "highhigh"),
+        "engineering": ("eng", "engg"),
+        "unit": ("unit", "units", "unts", "unt"),
+        "normal": ("norm", "nrm", "normal", "nom"),
+        "operating": ("oper", "opr", "op", "oprtg"),
+        "design": ("design", "desgn", "dsgn", "des", "dsn"),
+        "pressure": ("press", "pres", "prs", "prss"),
+        "temperature": ("temp", "tmp", "tmpr"),
+        "alarm": ("alarm", "alrm", "alm"),
+        "trip": ("trip", "trp"),
+        "setpoint": ("setpt", "stpt", "setp", "sp"),
+        "signal": ("signl", "sgnl", "sgl", "sig", "signal", "sigl"),
+        "io": ("io",),
+        "address": ("addr", "addrss", "adrs", "adr", "addrs", "addres"),
+        "card": ("card", "crd"),
+        "channel": ("chan", "chnl", "chn"),
+        "junction box": ("jb", "jbox", "jctbox"),
+        "cable": ("cable", "cbl", "cabl"),
+        "terminal": ("term", "trml", "trm"),
+        "area": ("area", "ar"),
+        "class": ("class", "clss", "cls"),
+        "ex": ("ex",),
+        "marking": ("mark", "markng", "mrkg", "marking"),
+        "certificate": ("cert", "certif", "crt"),
+        "revision": ("rev", "revn"),
+        "remark": ("rmrk", "rmks", "remk", "rem", "remrk"),
+        "manufacturer": ("mfr", "manf", "mfgr", "manuf"),
+        "model": ("model", "modl", "mdl"),
+        "serial": ("serl", "serial", "srl"),
+        "location": ("locn", "loc", "locat"),
+        "fluid": ("fluid", "fld", "flud"),
+        "fail": ("fail", "fl"),
+        "position": ("posn", "pos"),
+        "supply": ("supp", "sply", "suppl"),
+        "status": ("stat", "stts", "status", "stus"),
+        "drawing": ("dwg", "drwg"),
+    }.items()
+    for spelling in spellings
+}
+_LONGEST_PART: Final = max(map(len, _GLUED))
+
+
+def _parts_of(word: str) -> tuple[str, ...]:
+    """Return the words of which one is put together, the fewest that make it; nothing where it is one of its own.
+
+    >>> _parts_of("tagnumbr"), _parts_of("ioaddrss"), _parts_of("alrmhihi"), _parts_of("manometer")
+    (('tag', 'number'), ('io', 'address'), ('alarm', 'hh'), ())
+    """
+    if not 5 <= len(word) <= 12 or not word.isalpha() or word in _GLUED or word in _ONE_WORD:
+        return ()
+    best: list[tuple[str, ...] | None] = [()] + [None] * len(word)
+    for end in range(2, len(word) + 1):
+        for start in range(max(0, end - _LONGEST_PART), end - 1):
+            before, part = best[start], _GLUED.get(word[start:end])
+            if before is None or part is None or len(before) == 3:
+                continue
+            known = best[end]
+            if known is None or len(known) > len(before) + 1:
+                best[end] = (*before, *part.split())
+    found = best[-1] or ()
+    return found if len(found) > 1 else ()
 
 
 def _one_word(word: str) -> str:

@@ -1270,7 +1270,7 @@ def _join_parts(
 
 # Where an address in columns of its own goes from the large to the small.
 _ADDRESS_PARTS: Final[tuple[tuple[str, tuple[str, ...]], ...]] = (
-    ("Station", ("node", "station", "controller", "drop", "plc", "plc no", "rio", "cpu", "node no")),
+    ("Station", ("node", "station", "controller", "drop", "automate", "plc", "plc no", "rio", "cpu", "node no")),
     ("Rack", ("rack", "chassis", "frame", "baugruppentraeger", "rack no")),
     (
         "Slot",
@@ -1287,10 +1287,11 @@ _ADDRESS_PARTS: Final[tuple[tuple[str, tuple[str, ...]], ...]] = (
             "karte",
             "steckkarte",
             "karte nr",
+            "carte",
             "modul",
         ),
     ),
-    ("Ch", ("channel", "ch", "point", "kanal", "channel no", "ch no", "bit", "i/o channel", "point no")),
+    ("Ch", ("channel", "ch", "point", "kanal", "channel no", "ch no", "voie", "bit", "i/o channel", "point no")),
 )
 _ADDRESS_WORDS: Final = {heading_words(text): name for name, texts in _ADDRESS_PARTS for text in texts}
 

@@ -367,6 +367,32 @@ def test_a_catalogue_and_a_cable_list_in_two_languages() -> None:
     assert kinds == ["Device types", "Cables"]
 
 
+def test_headings_of_a_database_are_put_together_of_abbreviations() -> None:
+    found = matched(
+        "TAGNUMBR|SERVDESC|INSTTYPE|LOOPNMBR|PIDNUMBR|RANGEMIN|RANGEMAX|ENGUNITS|NORMOPER|ALRMHIHI|IOADDRSS|RECID\n"
+        "FT-1|FEED|FLOW TRANSMITTER|F-1|D-1|0|120|M3/H|70|110|N1-01|1\n"
+        "PT-2|TOP|PRESSURE TRANSMITTER|P-2|D-1|0|6|BARG|4|5|N1-02|2"
+    )
+    assert columns_of(found) == {
+        "tag": 0, "service": 1, "kind": 2, "loop": 3, "pid": 4, "lrv": 5, "urv": 6, "range_unit": 7,
+        "operating_value_normal": 8, "setting_hh": 9, "io_address": 10,
+    }  # fmt: skip
+
+
+def test_headings_of_a_list_in_french() -> None:
+    found = matched(
+        "Repère|Libellé|Nature de l'instrument|Type E/S|Automate|Carte|Voie|Échelle basse|Échelle haute|Unité|"
+        "Seuil haut|Boîte de jonction|N° de câble|Longueur (m)|Alim.|Position de repli\n"
+        "LT-1|Niveau bac|Transmetteur de niveau|EA|API-1|A01|0|0|3,2|m|2,8|BJ-1|C-1|85|24 V|\n"
+        "LV-2|Vidange bac|Vanne de régulation|SA|API-1|A02|1|0|100|%||BJ-1|C-2|86|24 V|fermée"
+    )
+    assert columns_of(found) == {
+        "tag": 0, "service": 1, "kind": 2, "io_type": 3, "io_address": 4, "lrv": 7, "urv": 8, "range_unit": 9,
+        "setting_h": 10, "junction_box": 11, "cable": 12, "cable_length_m": 13, "power_supply": 14,
+        "failure_position": 15,
+    }  # fmt: skip
+
+
 def test_a_tag_in_columns_of_its_own_is_joined() -> None:
     found = matched("Function|Loop No.|Suffix|Service\nPT|1001|A|Feed\nTT|1002||Feed\nFT|1003|B|Feed")
     assert (found.columns["tag"].index, found.columns["tag"].parts) == (0, ((1, "-"), (2, "")))
