@@ -24,7 +24,7 @@ from instruments.workbook.problem import CellProblem
 from instruments.workbook.row_barriers import barriers_of_rows
 from instruments.workbook.sheet import Sheet
 from instruments.workbook.side_by_side import parted_where_tables_stand_side_by_side
-from instruments.workbook.turned import turned_where_tags_stand_across
+from instruments.workbook.turned import columns_of_labels, turned_where_tags_stand_across
 from instruments.workbook.unread import Unread, problems_of
 from instruments.workbook.words import folded
 
@@ -55,6 +55,8 @@ class SheetReport:
         Section rows; title lines, notes and legends: row counted from 1, and text.
     left_out
         Whether a mapping told to leave it out.
+    missed
+        Whether it was left out though nothing says that it holds no list.
     turned
         Whether its tags stood side by side, and its lines were read as columns.
     decimal, decimals
@@ -78,6 +80,7 @@ class SheetReport:
     notes: tuple[tuple[int, str], ...] = ()
     remarks: tuple[str, ...] = ()
     left_out: bool = False
+    missed: bool = False
     turned: bool = False
     decimal: str = ""
     decimals: Mapping[int, str] = field(default_factory=dict)
@@ -200,7 +203,7 @@ def records_of_sheets(
     index_file = ""
     for sheet, match, told in zip(sheets, matches, mapped, strict=True):
         if match is None:
-            reports.append(_left_out(sheet, told))
+            reports.append(_left_out(sheet, told, kinds))
             continue
         if _is_plant(match.kind):
             failed, count = _failed_cells(sheet)
@@ -362,15 +365,24 @@ def _no_tags(sheets: Sequence[Sheet], matches: Sequence[SheetMatch | None], file
     return f"no list with tags was found: a sheet needs a heading such as 'Tag' or 'Tag No.' over its tags ({said})"
 
 
-def _left_out(sheet: Sheet, told: MappedSheet | None) -> SheetReport:
+def _left_out(sheet: Sheet, told: MappedSheet | None, kinds: Sequence[SheetKind]) -> SheetReport:
     name = folded(sheet.name)
+    missed = False
     if told is not None and told.kind == LEAVE_OUT:
         why = told.why or "the mapping leaves it out"
     elif not any(any(cell is not None for cell in row) for row in sheet.rows):
         why = "empty"
     elif any(word in name for word in _LEFT_OUT):
         why = f"a sheet named {sheet.name} holds no list"
+    elif labels := columns_of_labels(sheet, kinds):
+        missed = True
+        columns = " and ".join(map(column_letters, labels))
+        why = (
+            f"a form with the data of one tag, and its names stand in columns {columns}: put them all in one"
+            " column and their values in the next, or the tag in a row of a list"
+        )
     else:
+        missed = True
         why = "no heading of a known list was found"
     return SheetReport(
         file=sheet.file,
@@ -379,6 +391,7 @@ def _left_out(sheet: Sheet, told: MappedSheet | None) -> SheetReport:
         cells_filled=sheet.cells_filled,
         remarks=(*sheet.notes, *_drawn_and_said(sheet)),
         left_out=told is not None and told.kind == LEAVE_OUT,
+        missed=missed,
         encoding=sheet.encoding,
         separator=sheet.separator,
     )

@@ -16,7 +16,7 @@ from instruments.workbook.number_format import as_text
 from instruments.workbook.sheet import Sheet, Value
 from instruments.workbook.words import folded, placeholder
 
-__all__ = ["turned_where_tags_stand_across"]
+__all__ = ["columns_of_labels", "turned_where_tags_stand_across"]
 
 MOST_LINES: Final = 600
 """A data sheet has a line for each property; what is longer is a list."""
@@ -71,6 +71,27 @@ def turned_where_tags_stand_across(sheet: Sheet, kinds: Sequence[SheetKind]) -> 
     if down is not None and down.score > across.score:
         return (sheet,)
     return turned
+
+
+def columns_of_labels(sheet: Sheet, kinds: Sequence[SheetKind]) -> tuple[int, ...]:
+    """Return the columns of names of a data sheet of one tag, filled in as a form; nothing where it is none.
+
+    Such a form has names with their values beside them in two or more columns of names, and no list in it.
+    """
+    finders = [Finder(kind) for kind in kinds if kind.key == (("tag",),)]
+    if not finders or len(sheet.rows) > MOST_LINES:
+        return ()
+    found: list[int] = []
+    tags = 0
+    for column in range(min(LABEL_COLUMNS * 2, sheet.width - 1)):
+        cells = [row[column] for row in sheet.rows]
+        names = [_named(cell, finders) if isinstance(cell, str) and len(cell) <= 80 else "" for cell in cells]
+        beside = [line for line, name in enumerate(names) if name and sheet.rows[line][column + 1] is not None]
+        if len(beside) < _SHORT or (found and column == found[-1] + 1):
+            continue
+        found.append(column)
+        tags += sum(names[line] == "tag" and _holds_tags([sheet.rows[line][column + 1]]) for line in beside)
+    return tuple(found) if len(found) > 1 and tags else ()
 
 
 def _blocks(sheet: Sheet, finders: Sequence[Finder]) -> list[_Block]:

@@ -250,6 +250,32 @@ def test_what_stands_beside_the_plant_s_data_is_noted_and_what_failed_told() -> 
     )  # fmt: skip
 
 
+FORM = """DATA SHEET|||Rev 1|
+Tag Number|PIT-1|Fluid|Seal oil|
+Service|Header|Operating Pressure (barg)|9.5|
+P&ID No.|P-1|Design Pressure (barg)|16|
+Range Unit|barg|Signal|4-20 mA|"""
+
+
+@pytest.mark.parametrize(
+    ("text", "skipped", "missed"),
+    [
+        (
+            FORM,
+            "a form with the data of one tag, and its names stand in columns A and C: put them all in one column and"
+            " their values in the next, or the tag in a row of a list",
+            True,
+        ),
+        ("Dear all,|\nplease look|at this", "no heading of a known list was found", True),
+        ("|\n|", "empty", False),
+    ],
+)
+def test_a_sheet_that_is_not_read_says_why(text: str, skipped: str, missed: bool) -> None:
+    index = sheet("Tag|Service\nPT-101|feed\nPT-102|return")
+    report = records_of_sheets([index, sheet(text, name="PIT-1")], KINDS).sheets[1]
+    assert (report.skipped, report.missed) == (skipped, missed)
+
+
 def test_comments_and_shapes_of_a_sheet_that_is_not_read_are_counted() -> None:
     index = sheet("Tag|Service\nPT-101|feed\nPT-102|return")
     cover = sheet("A list", name="Cover", comments={(0, 0): "A. N.: old", (3, 3): "x"}, shapes=2)

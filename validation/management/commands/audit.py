@@ -185,6 +185,13 @@ class Command(BaseCommand):
             f"findings: {figures['danger']} danger, {figures['fault']} fault, {figures['gap']} gap; "
             f"{figures['review']} to review; {figures['unchecked']} checks could not be made for want of data"
         )
+        missed: dict[str, list[str]] = {}
+        for sheet in result.plant.lists.sheets:
+            if sheet.missed:
+                missed.setdefault(sheet.skipped, []).append(f"'{sheet.sheet}'")
+        for why, sheets in list(missed.items())[:MOST_SAID]:
+            more = f" and {len(sheets) - MOST_SAID} more" if len(sheets) > MOST_SAID else ""
+            say(f"not read: {', '.join(sheets[:MOST_SAID])}{more}: {why}")
         for line in self._annotated:
             say(line)
         for wanted in [each for each in wanted_sheets(result) if each.checks][:MOST_WANTED]:
