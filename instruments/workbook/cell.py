@@ -388,6 +388,8 @@ _BARE: Final = {
     "Class": re.compile(r"I{1,3}|[123]"),
     "Div": re.compile(r"[12]"),
     "Group": re.compile(r"[A-G](?:\s?[,&/+ ]\s?[A-G]){0,6}"),
+    "T": re.compile(r"\d{2,3}(?:[.,]0)?(?:\s?°?\s?C)?"),
+    "Ta": re.compile(r"[-+\u2212\u2013\d].{0,40}"),
 }
 
 

@@ -1209,7 +1209,22 @@ _CLASS_PARTS: Final[tuple[tuple[str, str, tuple[str, ...]], ...]] = (
     ),
     ("epl", "", ("epl", "equipment protection level")),
     ("ambient", "", ("marked ambient", "ta range", "tamb")),
+    (
+        "surface",
+        "T",
+        (
+            "max surface temperature", "max surface temp", "maximum surface temperature", "surface temperature",
+            "surface temp", "permitted surface temperature", "max permitted surface temperature", "max surface",
+            "permitted surface temp", "max dust temperature", "oberflaechentemperatur", "max oberflaechentemperatur",
+        ),
+    ),
+    (
+        "site ambient",
+        "Ta",
+        ("site ambient", "ambient site", "ambient of area", "site ambient temperature", "ambient of site", "site temp"),
+    ),
 )  # fmt: skip
+_OF_THE_PLACE: Final = frozenset(("surface", "site ambient"))
 _PART_WORDS: Final = {heading_words(text): (name, prefix) for name, prefix, texts in _CLASS_PARTS for text in texts}
 
 
@@ -1237,6 +1252,15 @@ def _join_parts(
         for name, match in columns.items()
         if name in ("area_classification", "ex_marking", "protection")
     }
+    of_site = columns.get("ambient_limits")
+    if (
+        of_site is not None
+        and of_site.how != "mapping"
+        and "area_classification" in columns
+        and _part_of(levels[of_site.index]) == ("site ambient", "Ta")
+    ):
+        # Not what the device bears.
+        used.discard(columns.pop("ambient_limits").index)
     for index in sorted(levels):
         if index in used:
             continue
@@ -1254,7 +1278,10 @@ def _join_parts(
             owner = owners[max(left)] if left and index - max(left) <= 4 else None
             if owner is None and "area_classification" in known and part[0] in ("division", "group", "class"):
                 owner = "area_classification" if "area_classification" not in columns else None
-        if owner is None:
+        if part[0] in _OF_THE_PLACE and owner != "area_classification":
+            # The place's, and it says nothing of the device wherever its column stands.
+            owner = "area_classification" if part[0] == "site ambient" and "area_classification" in columns else None
+        if owner is None or (part[0] in _OF_THE_PLACE and _in_fahrenheit(levels[index])):
             continue
         name, prefix = part
         match = columns.get(owner)
@@ -1340,11 +1367,17 @@ def _join_address(
     used.update(parts.values())
 
 
+def _in_fahrenheit(heading: Levels) -> bool:
+    return any(
+        text.rstrip(" )]").casefold().endswith((" f", "(f", "[f", "°f", "degf", "deg f")) for text in heading.texts
+    )
+
+
 def _part_of(heading: Levels) -> tuple[str, str] | None:
     for text in (heading.joined, heading.texts[-1]):
         words = heading_words(text)
         found = _PART_WORDS.get(words) or _PART_WORDS.get(
-            tuple(word for word in words if word not in ("area", "hazardous", "ex"))
+            tuple(word for word in words if word not in ("area", "hazardous", "ex", "°c", "degc"))
         )
         if found:
             return found
