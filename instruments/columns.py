@@ -1130,13 +1130,15 @@ INSTRUMENTS = SheetKind(
         ),
         _number(
             "capacitance_pf_per_m", "cable capacitance", "pF/m", "cable capacitance", "cable pf/m", "cable c pf/m",
+            "cable pf/ft",
             "cable nf/km", "cable c nf/km", "cable capacitance pf/m", "cable capacitance nf/km", "cable cc pf/m",
-            "cc pf/m", "pf/m", "cable cap", "cable c", "cable pf/ft", "kabelkapazität",
+            "cc pf/m", "pf/m", "cable cap", "cable c", "kabelkapazität",
         ),
         _number(
             "inductance_uh_per_m", "cable inductance", "uH/m", "cable inductance", "cable uh/m", "cable l uh/m",
+            "cable uh/ft",
             "cable mh/km", "cable l mh/km", "cable inductance uh/m", "cable inductance mh/km", "cable lc uh/m",
-            "lc uh/m", "uh/m", "cable ind", "cable l", "cable uh/ft", "kabelinduktivität",
+            "lc uh/m", "uh/m", "cable ind", "cable l", "kabelinduktivität",
         ),
         _text("pair", "pair", "pair", "pair no", "pair number", "paar", "pr"),
         _text(

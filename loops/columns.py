@@ -177,6 +177,7 @@ CABLE_TYPES = SheetKind(
         ),
         _number(
             "ohm_per_km", "ohm per km", "ohm/km", "ohm per km", "ohm/km", "resistance ohm/km", "resistance",
+            "ohm/1000ft", "ohm/kft", "loop resistance", "loop ohm/km",
             "r ohm/km", "dc resistance", "resistance per km",
         ),
         Column(
@@ -194,7 +195,7 @@ CABLE_TYPES = SheetKind(
         ),
         _number(
             "inductance_uh_per_m", "inductance", "uH/m", "inductance", "inductance uh/m", "l uh/m",
-            "inductance mh/km", "l mh/km", "inductance µh/m", "induktivität", "uh/m", "mh/km", "uh/ft",
+            "inductance mh/km", "l mh/km", "inductance µh/m", "induktivität", "uh/m", "mh/km",
             "cable inductance", "l",
         ),
         _number(

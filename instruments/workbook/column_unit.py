@@ -63,6 +63,15 @@ for _quantity, _units in {
         "ohms/1000ft": 1.0 / 304.8,
         "ohm/mft": 1.0 / 304.8,
         "ω/1000ft": 1.0 / 304.8,
+        "ohm/100m": 1e-2,
+        # Out and back: a conductor has half of it.
+        "loop ohm/km": 0.5e-3,
+        "loop ω/km": 0.5e-3,
+        "loop ohm/1000ft": 0.5 / 304.8,
+        "loop ohm/kft": 0.5 / 304.8,
+        "ohm/ft": 1.0 / 0.3048,
+        "ohm/mile": 1.0 / 1609.344,
+        "ohm/mi": 1.0 / 1609.344,
     },
     "farad per metre": {
         "pf/m": 1e-12,
@@ -72,6 +81,9 @@ for _quantity, _units in {
         "pf/ft": 1e-12 / 0.3048,
         "nf/1000ft": 1e-9 / 304.8,
         "pf/km": 1e-15,
+        "nf/kft": 1e-9 / 304.8,
+        "nf/100m": 1e-11,
+        "pf/100m": 1e-14,
     },
     "henry per metre": {
         "uh/m": 1e-6,
@@ -81,6 +93,8 @@ for _quantity, _units in {
         "uh/ft": 1e-6 / 0.3048,
         "mh/m": 1e-3,
         "mh/1000ft": 1e-3 / 304.8,
+        "mh/kft": 1e-3 / 304.8,
+        "uh/100m": 1e-8,
     },
     "henry per ohm": {"uh/ohm": 1e-6, "uh/ω": 1e-6, "mh/ohm": 1e-3, "mh/ω": 1e-3},
     "percent": {"%": 0.01, "pct": 0.01, "percent": 0.01, "% url": 0.01, "% of url": 0.01, "%url": 0.01},
@@ -96,6 +110,12 @@ _KELVIN: Final = frozenset({"k", "kelvin"})
 def _plain(unit: str) -> str:
     text = folded(unit).replace("μ", "u").replace("µ", "u").replace("²", "2").replace("per ", "/")
     return text.replace(" / ", "/").strip(" .[]()").removesuffix(" each")
+
+
+def _closed(unit: str) -> str:
+    """Return a unit without its spaces, but for the word before it: ohm/1000 ft, loop ohm/1000 ft."""
+    loop = unit.startswith("loop ")
+    return ("loop " if loop else "") + (unit[5:] if loop else unit).replace(" ", "")
 
 
 @lru_cache(maxsize=4096)
@@ -116,7 +136,7 @@ def factor_to(column_unit: str, written: str) -> tuple[float, float] | None:
         if other in _FAHRENHEIT:
             return 5.0 / 9.0, -160.0 / 9.0
         return (1.0, -273.15) if other in _KELVIN else None
-    one, two = _SIZES.get(own), _SIZES.get(other)
+    one, two = _SIZES.get(own), _SIZES.get(other) or _SIZES.get(_closed(other))
     if one is None or two is None or one[0] != two[0]:
         return None
     factor = two[1] / one[1]

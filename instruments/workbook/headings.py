@@ -11,6 +11,7 @@ from typing import Final
 
 from instruments.column import Column, Reads, SheetKind
 from instruments.unit import Unit
+from instruments.workbook.column_unit import factor_to
 from instruments.workbook.contents import IO_WORD, Contents
 from instruments.workbook.heading_words import (
     BRACKET,
@@ -540,6 +541,7 @@ def _assign(
                 stated = unit_for(match.column, text)
                 if stated is not None:
                     columns[name] = replace(match, unit=stated if isinstance(stated, Unit) else None, unit_text=text)
+    _state_units_of_a_length(columns, used)
     fields = {name for match in columns.values() for name in _fills(match.column)} | set(columns)
     if not any(all(name in fields for name in key) for key in kind.key):
         return None
@@ -643,6 +645,35 @@ def _take_text_of_signals(kind: SheetKind, content: Callable[[int], Contents], c
     cells = content(signal.index)
     if cells.fit(signal.column, frozenset()) < 0.5 and cells.part(_SEVERAL_WORDS) > 0.6:
         columns["service"] = replace(columns.pop("signal"), column=kind.column("service"), how="contents")
+
+
+_OF_A_LENGTH: Final = frozenset(("pF/m", "uH/m", "ohm/km"))
+_FIGURE_OF_A_CABLE: Final = re.compile(
+    r"(?<![a-z])(?:(?:[pnum\u00b5\u03bc]?[fh]|m?(?:ohms?|\u03c9))\s?(?:/|per )\s?\d{0,4}\s?[a-z]{1,5}"
+    r"|[pnum\u00b5\u03bc][fh])(?![a-z0-9])"
+)
+
+
+def _state_units_of_a_length(columns: dict[str, ColumnMatch], used: set[int]) -> None:
+    """Take the unit that stands within a heading of a cable's figures; a column in one that is not known is not read.
+
+    45 pF/ft taken for 45 pF/m is a third of what the cable has.
+    """
+    for name, match in list(columns.items()):
+        if match.column.unit not in _OF_A_LENGTH or match.how == "mapping":
+            continue
+        if match.unit_text and not (name == "ohm_per_km" and "loop" in heading_words(match.heading)):
+            continue
+        found = _FIGURE_OF_A_CABLE.search(match.heading.casefold())
+        text = found[0] if found is not None else match.column.unit or ""
+        if name == "ohm_per_km" and "loop" in heading_words(match.heading) and "resistance_per" not in columns:
+            text = f"loop {text}"
+        elif found is None:
+            continue
+        if factor_to(match.column.unit or "", text) is not None:
+            columns[name] = replace(match, unit_text=text)
+        else:
+            used.discard(columns.pop(name).index)
 
 
 _DESCRIBED: Final = frozenset(("uo_v", "io_ma", "ui_v", "ii_ma", "lrl", "url", "limits", "lift_off_v"))
