@@ -328,6 +328,9 @@ def _is_heading_text(text: str, finders: Sequence[Finder]) -> bool:
     pieces = [piece for piece in re.split(r"\s/\s|\n", text) if len(piece) > 2]
     for each in dict.fromkeys((text, BRACKET.sub(" ", text), text.partition(",")[0], *pieces[:3])):
         words = heading_words(each)
+        # A letter alone is a revision or a column of a form as often as the C of a cable.
+        if len(words) == 1 and len(words[0]) == 1 and words[0] not in ("l", "h"):
+            continue
         if words and (words in GENERIC_UNITS or any(finder.names.knows(words) for finder in finders)):
             return True
     return False

@@ -187,7 +187,7 @@ def test_tags_that_became_dates_keep_how_they_looked(tmp_path: Path) -> None:
     sheet = written(tmp_path, fill)
     assert (sheet.rows, sheet.number_formats) == (
         [[datetime.date(2024, 12, 5)], [300000.0]],
-        {(0, 0): "d-mmm"},
+        {(0, 0): "d-mmm", (1, 0): "0.00E+00"},
     )
 
 
