@@ -467,6 +467,7 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
         remarks.append(
             f"{sheet.shapes} drawn shapes (clouds, triangles, pictures) are not read: which rows they mark is not known"
         )
+    remarks.extend(_coloured(sheet, found))
     if found.merged:
         remarks.append(f"{found.merged} cells filled from merged cells")
     return SheetReport(
@@ -489,6 +490,29 @@ def _report(sheet: Sheet, match: SheetMatch, found: SheetRecords) -> SheetReport
         encoding=sheet.encoding,
         separator=sheet.separator,
     )
+
+
+def _coloured(sheet: Sheet, found: SheetRecords) -> list[str]:
+    """Tell which rows are filled with a colour that the rest has not, and with which tags.
+
+    Bands of one colour, on every second row or on most, mark nothing.
+    """
+    tags = {each.origin.row - 1: getattr(each, "tag", None) or "" for each in found.records}
+    by_colour: dict[str, list[int]] = {}
+    for row, colour in sorted(sheet.coloured_rows.items()):
+        if row in tags:
+            by_colour.setdefault(colour, []).append(row)
+    said = []
+    for colour, rows in sorted(by_colour.items()):
+        if len(rows) * 3 > len(tags) and len(rows) > 1:
+            continue
+        named = ", ".join(f"{row + 1} {tags[row]}".strip() for row in rows[:MOST_NAMED])
+        more = f" and {len(rows) - MOST_NAMED} more" if len(rows) > MOST_NAMED else ""
+        said.append(
+            f"{len(rows)} row{'s' if len(rows) > 1 else ''} filled with the colour {colour}, which may mean a hold, a"
+            f" change or another's supply, and is not applied: {named}{more}"
+        )
+    return said
 
 
 MOST_NAMED = 20

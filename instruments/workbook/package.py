@@ -325,7 +325,7 @@ def look_at(package: Package) -> Seen:
         A part is missing, damaged or too large, or a sheet reaches too far to be read.
     """
     contents = read_contents(package)
-    struck, formats = read_styles(package, contents.styles) if contents.styles else (frozenset(), {})
+    struck, formats, fills = read_styles(package, contents.styles) if contents.styles else (frozenset(), {}, {})
     texts: Mapping[bytes, Sequence[Run]] = {}
     text_count = 0
     texts_rewritten = False
@@ -341,6 +341,7 @@ def look_at(package: Package) -> Seen:
         formats=formats,
         dates=frozenset(style for style, code in formats.items() if format_kind(code) == "date"),
         texts=texts,
+        fills=fills,
     )
     room = package.limits.cells
     seen = Seen(sheets=[])
@@ -435,16 +436,18 @@ def _standing(package: Package, relations: Mapping[str, Relation], kind: str, st
     return next((part for part in (*told, standard) if part in package), None)
 
 
-def read_styles(package: Package, part: str) -> tuple[frozenset[bytes], dict[bytes, str]]:
-    """Return the styles whose font is struck out, and the codes of those that show numbers otherwise."""
+def read_styles(package: Package, part: str) -> tuple[frozenset[bytes], dict[bytes, str], dict[bytes, str]]:
+    """Return the styles whose font is struck out, the codes of those that show numbers otherwise, and the fills."""
     codes = dict(BUILT_IN)
     struck_fonts: set[int] = set()
-    styles: list[tuple[int, int]] = []
+    styles: list[tuple[int, int, int]] = []
+    fills: list[str] = []
     path: list[str] = []
     fonts = 0
+    solid = False
 
     def start(name: str, attributes: Mapping[str, str]) -> None:
-        nonlocal fonts
+        nonlocal fonts, solid
         parent = path[-1] if path else ""
         path.append(name)
         if name == "numFmt" and parent == "numFmts":
@@ -455,20 +458,42 @@ def read_styles(package: Package, part: str) -> tuple[frozenset[bytes], dict[byt
             # Fonts of conditional formats stand under dxf.
             if path[-3:-1] == ["fonts", "font"]:
                 struck_fonts.add(fonts - 1)
+        elif name == "fill" and parent == "fills":
+            fills.append("")
+        elif name == "fgColor" and path[-4:-1] == ["fills", "fill", "patternFill"] and solid and fills:
+            fills[-1] = _colour(attributes)
         elif name == "xf" and parent == "cellXfs":
-            styles.append((_number(attributes.get("numFmtId")), _number(attributes.get("fontId"))))
+            number, font, fill = (_number(attributes.get(key)) for key in ("numFmtId", "fontId", "fillId"))
+            styles.append((number, font, fill))
+        if name == "patternFill":
+            solid = attributes.get("patternType") == "solid"
 
     def end(_: str) -> None:
         path.pop()
 
     package.read(part, start=start, end=end)
-    struck = frozenset(b"%d" % style for style, (_, font) in enumerate(styles) if font in struck_fonts)
+    struck = frozenset(b"%d" % style for style, (_, font, _) in enumerate(styles) if font in struck_fonts)
     formats = {
         b"%d" % style: codes[number]
-        for style, (number, _) in enumerate(styles)
+        for style, (number, *_) in enumerate(styles)
         if number in codes and format_kind(codes[number])
     }
-    return struck, formats
+    filled = {
+        b"%d" % style: fills[fill] for style, (*_, fill) in enumerate(styles) if 0 <= fill < len(fills) and fills[fill]
+    }
+    return struck, formats, filled
+
+
+def _colour(attributes: Mapping[str, str]) -> str:
+    """Return the name of a fill colour, by what the workbook says of it; nothing for white."""
+    rgb, theme, indexed = (attributes.get(key, "") for key in ("rgb", "theme", "indexed"))
+    if rgb:
+        shown = rgb[-6:].upper()
+        return "" if shown == "FFFFFF" else f"#{shown}"
+    tint = attributes.get("tint", "")
+    if theme:
+        return "" if theme == "0" and tint in ("", "0") else f"theme {theme}" + (f" ({tint[:5]})" if tint else "")
+    return "" if indexed in ("", "1", "9", "64", "65") else f"colour {indexed}"
 
 
 def rich_texts(pieces: Iterable[bytes], *, every: bool) -> tuple[dict[bytes, Sequence[Run]], int]:

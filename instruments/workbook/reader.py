@@ -296,6 +296,7 @@ def _joined(
         merged=merged,
         hidden_rows=frozenset(row for row in look.hidden_rows if row < height),
         hidden_columns=frozenset(column for column in look.hidden_columns if column < width),
+        coloured_rows={row: colour for row, colour in look.coloured_rows.items() if row < height},
         struck={position for position in look.struck if near(position)},
         partly_struck={position: text for position, text in look.partly_struck.items() if near(position)},
         number_formats={position: code for position, code in look.number_formats.items() if near(position)},

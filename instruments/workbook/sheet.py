@@ -68,6 +68,8 @@ class Sheet:
     hidden_rows: frozenset[int] = frozenset()
     """Hidden, collapsed and filtered rows, within `rows`."""
     hidden_columns: frozenset[int] = frozenset()
+    coloured_rows: dict[int, str] = field(default_factory=dict)
+    """Rows most of whose cells are filled with one colour, and what the workbook calls it; not of a turned sheet."""
     struck: set[tuple[int, int]] = field(default_factory=set)
     """Filled cells that are struck out whole."""
     partly_struck: dict[tuple[int, int], str] = field(default_factory=dict)

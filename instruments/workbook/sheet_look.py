@@ -84,6 +84,8 @@ class Looks:
     """Format code by style id, for those that `format_kind` has a kind for."""
     dates: frozenset[bytes] = frozenset()
     """Style ids whose numbers are dates or times."""
+    fills: Mapping[bytes, str] = field(default_factory=dict)
+    """Colour by style id, for those that are filled with one that is not white."""
     texts: Mapping[bytes, Sequence[Run]] = field(default_factory=dict)
     """The runs of shared texts by index: all if a style is struck out, else those with a struck-out run."""
 
@@ -104,6 +106,8 @@ class SheetLook:
     number_formats: dict[tuple[int, int], str] = field(default_factory=dict)
     hidden_rows: set[int] = field(default_factory=set)
     hidden_columns: set[int] = field(default_factory=set)
+    coloured_rows: dict[int, str] = field(default_factory=dict)
+    """Rows most of whose cells are filled with one colour."""
     merged: list[tuple[int, int, int, int]] = field(default_factory=list)
     elsewhere: int = 0
     """Formulas that refer to another workbook."""
@@ -290,6 +294,7 @@ class _Look:
         )
         partly = [index for index, runs in looks.texts.items() if any(struck for _, struck in runs)]
         self._texts = re.compile(rb"<v>(" + one_of(partly) + rb")</v>") if partly else None
+        self._fills = re.compile(rb' s="(' + one_of(looks.fills) + rb')"') if looks.fills else None
         self._numbers, self._highest, self._counts = array("L"), array("L"), array("L")
         self._taken = bytearray(MAX_ROWS + 1)
         self._shapes: dict[bytes, _Shape] = {}
@@ -339,6 +344,10 @@ class _Look:
             if not cells:
                 continue
             filled += len(cells)
+            if self._fills is not None:
+                self._colour(
+                    number, self._fills.findall(text, start.end(), stop), text.count(b"<c ", start.end(), stop)
+                )
             # A5,B5,D5 and A6,B6,D6 have one shape: A,B,D. Few rows of a list have one of their own.
             key = (b",".join(cells) + b",").replace(digits + b",", b",")
             shape = shapes.get(key) or self._shape(key, number, cells)
@@ -348,6 +357,13 @@ class _Look:
             self._counts.append(len(cells))
         if filled != text.count(b"</c>"):
             raise NotPlain
+
+    def _colour(self, number: int, styles: Sequence[bytes], cells: int) -> None:
+        if len(styles) * 2 <= cells:
+            return
+        style, times = Counter(styles).most_common(1)[0]
+        if times * 2 > cells and style in self._looks.fills:
+            self.seen.coloured_rows[number - 1] = self._looks.fills[style]
 
     def _shape(self, key: bytes, row: int, cells: Sequence[bytes]) -> _Shape:
         columns = []

@@ -193,6 +193,7 @@ def _turned(sheet: Sheet, block: _Block, *, first: bool, last: bool) -> Sheet:
             if top <= block.last and bottom >= block.first
         ),
         hidden_rows=sheet.hidden_columns,
+        coloured_rows={},
         hidden_columns=frozenset(line for line in sheet.hidden_rows if within(line)),
         struck={(column, line) for line, column in sheet.struck if within(line)},
         partly_struck={(column, line): text for (line, column), text in sheet.partly_struck.items() if within(line)},

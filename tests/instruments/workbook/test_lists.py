@@ -1,10 +1,12 @@
 from __future__ import annotations
 
 import json
+from dataclasses import replace
 from pathlib import Path
 
 import openpyxl
 import pytest
+from openpyxl.styles import PatternFill
 
 from instruments.workbook.files import read_lists
 from instruments.workbook.lists import Lists, NoTags, records_of_sheets
@@ -248,6 +250,38 @@ def test_what_stands_beside_the_plant_s_data_is_noted_and_what_failed_told() -> 
         (1, "Plant data"), (2, "Field | Value | Remark"), (3, "since 2003"), (5, "Numbering"), (6, "Name"),
         (7, "Checked by A. N."),
     )  # fmt: skip
+
+
+YELLOW = "filled with the colour #FFFF00, which may mean a hold, a change or another's supply, and is not applied"
+
+
+@pytest.mark.parametrize(
+    ("coloured", "remarks"),
+    [
+        ({}, ()),
+        ({2: "#FFFF00"}, (f"1 row {YELLOW}: 3 PT-2",)),
+        ({1: "#FFFF00", 3: "#FFFF00"}, (f"2 rows {YELLOW}: 2 PT-1, 4 PT-3",)),
+        # The headings are no row, and bands mark nothing.
+        ({0: "#FFFF00"}, ()),
+        ({1: "#FFFF00", 3: "#FFFF00", 5: "#FFFF00"}, ()),
+    ],
+)
+def test_rows_filled_with_a_colour_are_told(coloured: dict[int, str], remarks: tuple[str, ...]) -> None:
+    text = "Tag|Service\n" + "\n".join(f"PT-{number}|feed {number}" for number in range(1, 7))
+    (report,) = records_of_sheets([replace(sheet(text), coloured_rows=coloured)], KINDS).sheets
+    assert report.remarks == remarks
+
+
+def test_rows_filled_with_a_colour_in_a_workbook(tmp_path: Path) -> None:
+    book = openpyxl.Workbook()
+    page = book.active
+    for row in [("Tag", "Service"), *((f"PT-{number}", f"feed {number}") for number in range(1, 7))]:
+        page.append(row)
+    for cell in page[4]:
+        cell.fill = PatternFill("solid", fgColor="FFFF00")
+    book.save(tmp_path / "a.xlsx")
+    (report,) = read_lists([tmp_path / "a.xlsx"], KINDS).sheets
+    assert report.remarks == (f"1 row {YELLOW}: 4 PT-3",)
 
 
 FORM = """DATA SHEET|||Rev 1|

@@ -291,6 +291,32 @@ def test_styles_that_show_cells_otherwise(tmp_path: Path) -> None:
         assert read_styles(package, "xl/styles.xml") == (
             frozenset({b"1", b"3"}),
             {b"3": "0000", b"5": 'dd"."mm', b"6": "0%", b"7": "m/d/yy h:mm"},
+            {},
+        )
+
+
+def test_styles_that_are_filled_with_a_colour(tmp_path: Path) -> None:
+    fills = (
+        '<fgColor rgb="FFFFFF00"/>',
+        '<fgColor rgb="FFFFFFFF"/>',
+        '<fgColor theme="0"/>',
+        '<fgColor theme="5" tint="0.39997"/><bgColor rgb="FF00FF00"/>',
+        '<fgColor indexed="13"/>',
+        '<fgColor indexed="64"/>',
+    )
+    solid = "".join(f'<fill><patternFill patternType="solid">{each}</patternFill></fill>' for each in fills)
+    none = '<fill><patternFill patternType="none"><fgColor rgb="FF0000FF"/></patternFill></fill>'
+    made = (
+        '<styleSheet xmlns="http://schemas.openxmlformats.org/spreadsheetml/2006/main">'
+        f"<fills>{none}{solid}</fills><cellXfs>"
+        + "".join(f'<xf fillId="{number}"/>' for number in (0, 1, 2, 3, 4, 5, 6, 7, 1))
+        + "</cellXfs></styleSheet>"
+    )
+    with Package(saved(tmp_path, zipped(ONE | {"xl/styles.xml": made})), file="list.xlsx") as package:
+        assert read_styles(package, "xl/styles.xml") == (
+            frozenset(),
+            {},
+            {b"1": "#FFFF00", b"4": "theme 5 (0.399)", b"5": "colour 13", b"8": "#FFFF00"},
         )
 
 

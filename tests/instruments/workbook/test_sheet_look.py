@@ -412,3 +412,17 @@ def test_rewritten_sheets_look_the_same() -> None:
     with pytest.raises(NotPlain):
         look(cut(prefixed), STRUCK, **TINY)
     assert look(rewritten(cut(prefixed)), STRUCK, **TINY) == usual
+
+
+def test_rows_most_of_whose_cells_are_filled_with_a_colour() -> None:
+    rows = "".join(
+        f'<row r="{number}">'
+        + "".join(
+            f'<c r="{column}{number}" s="{style}"' + (f"><v>{number}</v></c>" if column == "A" else "/>")
+            for column, style in zip("ABCD", styles, strict=True)
+        )
+        + "</row>"
+        for number, styles in enumerate(("0000", "3333", "3330", "3300", "3344", "4444", "3000"), 1)
+    )
+    found = look(cut(worksheet(rows)), Looks(fills={b"3": "#FFFF00", b"4": "theme 5"}), dense=1_000, room=100_000)
+    assert found.coloured_rows == {1: "#FFFF00", 2: "#FFFF00", 5: "theme 5"}
