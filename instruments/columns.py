@@ -469,11 +469,12 @@ def device_columns(owner: str) -> tuple[Column, ...]:
         _number("pi_mw", "Pi mW", "mW", "pi mw", "pi", "pi w", "pmax", owner=owner),
         _number("ci_nf", "Ci nF", "nF", "ci nf", "ci", owner=owner),
         _number("li_uh", "Li uH", "uH", "li uh", "li", "li µh", "li microhenry", "li mh", owner=owner),
-        _number("uo_v", "Uo V", "V", "uo v", "uo", "voc", owner=owner),
-        _number("io_ma", "Io mA", "mA", "io ma", "io", "isc", owner=owner),
-        _number("po_mw", "Po mW", "mW", "po mw", "po", "po w", owner=owner),
+        _number("uo_v", "Uo V", "V", "uo v", "uo", "voc", "u0", "barrier uo", "source uo", "uo max", owner=owner),
+        _number("io_ma", "Io mA", "mA", "io ma", "io", "isc", "i0", "barrier io", "source io", "io max", owner=owner),
+        _number("po_mw", "Po mW", "mW", "po mw", "po", "po w", "p0", "barrier po", "source po", "po max", owner=owner),
         _number(
-            "co_iic_nf", "Co nF IIC", "nF", "co nf iic", "co iic", "co", "co nf", "ca", "co iic nf",
+            "co_iic_nf", "Co nF IIC", "nF", "co nf iic", "co iic", "co", "co nf", "ca", "co iic nf", "c0", "barrier co",
+            "co max",
             *_of_letters("ca", "a,b", "a-d", "a,b,c,d"),
             owner=owner,
         ),
@@ -488,7 +489,8 @@ def device_columns(owner: str) -> tuple[Column, ...]:
             owner=owner,
         ),
         _number(
-            "lo_iic_mh", "Lo mH IIC", "mH", "lo mh iic", "lo iic", "lo mh", "la", "lo iic mh",
+            "lo_iic_mh", "Lo mH IIC", "mH", "lo mh iic", "lo iic", "lo mh", "la", "lo iic mh", "l0", "barrier lo",
+            "lo max",
             *_of_letters("la", "a,b", "a-d", "a,b,c,d"),
             owner=owner,
         ),
@@ -1091,6 +1093,7 @@ INSTRUMENTS = SheetKind(
         _text(
             "barrier", "barrier", "barrier", "barrier tag", "isolator", "barrier type", "is barrier",
             "barrier isolator", "barrier/isolator", "galvanic isolator", "trennverstärker", "barriere", "barrier no",
+            "isolator type", "associated apparatus", "safety barrier", "barrier model", "barrier make / model",
             "barrier code", "ex i isolator", "is isolator", "is interface", "barrier / isolator",
         ),
         _number(

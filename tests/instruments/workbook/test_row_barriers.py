@@ -102,3 +102,16 @@ def test_inductance_and_resistance_of_a_rows_cable() -> None:
     assert circuit.cable_type is not None
     assert circuit.cable_type.ohm_per_km == 12.1
     assert [cell.address for cell in circuit.cable_type.cells("ohm_per_km")] != []
+
+
+@pytest.mark.parametrize(
+    "heading", ["Isolator type", "Associated apparatus", "Safety barrier", "Barrier make / model", "Barrier / isolator"]
+)
+@pytest.mark.parametrize("sign", ["Barrier {}o ({})", "{}0 ({})", "{}o max ({})"])
+def test_headings_of_a_barrier_and_of_what_it_gives(heading: str, sign: str) -> None:
+    row = {name: value for name, value in _ROW.items() if name not in ("barrier", "Uo V", "Io mA", "Po mW")}
+    given = {
+        sign.format(*each): value for each, value in {("U", "V"): 25.2, ("I", "mA"): 93, ("P", "W"): 0.587}.items()
+    }
+    source = example_plant([{**row, heading: "KD-21", **given}]).types["kd-21"]
+    assert (source.uo_v, source.io_ma, source.po_mw) == (25.2, 93, 587)
