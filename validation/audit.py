@@ -103,6 +103,7 @@ def audit(
     wanted = None if codes is None else frozenset(codes)
     chosen = [each for each in registry if wanted is None or each.code in wanted]
     result = Audit(plant=plant)
+    sorted_already: _Sorted = {who: None for who, rules_of_it in Counter(map(_who, chosen)).items() if rules_of_it > 1}
     # Millions of short-lived results and no cycles among them: the collector would only walk the records.
     collecting = gc.isenabled()
     gc.disable()
@@ -110,7 +111,7 @@ def audit(
         for number, each in enumerate(chosen, start=1):
             if on_rule is not None:
                 on_rule(number, len(chosen), each.code)
-            result.coverage[each.code] = _run(each, plant, result, raise_errors)
+            result.coverage[each.code] = _run(each, plant, result, raise_errors, sorted_already)
     finally:
         if collecting:
             gc.enable()
@@ -168,7 +169,7 @@ def reaudit(installed: Installed, plant: Plant, *, rules: Registry | None = None
     return findings
 
 
-def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverage:
+def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool, sorted_already: _Sorted) -> Coverage:
     coverage = Coverage(rule=rule.code)
     outcomes = coverage.outcomes
     blocked: tuple[str, ...] | None = None
@@ -203,30 +204,30 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
         _run_groups(rule, plant, coverage, result, raise_errors, blocked)
         return coverage
     applies, needs, check = rule.applies, rule.needs, rule.check
-    not_applicable = unsaid = 0
+    of_a_sheet = rule.whole is not None and rule.on is Subject.INSTRUMENT
+    unsaid = 0
     lacking: dict[tuple[str, tuple[str, ...]], int] = {}
-    for subject in _subjects(rule, plant):
-        if not rule.not_live_too and not subject.live:
-            not_applicable += 1
-            continue
+    subjects, sorted_out, not_applicable = _applicable(rule, plant, sorted_already)
+    for subject in subjects:
         try:
-            if applies is not None and not applies(subject, plant):
+            if not sorted_out and applies is not None and not applies(subject, plant):
                 not_applicable += 1
                 continue
             if blocked is not None:
                 _unchecked(blocked, subject.name, coverage)
                 continue
-            missing = [title for title, get in needs if get(subject) is None] if needs else None
-            if missing:
-                _unchecked(tuple(missing), subject.name, coverage)
-                continue
+            if needs:
+                missing = tuple([title for title, get in needs if get(subject) is None])
+                if missing:
+                    _unchecked(missing, subject.name, coverage)
+                    continue
             verdict = check(subject, plant)
-            if verdict is not None and rule.whole is not None and rule.on is Subject.INSTRUMENT:
-                verdict = _without_lacking_columns(verdict, subject, plant, lacking)
             if verdict is None:
                 unsaid += 1
-            else:
-                _take(verdict, rule, subject, coverage, result)
+                continue
+            if of_a_sheet:
+                verdict = _without_lacking_columns(verdict, subject, plant, lacking)
+            _take(verdict, rule, subject, coverage, result)
         except Exception as error:
             if raise_errors:
                 raise
@@ -237,6 +238,39 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool) -> Coverag
     for (sheet, names), count in sorted(lacking.items()):
         _report(_sheet_lacks(sheet, names, count), rule, plant.name, plant, coverage, result)
     return coverage
+
+
+_Who = tuple[Subject, bool, Callable[..., bool] | None]
+_Meant = tuple[Sequence[Any], bool, int]
+_Sorted = dict[_Who, _Meant | None]
+
+
+def _applicable(rule: Rule, plant: Plant, sorted_already: _Sorted) -> _Meant:
+    """Return the subjects of a rule, whether those to which it does not apply are out, and how many are.
+
+    Ten rules ask whether an instrument may stand in an area, nine whether a circuit is Ex i: what several ask is
+    kept for the run of one audit.
+    """
+    key = _who(rule)
+    found = sorted_already.get(key)
+    if found is None:
+        every = _subjects(rule, plant)
+        live = every if rule.not_live_too else [each for each in every if each.live]
+        meant, sorted_out, applies = live, True, rule.applies
+        if applies is not None:
+            try:
+                meant = [each for each in live if applies(each, plant)]
+            except Exception:
+                # One by one then: each that raises is reported by its name, for each rule that asks.
+                meant, sorted_out = live, False
+        found = (meant, sorted_out, len(every) - len(meant))
+        if key in sorted_already:
+            sorted_already[key] = found
+    return found
+
+
+def _who(rule: Rule) -> _Who:
+    return rule.on, rule.not_live_too, rule.applies
 
 
 def _without_lacking_columns(
@@ -387,7 +421,7 @@ def _guard(action: Callable[[], Any], rule: Rule, subject: str, result: Audit, r
     return True
 
 
-def _subjects(rule: Rule, plant: Plant) -> Iterable[Any]:
+def _subjects(rule: Rule, plant: Plant) -> Sequence[Any]:
     if rule.on is Subject.INSTRUMENT:
         return plant.instruments
     if rule.on is Subject.CIRCUIT:
