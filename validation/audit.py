@@ -35,9 +35,17 @@ class Coverage:
 
     rule: str
     outcomes: Counter[Outcome] = field(default_factory=Counter)
-    because: Counter[str] = field(default_factory=Counter)
     unchecked: dict[tuple[str, ...], list[str]] = field(default_factory=dict)
     assumed: Counter[str] = field(default_factory=Counter)
+
+    @property
+    def because(self) -> Counter[str]:
+        """How often each blank left a subject unchecked."""
+        because: Counter[str] = Counter()
+        for names, subjects in self.unchecked.items():
+            for name in names:
+                because[name] += len(subjects)
+        return because
 
     def count(self, outcome: Outcome) -> int:
         """Return the number of subjects with that outcome."""
@@ -225,6 +233,9 @@ def _run(rule: Rule, plant: Plant, result: Audit, raise_errors: bool, sorted_alr
             if verdict is None:
                 unsaid += 1
                 continue
+            if isinstance(verdict, NotApplicable) and not verdict.assumed:
+                not_applicable += 1
+                continue
             if of_a_sheet:
                 verdict = _without_lacking_columns(verdict, subject, plant, lacking)
             _take(verdict, rule, subject, coverage, result)
@@ -381,7 +392,6 @@ def _run_groups(
             say(kept, _report(rule.check(kept, plant), rule, named, kept[0], coverage, result))
 
         if not _guard(run, rule, named, result, raise_errors):
-            coverage.because.update(_BROKEN)
             coverage.unchecked.setdefault(_BROKEN, []).append(named)
             say(kept, Outcome.UNCHECKED)
     alone = Outcome.CLEAR if rule.alone_is_clear else Outcome.NOT_APPLICABLE
@@ -446,16 +456,13 @@ def _name(subject: Any) -> str:
 def _report(verdict: Verdict, rule: Rule, name: str, subject: Any, coverage: Coverage, result: Audit) -> Outcome:
     if verdict is None:
         return Outcome.CLEAR
-    if isinstance(verdict, Clear):
-        coverage.assumed.update(verdict.assumed)
-        return Outcome.CLEAR
-    if isinstance(verdict, NotApplicable):
-        coverage.assumed.update(verdict.assumed)
-        return Outcome.NOT_APPLICABLE
     if isinstance(verdict, Unchecked):
-        coverage.because.update(verdict.fields)
         coverage.unchecked.setdefault(verdict.fields, []).append(name)
         return Outcome.UNCHECKED
+    if isinstance(verdict, Clear | NotApplicable):
+        if verdict.assumed:
+            coverage.assumed.update(verdict.assumed)
+        return Outcome.CLEAR if isinstance(verdict, Clear) else Outcome.NOT_APPLICABLE
     outcome = Outcome.CLEAR
     for each in _each(verdict):
         finding = _finding(each, rule, name, subject)
@@ -475,7 +482,6 @@ def _each(verdict: Verdict) -> Iterator[Found]:
 
 def _unchecked(fields: tuple[str, ...], name: str, coverage: Coverage) -> None:
     coverage.outcomes[Outcome.UNCHECKED] += 1
-    coverage.because.update(fields)
     coverage.unchecked.setdefault(fields, []).append(name)
 
 
