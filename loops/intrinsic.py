@@ -943,7 +943,7 @@ def came_from(installed: Installed, names: Iterable[str]) -> str:
 def source_for(source: ExSource, group: Group | None) -> Source:
     """Return a source's figures in a group: its own Co and Lo, else those of a more demanding group."""
     entry = source.entry
-    co, lo = _of_groups(entry, "co", "nf"), _of_groups(entry, "lo", "mh")
+    co, lo = _of_groups(entry, "co"), _of_groups(entry, "lo")
     taken = MORE_DEMANDING[group] if group is not None else ()
     both = next((each for each in taken if co.get(each) is not None and lo.get(each) is not None), None)
     of_co = both or next((each for each in taken if co.get(each) is not None), None)
@@ -967,14 +967,21 @@ def source_for(source: ExSource, group: Group | None) -> Source:
     )
 
 
-def _of_groups(entry: DeviceType, symbol: str, unit: str) -> dict[Group, float | None]:
-    return {group: getattr(entry, f"{symbol}_{group.casefold()}_{unit}") for group in reversed(_ORDER)}
+_FIELDS_OF_GROUPS: Final[Mapping[str, tuple[tuple[Group, str], ...]]] = MappingProxyType(
+    {
+        symbol: tuple((group, f"{symbol}_{group.casefold()}_{unit}") for group in reversed(_ORDER))
+        for symbol, unit in (("co", "nf"), ("lo", "mh"))
+    }
+)
+
+
+def _of_groups(entry: DeviceType, symbol: Literal["co", "lo"]) -> dict[Group, float | None]:
+    return {group: getattr(entry, name) for group, name in _FIELDS_OF_GROUPS[symbol]}
 
 
 def groups_stated(entry: DeviceType, symbol: Literal["co", "lo"]) -> tuple[Group, ...]:
     """Return the groups for which an entry states Co or Lo, the most demanding first."""
-    stated = _of_groups(entry, symbol, "nf" if symbol == "co" else "mh")
-    return tuple(group for group, value in stated.items() if value is not None)
+    return tuple([group for group, name in _FIELDS_OF_GROUPS[symbol] if getattr(entry, name) is not None])
 
 
 # -------------------------------------------------------------------------------------------------------- the cable

@@ -18,7 +18,7 @@ HEADINGS = (
 )  # fmt: skip
 PRESSURES = ("Op Press Min", "Op Press Norm", "Op Press Max", "Design Press")
 TEMPERATURES = ("Op Temp Norm", "Op Temp Max")
-MARKING = "II 2 G Ex ia IIC T4 Ga -40°C ≤ Ta ≤ +70°C"
+MARKING = "II 1 G Ex ia IIC T4 Ga -40°C ≤ Ta ≤ +70°C"
 
 TYPES = (
     ("Code", "Kind", "Body", "LRL", "URL", "Limit Unit", "Minimum Span", "Over-range limit", "Static pressure limit",

@@ -6,6 +6,7 @@ Ferrule accepts nothing: screening aid - requires review by a competent person.
 from __future__ import annotations
 
 from collections.abc import Iterable
+from operator import attrgetter
 from typing import Final, Literal
 
 from instruments.origin import Cell
@@ -403,6 +404,7 @@ def too_much_inductance(circuit: Circuit, plant: Plant) -> Verdict:
 # --------------------------------------------------------------------------------------------- what is not stated
 
 _OUT: Final = ("uo_v", "io_ma", "po_mw")
+_ALL_LIMITS: Final = attrgetter(*DEVICE_LIMITS)
 
 
 @rule(
@@ -442,6 +444,8 @@ def parameters_in_part(circuit: Circuit, plant: Plant) -> Verdict:
         if item.how in ("unknown", "unmarked", "pending"):
             blank[item.missing] = None
         if item.how not in ("intrinsically safe", "several"):
+            continue
+        if item.installed.type is not None and None not in _ALL_LIMITS(item.installed.type):
             continue
         device = apparatus_of(item)
         missing = [name for name in DEVICE_LIMITS if getattr(device, name) is None]

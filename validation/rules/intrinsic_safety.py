@@ -210,14 +210,10 @@ def level_too_low(circuit: Circuit, plant: Plant) -> Verdict:
     of = intrinsic(circuit, plant)
     if of.concerns is None:
         return Unchecked("area")
-    parts: list[tuple[Level | None, str, tuple[Cell, ...]]] = [
-        (source.level, source.name, source.entry.cells("ex_marking")) for source in of.sources
+    parts: list[tuple[Level | None, str, ExSource | Item]] = [
+        (source.level, source.name, source) for source in of.sources
     ]
-    parts += [
-        (item.level, item.name, _protection_cells(item))
-        for item in of.items
-        if item.how in ("intrinsically safe", "several")
-    ]
+    parts += [(item.level, item.name, item) for item in of.items if item.how in ("intrinsically safe", "several")]
     places = [(item, needed_level(item)) for item in of.items if item.classified]
     needs = [(item, needed) for item, needed in places if needed is not None]
     lowest = max((part for part in parts if part[0] is not None), key=_rank, default=None)
@@ -237,7 +233,7 @@ def level_too_low(circuit: Circuit, plant: Plant) -> Verdict:
                 wanted=f"i{level}",
                 working=", ".join(f"{name} {f'i{found}' if found else 'not marked'}" for found, name, _ in parts),
                 fixes=source_fixes(circuit, plant) if any(lowest[1] == each.name for each in of.sources) else (),
-                cells=(*lowest[2], *item.installed.cells("area"), *barrier_cells(circuit)),
+                cells=(*_level_cells(lowest[2]), *item.installed.cells("area"), *barrier_cells(circuit)),
             )
     missing = [] if of.sources else [of.source_missing or "barrier"]
     missing += ["Ex marking"] if any(found is None for found, _, _ in parts) else []
@@ -249,8 +245,12 @@ def level_too_low(circuit: Circuit, plant: Plant) -> Verdict:
     return Unchecked(*dict.fromkeys(missing)) if missing else None
 
 
-def _rank(part: tuple[Level | None, str, tuple[Cell, ...]]) -> int:
+def _rank(part: tuple[Level | None, str, ExSource | Item]) -> int:
     return LEVELS.index(part[0]) if part[0] is not None else -1
+
+
+def _level_cells(part: ExSource | Item) -> tuple[Cell, ...]:
+    return _protection_cells(part) if isinstance(part, Item) else part.entry.cells("ex_marking")
 
 
 def _dust(of: Intrinsic) -> bool:

@@ -11,7 +11,7 @@ from instruments.kind import Kind, touches_process
 from instruments.measurement import Measurement, amount, at, in_unit, variable_of
 from instruments.pressure import stated_reference
 from instruments.quantity import Quantity, format_number
-from instruments.record import DeviceType, Instrument
+from instruments.record import DeviceType
 from instruments.span import above, below
 from instruments.unit import Unit
 from loops.plant import Plant
@@ -127,31 +127,32 @@ def designed_below_operation(installed: Installed, plant: Plant) -> Verdict:
     >>> said("PRO01", [{**row, "design pressure": "12 barg"}])
     []
     """
+    record = installed.record
     measures = _measures_of_the_process(installed)
-    if not measures and _is_well_above(installed.record):
-        return None
-    measurement = measured(installed, plant)
     found: list[Found] = []
     blank: list[str] = []
     for part, design, names in (
-        ("pressure", installed.record.design_pressure, _OPERATING_PRESSURE),
-        ("temperature", installed.record.design_temperature, _OPERATING_TEMPERATURE),
+        ("pressure", record.design_pressure, _OPERATING_PRESSURE),
+        ("temperature", record.design_temperature, _OPERATING_TEMPERATURE),
     ):
-        given = _given(installed, names)
-        maximum = getattr(installed.record, names[0])
+        maximum = getattr(record, names[0])
+        own: list[_Named] = []
         if measures == part:
             # What a PT or TT measures is the pressure or temperature of its line.
             own = [each for each in _given(installed, _OPERATING_VALUE) if _is_of(part, each.value)]
-            given += own
             maximum = maximum or next((each.value for each in own if each.name == _OPERATING_VALUE[0]), None)
-        operating = _extreme(given, highest=True)
+        elif _is_well_above(design, maximum, getattr(record, names[1]), getattr(record, names[2])):
+            continue
         if design is None or design.unit is None:
             blank.append(f"design {part}")
         if maximum is None or maximum.unit is None:
             blank.append(f"operating {part} max")
-        if design is None or design.unit is None or operating is None:
+        if design is None or design.unit is None:
             continue
-        found.extend(each_found(_designed_below(part, design, operating, measurement, plant)))
+        operating = _extreme([*_given(installed, names), *own], highest=True)
+        if operating is not None:
+            measurement = measured(installed, plant)
+            found.extend(each_found(_designed_below(part, design, operating, measurement, plant)))
     if found:
         return found
     return Unchecked(*blank) if blank else None
@@ -175,25 +176,13 @@ def _measures_of_the_process(installed: Installed) -> str:
     return "pressure" if letters[0] == "P" else "temperature"
 
 
-def _is_well_above(record: Instrument) -> bool:
-    """Whether both design values and both maxima are given, and stand right beyond doubt."""
-    for design, operating in (
-        (record.design_pressure, record.operating_pressure_max),
-        (record.design_temperature, record.operating_temperature_max),
-    ):
-        if design is None or operating is None or design.base is None or operating.base is None:
+def _is_well_above(design: Quantity | None, maximum: Quantity | None, *others: Quantity | None) -> bool:
+    """Whether the design value and the operating maximum are given, and stand right beyond doubt, as do the others."""
+    if design is None or maximum is None or design.base is None:
+        return False
+    for each in (maximum, *others):
+        if each is not None and (each.base is None or each.reference != design.reference or each.base > design.base):
             return False
-        if design.reference != operating.reference or design.base < operating.base:
-            return False
-    for design, normal in (
-        (record.design_pressure, record.operating_pressure_normal),
-        (record.design_temperature, record.operating_temperature_normal),
-    ):
-        if normal is not None and design is not None:
-            if normal.base is None or design.base is None or normal.reference != design.reference:
-                return False
-            if normal.base > design.base:
-                return False
     return True
 
 
