@@ -122,9 +122,9 @@ class Heard:
     missing: tuple[str, ...] = ()
     cells: tuple[Cell, ...] = ()
 
-    def working(self, circuit: Circuit, least_ohm: float) -> str:
+    def heard_in_words(self, circuit: Circuit, least_ohm: float) -> str:
         """Write the sum with its figures."""
-        parts = [self.receivers.words(circuit)] if self.receivers.range_resistor is not None else []
+        parts = [self.receivers.receivers_in_words(circuit)] if self.receivers.range_resistor is not None else []
         if self.in_card is not None:
             parts.append(self.in_card.as_ohm(NOMINAL_MA))
         return (

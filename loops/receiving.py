@@ -65,8 +65,12 @@ class Receivers:
             return None
         return parallel_ohm(self.range_resistor.number, *(each.number for each in self.across))
 
-    def words(self, circuit: Circuit) -> str:
-        """Write them with where they stand."""
+    def receivers_in_words(self, circuit: Circuit) -> str:
+        """Write them with where they stand.
+
+        Named like nothing else: called `words`, it made 52 rules that ask any record for its words or its working
+        read the supply in the eyes of `validation.reads`, and a what-if about supplies asked them all again.
+        """
         if self.range_resistor is None:
             return ""
         found = f"range resistor {shown(self.range_resistor.number)} ohm ({given_by(self.range_resistor, circuit)})"

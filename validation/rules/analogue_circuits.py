@@ -425,7 +425,8 @@ def receivers_across(circuit: Circuit, plant: Plant) -> Verdict:
         wanted=f"within {format_number(limit)} % of span",
         off_by=f"{volts_text(abs(shift) - limit, abs(shift) - limit)[:-2]} % of span",
         working=(
-            f"{found.words(circuit)} = {shown(together)} ohm; ({shown(together)} ohm - {_plain(resistor.number)} ohm)"
+            f"{found.receivers_in_words(circuit)} = {shown(together)} ohm;"
+            f" ({shown(together)} ohm - {_plain(resistor.number)} ohm)"
             f" / {_plain(resistor.number)} ohm x 20 mA / 16 mA = {shown_shift} of span"
         ),
         fixes=(Fix(text=f"inputs of at least {_least_input_ohm(resistor.number, limit)} ohm together"),),

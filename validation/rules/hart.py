@@ -140,7 +140,9 @@ def _too_little(circuit: Circuit, heard: Heard, least: float, plant: Plant, kind
         found=f"{shown(ohm)} ohm",
         wanted=f"at least {format_number(least)} ohm",
         off_by=f"{shown(least - ohm)} ohm",
-        working=heard.working(circuit, least) if kind is Found else f"{shown(ohm)} ohm, {format_number(least)} needed",
+        working=heard.heard_in_words(circuit, least)
+        if kind is Found
+        else f"{shown(ohm)} ohm, {format_number(least)} needed",
         assumed=figures,
         fixes=_resistor_fixes(circuit, heard, ohm, least, plant),
         cells=heard.cells,
