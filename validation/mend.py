@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import dataclasses
 from collections import defaultdict
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Hashable, Iterable, Mapping
 from dataclasses import replace
-from functools import lru_cache
+from functools import cache, lru_cache
 from types import MappingProxyType
-from typing import Any
+from typing import Any, cast
 
 from instruments.column import Column, Reads, SheetKind
 from instruments.columns import SHEETS as INSTRUMENT_SHEETS
@@ -64,10 +64,15 @@ def mended(plant: Plant, finding: Finding, fix: Fix) -> Lists:
     )
 
 
-def fields_of(kind: SheetKind, titles: Iterable[str]) -> list[str]:
+def fields_of(kind: SheetKind, titles: Iterable[str]) -> tuple[str, ...]:
     """Return the fields of a sheet's columns, by their titles."""
+    return _fields_of(kind.name, tuple(titles))
+
+
+@lru_cache(maxsize=4096)
+def _fields_of(name: str, titles: tuple[str, ...]) -> tuple[str, ...]:
     wanted = {title.casefold() for title in titles}
-    return [column.field for column in kind.columns if column.title.casefold() in wanted]
+    return tuple(column.field for column in SHEET_KINDS[name].columns if column.title.casefold() in wanted)
 
 
 def rows_meant(plant: Plant, subject: str, rows: Iterable[Any], sheet: str) -> frozenset[int]:
@@ -120,7 +125,7 @@ def changed_row(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Reco
             values[column.field] = value
     if own and isinstance(row, Instrument):
         values["own"] = replace(row.own or DeviceType(origin=row.origin), **own)
-    known = {field.name for field in dataclasses.fields(row)}
+    known = _names_of(cast(Hashable, type(row)))
     values = {field: value for field, value in values.items() if field in known}
     filled = values.keys() | own.keys()
     return replace(
@@ -129,6 +134,11 @@ def changed_row(row: Record, kind: SheetKind, change: Mapping[str, str]) -> Reco
         unread=row.unread - filled,
         unitless=MappingProxyType({field: text for field, text in row.unitless.items() if field not in filled}),
     )
+
+
+@cache
+def _names_of(kind: Hashable) -> frozenset[str]:
+    return frozenset(field.name for field in dataclasses.fields(kind))  # type: ignore[arg-type]
 
 
 @lru_cache(maxsize=4096)

@@ -4,9 +4,10 @@ from __future__ import annotations
 
 import dataclasses
 import tomllib
-from collections.abc import Hashable, Iterable, Iterator, Mapping, Sequence
+from collections.abc import Callable, Hashable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from functools import cache
+from operator import attrgetter
 from types import MappingProxyType
 from typing import Any, Final, cast
 
@@ -554,17 +555,19 @@ _NESTED: Final = (Instrument, DeviceType, Area, LoopRow, CableType)
 
 
 @cache
-def _names_of(kind: Hashable) -> tuple[str, ...]:
+def _names_of(kind: Hashable) -> tuple[tuple[str, ...], Callable[[Any], tuple[Any, ...]]]:
+    """Return the names of a record's fields, and what gives all their values at once."""
     own = dataclasses.fields(kind)  # type: ignore[arg-type]
-    return tuple(each.name for each in own if each.name not in _ELSEWHERE)
+    names = tuple(each.name for each in own if each.name not in _ELSEWHERE)
+    return names, attrgetter(*names)
 
 
 def _between(one: Any, other: Any, differing: Any) -> Iterator[str]:
     """Give the names in which two records differ, and those of the records in them."""
     if type(one) is not type(other):
         raise _MoreThanValues
-    for name in _names_of(cast(Hashable, type(one))):
-        old, new = getattr(one, name), getattr(other, name)
+    names, values = _names_of(cast(Hashable, type(one)))
+    for name, old, new in zip(names, values(one), values(other), strict=True):
         if old is new:
             continue
         if isinstance(old, _NESTED) and type(old) is type(new):
@@ -585,6 +588,5 @@ def _between(one: Any, other: Any, differing: Any) -> Iterator[str]:
 
 
 def _filled(record: Record) -> Iterator[str]:
-    yield from (
-        name for name in _names_of(cast(Hashable, type(record))) if getattr(record, name) is not None and name in FIELDS
-    )
+    names, values = _names_of(cast(Hashable, type(record)))
+    yield from (name for name, value in zip(names, values(record), strict=True) if value is not None and name in FIELDS)
