@@ -45,7 +45,7 @@ NO_SUBJECT = {
 EDGES = {
     "django": r"config\..+|\w+\.management\..+",
     "openpyxl": r"instruments\.workbook\..+|validation\.report(\..+)?|config\..+|\w+\.management\..+",
-    "python_calamine": r"instruments\.workbook\..+|config\..+|\w+\.management\..+",
+    "python_calamine": r"instruments\.workbook\..+|validation\.report\.annotated|config\..+|\w+\.management\..+",
     "reportlab": r"loops\.sheet\..+|config\..+|\w+\.management\..+",
 }
 

@@ -34,8 +34,10 @@ def circuit(tag: Row, kind: Row | None = None, card: Row | None = None, barrier:
         ({"wires": 2}, {}, {"compliance V": 15}, ["PT-1 sink", "card C ? source or sink"]),
         ({"kind": "positioner", "I/O type": "AO"}, {}, {"compliance V": 15}, ["PT-1 sink", "card C source"]),
         ({"kind": "positioner", "I/O type": "AO"}, {}, {"maximum load ohm": 750}, ["PT-1 sink", "card C source"]),
+        # A transmitter on an output, which another rule finds, is asked as a transmitter.
+        ({"I/O type": "AO"}, {}, {"compliance V": 15}, ["PT-1 ? wires", "card C ? source or sink"]),
         # Something else on an output, such as a drive, may be active.
-        ({"I/O type": "AO"}, {}, {"compliance V": 15}, ["PT-1 ? source or sink", "card C source"]),
+        ({"I/O type": "AO"}, {"kind": "lamp"}, {"compliance V": 15}, ["PT-1 ? source or sink", "card C source"]),
         ({"wires": 2, "card": "LOST"}, {}, {}, ["PT-1 sink", "card LOST ? card"]),
         ({"wires": 2, "card": ""}, {}, {}, ["PT-1 sink", "the card ? card"]),
     ],

@@ -44,7 +44,8 @@ NO_RANGE = {"LRV": "", "URV": "", "range unit": ""}
         ({"tag": "LT-1", **NO_RANGE, "I/O type": "DI"}, "range, range unit"),
         ({"tag": "FFT-1", "range unit": ""}, ""),
         # A kind that the letters give counts as filled, and so does a word that is not understood.
-        ({"tag": "PUMP 7", **NO_RANGE, "P&ID": ""}, "kind"),
+        ({"tag": "PUMP 7", **NO_RANGE, "P&ID": ""}, ""),  # equipment, by its word and its I/O
+        ({"tag": "UNIT 7", **NO_RANGE, "P&ID": ""}, "kind"),
         ({"tag": "PUMP 7", **NO_RANGE, "P&ID": "", "kind": "gizmo"}, ""),
         # What another rule finds: no tag, no unit, a cell that cannot be read.
         ({"tag": ""}, ""),
