@@ -599,7 +599,18 @@ def _blank_barrier(circuit: Circuit, plant: Plant) -> str:
 
 
 def _names_barriers(plant: Plant) -> bool:
-    return any(circuit.barrier_named for circuit in plant.circuits)
+    """Whether a circuit names a barrier; of a part of a plant, also whether one does that the part leaves out."""
+    if any(circuit.barrier_named for circuit in plant.circuits):
+        return True
+    whole = plant.whole
+    if whole is plant:
+        return False
+    naming: frozenset[str] = whole.once("circuits that name a barrier", _naming_barriers)
+    return not naming <= {circuit.name for circuit in plant.circuits}
+
+
+def _naming_barriers(plant: Plant) -> frozenset[str]:
+    return frozenset(circuit.name for circuit in plant.circuits if circuit.barrier_named)
 
 
 def _gives_power(item: Item, items: tuple[Item, ...]) -> bool:

@@ -143,6 +143,7 @@ class Plant:
     _by_loop: dict[str, Loop] = field(default_factory=dict)
     _circuits_of: dict[int, tuple[Circuit, ...]] = field(default_factory=dict)
     _whole: dict[str, Any] = field(default_factory=dict)
+    _part_of: Plant | None = field(default=None, repr=False)
     _columns: frozenset[str] = frozenset()
     _notes: dict[str, Any] = field(default_factory=dict)
 
@@ -235,6 +236,12 @@ class Plant:
     def stand_in(self, whole: Plant) -> None:
         """Take what is wrong with whole columns from the whole plant that this one is a part of."""
         self._whole = dict(whole._whole)
+        self._part_of = whole.whole
+
+    @property
+    def whole(self) -> Plant:
+        """The whole plant that this one is a part of, as it stood when it was cut; itself where it is no part."""
+        return self if self._part_of is None else self._part_of
 
     def once(self, name: str, make: Callable[[Plant], Any]) -> Any:
         """Return what `make` gives for this plant, made once: lookups that only some rules need."""
@@ -430,6 +437,7 @@ def with_values(plant: Plant, lists: Lists) -> Plant | None:
         _by_tag={key: tuple(new.get(id(each), each) for each in found) for key, found in plant._by_tag.items()},
         _asked={},
         _whole={},
+        _part_of=None,
         _notes={},
     )
     only_areas = moved.keys() == {"Areas"} and all(

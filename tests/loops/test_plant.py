@@ -248,6 +248,13 @@ def test_a_part_takes_what_is_wrong_with_whole_columns_from_the_whole() -> None:
     assert part.whole_finding("TAG91", lambda plant: "asked") == "asked"
 
 
+def test_a_part_and_a_part_of_it_know_the_whole() -> None:
+    whole, part, smaller = (example_plant([{"tag": "PT-1", "service": "x"}]) for _ in range(3))
+    part.stand_in(whole)
+    smaller.stand_in(part)
+    assert [each.whole is whole for each in (whole, part, smaller)] == [True, True, True]
+
+
 @pytest.mark.parametrize("order", [(0, 1, 2, 3), (3, 2, 1, 0), (1, 3, 0, 2)])
 def test_an_area_of_the_rows_own_cells_is_spelt_as_most_have_it_in_any_order(order: tuple[int, ...]) -> None:
     spelt = ("zone 1 iib t3", "Zone 1 IIB T3", "Zone 1  IIB T3", "Zone 1 IIB T3")

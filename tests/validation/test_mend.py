@@ -1,5 +1,6 @@
 """Fixes applied: the lists as they would be, what would then be found, and what a fix says of itself beforehand."""
 
+from dataclasses import replace
 from typing import Any
 
 import pytest
@@ -132,6 +133,45 @@ def test_a_fix_says_what_it_would_make() -> None:
     with_consequences(result)
     (finding,) = [each for each in result.findings if each.rule == "SET07"]
     assert [(fix.text, fix.makes) for fix in finding.fixes] == [("HH 6 m at the most", ("SET01",))]
+
+
+@pytest.mark.parametrize(
+    ("barrier", "other", "expected"),
+    [
+        # A circuit far away names a barrier, so that a blank says that there is none.
+        ("", "ZB", ("ISC01",)),
+        # No circuit names one: the lists don't say which circuits have one.
+        ("", "", ()),
+        ("ZB", "", ()),
+    ],
+)
+def test_whether_a_blank_barrier_says_that_there_is_none_the_whole_plant_tells(
+    barrier: str, other: str, expected: tuple[str, ...]
+) -> None:
+    types: list[Row] = [
+        {"code": "EX", "kind": "transmitter", "body": "gauge", "LRL": "-1 barg", "URL": "100 barg",
+         "Ex marking": "Ex ia IIC T4 Ga"},
+        {"code": "SMALL", "kind": "transmitter", "body": "gauge", "LRL": "-1 barg", "URL": "10 barg",
+         "Ex marking": "Ex db IIC T4 Gb"},
+        {"code": "AI8", "kind": "card"},
+        {"code": "ZB", "kind": "barrier", "Ex marking": "[Ex ia Ga] IIC"},
+    ]  # fmt: skip
+    common: Row = {"area classification": "Zone 1 IIC T4", "card": "AI8", "I/O type": "AI", "signal": "4-20 mA"}
+    rows = [
+        {**common, "tag": "PT-101", "device type": "SMALL", "LRV": "0 barg", "URV": "20 barg", "barrier": barrier},
+        {**common, "tag": "PT-909", "device type": "EX", "LRV": "0 barg", "URV": "20 barg", "barrier": other},
+    ]
+    result, found = finding_of("RNG02", rows, types=types)
+    fix = Fix(text="x", change={"device type": "EX"})
+    result.findings = [replace(found, fixes=(fix,))] + [each for each in result.findings if each is not found]
+    before = {each.identity for each in result.findings}
+    after = found_after(result.plant, found, fix)
+    with_consequences(result)
+    (made,) = (fix.makes for fix in result.findings[0].fixes)
+    assert tuple(code for code in made if code == "ISC01") == expected
+    assert made == tuple(
+        sorted({each.rule for each in after if each.outcome is Outcome.FINDING and each.identity not in before})
+    )
 
 
 def test_a_fix_that_is_no_value_makes_nothing() -> None:
