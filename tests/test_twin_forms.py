@@ -466,8 +466,8 @@ def test_an_area_in_words_on_each_row_gives_what_the_list_of_areas_gives_but_for
         "HAZ08 JB-201",
         "HAZ08 MOV-3044",
         "PRO06 AIT-1010 (minimum)",
-        # Whose rules hold.
-        "HAZ09 LIT-5010",
+        # The gases by name.
+        "HAZ17 10A (hydrogen sulfide)",
         # The areas' codes.
         "HAZ20 30B",
         "HAZ20 40D",
