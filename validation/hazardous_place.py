@@ -290,6 +290,19 @@ def type_is_lost(installed: Installed, plant: Plant) -> bool:
     return installed.listed_type is None or name_key(record.device_type) in plant.types_twice
 
 
+def has_marking_column(plant: Plant) -> bool:
+    """Whether any sheet has a column in which an instrument's marking or protection could stand."""
+    # Kept as what is wrong with a whole column is: a part of the plant may lack the types that have one.
+    return bool(plant.whole_finding("a column for the Ex marking", _has_marking_column))
+
+
+def _has_marking_column(plant: Plant) -> bool:
+    return plant.has_column("ex_marking", "protection") or any(
+        each.ex_marking is not None or (each.origin is not None and "ex_marking" in each.origin.place.columns)
+        for each in plant.types.values()
+    )
+
+
 def _rows_hold_markings(plant: Plant) -> bool:
     return any(each.record.ex_marking for each in plant.instruments)
 

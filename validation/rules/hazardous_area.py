@@ -21,6 +21,7 @@ from validation.hazardous_place import (
     described,
     first_cell,
     has_its_systems_group,
+    has_marking_column,
     is_marked_in_area,
     judge,
     kind_is_known,
@@ -145,11 +146,8 @@ def _area_is_classified(area: Area, installed: Installed, plant: Plant) -> Verdi
 
 
 def _no_marking_column(plant: Plant) -> Verdict:
-    if plant.has_column("ex_marking", "protection"):
+    if has_marking_column(plant):
         return None
-    for each in plant.types.values():
-        if each.ex_marking is not None or (each.origin is not None and "ex_marking" in each.origin.place.columns):
-            return None
     count = sum(1 for each in plant.live if _lacks_a_marking(each, plant))
     if count < 2:
         return None

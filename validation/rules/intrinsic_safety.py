@@ -24,6 +24,7 @@ from loops.intrinsic import ExSource, Intrinsic, Item, Level, classified_areas, 
 from loops.plant import Plant
 from loops.wiring import has_io
 from validation.finding import Clear, Found, Review, Severity, Unchecked, Verdict
+from validation.hazardous_place import has_marking_column
 from validation.rule import Subject, rule
 from validation.rules.entity_parameters import barrier_cells, is_ex_i
 from validation.source_mending import source_fixes
@@ -74,7 +75,7 @@ def no_source_or_broken(circuit: Circuit, plant: Plant) -> Verdict:
     missing: dict[str, None] = {}
     if of.is_ex_i:
         for item in of.items:
-            broken = _breaks(item, of, circuit)
+            broken = _breaks(item, of, circuit, plant)
             if broken is not None:
                 found.append(broken)
             elif item.how in ("unknown", "pending", "unmarked"):
@@ -90,11 +91,13 @@ def no_source_or_broken(circuit: Circuit, plant: Plant) -> Verdict:
     return Unchecked(*missing) if missing else None
 
 
-def _breaks(item: Item, of: Intrinsic, circuit: Circuit) -> Found | Review | None:
+def _breaks(item: Item, of: Intrinsic, circuit: Circuit, plant: Plant) -> Found | Review | None:
     """Return that an item is neither Ex i nor simple apparatus; None where it is, or nothing tells."""
     if item.how not in ("other", "unmarked"):
         return None
     if item.how == "unmarked" and item.blank:
+        if not has_marking_column(plant):
+            return None  # found once, on the whole list
         # Its blank marking is found by its own rule: here it counts where it undoes what others rely on.
         others = any(each is not item and each.how in ("intrinsically safe", "several", "simple") for each in of.items)
         if item.classified and not others:

@@ -6,6 +6,7 @@ import pytest
 
 from loops.plant import Plant, assemble
 from tests.validation.rules.test_entity_parameters import (
+    CABLES,
     DEVICE,
     ISOLATOR,
     SOURCE,
@@ -16,6 +17,7 @@ from tests.validation.rules.test_entity_parameters import (
     told,
 )
 from validation.audit import audit
+from validation.example import example_plant
 from validation.finding import Outcome
 from validation.mend import mended
 from validation.rules.intrinsic_safety import t4_power_mw
@@ -181,6 +183,31 @@ def test_a_nonincendive_item_on_an_ex_i_circuit_is_for_a_person() -> None:
 def test_a_list_that_names_no_barriers_is_not_found_row_by_row() -> None:
     plant = plant_of({"barrier": ""}, rows=[{**OTHER, "barrier": ""}])
     assert told("ISC01", plant) == "unchecked: barrier"
+
+
+UNMARKED = (
+    "finding: TT-101 is not marked Ex i, neither Ex i nor simple apparatus, on an Ex i circuit: ZB is an Ex i source"
+)
+
+
+@pytest.mark.parametrize(
+    ("row", "more", "wanted"),
+    [
+        ({}, {}, "unchecked: Ex marking"),
+        # A column on one sheet is enough, though it be blank.
+        ({"Ex marking": ""}, {}, UNMARKED),
+        ({"protection": ""}, {}, UNMARKED),
+        ({}, {"Ex marking": ""}, UNMARKED),
+        ({}, {"Ex marking": "Ex ia IIC T4 Ga"}, UNMARKED),
+    ],
+)
+def test_a_list_without_a_column_for_markings_is_not_found_row_by_row(row: Row, more: Row, wanted: str) -> None:
+    element = {"tag": "TE-101", "kind": "element", "signal": "Pt100", "simple apparatus": "yes",
+               "area classification": "Zone 1 IIC T4"}  # fmt: skip
+    types = [{name: text for name, text in each.items() if name != "Ex marking"} for each in (DEVICE, SOURCE)]
+    rows = [{**TAG, "tag": "TT-101"}, element, {**OTHER, **row}]
+    plant = example_plant(rows, types=[*types, {**CARD, **more}], cable_types=CABLES)
+    assert said_of_pt_101("ISC01", plant) == wanted
 
 
 def test_the_sources_that_would_do_are_named_and_clear_the_finding() -> None:
