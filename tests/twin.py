@@ -130,6 +130,8 @@ class Said:
 def said_of(result: Audit, code: str, subject: str) -> Said:
     """Return what a rule said of one subject in an audit; of an instrument where the rule is about groups."""
     rule, plant = load_rules()[code], result.plant
+    if rule.on is Subject.CIRCUIT:
+        subject = _circuit_now(subject, plant)
     found = {
         each.outcome
         for each in result.findings
@@ -145,6 +147,15 @@ def said_of(result: Audit, code: str, subject: str) -> Said:
             if name == subject or (rule.on is Subject.GROUP and subject in name.split(", ")):
                 return Said(outcome=Outcome.UNCHECKED, because=fields)
     return Said(outcome=_quiet(rule, subject, plant))
+
+
+def _circuit_now(name: str, plant: Plant) -> str:
+    """Return what a circuit is called: by its loop and tag, and by its loop alone once the others are gone."""
+    number, _, tag = name.rpartition(" ")
+    if any(each.name == name for each in plant.circuits):
+        return name
+    alone = [each for each in plant.circuits if each.name == number and each.device.name == tag]
+    return number if alone else name
 
 
 def _quiet(rule: Rule, subject: str, plant: Plant) -> Outcome:
