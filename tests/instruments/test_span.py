@@ -1,4 +1,6 @@
-XX"""Span, turndown, limits, zero shift, preferred ranges and unit slips."""
+"""Span, turndown, limits, zero shift, preferred ranges and unit slips."""
+
+from decimal import Decimal
 
 import pytest
 from hypothesis import assume, given
