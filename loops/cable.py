@@ -179,9 +179,20 @@ def longest_m(holds: Callable[[int], bool]) -> int | None:
     >>> longest_m(lambda metres: loop_resistance_ohm(metres, 12.1, conductor_c=20.0) <= 50.0)
     2066
     """
+    return largest_whole(LONGEST_CABLE_M, holds)
+
+
+def largest_whole(most: int, holds: Callable[[int], bool]) -> int | None:
+    """Largest whole number from 0 to `most` at which a condition still holds that only ever turns false.
+
+    None where it does not hold at 0.
+
+    >>> largest_whole(100, lambda number: number < 7), largest_whole(100, lambda number: False)
+    (6, None)
+    """
     if not holds(0):
         return None
-    low, high = 0, LONGEST_CABLE_M + 1
+    low, high = 0, most + 1
     while high - low > 1:
         middle = (low + high) // 2
         low, high = (middle, high) if holds(middle) else (low, middle)

@@ -13,6 +13,7 @@ from instruments.plant_data import PlantData
 from instruments.quantity import format_number
 from instruments.span import SLACK
 from loops.budget import lift_off
+from loops.cable import longest_m
 from loops.circuit import Circuit
 from loops.power import voltage_budget
 from loops.receiving import Receivers, receivers
@@ -29,7 +30,6 @@ from loops.series import (
     hot_cable,
     indicators_in_series,
     is_output,
-    longest_m,
     receiver_term,
     shown,
     total_ohm,

@@ -11,6 +11,7 @@ from instruments.plant_data import PlantData
 from instruments.quantity import format_number
 from instruments.record import DeviceType
 from loops.budget import SUPPLY_TOLERANCE_PERCENT
+from loops.cable import longest_m
 from loops.circuit import Circuit
 from loops.series import (
     LEAST_MA,
@@ -27,7 +28,6 @@ from loops.series import (
     indicators_in_series,
     is_output,
     isolator_input,
-    longest_m,
     receiver_term,
     shown,
     total_ohm,

@@ -1,7 +1,7 @@
 """The voltage budget of a two-wire transmitter: what reaches its terminals, and what would make it enough."""
 
 import math
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Final
 
@@ -12,6 +12,8 @@ from loops.cable import (
     Conductor,
     ResistancePer,
     conductor_ohm_per_km_20c,
+    largest_whole,
+    longest_m,
     loop_resistance_ohm,
 )
 
@@ -26,9 +28,6 @@ Resistances = Sequence[tuple[str, float]]
 """Names and ohms of what lies in series, cable included."""
 FixedDrops = Sequence[tuple[str, float]]
 """Names and volts of what drops the same at any current: diodes, loop-powered indicators."""
-
-LONGEST_CABLE_M: Final = 100_000
-"""No cable length beyond this is worked out: it stands for any."""
 
 _DECIMALS: Final = 3
 _MOST_DECIMALS: Final = 9
@@ -280,7 +279,7 @@ def longest_cable_m(
         at_terminals_v = volts_at_transmitter(supply_v, current_ma, (*resistances, ("cable", ohm)), fixed_drops)
         return _margin(at_terminals_v, needed_v, scale=supply_v) >= 0.0
 
-    return _largest(LONGEST_CABLE_M, passes)
+    return longest_m(passes)
 
 
 def smallest_conductor(
@@ -351,7 +350,7 @@ def least_supply_v(
     def falls_short(tenths: int) -> bool:
         return _margin(tenths / 10.0 - drops_v, needed_v, scale=tenths / 10.0) < 0.0
 
-    short = _largest(_tenths_above(needed_v + drops_v), falls_short)
+    short = largest_whole(_tenths_above(needed_v + drops_v), falls_short)
     return 0.0 if short is None else (short + 1) / 10.0
 
 
@@ -378,23 +377,12 @@ def highest_supply_v(
     def borne(tenths: int) -> bool:
         return _margin(allowed_v, tenths / 10.0 - drops_v, scale=tenths / 10.0) >= 0.0
 
-    return (_largest(_tenths_above(allowed_v + drops_v), borne) or 0) / 10.0
+    return (largest_whole(_tenths_above(allowed_v + drops_v), borne) or 0) / 10.0
 
 
 def _tenths_above(volts: float) -> int:
     """Tenths of a volt that are surely more than `volts`, slack included."""
     return math.floor(volts * 10.0 * (1.0 + 2.0 * SLACK)) + 1
-
-
-def _largest(most: int, holds: Callable[[int], bool]) -> int | None:
-    """Largest number from 0 to `most` at which a condition still holds that only ever turns false."""
-    if not holds(0):
-        return None
-    low, high = 0, most + 1
-    while high - low > 1:
-        middle = (low + high) // 2
-        low, high = (middle, high) if holds(middle) else (low, middle)
-    return low
 
 
 def _terms(current_ma: float, resistances: Resistances, fixed_drops: FixedDrops) -> tuple[VoltageDrop, ...]:

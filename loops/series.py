@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable
+from collections.abc import Iterable
 from dataclasses import dataclass, field
 from typing import Final
 
@@ -19,8 +19,6 @@ from loops.budget import DIODE_V, HOT_C, RECEIVER_OHM, ohm_per_km
 from loops.cable import Conductor, temperature_factor
 from loops.circuit import ANALOGUE_INPUT, ANALOGUE_OUTPUT, Circuit, Given
 
-LONGEST_CABLE_M: Final = 100_000
-"""No cable length beyond this is worked out: it stands for any."""
 NOMINAL_MA: Final = 20.0
 LEAST_MA: Final = 4.0
 
@@ -370,18 +368,3 @@ def total_volts(terms: Iterable[Term], current_ma: float) -> float:
 def exceeds(value: float, limit: float) -> bool:
     """Whether a figure lies above its limit by more than float noise."""
     return above(value, limit)
-
-
-def longest_m(holds: Callable[[int], bool]) -> int | None:
-    """Return the longest cable in whole metres with which a condition holds that a longer one only ever breaks.
-
-    >>> longest_m(lambda length_m: length_m * 0.0242 <= 10.0), longest_m(lambda length_m: False)
-    (413, None)
-    """
-    if not holds(0):
-        return None
-    low, high = 0, LONGEST_CABLE_M + 1
-    while high - low > 1:
-        middle = (low + high) // 2
-        low, high = (middle, high) if holds(middle) else (low, middle)
-    return low

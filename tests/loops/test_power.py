@@ -4,9 +4,8 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from loops.cable import STANDARD_SIZES_MM2, Conductor, conductor_ohm_per_km_20c, loop_resistance_ohm
+from loops.cable import LONGEST_CABLE_M, STANDARD_SIZES_MM2, Conductor, conductor_ohm_per_km_20c, loop_resistance_ohm
 from loops.power import (
-    LONGEST_CABLE_M,
     VoltageBudget,
     VoltageDrop,
     check_current_ma,
